@@ -1,0 +1,8 @@
+import { defineConfig } from "drizzle-kit";
+
+export default defineConfig({
+  dialect: "sqlite",
+  schema: "./server/db/schema/*.ts",
+  out: "./drizzle",
+  dbCredentials: { url: process.env.TANGENCY_DATABASE ?? "data/tangency.sqlite" },
+});

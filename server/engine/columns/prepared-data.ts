@@ -1,0 +1,45 @@
+import type { DataFinding } from "../../../shared/schemas/data.ts";
+
+/** An upload, parsed: columns in file order. Numbers with NaN for an empty cell; text with "" for one. */
+export interface UploadTable {
+  readonly name: string;
+  readonly sha256: string;
+  readonly rows: number;
+  readonly columns: readonly TableColumn[];
+}
+
+export type TableColumn =
+  | { readonly name: string; readonly type: "number"; readonly values: Float64Array }
+  | {
+      readonly name: string;
+      readonly type: "text";
+      /** Index into `levels`, −1 for an empty cell. */
+      readonly codes: Int32Array;
+      readonly levels: readonly string[];
+      /** The first cell that is not a number, when most are: for the refusal that names it. */
+      readonly firstText?: { readonly row: number; readonly value: string };
+    };
+
+/**
+ * A data cell's rows used, ready for estimation: T rows, n goods, everything column-wise in Float64.
+ * Prices and total are in units of estimation (divided by `priceScale` and `totalScale`).
+ */
+export interface PreparedData {
+  readonly fingerprint: string;
+  readonly goods: readonly string[];
+  readonly rows: number;
+  /** Row of the upload for each row used, the first after the header being 1. */
+  readonly rowNumbers: Int32Array;
+  readonly shares: readonly Float64Array[];
+  readonly logPrices: readonly Float64Array[];
+  readonly logTotal: Float64Array;
+  /** Scaled to sum to T; absent when the data name no weight. */
+  readonly weights?: Float64Array;
+  readonly clusters?: { readonly codes: Int32Array; readonly labels: readonly string[] };
+  readonly time?: Float64Array;
+  /** Numeric columns a system may use as demographics, derived ones included, rows used only. */
+  readonly numeric: ReadonlyMap<string, Float64Array>;
+  readonly priceScale: readonly number[];
+  readonly totalScale: number;
+  readonly finding: DataFinding;
+}

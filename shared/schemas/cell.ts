@@ -1,0 +1,27 @@
+import { z } from "zod";
+import { dataFinding, dataSpecification } from "./data.ts";
+import { slutskyFinding, slutskySpecification } from "./slutsky.ts";
+import { systemFinding, systemSpecification } from "./system.ts";
+
+/** The kinds of cell. A kind is added here, with its schema file, its engine file and its view. */
+export const CELL_KINDS = ["data", "system", "slutsky"] as const;
+export const cellKind = z.enum(CELL_KINDS);
+export type CellKind = z.infer<typeof cellKind>;
+
+export const cellSpecification = z.discriminatedUnion("kind", [
+  dataSpecification,
+  systemSpecification,
+  slutskySpecification,
+]);
+export type CellSpecification = z.infer<typeof cellSpecification>;
+
+export const SPECIFICATIONS = {
+  data: dataSpecification,
+  system: systemSpecification,
+  slutsky: slutskySpecification,
+} as const;
+
+export const finding = z.discriminatedUnion("kind", [dataFinding, systemFinding, slutskyFinding]);
+export type Finding = z.infer<typeof finding>;
+export type FindingOf<K extends CellKind> = Extract<Finding, { kind: K }>;
+export type SpecificationOf<K extends CellKind> = Extract<CellSpecification, { kind: K }>;

@@ -1,0 +1,97 @@
+import { z } from "zod";
+import { count, identifier, instant } from "./primitives.ts";
+import { problem } from "./problem.ts";
+
+export const ROLES = ["owner", "coauthor", "reader"] as const;
+export const role = z.enum(ROLES);
+export type Role = z.infer<typeof role>;
+
+export const account = z.strictObject({ id: identifier, name: z.string(), email: z.email() });
+export type Account = z.infer<typeof account>;
+
+/** GET /api/installation: what the door says before anyone has signed in. */
+export const installation = z.strictObject({
+  name: z.string(),
+  version: z.string(),
+  demo: z.array(z.strictObject({ email: z.string(), passphrase: z.string(), role: z.string() })),
+});
+export type Installation = z.infer<typeof installation>;
+
+export const person = z.strictObject({ id: identifier, name: z.string(), email: z.email(), role });
+export type Person = z.infer<typeof person>;
+
+export const newStudy = z.strictObject({
+  title: z.string().trim().min(1).max(200),
+  lede: z.string().trim().max(600).default(""),
+});
+export const changedStudy = newStudy.partial();
+export const studySummary = z.strictObject({
+  id: identifier,
+  title: z.string(),
+  lede: z.string(),
+  role,
+  people: z.array(person),
+  changedAt: instant,
+  cells: z.array(z.strictObject({ name: z.string(), state: z.string(), reads: z.array(z.string()) })),
+  sealedAt: instant.optional(),
+});
+export type StudySummary = z.infer<typeof studySummary>;
+
+export const newPerson = z.strictObject({ email: z.email(), role });
+export const changedPerson = z.strictObject({ role });
+
+export const uploadColumn = z.strictObject({
+  name: z.string(),
+  type: z.enum(["number", "text"]),
+  missing: count,
+  distinct: count,
+  /** Numbers only. */
+  minimum: z.number().optional(),
+  maximum: z.number().optional(),
+  mean: z.number().optional(),
+  zeros: count.optional(),
+  /** Twelve equal bins of the numbers, counts of rows; the small drawing beside the name. */
+  histogram: z.array(count).max(12).optional(),
+  /** A text column that is nearly numbers: the first value that is not. */
+  firstText: z.strictObject({ row: count, value: z.string() }).optional(),
+});
+export type UploadColumn = z.infer<typeof uploadColumn>;
+
+export const upload = z.strictObject({
+  id: identifier,
+  name: z.string(),
+  bytes: count,
+  rows: count,
+  sha256: z.string(),
+  separator: z.enum([",", ";", "\t"]),
+  decimalComma: z.boolean(),
+  uploadedAt: instant,
+  uploadedBy: z.string(),
+  columns: z.array(uploadColumn),
+});
+export type Upload = z.infer<typeof upload>;
+
+export const newRefereeCopy = z.strictObject({
+  cellId: identifier,
+  note: z.string().trim().max(300).default(""),
+  withholdAuthors: z.boolean().default(true),
+});
+/** What the owner sees of a copy afterwards; the link itself is told once, when sealed. */
+export const refereeCopySummary = z.strictObject({
+  id: identifier,
+  cellName: z.string(),
+  note: z.string(),
+  fingerprint: z.string(),
+  sealedAt: instant,
+  sealedBy: z.string(),
+  revokedAt: instant.optional(),
+  lastOpenedAt: instant.optional(),
+});
+export type RefereeCopySummary = z.infer<typeof refereeCopySummary>;
+export const sealedRefereeCopy = z.strictObject({ copy: refereeCopySummary, token: z.string() });
+
+/** Every refusal of the API: a code for programs, a sentence for people, the place when there is one. */
+export const apiError = z.strictObject({
+  error: z.strictObject({ code: z.string(), sentence: z.string(), problems: z.array(problem).default([]) }),
+});
+export type ApiError = z.infer<typeof apiError>;

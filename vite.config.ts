@@ -1,0 +1,42 @@
+import tailwindcss from "@tailwindcss/vite";
+import react from "@vitejs/plugin-react";
+import { defineConfig } from "vitest/config";
+
+export default defineConfig({
+  plugins: [react(), tailwindcss()],
+  build: { outDir: "dist/client", emptyOutDir: true, target: "es2022" },
+  worker: { format: "es" },
+  test: {
+    projects: [
+      {
+        test: {
+          name: "node",
+          environment: "node",
+          include: ["tests/{shared,server,laws,reference,sync,architecture}/**/*.test.ts"],
+          testTimeout: 60_000,
+          hookTimeout: 60_000,
+        },
+      },
+      {
+        extends: true,
+        test: {
+          name: "browser-dom",
+          environment: "jsdom",
+          include: ["tests/src/**/*.test.{ts,tsx}"],
+          setupFiles: ["tests/support/dom.ts"],
+          testTimeout: 30_000,
+        },
+      },
+      {
+        test: {
+          name: "e2e",
+          environment: "node",
+          include: ["tests/e2e/**/*.test.ts"],
+          testTimeout: 180_000,
+          hookTimeout: 180_000,
+          fileParallelism: false,
+        },
+      },
+    ],
+  },
+});
