@@ -2,7 +2,7 @@ import { defineConfig } from "drizzle-kit";
 
 export default defineConfig({
   dialect: "sqlite",
-  schema: "./server/db/schema/*.ts",
+  schema: "./server/db/schema/index.ts",
   out: "./drizzle",
   dbCredentials: { url: process.env.TANGENCY_DATABASE ?? "data/tangency.sqlite" },
 });

@@ -1,0 +1,6 @@
+export * from "./auth.ts";
+export * from "./documents.ts";
+export * from "./findings.ts";
+export * from "./referee-copies.ts";
+export * from "./studies.ts";
+export * from "./uploads.ts";
