@@ -1,0 +1,77 @@
+import { and, asc, desc, eq } from "drizzle-orm";
+import type { Database } from "../client.ts";
+import { user } from "../schema/auth.ts";
+import { uploadChunks, uploadColumns, uploads } from "../schema/uploads.ts";
+
+export type UploadRow = typeof uploads.$inferSelect;
+
+/** An upload with the name of who brought it and its columns' descriptions (JSON), in file order. */
+export interface DescribedUpload {
+  readonly upload: UploadRow;
+  readonly uploadedByName: string;
+  readonly descriptions: readonly string[];
+}
+
+export function insertUpload(db: Database, row: UploadRow): void {
+  db.insert(uploads).values(row).run();
+}
+
+export function appendChunk(db: Database, uploadId: string, position: number, bytes: Buffer): void {
+  db.insert(uploadChunks).values({ uploadId, position, bytes }).run();
+}
+
+export function changeUpload(db: Database, uploadId: string, change: Partial<UploadRow>): void {
+  db.update(uploads).set(change).where(eq(uploads.id, uploadId)).run();
+}
+
+export function deleteUpload(db: Database, uploadId: string): void {
+  db.delete(uploads).where(eq(uploads.id, uploadId)).run();
+}
+
+/** Uploads that were still coming in when the program last stopped. Returns how many. */
+export function deleteUnfinishedUploads(db: Database): number {
+  return db.delete(uploads).where(eq(uploads.state, "receiving")).run().changes;
+}
+
+export function findUpload(db: Database, studyId: string, uploadId: string): UploadRow | undefined {
+  return db
+    .select()
+    .from(uploads)
+    .where(and(eq(uploads.studyId, studyId), eq(uploads.id, uploadId)))
+    .get();
+}
+
+export function uploadNames(db: Database, studyId: string): string[] {
+  return db
+    .select({ name: uploads.name })
+    .from(uploads)
+    .where(eq(uploads.studyId, studyId))
+    .all()
+    .map((row) => row.name);
+}
+
+/** The study's uploads that are whole, newest first. */
+export function uploadsOf(db: Database, studyId: string): DescribedUpload[] {
+  return db
+    .select()
+    .from(uploads)
+    .where(and(eq(uploads.studyId, studyId), eq(uploads.state, "ready")))
+    .orderBy(desc(uploads.uploadedAt))
+    .all()
+    .map((upload) => describe(db, upload));
+}
+
+export function describe(db: Database, upload: UploadRow): DescribedUpload {
+  const columns = db
+    .select({ description: uploadColumns.description })
+    .from(uploadColumns)
+    .where(eq(uploadColumns.uploadId, upload.id))
+    .orderBy(asc(uploadColumns.position))
+    .all();
+  const by = db.select({ name: user.name }).from(user).where(eq(user.id, upload.uploadedBy)).get();
+  return {
+    upload,
+    uploadedByName: by?.name ?? "someone no longer here",
+    descriptions: columns.map((column) => column.description),
+  };
+}
