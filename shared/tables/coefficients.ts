@@ -1,0 +1,60 @@
+import type { SystemFinding } from "../schemas/system.ts";
+import { EMPTY, estimateCell } from "./cells.ts";
+import { DECIMALS, printCount } from "./numbers.ts";
+import type { LabelledTable, TableRow } from "./table.ts";
+
+type Coefficient = SystemFinding["coefficients"][number];
+
+/** What a paper calls the rows of each block. Demographic and price rows are named by their column. */
+const ROW_NAMES: Record<string, { label: string; symbol?: string }> = {
+  alpha: { label: "Constant", symbol: "α" },
+  beta: { label: "ln x,", symbol: "β" },
+  committed: { label: "Committed quantity", symbol: "c" },
+  marginal: { label: "Marginal share", symbol: "b" },
+};
+
+export interface CoefficientRow extends TableRow {
+  readonly block: string;
+}
+
+/** A block has a row for each price when its columns are the goods themselves. */
+export function isPriceBlock(block: string): boolean {
+  return block === "gamma";
+}
+
+function headOf(coefficient: Coefficient): { label: string; symbol?: string } {
+  const { block, symbol, column } = coefficient;
+  if (column === undefined) return ROW_NAMES[block] ?? { label: block, symbol };
+  return isPriceBlock(block) ? { label: `ln p, ${column}` } : { label: column };
+}
+
+/** One row for each block and column, one cell for each good, in the order the blocks come. */
+export function coefficientRows(finding: Pick<SystemFinding, "coefficients" | "fitted">): CoefficientRow[] {
+  const rows = new Map<string, Coefficient[]>();
+  for (const coefficient of finding.coefficients) {
+    const key = JSON.stringify([coefficient.block, coefficient.column]);
+    rows.set(key, [...(rows.get(key) ?? []), coefficient]);
+  }
+  return [...rows.values()].map((coefficients) => ({
+    ...headOf(coefficients[0]),
+    block: coefficients[0].block,
+    cells: finding.fitted.goods.map((good) => {
+      const found = coefficients.find((coefficient) => coefficient.good === good);
+      return found ? estimateCell(found.estimate, found.standardError, DECIMALS.coefficient) : EMPTY;
+    }),
+  }));
+}
+
+/** Coefficients of all share equations, a column each, as a paper prints them. */
+export function coefficientTable(finding: SystemFinding): LabelledTable {
+  return {
+    name: "coefficients",
+    title: `Coefficients of the share equations, ${finding.fitted.form}`,
+    corner: "Share equation",
+    columns: finding.fitted.goods.map((label) => ({ label })),
+    rows: coefficientRows(finding),
+    notes: [
+      `Estimate over (standard error), ${finding.standardErrors}. ${printCount(finding.rows)} rows, ${finding.estimator}, prices and total in units of estimation.`,
+    ],
+  };
+}

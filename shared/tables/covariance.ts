@@ -1,0 +1,26 @@
+import type { SystemFinding } from "../schemas/system.ts";
+import { csvLines, csvNumber, csvText } from "./csv.ts";
+
+/** How a coefficient is named where it stands alone: "gamma, grains, dairy". */
+export function coefficientName(coefficient: SystemFinding["coefficients"][number]): string {
+  const { block, good, column } = coefficient;
+  return [block, good, column].filter((part) => part !== undefined).join(", ");
+}
+
+/**
+ * Every coefficient with its standard error and its row of the covariance matrix, k rows by k + 5 columns, in the
+ * order of θ, so that anything computed from the coefficients can be computed with its error.
+ */
+export function covarianceCsv(finding: Pick<SystemFinding, "coefficients" | "fitted">): string {
+  const names = finding.coefficients.map(coefficientName);
+  const head = ["block", "good", "column", "estimate", "standard error", ...names.map((name) => `cov: ${name}`)];
+  const rows = finding.coefficients.map((coefficient, index) => [
+    csvText(coefficient.block),
+    csvText(coefficient.good),
+    csvText(coefficient.column ?? ""),
+    csvNumber(coefficient.estimate),
+    csvNumber(coefficient.standardError),
+    ...finding.fitted.covariance[index].map(csvNumber),
+  ]);
+  return csvLines([head.map(csvText), ...rows]);
+}

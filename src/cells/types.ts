@@ -1,0 +1,44 @@
+import type { ComponentType } from "react";
+import type { CellKind, FindingOf } from "../../shared/schemas/cell.ts";
+import type { Upload } from "../../shared/schemas/resources.ts";
+import type { CellStatus } from "../../shared/schemas/status.ts";
+import type { LabelledTable } from "../../shared/tables/table.ts";
+
+/** A cell of the study as its sources have it. */
+export interface CellSource {
+  readonly id: string;
+  readonly name: string;
+  readonly kind: string;
+  readonly order: string;
+  readonly source: string;
+}
+
+/** What a form needs: the YAML it writes, and what there is to choose from. */
+export interface FormProps {
+  readonly source: string;
+  readonly onChange: (nextSource: string) => void;
+  readonly readOnly: boolean;
+  readonly context: { readonly cells: readonly CellSource[]; readonly uploads: readonly Upload[] };
+}
+
+/** A finding within the study: the sentence, the verdicts, one table. The state line above it is the band's. */
+export interface BandProps<K extends CellKind> {
+  readonly finding: FindingOf<K>;
+  readonly status?: CellStatus;
+}
+
+/** A finding in full. With a form it may be edited where it stands (a data cell's goods). */
+export interface OpenProps<K extends CellKind> extends BandProps<K> {
+  readonly form?: FormProps;
+}
+
+/** What a kind of cell shows. Views take findings as props and fetch nothing. */
+export interface CellView<K extends CellKind> {
+  readonly Form: ComponentType<FormProps>;
+  readonly Band: ComponentType<BandProps<K>>;
+  readonly Open: ComponentType<OpenProps<K>>;
+  /** What stands on the source page of the opened cell below its form: how each check is made. */
+  readonly Aside?: ComponentType<{ finding: FindingOf<K> }>;
+  /** The finding's tables, the one to copy first: for *Copy table* on the state line. */
+  readonly tables: (finding: FindingOf<K>) => LabelledTable[];
+}

@@ -1,0 +1,73 @@
+import type { ReactNode } from "react";
+
+export interface TableHead {
+  readonly key: string;
+  readonly content: ReactNode;
+  readonly align?: "left" | "right";
+  /** Read aloud in place of the content, when that is a drawing. */
+  readonly label?: string;
+}
+
+export interface TableLine {
+  readonly key: string;
+  readonly head: ReactNode;
+  readonly cells: readonly ReactNode[];
+}
+
+interface TableProps {
+  /** What the table is; read aloud, and shown by the heading above it. */
+  readonly caption: string;
+  /** The first head stands over the row heads. */
+  readonly heads: readonly TableHead[];
+  readonly lines: readonly TableLine[];
+  readonly className?: string;
+}
+
+const side = (align: TableHead["align"]) => (align === "left" ? "text-left" : "text-right");
+
+function Line({ line, heads }: { line: TableLine; heads: readonly TableHead[] }) {
+  return (
+    <tr>
+      <th scope="row" className="sticky left-0 bg-recto py-0.5 pr-4 text-left font-normal">
+        {line.head}
+      </th>
+      {line.cells.map((cell, index) => (
+        <td key={heads[index + 1].key} className={`py-0.5 pr-[0.33em] pl-4 ${side(heads[index + 1].align)}`}>
+          {cell}
+        </td>
+      ))}
+    </tr>
+  );
+}
+
+/** A table with rules under its heads and at its foot, nothing vertical; wide ones scroll with their first column held. */
+export function Table({ caption, heads, lines, className = "" }: TableProps) {
+  return (
+    // biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls sideways must be reachable by keyboard
+    <section aria-label={caption} tabIndex={0} className={`overflow-x-auto ${className}`}>
+      <table className="w-full border-line border-b text-[0.875rem]/[1.25rem] tabular-nums">
+        <thead>
+          <tr className="border-line border-b">
+            {heads.map((head, index) => (
+              <th
+                key={head.key}
+                scope="col"
+                aria-label={head.label}
+                className={`pb-1.5 align-bottom text-[0.8125rem]/[1.125rem] font-normal text-ink2 ${
+                  index === 0 ? "sticky left-0 bg-recto pr-4 text-left" : `pr-[0.33em] pl-4 ${side(head.align)}`
+                }`}
+              >
+                {head.content}
+              </th>
+            ))}
+          </tr>
+        </thead>
+        <tbody>
+          {lines.map((line) => (
+            <Line key={line.key} line={line} heads={heads} />
+          ))}
+        </tbody>
+      </table>
+    </section>
+  );
+}
