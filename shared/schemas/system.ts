@@ -80,6 +80,8 @@ export type RestrictionTest = z.infer<typeof restrictionTest>;
 export const fittedSystem = z.strictObject({
   form: z.enum(SYSTEM_NAMES),
   index: z.enum(PRICE_INDEX_NAMES).optional(),
+  /** Weighted means of the shares, and of the prices in units of estimation: what the index of la-aids is evaluated with. */
+  indexMeans: z.strictObject({ shares: vector, prices: vector }).optional(),
   goods: z.array(goodName),
   demographics: z.array(columnName),
   alpha0: finite,

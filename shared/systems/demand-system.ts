@@ -1,4 +1,7 @@
-import type { RestrictionName, SystemName } from "./names.ts";
+import type { Matrix } from "../numerics/matrix.ts";
+import type { PriceIndexName, RestrictionName, SystemName } from "./names.ts";
+
+export type { Matrix };
 
 /**
  * What every demand system declares of itself, and the functions everything else is computed from.
@@ -8,14 +11,20 @@ import type { RestrictionName, SystemName } from "./names.ts";
  * dropped. Prices and total are positive levels in the units of estimation (normalised or not).
  */
 
-/** Rows of numbers; `matrix[i][j]` is row i, column j. */
-export type Matrix = number[][];
-
 /** Where a system is evaluated: prices p (n), total expenditure x, demographics z (s). */
 export interface Point {
   readonly prices: readonly number[];
   readonly total: number;
   readonly demographics: readonly number[];
+}
+
+/** A price index without parameters, with the sample means its weights and base prices are (LA-AIDS). */
+export interface PriceIndex {
+  readonly name: PriceIndexName;
+  /** w̄, weighted sample means of the shares, n. */
+  readonly meanShares: readonly number[];
+  /** p̄, weighted sample means of the prices in units of estimation, n; 1 where the data are normalised. */
+  readonly meanPrices: readonly number[];
 }
 
 /** What fixes the length and meaning of the coefficient vector. */
@@ -24,6 +33,8 @@ export interface SystemSize {
   readonly demographics: number;
   /** α₀ of the translog index, fixed and not estimated; ignored by systems without one. */
   readonly alpha0: number;
+  /** Needed to evaluate LA-AIDS at a point; not for its layout, moments or free form. */
+  readonly index?: PriceIndex;
 }
 
 /** One coefficient of θ: which block, which good (equation), and which price or demographic it belongs to. */
@@ -50,6 +61,26 @@ export interface Slopes {
   readonly total: number[];
   /** μ_ij = ∂w_i/∂ln p_j, n × n. */
   readonly prices: Matrix;
+}
+
+/**
+ * A system at fixed θ, evaluated again and again without allocating: `at` overwrites the arrays it
+ * carries. What a million rows are checked with; `slopes` is one call of it.
+ */
+export interface Evaluator {
+  /** w_i, n. */
+  readonly shares: Float64Array;
+  /** μ_i, n. */
+  readonly total: Float64Array;
+  /** μ_ij, n × n row by row. */
+  readonly prices: Float64Array;
+  at(logPrices: ArrayLike<number>, logTotal: number, demographics: ArrayLike<number>): void;
+}
+
+/** One price slope as its formula and numbers: μ_ij = Σ of the terms, each a sign and a product. */
+export interface PriceSlopeTerm {
+  readonly sign: 1 | -1;
+  readonly factors: readonly { readonly symbol: string; readonly value: number }[];
 }
 
 /** Derivatives with respect to θ (k) of everything in `Slopes`, for the exact delta method. */
@@ -89,15 +120,23 @@ export interface MomentForm {
   derivatives(theta: readonly number[], size: SystemSize): [good: number, term: number, value: number][][];
 }
 
-/** Linear restrictions θ = S φ + s with φ free: how theory and adding-up are imposed. */
+/**
+ * Linear restrictions θ = S φ + s with φ free: how theory and adding-up are imposed. The free
+ * coefficients are some of those of θ: φ_f = θ[places[f]].
+ */
 export interface FreeForm {
   /** S, k × f. */
   readonly matrix: Matrix;
   /** s, k. */
   readonly offset: number[];
+  /** Where in θ each free coefficient stands, f. */
+  readonly places: number[];
 }
 
-/** Cost and utility, for systems that have them; meaningful under symmetry and homogeneity. */
+/**
+ * Cost and utility, for systems that have them; meaningful under symmetry and homogeneity. Both are
+ * NaN where the system defines none (LES with committed expenditure above the total).
+ */
 export interface CostFunction {
   /** ln c(u, p; z). */
   logCost(
@@ -123,12 +162,23 @@ export interface DemandSystem {
   /** False where the system takes no demographics (yet): a specification naming some is refused. */
   readonly takesDemographics: boolean;
   layout(size: SystemSize): CoefficientPlace[];
-  /** Adding-up always; homogeneity and symmetry when named. */
+  /**
+   * Adding-up always; homogeneity and symmetry when named. In share equations that add up, symmetry
+   * implies homogeneity, so naming symmetry alone imposes both.
+   */
   free(size: SystemSize, impose: readonly RestrictionName[]): FreeForm;
+  evaluator(theta: readonly number[], size: SystemSize): Evaluator;
   slopes(theta: readonly number[], size: SystemSize, point: Point): Slopes;
   slopeDerivatives(theta: readonly number[], size: SystemSize, point: Point): SlopeDerivatives;
+  /**
+   * The function of (p, x) whose derivatives at `point` the slopes are, where that is not `slopes().shares`
+   * itself: LA-AIDS holds the index's weights fixed at their values at `point`.
+   */
+  sharesNear?(theta: readonly number[], size: SystemSize, point: Point): (nearby: Point) => number[];
+  /** μ_ij in the terms of the system's own formula. */
+  explainPriceSlope(theta: readonly number[], size: SystemSize, point: Point, i: number, j: number): PriceSlopeTerm[];
   readonly moments: MomentForm;
-  /** Where iteration starts, free form coefficients, from mean shares (n) and the means of Z's base columns. */
+  /** Where iteration starts: θ (k) that satisfies every restriction, from the mean shares (n). */
   start(size: SystemSize, meanShares: readonly number[]): number[];
   /** Absent with a reason where there is none (LA-AIDS): welfare refuses it and names the exact system. */
   readonly cost: CostFunction | { readonly absent: string };

@@ -1,0 +1,43 @@
+import { aids } from "./aids.ts";
+import type { DemandSystem, SystemSize } from "./demand-system.ts";
+import { laAids } from "./la-aids.ts";
+import { les } from "./les.ts";
+import type { PriceIndexName, RestrictionName, SystemName } from "./names.ts";
+
+/** Every demand system by its name; a record over the names, so none can be forgotten. */
+export const SYSTEMS: Readonly<Record<SystemName, DemandSystem>> = { "la-aids": laAids, aids, les };
+
+/** What a fitted system says of itself: the part of a finding that evaluation needs. */
+export interface FittedCoefficients {
+  readonly form: SystemName;
+  readonly index?: PriceIndexName;
+  /** Required where there is an index: weighted sample means, prices in units of estimation. */
+  readonly indexMeans?: { readonly shares: readonly number[]; readonly prices: readonly number[] };
+  readonly goods: readonly string[];
+  readonly demographics: readonly string[];
+  readonly alpha0: number;
+  readonly imposed: readonly RestrictionName[];
+  /** θ in the order of the system's layout, k. */
+  readonly theta: readonly number[];
+  /** Covariance of θ, k × k. */
+  readonly covariance: number[][];
+}
+
+/** The system of a fitted one and the size its functions are called with. */
+export function systemOf(fitted: Omit<FittedCoefficients, "covariance">): { system: DemandSystem; size: SystemSize } {
+  const system = SYSTEMS[fitted.form];
+  const size: SystemSize = {
+    goods: fitted.goods.length,
+    demographics: fitted.demographics.length,
+    alpha0: fitted.alpha0,
+    ...(fitted.index !== undefined &&
+      fitted.indexMeans !== undefined && {
+        index: {
+          name: fitted.index,
+          meanShares: fitted.indexMeans.shares,
+          meanPrices: fitted.indexMeans.prices,
+        },
+      }),
+  };
+  return { system, size };
+}
