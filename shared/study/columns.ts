@@ -1,0 +1,137 @@
+import type { CellSpecification } from "../schemas/cell.ts";
+import type { DataSpecification } from "../schemas/data.ts";
+import type { Problem } from "../schemas/problem.ts";
+import type { Upload } from "../schemas/resources.ts";
+import type { SlutskySpecification } from "../schemas/slutsky.ts";
+import type { SystemSpecification } from "../schemas/system.ts";
+import type { KeyPath, Places } from "./cell-source.ts";
+import { nearestWord } from "./nearest-word.ts";
+import { counted, listSome, listWords } from "./words.ts";
+
+/** What is known of an upload before its rows are read. */
+export interface UploadShape extends Pick<Upload, "name" | "sha256"> {
+  readonly rows?: number;
+  readonly columns: readonly Pick<Upload["columns"][number], "name" | "type">[];
+}
+
+interface Context {
+  readonly specification: CellSpecification;
+  readonly places: Places;
+  readonly specifications: ReadonlyMap<string, CellSpecification>;
+  readonly uploads: readonly UploadShape[];
+}
+
+/** Columns and goods a specification names that are not there, each with the nearest that is. */
+export function columnProblems(context: Context): Problem[] {
+  const { specification } = context;
+  if (specification.kind === "data") return dataProblems(specification, context);
+  if (specification.kind === "system") return systemProblems(specification, context);
+  return slutskyProblems(specification, context);
+}
+
+function teller(places: Places) {
+  return (path: KeyPath, sentence: string, nearest?: string): Problem => {
+    const place = places.value(path) ?? places.key(path);
+    return { sentence, key: path.map(String), ...(place && { place }), ...(nearest && { nearest }) };
+  };
+}
+
+function dataProblems(specification: DataSpecification, { places, uploads }: Context): Problem[] {
+  const tell = teller(places);
+  const upload = uploads.find(({ name }) => name === specification.upload);
+  if (!upload) {
+    const names = uploads.map(({ name }) => name);
+    const nearest = nearestWord(specification.upload, names);
+    const there = names.length === 0 ? "Nothing has been uploaded yet" : `There are ${listSome(names)}`;
+    return [
+      tell(
+        ["upload"],
+        `No upload is called ${specification.upload}. ${nearest ? `The nearest is ${nearest}` : there}.`,
+        nearest,
+      ),
+    ];
+  }
+  const derived = Object.keys(specification.derive ?? {});
+  const names = [...upload.columns.map(({ name }) => name), ...derived];
+  const known = new Set(names);
+  const used: [KeyPath, string][] = [];
+  for (const [good, mapping] of Object.entries(specification.goods)) {
+    for (const [key, column] of Object.entries(mapping)) used.push([["goods", good, key], column]);
+  }
+  for (const key of ["total", "weight", "cluster", "time"] as const) {
+    const column = specification[key];
+    if (column !== undefined) used.push([[key], column]);
+  }
+  return used
+    .filter(([, column]) => !known.has(column))
+    .map(([path, column]) => tell(path, ...noColumn(upload.name, column, names)));
+}
+
+function noColumn(owner: string, column: string, names: readonly string[]): [string, string?] {
+  const nearest = nearestWord(column, names);
+  const there = nearest ? `The nearest is ${nearest}` : `Its columns are ${listSome(names)}`;
+  return [`${owner} has no column ${column}. ${there}.`, nearest];
+}
+
+function systemProblems(specification: SystemSpecification, context: Context): Problem[] {
+  const tell = teller(context.places);
+  const data = context.specifications.get(specification.data);
+  if (data?.kind !== "data") return [];
+  const problems: Problem[] = [];
+  const upload = context.uploads.find(({ name }) => name === data.upload);
+  if (upload) {
+    const numeric = upload.columns.filter(({ type }) => type === "number").map(({ name }) => name);
+    const names = [...numeric, ...Object.keys(data.derive ?? {})];
+    specification.demographics.forEach((column, i) => {
+      if (names.includes(column)) return;
+      const isText = upload.columns.some(({ name, type }) => name === column && type === "text");
+      const text = `${column} of ${specification.data} is a text column; demographics need numbers: derive one, such as ${column} == "…".`;
+      problems.push(
+        tell(["demographics", i], ...(isText ? ([text] as [string]) : noColumn(specification.data, column, names))),
+      );
+    });
+  }
+  const goods = Object.keys(data.goods);
+  if (specification.dropped !== undefined && !goods.includes(specification.dropped)) {
+    problems.push(tell(["dropped"], ...noGood(specification.data, specification.dropped, goods)));
+  }
+  return problems;
+}
+
+function noGood(owner: string, good: string, goods: readonly string[]): [string, string?] {
+  const nearest = nearestWord(good, goods);
+  const there = nearest ? `The nearest is ${nearest}` : `Its goods are ${listSome(goods)}`;
+  return [`${owner} has no good ${good}. ${there}.`, nearest];
+}
+
+function slutskyProblems(specification: SlutskySpecification, context: Context): Problem[] {
+  const { at } = specification;
+  if (typeof at === "string" || !("prices" in at)) return [];
+  const tell = teller(context.places);
+  const system = context.specifications.get(specification.system);
+  const data = system?.kind === "system" ? context.specifications.get(system.data) : undefined;
+  if (system?.kind !== "system" || data?.kind !== "data") return [];
+  const goods = Object.keys(data.goods);
+  const priced = Object.keys(at.prices);
+  const problems: Problem[] = priced
+    .filter((good) => !goods.includes(good))
+    .map((good) => {
+      const [sentence, nearest] = noGood(
+        system.data,
+        good,
+        goods.filter((other) => !priced.includes(other)),
+      );
+      const place = context.places.key(["at", "prices", good]);
+      return { sentence, key: ["at", "prices", good], ...(place && { place }), ...(nearest && { nearest }) };
+    });
+  const without = goods.filter((good) => !priced.includes(good));
+  if (problems.length === 0 && without.length > 0) {
+    problems.push(
+      tell(
+        ["at", "prices"],
+        `prices has ${counted(priced.length, "good")}, the system has ${counted(goods.length, "good")}: ${listWords(without)} ${without.length === 1 ? "has" : "have"} no price.`,
+      ),
+    );
+  }
+  return problems;
+}

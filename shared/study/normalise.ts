@@ -1,0 +1,15 @@
+import type { CellSpecification } from "../schemas/cell.ts";
+import { RESTRICTION_NAMES } from "../systems/names.ts";
+
+/**
+ * One specification for every way of writing the same question: restrictions once each in their own
+ * order, the default index of la-aids said. Defaults of the schema are already filled in.
+ */
+export function normaliseSpecification(specification: CellSpecification): CellSpecification {
+  if (specification.kind !== "system") return specification;
+  return {
+    ...specification,
+    ...(specification.form === "la-aids" && { index: specification.index ?? "tornqvist" }),
+    impose: RESTRICTION_NAMES.filter((name) => specification.impose.includes(name)),
+  };
+}

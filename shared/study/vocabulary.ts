@@ -1,0 +1,140 @@
+import { z } from "zod";
+import { CELL_KINDS, type CellKind, SPECIFICATIONS, type SpecificationOf } from "../schemas/cell.ts";
+
+/** A key of a cell's source, as the editor offers it. */
+export interface KeyWord {
+  readonly key: string;
+  /** One line: what the key says. */
+  readonly says: string;
+  readonly needed: boolean;
+  /** Whether it takes a list. */
+  readonly list: boolean;
+  /** The words it may have, when they are few and fixed. */
+  readonly values: readonly string[];
+  /** What else its value names. */
+  readonly names?: "upload" | "column" | "numeric column" | "good" | CellKind;
+  /** Keys of the map it takes; under any name when `named`. */
+  readonly keys: readonly KeyWord[];
+  readonly named: boolean;
+}
+
+/** Which keys of a kind name another cell, and of which kind. */
+export const REFERENCES: { readonly [K in CellKind]: Readonly<Record<string, CellKind>> } = {
+  data: {},
+  system: { data: "data" },
+  slutsky: { system: "system" },
+};
+
+/** A system cell takes over every key it does not give itself from the cell it is `like`. */
+export const LIKE = "like";
+
+type Told = readonly [says: string, names?: KeyWord["names"]];
+type KeysOf<K extends CellKind> = Exclude<keyof SpecificationOf<K>, "kind">;
+
+/** Typed over the schemas' own keys: a key without a line, or a line without a key, does not compile. */
+const KEYS: { readonly [K in CellKind]: Readonly<Record<KeysOf<K>, Told>> } = {
+  data: {
+    upload: ["the uploaded file the columns come from", "upload"],
+    goods: ["each good by two of price, quantity and expenditure"],
+    total: ["the column of total expenditure, when it is not the sum of the goods", "numeric column"],
+    weight: ["the column of sampling weights", "numeric column"],
+    cluster: ["the column that says which rows were sampled together", "column"],
+    time: ["the column of the period", "column"],
+    derive: ["new columns from expressions in others, such as log(members)"],
+    keep: ["a condition; rows that do not meet it are left out"],
+    normalise: ["mean divides prices and total by their weighted means, none leaves units alone"],
+  },
+  system: {
+    data: ["the name of the data cell it is estimated on", "data"],
+    form: ["the functional form of the share equations"],
+    index: ["the price index of la-aids"],
+    impose: ["the restrictions of theory that are imposed"],
+    estimator: ["how the share equations are estimated"],
+    demographics: ["columns that shift the intercepts", "numeric column"],
+    alpha0: ["the constant of the translog price index, fixed and not estimated"],
+    dropped: ["the good whose equation is left out; results do not depend on it under maximum likelihood", "good"],
+    "standard errors": ["how standard errors are computed"],
+  },
+  slutsky: {
+    system: ["the name of the system cell it evaluates", "system"],
+    at: ["where: base point, mean, a row, a quantile of expenditure, or prices and x of one's own"],
+    form: ["share form k, or quantity form S in the units uploaded"],
+  },
+};
+
+const INNER: Readonly<Record<string, Told>> = {
+  price: ["the column of its price", "numeric column"],
+  quantity: ["the column of its quantity", "numeric column"],
+  expenditure: ["the column of what was spent on it", "numeric column"],
+  row: ["a row of the upload, the first after the header being 1"],
+  x: ["total expenditure: quantile 0.9 at mean prices, or an amount beside prices"],
+  prices: ["the price of each good, in the units uploaded"],
+};
+
+const LIKE_KEY: KeyWord = {
+  key: LIKE,
+  says: "the name of a system cell whose keys it takes over unless it gives them itself",
+  needed: false,
+  list: false,
+  values: [],
+  names: "system",
+  keys: [],
+  named: false,
+};
+
+type Shape = Readonly<Record<string, z.ZodType>>;
+
+/** Looks through defaults and options at the schema that says what a value may be. */
+function bare(schema: z.ZodType): z.ZodType {
+  if (schema instanceof z.ZodOptional || schema instanceof z.ZodDefault) return bare(schema.unwrap() as z.ZodType);
+  if (schema instanceof z.ZodPipe) return bare(schema.in as z.ZodType);
+  return schema;
+}
+
+function wordsOf(schema: z.ZodType): string[] {
+  const inner = bare(schema);
+  if (inner instanceof z.ZodEnum) return inner.options.map(String);
+  if (inner instanceof z.ZodLiteral) return [...inner.values].map(String);
+  if (inner instanceof z.ZodArray) return wordsOf(inner.element as z.ZodType);
+  if (inner instanceof z.ZodUnion) return inner.options.flatMap((option) => wordsOf(option as z.ZodType));
+  return [];
+}
+
+function keysWithin(schema: z.ZodType): KeyWord[] {
+  const inner = bare(schema);
+  if (inner instanceof z.ZodRecord) return keysWithin(inner.valueType as z.ZodType);
+  if (inner instanceof z.ZodUnion) {
+    const all = inner.options.flatMap((option) => keysWithin(option as z.ZodType));
+    return all.filter((word, i) => all.findIndex((other) => other.key === word.key) === i);
+  }
+  return inner instanceof z.ZodObject ? keyWords(inner.shape as Shape, INNER) : [];
+}
+
+function keyWords(shape: Shape, told: Readonly<Record<string, Told>>): KeyWord[] {
+  return Object.entries(shape)
+    .filter(([key]) => key !== "kind")
+    .map(([key, schema]) => ({
+      key,
+      says: told[key][0],
+      needed: !(schema instanceof z.ZodOptional || schema instanceof z.ZodDefault),
+      list: bare(schema) instanceof z.ZodArray,
+      values: wordsOf(schema),
+      ...(told[key][1] && { names: told[key][1] }),
+      keys: keysWithin(schema),
+      named: bare(schema) instanceof z.ZodRecord,
+    }));
+}
+
+function vocabularyOf(kind: CellKind): readonly KeyWord[] {
+  const words = keyWords(SPECIFICATIONS[kind].shape as Shape, KEYS[kind]);
+  return kind === "system" ? [...words, LIKE_KEY] : words;
+}
+
+/** Every key of every kind, read off the schemas. */
+export const VOCABULARY = Object.fromEntries(CELL_KINDS.map((kind) => [kind, vocabularyOf(kind)])) as Readonly<
+  Record<CellKind, readonly KeyWord[]>
+>;
+
+export function keyWord(kind: CellKind, key: string): KeyWord | undefined {
+  return VOCABULARY[kind].find((word) => word.key === key);
+}

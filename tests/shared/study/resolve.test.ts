@@ -1,0 +1,157 @@
+import { describe, expect, it } from "vitest";
+import { resolveCells } from "../../../shared/study/resolve.ts";
+
+const survey =
+  "upload: purchases.csv\ngoods:\n  grains: {price: p_grains, expenditure: e_grains}\n  dairy: {price: p_dairy, expenditure: e_dairy}\nderive: {log_size: log(members)}\n";
+const uploads = [
+  {
+    name: "purchases.csv",
+    sha256: "0".repeat(64),
+    columns: [
+      ...["p_grains", "e_grains", "p_dairy", "e_dairy", "members", "urban"].map((name) => ({
+        name,
+        type: "number" as const,
+      })),
+      { name: "village", type: "text" as const },
+    ],
+  },
+];
+
+type Given = [name: string, kind: string, source: string];
+function resolve(...cells: Given[]) {
+  const sources = cells.map(([name, kind, source], i) => ({
+    id: `c${i}`,
+    name,
+    kind,
+    source,
+    order: String.fromCharCode(97 + i),
+  }));
+  return resolveCells(sources, uploads);
+}
+function told(name: string, ...cells: Given[]) {
+  return resolve(...cells)
+    .filter((cell) => cell.name === name)
+    .flatMap(({ problems }) => problems.map(({ sentence }) => sentence));
+}
+const DATA: Given = ["survey", "data", survey];
+const BASE: Given = [
+  "base",
+  "system",
+  "data: survey\nform: aids\ndemographics: [log_size, urban]\nimpose: [homogeneity]",
+];
+
+describe("resolveCells", () => {
+  it("reads a sound study", () => {
+    const cells = resolve(DATA, BASE, ["matrix", "slutsky", "system: base"]);
+    expect(cells.map(({ problems }) => problems)).toEqual([[], [], []]);
+    expect(cells.map(({ reads }) => reads)).toEqual([[], ["survey"], ["base"]]);
+    expect(cells.map(({ specification }) => specification?.kind)).toEqual(["data", "system", "slutsky"]);
+  });
+
+  it("tells unknown columns with the nearest, derived ones included", () => {
+    expect(
+      told("by region", DATA, ["by region", "system", "data: survey\nform: aids\ndemographics: [log_size, urbn]"]),
+    ).toEqual(["survey has no column urbn. The nearest is urban."]);
+    expect(told("s", DATA, ["s", "system", "data: survey\nform: aids\ndemographics: [log_siz]"])).toEqual([
+      "survey has no column log_siz. The nearest is log_size.",
+    ]);
+    expect(told("survey", ["survey", "data", survey.replace("p_dairy", "p_diary")])).toEqual([
+      "purchases.csv has no column p_diary. The nearest is p_dairy.",
+    ]);
+  });
+
+  it("tells a text column where numbers are needed", () => {
+    expect(told("s", DATA, ["s", "system", "data: survey\nform: aids\ndemographics: [village]"])[0]).toMatch(
+      /^village of survey is a text column/,
+    );
+  });
+
+  it("tells unknown uploads, goods and cells", () => {
+    expect(told("survey", ["survey", "data", survey.replace("purchases", "purchase")])).toEqual([
+      "No upload is called purchase.csv. The nearest is purchases.csv.",
+    ]);
+    expect(told("s", DATA, ["s", "system", "data: survey\nform: aids\ndropped: diary"])).toEqual([
+      "survey has no good diary. The nearest is dairy.",
+    ]);
+    expect(told("m", DATA, BASE, ["m", "slutsky", "system: bases"])).toEqual([
+      "No cell is called bases. The nearest is base.",
+    ]);
+    expect(told("m", DATA, ["m", "slutsky", "system: base"])).toEqual([
+      "No cell is called base. The study has no system cell yet.",
+    ]);
+  });
+
+  it("tells a cell of the wrong kind", () => {
+    expect(told("matrix", DATA, BASE, ["matrix", "slutsky", "system: survey"])).toEqual([
+      "matrix reads survey, which is a data cell; system names a system cell.",
+    ]);
+  });
+
+  it("tells names given twice, on the later cell only", () => {
+    const cells = resolve(DATA, ["survey", "data", survey]);
+    expect(cells.map(({ problems }) => problems.length)).toEqual([0, 1]);
+  });
+
+  it("tells which goods have no price of one's own", () => {
+    expect(told("m", DATA, BASE, ["m", "slutsky", "system: base\nat: {prices: {grains: 2}, x: 5}"])).toEqual([
+      "prices has 1 good, the system has 2 goods: dairy has no price.",
+    ]);
+    expect(told("m", DATA, BASE, ["m", "slutsky", "system: base\nat: {prices: {grains: 2, diary: 3}, x: 5}"])).toEqual([
+      "survey has no good diary. The nearest is dairy.",
+    ]);
+  });
+
+  it("marks a wrong reference at its place in the source", () => {
+    const source = "form: aids\ndata: servey\n";
+    const [, cell] = resolve(DATA, ["s", "system", source]);
+    const place = cell.problems[0].place;
+    expect(source.slice(place?.from, place?.to)).toBe("servey");
+    expect(cell.problems[0].nearest).toBe("survey");
+  });
+});
+
+describe("like", () => {
+  it("takes over every key not given, through several cells", () => {
+    const cells = resolve(
+      DATA,
+      BASE,
+      ["b", "system", "like: base\ndemographics: []"],
+      ["c", "system", "like: b\nform: les"],
+    );
+    expect(cells.flatMap(({ problems }) => problems)).toEqual([]);
+    expect(cells[3].specification).toMatchObject({
+      data: "survey",
+      form: "les",
+      demographics: [],
+      impose: ["homogeneity"],
+    });
+    expect(cells[3].reads).toEqual(["survey"]);
+  });
+
+  it("takes over no index with a form of its own", () => {
+    const linear: Given = ["linear", "system", "data: survey\nform: la-aids\nindex: stone"];
+    const cells = resolve(
+      DATA,
+      linear,
+      ["exact", "system", "like: linear\nform: aids"],
+      ["same", "system", "like: linear\nimpose: [homogeneity]"],
+    );
+    expect(cells[2].specification).toMatchObject({ form: "aids" });
+    expect(cells[2].specification).not.toHaveProperty("index");
+    expect(cells[3].specification).toMatchObject({ form: "la-aids", index: "stone" });
+  });
+
+  it("tells what a taken over key does wrong where it was taken over", () => {
+    expect(told("b", DATA, ["a", "system", "data: survey"], ["b", "system", "like: a"])).toEqual([
+      "As taken over from a: A system cell needs form: one of la-aids, aids, les.",
+    ]);
+  });
+
+  it("refuses circles", () => {
+    const cells = resolve(DATA, ["a", "system", "like: b\nform: aids"], ["b", "system", "like: a\ndata: survey"]);
+    expect(cells[1].problems.map(({ sentence }) => sentence)).toEqual([
+      "a reads b reads a: cells cannot read each other in a circle.",
+    ]);
+    expect(told("a", DATA, ["a", "system", "like: a"])).toContain("a reads itself.");
+  });
+});
