@@ -1,0 +1,48 @@
+import type { Role } from "../../shared/schemas/resources.ts";
+
+/**
+ * Who may do what in a study: one table for HTTP and socket alike. What a role is not named for, it
+ * may not do; someone who is no member may do nothing and is not told that the study exists.
+ */
+const ALLOWED = {
+  "study.read": ["owner", "coauthor", "reader"],
+  "study.change": ["owner", "coauthor"],
+  "study.delete": ["owner"],
+  "document.read": ["owner", "coauthor", "reader"],
+  "document.write": ["owner", "coauthor"],
+  "people.read": ["owner", "coauthor", "reader"],
+  "people.add": ["owner"],
+  "people.change": ["owner"],
+  "people.remove": ["owner"],
+  "upload.read": ["owner", "coauthor", "reader"],
+  "upload.add": ["owner", "coauthor"],
+  "upload.remove": ["owner", "coauthor"],
+  "finding.read": ["owner", "coauthor", "reader"],
+  "estimation.start": ["owner", "coauthor"],
+  "estimation.cancel": ["owner", "coauthor"],
+  "referee copy.read": ["owner"],
+  "referee copy.seal": ["owner"],
+  "referee copy.revoke": ["owner"],
+} as const satisfies Record<string, readonly Role[]>;
+
+export type Action = keyof typeof ALLOWED;
+
+export const ACTIONS = Object.keys(ALLOWED) as Action[];
+
+export interface Actor {
+  readonly id: string;
+}
+
+/** As much of a study as a decision needs: who is in it, as what. */
+export interface Membership {
+  roleOf(userId: string): Role | undefined;
+}
+
+export function can(actor: Actor | undefined, action: Action, study: Membership): boolean {
+  const role = actor === undefined ? undefined : study.roleOf(actor.id);
+  return role !== undefined && rolesThatMay(action).includes(role);
+}
+
+export function rolesThatMay(action: Action): readonly Role[] {
+  return ALLOWED[action];
+}

@@ -1,0 +1,11 @@
+import type { Finding } from "../../shared/schemas/cell.ts";
+import type { StoredFinding } from "../services/ports.ts";
+
+/** A finding is its kind's schema already; here it gets when it was found and how long that took. */
+export function presentFinding({ finding, foundAt, tookMs }: StoredFinding): {
+  finding: Finding;
+  foundAt: string;
+  tookMs: number;
+} {
+  return { finding, foundAt: new Date(foundAt).toISOString(), tookMs };
+}

@@ -1,0 +1,15 @@
+import type { RefereeCopySummary } from "../../shared/schemas/resources.ts";
+import type { RefereeCopySummaryRow } from "../services/referee-copies.ts";
+
+export function presentRefereeCopy(copy: RefereeCopySummaryRow): RefereeCopySummary {
+  return {
+    id: copy.id,
+    cellName: copy.cellName,
+    note: copy.note,
+    fingerprint: copy.fingerprint,
+    sealedAt: copy.sealedAt.toISOString(),
+    sealedBy: copy.sealedByName ?? "someone no longer here",
+    ...(copy.revokedAt !== null && { revokedAt: copy.revokedAt.toISOString() }),
+    ...(copy.lastOpenedAt !== null && { lastOpenedAt: copy.lastOpenedAt.toISOString() }),
+  };
+}

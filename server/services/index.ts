@@ -1,0 +1,40 @@
+import type { Database } from "../db/client.ts";
+import { type Access, createAccess } from "./access.ts";
+import { createPeopleService, type PeopleService } from "./people.ts";
+import type { Cells, ClosePerson, ParseUpload, SourcesOf } from "./ports.ts";
+import { createRefereeCopyService, type RefereeCopyService } from "./referee-copies.ts";
+import { createStudyService, type StudyService } from "./studies.ts";
+import { createUploadService, type UploadService } from "./uploads.ts";
+
+export interface Services {
+  readonly access: Access;
+  readonly cells: Cells;
+  readonly studies: StudyService;
+  readonly people: PeopleService;
+  readonly uploads: UploadService;
+  readonly refereeCopies: RefereeCopyService;
+  /** Someone has signed out: their open sockets close. */
+  readonly signedOut: (userId: string) => void;
+}
+
+interface Collaborators {
+  readonly db: Database;
+  readonly cells: Cells;
+  readonly sourcesOf: SourcesOf;
+  readonly closePerson: ClosePerson;
+  readonly parseUpload: ParseUpload;
+  readonly program: string;
+}
+
+export function createServices({ db, cells, sourcesOf, closePerson, parseUpload, program }: Collaborators): Services {
+  const access = createAccess(db);
+  return {
+    access,
+    cells,
+    studies: createStudyService({ db, access, cells, closePerson }),
+    people: createPeopleService({ db, access, closePerson }),
+    uploads: createUploadService({ db, access, parseUpload, sourcesOf, cells }),
+    refereeCopies: createRefereeCopyService({ db, access, cells, sourcesOf, program }),
+    signedOut: (userId) => closePerson(userId),
+  };
+}

@@ -1,0 +1,39 @@
+import type { Finding } from "../../shared/schemas/cell.ts";
+import type { StudyStatus } from "../../shared/schemas/status.ts";
+import type { CellSource } from "../../shared/study/cell-source.ts";
+
+/**
+ * What the services of this folder need of the rest of the house. They say it here themselves, so
+ * that none of them knows a socket or a worker; `main.ts` puts the real ones in.
+ */
+export interface Cells {
+  /** Something the study's cells rest on has changed. */
+  changed(studyId: string): void;
+  status(studyId: string): Promise<StudyStatus> | StudyStatus;
+  estimate(studyId: string, cellId: string, userId: string): Promise<void> | void;
+  cancel(studyId: string, cellId: string): Promise<void> | void;
+  bringUpToDate(studyId: string, userId: string): Promise<void> | void;
+  finding(studyId: string, fingerprint: string): Promise<StoredFinding | undefined> | StoredFinding | undefined;
+}
+
+export interface StoredFinding {
+  readonly finding: Finding;
+  readonly foundAt: Date;
+  readonly tookMs: number;
+}
+
+/** The cells of a study as they stand in its document now. */
+export type SourcesOf = (studyId: string) => Promise<readonly CellSource[]> | readonly CellSource[];
+
+/** Closes a person's open sockets, in one study or everywhere. */
+export type ClosePerson = (userId: string, studyId?: string) => void;
+
+export interface ParsedUpload {
+  readonly rows: number;
+  readonly sha256: string;
+  readonly separator: string;
+  readonly decimalComma: boolean;
+}
+
+/** Reads a stored upload into its columns, away from the request's thread. Throws `Refusal` with its problems. */
+export type ParseUpload = (uploadId: string, signal: AbortSignal) => Promise<ParsedUpload>;

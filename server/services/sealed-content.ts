@@ -1,0 +1,60 @@
+import type { DataFinding } from "../../shared/schemas/data.ts";
+import type { SealedContent } from "../../shared/schemas/referee-copy.ts";
+import type { SlutskyFinding } from "../../shared/schemas/slutsky.ts";
+import type { SystemFinding } from "../../shared/schemas/system.ts";
+import type { CellSource } from "../../shared/study/cell-source.ts";
+
+/** The matrix and the two cells it rests on, sources and findings. */
+export interface SealedCells {
+  readonly matrix: { readonly cell: CellSource; readonly finding: SlutskyFinding };
+  readonly system: { readonly cell: CellSource; readonly finding: SystemFinding };
+  readonly data: { readonly cell: CellSource; readonly finding: DataFinding };
+}
+
+interface About {
+  readonly program: string;
+  readonly title: string;
+  readonly authors: readonly string[] | undefined;
+  readonly note: string;
+  readonly sealedAt: Date;
+}
+
+/**
+ * What a referee reads, named field by field so that nothing comes along by itself. Of the
+ * households it has sums only: no row's number, no row's values, no place of a row in the file.
+ */
+export function sealedContentOf(about: About, { matrix, system, data }: SealedCells): SealedContent {
+  const { title, authors, program, note, sealedAt } = about;
+  return {
+    format: "tangency referee copy 1",
+    program,
+    study: authors === undefined ? { title } : { title, authors: [...authors] },
+    note,
+    sealedAt: sealedAt.toISOString(),
+    cells: {
+      sources: [data.cell, system.cell, matrix.cell].map(({ name, kind, source }) => ({ name, kind, source })),
+      matrix: matrix.cell.name,
+      system: system.cell.name,
+      data: data.cell.name,
+    },
+    slutsky: matrixOf(matrix.finding),
+    system: system.finding,
+    accounting: accountingOf(data.finding),
+    data: {
+      meanTotal: data.finding.meanTotal,
+      weighted: data.finding.weighted,
+      fingerprint: data.finding.dataFingerprint,
+    },
+  };
+}
+
+function matrixOf(finding: SlutskyFinding): SealedContent["slutsky"] {
+  const { kind, dataFingerprint, fitted, form, pointName, point, priceScale, totalScale, at, tests, sample } = finding;
+  const sealed = { kind, dataFingerprint, fitted, form, pointName, point, priceScale, totalScale, at, tests };
+  return sample === undefined ? sealed : { ...sealed, sample };
+}
+
+function accountingOf({ accounting }: DataFinding): SealedContent["accounting"] {
+  const leftOut = accounting.leftOut.map(({ reason, label, count }) => ({ reason, label, count }));
+  return { uploaded: accounting.uploaded, leftOut, used: accounting.used };
+}

@@ -1,0 +1,136 @@
+import { createServer } from "node:http";
+import type { AddressInfo } from "node:net";
+import { createApp } from "../../server/app.ts";
+import type { Limits } from "../../server/config.ts";
+import { type OpenDatabase, openDatabase } from "../../server/db/client.ts";
+import { createLogger } from "../../server/http/log.ts";
+import { createAuthentication } from "../../server/services/authentication.ts";
+import { createServices } from "../../server/services/index.ts";
+import { FakeCells, FakeParser, FakeSockets } from "./fakes.ts";
+import { temporaryFolder } from "./temporary.ts";
+
+export const PASSPHRASE = "a curve and a line";
+
+interface Options {
+  readonly limits?: Partial<Limits>;
+  readonly secure?: boolean;
+  readonly log?: NodeJS.WritableStream;
+}
+
+/** Someone with a browser: keeps the cookie it is given, and names the origin of the page it is on. */
+export interface Visitor {
+  readonly id: string;
+  readonly name: string;
+  readonly email: string;
+  ask(method: string, path: string, body?: unknown, headers?: Record<string, string>): Promise<Answer>;
+}
+
+export interface Answer {
+  readonly status: number;
+  // biome-ignore lint/suspicious/noExplicitAny: the tests look into answers of every shape
+  readonly body: any;
+  readonly headers: Headers;
+}
+
+/** The real application over a database of its own, listening; cells, worker and sockets are fakes. */
+export async function startApplication({ limits, secure = false, log }: Options = {}) {
+  const folder = temporaryFolder();
+  const open = openDatabase(`${folder.path}/test.sqlite`);
+  const server = createServer();
+  await new Promise<void>((ready) => server.listen(0, "127.0.0.1", ready));
+  const origin = `http://127.0.0.1:${(server.address() as AddressInfo).port}`;
+  const auth = createAuthentication({
+    db: open.db,
+    url: origin,
+    trustedOrigins: [origin],
+    secure,
+    secret: "x".repeat(40),
+  });
+  const cells = new FakeCells();
+  const sockets = new FakeSockets();
+  const parser = new FakeParser(open);
+  const services = createServices({
+    db: open.db,
+    cells,
+    sourcesOf: cells.sourcesOf,
+    closePerson: sockets.closePerson,
+    parseUpload: parser.parse,
+    program: "Tangency test",
+  });
+  const app = createApp({
+    config: {
+      trustedOrigins: [origin],
+      secure,
+      proxies: 0,
+      development: false,
+      limits: { signInsPerMinute: 1000, uploadsPerHour: 1000, refereeReadsPerMinute: 1000, ...limits },
+    },
+    auth,
+    services,
+    installation: { name: "Tangency", version: "test", demo: [] },
+    logger: createLogger(log === undefined ? "silent" : "info", log),
+    pages: (_request, _response, next) => next(),
+  });
+  server.on("request", app);
+  return {
+    origin,
+    open,
+    auth,
+    services,
+    cells,
+    sockets,
+    parser,
+    stranger: visitor(origin),
+    person: (name: string) => newPerson(origin, name),
+    async close() {
+      server.closeAllConnections();
+      await new Promise((closed) => server.close(closed));
+      open.close();
+      folder.remove();
+    },
+  };
+}
+
+export type Application = Awaited<ReturnType<typeof startApplication>>;
+
+function visitor(origin: string, about = { id: "", name: "", email: "" }, cookie?: string): Visitor {
+  return {
+    ...about,
+    ask: (method, path, body, headers = {}) => {
+      const form = body instanceof FormData;
+      return ask(`${origin}${path}`, {
+        method,
+        headers: {
+          origin,
+          ...(cookie !== undefined && { cookie }),
+          ...(body !== undefined && !form && { "content-type": "application/json" }),
+          ...headers,
+        },
+        ...(body !== undefined && { body: form ? body : JSON.stringify(body) }),
+      });
+    },
+  };
+}
+
+async function ask(address: string, init: RequestInit): Promise<Answer> {
+  const response = await fetch(address, init);
+  const text = await response.text();
+  const json = response.headers.get("content-type")?.includes("json") === true;
+  return { status: response.status, body: json ? JSON.parse(text) : text, headers: response.headers };
+}
+
+async function newPerson(origin: string, name: string): Promise<Visitor> {
+  const email = `${name.toLowerCase().replace(/\W+/g, ".")}@vihe.example`;
+  const answer = await visitor(origin).ask("POST", "/api/auth/sign-up/email", { name, email, password: PASSPHRASE });
+  if (answer.status !== 200) throw new Error(`no account for ${name}: ${JSON.stringify(answer.body)}`);
+  return visitor(origin, { id: answer.body.user.id, name, email }, cookieOf(answer));
+}
+
+export function cookieOf(answer: Answer): string {
+  return answer.headers
+    .getSetCookie()
+    .map((cookie) => cookie.split(";")[0])
+    .join("; ");
+}
+
+export type { OpenDatabase };
