@@ -45,6 +45,8 @@ export const uploadColumn = z.strictObject({
   type: z.enum(["number", "text"]),
   missing: count,
   distinct: count,
+  /** Words such as NA that were taken for a missing value, the other cells being numbers. */
+  missingWords: z.array(z.string()).optional(),
   /** Numbers only. */
   minimum: z.number().optional(),
   maximum: z.number().optional(),
