@@ -20,11 +20,11 @@ export type Installation = z.infer<typeof installation>;
 export const person = z.strictObject({ id: identifier, name: z.string(), email: z.email(), role });
 export type Person = z.infer<typeof person>;
 
-export const newStudy = z.strictObject({
-  title: z.string().trim().min(1).max(200),
-  lede: z.string().trim().max(600).default(""),
-});
-export const changedStudy = newStudy.partial();
+const studyTitle = z.string().trim().min(1).max(200);
+const studyLede = z.string().trim().max(600);
+export const newStudy = z.strictObject({ title: studyTitle, lede: studyLede.default("") });
+/** Without the default: what a change does not name stays as it is. */
+export const changedStudy = z.strictObject({ title: studyTitle.optional(), lede: studyLede.optional() });
 export const studySummary = z.strictObject({
   id: identifier,
   title: z.string(),
