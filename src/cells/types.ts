@@ -2,16 +2,8 @@ import type { ComponentType } from "react";
 import type { CellKind, FindingOf } from "../../shared/schemas/cell.ts";
 import type { Upload } from "../../shared/schemas/resources.ts";
 import type { CellStatus } from "../../shared/schemas/status.ts";
+import type { CellSource } from "../../shared/study/cell-source.ts";
 import type { LabelledTable } from "../../shared/tables/table.ts";
-
-/** A cell of the study as its sources have it. */
-export interface CellSource {
-  readonly id: string;
-  readonly name: string;
-  readonly kind: string;
-  readonly order: string;
-  readonly source: string;
-}
 
 /** What a form needs: the YAML it writes, and what there is to choose from. */
 export interface FormProps {

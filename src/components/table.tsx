@@ -53,7 +53,7 @@ export function Table({ caption, heads, lines, className = "" }: TableProps) {
                 key={head.key}
                 scope="col"
                 aria-label={head.label}
-                className={`pb-1.5 align-bottom text-[0.8125rem]/[1.125rem] font-normal text-ink2 ${
+                className={`pb-1.5 align-bottom type-small font-normal text-ink2 ${
                   index === 0 ? "sticky left-0 bg-recto pr-4 text-left" : `pr-[0.33em] pl-4 ${side(head.align)}`
                 }`}
               >

@@ -26,12 +26,12 @@ const ITEM = [
 function Item({ verdict }: { verdict: StripVerdict }) {
   return (
     <li className={ITEM}>
-      <div className="text-[0.8125rem]/[1.125rem] text-ink2">{verdict.law}</div>
+      <div className="type-small text-ink2">{verdict.law}</div>
       <div className="row-span-2 flex items-center gap-2 text-[0.90625rem]/[1.3125rem] font-semibold min-[600px]:gap-2.5">
         <VerdictFigure shape={verdict.shape} />
         {verdict.word}
       </div>
-      <div className="text-[0.78125rem]/[1.0625rem] text-ink2">
+      <div className="type-smallest text-ink2">
         <Printed text={verdict.below} />
         {verdict.mark}
       </div>

@@ -1,0 +1,59 @@
+import { useState } from "react";
+import { FormRow, TextControl } from "../form/fields.tsx";
+import type { Written } from "../form/written.ts";
+
+const LINK = "word type-small";
+
+/** Columns derived from others: a name and an expression each. */
+export function DerivedFields({ written, readOnly }: { written: Written; readOnly: boolean }) {
+  const [name, setName] = useState("");
+  const derived = Object.keys(written.map("derive"));
+  if (readOnly && derived.length === 0) return null;
+  return (
+    <FormRow label="Derive">
+      {derived.map((column) => (
+        <div key={column} className="flex items-baseline gap-2">
+          <span className="shrink-0 font-mono text-[0.8125rem]/[1.375rem]">{column} =</span>
+          <TextControl
+            aria-label={`Expression of ${column}`}
+            value={written.text("derive", column)}
+            mono
+            readOnly={readOnly}
+            // An emptied expression takes the column with it.
+            onCommit={(text) => written.write([["derive", column], text === "" ? undefined : text])}
+          />
+        </div>
+      ))}
+      {!readOnly && (
+        <div className="flex items-baseline gap-2">
+          <input
+            type="text"
+            aria-label="Name of a column to derive"
+            value={name}
+            spellCheck={false}
+            autoComplete="off"
+            onChange={(event) => setName(event.target.value.replace(/\s/g, "_"))}
+            className="min-h-6 w-24 shrink-0 border-ctl border-b bg-transparent font-mono text-[0.8125rem]/[1.375rem] max-[599px]:min-h-11"
+          />
+          <span aria-hidden="true">=</span>
+          <TextControl
+            aria-label="Expression of the column to derive"
+            value=""
+            mono
+            readOnly={name === ""}
+            onCommit={(text) => {
+              if (text === "") return;
+              written.write([["derive", name], text]);
+              setName("");
+            }}
+          />
+          {name !== "" && (
+            <button type="button" className={LINK} onClick={() => setName("")}>
+              Leave it
+            </button>
+          )}
+        </div>
+      )}
+    </FormRow>
+  );
+}

@@ -1,0 +1,142 @@
+import { useState } from "react";
+import type { DataFinding } from "../../../shared/schemas/data.ts";
+import { suggestGoods } from "../../../shared/study/suggest.ts";
+import { capital } from "../../../shared/study/words.ts";
+import { DECIMALS, printFixed, printPercent } from "../../../shared/tables/numbers.ts";
+import { ChoiceControl, TextControl } from "../form/fields.tsx";
+import { readWritten, type Written } from "../form/written.ts";
+import type { FormProps } from "../types.ts";
+import { columnChoices } from "./column-choices.ts";
+import { chooseColumn, FOLLOWS, follows, mappingOf, SLOTS } from "./goods-mapping.ts";
+
+interface GoodsTableProps {
+  readonly form: FormProps;
+  /** What the goods came out as, when a finding is shown beside their columns. */
+  readonly found?: DataFinding["goods"];
+}
+
+const LINK = "word type-small";
+
+function GoodRow({
+  good,
+  written,
+  choices,
+  form,
+  found,
+}: GoodsTableProps & {
+  good: string;
+  written: Written;
+  choices: ReturnType<typeof columnChoices>;
+}) {
+  const mapping = mappingOf(written, good);
+  const description = found?.find((one) => one.name === good);
+  return (
+    <tr className="border-rule border-b">
+      <th scope="row" className="py-1 pr-2 text-left text-[0.875rem]/[1.25rem] font-semibold">
+        {capital(good)}
+      </th>
+      {SLOTS.map((slot) => (
+        <td key={slot} className="min-w-[5.5rem] py-1 pr-3">
+          <ChoiceControl
+            aria-label={`${capital(slot)} of ${good}`}
+            value={mapping[slot] ?? ""}
+            choices={choices}
+            none={follows(mapping, slot) ? FOLLOWS[slot] : "choose"}
+            mono={mapping[slot] !== undefined}
+            readOnly={form.readOnly}
+            onChange={(column) => written.write(...chooseColumn(mapping, good, slot, column))}
+          />
+        </td>
+      ))}
+      {found && (
+        <td className="py-1 type-small">
+          {description &&
+            `share ${printFixed(description.meanShare, DECIMALS.share)}, ${
+              description.boughtNone === 0 ? "bought by all" : `${printPercent(description.boughtNone)} bought none`
+            }`}
+        </td>
+      )}
+      {!form.readOnly && (
+        <td className="py-1 pl-2 text-right">
+          <button
+            type="button"
+            aria-label={`Remove ${good}`}
+            className={LINK}
+            onClick={() => written.write([["goods", good], undefined])}
+          >
+            Remove
+          </button>
+        </td>
+      )}
+    </tr>
+  );
+}
+
+function AddGood({ written, goods }: { written: Written; goods: readonly string[] }) {
+  const [said, setSaid] = useState("");
+  const add = (name: string) => {
+    if (name === "") return;
+    if (goods.includes(name)) return setSaid(`There is a good called ${name} already.`);
+    setSaid("");
+    written.write([["goods", name], {}]);
+  };
+  return (
+    <div className="mt-2 flex max-w-sm items-baseline gap-3">
+      <span className="shrink-0 text-[0.875rem]/[1.25rem] text-ink2">Add a good, by name</span>
+      <TextControl aria-label="Name of a good to add" value="" readOnly={false} onCommit={add} />
+      <span role="status" className="text-[0.8125rem] text-fail">
+        {said}
+      </span>
+    </div>
+  );
+}
+
+/** Goods to columns: two of price, expenditure and quantity each; the third is shown as what it follows from. */
+export function GoodsTable({ form, found }: GoodsTableProps) {
+  const written = readWritten("data", form);
+  const goods = Object.keys(written.map("goods"));
+  const upload = form.context.uploads.find((one) => one.name === written.text("upload"));
+  const choices = columnChoices(upload, Object.keys(written.map("derive")), true);
+  const suggested = upload && goods.length === 0 ? Object.entries(suggestGoods(upload.columns).goods) : [];
+  const takeSuggested = () =>
+    written.write([
+      ["goods"],
+      Object.fromEntries(suggested.map(([good, columns]) => [good, { ...columns } as Record<string, string>])),
+    ]);
+  return (
+    <div>
+      {goods.length > 0 && (
+        // biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls sideways must be reachable by keyboard
+        <section aria-label="Goods and their columns" tabIndex={0} className="overflow-x-auto">
+          <table className="w-full">
+            <thead>
+              <tr className="border-line border-b text-left type-small text-ink2">
+                {["Good", "Price", "Expenditure", "Quantity", ...(found ? ["In the rows used"] : [])].map((head) => (
+                  <th key={head} scope="col" className="pb-1 font-normal">
+                    {head}
+                  </th>
+                ))}
+                {!form.readOnly && (
+                  <td>
+                    <span className="sr-only">Remove</span>
+                  </td>
+                )}
+              </tr>
+            </thead>
+            <tbody>
+              {goods.map((good) => (
+                <GoodRow key={good} good={good} written={written} choices={choices} form={form} found={found} />
+              ))}
+            </tbody>
+          </table>
+        </section>
+      )}
+      {!form.readOnly && suggested.length > 0 && (
+        <button type="button" className={LINK} onClick={takeSuggested}>
+          Take the {suggested.length} goods that the columns’ names suggest
+        </button>
+      )}
+      {!form.readOnly && <AddGood written={written} goods={goods} />}
+    </div>
+  );
+}

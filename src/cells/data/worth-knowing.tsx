@@ -1,0 +1,44 @@
+import type { DataFinding } from "../../../shared/schemas/data.ts";
+import { capital } from "../../../shared/study/words.ts";
+import { printCount } from "../../../shared/tables/numbers.ts";
+
+type Flag = DataFinding["flags"][number];
+
+function Note({ flag }: { flag: Flag }) {
+  return (
+    <div className="max-w-[26rem] break-inside-avoid pb-3">
+      <h4 className="text-[0.90625rem]/[1.3125rem] font-semibold">{capital(flag.about)}</h4>
+      <p className="text-[0.875rem]/[1.25rem] text-ink2">{flag.sentence}</p>
+      {flag.rows.length > 0 && (
+        <details className="type-small">
+          <summary className="word">
+            {printCount(flag.rows.length)} {flag.rows.length === 1 ? "row" : "rows"}
+          </summary>
+          <p className="max-h-40 overflow-y-auto text-ink2">{flag.rows.map(printCount).join(", ")}</p>
+        </details>
+      )}
+    </div>
+  );
+}
+
+/** What is worth knowing before estimating; never an error, so it stands last. */
+export function WorthKnowing({ flags }: { flags: readonly Flag[] }) {
+  return (
+    <section aria-labelledby="worth-knowing" className="border-line border-t pt-4">
+      <h3 id="worth-knowing" className="mb-1 type-section">
+        Worth knowing before estimating
+      </h3>
+      {flags.length === 0 ? (
+        <p className="text-[0.875rem]/[1.25rem] text-ink2">
+          Nothing unusual in zeros, outliers, price variation or collinearity.
+        </p>
+      ) : (
+        <div className="gap-8 min-[800px]:columns-2">
+          {flags.map((flag) => (
+            <Note key={flag.about + flag.sentence} flag={flag} />
+          ))}
+        </div>
+      )}
+    </section>
+  );
+}

@@ -1,0 +1,61 @@
+import { useState } from "react";
+import type { SlutskyFinding } from "../../../shared/schemas/slutsky.ts";
+import { listWords } from "../../../shared/study/words.ts";
+import { DECIMALS, printCount, printFixed } from "../../../shared/tables/numbers.ts";
+import { Table } from "../../components/table.tsx";
+
+type BrokenRow = SlutskyFinding["brokenRows"][number];
+const FIRST = 5;
+
+function also(row: BrokenRow): string {
+  if (!row.breaks.includes("monotonicity")) return "";
+  const which = row.lowestShare < 0 ? "a share below 0" : "a share above 1";
+  return row.breaks.includes("negativity") ? `monotonicity breaks, ${which}` : `monotonicity only, ${which}`;
+}
+
+/** The rows of the upload where a law breaks, worst first. */
+export function BrokenRows({ rows, total }: { rows: readonly BrokenRow[]; total: number }) {
+  const [all, setAll] = useState(false);
+  const shown = all ? rows : rows.slice(0, FIRST);
+  const more = rows.length > FIRST;
+  return (
+    <>
+      <div className="flex items-baseline justify-between gap-4">
+        <h3 className="type-section">Where it breaks</h3>
+        {more && (
+          <button type="button" aria-expanded={all} onClick={() => setAll(!all)} className="word type-small">
+            {all ? `First ${FIRST} rows` : `All ${printCount(rows.length)} rows`}
+          </button>
+        )}
+      </div>
+      <Table
+        className="mt-1"
+        caption="Rows where a law breaks"
+        heads={[
+          { key: "row", content: "Row of the upload" },
+          { key: "total", content: "Expenditure, units uploaded" },
+          { key: "eigenvalue", content: "Largest eigenvalue" },
+          { key: "goods", content: "Goods that break it", align: "left" },
+          { key: "shares", content: "Lowest and highest share" },
+          { key: "also", content: "Also", align: "left" },
+        ]}
+        lines={shown.map((row) => ({
+          key: String(row.row),
+          head: printCount(row.row),
+          cells: [
+            printFixed(row.total, DECIMALS.money),
+            row.largestEigenvalue === undefined ? "not stated" : printFixed(row.largestEigenvalue, DECIMALS.entry),
+            listWords(row.goods),
+            `${printFixed(row.lowestShare, 3)}, ${printFixed(row.highestShare, 3)}`,
+            also(row),
+          ],
+        }))}
+      />
+      {rows.length < total && (
+        <p className="mt-1.5 type-small text-ink2">
+          The {printCount(rows.length)} worst of {printCount(total)} rows.
+        </p>
+      )}
+    </>
+  );
+}

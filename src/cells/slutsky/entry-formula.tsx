@@ -1,0 +1,79 @@
+import { type FormulaParts, formulaParts } from "../../../shared/economics/formula.ts";
+import type { SlutskyFinding } from "../../../shared/schemas/slutsky.ts";
+import { DECIMALS, printFixed } from "../../../shared/tables/numbers.ts";
+import { added, formulaDecimals } from "./formula.ts";
+import { MathText } from "./math-text.tsx";
+import type { Place } from "./moves.ts";
+
+/** k_ij in letters; for the mirror with i and j exchanged, for an own price with its − w_i. */
+function letters(own: boolean, i: string, j: string): string {
+  if (own) return `k_${i}${i} = μ_${i}${i} \u2212 w_${i} + (w_${i} + μ_${i})w_${i}`;
+  return `k_${i}${j} = μ_${i}${j} + (w_${i} + μ_${i})w_${j}`;
+}
+
+function Numbers({ parts }: { parts: FormulaParts }) {
+  const decimals = formulaDecimals(parts);
+  const print = (value: number) => printFixed(value, decimals);
+  const outside = `${print(parts.priceSlope)}${parts.own ? ` ${added(-parts.share, decimals)}` : ""}`;
+  const factor = `(${print(parts.share)} ${added(parts.totalSlope, decimals)})`;
+  return (
+    <>
+      <div>
+        = {outside} + {factor} × {print(parts.otherShare)}
+      </div>
+      <div>
+        = {outside} {added(parts.incomeTerm, decimals)} ={" "}
+        <strong className="font-semibold">{printFixed(parts.value, DECIMALS.entry)}</strong>
+      </div>
+    </>
+  );
+}
+
+/** μ_ij by the fitted system's own formula, with its numbers. */
+function SlopeNote({ parts }: { parts: FormulaParts }) {
+  const terms = parts.priceSlopeTerms;
+  const sign = (value: 1 | -1, first: boolean) => (value < 0 ? "\u2212" : first ? "" : "+");
+  const joined = (factor: (term: (typeof terms)[number]) => string) =>
+    terms.map((term, index) => `${sign(term.sign, index === 0)}${index === 0 ? "" : " "}${factor(term)}`).join(" ");
+  const print = (value: number, bracketed: boolean) => {
+    const printed = printFixed(value, DECIMALS.coefficient);
+    return value < 0 && bracketed ? `(${printed})` : printed;
+  };
+  const symbols = joined((term) => term.factors.map(({ symbol }) => symbol).join(" "));
+  const numbers = joined((term) =>
+    term.factors.map(({ value }, index) => print(value, index > 0 || term.sign < 0 || term !== terms[0])).join(" × "),
+  );
+  return (
+    <p className="text-[0.8125rem]/[1.1875rem] text-ink2">
+      with <MathText text={parts.own ? "μ_ii" : "μ_ij"} /> ={" "}
+      <MathText text={parts.own ? symbols.replace(/_j\b/g, "_i").replace(/_ij\b/g, "_ii") : symbols} /> = {numbers}
+    </p>
+  );
+}
+
+type Evaluated = Pick<SlutskyFinding, "fitted" | "point">;
+
+/** The formula of an entry twice: once with its own numbers, once with its mirror's. Share form. */
+export function EntryFormula({ finding, place: [i, j] }: { finding: Evaluated; place: Place }) {
+  const own = i === j;
+  const entry = formulaParts(finding.fitted, finding.point, i, j);
+  return (
+    <div className="space-y-2 font-serif text-[0.9375rem]/[1.5rem] tabular-nums lining-nums">
+      <section aria-label="Formula">
+        <div>
+          <MathText text={letters(own, "i", "j")} />
+        </div>
+        <Numbers parts={entry} />
+      </section>
+      <SlopeNote parts={entry} />
+      {!own && (
+        <section aria-label="Formula of the mirror">
+          <div>
+            <MathText text={letters(false, "j", "i")} />
+          </div>
+          <Numbers parts={formulaParts(finding.fitted, finding.point, j, i)} />
+        </section>
+      )}
+    </div>
+  );
+}

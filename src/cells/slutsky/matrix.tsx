@@ -1,0 +1,188 @@
+import { type KeyboardEvent, useEffect, useRef } from "react";
+import { capital } from "../../../shared/study/words.ts";
+import { ErrorBelow } from "../../components/number.tsx";
+import { moveBy, type Place } from "./moves.ts";
+import { isDeep, scaleToken } from "./scale.ts";
+import type { MatrixSetting, ShownMatrix } from "./shown-matrix.ts";
+
+interface MatrixFieldProps {
+  readonly shown: ShownMatrix;
+  readonly setting: MatrixSetting;
+  readonly label: string;
+  readonly pointed?: Place;
+  readonly onPoint?: (place: Place) => void;
+  /** Row and column sums, printed outside the coloured field. */
+  readonly sums?: { readonly rows: readonly string[]; readonly columns: readonly string[] };
+}
+
+const SIZES: Record<MatrixSetting, string> = {
+  errors: "h-[54px] w-[79px] min-w-[79px] px-2 text-[0.875rem]/[1.125rem]",
+  plain: "h-[30px] w-[66px] min-w-[66px] px-2 type-small",
+  many: "h-[40px] w-[40px] min-w-[40px] px-0.5 text-[0.71875rem]/[1rem]",
+  phone: "h-[41px] min-w-[37px] px-0.5 text-[0.875rem]/[1.125rem]",
+};
+const CENTRED: Record<MatrixSetting, string> = {
+  errors: "text-right",
+  plain: "text-right",
+  many: "text-center",
+  phone: "text-center",
+};
+
+/** The accent ring with a recto ring inside it; the mirror's the same, dashed. */
+const RING = "relative z-1 outline-[2.5px] outline-accent -outline-offset-1 shadow-[inset_0_0_0_3.5px_var(--recto)]";
+
+function entryLabel(shown: ShownMatrix, i: number, j: number): string {
+  const value = shown.full(shown.entries[i][j]);
+  const error = shown.full(shown.errors[i][j]);
+  return `${shown.goods[i]}, price of ${shown.goods[j]}: ${value}, standard error ${error}`;
+}
+
+function ColumnHeads({ shown, setting, pointed, sums }: Omit<MatrixFieldProps, "label" | "onPoint">) {
+  const turned = setting === "phone" || setting === "many";
+  return (
+    <tr>
+      <td className="sticky left-0 z-2 bg-recto pb-1 align-bottom text-[0.8125rem] text-ink2">{shown.unit}</td>
+      {shown.goods.map((good, j) => (
+        <th
+          key={good}
+          scope="col"
+          className={`align-bottom text-[0.8125rem]/[1.0625rem] ${
+            pointed?.[1] === j ? "font-semibold text-accent" : "font-normal text-ink2"
+          } ${turned ? "pb-1" : "max-w-[79px] pr-2 pb-1.5 text-right"}`}
+        >
+          {turned ? (
+            <span className="inline-block max-h-36 rotate-180 text-left [writing-mode:vertical-rl]">
+              {capital(good)}
+            </span>
+          ) : (
+            capital(good)
+          )}
+        </th>
+      ))}
+      {sums && (
+        <th scope="col" className="pb-1.5 pl-4 text-right align-bottom text-[0.8125rem] font-normal text-ink2">
+          Row sum
+        </th>
+      )}
+    </tr>
+  );
+}
+
+interface EntryProps extends Pick<MatrixFieldProps, "shown" | "setting" | "pointed" | "onPoint"> {
+  readonly place: Place;
+}
+
+function Entry({ shown, setting, pointed, onPoint, place }: EntryProps) {
+  const [i, j] = place;
+  const token = scaleToken(shown.entries[i][j], shown.steps);
+  const isPointed = pointed?.[0] === i && pointed[1] === j;
+  const isMirror = pointed !== undefined && pointed[0] === j && pointed[1] === i && !isPointed;
+  const ink = isDeep(token) ? "text-recto [[data-theme=dark]_&]:text-paper" : "text-ink";
+  const ring = isPointed ? `${RING} outline-solid` : isMirror ? `${RING} outline-dashed` : "";
+  const interactive = onPoint !== undefined;
+  return (
+    <td
+      {...(interactive && {
+        role: "gridcell",
+        "aria-label": entryLabel(shown, i, j),
+        "aria-selected": isPointed,
+        tabIndex: isPointed ? 0 : -1,
+        onPointerEnter: () => onPoint(place),
+        onClick: () => onPoint(place),
+      })}
+      data-place={`${i},${j}`}
+      data-mirror={isMirror || undefined}
+      data-step={token}
+      style={{ backgroundColor: `var(--${token})` }}
+      className={`${SIZES[setting]} ${CENTRED[setting]} tabular-nums print:border print:border-rule2 ${ink} ${ring}`}
+    >
+      {shown.short(shown.entries[i][j])}
+      {setting === "errors" && (
+        <span className="[&>span]:text-current">
+          <ErrorBelow error={shown.full(shown.errors[i][j])} />
+        </span>
+      )}
+    </td>
+  );
+}
+
+function Sums({ sums }: { sums: NonNullable<MatrixFieldProps["sums"]> }) {
+  return (
+    <tr>
+      <th scope="row" className="sticky left-0 z-2 bg-recto py-2 text-left text-[0.8125rem] font-normal text-ink2">
+        Column sum
+      </th>
+      {sums.columns.map((sum, index) => (
+        <td key={index} className="pr-2 text-right text-[0.8125rem] text-ink2 tabular-nums">
+          {sum}
+        </td>
+      ))}
+      <td />
+    </tr>
+  );
+}
+
+/** Keeps the keyboard's focus on the entry pointed at, once it is in the matrix at all. */
+function useFollowedFocus(pointed: Place | undefined) {
+  const ref = useRef<HTMLTableElement>(null);
+  const key = pointed?.join(",");
+  useEffect(() => {
+    const table = ref.current;
+    if (!key || !table?.contains(document.activeElement)) return;
+    table.querySelector<HTMLElement>(`[data-place="${key}"]`)?.focus({ preventScroll: false });
+  }, [key]);
+  return ref;
+}
+
+/** The Slutsky matrix as a field of signed colour: every entry has its sign printed, so colour carries nothing alone. */
+export function MatrixField({ shown, setting, label, pointed, onPoint, sums }: MatrixFieldProps) {
+  const ref = useFollowedFocus(pointed);
+  const onKeyDown = (event: KeyboardEvent) => {
+    if (!onPoint || !pointed || event.altKey || event.metaKey) return;
+    const next = moveBy(event.key, pointed, shown.goods.length, event.ctrlKey);
+    if (!next) return;
+    event.preventDefault();
+    onPoint(next);
+  };
+  return (
+    <div className="overflow-x-auto p-1 -m-1">
+      <table
+        ref={ref}
+        role={onPoint ? "grid" : undefined}
+        aria-label={label}
+        onKeyDown={onKeyDown}
+        className={`border-separate border-spacing-px ${setting === "phone" ? "w-full" : ""}`}
+      >
+        <thead>
+          <ColumnHeads shown={shown} setting={setting} pointed={pointed} sums={sums} />
+        </thead>
+        <tbody>
+          {shown.goods.map((good, i) => (
+            <tr key={good}>
+              <th
+                scope="row"
+                className={`sticky left-0 z-2 bg-recto pr-3 text-left text-[0.875rem]/[1.125rem] ${
+                  pointed?.[0] === i ? "font-semibold text-accent" : "font-normal"
+                }`}
+              >
+                {capital(good)}
+              </th>
+              {shown.goods.map((column, j) => (
+                <Entry
+                  key={column}
+                  shown={shown}
+                  setting={setting}
+                  pointed={pointed}
+                  onPoint={onPoint}
+                  place={[i, j]}
+                />
+              ))}
+              {sums && <td className="pl-4 text-right text-[0.8125rem] text-ink2 tabular-nums">{sums.rows[i]}</td>}
+            </tr>
+          ))}
+          {sums && <Sums sums={sums} />}
+        </tbody>
+      </table>
+    </div>
+  );
+}
