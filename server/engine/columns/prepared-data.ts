@@ -20,6 +20,12 @@ export type TableColumn =
       readonly firstText?: { readonly row: number; readonly value: string };
     };
 
+/** Rows used in which a column has no number, and the first of them by its number in the upload. */
+export interface IncompleteColumn {
+  readonly missing: number;
+  readonly firstRow: number;
+}
+
 /**
  * A data cell's rows used, ready for estimation: T rows, n goods, everything column-wise in Float64.
  * Prices and total are in units of estimation (divided by `priceScale` and `totalScale`).
@@ -39,6 +45,8 @@ export interface PreparedData {
   readonly time?: Float64Array;
   /** Numeric columns a system may use as demographics, derived ones included, rows used only. */
   readonly numeric: ReadonlyMap<string, Float64Array>;
+  /** Columns of numbers that lack a value in some row used, and so are no demographics: for the refusal that says so. */
+  readonly incomplete?: ReadonlyMap<string, IncompleteColumn>;
   readonly priceScale: readonly number[];
   readonly totalScale: number;
   readonly finding: DataFinding;
