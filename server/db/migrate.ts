@@ -3,7 +3,7 @@ import { dirname, join } from "node:path";
 import { fileURLToPath } from "node:url";
 import { migrate } from "drizzle-orm/better-sqlite3/migrator";
 import { z } from "zod";
-import type { OpenDatabase } from "./client.ts";
+import type { OpenDatabase } from "./connection.ts";
 
 const journal = z.object({ entries: z.array(z.object({ when: z.number(), tag: z.string() })) });
 
