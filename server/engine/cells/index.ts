@@ -1,0 +1,3 @@
+export { runData } from "./data.ts";
+export { runSlutsky } from "./slutsky.ts";
+export { runSystem } from "./system.ts";

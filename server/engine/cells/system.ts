@@ -1,0 +1,73 @@
+import { theoryChecksAt } from "../../../shared/economics/checks.ts";
+import { elasticitiesAt } from "../../../shared/economics/elasticities.ts";
+import { type SystemFinding, type SystemSpecification, systemFinding } from "../../../shared/schemas/system.ts";
+import type { Point } from "../../../shared/systems/demand-system.ts";
+import { type FittedCoefficients, systemOf } from "../../../shared/systems/index.ts";
+import type { PreparedData } from "../columns/prepared-data.ts";
+import {
+  accumulateMoments,
+  estimateSystem,
+  type Moments,
+  type MomentsRequest,
+  momentsRequest,
+} from "../estimation/index.ts";
+import { QUIET, type RunControl } from "../run.ts";
+import { basePoint, meanPoint } from "./points.ts";
+import { refusingRanges } from "./refusing.ts";
+import { checkSample } from "./sample-checks.ts";
+import { weightedQuantiles } from "./weighted.ts";
+
+/**
+ * A system cell: moments, estimates, and what the estimates say at the base point and over the sample.
+ * Errors: `Refusal` (fewer rows than coefficients, singular, not converged …), `Cancelled`.
+ */
+export function runSystem(
+  specification: SystemSpecification,
+  data: PreparedData,
+  control: RunControl = QUIET,
+): SystemFinding {
+  const moments = momentsOf(data, momentsRequest(specification, data), control);
+  const estimate = estimateSystem(specification, data, moments, control);
+  const { fitted } = estimate;
+  const base = basePoint(data, fitted.demographics);
+  const mean = meanPoint(data, fitted.demographics);
+  return refusingRanges(() => {
+    const { expenditure, expenditureErrors } = elasticitiesAt(fitted, base);
+    return systemFinding.parse({
+      ...estimate,
+      points: { base, mean },
+      expenditureElasticities: fitted.goods.map((good, i) => ({
+        good,
+        estimate: expenditure[i],
+        standardError: expenditureErrors[i],
+      })),
+      engel: engelCurves(fitted, data, mean),
+      checks: { ...theoryChecksAt(fitted, base, "base point"), sample: checkSample(fitted, data, control) },
+    });
+  });
+}
+
+/** Specifications on the same rows that need the same moments read the rows once between them. */
+const MOMENTS = new WeakMap<PreparedData, Map<string, Moments>>();
+
+function momentsOf(data: PreparedData, request: MomentsRequest, control: RunControl): Moments {
+  const kept = MOMENTS.get(data) ?? new Map<string, Moments>();
+  MOMENTS.set(data, kept);
+  const known = kept.get(request.key);
+  if (known) return known;
+  control.progress({ step: "accumulating moments" });
+  const moments = accumulateMoments(data, request, control);
+  kept.set(request.key, moments);
+  return moments;
+}
+
+const CURVE_POINTS = 25;
+
+/** Predicted shares against ln x at mean prices and demographics, from the 1st to the 99th percentile of ln x. */
+function engelCurves(fitted: FittedCoefficients, data: PreparedData, mean: Point): SystemFinding["engel"] {
+  const { system, size } = systemOf(fitted);
+  const [low, high] = weightedQuantiles(data.logTotal, [0.01, 0.99], data.weights);
+  const logTotal = Array.from({ length: CURVE_POINTS }, (_, i) => low + ((high - low) * i) / (CURVE_POINTS - 1));
+  const curves = logTotal.map((log) => system.slopes(fitted.theta, size, { ...mean, total: Math.exp(log) }).shares);
+  return { logTotal, shares: fitted.goods.map((_, i) => curves.map((shares) => shares[i])) };
+}
