@@ -29,7 +29,6 @@ const REASONS = {
   "signed out": new SyncRefused(CLOSE.notSignedIn, "You have signed out."),
   "role changed": new SyncRefused(CLOSE.roleChanged, "Your role in this study has changed."),
 } as const;
-export type CloseReason = keyof typeof REASONS;
 
 export type SyncServer = ReturnType<typeof createSyncServer>;
 
@@ -95,20 +94,19 @@ export function createSyncServer(needs: SyncServerNeeds) {
     /** A change made by the program; kept when it is on disk and sent to everyone. */
     edit: (studyId: string, change: (doc: Doc) => void): Promise<void> => rooms.open(studyId).edit(change),
 
-    /** Closes the person's sockets at once, in one study or in all; nothing more is taken from them. */
-    closePerson(userId: string, studyId?: string, reason: CloseReason = studyId ? "removed" : "signed out"): void {
+    /**
+     * Closes the person's sockets at once, in one study (removed from it, or in another role from now on) or in all
+     * (signed out). Nothing more is taken from them.
+     */
+    closePerson(userId: string, studyId?: string): void {
       for (const room of rooms.all()) {
         if (studyId !== undefined && room.studyId !== studyId) continue;
         for (const connection of [...room.connections]) {
-          if (connection.person.id === userId) connection.expel(REASONS[reason]);
+          if (connection.person.id !== userId) continue;
+          if (studyId === undefined) connection.expel(REASONS["signed out"]);
+          else connection.expel(REASONS[needs.roleOf(userId, studyId) ? "role changed" : "removed"]);
         }
       }
-    },
-
-    /** Closes everyone's sockets of a study that is no more. */
-    closeStudy(studyId: string): void {
-      const gone = new SyncRefused(CLOSE.noStudy, "This study has been deleted.");
-      for (const connection of [...(rooms.loaded(studyId)?.connections ?? [])]) connection.expel(gone);
     },
 
     /** Stores what has arrived, closes every socket and waits for it; the database may then be closed. */

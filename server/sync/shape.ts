@@ -1,3 +1,4 @@
+import { generateKeyBetween } from "fractional-indexing";
 import * as Y from "yjs";
 import { CELLS } from "./document.ts";
 import type { Limits } from "./limits.ts";
@@ -67,6 +68,16 @@ function checkEntry(item: Y.Item, key: string | null, limits: Limits): void {
   if (typeof value !== "string") throw malformed(`A cell's ${key} is a word.`);
   if (value.length > longest) {
     throw tooLarge(`A cell's ${key} has at most ${longest} characters; this one has ${value.length}.`);
+  }
+  if (key === "order" && !isOrderKey(value)) throw malformed("A cell's order is a fractional key.");
+}
+
+/** One that is not would keep everyone from adding a cell after it. */
+function isOrderKey(value: string): boolean {
+  try {
+    return generateKeyBetween(value, null) > value;
+  } catch {
+    return false;
   }
 }
 

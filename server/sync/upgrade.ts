@@ -14,9 +14,9 @@ export interface SignedIn {
 }
 
 export interface Door {
-  authenticate(request: IncomingMessage): Promise<SignedIn | null> | SignedIn | null;
-  /** Null when the study does not exist or the person is not in it: the two are told alike. */
-  roleOf(userId: string, studyId: string): Promise<Role | null | undefined> | Role | null | undefined;
+  authenticate(request: IncomingMessage): Promise<SignedIn | null | undefined> | SignedIn | null | undefined;
+  /** Nothing when the study does not exist or the person is not in it: the two are told alike. */
+  roleOf(userId: string, studyId: string): Role | null | undefined;
   /** Origins whose pages may connect besides this server's own, e.g. "https://tangency.example". */
   readonly origins?: readonly string[];
 }
@@ -51,7 +51,7 @@ export async function admit(request: IncomingMessage, studyId: string, door: Doo
   if (!person || (person.expiresAt !== undefined && person.expiresAt.getTime() <= Date.now())) {
     throw new SyncRefused(CLOSE.notSignedIn, "You are not signed in.");
   }
-  const role = await door.roleOf(person.id, studyId);
+  const role = door.roleOf(person.id, studyId);
   if (!role) throw noStudy;
   return { person, role, studyId };
 }
