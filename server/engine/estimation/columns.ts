@@ -1,0 +1,64 @@
+/**
+ * A dense matrix stored by columns: entry (i, j) is `values[j * rows + i]`. The estimators work on
+ * this rather than on rows of numbers, because every inner loop runs down a column.
+ */
+export interface Columns {
+  readonly rows: number;
+  readonly columns: number;
+  readonly values: Float64Array;
+}
+
+export function zeros(rows: number, columns: number): Columns {
+  return { rows, columns, values: new Float64Array(rows * columns) };
+}
+
+export function columnOf(matrix: Columns, column: number): Float64Array {
+  return matrix.values.subarray(column * matrix.rows, (column + 1) * matrix.rows);
+}
+
+/** The named columns of a matrix, copied, in the order given. */
+export function pickColumns(matrix: Columns, columns: readonly number[]): Columns {
+  const picked = zeros(matrix.rows, columns.length);
+  columns.forEach((column, place) => {
+    picked.values.set(columnOf(matrix, column), place * matrix.rows);
+  });
+  return picked;
+}
+
+export function dot(left: Float64Array, right: Float64Array): number {
+  let sum = 0;
+  for (let i = 0; i < left.length; i++) sum += left[i] * right[i];
+  return sum;
+}
+
+/** A B for A (r × s) and B (s × t). */
+export function multiply(left: Columns, right: Columns): Columns {
+  const product = zeros(left.rows, right.columns);
+  for (let j = 0; j < right.columns; j++) {
+    const out = columnOf(product, j);
+    for (let k = 0; k < left.columns; k++) {
+      const factor = right.values[j * right.rows + k];
+      if (factor === 0) continue;
+      const offset = k * left.rows;
+      for (let i = 0; i < left.rows; i++) out[i] += factor * left.values[offset + i];
+    }
+  }
+  return product;
+}
+
+/** A'B for A (r × s) and B (r × t). */
+export function crossProduct(left: Columns, right: Columns): Columns {
+  const product = zeros(left.columns, right.columns);
+  for (let j = 0; j < right.columns; j++) {
+    const column = columnOf(right, j);
+    for (let i = 0; i < left.columns; i++) product.values[j * left.columns + i] = dot(columnOf(left, i), column);
+  }
+  return product;
+}
+
+/** As rows of numbers, for everything outside the estimators. */
+export function toRows(matrix: Columns): number[][] {
+  return Array.from({ length: matrix.rows }, (_, i) =>
+    Array.from({ length: matrix.columns }, (_, j) => matrix.values[j * matrix.rows + i]),
+  );
+}

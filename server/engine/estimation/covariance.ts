@@ -1,0 +1,86 @@
+import { type Columns, columnOf, crossProduct, dot, multiply, zeros } from "./columns.ts";
+import type { Estimation } from "./estimation.ts";
+import { triangularFactor } from "./householder.ts";
+import type { Solution } from "./minimise.ts";
+import { weightBlocks } from "./residuals.ts";
+import { invertUpper, semidefiniteCholesky } from "./triangle.ts";
+
+/**
+ * Conventional covariance of θ̂ (k × k, singular by the restrictions): S A⁻¹S' with A = Ĵ'Ĵ, the
+ * derivatives weighted by the Σ̂⁻¹ the estimator used. Right where the estimator is efficient.
+ */
+export function conventionalCovariance(estimation: Estimation, solution: Solution): number[][] {
+  return outerSquare(multiply(restrictionMatrix(estimation), inverseRoot(solution)));
+}
+
+/**
+ * Covariance of least squares while errors are correlated across equations: S A⁻¹B A⁻¹S' with
+ * B = Ĵ'(Ω̂ ⊗ I)Ĵ and Ω̂ the residual covariance (divisor T) in the estimator's own metric. Equation by
+ * equation it is the textbook σ̂²_i(X'X)⁻¹ with σ̂²_ij (X'X)⁻¹ between equations.
+ */
+export function leastSquaresCovariance(estimation: Estimation, solution: Solution): number[][] {
+  const { moments, equations } = estimation;
+  const height = moments.terms.rows;
+  const weighted = weightBlocks(chosenResiduals(solution, equations), height, solution.weight);
+  const triangle = triangularFactor({ rows: height, columns: equations.length, values: weighted.values });
+  const root = zeros(equations.length, triangle.rows);
+  for (let i = 0; i < triangle.rows; i++) {
+    for (let j = 0; j < equations.length; j++) {
+      root.values[i * root.rows + j] = triangle.values[j * triangle.rows + i] / Math.sqrt(moments.rows);
+    }
+  }
+  const spread = weightBlocks(solution.jacobian, height, root);
+  const inverse = inverseRoot(solution);
+  const inner = multiply(crossProduct(spread, spread), inverse);
+  const middle = semidefiniteCholesky(crossProduct(inverse, inner), 0).factor;
+  return outerSquare(multiply(multiply(restrictionMatrix(estimation), inverse), transpose(middle)));
+}
+
+/** D⁻¹R⁻¹: A⁻¹ is this times its transpose. */
+function inverseRoot({ factor }: Solution): Columns {
+  const inverse = invertUpper(factor.triangle);
+  for (let j = 0; j < inverse.columns; j++) {
+    const column = columnOf(inverse, j);
+    for (let i = 0; i < column.length; i++) column[i] /= factor.lengths[i];
+  }
+  return inverse;
+}
+
+function restrictionMatrix({ form }: Estimation): Columns {
+  const rows = form.expand.matrix.length;
+  const matrix = zeros(rows, form.free);
+  for (let f = 0; f < form.free; f++) {
+    for (let a = 0; a < rows; a++) matrix.values[f * rows + a] = form.expand.matrix[a][f];
+  }
+  return matrix;
+}
+
+/** H H', exactly symmetric. */
+function outerSquare(half: Columns): number[][] {
+  const rows = transpose(half);
+  const square = Array.from({ length: half.rows }, () => new Array<number>(half.rows).fill(0));
+  for (let a = 0; a < half.rows; a++) {
+    for (let b = 0; b <= a; b++) {
+      square[a][b] = dot(columnOf(rows, a), columnOf(rows, b));
+      square[b][a] = square[a][b];
+    }
+  }
+  return square;
+}
+
+function transpose(matrix: Columns): Columns {
+  const result = zeros(matrix.columns, matrix.rows);
+  for (let j = 0; j < matrix.columns; j++) {
+    for (let i = 0; i < matrix.rows; i++) result.values[i * result.rows + j] = matrix.values[j * matrix.rows + i];
+  }
+  return result;
+}
+
+function chosenResiduals(solution: Solution, equations: readonly number[]): Columns {
+  const height = solution.residuals.rows;
+  const stacked = zeros(height * equations.length, 1);
+  equations.forEach((equation, place) => {
+    stacked.values.set(columnOf(solution.residuals, equation), place * height);
+  });
+  return stacked;
+}

@@ -1,0 +1,32 @@
+import type { MomentSource } from "./moment-source.ts";
+
+/**
+ * Durbin & Watson's (1950, Biometrika 37) d by equation: Σ (e_t − e_{t−1})²/Σ e_t² over rows in the
+ * order of time. Undefined where two rows share a time: such rows have no order.
+ */
+export function durbinWatson(
+  source: MomentSource,
+  time: Float64Array,
+  coefficients: readonly (readonly number[])[],
+): number[] | undefined {
+  const order = Array.from(time.keys()).sort((one, two) => time[one] - time[two]);
+  if (order.some((row, place) => place > 0 && !(time[row] > time[order[place - 1]]))) return undefined;
+  const squares = new Float64Array(coefficients.length);
+  const changes = new Float64Array(coefficients.length);
+  const last = new Float64Array(coefficients.length);
+  const terms = new Float64Array(source.terms.length);
+  order.forEach((row, place) => {
+    source.terms.forEach(([left, right], term) => {
+      const first = left === 0 ? 1 : source.columns[left - 1][row];
+      terms[term] = right === 0 ? 1 : first * source.columns[right - 1][row];
+    });
+    coefficients.forEach((equation, i) => {
+      let residual = source.responses[i][row];
+      for (let term = 0; term < terms.length; term++) residual -= equation[term] * terms[term];
+      squares[i] += residual * residual;
+      if (place > 0) changes[i] += (residual - last[i]) ** 2;
+      last[i] = residual;
+    });
+  });
+  return Array.from(changes, (change, i) => change / squares[i]);
+}

@@ -1,0 +1,160 @@
+import type { SystemFinding, SystemSpecification } from "../../../shared/schemas/system.ts";
+import type { DemandSystem, SystemSize } from "../../../shared/systems/demand-system.ts";
+import { SYSTEMS } from "../../../shared/systems/index.ts";
+import type { PreparedData } from "../columns/prepared-data.ts";
+import { type NestedFits, restrictionTests } from "../inference/restriction-tests.ts";
+import { Refusal } from "../refusal.ts";
+import type { RunControl } from "../run.ts";
+import { systemForm } from "./coefficient-form.ts";
+import { coefficientNames, labelOfCoefficient } from "./coefficient-labels.ts";
+import { conventionalCovariance, leastSquaresCovariance } from "./covariance.ts";
+import { durbinWatson } from "./durbin-watson.ts";
+import type { Estimation } from "./estimation.ts";
+import { leastSquares, maximumLikelihood, seeminglyUnrelated } from "./estimators.ts";
+import { refuseTooFewRows } from "./failures.ts";
+import { fitMeasures, meanResponses } from "./fit-measures.ts";
+import type { Solution } from "./minimise.ts";
+import type { Moments } from "./moments.ts";
+import { nestedFits, rememberFit } from "./nested-fits.ts";
+import { DEFAULT_INDEX, momentsRequest, sizeOf, sourceOf } from "./request.ts";
+import { covarianceOf } from "./weighting.ts";
+
+/** A system finding but for what the economics of the fitted system adds. */
+export type Estimate = Omit<SystemFinding, "points" | "expenditureElasticities" | "engel" | "checks">;
+
+/**
+ * Estimates a specification from the moments of its data: n − 1 equations, results for all n goods.
+ *
+ * Errors: `Refusal` for too few rows, an unknown dropped good, moments that identify no solution, a
+ * singular residual covariance, no convergence; `Cancelled`.
+ */
+export function estimateSystem(
+  specification: SystemSpecification,
+  data: PreparedData,
+  moments: Moments,
+  control: RunControl,
+): Estimate {
+  const system = SYSTEMS[specification.form];
+  const size = sizeOf(specification, data);
+  const names = coefficientNames(system, size, data.goods, specification.demographics);
+  const dropped = placeOfDropped(specification, data.goods);
+  const estimation: Estimation = {
+    moments,
+    form: systemForm(system, size, specification.impose),
+    equations: data.goods.map((_, good) => good).filter((good) => good !== dropped),
+    coefficientLabels: names.map(labelOfCoefficient),
+  };
+  refuseTooFewRows(moments.rows, estimation.form.free, estimation.equations.length);
+  const solution = solve(specification, system, size, estimation, control);
+  const covariance =
+    specification.estimator === "least squares"
+      ? leastSquaresCovariance(estimation, solution)
+      : conventionalCovariance(estimation, solution);
+  const { iterations, gradient, largestStep, condition } = solution;
+  const measures = fitMeasures(estimation, solution);
+  if (specification.estimator === "maximum likelihood") {
+    rememberFit(estimation, specification, measures.logLikelihood);
+  }
+  const durbin = durbinWatsonOf(specification, data, estimation, solution);
+  return {
+    kind: "system",
+    dataFingerprint: data.fingerprint,
+    fitted: {
+      form: specification.form,
+      ...(size.index && {
+        index: size.index.name,
+        indexMeans: { shares: [...size.index.meanShares], prices: [...size.index.meanPrices] },
+      }),
+      goods: [...data.goods],
+      demographics: [...specification.demographics],
+      alpha0: specification.alpha0,
+      imposed: [...specification.impose],
+      theta: solution.theta,
+      covariance,
+    },
+    coefficients: names.map((name, a) => ({
+      ...name,
+      estimate: solution.theta[a],
+      standardError: Math.sqrt(covariance[a][a]),
+    })),
+    estimator: specification.estimator,
+    standardErrors: "conventional",
+    dropped: data.goods[dropped],
+    rows: moments.rows,
+    weighted: moments.weighted,
+    freeCoefficients: estimation.form.free,
+    ...measures,
+    convergence: { iterations, gradient, largestStep, condition },
+    ...(durbin && { durbinWatson: durbin }),
+    residualCovariance: covarianceOf(solution.residuals, moments.rows),
+    tests: testsOf(specification, system, size, estimation, solution, control),
+  };
+}
+
+function placeOfDropped({ dropped }: SystemSpecification, goods: readonly string[]): number {
+  if (dropped === undefined) return goods.length - 1;
+  const place = goods.indexOf(dropped);
+  if (place >= 0) return place;
+  throw new Refusal([
+    { sentence: `dropped names "${dropped}", which is none of the goods ${goods.join(", ")}.`, key: ["dropped"] },
+  ]);
+}
+
+function solve(
+  specification: SystemSpecification,
+  system: DemandSystem,
+  size: SystemSize,
+  estimation: Estimation,
+  control: RunControl,
+): Solution {
+  const theta = system.start(size, meanResponses(estimation));
+  const start = estimation.form.expand.places.map((place) => theta[place]);
+  switch (specification.estimator) {
+    case "least squares":
+      return leastSquares(estimation, true, start, control);
+    case "seemingly unrelated": {
+      // Restrictions that act within equations only: with symmetry, Σ̂ would depend on the dropped good.
+      const within = specification.impose.filter((restriction) => restriction !== "symmetry");
+      const form = systemForm(system, size, within);
+      const from = form.expand.places.map((place) => theta[place]);
+      const first = leastSquares({ ...estimation, form }, true, from, control);
+      return seeminglyUnrelated(estimation, first, start, control);
+    }
+    case "iterated seemingly unrelated":
+      return maximumLikelihood(estimation, true, start, "update", control);
+    case "maximum likelihood":
+      return maximumLikelihood(estimation, true, start, "newton", control);
+  }
+}
+
+function durbinWatsonOf(
+  specification: SystemSpecification,
+  data: PreparedData,
+  { form }: Estimation,
+  solution: Solution,
+): number[] | undefined {
+  if (data.time === undefined) return undefined;
+  const source = sourceOf(data, momentsRequest(specification, data));
+  return durbinWatson(source, data.time, form.coefficients(solution.free));
+}
+
+/** Restrictions that hold by the form itself cannot be tested. */
+function testsOf(
+  specification: SystemSpecification,
+  system: DemandSystem,
+  size: SystemSize,
+  estimation: Estimation,
+  solution: Solution,
+  control: RunControl,
+) {
+  if (system.heldByForm.length > 0) return [];
+  const fits: NestedFits = nestedFits(estimation, system, size, specification, solution.theta, control);
+  const index = specification.index ?? DEFAULT_INDEX;
+  return restrictionTests(fits, {
+    rows: estimation.moments.rows,
+    equations: estimation.equations.length,
+    ...(specification.form === "la-aids" && {
+      linear: { exact: index === "laspeyres" && !estimation.moments.weighted },
+    }),
+  });
+}

@@ -1,0 +1,203 @@
+import { Cancelled, type RunControl } from "../run.ts";
+import { type CoefficientForm, expand } from "./coefficient-form.ts";
+import { type Columns, dot, pickColumns } from "./columns.ts";
+import { conditionOf } from "./condition.ts";
+import type { Estimation } from "./estimation.ts";
+import { refuseNotConverged, refuseNotIdentified } from "./failures.ts";
+import { type NormalFactor, normalFactor } from "./normal-factor.ts";
+import { asOneColumn, residualFactor, residualJacobian, weightBlocks } from "./residuals.ts";
+import { dampedStep, gaussNewtonStep, likelihoodStep } from "./steps.ts";
+import { residualCovariance } from "./weighting.ts";
+
+/**
+ * "weighted": ½ Σ e'(V V')e at fixed V. "likelihood": (T/2) ln|Σ̂(φ)|, by Newton steps or, with
+ * `update`, by generalised least squares at the Σ̂ of the last iterate (iterated SUR).
+ */
+export type Criterion =
+  | { readonly kind: "weighted"; readonly weight: Columns }
+  | { readonly kind: "likelihood"; readonly step: "newton" | "update" };
+
+export interface Solution {
+  readonly free: number[];
+  /** θ, k. */
+  readonly theta: number[];
+  readonly iterations: number;
+  /** Largest |∂/∂φ| of the criterion per observation. */
+  readonly gradient: number;
+  /** Largest |Δθ|/(1 + |θ|) of the last step. */
+  readonly largestStep: number;
+  /** Of the derivatives of the weighted residuals, columns scaled to unit length. */
+  readonly condition: number;
+  /** E at the solution, all equations. */
+  readonly residuals: Columns;
+  /** V of the criterion, and the weighted derivatives and their factor: what covariances are made of. */
+  readonly weight: Columns;
+  readonly jacobian: Columns;
+  readonly factor: NormalFactor;
+}
+
+const TOLERANCE = 1e-10;
+const MOST_ITERATIONS = 500;
+const MOST_HALVINGS = 12;
+const MOST_DAMPING = 1e8;
+const POLL_MS = 50;
+
+interface State {
+  readonly free: number[];
+  readonly residuals: Columns;
+  readonly weight: Columns;
+  /** Ê = E V, r × g. */
+  readonly weighted: Columns;
+  readonly value: number;
+}
+
+/**
+ * Minimises the criterion by Gauss–Newton with step halving and analytic derivatives, damped after
+ * Levenberg and Marquardt where halving fails. Converged when |Δθ| ≤ 1e-10 (1 + |θ|), or where rounding
+ * allows no smaller step.
+ *
+ * Errors: not converged; coefficients not identified; a singular residual covariance; `Cancelled`.
+ */
+export function minimise(
+  estimation: Estimation,
+  criterion: Criterion,
+  start: readonly number[],
+  control: RunControl,
+  tolerance: number = TOLERANCE,
+): Solution {
+  let state = evaluate(estimation, criterion, [...start]);
+  let largestStep = Number.POSITIVE_INFINITY;
+  let lastSpoken = Number.NEGATIVE_INFINITY;
+  for (let iteration = 1; ; iteration++) {
+    if (control.cancelled()) throw new Cancelled("cancelled while iterating");
+    const { jacobian, factor, gradient } = linearise(estimation, state);
+    const step = chooseStep(criterion, factor, jacobian, state.weighted, estimation.moments.rows);
+    const slope = dot(gradient, step);
+    const previous = largestStep;
+    largestStep = relativeStep(estimation.form, state.free, step);
+    const largestGradient =
+      gradient.reduce((most, value) => Math.max(most, Math.abs(value)), 0) / estimation.moments.rows;
+    const stalled =
+      previous < 1e-6 && largestStep > 0.5 * previous && Math.abs(slope) < 1e-12 * estimation.moments.rows;
+    if (largestStep <= tolerance || stalled) {
+      if (factor.dependent.length > 0) refuseNotIdentified(estimation, factor);
+      const free = state.free.map((value, f) => value + step[f]);
+      return {
+        free,
+        theta: expand(estimation.form.expand, free),
+        iterations: iteration,
+        gradient: largestGradient,
+        largestStep,
+        condition: conditionOf(factor.triangle),
+        residuals: residualFactor(estimation.moments, estimation.form, free),
+        weight: state.weight,
+        jacobian,
+        factor,
+      };
+    }
+    const next = search(estimation, criterion, state, step, slope, factor);
+    if (next === undefined || iteration >= MOST_ITERATIONS) {
+      if (factor.dependent.length > 0) refuseNotIdentified(estimation, factor);
+      refuseNotConverged(iteration, largestGradient, largestStep, conditionOf(factor.triangle));
+    }
+    state = next;
+    if (performance.now() - lastSpoken > POLL_MS) {
+      lastSpoken = performance.now();
+      control.progress({
+        step: "iterating",
+        iteration,
+        gradient: largestGradient,
+        largestStep,
+        ...(criterion.kind === "likelihood" && {
+          logLikelihood: -state.value - (estimation.moments.rows / 2) * estimation.equations.length * LOG_TWO_PI_E,
+        }),
+      });
+    }
+  }
+}
+
+/** 1 + ln 2π: what a normal equation adds to −2 lnL/T beside ln|Σ̂|. */
+export const LOG_TWO_PI_E = 1 + Math.log(2 * Math.PI);
+
+function evaluate({ moments, form, equations }: Estimation, criterion: Criterion, free: number[]): State {
+  const residuals = residualFactor(moments, form, free);
+  const { weight, logDeterminant } =
+    criterion.kind === "weighted"
+      ? { weight: criterion.weight, logDeterminant: 0 }
+      : residualCovariance(residuals, moments.rows, equations, moments.responseLabels);
+  const chosen = asOneColumn(pickColumns(residuals, equations));
+  const weighted: Columns = {
+    rows: residuals.rows,
+    columns: equations.length,
+    values: weightBlocks(chosen, residuals.rows, weight).values,
+  };
+  const value =
+    criterion.kind === "weighted" ? 0.5 * dot(weighted.values, weighted.values) : (moments.rows / 2) * logDeterminant;
+  return { free, residuals, weight, weighted, value };
+}
+
+function linearise({ moments, form, equations }: Estimation, state: State) {
+  const unweighted = residualJacobian(moments, form, state.free, equations);
+  const jacobian = weightBlocks(unweighted, moments.terms.rows, state.weight);
+  const residuals = asOneColumn(state.weighted);
+  const factor = normalFactor(jacobian, residuals);
+  const gradient = Float64Array.from({ length: form.free }, (_, f) =>
+    dot(jacobian.values.subarray(f * jacobian.rows, (f + 1) * jacobian.rows), residuals.values),
+  );
+  return { jacobian, factor, gradient };
+}
+
+function chooseStep(
+  criterion: Criterion,
+  factor: NormalFactor,
+  jacobian: Columns,
+  weighted: Columns,
+  rows: number,
+): Float64Array {
+  if (factor.dependent.length > 0) return dampedStep(factor, 1e-8);
+  const newton =
+    criterion.kind === "likelihood" && criterion.step === "newton"
+      ? likelihoodStep(factor, jacobian, weighted, rows)
+      : undefined;
+  return newton ?? gaussNewtonStep(factor);
+}
+
+/** The first of step, ½ step, ¼ step … that lowers the criterion; then ever more damped steps. */
+function search(
+  estimation: Estimation,
+  criterion: Criterion,
+  state: State,
+  step: Float64Array,
+  slope: number,
+  factor: NormalFactor,
+): State | undefined {
+  const rounding = 1e-13 * Math.max(1, Math.abs(state.value));
+  const attempt = (by: Float64Array, size: number): State | undefined => {
+    const next = evaluate(
+      estimation,
+      criterion,
+      state.free.map((value, f) => value + size * by[f]),
+    );
+    return next.value <= state.value + rounding ? next : undefined;
+  };
+  if (slope < 0) {
+    for (let halving = 0; halving <= MOST_HALVINGS; halving++) {
+      const next = attempt(step, 2 ** -halving);
+      if (next !== undefined) return next;
+    }
+  }
+  for (let damping = 1e-4; damping <= MOST_DAMPING; damping *= 10) {
+    const next = attempt(dampedStep(factor, damping), 1);
+    if (next !== undefined) return next;
+  }
+  return undefined;
+}
+
+function relativeStep(form: CoefficientForm, free: readonly number[], step: Float64Array): number {
+  const theta = expand(form.expand, free);
+  const moved = expand(
+    form.expand,
+    free.map((value, f) => value + step[f]),
+  );
+  return theta.reduce((most, value, a) => Math.max(most, Math.abs(moved[a] - value) / (1 + Math.abs(value))), 0);
+}

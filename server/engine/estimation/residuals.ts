@@ -1,0 +1,73 @@
+import type { CoefficientForm } from "./coefficient-form.ts";
+import { type Columns, columnOf, zeros } from "./columns.ts";
+import type { Moments } from "./moments.ts";
+
+/**
+ * The factor of the residuals of every equation, E = W − Z C(φ)', r × n: E'E = Σ_t h_t e_t e_t'.
+ * It costs the same for a thousand rows as for a hundred million.
+ */
+export function residualFactor(moments: Moments, form: CoefficientForm, free: readonly number[]): Columns {
+  const { terms, responses } = moments;
+  const coefficients = form.coefficients(free);
+  const residuals: Columns = { ...responses, values: responses.values.slice() };
+  for (let i = 0; i < responses.columns; i++) {
+    const target = columnOf(residuals, i);
+    for (let term = 0; term < terms.columns; term++) subtractMultiple(target, coefficients[i][term], terms, term);
+  }
+  return residuals;
+}
+
+/** ∂E/∂φ of the equations named, stacked one under another: (r·g) × F. */
+export function residualJacobian(
+  moments: Moments,
+  form: CoefficientForm,
+  free: readonly number[],
+  equations: readonly number[],
+): Columns {
+  const { terms } = moments;
+  const height = terms.rows;
+  const placeOf = new Map(equations.map((equation, place) => [equation, place]));
+  const jacobian = zeros(height * equations.length, form.free);
+  form.derivatives(free).forEach((entries, f) => {
+    const column = columnOf(jacobian, f);
+    for (const [equation, term, value] of entries) {
+      const place = placeOf.get(equation);
+      if (place === undefined) continue;
+      subtractMultiple(column.subarray(place * height, (place + 1) * height), value, terms, term);
+    }
+  });
+  return jacobian;
+}
+
+function subtractMultiple(target: Float64Array, factor: number, matrix: Columns, column: number): void {
+  if (factor === 0) return;
+  const offset = column * matrix.rows;
+  for (let r = 0; r < target.length; r++) target[r] -= factor * matrix.values[offset + r];
+}
+
+/**
+ * Every r × g block of the stacked columns times V (g × g): residuals and derivatives in the metric in
+ * which their sum of squares is weighted by V V'.
+ */
+export function weightBlocks(stacked: Columns, height: number, weight: Columns): Columns {
+  const result = zeros(stacked.rows, stacked.columns);
+  const { rows: equations, values } = weight;
+  for (let column = 0; column < stacked.columns; column++) {
+    const base = column * stacked.rows;
+    for (let j = 0; j < equations; j++) {
+      const target = base + j * height;
+      for (let i = 0; i < equations; i++) {
+        const factor = values[j * equations + i];
+        if (factor === 0) continue;
+        const from = base + i * height;
+        for (let r = 0; r < height; r++) result.values[target + r] += factor * stacked.values[from + r];
+      }
+    }
+  }
+  return result;
+}
+
+/** A matrix of g columns of r as one column of r·g: the residuals beside their derivatives. */
+export function asOneColumn(matrix: Columns): Columns {
+  return { rows: matrix.rows * matrix.columns, columns: 1, values: matrix.values };
+}

@@ -1,0 +1,86 @@
+import { type Columns, columnOf, crossProduct, dot, zeros } from "./columns.ts";
+import { reduceToTriangle } from "./householder.ts";
+import type { NormalFactor } from "./normal-factor.ts";
+import { semidefiniteCholesky, solveUpper, solveUpperTransposed } from "./triangle.ts";
+
+/** Gauss–Newton: δ = −D⁻¹R⁻¹Q'b. */
+export function gaussNewtonStep({ triangle, projected, lengths }: NormalFactor): Float64Array {
+  const step = projected.map((value) => -value);
+  solveUpper(triangle, step);
+  return step.map((value, f) => value / lengths[f]);
+}
+
+/** Levenberg (1944), Marquardt (1963): minimises ‖R D δ + Q'b‖² + λ‖D δ‖². */
+export function dampedStep({ triangle, projected, lengths }: NormalFactor, damping: number): Float64Array {
+  const free = lengths.length;
+  const stacked = zeros(2 * free, free + 1);
+  for (let f = 0; f < free; f++) {
+    stacked.values.set(columnOf(triangle, f), f * 2 * free);
+    stacked.values[f * 2 * free + free + f] = Math.sqrt(damping);
+  }
+  stacked.values.set(projected, free * 2 * free);
+  reduceToTriangle(stacked, free);
+  const upper = zeros(free, free);
+  for (let f = 0; f < free; f++) upper.values.set(columnOf(stacked, f).subarray(0, free), f * free);
+  const step = columnOf(stacked, free)
+    .slice(0, free)
+    .map((value) => -value);
+  solveUpper(upper, step);
+  return step.map((value, f) => value / lengths[f]);
+}
+
+/**
+ * The step with the second derivative of the concentrated likelihood. With ê and Ĵ in the metric of
+ * Σ̂ (ê'ê = T I), the Hessian of (T/2) ln|Σ̂(φ)| is, but for the curvature of the residuals themselves,
+ *
+ *     Ĵ'Ĵ − (1/2T) Σ_{ab} B_ab B_ab',   B_ab,f = ê_a'Ĵ_f,b + ê_b'Ĵ_f,a
+ *
+ * which makes convergence quadratic where residuals are linear, also when T is small. Undefined where
+ * that matrix is not positive definite: then Gauss–Newton.
+ */
+export function likelihoodStep(
+  factor: NormalFactor,
+  jacobian: Columns,
+  residuals: Columns,
+  rows: number,
+): Float64Array | undefined {
+  const { triangle, projected, lengths } = factor;
+  const free = lengths.length;
+  const cross = covarianceDerivatives(jacobian, residuals, lengths);
+  for (let pair = 0; pair < cross.columns; pair++) solveUpperTransposed(triangle, columnOf(cross, pair));
+  const transposed = zeros(cross.columns, free);
+  for (let pair = 0; pair < cross.columns; pair++) {
+    for (let f = 0; f < free; f++) transposed.values[f * cross.columns + pair] = cross.values[pair * free + f];
+  }
+  const hessian = crossProduct(transposed, transposed);
+  for (let k = 0; k < hessian.values.length; k++) hessian.values[k] /= -2 * rows;
+  for (let f = 0; f < free; f++) hessian.values[f * free + f] += 1;
+  const { factor: root, dependent } = semidefiniteCholesky(hessian, 1e-6);
+  if (dependent.length > 0) return undefined;
+  const step = projected.map((value) => -value);
+  solveUpperTransposed(root, step);
+  solveUpper(root, step);
+  solveUpper(triangle, step);
+  return step.map((value, f) => value / lengths[f]);
+}
+
+/** B, F × ½g(g+1): pairs a < b weighted by √2, as each stands for two entries of a symmetric matrix. */
+function covarianceDerivatives(jacobian: Columns, residuals: Columns, lengths: Float64Array): Columns {
+  const free = lengths.length;
+  const equations = residuals.columns;
+  const height = residuals.rows;
+  const result = zeros(free, (equations * (equations + 1)) / 2);
+  for (let f = 0; f < free; f++) {
+    const column = columnOf(jacobian, f);
+    const block = (b: number) => column.subarray(b * height, (b + 1) * height);
+    let pair = 0;
+    for (let a = 0; a < equations; a++) {
+      for (let b = a; b < equations; b++) {
+        const sum = dot(columnOf(residuals, a), block(b)) + dot(columnOf(residuals, b), block(a));
+        result.values[pair * free + f] = (sum * (a === b ? 1 : Math.SQRT2)) / lengths[f];
+        pair++;
+      }
+    }
+  }
+  return result;
+}

@@ -1,0 +1,163 @@
+import { ordered, type TermPair } from "./moment-source.ts";
+
+/** Tiles are squares of this many block columns. */
+export const TILE = 4;
+
+/**
+ * Which products of block columns are accumulated. Block column t holds term t (or a response);
+ * tile k multiplies the four columns `left[4k…]` by the four `right[4k…]` into the sixteen sums at 16k.
+ */
+export interface TilePlan {
+  readonly columns: number;
+  readonly tiles: number;
+  readonly left: Int32Array;
+  readonly right: Int32Array;
+  /** Where the sum of column i times column j (j ≥ i, at i·columns + j) is found among the sums. */
+  readonly placeOf: Int32Array;
+}
+
+/**
+ * The moment of two terms is a monomial in the base columns, and many pairs of terms share one:
+ * (ln p₁ ln p₂)(ln p₃ ln p₄) is also (ln p₁ ln p₃)(ln p₂ ln p₄). Each monomial is accumulated once,
+ * which for the products of the exact AIDS is a bit more than half of the pairs.
+ *
+ * Responses are base columns of their own, multiplied with everything: give them as terms [0, place].
+ */
+export function planTiles(terms: readonly TermPair[]): TilePlan {
+  const columns = terms.length;
+  const place = new Map(terms.map((term, at) => [term.join(), at]));
+  const chosen = new Map<string, readonly [row: number, column: number]>();
+  const wanted = new Map<number, Set<number>>();
+  for (let i = 0; i < columns; i++) {
+    for (let j = i; j < columns; j++) {
+      const monomial = monomialOf(terms[i], terms[j]);
+      const key = monomial.join();
+      if (chosen.has(key)) continue;
+      const [row, column] = splitOf(monomial, place) ?? [i, j];
+      chosen.set(key, [row, column]);
+      if (!wanted.has(row)) wanted.set(row, new Set());
+      wanted.get(row)!.add(column);
+    }
+  }
+  const { left, right, placeOfPair } = tilesOf(mergeGroups(groupRows(terms, wanted)));
+  const placeOf = new Int32Array(columns * columns);
+  for (let i = 0; i < columns; i++) {
+    for (let j = i; j < columns; j++) {
+      const [row, column] = chosen.get(monomialOf(terms[i], terms[j]).join())!;
+      placeOf[i * columns + j] = placeOfPair.get(row * columns + column) ?? placeOfPair.get(column * columns + row)!;
+    }
+  }
+  return { columns, tiles: left.length / TILE, left: Int32Array.from(left), right: Int32Array.from(right), placeOf };
+
+  function tilesOf(groups: readonly Group[]) {
+    const leftColumns: number[] = [];
+    const rightColumns: number[] = [];
+    const places = new Map<number, number>();
+    for (const group of groups) {
+      for (const rows of fours(group.rows)) {
+        for (const others of fours(group.columns)) {
+          const base = leftColumns.length * TILE;
+          leftColumns.push(...rows);
+          rightColumns.push(...others);
+          rows.forEach((row, r) => {
+            others.forEach((column, c) => {
+              places.set(row * columns + column, base + r * TILE + c);
+            });
+          });
+        }
+      }
+    }
+    return { left: leftColumns, right: rightColumns, placeOfPair: places };
+  }
+}
+
+interface Group {
+  readonly rows: number[];
+  readonly columns: number[];
+}
+
+function monomialOf(left: TermPair, right: TermPair): number[] {
+  return [...left, ...right].sort((a, b) => a - b);
+}
+
+/** The first split of a monomial into two terms: neighbours first, so that equal rows want equal columns. */
+function splitOf([a, b, c, d]: number[], place: ReadonlyMap<string, number>): [number, number] | undefined {
+  for (const [one, two] of [
+    [ordered(a, b), ordered(c, d)],
+    [ordered(a, c), ordered(b, d)],
+    [ordered(a, d), ordered(b, c)],
+  ]) {
+    const first = place.get(one.join());
+    const second = place.get(two.join());
+    if (first === undefined || second === undefined) continue;
+    return one[1] <= two[1] ? [first, second] : [second, first];
+  }
+  return undefined;
+}
+
+/** Rows with the same second base column want (nearly) the same columns: one rectangle each. */
+function groupRows(terms: readonly TermPair[], wanted: ReadonlyMap<number, ReadonlySet<number>>): Group[] {
+  const groups = new Map<number, { rows: number[]; columns: Set<number> }>();
+  for (const [row, columns] of wanted) {
+    const second = terms[row][1];
+    if (!groups.has(second)) groups.set(second, { rows: [], columns: new Set() });
+    const group = groups.get(second)!;
+    group.rows.push(row);
+    for (const column of columns) group.columns.add(column);
+  }
+  return [...groups.values()].map((group) => ({ rows: group.rows, columns: [...group.columns].sort((a, b) => a - b) }));
+}
+
+/** Merges rectangles while that saves whole tiles. */
+function mergeGroups(groups: Group[]): Group[] {
+  const cost = (group: Group) => Math.ceil(group.rows.length / TILE) * Math.ceil(group.columns.length / TILE);
+  let list = groups;
+  for (;;) {
+    let best: { saving: number; i: number; j: number; merged: Group } | undefined;
+    for (let i = 0; i < list.length; i++) {
+      for (let j = i + 1; j < list.length; j++) {
+        const merged: Group = {
+          rows: [...list[i].rows, ...list[j].rows],
+          columns: [...new Set([...list[i].columns, ...list[j].columns])].sort((a, b) => a - b),
+        };
+        const saving = cost(list[i]) + cost(list[j]) - cost(merged);
+        if (saving > (best?.saving ?? 0)) best = { saving, i, j, merged };
+      }
+    }
+    if (best === undefined) return list;
+    const { i, j, merged } = best;
+    list = [...list.filter((_, at) => at !== i && at !== j), merged];
+  }
+}
+
+/** In fours, the last filled up by repeating its last entry. */
+function fours(list: readonly number[]): number[][] {
+  const groups: number[][] = [];
+  for (let at = 0; at < list.length; at += TILE) {
+    const group = list.slice(at, at + TILE);
+    while (group.length < TILE) group.push(group[group.length - 1]);
+    groups.push(group);
+  }
+  return groups;
+}
+
+/** The plan of all products of `columns` unrelated columns, each pair once. */
+export function densePlan(columns: number): TilePlan {
+  const left: number[] = [];
+  const right: number[] = [];
+  const placeOf = new Int32Array(columns * columns);
+  const groups = fours(Array.from({ length: columns }, (_, column) => column));
+  groups.forEach((rows, at) => {
+    for (const others of groups.slice(at)) {
+      const base = left.length * TILE;
+      rows.forEach((row, r) => {
+        others.forEach((column, c) => {
+          placeOf[row * columns + column] = base + r * TILE + c;
+        });
+      });
+      left.push(...rows);
+      right.push(...others);
+    }
+  });
+  return { columns, tiles: left.length / TILE, left: Int32Array.from(left), right: Int32Array.from(right), placeOf };
+}
