@@ -1,6 +1,6 @@
 import betainc from "@stdlib/math-base-special-betainc";
+import complementaryErrorInverse from "@stdlib/math-base-special-erfcinv";
 import gammainc from "@stdlib/math-base-special-gammainc";
-import normalInverse from "@stdlib/stats-base-dists-normal-quantile";
 import tInverse from "@stdlib/stats-base-dists-t-quantile";
 
 /**
@@ -38,9 +38,10 @@ export function tQuantile(p: number, df: number): number {
   return tInverse(p, df);
 }
 
-/** The z with P(X ≤ z) = p for X standard normal. */
+/** The z with P(X ≤ z) = p for X standard normal: −√2 erfc⁻¹(2p), from the nearer tail. */
 export function normalQuantile(p: number): number {
-  return normalInverse(p, 0, 1);
+  if (p > 0.5) return Math.SQRT2 * complementaryErrorInverse(2 * (1 - p));
+  return 0 - Math.SQRT2 * complementaryErrorInverse(2 * p);
 }
 
 function refuseUnlessPositive(value: number, name: string): void {

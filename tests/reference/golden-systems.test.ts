@@ -4,6 +4,7 @@ import { matrixAt } from "../../shared/economics/slutsky.ts";
 import { compensatingVariation, equivalentVariation } from "../../shared/economics/welfare.ts";
 import { symmetricEigen } from "../../shared/numerics/eigen.ts";
 import { exactly } from "../support/fitted.ts";
+import { integral } from "../support/quadrature.ts";
 
 /**
  * Systems evaluated once in 40-digit arithmetic by closed form, numerical derivatives and the identities.
@@ -55,9 +56,11 @@ describe("almost ideal demand system, three goods", () => {
     expectClose([equivalentVariation(fitted, point, dearer)], [0.871962423232297], 1e-13);
   });
 
-  test("the two costs of holding quantities fixed bound the two variations", () => {
+  test("the change in consumer's surplus lies between them, the costs of fixed quantities outside", () => {
     const dearer = [1.1 * 1.2, 0.9, 1.3];
     const quantityAt = (prices: number[]) => (elasticitiesAt(fitted, { ...point, prices }).shares[0] * 20) / prices[0];
+    const surplus = integral((price) => quantityAt([price, 0.9, 1.3]), 1.1, 1.32);
+    expectClose([surplus], [0.883326776082], 1e-12);
     expectClose([quantityAt(dearer) * 0.22], [0.841270262701], 1e-11);
     expectClose([quantityAt(point.prices) * 0.22], [0.928562211439], 1e-11);
   });
