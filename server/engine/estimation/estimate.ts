@@ -16,7 +16,8 @@ import { fitMeasures, meanResponses } from "./fit-measures.ts";
 import type { Solution } from "./minimise.ts";
 import type { Moments } from "./moments.ts";
 import { nestedFits, rememberFit } from "./nested-fits.ts";
-import { DEFAULT_INDEX, momentsRequest, sizeOf, sourceOf } from "./request.ts";
+import { DEFAULT_INDEX } from "./price-index.ts";
+import { momentsRequest, sizeOf, sourceOf } from "./request.ts";
 import { covarianceOf } from "./weighting.ts";
 
 /** A system finding but for what the economics of the fitted system adds. */

@@ -2,10 +2,11 @@ import type { SystemSpecification } from "../../../shared/schemas/system.ts";
 import type { BaseColumn, MomentTerm, SystemSize } from "../../../shared/systems/demand-system.ts";
 import { SYSTEMS } from "../../../shared/systems/index.ts";
 import type { PriceIndexName } from "../../../shared/systems/names.ts";
-import { logPriceIndex, priceIndexOf } from "../../../shared/systems/price-indices.ts";
+import { logPriceIndex } from "../../../shared/systems/price-indices.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { Refusal } from "../refusal.ts";
 import { type MomentSource, ordered, type TermPair } from "./moment-source.ts";
+import { DEFAULT_INDEX, priceIndexFor } from "./price-index.ts";
 
 /** Which moments a specification needs of its data. Plain data; equal keys on the same data, equal moments. */
 export interface MomentsRequest {
@@ -16,15 +17,13 @@ export interface MomentsRequest {
   readonly index?: PriceIndexName;
 }
 
-export const DEFAULT_INDEX: PriceIndexName = "tornqvist";
-
 export function sizeOf(specification: SystemSpecification, data: PreparedData): SystemSize {
   return {
     goods: data.goods.length,
     demographics: specification.demographics.length,
     alpha0: specification.alpha0,
     ...(specification.form === "la-aids" && {
-      index: priceIndexOf(specification.index ?? DEFAULT_INDEX, data.shares, data.logPrices, data.weights),
+      index: priceIndexFor(data, specification.index),
     }),
   };
 }
@@ -118,8 +117,7 @@ function valuesOf(column: BaseColumn, data: PreparedData, request: MomentsReques
       return data.logTotal.map((logTotal, t) => Math.exp(logPrice[t] - logTotal));
     }
     case "deflated log total": {
-      const index = priceIndexOf(request.index ?? DEFAULT_INDEX, data.shares, data.logPrices, data.weights);
-      const logIndex = logPriceIndex(index, data.shares, data.logPrices);
+      const logIndex = logPriceIndex(priceIndexFor(data, request.index), data.shares, data.logPrices);
       return data.logTotal.map((logTotal, t) => logTotal - logIndex[t]);
     }
   }
