@@ -1,0 +1,59 @@
+import type { MessagePort } from "node:worker_threads";
+import type { CellSpecification } from "../../shared/schemas/cell.ts";
+import type { DataSpecification } from "../../shared/schemas/data.ts";
+import type { Problem } from "../../shared/schemas/problem.ts";
+import type { RunControl } from "../engine/run.ts";
+
+/** A cell to compute: its question, and what it rests on. Plain data, so that it crosses threads. */
+export interface CellJob {
+  readonly studyId: string;
+  /** Under which its finding will be stored, whatever becomes of the cell meanwhile. */
+  readonly fingerprint: string;
+  readonly specification: CellSpecification;
+  /** The data cell at the root; of a data cell, itself. */
+  readonly data: {
+    readonly fingerprint: string;
+    readonly specification: DataSpecification;
+    readonly uploadId: string;
+  };
+  /** Where the system's finding is stored, for what rests on one. */
+  readonly systemFingerprint?: string;
+}
+
+export type ProgressNow = Parameters<RunControl["progress"]>[0];
+
+/** A finding as JSON of its schema: made and checked by the worker, stored as it is. */
+export interface CellResult {
+  readonly finding: string;
+  readonly tookMs: number;
+}
+
+export interface ParsedUploadResult {
+  readonly rows: number;
+  readonly sha256: string;
+  readonly separator: string;
+  readonly decimalComma: boolean;
+}
+
+export type Task =
+  | { readonly kind: "cell"; readonly job: CellJob }
+  | { readonly kind: "parse upload"; readonly uploadId: string };
+
+/** What a task is sent with: how to stop it, and where it reports. */
+export interface Sent {
+  readonly task: Task;
+  /** One Int32; not zero once cancelled. */
+  readonly flag: SharedArrayBuffer;
+  readonly port: MessagePort;
+}
+
+/** How a task ended. Errors cross threads as data, so that a refusal keeps its problems. */
+export type Outcome<T> =
+  | { readonly ended: "done"; readonly result: T }
+  | { readonly ended: "refused"; readonly problems: readonly Problem[] }
+  | { readonly ended: "cancelled" };
+
+/** What a worker is told once, when it starts. */
+export interface WorkerSettings {
+  readonly databasePath: string;
+}

@@ -1,0 +1,90 @@
+import { availableParallelism } from "node:os";
+import { MessageChannel } from "node:worker_threads";
+import { Piscina } from "piscina";
+import { Cancelled } from "../engine/run.ts";
+import type {
+  CellJob,
+  CellResult,
+  Outcome,
+  ParsedUploadResult,
+  ProgressNow,
+  Sent,
+  Task,
+  WorkerSettings,
+} from "./job.ts";
+import { resultOf } from "./outcome.ts";
+
+/** Long computations, away from the thread that answers requests. */
+export interface JobPool {
+  /** Errors: `Refusal` with the engine's problems, `Cancelled` once the signal says so. */
+  runCell(job: CellJob, onProgress: (now: ProgressNow) => void, signal: AbortSignal): Promise<CellResult>;
+  parseUpload(
+    uploadId: string,
+    onProgress: (now: ProgressNow) => void,
+    signal: AbortSignal,
+  ): Promise<ParsedUploadResult>;
+  /** Cancels what runs and waits until every thread has ended. */
+  close(): Promise<void>;
+}
+
+interface PoolSettings extends WorkerSettings {
+  /** Default: the processors there are, less the one that answers requests. */
+  readonly threads?: number;
+}
+
+/** A task asks its flag many times a second; one that has not heard after so long is ended with its thread. */
+const GRACE_MILLISECONDS = 5_000;
+
+export function createPool({ databasePath, threads = Math.max(1, availableParallelism() - 1) }: PoolSettings): JobPool {
+  const isSource = import.meta.url.endsWith(".ts");
+  const pool = new Piscina({
+    filename: new URL(isSource ? "./worker.ts" : "./worker.js", import.meta.url).href,
+    // From the TypeScript sources, a worker needs the same loader as the program.
+    ...(isSource && { execArgv: ["--import", "tsx"] }),
+    workerData: { databasePath } satisfies WorkerSettings,
+    minThreads: 1,
+    maxThreads: threads,
+    idleTimeout: 5 * 60_000,
+  });
+  const running = new Set<AbortController>();
+
+  async function send<T>(task: Task, onProgress: (now: ProgressNow) => void, signal: AbortSignal): Promise<T> {
+    if (signal.aborted) throw new Cancelled("cancelled");
+    const stopper = new AbortController();
+    const ender = new AbortController();
+    const flag = new SharedArrayBuffer(Int32Array.BYTES_PER_ELEMENT);
+    const { port1, port2 } = new MessageChannel();
+    let grace: NodeJS.Timeout | undefined;
+    const stop = () => {
+      Atomics.store(new Int32Array(flag), 0, 1);
+      grace ??= setTimeout(() => ender.abort(), GRACE_MILLISECONDS);
+    };
+    stopper.signal.addEventListener("abort", stop, { once: true });
+    signal.addEventListener("abort", stop, { once: true });
+    port1.on("message", onProgress);
+    running.add(stopper);
+    try {
+      const sent: Sent = { task, flag, port: port2 };
+      const outcome: Outcome<T> = await pool.run(sent, { transferList: [port2], signal: ender.signal });
+      return resultOf(outcome);
+    } catch (error) {
+      if (ender.signal.aborted || stopper.signal.aborted) throw new Cancelled("cancelled");
+      throw error;
+    } finally {
+      clearTimeout(grace);
+      signal.removeEventListener("abort", stop);
+      running.delete(stopper);
+      port1.close();
+    }
+  }
+
+  return {
+    runCell: (job, onProgress, signal) => send<CellResult>({ kind: "cell", job }, onProgress, signal),
+    parseUpload: (uploadId, onProgress, signal) =>
+      send<ParsedUploadResult>({ kind: "parse upload", uploadId }, onProgress, signal),
+    async close() {
+      for (const stopper of running) stopper.abort();
+      await pool.destroy();
+    },
+  };
+}

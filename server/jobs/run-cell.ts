@@ -1,0 +1,54 @@
+import { and, eq } from "drizzle-orm";
+import type { Finding } from "../../shared/schemas/cell.ts";
+import { type SystemFinding, systemFinding } from "../../shared/schemas/system.ts";
+import type { Database } from "../db/client.ts";
+import { findings } from "../db/schema/findings.ts";
+import { runData, runSlutsky, runSystem } from "../engine/cells/index.ts";
+import type { PreparedData, UploadTable } from "../engine/columns/prepared-data.ts";
+import { Refusal } from "../engine/refusal.ts";
+import type { RunControl } from "../engine/run.ts";
+import type { CellJob, CellResult } from "./job.ts";
+import { Recent } from "./recent.ts";
+import { bytesOf, loadTable } from "./upload-tables.ts";
+
+const MEGABYTE = 1024 * 1024;
+
+/** What a worker keeps between jobs: uploads as read, and data cells' rows ready for estimation. */
+export class WorkerMemory {
+  readonly tables = new Recent<UploadTable>(256 * MEGABYTE);
+  /** By the data cell's fingerprint. */
+  readonly prepared = new Recent<PreparedData>(512 * MEGABYTE);
+}
+
+/** Computes a cell's finding. Errors: `Refusal`, `Cancelled`. */
+export function runCellJob(job: CellJob, db: Database, memory: WorkerMemory, control: RunControl): CellResult {
+  const started = performance.now();
+  const finding = find(job, db, memory, control);
+  return { finding: JSON.stringify(finding), tookMs: performance.now() - started };
+}
+
+function find(job: CellJob, db: Database, memory: WorkerMemory, control: RunControl): Finding {
+  const { specification } = job;
+  const data = prepared(job, db, memory, control);
+  if (specification.kind === "data") return data.finding;
+  if (specification.kind === "system") return runSystem(specification, data, control);
+  return runSlutsky(specification, storedSystem(job, db), data, control);
+}
+
+function prepared({ data }: CellJob, db: Database, memory: WorkerMemory, control: RunControl): PreparedData {
+  const known = memory.prepared.get(data.fingerprint);
+  if (known) return known;
+  const table = memory.tables.get(data.uploadId) ?? loadTable(db, data.uploadId);
+  memory.tables.set(data.uploadId, table, bytesOf(table));
+  const fresh = runData(data.specification, table, control);
+  const columns = 2 * fresh.goods.length + fresh.numeric.size + 3;
+  memory.prepared.set(data.fingerprint, fresh, 8 * fresh.rows * columns);
+  return fresh;
+}
+
+function storedSystem({ studyId, systemFingerprint }: CellJob, db: Database): SystemFinding {
+  const where = and(eq(findings.studyId, studyId), eq(findings.fingerprint, systemFingerprint ?? ""));
+  const stored = db.select({ finding: findings.finding }).from(findings).where(where).get();
+  if (!stored) throw new Refusal("The system that this cell reads has no finding yet.");
+  return systemFinding.parse(JSON.parse(stored.finding));
+}

@@ -1,0 +1,30 @@
+import { workerData } from "node:worker_threads";
+import { connectDatabase } from "../db/client.ts";
+import { workerControl } from "./control.ts";
+import type { CellResult, Outcome, ParsedUploadResult, Sent, WorkerSettings } from "./job.ts";
+import { outcomeOf } from "./outcome.ts";
+import { runCellJob, WorkerMemory } from "./run-cell.ts";
+import { parseStoredUpload } from "./upload-tables.ts";
+
+/** A worker thread: its own connection to the database, its own memory, one task at a time. */
+const { db } = connectDatabase(settings().databasePath);
+const memory = new WorkerMemory();
+
+export default async function run({ task, flag, port }: Sent): Promise<Outcome<CellResult | ParsedUploadResult>> {
+  const control = workerControl(port, flag);
+  try {
+    // Cancelled while it stood in the queue.
+    if (control.cancelled()) return { ended: "cancelled" };
+    return await outcomeOf<CellResult | ParsedUploadResult>(() =>
+      task.kind === "cell" ? runCellJob(task.job, db, memory, control) : parseStoredUpload(db, task.uploadId, control),
+    );
+  } finally {
+    port.close();
+  }
+}
+
+/** The pool hands a worker's data over as the last of a list of its own. */
+function settings(): WorkerSettings {
+  const given: unknown = Array.isArray(workerData) ? workerData.at(-1) : workerData;
+  return given as WorkerSettings;
+}
