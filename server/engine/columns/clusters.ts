@@ -26,7 +26,12 @@ export function clustersOf(column: TableColumn, rowIndices: Int32Array): Cluster
 }
 
 /** Rows sorted by cluster: those of cluster c stand from `starts[c]` to before `starts[c + 1]`. */
-export function groupByCluster({ codes, labels }: Clusters): { order: Int32Array; starts: Int32Array } {
+export interface ClusterGroups {
+  readonly order: Int32Array;
+  readonly starts: Int32Array;
+}
+
+export function groupByCluster({ codes, labels }: Clusters): ClusterGroups {
   const starts = new Int32Array(labels.length + 1);
   for (const code of codes) starts[code + 1]++;
   for (let cluster = 0; cluster < labels.length; cluster++) starts[cluster + 1] += starts[cluster];

@@ -10,7 +10,8 @@ type Fingerprinted = Omit<
 /**
  * SHA-256 of the columns an estimation may use, in the order: goods with their shares and log prices, log total,
  * weights, cluster of each row, time, numeric columns by name. Rows as used; Float64 and Int32 little-endian, each
- * column after its name and length. The file's name, the rows left out and columns never named do not enter.
+ * column after its name and length. The file's name, the rows left out, and columns that are text or lack a number in some
+ * row used do not enter.
  */
 export function dataFingerprint(data: Fingerprinted): string {
   const hash = createHash("sha256");

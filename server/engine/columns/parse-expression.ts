@@ -18,7 +18,9 @@ import { FUNCTIONS, OPERATORS } from "./expression-operations.ts";
 import type { ExpressionTree } from "./expression-tree.ts";
 
 const LONGEST = 500;
-const DEEPEST = 40;
+const DEEPEST_BRACKETS = 40;
+/** A sum of many columns is a tall tree without a single bracket. */
+const DEEPEST_TREE = 260;
 
 type Parse = (source: string) => MathNode;
 let parser: Parse | undefined;
@@ -44,7 +46,7 @@ export function parseExpression(source: string): ExpressionTree {
   }
   let root: MathNode;
   try {
-    refuseDepth(nesting(source));
+    refuseDepth(nesting(source), DEEPEST_BRACKETS);
     root = mathParser()(source);
   } catch (error) {
     if (error instanceof Refusal) throw error;
@@ -68,14 +70,14 @@ function nesting(source: string): number {
   return deepest;
 }
 
-function refuseDepth(depth: number): void {
-  if (depth > DEEPEST) throw new Refusal(`An expression nests at most ${DEEPEST} deep; this one reaches ${depth}.`);
+function refuseDepth(depth: number, deepest: number): void {
+  if (depth > deepest) throw new Refusal(`An expression nests at most ${deepest} deep; this one reaches ${depth}.`);
 }
 
 const NOTHING: ExpressionTree = { kind: "number", value: Number.NaN };
 
 function translate(node: MathNode, problems: Problem[], depth: number): ExpressionTree {
-  refuseDepth(depth);
+  refuseDepth(depth, DEEPEST_TREE);
   const inner = (child: MathNode) => translate(child, problems, depth + 1);
   const refuse = (sentence: string, nearest?: string): ExpressionTree => {
     problems.push({ sentence, ...(nearest === undefined ? {} : { nearest }) });

@@ -2,7 +2,8 @@ import type { z } from "zod";
 import type { DataFinding, qualityFlag } from "../../../shared/schemas/data.ts";
 import { counted, listWords } from "../../../shared/study/words.ts";
 import { printPercent, printQuantity, printSize } from "../../../shared/tables/numbers.ts";
-import { type Clusters, groupByCluster } from "./clusters.ts";
+import { type ClusterGroups, type Clusters, groupByCluster } from "./clusters.ts";
+import { pickRows } from "./pick-rows.ts";
 import { type Weights, weightedCorrelation, weightedDeviation } from "./weighted.ts";
 
 type QualityFlag = z.infer<typeof qualityFlag>;
@@ -52,17 +53,18 @@ function zeros({ goods }: FlaggedData): QualityFlag {
 function outliers(data: FlaggedData): QualityFlag {
   const { clusterColumn, rowNumbers } = data;
   const among = clusterColumn === undefined ? "from their median" : `from the median of their ${clusterColumn}`;
+  const groups = data.clusters && groupByCluster(data.clusters);
   let count = 0;
   const outlying = new Set<number>();
   for (const prices of data.logPrices) {
-    const distances = distancesFromMedian(prices, data.clusters);
+    const distances = distancesFromMedian(prices, groups);
     const typical = median(distances.slice().sort());
     if (!(typical > 0)) continue;
-    distances.forEach((distance, row) => {
-      if (distance <= OUTLYING_DEVIATIONS * typical) return;
+    for (let row = 0; row < distances.length; row++) {
+      if (distances[row] <= OUTLYING_DEVIATIONS * typical) continue;
       count++;
       outlying.add(rowNumbers[row]);
-    });
+    }
   }
   const rows = [...outlying].sort((a, b) => a - b).slice(0, MOST_ROWS_NAMED);
   const far = `more than five median deviations ${among}`;
@@ -73,17 +75,17 @@ function outliers(data: FlaggedData): QualityFlag {
   return { about: "outliers", sentence: count === 1 ? sentence.replace("They are", "It is") : sentence, rows };
 }
 
-function distancesFromMedian(values: Float64Array, clusters: Clusters | undefined): Float64Array {
-  if (clusters === undefined) {
+function distancesFromMedian(values: Float64Array, groups: ClusterGroups | undefined): Float64Array {
+  if (groups === undefined) {
     const centre = median(values.slice().sort());
     return values.map((value) => Math.abs(value - centre));
   }
-  const { order, starts } = groupByCluster(clusters);
+  const { order, starts } = groups;
   const distances = new Float64Array(values.length);
   for (let cluster = 0; cluster + 1 < starts.length; cluster++) {
     const members = order.subarray(starts[cluster], starts[cluster + 1]);
-    const centre = median(Float64Array.from(members, (row) => values[row]).sort());
-    for (const row of members) distances[row] = Math.abs(values[row] - centre);
+    const centre = median(pickRows(values, members).sort());
+    for (let at = 0; at < members.length; at++) distances[members[at]] = Math.abs(values[members[at]] - centre);
   }
   return distances;
 }
@@ -114,18 +116,23 @@ function priceVariation({ goods, logPrices, weights, clusters, clusterColumn }: 
 /** Variance of cluster means over total variance, averaged over goods whose prices vary. */
 function betweenClusters(logPrices: readonly Float64Array[], weights: Weights, clusters: Clusters): number {
   const parts = logPrices.flatMap((prices) => {
-    const sums = new Float64Array(clusters.labels.length);
-    const sizes = new Float64Array(clusters.labels.length);
-    prices.forEach((price, row) => {
-      const weight = weights ? weights[row] : 1;
-      sums[clusters.codes[row]] += weight * price;
-      sizes[clusters.codes[row]] += weight;
-    });
-    const means = prices.map((_, row) => sums[clusters.codes[row]] / sizes[clusters.codes[row]]);
+    const means = clusterMeans(prices, weights, clusters);
     const whole = weightedDeviation(prices, weights);
     return whole > 0 ? [(weightedDeviation(means, weights) / whole) ** 2] : [];
   });
   return parts.reduce((sum, part) => sum + part, 0) / parts.length;
+}
+
+/** In each row, the weighted mean of its cluster. */
+function clusterMeans(values: Float64Array, weights: Weights, { codes, labels }: Clusters): Float64Array {
+  const sums = new Float64Array(labels.length);
+  const sizes = new Float64Array(labels.length);
+  for (let row = 0; row < values.length; row++) {
+    const weight = weights ? weights[row] : 1;
+    sums[codes[row]] += weight * values[row];
+    sizes[codes[row]] += weight;
+  }
+  return values.map((_, row) => sums[codes[row]] / sizes[codes[row]]);
 }
 
 function collinearity({ goods, logPrices, weights }: FlaggedData): QualityFlag {
