@@ -1,4 +1,4 @@
-import { normalQuantile } from "../numerics/distributions.ts";
+import { normalQuantile } from "../numerics/normal.ts";
 import type { Elasticities } from "./elasticities.ts";
 
 export type Interval = readonly [low: number, high: number];

@@ -1,5 +1,4 @@
 import betainc from "@stdlib/math-base-special-betainc";
-import complementaryErrorInverse from "@stdlib/math-base-special-erfcinv";
 import gammainc from "@stdlib/math-base-special-gammainc";
 import tInverse from "@stdlib/stats-base-dists-t-quantile";
 
@@ -36,12 +35,6 @@ export function normalTwoSidedTail(z: number): number {
 export function tQuantile(p: number, df: number): number {
   refuseUnlessPositive(df, "degrees of freedom");
   return tInverse(p, df);
-}
-
-/** The z with P(X ≤ z) = p for X standard normal: −√2 erfc⁻¹(2p), from the nearer tail. */
-export function normalQuantile(p: number): number {
-  if (p > 0.5) return Math.SQRT2 * complementaryErrorInverse(2 * (1 - p));
-  return 0 - Math.SQRT2 * complementaryErrorInverse(2 * p);
 }
 
 function refuseUnlessPositive(value: number, name: string): void {

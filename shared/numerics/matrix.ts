@@ -61,19 +61,23 @@ export function largestEntry(a: Matrix): number {
   return largest;
 }
 
-/** g'V g, the variance of a quantity with gradient g; entries of g that are zero cost nothing. */
+/**
+ * g'V g, the variance of a quantity with gradient g. V is symmetric and only its lower triangle is read;
+ * entries of g that are zero cost nothing.
+ */
 export function quadraticForm(v: Matrix, g: Vector): number {
   if (g.length !== v.length) {
     throw new RangeError(`the gradient has ${g.length} entries, the covariance ${v.length} rows`);
   }
   const at: number[] = [];
-  for (let a = 0; a < g.length; a++) if (g[a] !== 0) at.push(a);
   let sum = 0;
-  for (const a of at) {
+  for (let a = 0; a < g.length; a++) {
+    if (g[a] === 0) continue;
     const row = v[a];
     let inner = 0;
     for (const b of at) inner += row[b] * g[b];
-    sum += g[a] * inner;
+    sum += g[a] * (2 * inner + row[a] * g[a]);
+    at.push(a);
   }
   return sum;
 }
