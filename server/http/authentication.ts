@@ -6,7 +6,7 @@ import { foreignOrigin, ServiceError } from "../errors.ts";
 import { type Authentication, LONGEST_PASSPHRASE, SHORTEST_PASSPHRASE } from "../services/authentication.ts";
 import { presentError } from "./errors.ts";
 import { limitFailedSignIns, limitSignIns } from "./limits.ts";
-import { accountOf } from "./session.ts";
+import { sessionOf } from "./session.ts";
 import { validate } from "./validate.ts";
 
 const email = z.email("is not an e-mail address").trim().max(254, "has more than 254 characters");
@@ -52,9 +52,9 @@ export function authenticationRoutes({ auth, limits, signedOut }: Settings): Rou
     return forward(request, response);
   });
   router.post("/sign-out", async (request, response) => {
-    const account = await accountOf(auth, request.headers);
+    const session = await sessionOf(auth, request.headers);
     await forward(request, response);
-    if (account !== undefined && response.statusCode < 400) signedOut(account.id);
+    if (session !== undefined && response.statusCode < 400) signedOut(session.account.id);
   });
   router.get("/get-session", forward);
   return router;

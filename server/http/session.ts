@@ -4,19 +4,26 @@ import type { Account } from "../../shared/schemas/resources.ts";
 import { notSignedIn } from "../errors.ts";
 import type { Authentication } from "../services/authentication.ts";
 
+export interface Session {
+  readonly account: Account;
+  readonly expiresAt: Date;
+}
+
 /** Who a request comes from, by its session cookie; the socket's upgrade asks the same. */
-export async function accountOf(
+export async function sessionOf(
   auth: Authentication,
   headers: NodeJS.Dict<string | string[]>,
-): Promise<Account | undefined> {
+): Promise<Session | undefined> {
   if (headers.cookie === undefined) return undefined;
-  const session = await auth.api.getSession({ headers: fromNodeHeaders(headers) });
-  return session === null ? undefined : { id: session.user.id, name: session.user.name, email: session.user.email };
+  const found = await auth.api.getSession({ headers: fromNodeHeaders(headers) });
+  if (found === null) return undefined;
+  const { user, session } = found;
+  return { account: { id: user.id, name: user.name, email: user.email }, expiresAt: session.expiresAt };
 }
 
 export function readSession(auth: Authentication): RequestHandler {
   return async (request, response, next) => {
-    response.locals.account = await accountOf(auth, request.headers);
+    response.locals.account = (await sessionOf(auth, request.headers))?.account;
     next();
   };
 }

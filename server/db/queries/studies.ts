@@ -1,4 +1,4 @@
-import { desc, eq } from "drizzle-orm";
+import { count, desc, eq } from "drizzle-orm";
 import type { Role } from "../../../shared/schemas/resources.ts";
 import type { Database } from "../client.ts";
 import { studies, studyMembers } from "../schema/studies.ts";
@@ -33,4 +33,8 @@ export function changeStudy(
 
 export function deleteStudy(db: Database, studyId: string): void {
   db.delete(studies).where(eq(studies.id, studyId)).run();
+}
+
+export function countStudies(db: Database): number {
+  return db.select({ studies: count() }).from(studies).get()?.studies ?? 0;
 }

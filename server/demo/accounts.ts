@@ -1,0 +1,31 @@
+import type { Installation } from "../../shared/schemas/resources.ts";
+import type { Database } from "../db/client.ts";
+import { closeAccounts, countAccounts, findAccountByEmail } from "../db/queries/accounts.ts";
+import { type Authentication, ensureAccount } from "../services/authentication.ts";
+import { DEMO_PASSPHRASE, DEMO_PEOPLE } from "./people.ts";
+
+/** Whether this installation is a demo: as the environment says, else when it is new or was one before. */
+export function isDemo(db: Database, wanted: boolean | undefined): boolean {
+  return wanted ?? (countAccounts(db) === 0 || findAccountByEmail(db, DEMO_PEOPLE[0].email) !== undefined);
+}
+
+/** Their ids, in the order of `DEMO_PEOPLE`. */
+export async function openDemoAccounts(auth: Authentication, db: Database): Promise<string[]> {
+  const ids: string[] = [];
+  for (const { name, email } of DEMO_PEOPLE) {
+    ids.push(await ensureAccount(auth, db, { name, email, passphrase: DEMO_PASSPHRASE }));
+  }
+  return ids;
+}
+
+/** Everyone knows the passphrase of these accounts: outside demo mode none of them opens. */
+export function closeDemoAccounts(db: Database): void {
+  closeAccounts(
+    db,
+    DEMO_PEOPLE.map(({ email }) => email),
+  );
+}
+
+export function demoSignIns(): Installation["demo"] {
+  return DEMO_PEOPLE.map(({ email, role }) => ({ email, passphrase: DEMO_PASSPHRASE, role }));
+}
