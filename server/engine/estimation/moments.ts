@@ -1,12 +1,8 @@
-import { Cancelled, type RunControl } from "../run.ts";
-import { accumulateSums, momentMatrix } from "./accumulate-sums.ts";
+import type { RunControl } from "../run.ts";
 import { type Columns, columnOf, multiply, zeros } from "./columns.ts";
 import { whiteningOf } from "./find-whitening.ts";
-import { triangularFactor } from "./householder.ts";
 import { type MomentSource, ordered, type TermPair, termLabel } from "./moment-source.ts";
-import { BLOCK_ROWS, termBlock } from "./term-block.ts";
-import { planTiles } from "./tile-plan.ts";
-import { semidefiniteCholesky } from "./triangle.ts";
+import { reflectedFactor, summedFactor } from "./row-factors.ts";
 import type { DependentColumn, Whitening } from "./whitening.ts";
 
 /**
@@ -31,8 +27,9 @@ export interface Moments {
 
 /** Up to this many rows × columns² the rows themselves are reduced by reflections. */
 const REFLECTED_WORK = 1e8;
-/** Relative to its own length squared, what is left of a column counts as rounding of the sums. */
-const ROUNDING = 1e-13;
+
+/** How rows become a factor: both give the same to rounding. */
+export type Reduction = "reflected" | "summed";
 
 /**
  * Reads the rows and keeps their second moments.
@@ -44,16 +41,15 @@ const ROUNDING = 1e-13;
  *
  * Errors: `Cancelled`.
  */
-export function reduceRows(source: MomentSource, key: string, control: RunControl): Moments {
+export function reduceRows(source: MomentSource, key: string, control: RunControl, reduction?: Reduction): Moments {
   const { whitening, dependent } = whiteningOf(source, control);
   const whitened = closure(source.terms);
   const base = source.columns.length;
   const responses: TermPair[] = source.responses.map((_, i) => [0, base + 1 + i]);
   const all = [...whitened, ...responses];
-  const factor =
-    source.rows * all.length ** 2 <= REFLECTED_WORK
-      ? reflectedFactor(source, whitening, all, control)
-      : summedFactor(source, whitening, all, control);
+  const few = source.rows * all.length ** 2 <= REFLECTED_WORK;
+  const reduce = (reduction ?? (few ? "reflected" : "summed")) === "reflected" ? reflectedFactor : summedFactor;
+  const factor = reduce(source, whitening, all, control);
   const parts = splitColumns(factor, whitened.length);
   return {
     key,
@@ -93,44 +89,6 @@ function termMap(terms: readonly TermPair[], whitened: readonly TermPair[], { sh
     }
   });
   return map;
-}
-
-function summedFactor(
-  source: MomentSource,
-  whitening: Whitening,
-  terms: readonly TermPair[],
-  control: RunControl,
-): Columns {
-  const plan = planTiles(terms);
-  const range = { from: 0, to: source.rows };
-  const sums = accumulateSums(source, whitening, terms, plan, range, control, (done) => done / source.rows);
-  const matrix = momentMatrix(plan, sums);
-  const { factor, dependent } = semidefiniteCholesky(matrix, ROUNDING);
-  // A response that the terms explain to rounding keeps residuals of that size, so that no variance is zero.
-  for (const column of dependent) {
-    if (column < terms.length - source.responses.length) continue;
-    factor.values[column * factor.rows + column] = Math.sqrt(ROUNDING * matrix.values[column * matrix.rows + column]);
-  }
-  return factor;
-}
-
-function reflectedFactor(
-  source: MomentSource,
-  whitening: Whitening,
-  terms: readonly TermPair[],
-  control: RunControl,
-): Columns {
-  if (control.cancelled()) throw new Cancelled("cancelled while accumulating moments");
-  const { block, fill } = termBlock(source, whitening, terms);
-  const rows = zeros(source.rows, terms.length);
-  for (let from = 0; from < source.rows; from += BLOCK_ROWS) {
-    const count = Math.min(BLOCK_ROWS, source.rows - from);
-    fill(from, count);
-    for (let term = 0; term < terms.length; term++) {
-      rows.values.set(block.subarray(term * BLOCK_ROWS, term * BLOCK_ROWS + count), term * source.rows + from);
-    }
-  }
-  return triangularFactor(rows);
 }
 
 function splitColumns(matrix: Columns, left: number): { left: Columns; right: Columns } {

@@ -1,0 +1,28 @@
+import type { PreparedData } from "../../server/engine/columns/prepared-data.ts";
+import { estimateSystem } from "../../server/engine/estimation/estimate.ts";
+import { type Reduction, reduceRows } from "../../server/engine/estimation/moments.ts";
+import { momentsRequest, sourceOf } from "../../server/engine/estimation/request.ts";
+import { QUIET } from "../../server/engine/run.ts";
+import { type SystemSpecification, systemSpecification } from "../../shared/schemas/system.ts";
+
+export function systemOver(data: PreparedData, specification: object): SystemSpecification {
+  return systemSpecification.parse({
+    kind: "system",
+    data: "households",
+    demographics: [...data.numeric.keys()],
+    ...specification,
+  });
+}
+
+/** Estimates from data in one call, by the reduction that is asked for. */
+export function estimated(data: PreparedData, specification: object, reduction?: Reduction) {
+  const parsed = systemOver(data, specification);
+  const request = momentsRequest(parsed, data);
+  return estimateSystem(parsed, data, reduceRows(sourceOf(data, request), request.key, QUIET, reduction), QUIET);
+}
+
+/** Largest |a − b|/(1 + |b|). */
+export function largestDifference(left: readonly number[], right: readonly number[]): number {
+  if (left.length !== right.length) throw new RangeError(`${left.length} numbers against ${right.length}`);
+  return left.reduce((most, value, k) => Math.max(most, Math.abs(value - right[k]) / (1 + Math.abs(right[k]))), 0);
+}
