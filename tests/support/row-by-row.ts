@@ -16,7 +16,7 @@ export interface RowByRow {
 /**
  * Maximum likelihood the obvious way, sharing no code with the estimator: residuals and derivatives of
  * every row and equation from the system's own formulas, stacked into one dense least-squares problem,
- * Σ̂ recomputed after each, until nothing moves. Rows weigh √h.
+ * Σ̂ recomputed after each, until nothing moves or rounding allows no smaller step. Rows weigh √h.
  */
 export function rowByRow(
   form: SystemName,
@@ -30,6 +30,7 @@ export function rowByRow(
   const start = SYSTEMS[form].start(size, data.shares.map(meanOf));
   let phi = free.places.map((place) => start[place]);
   let covariance = Matrix.eye(kept.length);
+  let last = Number.POSITIVE_INFINITY;
   for (let round = 0; round < 400; round++) {
     const theta = expand(free, phi);
     const weight = inverseRoot(covariance);
@@ -38,7 +39,8 @@ export function rowByRow(
     phi = phi.map((value, f) => value + step[f]);
     const moved = step.reduce((most, value, f) => Math.max(most, Math.abs(value) / (1 + Math.abs(phi[f]))), 0);
     covariance = residualCovariance(form, expand(free, phi), data, size, kept);
-    if (moved < 1e-13 && round > 2) break;
+    if ((moved < 1e-13 || (moved < 1e-7 && moved > 0.5 * last)) && round > 2) break;
+    last = moved;
   }
   const theta = expand(free, phi);
   const { jacobian } = stacked(form, theta, data, size, free.matrix, kept, inverseRoot(covariance));
