@@ -19,6 +19,8 @@ export interface SyncServerNeeds extends Door {
   readonly updates: DocumentUpdates;
   /** Called a moment after stored changes, at most about eight times a second for a study. */
   changed(studyId: string, userId: string | null): void;
+  /** A study's document has been loaded, and nobody in it has been told the status yet. */
+  opened?(studyId: string): void;
   /** Told what went wrong that nobody outside should read. */
   report?(error: unknown): void;
   readonly limits?: Partial<Limits>;
@@ -36,7 +38,7 @@ export type SyncServer = ReturnType<typeof createSyncServer>;
 export function createSyncServer(needs: SyncServerNeeds) {
   const limits: Limits = { ...LIMITS, ...needs.limits };
   const report = needs.report ?? (() => {});
-  const rooms = new Rooms({ updates: needs.updates, limits, report, changed: needs.changed });
+  const rooms = new Rooms({ updates: needs.updates, limits, report, changed: needs.changed, opened: needs.opened });
   const sockets = new WebSocketServer({ noServer: true, maxPayload: limits.hardCap, perMessageDeflate: false });
   let stopping = false;
   const heartbeat = setInterval(() => beat(rooms, sockets), limits.heartbeatMs);

@@ -18,6 +18,8 @@ export interface RoomNeeds {
   readonly limits: Limits;
   /** Stored changes have been applied; `userId` is the last who made one. */
   changed(studyId: string, userId: string | null): void;
+  /** The document has been loaded. */
+  opened?(studyId: string): void;
   /** The last connection has gone, or a question was put to a room without people. */
   empty(room: Room): void;
   report(error: unknown): void;

@@ -17,6 +17,7 @@ export class Rooms {
     const room = new Room(studyId, this.#needs);
     this.#rooms.set(studyId, room);
     this.#unloadLater(room);
+    this.#needs.opened?.(studyId);
     return room;
   }
 

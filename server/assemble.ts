@@ -1,0 +1,152 @@
+import { randomUUID } from "node:crypto";
+import { createServer, type Server } from "node:http";
+import { join, resolve } from "node:path";
+import type { Logger } from "pino";
+import type { Installation } from "../shared/schemas/resources.ts";
+import { createApp } from "./app.ts";
+import type { Config } from "./config.ts";
+import { type OpenDatabase, openDatabase } from "./db/client.ts";
+import { closeDemoAccounts, demoSignIns, isDemo, openDemoAccounts } from "./demo/accounts.ts";
+import { demoStudy } from "./demo/cells.ts";
+import { needsDemoStudy, seedDemoStudy } from "./demo/seed.ts";
+import { developmentPages } from "./http/development.ts";
+import { createLogger } from "./http/log.ts";
+import { pages } from "./http/pages.ts";
+import { sessionOf } from "./http/session.ts";
+import { createPool, type JobPool } from "./jobs/pool.ts";
+import { ROOT, VERSION } from "./root.ts";
+import { createAccess } from "./services/access.ts";
+import { type Authentication, createAuthentication } from "./services/authentication.ts";
+import { createCellService } from "./services/cells.ts";
+import { createServices, type Services } from "./services/index.ts";
+import { keptSecret } from "./storage/secret.ts";
+import { addCell, createSyncServer, type SyncServer, storedUpdates } from "./sync/index.ts";
+
+export interface Running {
+  readonly server: Server;
+  readonly installation: Installation;
+  readonly services: Services;
+  /** Stops taking requests, stores what has arrived, closes sockets, threads and database, in this order. */
+  close(): Promise<void>;
+}
+
+interface LiveParts {
+  readonly open: OpenDatabase;
+  readonly auth: Authentication;
+  readonly pool: JobPool;
+  readonly logger: Logger;
+  readonly origins: readonly string[];
+}
+
+interface Live {
+  readonly services: Services;
+  readonly sync: SyncServer;
+  readonly stopCells: () => void;
+}
+
+interface DemoParts extends Pick<LiveParts, "open" | "auth"> {
+  readonly services: Services;
+  readonly sync: SyncServer;
+  readonly say: (line: string) => void;
+}
+
+/** 100 MB over a slow line. */
+const LONGEST_REQUEST = 3_600_000;
+
+/** Puts the house together over one folder of data. Listens to nothing yet. */
+export async function assemble(config: Config, say: (line: string) => void): Promise<Running> {
+  const dataFolder = resolve(config.dataFolder);
+  const open = openDatabase(join(dataFolder, "tangency.sqlite"));
+  const logger = createLogger(config.logLevel);
+  const { db } = open;
+  const auth = createAuthentication({
+    db,
+    url: config.url,
+    trustedOrigins: config.trustedOrigins,
+    secure: config.secure,
+    secret: config.secret ?? keptSecret(dataFolder),
+  });
+  const pool = createPool({ databasePath: open.path, threads: config.threads });
+  const { services, sync, stopCells } = live({ open, auth, pool, logger, origins: config.trustedOrigins });
+  services.uploads.removeUnfinished();
+
+  const demo = isDemo(db, config.demo);
+  if (demo) await makeDemo({ open, auth, services, sync, say });
+  else closeDemoAccounts(db);
+
+  const installation = { name: "Tangency", version: VERSION, demo: demo ? demoSignIns() : [] };
+  const server = createServer();
+  server.requestTimeout = LONGEST_REQUEST;
+  const page = config.development ? await developmentPages(ROOT, server) : pages(join(ROOT, "dist", "client"));
+  server.on("request", createApp({ config, auth, services, installation, logger, pages: page }));
+  server.on("upgrade", (request, socket, head) => {
+    // In development Vite has sockets of its own.
+    if (!sync.handleUpgrade(request, socket, head) && !config.development) socket.destroy();
+  });
+  return {
+    server,
+    installation,
+    services,
+    async close() {
+      const quiet = new Promise((done) => server.close(done));
+      server.closeIdleConnections();
+      await sync.close();
+      stopCells();
+      await pool.close();
+      server.closeAllConnections();
+      await quiet;
+      open.close();
+    },
+  };
+}
+
+/** The parts that call one another: cells read the document, and the document tells the cells of edits. */
+function live({ open, auth, pool, logger, origins }: LiveParts): Live {
+  const { db } = open;
+  const access = createAccess(db);
+  const report = (error: unknown) => logger.error({ err: error }, "unforeseen");
+  const sync = createSyncServer({
+    async authenticate(request) {
+      const session = await sessionOf(auth, request.headers);
+      return session && { id: session.account.id, name: session.account.name, expiresAt: session.expiresAt };
+    },
+    roleOf: (userId, studyId) => access.roleOf(userId, studyId),
+    origins,
+    updates: storedUpdates(db),
+    changed(studyId) {
+      services.studies.touched(studyId);
+      cells.changed(studyId);
+    },
+    // Whoever joins a study that nobody had open is told where its cells stand.
+    opened: (studyId) =>
+      void Promise.resolve(studyId)
+        .then(cells.status)
+        .then((status) => sync.publish(studyId, status))
+        .catch(report),
+    report,
+  });
+  const cells = createCellService({ db, pool, sourcesOf: sync.sourcesOf, publish: sync.publish, report });
+  const services = createServices({
+    db,
+    cells,
+    sourcesOf: sync.sourcesOf,
+    closePerson: sync.closePerson,
+    parseUpload: (uploadId, signal) => pool.parseUpload(uploadId, () => {}, signal),
+    program: `Tangency ${VERSION}`,
+  });
+  return { services, sync, stopCells: cells.close };
+}
+
+async function makeDemo({ open, auth, services, sync, say }: DemoParts): Promise<void> {
+  const ids = await openDemoAccounts(auth, open.db);
+  if (!needsDemoStudy(open.db, (studyId) => sync.sourcesOf(studyId).length > 0)) return;
+  await seedDemoStudy(demoStudy(), ids, {
+    db: open.db,
+    services,
+    write: (studyId, cells) =>
+      sync.edit(studyId, (doc) => {
+        for (const cell of cells) addCell(doc, { id: randomUUID(), ...cell });
+      }),
+    say,
+  });
+}

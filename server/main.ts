@@ -1,0 +1,42 @@
+import { assemble } from "./assemble.ts";
+import { type Config, readConfig } from "./config.ts";
+
+/** The process: reads the environment, listens, says where, and stops when told to. */
+const PATIENCE_MS = 10_000;
+
+const say = (line: string) => console.log(line);
+
+try {
+  const config = readConfig(process.env);
+  const running = await assemble(config, say);
+  await listen(running.server, config);
+  announce(config, running.installation.demo);
+  for (const signal of ["SIGINT", "SIGTERM"] as const) process.once(signal, () => void stop(running.close));
+} catch (error) {
+  console.error(error instanceof Error ? error.message : error);
+  process.exit(1);
+}
+
+function listen(server: Awaited<ReturnType<typeof assemble>>["server"], { port, host }: Config): Promise<void> {
+  return new Promise((ready, fail) => {
+    server.once("error", (error: NodeJS.ErrnoException) => {
+      if (error.code !== "EADDRINUSE") return fail(error);
+      fail(new Error(`Port ${port} is taken by another program: stop that one, or set PORT to another.`));
+    });
+    server.listen(port, host, ready);
+  });
+}
+
+function announce({ url }: Config, demo: readonly { email: string; passphrase: string; role: string }[]): void {
+  say(`Tangency is open at ${url}`);
+  if (demo.length === 0) return;
+  say(`Demo sign-ins, all with the passphrase "${demo[0].passphrase}":`);
+  for (const { email, role } of demo) say(`  ${email} (${role})`);
+}
+
+async function stop(close: () => Promise<void>): Promise<void> {
+  say("Stopping.");
+  setTimeout(() => process.exit(1), PATIENCE_MS).unref();
+  await close();
+  process.exit(0);
+}
