@@ -41,7 +41,10 @@ export function qualityFlags(data: FlaggedData): QualityFlag[] {
 function zeros({ goods }: FlaggedData): QualityFlag {
   const some = goods.filter((good) => good.boughtNone > 0).sort((a, b) => b.boughtNone - a.boughtNone);
   if (some.length === 0) return { about: "zeros", sentence: "Every good is bought in every row used.", rows: [] };
-  const told = some.map((good) => `${good.name} in ${printPercent(good.boughtNone)}`);
+  // Goods that next to every household buys are not worth a word beside others.
+  const told = some
+    .filter(({ boughtNone }, at) => at === 0 || boughtNone >= 0.0005)
+    .map((good) => `${good.name} in ${printPercent(good.boughtNone)}`);
   const judged =
     some[0].boughtNone < MANY_ZEROS
       ? `Below ${printPercent(MANY_ZEROS, 0)}, so shares are taken as they are.`
