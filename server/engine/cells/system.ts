@@ -4,10 +4,13 @@ import { type SystemFinding, type SystemSpecification, systemFinding } from "../
 import type { Point } from "../../../shared/systems/demand-system.ts";
 import { type FittedCoefficients, systemOf } from "../../../shared/systems/index.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
-import { accumulateMoments } from "../estimation/accumulate.ts";
-import { estimateSystem } from "../estimation/estimate.ts";
-import type { Moments } from "../estimation/moments.ts";
-import { type MomentsRequest, momentsRequest } from "../estimation/request.ts";
+import {
+  accumulateMoments,
+  estimateSystem,
+  type Moments,
+  type MomentsRequest,
+  momentsRequest,
+} from "../estimation/index.ts";
 import { QUIET, type RunControl } from "../run.ts";
 import { basePoint, meanPoint } from "./points.ts";
 import { refusingRanges } from "./refusing.ts";

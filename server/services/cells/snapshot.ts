@@ -1,0 +1,71 @@
+import type { CellSpecification } from "../../../shared/schemas/cell.ts";
+import type { CellSource } from "../../../shared/study/cell-source.ts";
+import { fingerprintCells } from "../../../shared/study/fingerprints.ts";
+import { type ResolvedCell, resolveCells } from "../../../shared/study/resolve.ts";
+import type { CellJob } from "../../jobs/job.ts";
+import type { Work } from "./durations.ts";
+import type { StudyUpload } from "./study-uploads.ts";
+
+/** A study's cells as they stand at one moment: read, looked up, fingerprinted. Never changed. */
+export class Snapshot {
+  readonly cells: readonly ResolvedCell[];
+  /** By cell id. */
+  readonly fingerprints: ReadonlyMap<string, string>;
+  readonly #uploads: readonly StudyUpload[];
+  readonly #byName: ReadonlyMap<string, ResolvedCell>;
+
+  constructor(sources: readonly CellSource[], uploads: readonly StudyUpload[]) {
+    this.cells = resolveCells(sources, uploads);
+    this.fingerprints = fingerprintCells(this.cells, uploads);
+    this.#uploads = uploads;
+    this.#byName = new Map(this.cells.toReversed().map((cell) => [cell.name, cell]));
+  }
+
+  cell(cellId: string): ResolvedCell | undefined {
+    return this.cells.find(({ id }) => id === cellId);
+  }
+
+  fingerprintOf(name: string): string | undefined {
+    const cell = this.#byName.get(name);
+    return cell && this.fingerprints.get(cell.id);
+  }
+
+  /** The job that answers a cell; none while it, or one it reads, has problems. */
+  job(studyId: string, cell: ResolvedCell): CellJob | undefined {
+    const fingerprint = this.fingerprints.get(cell.id);
+    const data = this.#dataBelow(cell);
+    const specification = cell.specification;
+    const dataFingerprint = data && this.fingerprints.get(data.id);
+    if (!specification || !fingerprint || data?.specification?.kind !== "data" || !dataFingerprint) return undefined;
+    const { upload: name } = data.specification;
+    const upload = this.#uploads.find((one) => one.name === name);
+    if (!upload) return undefined;
+    return {
+      studyId,
+      fingerprint,
+      specification,
+      data: { fingerprint: dataFingerprint, specification: data.specification, uploadId: upload.id },
+      ...(specification.kind === "slutsky" && { systemFingerprint: this.fingerprintOf(specification.system) }),
+    };
+  }
+
+  /** What an estimation of the cell has to go through. */
+  work(cell: ResolvedCell): Work | undefined {
+    const data = this.#dataBelow(cell);
+    if (data?.specification?.kind !== "data") return undefined;
+    const { upload: name, goods } = data.specification;
+    const upload = this.#uploads.find((one) => one.name === name);
+    return upload && { rows: upload.rows, goods: Object.keys(goods).length };
+  }
+
+  #dataBelow(cell: ResolvedCell): ResolvedCell | undefined {
+    let at: ResolvedCell | undefined = cell;
+    while (at && at.kind !== "data") at = this.#byName.get(readOf(at.specification) ?? "");
+    return at;
+  }
+}
+
+function readOf(specification: CellSpecification | undefined): string | undefined {
+  if (specification?.kind === "system") return specification.data;
+  return specification?.kind === "slutsky" ? specification.system : undefined;
+}
