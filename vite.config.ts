@@ -4,6 +4,7 @@ import { defineConfig } from "vitest/config";
 
 export default defineConfig({
   plugins: [react(), tailwindcss()],
+  publicDir: "src/public",
   build: { outDir: "dist/client", emptyOutDir: true, target: "es2022" },
   worker: { format: "es" },
   test: {

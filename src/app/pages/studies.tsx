@@ -1,0 +1,68 @@
+import { useState } from "react";
+import { useNavigate } from "react-router-dom";
+import { Button } from "../../components/button.tsx";
+import { Fault } from "../../components/field.tsx";
+import { TopBar } from "../../components/top-bar.tsx";
+import { useInstallation } from "../../features/accounts/api/get-installation.ts";
+import { useMe } from "../../features/accounts/api/get-me.ts";
+import { useStudies } from "../../features/studies/api/list-studies.ts";
+import { NewStudyDialog } from "../../features/studies/new-study-dialog.tsx";
+import { type StudyFilter, shownStudies } from "../../features/studies/study-filters.ts";
+import { StudyFinder } from "../../features/studies/study-finder.tsx";
+import { StudyList } from "../../features/studies/study-list.tsx";
+import { sentenceOf } from "../../lib/api.ts";
+import { usePageTitle } from "../../lib/page-title.ts";
+import { pages } from "../../lib/paths.ts";
+import { SettingsDialog } from "../settings-dialog.tsx";
+import { useLeave } from "../use-leave.ts";
+
+export default function StudiesPage() {
+  const { data: me } = useMe();
+  const { data: studies, error } = useStudies();
+  const { data: installation } = useInstallation();
+  const [filter, setFilter] = useState<StudyFilter>("all");
+  const [find, setFind] = useState("");
+  const [dialog, setDialog] = useState<"new study" | "settings">();
+  const navigate = useNavigate();
+  const leave = useLeave(me?.id);
+  usePageTitle("Studies");
+  const close = () => setDialog(undefined);
+  return (
+    <>
+      <TopBar home={pages.studies}>
+        <span className="you mr-4 font-semibold">{me?.name}</span>
+        <Button onClick={() => setDialog("settings")}>Settings</Button>
+        <Button onClick={leave}>Sign out</Button>
+      </TopBar>
+      <main className="studies">
+        <div className="studies-left">
+          <h1 className="type-display">Studies</h1>
+          <p className="type-finding pt-2 pb-9">{installation && `The installation of ${installation.name}.`}</p>
+          <StudyFinder studies={studies ?? []} filter={filter} find={find} onFilter={setFilter} onFind={setFind} />
+          <div className="pt-9">
+            <Button filled onClick={() => setDialog("new study")}>
+              New study
+            </Button>
+          </div>
+        </div>
+        <div className="studies-right">
+          {error && <Fault>{sentenceOf(error)}</Fault>}
+          {studies && me && (
+            <StudyList
+              studies={shownStudies(studies, filter, find)}
+              you={me.id}
+              hidden={studies.length > 0}
+            />
+          )}
+          {!studies && !error && <p role="status">Fetching the studies</p>}
+        </div>
+      </main>
+      <NewStudyDialog
+        open={dialog === "new study"}
+        onClose={close}
+        onCreated={(studyId) => navigate(pages.study(studyId))}
+      />
+      <SettingsDialog open={dialog === "settings"} onClose={close} />
+    </>
+  );
+}

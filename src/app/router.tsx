@@ -1,0 +1,42 @@
+import type { QueryClient } from "@tanstack/react-query";
+import { createBrowserRouter, type RouteObject } from "react-router-dom";
+import { someoneSignedIn } from "./doorkeeper.ts";
+import { PageFault } from "./page-fault.tsx";
+import { Waiting } from "./waiting.tsx";
+
+/** A page loaded when it is first gone to. */
+const page = (load: () => Promise<{ default: React.ComponentType }>) => async () => ({
+  Component: (await load()).default,
+});
+
+export function routes(client: QueryClient): RouteObject[] {
+  return [
+    {
+      ErrorBoundary: PageFault,
+      HydrateFallback: Waiting,
+      children: [
+        { path: "/sign-in", lazy: page(() => import("./pages/sign-in.tsx")) },
+        { path: "/create-account", lazy: page(() => import("./pages/create-account.tsx")) },
+        {
+          loader: someoneSignedIn(client),
+          // Asked once on the way in; moving between pages asks no more.
+          shouldRevalidate: () => false,
+          children: [
+            { path: "/", lazy: page(() => import("./pages/studies.tsx")) },
+            {
+              path: "/studies/:studyId",
+              lazy: page(() => import("./pages/study.tsx")),
+              children: [
+                { index: true, lazy: page(() => import("./pages/workspace.tsx")) },
+                { path: "cells/:cellId", lazy: page(() => import("./pages/opened-cell.tsx")) },
+              ],
+            },
+          ],
+        },
+        { path: "*", lazy: page(() => import("./pages/not-found.tsx")) },
+      ],
+    },
+  ];
+}
+
+export const createRouter = (client: QueryClient) => createBrowserRouter(routes(client));

@@ -1,0 +1,42 @@
+import { useMemo } from "react";
+import type { RefereeCopy } from "../../../shared/schemas/referee-copy.ts";
+import { printCount } from "../../../shared/tables/numbers.ts";
+import { type SealedFile, sealedFiles } from "./sealed-files.ts";
+
+function save({ text, type, name }: SealedFile): void {
+  const address = URL.createObjectURL(new Blob([text], { type }));
+  const link = document.createElement("a");
+  link.href = address;
+  link.download = name;
+  link.click();
+  // Revoked a turn later: some browsers begin reading only then.
+  setTimeout(() => URL.revokeObjectURL(address), 1000);
+}
+
+const size = (file: SealedFile) =>
+  `${file.format}, ${printCount(Math.max(1, Math.round(new Blob([file.text]).size / 1000)))} kB`;
+
+/** The numbers to take away: made here from what is on the page. */
+export function Downloads({ copy }: { copy: RefereeCopy }) {
+  const files = useMemo(() => sealedFiles(copy), [copy]);
+  return (
+    <section aria-labelledby="downloads" className="print:hidden">
+      <h2 id="downloads" className="type-section mb-1.5 text-[1.3125rem]">
+        Downloads
+      </h2>
+      <ul className="border-rule2 border-t">
+        {files.map((file) => (
+          <li key={file.label} className="flex items-baseline justify-between gap-3 border-rule2 border-b py-1.5">
+            <button type="button" className="word text-left" onClick={() => save(file)}>
+              {file.label}
+            </button>
+            <span className="type-small shrink-0 text-ink2">{size(file)}</span>
+          </li>
+        ))}
+      </ul>
+      <p className="type-small mt-4 text-ink2">
+        The JSON is the very text whose SHA-256 is the fingerprint; any program can check it.
+      </p>
+    </section>
+  );
+}

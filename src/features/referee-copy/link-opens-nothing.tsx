@@ -1,0 +1,12 @@
+import { Mark } from "../../components/mark.tsx";
+
+/** A wrong link and a revoked one say the same, and neither says which it is. */
+export function LinkOpensNothing({ because }: { because?: string }) {
+  return (
+    <main className="mx-auto max-w-xl px-4.5 py-16">
+      <Mark size={32} />
+      <h1 className="type-title mt-6 mb-3">{because ? "The copy could not be fetched" : "This link opens nothing"}</h1>
+      <p className="type-prose">{because ?? "Check that it is complete, or ask whoever sent it to you."}</p>
+    </main>
+  );
+}

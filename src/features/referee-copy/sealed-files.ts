@@ -1,0 +1,81 @@
+import type { RefereeCopy, SealedContent } from "../../../shared/schemas/referee-copy.ts";
+import { canonicalJson } from "../../../shared/study/canonical-json.ts";
+import { setKey } from "../../../shared/study/edit.ts";
+import { coefficientTable } from "../../../shared/tables/coefficients.ts";
+import { covarianceCsv } from "../../../shared/tables/covariance.ts";
+import { tableCsv } from "../../../shared/tables/csv.ts";
+import { eigenvalueTable } from "../../../shared/tables/eigenvalues.ts";
+import { tableLatex } from "../../../shared/tables/latex.ts";
+import { rowAccountingTable } from "../../../shared/tables/row-accounting.ts";
+import { compensatedTable, slutskyTable } from "../../../shared/tables/slutsky-matrix.ts";
+
+/** A file made in the browser from the sealed content. */
+export interface SealedFile {
+  readonly label: string;
+  readonly format: "CSV" | "LaTeX" | "YAML" | "JSON";
+  readonly name: string;
+  readonly type: string;
+  readonly text: string;
+}
+
+/** The specification as one study file: every cell's source under its name and kind. */
+export function specificationYaml({ study, cells }: SealedContent): string {
+  const indented = (source: string) =>
+    source
+      .trimEnd()
+      .split("\n")
+      .map((line) => (line === "" ? "" : `    ${line}`))
+      .join("\n");
+  const blocks = cells.sources.map(({ name, kind, source }) => {
+    // A one-key document quotes the name as YAML needs it.
+    const head = setKey("", [name], "").replace(/:[^:]*$/, ":");
+    return `  ${head}\n    kind: ${kind}\n${indented(source)}\n`;
+  });
+  return `${setKey("", ["study"], study.title)}cells:\n${blocks.join("")}`;
+}
+
+function tablesLatex(content: SealedContent): string {
+  const { slutsky, system, accounting } = content;
+  return [
+    slutskyTable(slutsky, "share"),
+    slutskyTable(slutsky, "quantity"),
+    ...(slutsky.at.eigenvalues.length > 0 ? [eigenvalueTable(slutsky)] : []),
+    compensatedTable(slutsky),
+    coefficientTable(system),
+    rowAccountingTable(accounting),
+  ]
+    .map(tableLatex)
+    .join("\n");
+}
+
+/** Everything a copy can be downloaded as. JSON is the very text whose SHA-256 is the fingerprint. */
+export function sealedFiles({ fingerprint, content }: RefereeCopy): SealedFile[] {
+  const stem = `referee-copy-${fingerprint.slice(0, 8)}`;
+  const csv = (label: string, name: string, text: string): SealedFile => ({
+    label,
+    format: "CSV",
+    name: `${stem}-${name}.csv`,
+    type: "text/csv;charset=utf-8",
+    text,
+  });
+  const { slutsky, system } = content;
+  return [
+    csv("Matrix, with standard errors", "matrix", tableCsv(slutskyTable(slutsky, slutsky.form))),
+    csv("Coefficients, with full covariance", "coefficients", covarianceCsv(system)),
+    { label: "Tables", format: "LaTeX", name: `${stem}.tex`, type: "application/x-tex", text: tablesLatex(content) },
+    {
+      label: "Specification",
+      format: "YAML",
+      name: `${stem}.yaml`,
+      type: "application/yaml",
+      text: specificationYaml(content),
+    },
+    {
+      label: "Everything sealed",
+      format: "JSON",
+      name: `${stem}.json`,
+      type: "application/json",
+      text: canonicalJson(content),
+    },
+  ];
+}

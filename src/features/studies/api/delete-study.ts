@@ -1,0 +1,14 @@
+import { useMutation, useQueryClient } from "@tanstack/react-query";
+import { ask } from "../../../lib/api.ts";
+import { api } from "../../../lib/paths.ts";
+
+export function useDeleteStudy() {
+  const client = useQueryClient();
+  return useMutation({
+    mutationFn: (studyId: string) => ask({ method: "DELETE", path: api.study(studyId) }),
+    onSuccess: (_, studyId) => {
+      client.removeQueries({ queryKey: ["studies", studyId] });
+      return client.invalidateQueries({ queryKey: ["studies"], exact: true });
+    },
+  });
+}

@@ -1,0 +1,46 @@
+import { useId } from "react";
+import type { StudySummary } from "../../../shared/schemas/resources.ts";
+import { STUDY_FILTERS, type StudyFilter, shownStudies } from "./study-filters.ts";
+
+interface StudyFinderProps {
+  readonly studies: readonly StudySummary[];
+  readonly filter: StudyFilter;
+  readonly find: string;
+  readonly onFilter: (filter: StudyFilter) => void;
+  readonly onFind: (find: string) => void;
+}
+
+/** Which studies are listed: four filters with their counts, and words to find. */
+export function StudyFinder({ studies, filter, find, onFilter, onFind }: StudyFinderProps) {
+  const id = useId();
+  return (
+    <search>
+      <ul className="border-rule2 border-b">
+        {STUDY_FILTERS.map(({ key, words }) => (
+          <li key={key} className="border-rule2 border-t">
+            <button
+              type="button"
+              aria-pressed={filter === key}
+              onClick={() => onFilter(key)}
+              className={`flex min-h-8.5 w-full items-center justify-between hover:text-accent ${filter === key ? "font-semibold" : ""}`}
+            >
+              <span>{words}</span>
+              <span className="tabular-nums">{shownStudies(studies, key, "").length}</span>
+            </button>
+          </li>
+        ))}
+      </ul>
+      <label htmlFor={id} className="type-small block pt-8 text-ink2">
+        Find
+      </label>
+      <input
+        id={id}
+        type="search"
+        className="field-line"
+        placeholder="a study, a cell or an author"
+        value={find}
+        onChange={(event) => onFind(event.target.value)}
+      />
+    </search>
+  );
+}

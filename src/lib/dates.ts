@@ -1,0 +1,57 @@
+const MINUTE = 60_000;
+const DAY = 24 * 60 * MINUTE;
+
+const clock = (date: Date) => `${date.getHours()}:${String(date.getMinutes()).padStart(2, "0")}`;
+const midnight = (date: Date) => new Date(date.getFullYear(), date.getMonth(), date.getDate()).getTime();
+
+/** Midnights between two days; an hour's change of the clock does not count. */
+const daysBetween = (then: Date, now: Date) => Math.round((midnight(now) - midnight(then)) / DAY);
+
+function calendarDate(then: Date, now: Date): string {
+  const year = then.getFullYear() === now.getFullYear() ? "" : ` ${then.getFullYear()}`;
+  return `${then.getDate()} ${then.toLocaleDateString("en-GB", { month: "long" })}${year}`;
+}
+
+/** A clock time today, a weekday this week, a date after: "14:08", "Tuesday", "9 March". */
+export function whenInWords(instant: string | number | Date, now = new Date()): string {
+  const then = new Date(instant);
+  const days = daysBetween(then, now);
+  if (days <= 0) return clock(then);
+  if (days < 7) return then.toLocaleDateString("en-GB", { weekday: "long" });
+  return calendarDate(then, now);
+}
+
+/** How long ago a change was: "2 minutes ago", "at 9:05", "yesterday", "on Tuesday", "on 4 March". */
+export function agoInWords(instant: string | number | Date, now = new Date()): string {
+  const then = new Date(instant);
+  const minutes = Math.floor((now.getTime() - then.getTime()) / MINUTE);
+  const days = daysBetween(then, now);
+  if (minutes < 1) return "just now";
+  if (minutes < 60) return minutes === 1 ? "a minute ago" : `${minutes} minutes ago`;
+  if (days <= 0) return `at ${clock(then)}`;
+  if (days === 1) return "yesterday";
+  return days < 7 ? `on ${whenInWords(then, now)}` : calendarDate(then, now);
+}
+
+/** How long something took, or will: "40 ms", "1.6 s", "20 s", "3 min". */
+export function durationInWords(milliseconds: number): string {
+  if (milliseconds < 100) return `${Math.max(1, Math.round(milliseconds))} ms`;
+  if (milliseconds < 9_950) return `${(milliseconds / 1000).toFixed(1).replace(/\.0$/, "")} s`;
+  if (milliseconds < 90_000) return `${Math.round(milliseconds / 1000)} s`;
+  return `${Math.round(milliseconds / MINUTE)} min`;
+}
+
+/** An estimate of a duration, never finer than it is known: "less than a second", "about 20 s". */
+export function aboutInWords(milliseconds: number): string {
+  if (milliseconds < 1000) return "less than a second";
+  const seconds = milliseconds / 1000;
+  if (seconds < 10) return `about ${Math.round(seconds)} s`;
+  if (seconds < 90) return `about ${Math.round(seconds / 5) * 5} s`;
+  return `about ${Math.round(seconds / 60)} min`;
+}
+
+/** A running clock: "0:14". */
+export function elapsedClock(milliseconds: number): string {
+  const seconds = Math.floor(milliseconds / 1000);
+  return `${Math.floor(seconds / 60)}:${String(seconds % 60).padStart(2, "0")}`;
+}
