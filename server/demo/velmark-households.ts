@@ -1,8 +1,8 @@
 import type { Random } from "../../shared/numerics/random.ts";
 
 /** Villages of the survey, and rows of the file. */
-export const VILLAGES = 212;
-export const HOUSEHOLDS = 4938;
+const VILLAGES = 212;
+const HOUSEHOLDS = 4938;
 /** The village of which one visit brought hardly a price of meat, and the month of that visit (March 2031). */
 export const SPOILED_VISIT = { village: 131, month: 27, households: 36 };
 

@@ -1,5 +1,5 @@
 import type { Random } from "../../shared/numerics/random.ts";
-import { type Household, SPOILED_VISIT, VILLAGES } from "./velmark-households.ts";
+import { type Household, SPOILED_VISIT } from "./velmark-households.ts";
 
 /** What is wrong with a row of the survey, as in any survey. */
 export type Trouble = "large household" | "price missing" | "bought nothing" | "dairy price zero" | "does not add up";
@@ -29,7 +29,7 @@ export function placeTroubles(random: Random, villageOfRow: readonly number[]): 
   for (const [trouble, count] of Object.entries(SCATTERED) as [Trouble, number][]) {
     for (let placed = 0; placed < count; ) {
       const row = random.integer(villageOfRow.length);
-      if (troubles.has(row) || villageOfRow[row] === SPOILED_VISIT.village || villageOfRow[row] > VILLAGES) continue;
+      if (troubles.has(row) || villageOfRow[row] === SPOILED_VISIT.village) continue;
       troubles.set(row, trouble);
       placed++;
     }

@@ -8,7 +8,7 @@ export interface CellReading {
 }
 
 /** Words that stand for a missing value in a column whose other cells are numbers. */
-export const MISSING_WORDS: ReadonlySet<string> = new Set(["NA", "NaN", "nan", "."]);
+const MISSING_WORDS: ReadonlySet<string> = new Set(["NA", "NaN", "nan", "."]);
 
 const COMMA_NUMBER = /^[+-]?(\d+,\d*|,\d+)([eE][+-]?\d+)?$/;
 /** One to three digits, then a comma and three: a decimal, or thousands; the cell alone does not say. */

@@ -47,9 +47,12 @@ export function evaluateExpression(tree: ExpressionTree, columns: Columns, rows:
   return { values, reads, undefinedRows, ...(firstUndefinedRow === undefined ? {} : { firstUndefinedRow }) };
 }
 
-function missingIn(column: TableColumn | undefined): (row: number) => boolean {
+/** Whether a column has no value in a row. */
+export function missingIn(
+  column: TableColumn | { readonly values: Float64Array } | undefined,
+): (row: number) => boolean {
   if (column === undefined) return () => false;
-  if (column.type === "number") return (row) => Number.isNaN(column.values[row]);
+  if ("values" in column) return (row) => Number.isNaN(column.values[row]);
   return (row) => column.codes[row] < 0;
 }
 

@@ -14,7 +14,7 @@ import type { UploadTable } from "./prepared-data.ts";
 import { detectSeparator, type Separator } from "./separator.ts";
 
 /** 100 MB, as an upload may be large. */
-export const LARGEST_FILE = 100 * 1024 * 1024;
+const LARGEST_FILE = 100 * 1024 * 1024;
 
 export interface ReadCsv {
   readonly table: UploadTable;

@@ -1,7 +1,7 @@
 import type { LEFT_OUT_REASONS } from "../../../shared/schemas/data.ts";
 import { counted } from "../../../shared/study/words.ts";
 import type { DerivedColumns } from "./derive-columns.ts";
-import type { EvaluatedExpression } from "./expressions.ts";
+import { type EvaluatedExpression, missingIn } from "./expressions.ts";
 import { type FormedGood, sumOfGoods } from "./form-goods.ts";
 import type { TableColumn } from "./prepared-data.ts";
 import type { NumberColumn, Roles } from "./resolve-roles.ts";
@@ -26,79 +26,52 @@ export function keepGrounds(values: Float64Array): Ground[] {
   return [{ reason: "keep", fault: "by keep", column: "", applies: (row) => values[row] === 0 }];
 }
 
+/** Every column named, each once, in the order of the specification's keys. */
 export function missingGrounds(
   goods: readonly FormedGood[],
   roles: Roles,
   { derived, keep, columns }: DerivedColumns,
 ): Ground[] {
   const grounds = new Map<string, Ground>();
-  const add = (what: string, column: string, values: Float64Array) => {
+  const add = (what: string, column: string, applies: Ground["applies"]) => {
+    if (grounds.has(column)) return;
     const because = whyUndefined(column, derived.get(column));
-    const applies = (row: number) => Number.isNaN(values[row]);
-    if (!grounds.has(column)) {
-      grounds.set(column, {
-        reason: "missing value",
-        fault: `${what} missing`,
-        column,
-        applies,
-        ...(because && { because }),
-      });
-    }
+    grounds.set(column, {
+      reason: "missing value",
+      fault: `${what} missing`,
+      column,
+      applies,
+      ...(because && { because }),
+    });
+  };
+  const addColumn = (what: string, column: TableColumn | NumberColumn | undefined) => {
+    if (column) add(what, column.name, missingIn(column));
   };
   for (const { name, price, expenditure, given } of goods) {
-    if (given.price) add("a price", given.price.name, price);
-    if (given.quantity) add("a quantity", given.quantity.name, given.quantity.values);
-    if (given.expenditure) add("an expenditure", given.expenditure.name, expenditure);
-    const { quantity } = given;
-    if (!given.price) addFormed("a price", `${name}, expenditure ÷ quantity`, price, given.expenditure, quantity);
-    if (!given.expenditure)
-      addFormed("an expenditure", `${name}, price × quantity`, expenditure, given.price, quantity);
+    addColumn("a price", given.price);
+    addColumn("a quantity", given.quantity);
+    addColumn("an expenditure", given.expenditure);
+    // What follows from two columns is missing by itself only where both of them are there.
+    const sources = Object.values(given).map(missingIn);
+    const formed = (values: Float64Array) => (row: number) =>
+      Number.isNaN(values[row]) && !sources.some((missing) => missing(row));
+    if (!given.price) add("a price", `${name}, expenditure ÷ quantity`, formed(price));
+    if (!given.expenditure) add("an expenditure", `${name}, price × quantity`, formed(expenditure));
   }
-  if (roles.total) add("a total", roles.total.name, roles.total.values);
-  if (roles.weight) add("a weight", roles.weight.name, roles.weight.values);
-  if (roles.cluster) addAny(roles.cluster, "a cluster");
-  if (roles.time) add("a time", roles.time.name, roles.time.values);
-  for (const [name, { values }] of derived) add("a value", name, values);
-  for (const read of keep?.reads ?? []) {
-    const column = columns.get(read);
-    // Only rows that keep cannot decide: what is missing may not matter to its answer.
-    if (column && keep) addUndecided(column, keep.values);
+  addColumn("a total", roles.total);
+  addColumn("a weight", roles.weight);
+  addColumn("a cluster", roles.cluster);
+  addColumn("a time", roles.time);
+  for (const name of derived.keys()) addColumn("a value", columns.get(name));
+  if (keep === undefined) return [...grounds.values()];
+  // Of what keep reads, only rows that it cannot decide: what is missing may not matter to its answer.
+  const undecided = (row: number) => Number.isNaN(keep.values[row]);
+  for (const read of keep.reads) {
+    const missing = missingIn(columns.get(read));
+    add("a value", read, (row) => undecided(row) && missing(row));
   }
-  if (keep && keep.undefinedRows > 0) add("an answer of keep", "", keep.values);
+  if (keep.undefinedRows > 0) add("an answer of keep", "", undecided);
   return [...grounds.values()];
-
-  /** A part that follows from two others is missing by itself only where both of them are there. */
-  function addFormed(
-    what: string,
-    column: string,
-    values: Float64Array,
-    one?: NumberColumn,
-    other?: NumberColumn,
-  ): void {
-    const isThere = (source: NumberColumn | undefined, row: number) => !Number.isNaN(source?.values[row]);
-    const applies = (row: number) => Number.isNaN(values[row]) && isThere(one, row) && isThere(other, row);
-    grounds.set(column, { reason: "missing value", fault: `${what} missing`, column, applies });
-  }
-  function addAny(column: TableColumn, what: string): void {
-    if (column.type === "number") add(what, column.name, column.values);
-    else
-      grounds.set(
-        column.name,
-        missingText(column, what, (row) => column.codes[row] < 0),
-      );
-  }
-  function addUndecided(column: TableColumn, answers: Float64Array): void {
-    const isMissing = (row: number) =>
-      column.type === "number" ? Number.isNaN(column.values[row]) : column.codes[row] < 0;
-    if (grounds.has(column.name)) return;
-    grounds.set(
-      column.name,
-      missingText(column, "a value", (row) => Number.isNaN(answers[row]) && isMissing(row)),
-    );
-  }
-  function missingText(column: TableColumn, what: string, applies: (row: number) => boolean): Ground {
-    return { reason: "missing value", fault: `${what} missing`, column: column.name, applies };
-  }
 }
 
 function whyUndefined(name: string, derived: EvaluatedExpression | undefined): string | undefined {

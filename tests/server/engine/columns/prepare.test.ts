@@ -1,3 +1,4 @@
+import { createReadStream, readFileSync } from "node:fs";
 import fc from "fast-check";
 import { describe, expect, test } from "vitest";
 import { prepareData } from "../../../../server/engine/columns/prepare.ts";
@@ -480,6 +481,27 @@ describe("worth knowing before estimating", () => {
     expect(found?.sentence).toBe("Printed shares of 1 row miss one by up to 4 × 10⁻⁷; they were divided by their sum.");
     const { shares } = prepareData(specify({ total: "total" }), printed);
     expect(shares[0][9] + shares[1][9]).toBeCloseTo(1, 15);
+  });
+});
+
+test("the tuna file is used whole, its shares those of prices times quantities", async () => {
+  const path = new URL("../../../reference/fixtures/tuna-weekly.csv", import.meta.url);
+  const { table } = await readCsv(createReadStream(path), "tuna-weekly.csv", QUIET);
+  const brands = [1, 2, 3, 4, 5, 6, 7];
+  const goods = Object.fromEntries(brands.map((i) => [`brand${i}`, { price: `p${i}`, quantity: `q${i}` }]));
+  const data = prepareData(specify({ goods, time: "week" }), table);
+  expect(data.finding.accounting).toEqual({ uploaded: 338, leftOut: [], used: 338 });
+  expect([...data.numeric.keys()]).toEqual(["week"]);
+  const lines = readFileSync(path, "utf8").trim().split("\n").slice(1);
+  lines.forEach((line, row) => {
+    const cells = line.split(",").map(Number);
+    const spent = brands.map((i) => cells[i] * cells[i + 7]);
+    const total = spent.reduce((sum, one) => sum + one, 0);
+    for (const i of [0, 1, 2, 3, 4, 5, 6]) {
+      expect(data.shares[i][row]).toBeCloseTo(spent[i] / total, 14);
+      expect(data.logPrices[i][row]).toBeCloseTo(Math.log(cells[i + 8] / data.priceScale[i]), 13);
+    }
+    expect(data.time?.[row]).toBe(cells[0]);
   });
 });
 
