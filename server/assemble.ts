@@ -19,6 +19,7 @@ import { createAccess } from "./services/access.ts";
 import { type Authentication, createAuthentication } from "./services/authentication.ts";
 import { createCellService } from "./services/cells.ts";
 import { createServices, type Services } from "./services/index.ts";
+import { lockFolder } from "./storage/lock.ts";
 import { keptSecret } from "./storage/secret.ts";
 import { addCell, createSyncServer, type SyncServer, storedUpdates } from "./sync/index.ts";
 
@@ -56,6 +57,7 @@ const LONGEST_REQUEST = 3_600_000;
 /** Puts the house together over one folder of data. Listens to nothing yet. */
 export async function assemble(config: Config, say: (line: string) => void): Promise<Running> {
   const dataFolder = resolve(config.dataFolder);
+  const unlock = lockFolder(dataFolder);
   const open = openDatabase(join(dataFolder, "tangency.sqlite"));
   const logger = createLogger(config.logLevel);
   const { db } = open;
@@ -96,6 +98,7 @@ export async function assemble(config: Config, say: (line: string) => void): Pro
       server.closeAllConnections();
       await quiet;
       open.close();
+      unlock();
     },
   };
 }
