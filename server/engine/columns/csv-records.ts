@@ -1,4 +1,5 @@
 import { CsvError, parse } from "csv-parse";
+import { printCount } from "../../../shared/tables/numbers.ts";
 import { Refusal } from "../refusal.ts";
 import { Cancelled, type RunControl } from "../run.ts";
 import { printPlace } from "./place.ts";
@@ -47,7 +48,7 @@ export async function readRecords(
       for (let from = 0; from < piece.length; from += SLICE) {
         if (control.cancelled()) throw new Cancelled("The reading of the file was cancelled.");
         await write(parser, piece.subarray(from, from + SLICE));
-        control.progress({ step: "reading rows", iteration: Math.max(0, records - 1) });
+        control.progress({ step: `reading rows, ${printCount(Math.max(0, records - 1))} so far` });
       }
     }
     parser.end();
