@@ -4,6 +4,9 @@ import { type Config, readConfig } from "./config.ts";
 /** The process: reads the environment, listens, says where, and stops when told to. */
 const PATIENCE_MS = 10_000;
 
+// Microdata: what is written here is for the account that runs the program, and for no other.
+process.umask(0o077);
+
 const say = (line: string) => console.log(line);
 
 try {

@@ -76,13 +76,13 @@ describe("a first start", () => {
   });
 
   test("an uploaded file is read by the worker; one that is no table is refused with its place", async () => {
-    const send = (content: string | Buffer, name: string) => {
+    const send = (content: BlobPart, name: string) => {
       const form = new FormData();
       form.set("file", new Blob([content]), name);
       return fetch(`${program.origin}/api/studies/demo/uploads`, { method: "POST", headers: heads(), body: form });
     };
     const tuna = readFileSync(join(import.meta.dirname, "..", "reference", "fixtures", "tuna-weekly.csv"));
-    const read = await send(tuna, "tuna-weekly.csv");
+    const read = await send(new Uint8Array(tuna), "tuna-weekly.csv");
     expect(read.status).toBe(201);
     expect(uploadSchema.parse(await read.json())).toMatchObject({ name: "tuna-weekly.csv", rows: 338 });
     const ragged = await send("a,b\n1,2\n3,4,5\n", "ragged.csv");

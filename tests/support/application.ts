@@ -2,7 +2,7 @@ import { createServer } from "node:http";
 import type { AddressInfo } from "node:net";
 import { createApp } from "../../server/app.ts";
 import type { Limits } from "../../server/config.ts";
-import { type OpenDatabase, openDatabase } from "../../server/db/client.ts";
+import { openDatabase } from "../../server/db/client.ts";
 import { createLogger } from "../../server/http/log.ts";
 import { createAuthentication } from "../../server/services/authentication.ts";
 import { createServices } from "../../server/services/index.ts";
@@ -132,5 +132,3 @@ export function cookieOf(answer: Answer): string {
     .map((cookie) => cookie.split(";")[0])
     .join("; ");
 }
-
-export type { OpenDatabase };

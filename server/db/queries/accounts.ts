@@ -8,10 +8,6 @@ export function findAccountByEmail(db: Database, email: string): AccountRow | un
   return db.select().from(user).where(eq(user.email, email.toLowerCase())).get();
 }
 
-export function findAccount(db: Database, userId: string): AccountRow | undefined {
-  return db.select().from(user).where(eq(user.id, userId)).get();
-}
-
 export function countAccounts(db: Database): number {
   return db.select({ accounts: count() }).from(user).get()?.accounts ?? 0;
 }
