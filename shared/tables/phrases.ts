@@ -1,0 +1,16 @@
+import { printCount } from "./numbers.ts";
+
+/** "a", "a and b", "a, b and c". */
+export function listed(words: readonly string[]): string {
+  if (words.length < 2) return words.join("");
+  return `${words.slice(0, -1).join(", ")} and ${words.at(-1)}`;
+}
+
+/** "1 row", "4,812 rows". */
+export function countedRows(count: number): string {
+  return `${printCount(count)} ${count === 1 ? "row" : "rows"}`;
+}
+
+export function capital(text: string): string {
+  return text.slice(0, 1).toUpperCase() + text.slice(1);
+}
