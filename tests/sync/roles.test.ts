@@ -146,6 +146,28 @@ describe("presence", () => {
     expect(late.awareness.getStates().get(ilse.doc.clientID)).toMatchObject({ cell: "survey", user: { id: "ilse" } });
   });
 
+  it("has one client id for a connection: a second is not taken", async () => {
+    const [ilse, tomas] = [await join("ilse"), await join("tomas")];
+    tomas.present(tomas.doc.clientID, 1, {});
+    tomas.present(tomas.doc.clientID + 1, 1, { cell: "survey" });
+    await settled(tomas);
+    await settled(ilse);
+    expect(ilse.awareness.getStates().has(tomas.doc.clientID)).toBe(true);
+    expect(ilse.awareness.getStates().has(tomas.doc.clientID + 1)).toBe(false);
+  });
+
+  it("passes to the same person's newer connection, and the older one's end does not remove it", async () => {
+    const [ilse, old, young] = [await join("ilse"), await join("tomas"), await join("tomas")];
+    old.present(4, 1, { cell: "survey" });
+    await settled(old);
+    young.present(4, 1, { cell: "base" });
+    await settled(young);
+    await old.leave();
+    await until(() => ilse.awareness.getStates().get(4)?.cell === "base", "not the newer one's");
+    await settled(ilse);
+    expect(ilse.awareness.getStates().has(4)).toBe(true);
+  });
+
   it("goes with the socket", async () => {
     const [ilse, tomas] = [await join("ilse"), await join("tomas")];
     tomas.present(tomas.doc.clientID, 1, {});

@@ -3,7 +3,10 @@ import * as Y from "yjs";
 import { type OpenDatabase, openDatabase } from "../../server/db/client.ts";
 import { loadUpdates } from "../../server/db/queries/documents.ts";
 import { addCell, type DocumentUpdates, readCells, storedUpdates } from "../../server/sync/index.ts";
-import type { Limits } from "../../server/sync/limits.ts";
+import { LIMITS, type Limits } from "../../server/sync/limits.ts";
+import { answerWith } from "../../server/sync/messages.ts";
+import { SyncRefused } from "../../server/sync/refused.ts";
+import { Room } from "../../server/sync/room.ts";
 import { CLOSE } from "../../shared/schemas/sync.ts";
 import { openAs, RawClient, until } from "../support/sync-clients.ts";
 import { fillDatabase, type PersonId, type RunningSync, STUDY, startSyncServer } from "../support/sync-server.ts";
@@ -132,6 +135,35 @@ describe("when the database refuses", () => {
     expect((await tomas.closing()).code).toBe(CLOSE.notStored);
     expect(server.reports).toHaveLength(1);
   });
+});
+
+it("what waits to be stored when someone is expelled is not stored", async () => {
+  await start();
+  const room = new Room(STUDY, {
+    updates: real,
+    limits: LIMITS,
+    changed: () => {},
+    empty: () => {},
+    report: (error) => expect.unreachable(String(error)),
+  });
+  const closed: number[] = [];
+  const link = { send: () => {}, close: (code: number) => closed.push(code), unread: () => 0 };
+  const connection = room.join(link, { id: "tomas", name: "Tomás Adeyemi" }, "coauthor");
+  const doc = new Y.Doc();
+  for (const row of real.load(STUDY)) Y.applyUpdate(doc, row);
+  const write = (words: string) => {
+    type(words)(doc);
+    connection.receive(answerWith(Y.encodeStateAsUpdate(doc)));
+  };
+  write("stored ");
+  await room.idle();
+  write("too late ");
+  connection.expel(new SyncRefused(CLOSE.noRight, "removed"));
+  write("later still ");
+  await room.idle();
+  expect(room.sources()[0].source).toBe("stored ");
+  expect(loadUpdates(open.db, STUDY)).toHaveLength(2);
+  expect(closed).toEqual([CLOSE.noRight]);
 });
 
 describe("what is written", () => {
