@@ -2,7 +2,6 @@ import { dot } from "../numerics/matrix.ts";
 import { aidsMoments } from "./aids-moments.ts";
 import {
   ALMOST_IDEAL_BLOCKS,
-  almostIdealDerivatives,
   almostIdealFreeForm,
   almostIdealLayout,
   almostIdealStart,
@@ -10,8 +9,8 @@ import {
   type Parts,
   partsOf,
   placesOf,
-  shareDerivatives,
 } from "./almost-ideal.ts";
+import { almostIdealDerivatives, shareDerivatives } from "./almost-ideal-derivatives.ts";
 import type { DemandSystem, Evaluator, Matrix, Point, SlopeDerivatives, SystemSize } from "./demand-system.ts";
 import { requirePoint, slopesByEvaluator } from "./evaluation.ts";
 

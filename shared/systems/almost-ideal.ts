@@ -1,13 +1,4 @@
-import { zeros } from "../numerics/matrix.ts";
-import type {
-  CoefficientBlock,
-  CoefficientPlace,
-  FreeForm,
-  Matrix,
-  MomentTerm,
-  SlopeDerivatives,
-  SystemSize,
-} from "./demand-system.ts";
+import type { CoefficientBlock, CoefficientPlace, FreeForm, MomentTerm, SystemSize } from "./demand-system.ts";
 import { requireTheta } from "./evaluation.ts";
 import { type Dependence, freeForm, remainder } from "./free-form.ts";
 import type { RestrictionName } from "./names.ts";
@@ -62,29 +53,12 @@ export function almostIdealFreeForm(size: SystemSize, impose: readonly Restricti
   const { goods: n, demographics: s } = size;
   const at = placesOf(size);
   const goods = Array.from({ length: n }, (_, i) => i);
-  const dependences: Dependence[] = [remainder(goods.map(at.alpha), 1), remainder(goods.map(at.beta), 0)];
-  for (let k = 0; k < s; k++)
-    dependences.push(
-      remainder(
-        goods.map((i) => at.demographic(i, k)),
-        0,
-      ),
-    );
-  for (let j = 0; j < n; j++)
-    dependences.push(
-      remainder(
-        goods.map((i) => at.gamma(i, j)),
-        0,
-      ),
-    );
+  const over = (place: (good: number) => number, total = 0) => remainder(goods.map(place), total);
+  const dependences: Dependence[] = [over(at.alpha, 1), over(at.beta)];
+  for (let k = 0; k < s; k++) dependences.push(over((i) => at.demographic(i, k)));
+  for (let j = 0; j < n; j++) dependences.push(over((i) => at.gamma(i, j)));
   if (impose.length > 0) {
-    for (let i = 0; i < n - 1; i++)
-      dependences.push(
-        remainder(
-          goods.map((j) => at.gamma(i, j)),
-          0,
-        ),
-      );
+    for (let i = 0; i < n - 1; i++) dependences.push(over((j) => at.gamma(i, j)));
   }
   if (impose.includes("symmetry")) {
     for (let i = 1; i < n - 1; i++) {
@@ -141,60 +115,4 @@ export function leadingTerms({ goods, demographics }: SystemSize): MomentTerm[] 
   }
   for (let good = 0; good < goods; good++) terms.push({ kind: "column", column: { kind: "log price", good } });
   return terms;
-}
-
-/** Everything at a point from which the θ-derivatives of shares and slopes follow. */
-export interface PointDerivatives {
-  readonly logPrices: readonly number[];
-  readonly demographics: readonly number[];
-  readonly beta: ArrayLike<number>;
-  /** m = ln(x/P) and ∂m/∂θ (k). */
-  readonly real: number;
-  readonly realByTheta: readonly number[];
-}
-
-/** ∂w_i/∂θ = ∂(α_i(z) + Σ_j γ_ij ln p_j)/∂θ + β_i ∂m/∂θ + m ∂β_i/∂θ, n × k. */
-export function shareDerivatives(size: SystemSize, at: PointDerivatives): Matrix {
-  const places = placesOf(size);
-  const byTheta = zeros(size.goods, places.count);
-  for (let i = 0; i < size.goods; i++) {
-    const row = byTheta[i];
-    for (let a = 0; a < places.count; a++) row[a] = at.beta[i] * at.realByTheta[a];
-    row[places.alpha(i)] += 1;
-    for (let k = 0; k < size.demographics; k++) row[places.demographic(i, k)] += at.demographics[k];
-    for (let j = 0; j < size.goods; j++) row[places.gamma(i, j)] += at.logPrices[j];
-    row[places.beta(i)] += at.real;
-  }
-  return byTheta;
-}
-
-/**
- * Derivatives of w, of μ_i = β_i and of μ_ij = γ_ij − β_i π_j, where π_j = ∂ln P/∂ln p_j has
- * derivatives `indexSlopesByTheta` (n × k).
- */
-export function almostIdealDerivatives(
-  size: SystemSize,
-  beta: ArrayLike<number>,
-  sharesByTheta: Matrix,
-  indexSlopes: readonly number[],
-  indexSlopesByTheta: Matrix,
-): SlopeDerivatives {
-  const places = placesOf(size);
-  const goods = Array.from({ length: size.goods }, (_, i) => i);
-  return {
-    shares: sharesByTheta,
-    total: goods.map((i) => {
-      const row = new Array<number>(places.count).fill(0);
-      row[places.beta(i)] = 1;
-      return row;
-    }),
-    prices: goods.map((i) =>
-      goods.map((j) => {
-        const row = indexSlopesByTheta[j].map((entry) => (entry === 0 ? 0 : -beta[i] * entry));
-        row[places.gamma(i, j)] += 1;
-        row[places.beta(i)] -= indexSlopes[j];
-        return row;
-      }),
-    ),
-  };
 }

@@ -1,26 +1,17 @@
 import { dot } from "../numerics/matrix.ts";
 import {
   ALMOST_IDEAL_BLOCKS,
-  almostIdealDerivatives,
   almostIdealFreeForm,
   almostIdealLayout,
   almostIdealStart,
   interceptsAt,
-  leadingTerms,
   partsOf,
   placesOf,
-  shareDerivatives,
 } from "./almost-ideal.ts";
-import type {
-  DemandSystem,
-  Evaluator,
-  MomentForm,
-  Point,
-  PriceIndex,
-  SlopeDerivatives,
-  SystemSize,
-} from "./demand-system.ts";
-import { requirePoint, requireTheta, slopesByEvaluator } from "./evaluation.ts";
+import { almostIdealDerivatives, shareDerivatives } from "./almost-ideal-derivatives.ts";
+import type { DemandSystem, Evaluator, Point, PriceIndex, SlopeDerivatives, SystemSize } from "./demand-system.ts";
+import { requirePoint, slopesByEvaluator } from "./evaluation.ts";
+import { linearApproximateMoments } from "./la-aids-moments.ts";
 import { INDEX_WEIGHTS } from "./price-indices.ts";
 
 /** a, b·w̄ and ln p̄ of the formulas above. */
@@ -139,36 +130,6 @@ function linearDerivatives(theta: readonly number[], size: SystemSize, point: Po
   return almostIdealDerivatives(size, parts.beta, sharesByTheta, shares, sharesByTheta);
 }
 
-type Entry = [good: number, term: number, value: number];
-
-/** w = C Z with Z = (1, z, ln p, ln(x/P)) and C the coefficients themselves. */
-const linearMoments: MomentForm = {
-  terms: (size) => [...leadingTerms(size), { kind: "column", column: { kind: "deflated log total" } }],
-  coefficients: (theta, size) => {
-    const { goods: n, demographics: s } = size;
-    const { alpha, demographic, gamma, beta } = partsOf(theta, size);
-    return Array.from({ length: n }, (_, i) => [
-      alpha[i],
-      ...demographic.subarray(i * s, (i + 1) * s),
-      ...gamma.subarray(i * n, (i + 1) * n),
-      beta[i],
-    ]);
-  },
-  derivatives: (theta, size) => {
-    const { goods: n, demographics: s } = size;
-    const places = placesOf(size);
-    requireTheta(theta, places.count);
-    const list: Entry[][] = Array.from({ length: places.count }, () => []);
-    for (let i = 0; i < n; i++) {
-      list[places.alpha(i)] = [[i, 0, 1]];
-      for (let d = 0; d < s; d++) list[places.demographic(i, d)] = [[i, 1 + d, 1]];
-      for (let j = 0; j < n; j++) list[places.gamma(i, j)] = [[i, 1 + s + j, 1]];
-      list[places.beta(i)] = [[i, 1 + s + n, 1]];
-    }
-    return list;
-  },
-};
-
 /**
  * Linear approximate almost ideal demand system: ln P is an index without parameters, which the
  * estimator forms from the data (`logPriceIndex`).
@@ -216,7 +177,7 @@ export const laAids: DemandSystem = {
       },
     ];
   },
-  moments: linearMoments,
+  moments: linearApproximateMoments,
   start: almostIdealStart,
   cost: {
     absent:
