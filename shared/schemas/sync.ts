@@ -48,7 +48,6 @@ export const presenceState = z.object({
   typing: z.boolean().optional(),
   cursor: z.strictObject({ anchor: relativePosition, head: relativePosition }).nullish(),
 });
-export type PresenceState = z.infer<typeof presenceState>;
 
 /** What the others receive: the same, with the person stamped by the server. */
 export const stampedPresence = presenceState.extend({ user: presentPerson });
