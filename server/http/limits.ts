@@ -8,6 +8,8 @@ function limit(what: string, options: Partial<Options>): RequestHandler {
   return rateLimit({
     standardHeaders: "draft-7",
     legacyHeaders: false,
+    // Whether proxies are believed is the configuration's to say; their headers are no fault.
+    validate: { xForwardedForHeader: false, forwardedHeader: false },
     ...options,
     handler: (_request, response, next) => {
       const seconds = response.getHeader("retry-after");
@@ -25,7 +27,7 @@ export function limitSignIns(perMinute: number): RequestHandler {
 export function limitFailedSignIns(): RequestHandler {
   return limit("failed sign-ins for this address", {
     windowMs: 15 * MINUTE,
-    limit: 20,
+    limit: 50,
     skipSuccessfulRequests: true,
     keyGenerator: (request: Request) => String(request.body?.email ?? "").toLowerCase(),
   });

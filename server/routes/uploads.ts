@@ -6,7 +6,7 @@ import { signedIn } from "../http/session.ts";
 import { place } from "../http/validate.ts";
 import { presentUpload } from "../presenters/uploads.ts";
 import { inMegabytes, LARGEST_UPLOAD } from "../services/upload-names.ts";
-import { sizeRefusal, type UploadService } from "../services/uploads.ts";
+import { brokenOff, sizeRefusal, type UploadService } from "../services/uploads.ts";
 import { streamingTo } from "../storage/incoming-file.ts";
 
 /** What a form adds around its one file: boundaries and a few heads. */
@@ -69,6 +69,7 @@ function receiveFile(uploads: UploadService): RequestHandler {
   }).single("file");
   return (request, response, next) => {
     receive(request, response, (error: unknown) => {
+      if (error !== undefined && request.readableAborted) return next(brokenOff());
       if (!(error instanceof multer.MulterError)) return next(error);
       if (error.code === "LIMIT_FILE_SIZE") {
         return next(tooLarge(sizeRefusal(`more than ${inMegabytes(LARGEST_UPLOAD)}`)));

@@ -14,7 +14,8 @@ import {
   uploadsOf,
 } from "../db/queries/uploads.ts";
 import { Refusal } from "../engine/refusal.ts";
-import { conflict, notFound, refused, tooLarge } from "../errors.ts";
+import { Cancelled } from "../engine/run.ts";
+import { conflict, invalid, notFound, refused, tooLarge } from "../errors.ts";
 import type { Actor } from "../policies/can.ts";
 import { inPieces } from "../storage/pieces.ts";
 import type { Access } from "./access.ts";
@@ -90,7 +91,8 @@ export function createUploadService({ db, access, parseUpload, sourcesOf, cells 
         changeUpload(db, uploadId, { rows, sha256, separator, decimalComma, state: "ready" });
       } catch (error) {
         deleteUpload(db, uploadId);
-        throw error instanceof Refusal ? refused(error.message, error.problems) : error;
+        if (error instanceof Refusal) throw refused(error.message, error.problems);
+        throw error instanceof Cancelled ? brokenOff() : error;
       }
       const upload = findUpload(db, studyId, uploadId);
       if (upload === undefined) throw notFound("The study was removed while the file was read.");
@@ -118,6 +120,9 @@ export function createUploadService({ db, access, parseUpload, sourcesOf, cells 
     removeUnfinished: () => deleteUnfinishedUploads(db),
   };
 }
+
+/** Nobody is there to read it any more; it is what the log calls it. */
+export const brokenOff = () => invalid("The upload broke off before it was whole; nothing of it is kept.");
 
 export function sizeRefusal(size: string): string {
   return `The file has ${size}, and an upload may have ${inMegabytes(LARGEST_UPLOAD)}.`;

@@ -1,4 +1,5 @@
 import { request as openRequest } from "node:http";
+import { PassThrough } from "node:stream";
 import { afterAll, beforeAll, beforeEach, describe, expect, test } from "vitest";
 import { uploadChunks, uploadColumns, uploads } from "../../../server/db/schema/uploads.ts";
 import { upload as uploadSchema } from "../../../shared/schemas/resources.ts";
@@ -7,9 +8,14 @@ import { type Application, startApplication, type Visitor } from "../../support/
 let application: Application;
 let owner: Visitor;
 let studyId: string;
+const log = new PassThrough();
+let logged = "";
+log.on("data", (part) => {
+  logged += part;
+});
 
 beforeAll(async () => {
-  application = await startApplication();
+  application = await startApplication({ log });
   owner = await application.person("Ilse Marchetti");
 });
 afterAll(() => application.close());
@@ -202,5 +208,7 @@ describe("a large upload", () => {
     const before = [uploads, uploadChunks].map(rowsOf);
     await expect(send(3, { hangUp: true })).rejects.toThrow("hung up");
     await expect.poll(() => [uploads, uploadChunks].map(rowsOf), { timeout: 5000 }).toEqual(before);
+    await expect.poll(() => logged).toContain("request aborted");
+    expect(logged).not.toContain("unforeseen");
   });
 });
