@@ -50,6 +50,17 @@ describe("almost ideal demand system, three goods", () => {
     );
   });
 
+  /** mpmath, 40 digits: K = Γ + ββ'm − diag(w) + ww', its eigenvalues in a Helmert basis of the directions orthogonal to ι. */
+  test("eigenvalues of the share form away from the null direction", () => {
+    const { eigenvalues, checks } = matrixAt(fitted, point, UNSCALED);
+    expectClose(
+      eigenvalues.map(({ value }) => value),
+      [-0.13446639599098738, -0.32767021811875704],
+      1e-15,
+    );
+    expect(checks.negativity.holds).toBe(true);
+  });
+
   test("compensating and equivalent variation of a rise of the first price by a fifth", () => {
     const dearer = [1.1 * 1.2, 0.9, 1.3];
     expectClose([compensatingVariation(fitted, point, dearer)], [0.894876395274953], 1e-13);
@@ -92,7 +103,7 @@ describe("linear expenditure system, three goods", () => {
   });
 
   test("quantity form and its eigenvalues", () => {
-    const { quantity, checks } = matrixAt(fitted, point, UNSCALED);
+    const { quantity, eigenvalues, checks } = matrixAt(fitted, point, UNSCALED);
     expectClose(
       quantity,
       [
@@ -103,6 +114,12 @@ describe("linear expenditure system, three goods", () => {
       2e-12,
     );
     expectClose(symmetricEigen(quantity).values, [0, -2.8610983799, -7.10362384233], 1e-11);
+    // mpmath, 40 digits, as above: K = (bb' − diag(b))·29/50.
+    expectClose(
+      eigenvalues.map(({ value }) => value),
+      [-0.1345005518797414, -0.2250994481202586],
+      1e-15,
+    );
     expect(checks.negativity.holds).toBe(true);
     expect(checks.symmetry).toMatchObject({ holds: true, status: "by form" });
   });
