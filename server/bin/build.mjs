@@ -1,6 +1,6 @@
 // Compiles server and pages into dist/, unless what is there was made from these very sources.
 import { createHash } from "node:crypto";
-import { existsSync, readdirSync, readFileSync, rmSync, statSync, writeFileSync } from "node:fs";
+import { existsSync, mkdirSync, readdirSync, readFileSync, rmSync, statSync, writeFileSync } from "node:fs";
 import { join, relative } from "node:path";
 import { fail, install, ROOT, runDirectly, runPackage } from "./install.mjs";
 
@@ -18,6 +18,7 @@ export function build({ always = false } = {}) {
   }
   if (runPackage("typescript/bin/tsc", ["-b", "server"]) !== 0) fail("The server does not compile; see above.");
   if (runPackage("vite/bin/vite.js", ["build", "--logLevel", "warn"]) !== 0) fail("The pages do not build; see above.");
+  mkdirSync(DIST, { recursive: true });
   writeFileSync(STAMP, from);
 }
 
