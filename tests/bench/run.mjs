@@ -7,7 +7,9 @@ import { install, runPackage } from "../../server/bin/install.mjs";
 install();
 const folder = dirname(fileURLToPath(import.meta.url));
 const wanted = process.argv.slice(2);
-const files = readdirSync(folder).filter((name) => name.endsWith(".bench.ts") && wanted.every((word) => name.includes(word)));
+const files = readdirSync(folder).filter(
+  (name) => name.endsWith(".bench.ts") && wanted.every((word) => name.includes(word)),
+);
 const codes = files.map((name) => {
   console.log(`\n${name.replace(".bench.ts", "")}`);
   return runPackage("tsx/dist/cli.mjs", [join(folder, name)]);

@@ -8,6 +8,7 @@ import { systemForm } from "./coefficient-form.ts";
 import type { Estimation } from "./estimation.ts";
 import { maximumLikelihood } from "./estimators.ts";
 import { fitMeasures } from "./fit-measures.ts";
+import { minimise, type Solution } from "./minimise.ts";
 import type { Moments } from "./moments.ts";
 
 interface Likelihood {
@@ -26,7 +27,8 @@ const NESTED: Readonly<Record<keyof NestedFits, readonly RestrictionName[]>> = {
 
 /**
  * Maximum likelihood of the system unrestricted, homogeneous, and homogeneous and symmetric, all from
- * the moments at hand; likelihoods only, kept for the next specification that asks.
+ * the moments at hand; likelihoods only, kept for the next specification that asks. The last good is
+ * dropped, whichever the specification drops: no likelihood depends on it.
  */
 export function nestedFits(
   estimation: Estimation,
@@ -36,12 +38,13 @@ export function nestedFits(
   theta: readonly number[],
   control: RunControl,
 ): NestedFits {
+  const equations = allButLast(estimation);
   const under = (impose: readonly RestrictionName[]) =>
-    remembered(estimation.moments, keyOf(specification, estimation, impose), () => {
+    remembered(estimation.moments, keyOf(specification, impose), () => {
       const form = systemForm(system, size, impose);
       const start = form.expand.places.map((place) => theta[place]);
-      const nested: Estimation = { ...estimation, form };
-      const solution = maximumLikelihood(nested, true, start, "newton", control);
+      const nested: Estimation = { ...estimation, equations, form };
+      const solution = fromNearby(nested, start, control);
       return { logLikelihood: fitMeasures(nested, solution).logLikelihood, freeCoefficients: form.free };
     });
   return {
@@ -53,10 +56,25 @@ export function nestedFits(
 
 /** Keeps the likelihood of a fit by maximum likelihood, so that the tests need not find it again. */
 export function rememberFit(estimation: Estimation, specification: SystemSpecification, logLikelihood: number): void {
-  remembered(estimation.moments, keyOf(specification, estimation, specification.impose), () => ({
+  if (estimation.equations.join() !== allButLast(estimation).join()) return;
+  remembered(estimation.moments, keyOf(specification, specification.impose), () => ({
     logLikelihood,
     freeCoefficients: estimation.form.free,
   }));
+}
+
+function allButLast({ moments }: Estimation): number[] {
+  return Array.from({ length: moments.responses.columns - 1 }, (_, equation) => equation);
+}
+
+/** Straight from the fit that was asked for, which is near; the long way round only where that fails. */
+function fromNearby(nested: Estimation, start: readonly number[], control: RunControl): Solution {
+  try {
+    return minimise(nested, { kind: "likelihood", step: "newton" }, start, control);
+  } catch (error) {
+    if (error instanceof Refusal) return maximumLikelihood(nested, true, start, "newton", control);
+    throw error;
+  }
 }
 
 function remembered(moments: Moments, key: string, find: () => Likelihood): Likelihood | undefined {
@@ -76,6 +94,6 @@ function unlessRefused(find: () => Likelihood): Likelihood | undefined {
   }
 }
 
-function keyOf({ form, alpha0 }: SystemSpecification, { equations }: Estimation, impose: readonly string[]): string {
-  return JSON.stringify([form, alpha0, equations, [...impose].sort()]);
+function keyOf({ form, alpha0 }: SystemSpecification, impose: readonly string[]): string {
+  return JSON.stringify([form, alpha0, [...impose].sort()]);
 }
