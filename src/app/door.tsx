@@ -1,7 +1,7 @@
 import type { ReactNode } from "react";
+import { Mark } from "../components/mark.tsx";
 import { useInstallation } from "../features/accounts/api/get-installation.ts";
 import { IndifferenceDrawing } from "../features/accounts/indifference-drawing.tsx";
-import { Mark } from "../components/mark.tsx";
 import { ThemeWords } from "./theme-words.tsx";
 
 /** The door: the drawing on the source page, the form on the finding page. */
@@ -18,9 +18,7 @@ export function Door({ title, children }: { title: string; children: ReactNode }
             <Mark size={42} />
             <span className="font-serif font-medium text-[2rem]/[2.5rem] tracking-[-0.012em]">Tangency</span>
           </p>
-          <h1 className="type-title pb-10 door-title">
-            Demand systems, estimated together, open to checking.
-          </h1>
+          <h1 className="type-title pb-10 door-title">Demand systems, estimated together, open to checking.</h1>
           <h2 className="sr-only">{title}</h2>
           {children}
           <p className="mt-10 max-w-[24rem] border-rule2 border-t pt-4 text-ink2">

@@ -17,6 +17,7 @@ export function routes(client: QueryClient): RouteObject[] {
       children: [
         { path: "/sign-in", lazy: page(() => import("./pages/sign-in.tsx")) },
         { path: "/create-account", lazy: page(() => import("./pages/create-account.tsx")) },
+        { path: "/referee/:token", lazy: page(() => import("./pages/referee.tsx")) },
         {
           loader: someoneSignedIn(client),
           // Asked once on the way in; moving between pages asks no more.

@@ -40,33 +40,35 @@ export function Thread({ stops, width, height, focused, addressOf, onFollow, onM
     <nav aria-label="What reads what" className="thread" onKeyDown={onKeyDown}>
       <svg width={width} height={height} viewBox={`0 0 ${width} ${height}`} fill="none" className="block">
         <title>What reads what</title>
-        {arcs.toSorted((a, b) => Number(touches(a, focused)) - Number(touches(b, focused))).map((arc) => {
-          const path = bracket(
-            dot,
-            yOf.get(arc.from.id) ?? 0,
-            yOf.get(arc.reader.id) ?? 0,
-            reachOf(arc, arcs, dot - 4),
-          );
-          const lit = touches(arc, focused);
-          return (
-            <a
-              key={`${arc.from.id} ${arc.reader.id}`}
-              href={addressOf(arc.reader.id)}
-              aria-label={`${arc.reader.name} reads ${arc.from.name}`}
-              onClick={(event) => follow(event, arc.reader.id)}
-              className="thread-arc"
-            >
-              <path d={path} stroke="transparent" strokeWidth="12" pointerEvents="stroke" />
-              <path
-                d={path}
-                className="thread-line"
-                stroke={lit ? "var(--accent)" : "var(--ink2)"}
-                strokeWidth={lit ? 1.6 : 1.15}
-                strokeDasharray={isDashed(arc) ? "4 4" : undefined}
-              />
-            </a>
-          );
-        })}
+        {arcs
+          .toSorted((a, b) => Number(touches(a, focused)) - Number(touches(b, focused)))
+          .map((arc) => {
+            const path = bracket(
+              dot,
+              yOf.get(arc.from.id) ?? 0,
+              yOf.get(arc.reader.id) ?? 0,
+              reachOf(arc, arcs, dot - 4),
+            );
+            const lit = touches(arc, focused);
+            return (
+              <a
+                key={`${arc.from.id} ${arc.reader.id}`}
+                href={addressOf(arc.reader.id)}
+                aria-label={`${arc.reader.name} reads ${arc.from.name}`}
+                onClick={(event) => follow(event, arc.reader.id)}
+                className="thread-arc"
+              >
+                <path d={path} stroke="transparent" strokeWidth="12" pointerEvents="stroke" />
+                <path
+                  d={path}
+                  className="thread-line"
+                  stroke={lit ? "var(--accent)" : "var(--ink2)"}
+                  strokeWidth={lit ? 1.6 : 1.15}
+                  strokeDasharray={isDashed(arc) ? "4 4" : undefined}
+                />
+              </a>
+            );
+          })}
         {stops.map((stop) => (
           <Dot key={stop.id} stop={stop} x={dot} width={width} />
         ))}
@@ -78,7 +80,7 @@ export function Thread({ stops, width, height, focused, addressOf, onFollow, onM
 function Dot({ stop, x, width }: { stop: PlacedStop; x: number; width: number }) {
   const plain = stop.state === "current";
   return (
-    <g aria-hidden="true" data-state={stop.state}>
+    <g data-state={stop.state}>
       <path d={`M${x} ${stop.y}H${width}`} stroke="var(--ink)" strokeWidth="1.15" />
       {plain ? (
         <circle cx={x} cy={stop.y} r="4.4" fill={STATE_COLOURS.current} />

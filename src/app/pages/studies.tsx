@@ -48,11 +48,7 @@ export default function StudiesPage() {
         <div className="studies-right">
           {error && <Fault>{sentenceOf(error)}</Fault>}
           {studies && me && (
-            <StudyList
-              studies={shownStudies(studies, filter, find)}
-              you={me.id}
-              hidden={studies.length > 0}
-            />
+            <StudyList studies={shownStudies(studies, filter, find)} you={me.id} hidden={studies.length > 0} />
           )}
           {!studies && !error && <p role="status">Fetching the studies</p>}
         </div>

@@ -21,7 +21,7 @@ export interface Preferences {
 /** The curve of the bundles worth `scale` times the chosen one in every good, as an SVG path. */
 export function indifferencePath({ share, choice }: Preferences, plane: Plane, scale: number): string {
   const exponent = share / (1 - share);
-  const level = (choice.y * scale) * (choice.x * scale) ** exponent;
+  const level = choice.y * scale * (choice.x * scale) ** exponent;
   const yAt = (x: number) => level / x ** exponent;
   // From where the curve enters at the top to where it leaves at the right, closer together where it bends.
   const start = (level / plane.height) ** (1 / exponent);

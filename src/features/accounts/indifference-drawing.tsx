@@ -20,12 +20,7 @@ export function IndifferenceDrawing() {
       ))}
       <path d={indifferencePath(PREFERENCES, PLANE, 1)} stroke="var(--ink)" strokeWidth="2.6" />
       <path d={budgetPath(PREFERENCES, PLANE)} stroke="var(--accent)" strokeWidth="2.8" />
-      <circle
-        cx={PREFERENCES.choice.x}
-        cy={PLANE.height - PREFERENCES.choice.y}
-        r="9.5"
-        fill="var(--ink)"
-      />
+      <circle cx={PREFERENCES.choice.x} cy={PLANE.height - PREFERENCES.choice.y} r="9.5" fill="var(--ink)" />
     </svg>
   );
 }

@@ -28,7 +28,13 @@ export function AddPersonForm({ studyId }: { studyId: string }) {
     >
       <h3 className="type-section pb-3">Add someone</h3>
       <div className="grid items-start gap-4 sm:grid-cols-[minmax(0,1fr)_9rem_auto]">
-        <Field label="Email" type="email" autoComplete="off" fault={formState.errors.email?.message} {...register("email")} />
+        <Field
+          label="Email"
+          type="email"
+          autoComplete="off"
+          fault={formState.errors.email?.message}
+          {...register("email")}
+        />
         <div>
           <label htmlFor={id} className="type-small block pb-1 text-ink2">
             As

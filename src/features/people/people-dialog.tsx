@@ -38,8 +38,7 @@ function PeopleList({ studyId, you, isOwner, onLeft }: Omit<PeopleDialogProps, "
   const change = useChangeRole(studyId);
   const remove = useRemovePerson(studyId);
   const fault = error ?? change.error ?? remove.error;
-  const leave = (person: Person) =>
-    remove.mutate(person.id, { onSuccess: () => person.id === you && onLeft() });
+  const leave = (person: Person) => remove.mutate(person.id, { onSuccess: () => person.id === you && onLeft() });
   return (
     <>
       <ul>

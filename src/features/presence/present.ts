@@ -30,7 +30,11 @@ export function presentPeople(
 export const firstName = (name: string) => name.trim().split(/\s+/)[0] ?? name;
 
 /** Who else is typing in a cell, once each. */
-export function typists(cellId: string, whereabouts: readonly Whereabouts[], you: PresentPerson | undefined): PresentPerson[] {
+export function typists(
+  cellId: string,
+  whereabouts: readonly Whereabouts[],
+  you: PresentPerson | undefined,
+): PresentPerson[] {
   const there = whereabouts.filter(({ cell, typing, person }) => cell === cellId && typing && person.id !== you?.id);
   return [...new Map(there.map(({ person }) => [person.id, person])).values()];
 }

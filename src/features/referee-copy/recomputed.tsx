@@ -96,7 +96,7 @@ export function Recomputed({ result, content, onAgain }: RecomputedProps) {
           </div>
         )}
         {result.state === "done" && (
-          <div className="min-w-0 flex-1">
+          <div className="min-w-0 flex-1 basis-72">
             <Found verification={result.verification} />
           </div>
         )}

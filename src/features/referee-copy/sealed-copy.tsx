@@ -35,7 +35,10 @@ function SealedHead({ copy, result }: { copy: RefereeCopy; result: VerificationS
         <span className="text-ink2 min-[900px]:hidden">Referee copy</span>
       </div>
       <div className="mt-4 flex items-center gap-6 min-[900px]:mt-14 min-[900px]:block">
-        <Seal fingerprint={copy.fingerprint} className="w-24 shrink-0 min-[900px]:mb-10 min-[900px]:w-56" />
+        <Seal
+          fingerprint={copy.fingerprint}
+          className="w-24 shrink-0 min-[900px]:mb-10 min-[900px]:-ml-3 min-[900px]:w-62"
+        />
         <div>
           <h2 className="font-serif text-[1.625rem]/[2rem] max-[899px]:hidden">Referee copy</h2>
           <p className="mb-2 text-[0.9375rem]/[1.375rem] text-ink2">
@@ -75,7 +78,7 @@ export function SealedCopy({ copy, verify, verdicts, matrix, coefficients }: Sea
   return (
     <div className="min-h-dvh bg-recto min-[900px]:grid min-[900px]:grid-cols-[minmax(20rem,27.5rem)_minmax(0,1fr)] min-[900px]:grid-rows-[auto_1fr] print:block">
       <SealedHead copy={copy} result={result} />
-      <main className="min-w-0 space-y-7 px-4.5 py-6 min-[900px]:row-span-2 min-[900px]:max-w-[60rem] min-[900px]:px-11 min-[900px]:py-9">
+      <main className="min-w-0 min-[900px]:border-rule2 min-[900px]:border-l space-y-7 px-4.5 py-6 min-[900px]:row-span-2 min-[900px]:max-w-[62.5rem] min-[900px]:px-11 min-[900px]:py-9">
         <Title content={content} />
         <Recomputed result={result} content={content} onAgain={() => void again()} />
         {verdicts}

@@ -11,11 +11,7 @@ export const STUDY_FILTERS = [
 export type StudyFilter = (typeof STUDY_FILTERS)[number]["key"];
 
 /** Letters without their accents and case, so that "tomas" finds Tomás. */
-const plain = (text: string) =>
-  text
-    .normalize("NFD")
-    .replace(/\p{M}/gu, "")
-    .toLowerCase();
+const plain = (text: string) => text.normalize("NFD").replace(/\p{M}/gu, "").toLowerCase();
 
 /** The studies a filter keeps in which every word asked for stands: in title, question, cells or people. */
 export function shownStudies(studies: readonly StudySummary[], filter: StudyFilter, find: string): StudySummary[] {

@@ -19,7 +19,9 @@ export function stateCounts(states: readonly ShownState[]): { state: ShownState;
 }
 
 const named = (people: readonly Person[], you: string) =>
-  people.map(({ id, name }) => (id === you ? "You" : name)).toSorted((a, b) => Number(b === "You") - Number(a === "You"));
+  people
+    .map(({ id, name }) => (id === you ? "You" : name))
+    .toSorted((a, b) => Number(b === "You") - Number(a === "You"));
 
 /** Whose it is, and who else is in it: "You own it. 1 coauthor, 3 readers". */
 export function belongingInWords({ people, role }: Pick<StudySummary, "people" | "role">, you: string): string {

@@ -31,7 +31,8 @@ export function FileDrop({ studyId, onAdded, words = "Choose a CSV file" }: File
     send(event.dataTransfer.files[0]);
   };
   return (
-    <div
+    <fieldset
+      aria-label="Upload a file"
       className={`file-drop ${over ? "file-drop-over" : ""}`}
       onDragOver={(event) => {
         event.preventDefault();
@@ -59,13 +60,11 @@ export function FileDrop({ studyId, onAdded, words = "Choose a CSV file" }: File
             {words}
           </label>{" "}
           <span className="text-ink2">or drop it here.</span>
-          <span className="type-small block pt-1 text-ink3">
-            Comma, semicolon or tab; a header line; up to 100 MB.
-          </span>
+          <span className="type-small block pt-1 text-ink3">Comma, semicolon or tab; a header line; up to 100 MB.</span>
         </p>
       )}
       {add.isError && add.error.name !== "AbortError" && <UploadFault error={add.error} name={sending?.name ?? ""} />}
-    </div>
+    </fieldset>
   );
 }
 

@@ -5,7 +5,8 @@ const MOST = 6;
 
 /** Why a file will not do: a sentence, then each fault at its row and column. Nothing of the study has changed. */
 export function UploadFault({ error, name }: { error: Error; name: string }) {
-  const problems = error instanceof ApiRefusal ? error.problems.filter(({ sentence }) => sentence !== error.message) : [];
+  const problems =
+    error instanceof ApiRefusal ? error.problems.filter(({ sentence }) => sentence !== error.message) : [];
   return (
     <div className="pt-2">
       <Fault>

@@ -20,7 +20,12 @@ export function UploadsDialog({ studyId, open, onClose, readOnly }: UploadsDialo
   const { data: uploads = [], error } = useUploads(studyId);
   const remove = useRemoveUpload(studyId);
   return (
-    <Dialog open={open} onClose={onClose} title="Uploads" lede="Rows stay on this installation, with those entitled to them.">
+    <Dialog
+      open={open}
+      onClose={onClose}
+      title="Uploads"
+      lede="Rows stay on this installation, with those entitled to them."
+    >
       {error && <Fault>{sentenceOf(error)}</Fault>}
       {uploads.length === 0 && <p className="pb-4 text-ink2">Nothing has been uploaded yet.</p>}
       <ul>

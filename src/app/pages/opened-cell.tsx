@@ -1,0 +1,124 @@
+import { useEffect, useId, useState } from "react";
+import { useNavigate, useParams } from "react-router-dom";
+import { LinkButton, LinkWord } from "../../components/button.tsx";
+import { presentPeople, typists } from "../../features/presence/present.ts";
+import { usePageTitle } from "../../lib/page-title.ts";
+import { pages } from "../../lib/paths.ts";
+import { useStudyPart } from "../../sync/index.ts";
+import { BandSource, type SourcePage } from "../workspace/band-source.tsx";
+import { type OpenStudy, useOpenStudy } from "../workspace/open-study.ts";
+import { OpenedFinding } from "../workspace/opened-finding.tsx";
+import { ReadByThread } from "../workspace/read-by-thread.tsx";
+import { StudyBar, type StudyDialog } from "../workspace/study-bar.tsx";
+import { StudyDialogs } from "../workspace/study-dialogs.tsx";
+import { TypingHere } from "../workspace/typing-here.tsx";
+import { useOneColumn } from "../workspace/use-source-pages.ts";
+import { useStandings } from "../workspace/use-standings.ts";
+import { useStudyActions } from "../workspace/use-study-actions.ts";
+
+/** One cell in full: its source on the left page, everything found on the right. */
+export default function OpenedCellPage() {
+  const { cellId = "" } = useParams();
+  const open = useOpenStudy();
+  const { study, connection, readOnly } = open;
+  const { standings, cells, uploads } = useStandings(open);
+  const standing = standings.find(({ cell }) => cell.id === cellId);
+  const [dialog, setDialog] = useState<StudyDialog>();
+  const [renaming, setRenaming] = useState(false);
+  const oneColumn = useOneColumn();
+  const [page, setPage] = useState<SourcePage>(oneColumn ? "closed" : standing?.kind === "system" ? "text" : "form");
+  const actions = useStudyActions(connection, uploads);
+  const typing = useTypingIn(cellId, connection);
+  const headingId = useId();
+  const navigate = useNavigate();
+  usePageTitle(standing?.cell.name, study.title);
+  useGoingTo(cellId, connection);
+  useEscape(() => void navigate(pages.study(study.id)));
+  const crumbs = [
+    { to: pages.studies, words: "Studies" },
+    { to: pages.study(study.id), words: study.title },
+  ];
+  return (
+    <>
+      <StudyBar {...open} crumbs={crumbs} onDialog={setDialog}>
+        <LinkButton to={pages.study(study.id)}>Back to the study</LinkButton>
+      </StudyBar>
+      <main>
+        {standing ? (
+          <div className="desk">
+            <div className="ledger opened">
+              <div className="band opened-band">
+                <ReadByThread studyId={study.id} standing={standing} cells={cells} />
+                <div className="verso">
+                  <BandSource
+                    studyId={study.id}
+                    connection={connection}
+                    standing={standing}
+                    cells={cells}
+                    uploads={uploads}
+                    readOnly={readOnly}
+                    page={page}
+                    onPage={(next) => setPage(oneColumn && next === page ? "closed" : next)}
+                    headingId={headingId}
+                    renaming={renaming}
+                    onRename={(name) => actions.rename(standing.cell, name)}
+                    onRenamed={() => setRenaming(false)}
+                    onLeave={() => document.getElementById(headingId)?.focus()}
+                    actions={{
+                      rename: () => setRenaming(true),
+                      ...(standing.kind === "data" && { uploads: () => setDialog("uploads") }),
+                      remove: () => {
+                        actions.remove(cellId);
+                        void navigate(pages.study(study.id));
+                      },
+                    }}
+                    typing={typing.length > 0 && <TypingHere people={typing} className="mt-4 block" />}
+                    title
+                  />
+                </div>
+                <div className="recto">
+                  <OpenedFinding {...open} standing={standing} cells={cells} uploads={uploads} />
+                </div>
+              </div>
+            </div>
+          </div>
+        ) : (
+          <p className="type-finding mx-auto max-w-2xl px-6 py-16">
+            This cell is not in the study any more. Go <LinkWord to={pages.study(study.id)}>back to the study</LinkWord>
+            .
+          </p>
+        )}
+      </main>
+      <StudyDialogs {...open} standings={standings} open={dialog} onClose={() => setDialog(undefined)} />
+    </>
+  );
+}
+
+/** Tells the others that this person has the cell open. */
+function useGoingTo(cellId: string, connection: OpenStudy["connection"]): void {
+  useEffect(() => {
+    connection.goTo(cellId);
+    return () => connection.goTo(null);
+  }, [cellId, connection]);
+}
+
+function useTypingIn(cellId: string, connection: OpenStudy["connection"]) {
+  const whereabouts = useStudyPart(connection, "whereabouts");
+  const people = useStudyPart(connection, "people");
+  const you = useStudyPart(connection, "you");
+  const there = new Set(typists(cellId, whereabouts, you).map(({ id }) => id));
+  return presentPeople(people, whereabouts, you).filter(({ person }) => there.has(person.id));
+}
+
+/** Escape leaves the opened cell, unless a field, a matrix or something laid over the page wants it. */
+function useEscape(leave: () => void): void {
+  useEffect(() => {
+    const onKeyDown = (event: KeyboardEvent) => {
+      if (event.key !== "Escape" || event.defaultPrevented || !(event.target instanceof HTMLElement)) return;
+      if (event.target.closest("[role=dialog], [role=menu], input, textarea, select, [contenteditable=true]")) return;
+      leave();
+    };
+    document.addEventListener("keydown", onKeyDown);
+    return () => document.removeEventListener("keydown", onKeyDown);
+  }, [leave]);
+}

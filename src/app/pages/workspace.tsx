@@ -1,0 +1,40 @@
+import { useState } from "react";
+import { usePageTitle } from "../../lib/page-title.ts";
+import { pages } from "../../lib/paths.ts";
+import { BringUpToDate } from "../workspace/bring-up-to-date.tsx";
+import { Ledger } from "../workspace/ledger.tsx";
+import { useOpenStudy } from "../workspace/open-study.ts";
+import { StudyBar, type StudyDialog } from "../workspace/study-bar.tsx";
+import { StudyDialogs } from "../workspace/study-dialogs.tsx";
+import { useOneColumn } from "../workspace/use-source-pages.ts";
+import { useStandings } from "../workspace/use-standings.ts";
+
+const CRUMBS = [{ to: pages.studies, words: "Studies" }];
+
+/** A study: every cell with its source and its finding. */
+export default function WorkspacePage() {
+  const open = useOpenStudy();
+  const { standings, cells, uploads, isKnown } = useStandings(open);
+  const [dialog, setDialog] = useState<StudyDialog>();
+  const oneColumn = useOneColumn();
+  usePageTitle(open.study.title);
+  const bring = open.readOnly ? undefined : <BringUpToDate studyId={open.study.id} standings={standings} />;
+  return (
+    <>
+      <StudyBar {...open} crumbs={CRUMBS} onDialog={setDialog}>
+        {!oneColumn && bring}
+      </StudyBar>
+      <main aria-busy={!isKnown}>
+        <Ledger
+          {...open}
+          standings={standings}
+          cells={cells}
+          uploads={uploads}
+          headAction={oneColumn && bring}
+          onUploads={() => setDialog("uploads")}
+        />
+      </main>
+      <StudyDialogs {...open} standings={standings} open={dialog} onClose={() => setDialog(undefined)} />
+    </>
+  );
+}

@@ -1,0 +1,30 @@
+import { CELL_KINDS, type CellKind } from "../../../shared/schemas/cell.ts";
+
+const SAYS: Readonly<Record<CellKind, string>> = {
+  data: "a file of purchases, and what its columns mean",
+  system: "share equations estimated on data",
+  slutsky: "the matrix of compensated effects, checked",
+};
+
+/** The last band: the kinds of cell as words. */
+export function AddCellBand({ onAdd }: { onAdd: (kind: CellKind) => void }) {
+  return (
+    <div className="band no-print">
+      <h2 className="verso font-serif text-[1.0625rem]/[1.5rem] text-ink2 italic">Add a cell</h2>
+      <ul className="recto flex flex-wrap items-baseline gap-x-6 gap-y-2">
+        {CELL_KINDS.map((kind) => (
+          <li key={kind}>
+            <button
+              type="button"
+              title={SAYS[kind]}
+              className="reference min-h-6 font-serif text-[1.0625rem]/[1.5rem]"
+              onClick={() => onAdd(kind)}
+            >
+              {kind}
+            </button>
+          </li>
+        ))}
+      </ul>
+    </div>
+  );
+}

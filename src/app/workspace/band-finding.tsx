@@ -1,0 +1,74 @@
+import type { ReactNode } from "react";
+import { LinkWord, Word } from "../../components/button.tsx";
+import { Fault } from "../../components/field.tsx";
+import { ProgressLine } from "../../features/estimation/progress-line.tsx";
+import { useFinding } from "../../features/findings/api/get-finding.ts";
+import { sentenceOf } from "../../lib/api.ts";
+import { pages } from "../../lib/paths.ts";
+import { CopyWord } from "./copy-word.tsx";
+import { FindingBand, viewOf } from "./finding-view.tsx";
+import { ProblemList } from "./problem-list.tsx";
+import type { Standing } from "./standing.ts";
+import { StateLine } from "./state-line.tsx";
+import { Unanswered } from "./unanswered.tsx";
+
+interface BandFindingProps {
+  readonly studyId: string;
+  readonly standing: Standing;
+  readonly beside?: ReactNode;
+  /** Absent for those who only read. */
+  readonly onChange?: (nextSource: string) => void;
+}
+
+/** The right page of a band: the state line, then the finding, or what stands in its place. */
+export function BandFinding({ studyId, standing, beside, onChange }: BandFindingProps) {
+  const { fingerprint, cell, status, kind } = standing;
+  const { data, error, refetch } = useFinding(studyId, fingerprint);
+  const table = data && kind ? viewOf(data.finding.kind).tables(data.finding)[0] : undefined;
+  const actions = fingerprint && data && (
+    <>
+      <LinkWord to={pages.cell(studyId, cell.id)}>
+        {kind === "data" ? "Row accounting" : "Open"}
+        <span className="sr-only"> of {cell.name}</span>
+      </LinkWord>
+      {kind !== "data" && table && <CopyWord table={table} name={cell.name} />}
+    </>
+  );
+  return (
+    <>
+      <StateLine standing={standing} beside={beside} actions={actions} />
+      {fingerprint ? (
+        <div className="arrives" key={fingerprint}>
+          {data && <FindingBand finding={data.finding} status={status} />}
+          {error && (
+            <>
+              <Fault>{sentenceOf(error)}</Fault>
+              <Word onClick={() => void refetch()}>Ask again</Word>
+            </>
+          )}
+          {!data && !error && <p className="type-small text-ink3">Fetching the finding</p>}
+        </div>
+      ) : (
+        <Otherwise studyId={studyId} standing={standing} onChange={onChange} />
+      )}
+    </>
+  );
+}
+
+function Otherwise({ studyId, standing, onChange }: Omit<BandFindingProps, "beside">) {
+  const { state, progress, cell } = standing;
+  if (state === "failed") {
+    return (
+      <>
+        <ProblemList standing={standing} onMend={onChange} />
+        {standing.last && <Unanswered studyId={studyId} standing={standing} onChange={onChange} />}
+      </>
+    );
+  }
+  if (state === "estimating" && progress) {
+    return (
+      <ProgressLine studyId={studyId} cellId={cell.id} name={cell.name} progress={progress} readOnly={!onChange} />
+    );
+  }
+  return <Unanswered studyId={studyId} standing={standing} onChange={onChange} />;
+}

@@ -1,0 +1,100 @@
+import type { Upload } from "../../../shared/schemas/resources.ts";
+import type { CellSource } from "../../../shared/study/cell-source.ts";
+import { SwitchWords } from "../../components/switch-words.tsx";
+import type { StudyConnection } from "../../sync/index.ts";
+import { type CellActions, CellMenu } from "./cell-menu.tsx";
+import { CellName } from "./cell-name.tsx";
+import { lacksUpload, sourceInALine } from "./cell-words.ts";
+import { CellForm } from "./finding-view.tsx";
+import { FirstUpload } from "./first-upload.tsx";
+import { SourceFoot } from "./source-foot.tsx";
+import { SourceText } from "./source-text.tsx";
+import type { Standing } from "./standing.ts";
+
+/** Which page of the source is open; a strip shows neither until asked. */
+export type SourcePage = "form" | "text" | "closed";
+
+export interface BandSourceProps {
+  readonly studyId: string;
+  readonly connection: StudyConnection;
+  readonly standing: Standing;
+  readonly cells: readonly CellSource[];
+  readonly uploads: readonly Upload[];
+  readonly readOnly: boolean;
+  readonly page: SourcePage;
+  readonly onPage: (page: SourcePage) => void;
+  readonly headingId: string;
+  readonly renaming: boolean;
+  readonly actions: CellActions;
+  readonly onRename: (name: string) => void;
+  readonly onRenamed: () => void;
+  readonly onLeave: () => void;
+  readonly typing?: React.ReactNode;
+  readonly title?: boolean;
+}
+
+const WORDS = [
+  { value: "form", word: "Form" },
+  { value: "text", word: "Text" },
+] as const;
+
+/** The left page of a band: name, kind and source, as a form or as text. */
+export function BandSource(props: BandSourceProps) {
+  const { standing, cells, page, onPage, headingId, readOnly, typing, title } = props;
+  const { cell } = standing;
+  const idOf = (name: string) => cells.find((one) => one.name === name)?.id;
+  return (
+    <>
+      <div className="flex flex-wrap items-start justify-between gap-x-4 gap-y-1 pb-3">
+        <CellName
+          cell={cell}
+          cells={cells}
+          headingId={headingId}
+          renaming={props.renaming}
+          onRename={props.onRename}
+          onDone={props.onRenamed}
+          title={title}
+        />
+        <div className="no-print flex gap-3.5 pt-1">
+          <SwitchWords
+            label={`Source of ${cell.name} as`}
+            words={WORDS}
+            value={page === "closed" ? undefined : page}
+            onChange={(next) => onPage(next)}
+          />
+          {!readOnly && <CellMenu name={cell.name} actions={props.actions} />}
+        </div>
+      </div>
+      {page === "closed" ? (
+        <p className="type-source truncate text-ink2">{sourceInALine(cell.kind, cell.source)}</p>
+      ) : (
+        <Source {...props} />
+      )}
+      {typing}
+      {page !== "closed" && <SourceFoot standing={standing} idOf={idOf} />}
+    </>
+  );
+}
+
+function Source({ studyId, connection, standing, cells, uploads, readOnly, page, onLeave }: BandSourceProps) {
+  const { cell, kind } = standing;
+  const onChange = (next: string) => connection.replaceSource(cell.id, next);
+  if (page === "text" || !kind) {
+    return (
+      <SourceText
+        connection={connection}
+        standing={standing}
+        cells={cells}
+        uploads={uploads}
+        readOnly={readOnly}
+        onLeave={onLeave}
+      />
+    );
+  }
+  if (lacksUpload(cell) && !readOnly) {
+    return <FirstUpload studyId={studyId} uploads={uploads} onChange={onChange} />;
+  }
+  return (
+    <CellForm kind={kind} source={cell.source} onChange={onChange} readOnly={readOnly} context={{ cells, uploads }} />
+  );
+}

@@ -1,0 +1,50 @@
+import { memo, useId } from "react";
+import type { Present } from "../../features/presence/present.ts";
+import { bandId, focusBand } from "./addresses.ts";
+import { BandFinding } from "./band-finding.tsx";
+import { BandSource, type BandSourceProps } from "./band-source.tsx";
+import { TypingHere } from "./typing-here.tsx";
+import { useHeldHeight } from "./use-held-height.ts";
+
+export interface CellBandProps extends Omit<BandSourceProps, "headingId" | "onLeave" | "typing" | "title"> {
+  readonly typing: readonly Present[];
+  readonly onFocus: (cellId: string) => void;
+}
+
+/** A cell of the study: what is asked on the left page, what was found on the right. */
+export const CellBand = memo(function CellBand({ typing, onFocus, ...source }: CellBandProps) {
+  const headingId = useId();
+  const { standing, studyId, connection, readOnly } = source;
+  const { cell } = standing;
+  const held = useHeldHeight(standing.fingerprint !== undefined);
+  const onChange = readOnly ? undefined : (next: string) => connection.replaceSource(cell.id, next);
+  return (
+    <section
+      id={bandId(cell.id)}
+      aria-labelledby={headingId}
+      tabIndex={-1}
+      className="band"
+      onFocus={() => onFocus(cell.id)}
+    >
+      <div className="verso">
+        <BandSource
+          {...source}
+          headingId={headingId}
+          onLeave={() => focusBand(cell.id)}
+          typing={typing.length > 0 && <TypingHere people={typing} className="wide-only mt-4 block" />}
+        />
+      </div>
+      <div className="recto" ref={held}>
+        <BandFinding
+          studyId={studyId}
+          standing={standing}
+          onChange={onChange}
+          beside={<TypingHere people={typing} className="narrow-only" />}
+        />
+      </div>
+      {typing.length > 0 && (
+        <div aria-hidden="true" className="band-edge" style={{ background: `var(--who-${typing[0].colour.letter})` }} />
+      )}
+    </section>
+  );
+});

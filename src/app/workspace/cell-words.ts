@@ -1,0 +1,65 @@
+import type { CellKind } from "../../../shared/schemas/cell.ts";
+import type { Upload } from "../../../shared/schemas/resources.ts";
+import type { CellSource } from "../../../shared/study/cell-source.ts";
+import { parseCell } from "../../../shared/study/parse-cell.ts";
+import { suggestData } from "../../../shared/study/suggest.ts";
+import { counted } from "../../../shared/study/words.ts";
+
+const FIRST_NAMES: Readonly<Record<CellKind, string>> = { data: "purchases", system: "base", slutsky: "matrix" };
+
+/** A name for a fresh cell that no other has: "matrix", "matrix 2". */
+export function freshName(kind: CellKind, cells: readonly Pick<CellSource, "name">[]): string {
+  const taken = new Set(cells.map(({ name }) => name));
+  const first = FIRST_NAMES[kind];
+  for (let number = 2, name = first; ; name = `${first} ${number}`, number += 1) if (!taken.has(name)) return name;
+}
+
+/** What a fresh cell asks: the last cell of the kind it reads, and the plainest question. */
+export function freshSource(kind: CellKind, cells: readonly CellSource[], uploads: readonly Upload[]): string {
+  const last = (of: CellKind) => cells.findLast((cell) => cell.kind === of)?.name ?? "";
+  if (kind === "system") return `data: ${last("data")}\nform: aids\nimpose: [homogeneity, symmetry]\n`;
+  if (kind === "slutsky") return `system: ${last("system")}\nat: base point\nform: share\n`;
+  const free = uploads.filter(
+    ({ name }) => !cells.some(({ kind, source }) => kind === "data" && source.includes(name)),
+  );
+  const upload = free.at(-1);
+  return upload ? suggestData(upload.name, upload.columns) : "";
+}
+
+/** Whether a data cell has no upload yet. */
+export function lacksUpload({ kind, source }: CellSource): boolean {
+  if (kind !== "data") return false;
+  const { upload } = parseCell("data", source).written;
+  return upload === undefined || upload === null || upload === "";
+}
+
+const listed = (value: unknown) => (Array.isArray(value) ? value.join(", ") : "");
+
+/** A source in one line, for a page too narrow for the source itself: "aids on survey; log_size, urban". */
+export function sourceInALine(kind: string, source: string): string {
+  const { written } = parseCell(kind, source);
+  const text = (key: string) => (typeof written[key] === "string" ? String(written[key]) : "");
+  if (kind === "data") {
+    const goods = Object.keys((written.goods as object | null | undefined) ?? {}).length;
+    return [text("upload") || "no upload yet", goods > 0 && counted(goods, "good"), text("keep")]
+      .filter(Boolean)
+      .join(", ");
+  }
+  if (kind === "system") {
+    const head = text("like")
+      ? `like ${text("like")}`
+      : `${text("form") || "no form yet"} on ${text("data") || "no data yet"}`;
+    return [head, listed(written.demographics), listed(written.impose)].filter(Boolean).join("; ");
+  }
+  if (kind === "slutsky") {
+    const at = typeof written.at === "object" && written.at ? inWords(written.at) : text("at") || "base point";
+    return `${text("system") || "no system yet"} at ${at}; ${text("form") || "share"} form`;
+  }
+  return source.split("\n", 1)[0];
+}
+
+function inWords(at: object): string {
+  if ("row" in at) return `row ${at.row}`;
+  if ("x" in at && !("prices" in at)) return `x: ${at.x}`;
+  return "a point of one's own";
+}

@@ -1,0 +1,45 @@
+import type { Upload } from "../../../shared/schemas/resources.ts";
+import type { CellSource } from "../../../shared/study/cell-source.ts";
+import { Fault } from "../../components/field.tsx";
+import { ProgressLine } from "../../features/estimation/progress-line.tsx";
+import { useFinding } from "../../features/findings/api/get-finding.ts";
+import { sentenceOf } from "../../lib/api.ts";
+import { FindingOpen } from "./finding-view.tsx";
+import type { OpenStudy } from "./open-study.ts";
+import { ProblemList } from "./problem-list.tsx";
+import type { Standing } from "./standing.ts";
+import { StateLine } from "./state-line.tsx";
+import { Unanswered } from "./unanswered.tsx";
+
+interface OpenedFindingProps extends OpenStudy {
+  readonly standing: Standing;
+  readonly cells: readonly CellSource[];
+  readonly uploads: readonly Upload[];
+}
+
+/** The right page of an opened cell: the finding in full, or what stands in its place. */
+export function OpenedFinding({ study, connection, readOnly, standing, cells, uploads }: OpenedFindingProps) {
+  const { cell, fingerprint, status, state, progress } = standing;
+  const { data, error } = useFinding(study.id, fingerprint);
+  const onChange = readOnly ? undefined : (next: string) => connection.replaceSource(cell.id, next);
+  const form = {
+    source: cell.source,
+    onChange: onChange ?? (() => {}),
+    readOnly,
+    context: { cells, uploads },
+  };
+  return (
+    <>
+      <StateLine standing={standing} />
+      {fingerprint && data && <FindingOpen finding={data.finding} status={status} form={form} />}
+      {fingerprint && error && <Fault>{sentenceOf(error)}</Fault>}
+      {state === "failed" && <ProblemList standing={standing} onMend={onChange} />}
+      {state === "estimating" && progress && (
+        <ProgressLine studyId={study.id} cellId={cell.id} name={cell.name} progress={progress} readOnly={readOnly} />
+      )}
+      {(state === "draft" || state === "out of date") && (
+        <Unanswered studyId={study.id} standing={standing} onChange={onChange} />
+      )}
+    </>
+  );
+}

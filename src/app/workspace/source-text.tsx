@@ -1,0 +1,40 @@
+import { lazy, Suspense, useMemo } from "react";
+import type { Upload } from "../../../shared/schemas/resources.ts";
+import type { CellSource } from "../../../shared/study/cell-source.ts";
+import type { StudyConnection } from "../../sync/index.ts";
+import type { Standing } from "./standing.ts";
+
+const SourceEditor = lazy(() => import("../../features/editor/source-editor.tsx"));
+
+interface SourceTextProps {
+  readonly connection: StudyConnection;
+  readonly standing: Standing;
+  readonly cells: readonly CellSource[];
+  readonly uploads: readonly Upload[];
+  readonly readOnly: boolean;
+  readonly onLeave: () => void;
+}
+
+/** A cell's source as text. Until the editor is here, the text stands in its place in the same type. */
+export function SourceText({ connection, standing, cells, uploads, readOnly, onLeave }: SourceTextProps) {
+  const { cell, kind, problems, state, last } = standing;
+  const text = connection.sourceOf(cell.id);
+  const lastSource = state === "current" || !last ? undefined : last.source;
+  const subject = useMemo(
+    () => ({ kind, name: cell.name, cells, uploads, problems, ...(lastSource !== undefined && { lastSource }) }),
+    [kind, cell.name, cells, uploads, problems, lastSource],
+  );
+  if (!text) return null;
+  return (
+    <Suspense fallback={<pre className="type-source whitespace-pre-wrap">{cell.source || " "}</pre>}>
+      <SourceEditor
+        text={text}
+        awareness={connection.awareness}
+        label={`Source of ${cell.name}`}
+        readOnly={readOnly}
+        subject={subject}
+        onLeave={onLeave}
+      />
+    </Suspense>
+  );
+}

@@ -1,0 +1,40 @@
+import type { ReactNode } from "react";
+import { capital } from "../../../shared/study/words.ts";
+import { StateWords } from "../../components/state-shape.tsx";
+import { aboutInWords, durationInWords, whenInWords } from "../../lib/dates.ts";
+import type { Standing } from "./standing.ts";
+
+/** Since when, why, or how far: what stands after the state's word. */
+export function stateDetail({ state, because, last, aboutMs, kind }: Standing): string {
+  if (state === "current" && last) {
+    const took = kind === "data" ? "" : `, took ${durationInWords(last.tookMs)}`;
+    return `since ${whenInWords(last.at)}${took}`;
+  }
+  if (state === "draft") {
+    const never = kind === "system" ? "never estimated" : "";
+    const about = aboutMs === undefined ? "" : aboutInWords(aboutMs);
+    return [never, because, about].filter(Boolean).join("; ");
+  }
+  return because ?? "";
+}
+
+interface StateLineProps {
+  readonly standing: Standing;
+  /** Who is typing here, where the page has no room for it beside the source. */
+  readonly beside?: ReactNode;
+  readonly actions?: ReactNode;
+}
+
+/** Shape, word, since when or why; at the right the actions as words. */
+export function StateLine({ standing, beside, actions }: StateLineProps) {
+  return (
+    <div className="flex flex-wrap items-baseline justify-between gap-x-6 gap-y-1 pb-3">
+      <p className="type-small flex min-w-0 flex-wrap items-baseline gap-x-2.5" aria-live="polite">
+        <StateWords state={standing.state} words={capital(standing.state)} />
+        <span className="text-ink2 tabular-nums">{stateDetail(standing)}</span>
+        {beside}
+      </p>
+      {actions && <div className="no-print type-small flex flex-wrap items-baseline gap-x-5">{actions}</div>}
+    </div>
+  );
+}

@@ -1,0 +1,25 @@
+import { useCallback, useState } from "react";
+import { useMedia } from "../../components/use-media.ts";
+import type { SourcePage } from "./band-source.tsx";
+
+/** Whether the study is one column: the source is then a strip that opens in its place. */
+export const useOneColumn = () => useMedia("(max-width: 1023.9px)");
+
+/** Which page of each cell's source is open. A system is read as text, the others as forms, until a person says otherwise. */
+export function useSourcePages() {
+  const oneColumn = useOneColumn();
+  const [chosen, setChosen] = useState<ReadonlyMap<string, SourcePage>>(new Map());
+  const pageOf = (cell: { id: string; kind: string }): SourcePage =>
+    chosen.get(cell.id) ?? (oneColumn ? "closed" : cell.kind === "system" ? "text" : "form");
+  const choose = useCallback(
+    (cellId: string, page: SourcePage) => setChosen((before) => new Map(before).set(cellId, page)),
+    [],
+  );
+  return {
+    pageOf,
+    /** On one column, the word in use puts the source away again. */
+    choose: (cellId: string, page: SourcePage) =>
+      choose(cellId, oneColumn && chosen.get(cellId) === page ? "closed" : page),
+    swap: (cell: { id: string; kind: string }) => choose(cell.id, pageOf(cell) === "text" ? "form" : "text"),
+  };
+}

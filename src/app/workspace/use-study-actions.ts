@@ -1,0 +1,36 @@
+import { useMemo } from "react";
+import type { CellKind } from "../../../shared/schemas/cell.ts";
+import type { Upload } from "../../../shared/schemas/resources.ts";
+import type { CellSource } from "../../../shared/study/cell-source.ts";
+import type { StudyConnection } from "../../sync/index.ts";
+import { freshName, freshSource } from "./cell-words.ts";
+import { sourcesAfterRenaming } from "./rename.ts";
+
+/** What a person does to the cells of a study as a whole. Each acts on the cells as they are when it is done. */
+export function useStudyActions(connection: StudyConnection, uploads: readonly Upload[]) {
+  return useMemo(() => {
+    const cells = () => connection.snapshot().cells;
+    const placeOf = (cellId: string) => cells().findIndex(({ id }) => id === cellId);
+    return {
+      /** Returns the new cell's id. */
+      add: (kind: CellKind): string =>
+        connection.addCell({ name: freshName(kind, cells()), kind, source: freshSource(kind, cells(), uploads) }),
+
+      /** Those that read the cell go on reading it, by its new name. */
+      rename: (cell: CellSource, name: string): void => {
+        const sources = sourcesAfterRenaming(cell.name, name, cells());
+        connection.renameCell(cell.id, name);
+        for (const [id, source] of sources) connection.replaceSource(id, source);
+      },
+
+      move: (cellId: string, by: 1 | -1): void => {
+        const place = placeOf(cellId);
+        const after = by === 1 ? cells()[place + 1] : cells()[place - 2];
+        if (by === 1 && !after) return;
+        connection.moveCell(cellId, after?.id ?? null);
+      },
+
+      remove: (cellId: string): void => connection.removeCell(cellId),
+    };
+  }, [connection, uploads]);
+}

@@ -1,0 +1,92 @@
+import type { Completion, CompletionContext, CompletionResult } from "@codemirror/autocomplete";
+import { keyEdit } from "../../../shared/study/edit.ts";
+import { parseCell } from "../../../shared/study/parse-cell.ts";
+import { type KeyWord, VOCABULARY } from "../../../shared/study/vocabulary.ts";
+import { type EditorSubject, editorSubject } from "./editor-subject.ts";
+import { type WhereInYaml, whereInYaml } from "./where-in-yaml.ts";
+
+/** Offers keys of the kind, the words a key may have, names of cells and uploads, columns and goods. */
+export function completeSource(context: CompletionContext): CompletionResult | null {
+  const subject = context.state.facet(editorSubject);
+  if (!subject.kind) return null;
+  const text = context.state.doc.toString();
+  const where = whereInYaml(text, context.pos);
+  if (where.from === context.pos && !context.explicit && where.key === undefined) return null;
+  const options = where.key === undefined ? keys(subject, where) : values(subject, where, text);
+  return options.length === 0 ? null : { from: where.from, options, validFor: /^[^,:[\]{}#\n]*$/ };
+}
+
+/** The key words that may stand where the caret is. */
+function wordsAt({ kind }: EditorSubject, path: readonly string[]): readonly KeyWord[] {
+  if (!kind) return [];
+  if (path.length === 0) return VOCABULARY[kind];
+  const outer = VOCABULARY[kind].find(({ key }) => key === path[0]);
+  if (!outer) return [];
+  // Under a name of one's own (a good) stand the keys it takes; directly under `goods` stand such names.
+  const depth = outer.named ? 2 : 1;
+  return path.length === depth ? outer.keys : [];
+}
+
+function keys(subject: EditorSubject, where: WhereInYaml): Completion[] {
+  return wordsAt(subject, where.path)
+    .filter(({ key }) => !where.given.includes(key))
+    .map(({ key, says, needed }) => ({
+      label: key,
+      apply: `${key}: `,
+      detail: says,
+      type: "key",
+      boost: needed ? 2 : 0,
+    }));
+}
+
+function values(subject: EditorSubject, where: WhereInYaml, text: string): Completion[] {
+  const word = wordsAt(subject, where.path).find(({ key }) => key === where.key);
+  if (!word) return [];
+  const plain = word.values.map((value) => ({ label: value, type: "word" }));
+  return [...plain, ...named(subject, word, text)];
+}
+
+function named({ cells, uploads, name, kind }: EditorSubject, word: KeyWord, text: string): Completion[] {
+  switch (word.names) {
+    case undefined:
+      return [];
+    case "upload":
+      return uploads.map((upload) => ({ label: upload.name, detail: `${upload.rows} rows` }));
+    case "column":
+    case "numeric column":
+      return columnsOf({ cells, uploads, kind }, text)
+        .filter(({ type }) => word.names === "column" || type === "number")
+        .map(({ name: label, type }) => ({ label, apply: written(label), detail: type }));
+    case "good":
+      return goodsOf({ cells, kind }, text).map((good) => ({ label: good, apply: written(good) }));
+    default:
+      return cells
+        .filter((cell) => cell.kind === word.names && cell.name !== name)
+        .map((cell) => ({ label: cell.name, detail: `${cell.kind} cell`, type: "cell" }));
+  }
+}
+
+/** A name as YAML writes it: in quotes where it must be. */
+const written = (name: string) => keyEdit("", ["k"], [name]).insert.trim().slice("k: [".length, -1);
+
+type Rest = Pick<EditorSubject, "cells" | "uploads" | "kind">;
+
+/** The keys of the data cell the text is, or reads. */
+function dataOf({ cells, kind }: Pick<Rest, "cells" | "kind">, text: string): Readonly<Record<string, unknown>> {
+  if (kind === "data") return parseCell("data", text).written;
+  const key = kind === "system" ? "data" : "system";
+  const read = cells.find(({ name }) => name === parseCell(kind ?? "", text).written[key]);
+  if (!read) return {};
+  return read.kind === "data" ? parseCell("data", read.source).written : dataOf({ cells, kind: "system" }, read.source);
+}
+
+function columnsOf({ cells, uploads, kind }: Rest, text: string): { name: string; type: string }[] {
+  const data = dataOf({ cells, kind }, text);
+  const upload = uploads.find(({ name }) => name === data.upload);
+  const derived = Object.keys((data.derive as object | null | undefined) ?? {});
+  return [...derived.map((name) => ({ name, type: "number" })), ...(upload?.columns ?? [])];
+}
+
+function goodsOf(rest: Pick<Rest, "cells" | "kind">, text: string): string[] {
+  return Object.keys((dataOf(rest, text).goods as object | null | undefined) ?? {});
+}

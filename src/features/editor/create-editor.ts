@@ -1,0 +1,89 @@
+import { autocompletion, closeBrackets, closeBracketsKeymap, completionKeymap } from "@codemirror/autocomplete";
+import { defaultKeymap } from "@codemirror/commands";
+import { yaml } from "@codemirror/lang-yaml";
+import { bracketMatching, indentUnit } from "@codemirror/language";
+import { lintKeymap } from "@codemirror/lint";
+import { Compartment, EditorState, type Extension } from "@codemirror/state";
+import { drawSelection, EditorView, keymap } from "@codemirror/view";
+import { yCollab, yUndoManagerKeymap } from "y-codemirror.next";
+import type { Awareness } from "y-protocols/awareness";
+import type * as Y from "yjs";
+import { completeSource } from "./completion.ts";
+import { type EditorSubject, editorSubject } from "./editor-subject.ts";
+import { editorTheme } from "./editor-theme.ts";
+import { withFirstNames } from "./first-names.ts";
+import { showProblems } from "./lint.ts";
+import { sourceMarks } from "./marks.ts";
+
+export interface EditorNeeds {
+  readonly parent: HTMLElement;
+  readonly text: Y.Text;
+  readonly awareness: Awareness;
+  readonly label: string;
+  readonly readOnly: boolean;
+  readonly subject: EditorSubject;
+  /** Escape, once nothing else in the editor wants it. */
+  readonly onLeave: () => void;
+}
+
+export interface Editor {
+  readonly setSubject: (subject: EditorSubject) => void;
+  readonly destroy: () => void;
+}
+
+function reading(readOnly: boolean): Extension {
+  return readOnly ? [EditorState.readOnly.of(true), EditorView.editable.of(false)] : [];
+}
+
+/** An editor on a live text: one for as long as the cell's text is shown. */
+export function createEditor({ parent, text, awareness, label, readOnly, subject, onLeave }: EditorNeeds): Editor {
+  const told = new Compartment();
+  const leave = {
+    key: "Escape",
+    run: () => {
+      onLeave();
+      return true;
+    },
+  };
+  const view = new EditorView({
+    parent,
+    state: EditorState.create({
+      doc: text.toString(),
+      extensions: [
+        told.of(editorSubject.of(subject)),
+        EditorView.contentAttributes.of({ "aria-label": label, spellcheck: "false", autocapitalize: "off" }),
+        EditorView.lineWrapping,
+        drawSelection(),
+        bracketMatching(),
+        closeBrackets(),
+        indentUnit.of("  "),
+        yaml(),
+        autocompletion({ override: [completeSource], icons: false }),
+        keymap.of([
+          ...completionKeymap,
+          ...closeBracketsKeymap,
+          ...yUndoManagerKeymap,
+          ...lintKeymap,
+          leave,
+          ...defaultKeymap,
+        ]),
+        sourceMarks,
+        editorTheme,
+        reading(readOnly),
+        yCollab(text, withFirstNames(awareness)),
+        EditorView.focusChangeEffect.of((_, focusing) => {
+          if (!focusing && awareness.getLocalState()) awareness.setLocalStateField("cursor", null);
+          return null;
+        }),
+      ],
+    }),
+  });
+  showProblems(view);
+  return {
+    setSubject: (next) => {
+      view.dispatch({ effects: told.reconfigure(editorSubject.of(next)) });
+      showProblems(view);
+    },
+    destroy: () => view.destroy(),
+  };
+}

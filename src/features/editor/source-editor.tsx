@@ -1,0 +1,41 @@
+import { useEffect, useRef } from "react";
+import type { Awareness } from "y-protocols/awareness";
+import type * as Y from "yjs";
+import { createEditor, type Editor } from "./create-editor.ts";
+import type { EditorSubject } from "./editor-subject.ts";
+
+interface SourceEditorProps {
+  readonly text: Y.Text;
+  readonly awareness: Awareness;
+  readonly label: string;
+  readonly readOnly: boolean;
+  readonly subject: EditorSubject;
+  readonly onLeave: () => void;
+}
+
+/** A cell's source, edited live with everyone who has it open. */
+export default function SourceEditor({ text, awareness, label, readOnly, subject, onLeave }: SourceEditorProps) {
+  const parent = useRef<HTMLDivElement>(null);
+  const editor = useRef<Editor>(undefined);
+  const latest = useRef({ subject, onLeave });
+  latest.current = { subject, onLeave };
+  useEffect(() => {
+    if (!parent.current) return;
+    const made = createEditor({
+      parent: parent.current,
+      text,
+      awareness,
+      label,
+      readOnly,
+      subject: latest.current.subject,
+      onLeave: () => latest.current.onLeave(),
+    });
+    editor.current = made;
+    return () => {
+      editor.current = undefined;
+      made.destroy();
+    };
+  }, [text, awareness, label, readOnly]);
+  useEffect(() => editor.current?.setSubject(subject), [subject]);
+  return <div ref={parent} className="source-editor" />;
+}
