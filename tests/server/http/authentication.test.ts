@@ -84,7 +84,7 @@ describe("signing in", () => {
   test("out ends the session at once and closes the person's sockets", async () => {
     const answer = await signIn("ilse@vihe.example", PASSPHRASE);
     const cookie = cookieOf(answer);
-    const out = await application.stranger.ask("POST", "/api/auth/sign-out", {}, { cookie });
+    const out = await application.stranger.ask("POST", "/api/auth/sign-out", undefined, { cookie });
     expect(out.status).toBe(200);
     expect((await application.stranger.ask("GET", "/api/me", undefined, { cookie })).status).toBe(401);
     expect(application.sockets.closed).toContain(`${answer.body.user.id} everywhere`);
