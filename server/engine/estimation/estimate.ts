@@ -45,7 +45,8 @@ export function estimateSystem(
     equations: data.goods.map((_, good) => good).filter((good) => good !== dropped),
     coefficientLabels: names.map(labelOfCoefficient),
   };
-  refuseTooFewRows(moments.rows, estimation.form.free, estimation.equations.length);
+  const within = systemForm(system, size, withinEquations(specification)).free;
+  refuseTooFewRows(moments.rows, estimation.form.free, estimation.equations.length, within);
   const solution = solve(specification, system, size, estimation, control);
   const covariance =
     specification.estimator === "least squares"
@@ -92,6 +93,11 @@ export function estimateSystem(
   };
 }
 
+/** The restrictions that act within equations only. */
+function withinEquations({ impose }: SystemSpecification) {
+  return impose.filter((restriction) => restriction !== "symmetry");
+}
+
 function placeOfDropped({ dropped }: SystemSpecification, goods: readonly string[]): number {
   if (dropped === undefined) return goods.length - 1;
   const place = goods.indexOf(dropped);
@@ -114,9 +120,8 @@ function solve(
     case "least squares":
       return leastSquares(estimation, true, start, control);
     case "seemingly unrelated": {
-      // Restrictions that act within equations only: with symmetry, Σ̂ would depend on the dropped good.
-      const within = specification.impose.filter((restriction) => restriction !== "symmetry");
-      const form = systemForm(system, size, within);
+      // With symmetry in the first step, Σ̂ would depend on the dropped good.
+      const form = systemForm(system, size, withinEquations(specification));
       const from = form.expand.places.map((place) => theta[place]);
       const first = leastSquares({ ...estimation, form }, true, from, control);
       return seeminglyUnrelated(estimation, first, start, control);

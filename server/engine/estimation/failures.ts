@@ -36,9 +36,12 @@ function dependence({ column, on }: DependentColumn): string {
   return `${column} is an exact linear combination of ${on.join(", ")}${on.length === 1 ? " and the constant" : ""}`;
 }
 
-/** Each equation needs its share of the coefficients and one more row for every equation's variance. */
-export function refuseTooFewRows(rows: number, free: number, equations: number): void {
-  const needed = Math.ceil(free / equations) + equations;
+/**
+ * Each equation needs as many rows as it has coefficients before restrictions across equations, and
+ * one more for every equation, or some combination of equations fits exactly and no likelihood exists.
+ */
+export function refuseTooFewRows(rows: number, free: number, equations: number, freeWithinEquations: number): void {
+  const needed = Math.ceil(freeWithinEquations / equations) + equations;
   if (rows >= needed) return;
   throw new Refusal(
     `The data have ${rows} rows used; ${free} free coefficients in ${equations} equations need at least ${needed}.`,

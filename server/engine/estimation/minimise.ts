@@ -73,6 +73,10 @@ export function minimise(
   for (let iteration = 1; ; iteration++) {
     if (control.cancelled()) throw new Cancelled("cancelled while iterating");
     const { jacobian, factor, gradient } = linearise(estimation, state);
+    // Collinear columns that leave the start undetermined could be told apart by curvature alone.
+    if (iteration === 1 && factor.dependent.length > 0 && estimation.moments.dependent.length > 0) {
+      refuseNotIdentified(estimation, factor);
+    }
     const step = chooseStep(criterion, factor, jacobian, state.weighted, estimation.moments.rows);
     const slope = dot(gradient, step);
     const previous = largestStep;
