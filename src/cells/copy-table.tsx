@@ -5,10 +5,10 @@ import { tableLatex } from "../../shared/tables/latex.ts";
 import type { LabelledTable } from "../../shared/tables/table.ts";
 import { tableText } from "../../shared/tables/text.ts";
 
-type Way = "table" | "LaTeX" | "CSV";
+export type Way = "table" | "LaTeX" | "CSV";
 
 /** Puts a table on the clipboard: as a table (HTML beside tab-separated text), as LaTeX or as CSV. */
-async function copyTable(table: LabelledTable, way: Way): Promise<void> {
+export async function copyTable(table: LabelledTable, way: Way): Promise<void> {
   if (way === "LaTeX") return navigator.clipboard.writeText(tableLatex(table));
   if (way === "CSV") return navigator.clipboard.writeText(tableCsv(table));
   const text = tableText(table);

@@ -10,7 +10,7 @@ interface ChartNumbersProps {
 export function ChartNumbers({ caption, heads, lines }: ChartNumbersProps) {
   return (
     <details className="mt-1 type-small print:hidden">
-      <summary className="word inline-block">
+      <summary className="word inline-block list-none">
         Numbers
         <span className="sr-only"> of {caption.charAt(0).toLowerCase() + caption.slice(1)}</span>
       </summary>

@@ -21,7 +21,7 @@ function Row({ line, strong = false, total = false }: { line: AccountLine; stron
   const edge = total ? "border-line border-t" : "";
   return (
     <tr className={edge}>
-      <th scope="row" className={`py-1 pr-3 text-left ${weight}`}>
+      <th scope="row" className={`py-1 pr-3 text-left min-[1024px]:whitespace-nowrap ${weight}`}>
         {line.label}
       </th>
       <td className="py-1">{line.between}</td>

@@ -32,7 +32,10 @@ function Line({ line, heads }: { line: TableLine; heads: readonly TableHead[] })
         {line.head}
       </th>
       {line.cells.map((cell, index) => (
-        <td key={heads[index + 1].key} className={`py-0.5 pr-[0.33em] pl-4 ${side(heads[index + 1].align)}`}>
+        <td
+          key={heads[index + 1].key}
+          className={`py-0.5 pr-[0.33em] pl-4 ${heads[index + 1].align === "left" ? "text-left" : "whitespace-nowrap text-right"}`}
+        >
           {cell}
         </td>
       ))}

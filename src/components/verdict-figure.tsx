@@ -1,5 +1,5 @@
 /** The five figures of a law: a line and a curve that touch, are clamped, touch here, cross, or are not set out. */
-export type VerdictShape = "holds" | "imposed" | "holds here" | "breaks" | "open";
+export type VerdictShape = "holds" | "imposed" | "holds here" | "breaks" | "not stated";
 
 const CURVE = "M4.5 1.5C4.5 9.5 7 12.9 11 12.9C15 12.9 17.5 9.5 17.5 1.5";
 const LINE = "M1 13.6H21";
@@ -49,7 +49,7 @@ export function VerdictFigure({ shape }: { shape: VerdictShape }) {
       className="shrink-0 overflow-visible"
       data-shape={shape}
     >
-      {shape === "breaks" ? crossing() : shape === "open" ? apart() : touching(shape)}
+      {shape === "breaks" ? crossing() : shape === "not stated" ? apart() : touching(shape)}
     </svg>
   );
 }

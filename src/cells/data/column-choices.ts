@@ -18,7 +18,11 @@ function describe(column: Column, rows: number): string {
 export function columnChoices(upload: Upload | undefined, derived: readonly string[], numbersOnly: boolean): Choice[] {
   const columns = upload?.columns.filter((column) => !numbersOnly || column.type === "number") ?? [];
   return [
-    ...columns.map((column) => ({ value: column.name, label: describe(column, upload?.rows || 1) })),
-    ...derived.map((name) => ({ value: name, label: `${name} (derived)` })),
+    ...columns.map((column) => ({
+      value: column.name,
+      label: describe(column, upload?.rows || 1),
+      chosen: column.name,
+    })),
+    ...derived.map((name) => ({ value: name, label: `${name} (derived)`, chosen: name })),
   ];
 }

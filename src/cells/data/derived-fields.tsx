@@ -2,8 +2,6 @@ import { useState } from "react";
 import { FormRow, TextControl } from "../form/fields.tsx";
 import type { Written } from "../form/written.ts";
 
-const LINK = "word type-small";
-
 /** Columns derived from others: a name and an expression each. */
 export function DerivedFields({ written, readOnly }: { written: Written; readOnly: boolean }) {
   const [name, setName] = useState("");
@@ -35,22 +33,23 @@ export function DerivedFields({ written, readOnly }: { written: Written; readOnl
             onChange={(event) => setName(event.target.value.replace(/\s/g, "_"))}
             className="min-h-6 w-24 shrink-0 border-ctl border-b bg-transparent font-mono text-[0.8125rem]/[1.375rem] max-[599px]:min-h-11"
           />
-          <span aria-hidden="true">=</span>
-          <TextControl
-            aria-label="Expression of the column to derive"
-            value=""
-            mono
-            readOnly={name === ""}
-            onCommit={(text) => {
-              if (text === "") return;
-              written.write([["derive", name], text]);
-              setName("");
-            }}
-          />
-          {name !== "" && (
-            <button type="button" className={LINK} onClick={() => setName("")}>
-              Leave it
-            </button>
+          {name === "" ? (
+            <span className="type-small text-ink2">names a new column</span>
+          ) : (
+            <>
+              <span aria-hidden="true">=</span>
+              <TextControl
+                aria-label={`Expression of ${name}`}
+                value=""
+                mono
+                readOnly={false}
+                onCommit={(text) => {
+                  if (text === "") return;
+                  written.write([["derive", name], text]);
+                  setName("");
+                }}
+              />
+            </>
           )}
         </div>
       )}

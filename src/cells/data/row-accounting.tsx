@@ -21,7 +21,7 @@ function Where({ reason, uploaded }: { reason: RowAccounting["leftOut"][number];
       <RowStrip strip={reason.strip} rowsPerSlice={uploaded / reason.strip.length} />
       {reason.rows.length > NAMED ? (
         <details className="type-small">
-          <summary className="min-h-6 cursor-pointer text-ink2">{rowsInWords(reason.rows, reason.count)}</summary>
+          <summary className="word list-none">{rowsInWords(reason.rows, reason.count)}</summary>
           <p className="max-h-40 overflow-y-auto">
             {reason.rows.map(printCount).join(", ")}
             {reason.rows.length < reason.count && `, and ${printCount(reason.count - reason.rows.length)} more`}

@@ -8,10 +8,10 @@ function Note({ flag }: { flag: Flag }) {
   return (
     <div className="max-w-[26rem] break-inside-avoid pb-3">
       <h4 className="text-[0.90625rem]/[1.3125rem] font-semibold">{capital(flag.about)}</h4>
-      <p className="text-[0.875rem]/[1.25rem] text-ink2">{flag.sentence}</p>
+      <p className="text-[0.875rem]/[1.25rem] text-ink2">{capital(flag.sentence)}</p>
       {flag.rows.length > 0 && (
         <details className="type-small">
-          <summary className="word">
+          <summary className="word list-none">
             {printCount(flag.rows.length)} {flag.rows.length === 1 ? "row" : "rows"}
           </summary>
           <p className="max-h-40 overflow-y-auto text-ink2">{flag.rows.map(printCount).join(", ")}</p>

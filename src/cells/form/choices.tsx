@@ -1,5 +1,5 @@
 import { type ReactNode, useId } from "react";
-import type { Choice } from "./fields.tsx";
+import { type Choice, FormRow } from "./fields.tsx";
 
 interface RadioProps {
   readonly legend: string;
@@ -50,6 +50,13 @@ export function CheckGroup({ legend, values, choices, onChange, readOnly, mono =
   const offered = choices.map((choice) => choice.value);
   const unknown = values.filter((value) => !offered.includes(value));
   const all = [...choices, ...unknown.map((value) => ({ value, label: `${value}, not known here` }))];
+  if (readOnly) {
+    return (
+      <FormRow label={legend}>
+        <span className={mono ? "font-mono text-[0.8125rem]/[1.375rem]" : ""}>{values.join(", ") || "none"}</span>
+      </FormRow>
+    );
+  }
   const toggle = (value: string, on: boolean) => {
     const next = new Set(values);
     if (on) next.add(value);
@@ -69,7 +76,6 @@ export function CheckGroup({ legend, values, choices, onChange, readOnly, mono =
             <input
               type="checkbox"
               checked={values.includes(choice.value)}
-              disabled={readOnly}
               onChange={(event) => toggle(choice.value, event.target.checked)}
               className="m-0 size-3.5 shrink-0 accent-ink"
             />

@@ -23,6 +23,8 @@ export function FormRow({ label, htmlFor, children }: { label: ReactNode; htmlFo
 export interface Choice {
   readonly value: string;
   readonly label: string;
+  /** How it reads once chosen, when its label says more. */
+  readonly chosen?: string;
 }
 
 export const asChoices = (words: readonly string[]): Choice[] => words.map((word) => ({ value: word, label: word }));
@@ -50,7 +52,9 @@ export function ChoiceControl({
   const known = choices.find((choice) => choice.value === value);
   if (readOnly) {
     return (
-      <span className={mono ? MONO : "text-[0.875rem]/[1.25rem]"}>{known?.label || value || none || "not chosen"}</span>
+      <span className={mono ? MONO : "text-[0.875rem]/[1.25rem]"}>
+        {known?.chosen ?? known?.label ?? (value || none || "not chosen")}
+      </span>
     );
   }
   return (
@@ -64,7 +68,7 @@ export function ChoiceControl({
       {value !== "" && !known && <option value={value}>{value}, not known here</option>}
       {choices.map((choice) => (
         <option key={choice.value} value={choice.value}>
-          {choice.label}
+          {choice.value === value ? (choice.chosen ?? choice.label) : choice.label}
         </option>
       ))}
     </select>

@@ -58,7 +58,7 @@ export function EntryFormula({ finding, place: [i, j] }: { finding: Evaluated; p
   const own = i === j;
   const entry = formulaParts(finding.fitted, finding.point, i, j);
   return (
-    <div className="space-y-2 font-serif text-[0.9375rem]/[1.5rem] tabular-nums lining-nums">
+    <div className="space-y-2 font-serif text-[0.875rem]/[1.4375rem] tabular-nums lining-nums">
       <section aria-label="Formula">
         <div>
           <MathText text={letters(own, "i", "j")} />

@@ -161,7 +161,7 @@ export function MatrixField({ shown, setting, label, pointed, onPoint, sums }: M
             <tr key={good}>
               <th
                 scope="row"
-                className={`sticky left-0 z-2 bg-recto pr-3 text-left text-[0.875rem]/[1.125rem] ${
+                className={`sticky left-0 z-2 bg-recto pr-3 text-left text-[0.875rem]/[1.125rem] ${setting === "errors" ? "w-[102px] min-w-[102px]" : ""} ${
                   pointed?.[0] === i ? "font-semibold text-accent" : "font-normal"
                 }`}
               >

@@ -12,6 +12,8 @@ type BrokenRows = SlutskyFinding["brokenRows"];
 
 const HEIGHT = 150;
 const BOTTOM = 122;
+/** Words over hatching keep a clear edge. */
+const CLEAR = { paintOrder: "stroke", stroke: "var(--recto)", strokeWidth: 4, strokeLinejoin: "round" } as const;
 
 function Bars({ histogram, scale }: { histogram: Sample["histogram"]; scale: Scale }) {
   const tallest = Math.max(...histogram.shares, Number.MIN_VALUE);
@@ -47,10 +49,10 @@ function BreakWords({ sample, listed, x, holds }: { sample: Sample; listed: numb
       <text x={x - 14} y="58" textAnchor="end" fontWeight="600" fill="var(--ink)">
         {printPercent(holds)} hold
       </text>
-      <text x={x + 12} y="58" fontWeight="600" fill="var(--ink)">
+      <text x={x + 12} y="58" fontWeight="600" fill="var(--ink)" {...CLEAR}>
         {printPercent(1 - holds)} break
       </text>
-      <text x={x + 12} y="75" fill="var(--ink2)">
+      <text x={x + 12} y="75" fill="var(--ink2)" {...CLEAR}>
         {printCount(sample.breaks)} of {printCount(sample.rows)} rows{ticks}
       </text>
     </g>

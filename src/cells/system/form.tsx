@@ -10,13 +10,23 @@ import type { FormProps } from "../types.ts";
 const FORMS = SYSTEM_NAMES.map((name) => ({ value: name, label: SYSTEMS[name].longName }));
 const isSystem = (word: string): word is SystemName => (SYSTEM_NAMES as readonly string[]).includes(word);
 
+const isMap = (value: unknown): value is Record<string, unknown> => typeof value === "object" && value !== null;
+
 /** What the data cell a system names has to offer: its goods, and the columns that may shift the intercepts. */
 function offered({ cells, uploads }: FormProps["context"], dataName: string) {
   const cell = cells.find((one) => one.kind === "data" && one.name === dataName);
   const written = cell ? parseCell("data", cell.source).written : {};
   const upload = uploads.find((one) => one.name === written.upload);
   const numeric = upload?.columns.filter((column) => column.type === "number").map((column) => column.name) ?? [];
-  return { goods: Object.keys(written.goods ?? {}), columns: [...Object.keys(written.derive ?? {}), ...numeric] };
+  const goods: Record<string, unknown> = isMap(written.goods) ? written.goods : {};
+  // What makes shares and prices, or weighs the rows, does not shift their intercepts too.
+  const taken = new Set([
+    ...Object.values(goods).flatMap((mapping) => (isMap(mapping) ? Object.values(mapping) : [])),
+    written.weight,
+    written.total,
+  ]);
+  const derived = isMap(written.derive) ? Object.keys(written.derive) : [];
+  return { goods: Object.keys(goods), columns: [...derived, ...numeric].filter((name) => !taken.has(name)) };
 }
 
 /** A system cell as a form: form, restrictions, estimator and what shifts the intercepts. */

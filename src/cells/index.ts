@@ -1,0 +1,37 @@
+import type { CellKind } from "../../shared/schemas/cell.ts";
+import { coefficientTable } from "../../shared/tables/coefficients.ts";
+import { dataDescriptionTable } from "../../shared/tables/data-description.ts";
+import { eigenvalueTable } from "../../shared/tables/eigenvalues.ts";
+import { rowAccountingTable } from "../../shared/tables/row-accounting.ts";
+import { compensatedTable, slutskyTable } from "../../shared/tables/slutsky-matrix.ts";
+import { DataForm } from "./data/form.tsx";
+import { DataBand, DataOpen } from "./data/view.tsx";
+import { SlutskyForm } from "./slutsky/form.tsx";
+import { HowChecked } from "./slutsky/how-checked.tsx";
+import { SlutskyBand, SlutskyOpen } from "./slutsky/view.tsx";
+import { SystemForm } from "./system/form.tsx";
+import { SystemBand, SystemOpen } from "./system/view.tsx";
+import type { CellView } from "./types.ts";
+
+/** What each kind of cell shows; a kind is added here with its folder. */
+export const CELL_VIEWS: { readonly [K in CellKind]: CellView<K> } = {
+  data: {
+    Form: DataForm,
+    Band: DataBand,
+    Open: DataOpen,
+    tables: (finding) => [dataDescriptionTable(finding), rowAccountingTable(finding.accounting)],
+  },
+  system: {
+    Form: SystemForm,
+    Band: SystemBand,
+    Open: SystemOpen,
+    tables: (finding) => [coefficientTable(finding)],
+  },
+  slutsky: {
+    Form: SlutskyForm,
+    Band: SlutskyBand,
+    Open: SlutskyOpen,
+    Aside: HowChecked,
+    tables: (finding) => [slutskyTable(finding, finding.form), eigenvalueTable(finding), compensatedTable(finding)],
+  },
+};

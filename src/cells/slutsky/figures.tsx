@@ -1,0 +1,67 @@
+import type { SlutskyFinding } from "../../../shared/schemas/slutsky.ts";
+import { DECIMALS, printFixed, printPercent, THIN_SPACE } from "../../../shared/tables/numbers.ts";
+import { EigenvalueAxis } from "./eigenvalue-axis.tsx";
+import { NegativityHistogram } from "./negativity-histogram.tsx";
+import { axisFloor, Tenths } from "./tenths.tsx";
+
+const print = (value: number) => printFixed(value, DECIMALS.entry);
+
+/** What the largest eigenvalue says, in a sentence. */
+function largestInWords({ eigenvalues, checks }: SlutskyFinding["at"]): string {
+  const [largest] = eigenvalues;
+  const room = largest.value < -2 * largest.standardError ? "Negativity holds with room to spare" : "Negativity holds";
+  const verdict = checks.negativity.holds ? room : "Negativity breaks";
+  return `Share form, symmetrised, with 95${THIN_SPACE}% intervals. The largest is ${print(largest.value)} (${print(largest.standardError)}): ${largest.direction}. ${verdict}.`;
+}
+
+export function Eigenvalues({ finding }: { finding: Pick<SlutskyFinding, "at"> }) {
+  const { eigenvalues } = finding.at;
+  return (
+    <section aria-labelledby="eigenvalues" className="border-line border-t pt-4">
+      <h3 id="eigenvalues" className="type-section">
+        Eigenvalues
+      </h3>
+      {eigenvalues.length === 0 ? (
+        <p className="type-small max-w-[38rem] text-ink2">
+          Not stated: without homogeneity the symmetrised matrix is indefinite by construction, whatever the data.
+        </p>
+      ) : (
+        <>
+          <p className="type-small text-ink2">{largestInWords(finding.at)}</p>
+          <div className="mt-3">
+            <EigenvalueAxis eigenvalues={eigenvalues} />
+          </div>
+        </>
+      )}
+    </section>
+  );
+}
+
+/** Negativity at every row's own prices and expenditure, and by tenth of expenditure. */
+export function NegativityOverSample({ finding }: { finding: Pick<SlutskyFinding, "at" | "sample" | "brokenRows"> }) {
+  const { sample, brokenRows, at } = finding;
+  const negativity = at.checks.sample?.negativity;
+  if (!sample || !negativity) return null;
+  return (
+    <div className="grid gap-x-14 gap-y-6 border-line border-t pt-4 min-[1100px]:grid-cols-2">
+      <section aria-labelledby="negativity">
+        <h3 id="negativity" className="type-section">
+          Negativity over the sample
+        </h3>
+        <p className="type-small mb-3 text-ink2">
+          Largest eigenvalue at each row’s own prices and expenditure, shares of rows by weight
+        </p>
+        <NegativityHistogram sample={sample} brokenRows={brokenRows} holds={negativity.weightedShareThatHolds} />
+      </section>
+      <section aria-labelledby="tenths">
+        <h3 id="tenths" className="type-section">
+          By tenth of expenditure
+        </h3>
+        <p className="type-small mb-3 text-ink2">
+          Share of rows where negativity holds; the axis begins at {printPercent(axisFloor(sample.byTenth), 0)}
+        </p>
+        <Tenths byTenth={sample.byTenth} />
+      </section>
+    </div>
+  );
+}

@@ -1,0 +1,125 @@
+import { useId, useState } from "react";
+import type { SystemFinding } from "../../../shared/schemas/system.ts";
+import { capital } from "../../../shared/study/words.ts";
+import { type CoefficientRow, coefficientRows, isPriceBlock } from "../../../shared/tables/coefficients.ts";
+import { printFixed } from "../../../shared/tables/numbers.ts";
+import { Estimate } from "../../components/number.tsx";
+import { commonTop, EngelCurve } from "./engel-curve.tsx";
+
+function RowLabel({ row }: { row: CoefficientRow }) {
+  if (isPriceBlock(row.block)) {
+    return (
+      <>
+        ln <i className="font-serif">p</i>
+        {row.label.slice("ln p".length)}
+      </>
+    );
+  }
+  if (row.block === "beta") {
+    return (
+      <>
+        ln <i className="font-serif">x</i>, <i className="font-serif">{row.symbol}</i>
+      </>
+    );
+  }
+  return (
+    <>
+      {row.label} {row.symbol && <i className="font-serif">{row.symbol}</i>}
+    </>
+  );
+}
+
+function Row({ row, goods }: { row: CoefficientRow; goods: readonly string[] }) {
+  return (
+    <tr>
+      <th scope="row" className="sticky left-0 bg-recto py-0.5 pr-3 text-left font-normal">
+        <RowLabel row={row} />
+      </th>
+      {row.cells.map((cell, index) => (
+        <td key={goods[index]} className="py-0.5 pr-[0.33em] pl-3 text-right align-top">
+          {cell.kind === "estimate" && <Estimate value={cell.printed} error={cell.printedError} />}
+        </td>
+      ))}
+    </tr>
+  );
+}
+
+function Heads({ finding }: { finding: SystemFinding }) {
+  const { goods } = finding.fitted;
+  const { logTotal, shares } = finding.engel;
+  const top = commonTop(shares);
+  return (
+    <thead>
+      <tr>
+        <th scope="col" className="type-small sticky left-0 bg-recto text-left align-bottom font-normal text-ink2">
+          Share equation
+        </th>
+        {goods.map((good) => (
+          <th key={good} scope="col" className="type-small pr-[0.33em] pl-3 text-right align-bottom font-semibold">
+            {capital(good)}
+          </th>
+        ))}
+      </tr>
+      <tr className="border-line border-b">
+        <td className="type-smallest sticky left-0 bg-recto pr-3 pb-1.5 align-bottom text-ink2">
+          Share against ln <i className="font-serif">x</i>, 0 to {printFixed(top, 2)}
+        </td>
+        {goods.map((good, i) => (
+          <td key={good} className="pr-[0.33em] pb-1 pl-2 align-bottom">
+            <EngelCurve logTotal={logTotal} shares={shares[i]} top={top} />
+            <span className="sr-only">
+              share of {good} from {printFixed(shares[i][0], 2)} to {printFixed(shares[i][shares[i].length - 1], 2)} as
+              expenditure rises
+            </span>
+          </td>
+        ))}
+      </tr>
+    </thead>
+  );
+}
+
+/** Coefficients as a paper prints them; the price terms, n × n of them, wait folded. */
+export function CoefficientView({ finding }: { finding: SystemFinding }) {
+  const [unfolded, setUnfolded] = useState(false);
+  const id = useId();
+  const { goods } = finding.fitted;
+  const rows = coefficientRows(finding);
+  const priceRows = rows.filter((row) => isPriceBlock(row.block));
+  const others = rows.filter((row) => !isPriceBlock(row.block));
+  return (
+    <div>
+      {/* biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls sideways must be reachable by keyboard */}
+      <section aria-label="Coefficients of the share equations" tabIndex={0} className="overflow-x-auto">
+        <table className={`type-table w-full ${priceRows.length === 0 ? "border-line border-b" : ""}`}>
+          <caption className="sr-only">Coefficients of the share equations, estimate over standard error</caption>
+          <Heads finding={finding} />
+          <tbody>
+            {others.map((row) => (
+              <Row key={row.block + row.label} row={row} goods={goods} />
+            ))}
+          </tbody>
+          {unfolded && (
+            <tbody id={id}>
+              {priceRows.map((row) => (
+                <Row key={row.label} row={row} goods={goods} />
+              ))}
+            </tbody>
+          )}
+        </table>
+      </section>
+      {priceRows.length > 0 && (
+        <div className="border-line border-b pb-1">
+          <button
+            type="button"
+            aria-expanded={unfolded}
+            aria-controls={unfolded ? id : undefined}
+            className="word type-small"
+            onClick={() => setUnfolded(!unfolded)}
+          >
+            {unfolded ? "Fold the price terms" : "Price terms"} Γ, {goods.length} × {goods.length}
+          </button>
+        </div>
+      )}
+    </div>
+  );
+}

@@ -1,0 +1,78 @@
+import type { ReactNode } from "react";
+import type { SystemFinding } from "../../../shared/schemas/system.ts";
+import { capital } from "../../../shared/study/words.ts";
+import { DECIMALS, printCount, printFixed, printSize } from "../../../shared/tables/numbers.ts";
+import { Estimate, Printed } from "../../components/number.tsx";
+import { Table } from "../../components/table.tsx";
+
+function Fact({ label, children }: { label: string; children: ReactNode }) {
+  return (
+    <div className="flex justify-between gap-4 py-0.5">
+      <dt className="text-ink2">{label}</dt>
+      <dd className="tabular-nums">{children}</dd>
+    </div>
+  );
+}
+
+/** Fit and convergence, and what the coefficients say of each good at the base point. */
+export function FitView({ finding }: { finding: SystemFinding }) {
+  const { convergence, durbinWatson, fitted } = finding;
+  const number = (value: number) => printFixed(value, DECIMALS.statistic);
+  return (
+    <div className="grid gap-x-14 gap-y-6 border-line border-t pt-4 min-[1100px]:grid-cols-2">
+      <section aria-labelledby="elasticities">
+        <h3 id="elasticities" className="type-section mb-2">
+          By good
+        </h3>
+        <Table
+          caption="Expenditure elasticity at the base point, fit of the equation"
+          heads={[
+            { key: "good", content: "Good" },
+            { key: "eta", content: "Expenditure elasticity" },
+            { key: "r", content: "R²" },
+            ...(durbinWatson ? [{ key: "dw", content: "Durbin–Watson" }] : []),
+          ]}
+          lines={fitted.goods.map((good, i) => {
+            const elasticity = finding.expenditureElasticities[i];
+            return {
+              key: good,
+              head: capital(good),
+              cells: [
+                <Estimate
+                  key="eta"
+                  value={printFixed(elasticity.estimate, DECIMALS.elasticity)}
+                  error={printFixed(elasticity.standardError, DECIMALS.elasticity)}
+                />,
+                printFixed(finding.rSquared[i], DECIMALS.fit),
+                ...(durbinWatson ? [printFixed(durbinWatson[i], DECIMALS.fit)] : []),
+              ],
+            };
+          })}
+        />
+      </section>
+      <section aria-labelledby="fit">
+        <h3 id="fit" className="type-section mb-2">
+          Fit and convergence
+        </h3>
+        <dl className="type-table">
+          <Fact label="Log-likelihood">{number(finding.logLikelihood)}</Fact>
+          <Fact label="AIC, BIC">
+            {number(finding.aic)}, {number(finding.bic)}
+          </Fact>
+          <Fact label="System R², McElroy">{printFixed(finding.systemRSquared, DECIMALS.fit)}</Fact>
+          <Fact label="Free coefficients">{printCount(finding.freeCoefficients)}</Fact>
+          <Fact label="Rows">{printCount(finding.rows)}</Fact>
+          <Fact label="Equation dropped">{finding.dropped}</Fact>
+          <Fact label="Iterations">{printCount(convergence.iterations)}</Fact>
+          <Fact label="Gradient">
+            <Printed text={printSize(convergence.gradient)} />
+          </Fact>
+          <Fact label="Largest step">
+            <Printed text={printSize(convergence.largestStep)} />
+          </Fact>
+          <Fact label="Condition number">{printSize(convergence.condition)}</Fact>
+        </dl>
+      </section>
+    </div>
+  );
+}

@@ -1,0 +1,18 @@
+import type { SystemFinding } from "../../../shared/schemas/system.ts";
+import { capital } from "../../../shared/study/words.ts";
+import { DECIMALS, printCount, printFixed } from "../../../shared/tables/numbers.ts";
+
+/** What the parentheses are, by which estimator, whether it converged, and how well it fits. */
+export function SystemNote({ finding }: { finding: SystemFinding }) {
+  const { convergence, rows, weighted } = finding;
+  const iterations = convergence.iterations === 1 ? "1 iteration" : `${printCount(convergence.iterations)} iterations`;
+  const rSquared = finding.rSquared.map((value) => printFixed(value, DECIMALS.fit)).join(", ");
+  return (
+    <p className="type-small mt-2 text-ink2">
+      Estimate over (standard error), {finding.standardErrors}; {printCount(rows)} rows
+      {weighted ? ", weighted" : ""}. {capital(finding.estimator)}, {iterations}, converged. Log-likelihood{" "}
+      {printFixed(finding.logLikelihood, DECIMALS.statistic)}; <i className="font-serif">R</i>² by equation {rSquared}.
+      Prices and expenditure in units of estimation.
+    </p>
+  );
+}

@@ -1,0 +1,42 @@
+import { coefficientTable } from "../../../shared/tables/coefficients.ts";
+import { systemSentence } from "../../../shared/tables/sentence.ts";
+import { systemVerdicts } from "../../../shared/tables/verdicts.ts";
+import { VerdictStrip } from "../../components/verdict-strip.tsx";
+import { CopyTable } from "../copy-table.tsx";
+import { Headline, OpenHead } from "../headline.tsx";
+import type { BandProps, OpenProps } from "../types.ts";
+import { stripOf } from "../verdicts.ts";
+import { CoefficientView } from "./coefficient-view.tsx";
+import { FitView } from "./fit-view.tsx";
+import { SystemNote } from "./note.tsx";
+import { TestsView } from "./tests-view.tsx";
+
+/** A fitted system in its band: sentence, verdicts, coefficients with their Engel curves, note. */
+export function SystemBand({ finding }: BandProps<"system">) {
+  return (
+    <div className="space-y-3">
+      <Headline sentence={systemSentence(finding)} />
+      <VerdictStrip label="What theory says of the system" verdicts={stripOf(systemVerdicts(finding))} />
+      <CoefficientView finding={finding} />
+      <SystemNote finding={finding} />
+    </div>
+  );
+}
+
+/** A fitted system in full: the same, with the tests of the theory and the fit. */
+export function SystemOpen({ finding }: OpenProps<"system">) {
+  return (
+    <div className="space-y-6">
+      <OpenHead sentence={systemSentence(finding)}>
+        <CopyTable table={coefficientTable(finding)} />
+      </OpenHead>
+      <VerdictStrip label="What theory says of the system" verdicts={stripOf(systemVerdicts(finding))} />
+      <div>
+        <CoefficientView finding={finding} />
+        <SystemNote finding={finding} />
+      </div>
+      <TestsView tests={finding.tests} />
+      <FitView finding={finding} />
+    </div>
+  );
+}

@@ -1,0 +1,31 @@
+import type { RefereeCopy } from "../../shared/schemas/referee-copy.ts";
+import type { MatrixAtPoint } from "../../shared/schemas/slutsky.ts";
+import type { FittedSystem } from "../../shared/schemas/system.ts";
+import type { Point } from "../../shared/systems/demand-system.ts";
+import type { Verification } from "./verify-copy.ts";
+
+/** What the worker can be asked, and what each question is answered with. */
+export interface Questions {
+  matrix: {
+    ask: {
+      readonly fitted: FittedSystem;
+      readonly point: Point;
+      readonly priceScale: readonly number[];
+      readonly totalScale: number;
+      readonly pointName: string;
+    };
+    answer: MatrixAtPoint;
+  };
+  verification: { ask: RefereeCopy; answer: Verification };
+}
+export type QuestionKind = keyof Questions;
+
+export interface Request<K extends QuestionKind = QuestionKind> {
+  readonly id: number;
+  readonly kind: K;
+  readonly ask: Questions[K]["ask"];
+}
+
+export type Reply =
+  | { readonly id: number; readonly answer: Questions[QuestionKind]["answer"] }
+  | { readonly id: number; readonly refusal: string };

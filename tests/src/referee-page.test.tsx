@@ -1,0 +1,189 @@
+import { QueryClient, QueryClientProvider } from "@tanstack/react-query";
+import { render, screen, within } from "@testing-library/react";
+import userEvent from "@testing-library/user-event";
+import { afterEach, beforeEach, describe, expect, it, vi } from "vitest";
+import type { RefereeCopy, SealedContent } from "../../shared/schemas/referee-copy.ts";
+import { canonicalJson } from "../../shared/study/canonical-json.ts";
+import { sha256Hex } from "../../shared/study/fingerprint.ts";
+import { parseStudyFile } from "../../shared/study/study-file.ts";
+import { RefereePage } from "../../src/app/pages/referee.tsx";
+import { sealTangents } from "../../src/features/referee-copy/seal.tsx";
+import { verifyCopy } from "../../src/workers/verify-copy.ts";
+import { sampleContent, sampleCopy } from "../support/sample-findings.ts";
+
+const copy = sampleCopy();
+
+function answerWith(status: number, body: unknown) {
+  const fetched = vi.fn(async () => new Response(JSON.stringify(body), { status }));
+  vi.stubGlobal("fetch", fetched);
+  return fetched;
+}
+
+/** The page with its computation on this thread: jsdom has no workers. */
+function open(answered: RefereeCopy | undefined, status = 200) {
+  const refused = { error: { code: "not found", sentence: "There is nothing here.", problems: [] } };
+  const fetched = answerWith(status, answered ?? refused);
+  const client = new QueryClient({ defaultOptions: { queries: { retry: false } } });
+  render(
+    <QueryClientProvider client={client}>
+      <RefereePage token="a token/with a slash" verify={async (one) => verifyCopy(one, () => performance.now())} />
+    </QueryClientProvider>,
+  );
+  return { fetched, user: userEvent.setup() };
+}
+
+/** The same copy with one coefficient changed in what everything is computed from. */
+function altered(seal: (content: SealedContent) => string): RefereeCopy {
+  const content = structuredClone(sampleContent());
+  content.slutsky.fitted.theta[3] += 0.001;
+  return { fingerprint: seal(content), content };
+}
+
+const saved: { name: string; text: Promise<string> }[] = [];
+beforeEach(() => {
+  saved.length = 0;
+  const texts = new Map<string, Blob>();
+  vi.spyOn(HTMLAnchorElement.prototype, "click").mockImplementation(function (this: HTMLAnchorElement) {
+    saved.push({ name: this.download, text: readBlob(texts.get(this.href)!) });
+  });
+  URL.createObjectURL = (blob) => {
+    const address = `blob:here/${texts.size}`;
+    texts.set(address, blob as Blob);
+    return address;
+  };
+  URL.revokeObjectURL = () => undefined;
+});
+afterEach(() => {
+  vi.unstubAllGlobals();
+  vi.restoreAllMocks();
+});
+
+const readBlob = (blob: Blob) =>
+  new Promise<string>((resolve) => {
+    const reader = new FileReader();
+    reader.onload = () => resolve(String(reader.result));
+    reader.readAsText(blob);
+  });
+
+describe("the referee's page", () => {
+  it("asks for the copy alone, by its token, and needs no account", async () => {
+    const { fetched } = open(copy);
+    await screen.findByRole("heading", { level: 1, name: "Food demand in Velmark, 2029–31" });
+    expect(fetched).toHaveBeenCalledTimes(1);
+    expect(fetched.mock.calls[0]).toEqual([
+      "/api/referee/a%20token%2Fwith%20a%20slash",
+      expect.objectContaining({ method: "GET" }),
+    ]);
+    expect(screen.getByText(/Authors withheld for review/)).toBeInTheDocument();
+  });
+
+  it("recomputes on load and says that everything agrees, part by part", async () => {
+    open(copy);
+    expect(await screen.findByText("Recomputed in this browser")).toBeInTheDocument();
+    expect(screen.getByRole("heading", { name: "Largest difference 0" })).toBeInTheDocument();
+    const table = screen.getByRole("table", { name: "" });
+    expect(within(table).getByRole("row", { name: /^Matrix 36 entries 0/ })).toBeInTheDocument();
+    expect(within(table).getByRole("row", { name: /^Eigenvalues 5, and the null direction 0/ })).toBeInTheDocument();
+    expect(within(table).getByRole("row", { name: /^Verdicts five laws at the point agree/ })).toBeInTheDocument();
+    expect(screen.getByText("Computed again from what this page received: the same.")).toBeInTheDocument();
+  });
+
+  it("says what does not agree when one coefficient was altered after sealing", async () => {
+    open(altered(() => copy.fingerprint));
+    expect(await screen.findByText("Recomputed in this browser, and it does not agree")).toBeInTheDocument();
+    expect(screen.getByRole("heading", { name: "Largest difference 0.0011" })).toBeInTheDocument();
+    expect(screen.getByText(/What this page received has another/)).toBeInTheDocument();
+    expect(screen.getByRole("row", { name: /^Coefficients as tabled/ })).toHaveTextContent("0.0010");
+  });
+
+  it("says so even when the altered copy was given a fingerprint of its own", async () => {
+    open(altered((content) => sha256Hex(canonicalJson(content))));
+    expect(await screen.findByText("Recomputed in this browser, and it does not agree")).toBeInTheDocument();
+    expect(screen.getByText("Computed again from what this page received: the same.")).toBeInTheDocument();
+  });
+
+  it("recomputes again when asked", async () => {
+    const { user } = open(copy);
+    await screen.findByText("Recomputed in this browser");
+    await user.click(screen.getByRole("button", { name: "Recompute" }));
+    expect(await screen.findByText("Recomputed in this browser")).toBeInTheDocument();
+  });
+
+  it("shows verdicts, matrix, eigenvalues, specification and row accounting", async () => {
+    const { user } = open(copy);
+    await screen.findByText("Recomputed in this browser");
+    const laws = within(screen.getByRole("list", { name: /theory/ })).getAllByRole("listitem");
+    const words = [
+      "Adding-up holds",
+      "Homogeneity imposed",
+      "Symmetry imposed",
+      "Negativity at base point",
+      "Monotonicity",
+    ];
+    words.forEach((word, index) => {
+      expect(laws[index]).toHaveTextContent(new RegExp(`^${word.replace(" ", "")}`));
+    });
+    expect(screen.getByRole("grid", { name: /Slutsky matrix, share form, at the base point/ })).toBeInTheDocument();
+    expect(screen.getByText("Almost ideal demand system, 6 goods")).toBeInTheDocument();
+    expect(screen.getByRole("row", { name: "Rows used 900" })).toBeInTheDocument();
+    await user.click(screen.getByRole("button", { name: "As text" }));
+    expect(screen.getByText(/impose: \[homogeneity, symmetry\]/)).toBeInTheDocument();
+    await user.click(screen.getByRole("button", { name: "Coefficients, 60 of them" }));
+    expect(screen.getByRole("region", { name: "Coefficients of the share equations" })).toBeInTheDocument();
+  });
+
+  it("makes its downloads from the sealed content", async () => {
+    const { user } = open(copy);
+    await screen.findByText("Recomputed in this browser");
+    for (const name of [
+      "Matrix, with standard errors",
+      "Coefficients, with full covariance",
+      "Tables",
+      "Specification",
+    ])
+      await user.click(screen.getByRole("button", { name }));
+    await user.click(screen.getByRole("button", { name: "Everything sealed" }));
+    const stem = `referee-copy-${copy.fingerprint.slice(0, 8)}`;
+    expect(saved.map(({ name }) => name)).toEqual([
+      `${stem}-matrix.csv`,
+      `${stem}-coefficients.csv`,
+      `${stem}.tex`,
+      `${stem}.yaml`,
+      `${stem}.json`,
+    ]);
+    expect(sha256Hex(await saved[4].text)).toBe(copy.fingerprint);
+    const study = parseStudyFile(await saved[3].text);
+    expect(study.title).toBe("Food demand in Velmark, 2029–31");
+    expect(study.problems).toEqual([]);
+    expect(study.cells.map(({ name, parsed }) => [name, parsed.kind])).toEqual([
+      ["survey", "data"],
+      ["base", "system"],
+      ["matrix", "slutsky"],
+    ]);
+  });
+
+  it("gives one plain page for a link that opens nothing, with no hint of why", async () => {
+    open(undefined, 404);
+    expect(await screen.findByRole("heading", { name: "This link opens nothing" })).toBeInTheDocument();
+    expect(document.body).not.toHaveTextContent(/revoke|expire|exist|There is nothing here/);
+  });
+});
+
+describe("the seal", () => {
+  it("has sixteen tangents, each touching the circle where its byte says", () => {
+    const tangents = sealTangents(copy.fingerprint);
+    expect(tangents).toHaveLength(16);
+    for (const { dot, from, to } of tangents) {
+      expect(Math.hypot(dot[0] - 60, dot[1] - 60)).toBeCloseTo(25, 10);
+      const along = [to[0] - from[0], to[1] - from[1]];
+      expect(along[0] * (dot[0] - 60) + along[1] * (dot[1] - 60)).toBeCloseTo(0, 9);
+      expect(Math.hypot(...along)).toBeGreaterThanOrEqual(16 - 1e-9);
+    }
+  });
+
+  it("is another figure when one digit changes", () => {
+    const other = `${copy.fingerprint[0] === "0" ? "1" : "0"}${copy.fingerprint.slice(1)}`;
+    expect(sealTangents(other)[0]).not.toEqual(sealTangents(copy.fingerprint)[0]);
+    expect(sealTangents(other).slice(1)).toEqual(sealTangents(copy.fingerprint).slice(1));
+  });
+});
