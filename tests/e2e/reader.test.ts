@@ -1,0 +1,133 @@
+import type { Browser, Locator, Page } from "playwright-core";
+import { afterAll, beforeAll, expect, it } from "vitest";
+import * as Y from "yjs";
+import { answerWith, presenceOf, updateOf } from "../../server/sync/messages.ts";
+import {
+  bandOf,
+  documentInFile,
+  eventually,
+  openText,
+  savedState,
+  sourceInFile,
+  textIn,
+  typeAt,
+  wordsOf,
+} from "./editing.ts";
+import { demoStudyId, ILSE, openBrowser, PETRA, Product, signIn } from "./support.ts";
+
+const CELL = "survey";
+
+let product: Product;
+let browser: Browser;
+let studyId: string;
+let ilse: Page;
+let petra: Page;
+let ilseText: Locator;
+let petraText: Locator;
+
+const file = () => sourceInFile(product.database, studyId, CELL);
+const isSaved = (page: Page) =>
+  eventually(
+    () => wordsOf(savedState(page)),
+    (words) => /^Saved/.test(words),
+    "saved",
+  );
+
+beforeAll(async () => {
+  product = await Product.start();
+  browser = await openBrowser();
+  ilse = await signIn(browser, product, ILSE);
+  petra = await signIn(browser, product, PETRA);
+  studyId = await demoStudyId(ilse);
+  for (const page of [ilse, petra]) await page.goto(`/studies/${studyId}`);
+  [ilseText, petraText] = [await openText(ilse, CELL), await openText(petra, CELL)];
+});
+
+afterAll(async () => {
+  await browser?.close();
+  await product?.remove();
+});
+
+it("a reader sees edits and carets as they come, and the finding", async () => {
+  await typeAt("start", ilseText, "# seen while it is written: ");
+  await eventually(
+    () => textIn(petraText),
+    (text) => text.startsWith("# seen while it is written: "),
+    "the edit",
+  );
+  await eventually(
+    () => petraText.locator(".cm-ySelectionInfo").allTextContents(),
+    (flags) => flags.includes("Ilse"),
+    "her caret",
+  );
+  await eventually(
+    () => wordsOf(bandOf(petra, CELL).locator(".recto")),
+    (words) => words.includes("Current"),
+    "the finding",
+  );
+  const here = () => wordsOf(ilse.getByRole("list", { name: "People here" }));
+  await eventually(here, (words) => /Petra Vance.* reading/.test(words), "the reader is named");
+});
+
+it("a reader's page offers nothing to write with", async () => {
+  const before = file();
+  expect(await petraText.getAttribute("contenteditable")).toBe("false");
+  await petraText.click();
+  await petra.keyboard.type("scribble");
+  expect(await petra.getByRole("heading", { name: "Add a cell" }).count()).toBe(0);
+  expect(await wordsOf(savedState(petra))).toBe("Reading along");
+  await typeAt("end", ilseText, "# goes on");
+  await eventually(
+    () => textIn(petraText),
+    (text) => text.endsWith("# goes on"),
+    "the edit",
+  );
+  expect(await textIn(petraText)).not.toContain("scribble");
+  await isSaved(ilse);
+  expect(file()).toBe(`${before}# goes on`);
+});
+
+it("what a reader's browser sends by a socket of its own changes nothing for anyone", async () => {
+  await isSaved(ilse);
+  const [before, shown] = [file(), await textIn(ilseText)];
+  const forged = documentInFile(product.database, studyId);
+  for (const cell of forged.getMap<Y.Map<unknown>>("cells").values()) {
+    (cell.get("source") as Y.Text).insert(0, "forged ");
+    cell.set("name", "forged");
+  }
+  const update = Y.encodeStateAsUpdate(forged);
+  const presence = presenceOf(new Uint8Array([1, 5, 9, 2, 123, 125]));
+  const messages = [updateOf(update), answerWith(update), presence].map((message) => [...message]);
+  const end = await petra.evaluate(
+    ([id, bytes]) =>
+      new Promise<string>((done) => {
+        const socket = new WebSocket(`${window.location.origin.replace("http", "ws")}/sync/${id}`);
+        socket.binaryType = "arraybuffer";
+        let answered = 0;
+        socket.onopen = () => {
+          for (const message of bytes) socket.send(new Uint8Array(message));
+          // A question at the end: once it is answered, all before it has been taken.
+          socket.send(new Uint8Array([0, 0, 1, 0]));
+        };
+        socket.onmessage = ({ data }) => {
+          const [type, kind] = new Uint8Array(data as ArrayBuffer);
+          if (type === 0 && kind === 0) answered = -1_000;
+          if (type === 0 && kind === 1) done(answered < 0 ? "asked" : "answered");
+        };
+        socket.onclose = ({ code }) => done(`closed ${code}`);
+      }),
+    [studyId, messages] as const,
+  );
+  expect(end).toBe("answered");
+  await typeAt("end", ilseText, ".");
+  await isSaved(ilse);
+  expect(file()).toBe(`${before}.`);
+  expect(await textIn(ilseText)).toBe(`${shown}.`);
+  expect(await textIn(petraText)).not.toContain("forged");
+});
+
+it("the interface over HTTP refuses a reader's changes", async () => {
+  const headers = { origin: product.origin };
+  const answer = await petra.request.patch(`/api/studies/${studyId}`, { data: { title: "Mine" }, headers });
+  expect(answer.status()).toBe(403);
+});
