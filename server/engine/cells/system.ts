@@ -53,12 +53,11 @@ const MOMENTS = new WeakMap<PreparedData, Map<string, Moments>>();
 function momentsOf(data: PreparedData, request: MomentsRequest, control: RunControl): Moments {
   const kept = MOMENTS.get(data) ?? new Map<string, Moments>();
   MOMENTS.set(data, kept);
-  const known = kept.get(request.key);
-  if (known) return known;
-  control.progress({ step: "accumulating moments" });
-  const moments = accumulateMoments(data, request, control);
+  const moments = kept.get(request.key) ?? accumulateMoments(data, request, control);
   kept.set(request.key, moments);
-  return moments;
+  // An object of its own for each run: what an estimation keeps with its moments would let the last digits of
+  // the next one's tests depend on which came first.
+  return { ...moments };
 }
 
 const CURVE_POINTS = 25;

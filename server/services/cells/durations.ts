@@ -9,7 +9,13 @@ export interface Work {
 }
 
 /** Until an estimation has been timed here: products a millisecond on an ordinary machine, on the slow side. */
-const FIRST_SPEED = 150_000;
+const FIRST_SPEED = 600_000;
+/** Shorter ones say more about a program still warming up than about its speed. */
+const SHORTEST_TIMED_MS = 200;
+/** What checking a row costs for each pair of goods, in products of terms. */
+const CHECK_COST = 50;
+/** Passes over coefficients and terms that the fit, its covariance and its tests come to together. */
+const PASSES = 40;
 const SHORTEST_MS = 100;
 /** How much the latest estimation counts against those before it. */
 const NEWEST = 0.5;
@@ -22,9 +28,9 @@ export class Durations {
     return Math.max(SHORTEST_MS, Math.round(amountOf(specification, work) / this.#speed));
   }
 
-  /** Remembers how long a system took. Very short ones say more about the machine's mood than its speed. */
+  /** Remembers how long a system took. */
   learn(specification: CellSpecification, work: Work, tookMs: number): void {
-    if (specification.kind !== "system" || tookMs < 20) return;
+    if (specification.kind !== "system" || tookMs < SHORTEST_TIMED_MS) return;
     const speed = amountOf(specification, work) / tookMs;
     this.#speed = this.#speed === FIRST_SPEED ? speed : NEWEST * speed + (1 - NEWEST) * this.#speed;
   }
@@ -36,6 +42,5 @@ function amountOf({ form, demographics }: SystemSpecification, { rows, goods }: 
   const size = { goods, demographics: demographics.length, alpha0: 0 };
   const terms = system.moments.terms(size).length + goods;
   const coefficients = system.layout(size).length;
-  const overRows = (rows * terms * terms) / 2 + rows * goods ** 3 * 4;
-  return overRows + 40 * coefficients ** 2 * terms;
+  return rows * (terms ** 2 / 2 + CHECK_COST * goods ** 2) + PASSES * coefficients ** 2 * terms;
 }
