@@ -3,9 +3,12 @@ import { type Config, readConfig } from "./config.ts";
 
 /** The process: reads the environment, listens, says where, and stops when told to. */
 const PATIENCE_MS = 10_000;
+const ECHO_MS = 1_000;
 
 // Microdata: what is written here is for the account that runs the program, and for no other.
 process.umask(0o077);
+
+let stoppingSince: number | undefined;
 
 const say = (line: string) => console.log(line);
 
@@ -14,7 +17,7 @@ try {
   const running = await assemble(config, say);
   await listen(running.server, config);
   announce(config, running.installation.demo);
-  for (const signal of ["SIGINT", "SIGTERM"] as const) process.once(signal, () => void stop(running.close));
+  for (const signal of ["SIGINT", "SIGTERM"] as const) process.on(signal, () => stop(running.close));
 } catch (error) {
   console.error(error instanceof Error ? error.message : error);
   process.exit(1);
@@ -37,9 +40,20 @@ function announce({ url }: Config, demo: readonly { email: string; passphrase: s
   for (const { email, role } of demo) say(`  ${email} (${role})`);
 }
 
-async function stop(close: () => Promise<void>): Promise<void> {
+/** The second signal of an impatient hand ends the process at once; one that only echoes the first does not. */
+function stop(close: () => Promise<void>): void {
+  if (stoppingSince !== undefined) {
+    if (Date.now() - stoppingSince > ECHO_MS) process.exit(1);
+    return;
+  }
+  stoppingSince = Date.now();
   say("Stopping.");
   setTimeout(() => process.exit(1), PATIENCE_MS).unref();
-  await close();
-  process.exit(0);
+  close().then(
+    () => process.exit(0),
+    (error: unknown) => {
+      console.error(error);
+      process.exit(1);
+    },
+  );
 }
