@@ -1,4 +1,3 @@
-import type { Finding } from "../schemas/cell.ts";
 import type { DataFinding } from "../schemas/data.ts";
 import type { SlutskyFinding } from "../schemas/slutsky.ts";
 import type { SystemFinding } from "../schemas/system.ts";
@@ -6,12 +5,6 @@ import { printCount, printQuantity, printSize } from "./numbers.ts";
 import { capital, countedRows, listed } from "./phrases.ts";
 import { withArticle } from "./slutsky-matrix.ts";
 import { isRejected, testOf } from "./verdicts.ts";
-
-/** A finding in one sentence or two, with its numbers and its point. A law that is violated is told here. */
-export function findingSentence(finding: Finding): string {
-  if (finding.kind === "data") return dataSentence(finding);
-  return finding.kind === "system" ? systemSentence(finding) : slutskySentence(finding);
-}
 
 const LEFT_OUT: Readonly<Record<DataFinding["accounting"]["leftOut"][number]["reason"], readonly [string, string]>> = {
   keep: ["falls to keep", "fall to keep"],
