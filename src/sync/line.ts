@@ -52,8 +52,12 @@ export function openLine(needs: LineNeeds): WebsocketProvider {
     snapshot.set({ connection: { state: "connected" }, loaded: true });
   });
   provider.on("connection-close", () => {
-    if (snapshot.get().connection.state === "working alone") return;
-    snapshot.set({ connection: { state: "working alone", since: needs.now(), editsKept: ledger.unstored } });
+    const { connection, you } = snapshot.get();
+    if (connection.state === "working alone") return;
+    snapshot.set({
+      connection: { state: "working alone", since: needs.now(), editsKept: ledger.unstored },
+      people: you === undefined ? [] : [you],
+    });
   });
   provider.on("closed", ({ code }) => {
     snapshot.set({ connection: { state: "refused", code, sentence: sentenceFor(code) } });

@@ -117,6 +117,8 @@ describe("two people in one study", () => {
     ilse.sourceOf("survey")!.insert(18, " # by Ilse");
     expect(tomas.snapshot().connection).toEqual({ state: "working alone", since: 1_700_000_000_000, editsKept: 2 });
     expect(tomas.snapshot().stored).toEqual({ everything: false, unstored: 2 });
+    expect(tomas.snapshot().people.map(({ id }) => id)).toEqual(["tomas"]);
+    expect(tomas.snapshot().whereabouts).toEqual([]);
     server = await startSyncServer(open, { port });
     const merged = " by Tomás\nupload: drinks.csv # by Ilse\n";
     for (const one of [ilse, tomas]) {
