@@ -46,3 +46,28 @@ describe.each(["reflected", "summed"] as const)("moments (%s) against rows", (re
     expect(largestDifference(finding.residualCovariance.flat(), slow.residualCovariance.flat())).toBeLessThan(1e-10);
   });
 });
+
+describe.each(["reflected", "summed"] as const)("prices that only a few villages know (%s)", (reduction) => {
+  // Fewer price vectors than products of prices: many terms depend on others, the coefficients do not.
+  it("AIDS agrees with dense least squares on its rows", () => {
+    const random = seededRandom(23);
+    const villages = Array.from({ length: 9 }, () => Array.from({ length: 4 }, () => 0.3 * random.normal()));
+    const logPrices = Array.from({ length: 4 }, (_, i) =>
+      Float64Array.from({ length: 180 }, (_, t) => villages[t % 9][i]),
+    );
+    const impose: RestrictionName[] = ["homogeneity", "symmetry"];
+    const { data, size } = simulateShares({
+      form: "aids",
+      goods: 4,
+      rows: 180,
+      random,
+      noise: 0.02,
+      impose,
+      logPrices,
+    });
+    const finding = estimated(data, { form: "aids", impose }, reduction);
+    const slow = rowByRow("aids", impose, data, size);
+    expect(largestDifference(finding.fitted.theta, slow.theta)).toBeLessThan(1e-10);
+    expect(largestDifference([finding.logLikelihood], [slow.logLikelihood])).toBeLessThan(1e-10);
+  });
+});

@@ -55,10 +55,3 @@ export function crossProduct(left: Columns, right: Columns): Columns {
   }
   return product;
 }
-
-/** As rows of numbers, for everything outside the estimators. */
-export function toRows(matrix: Columns): number[][] {
-  return Array.from({ length: matrix.rows }, (_, i) =>
-    Array.from({ length: matrix.columns }, (_, j) => matrix.values[j * matrix.rows + i]),
-  );
-}

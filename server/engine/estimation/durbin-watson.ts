@@ -9,8 +9,9 @@ export function durbinWatson(
   time: Float64Array,
   coefficients: readonly (readonly number[])[],
 ): number[] | undefined {
+  const sorted = time.slice().sort();
+  if (sorted.some((value, place) => place > 0 && !(value > sorted[place - 1]))) return undefined;
   const order = Array.from(time.keys()).sort((one, two) => time[one] - time[two]);
-  if (order.some((row, place) => place > 0 && !(time[row] > time[order[place - 1]]))) return undefined;
   const squares = new Float64Array(coefficients.length);
   const changes = new Float64Array(coefficients.length);
   const last = new Float64Array(coefficients.length);

@@ -1,4 +1,4 @@
 export { accumulateMoments } from "./accumulate.ts";
-export { type Estimate, estimateSystem } from "./estimate.ts";
+export { estimateSystem } from "./estimate.ts";
 export type { Moments } from "./moments.ts";
 export { type MomentsRequest, momentsRequest } from "./request.ts";

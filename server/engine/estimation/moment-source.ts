@@ -22,9 +22,3 @@ export type TermPair = readonly [left: number, right: number];
 export function ordered(left: number, right: number): TermPair {
   return left <= right ? [left, right] : [right, left];
 }
-
-/** The label of a term from those of its columns. */
-export function termLabel(term: TermPair, columnLabels: readonly string[]): string {
-  const names = term.filter((place) => place > 0).map((place) => columnLabels[place - 1]);
-  return names.length === 0 ? "the constant" : names.join(" × ");
-}

@@ -1,7 +1,7 @@
 import type { RunControl } from "../run.ts";
 import { type Columns, columnOf, multiply, zeros } from "./columns.ts";
 import { whiteningOf } from "./find-whitening.ts";
-import { type MomentSource, ordered, type TermPair, termLabel } from "./moment-source.ts";
+import { type MomentSource, ordered, type TermPair } from "./moment-source.ts";
 import { reflectedFactor, summedFactor } from "./row-factors.ts";
 import type { DependentColumn, Whitening } from "./whitening.ts";
 
@@ -15,7 +15,6 @@ export interface Moments {
   /** T. */
   readonly rows: number;
   readonly weighted: boolean;
-  readonly termLabels: readonly string[];
   readonly responseLabels: readonly string[];
   /** r × |Z|. */
   readonly terms: Columns;
@@ -26,7 +25,7 @@ export interface Moments {
 }
 
 /** Up to this many rows × columns² the rows themselves are reduced by reflections. */
-const REFLECTED_WORK = 1e8;
+const REFLECTED_WORK = 3e7;
 
 /** How rows become a factor: both give the same to rounding. */
 export type Reduction = "reflected" | "summed";
@@ -55,7 +54,6 @@ export function reduceRows(source: MomentSource, key: string, control: RunContro
     key,
     rows: source.rows,
     weighted: source.weights !== undefined,
-    termLabels: source.terms.map((term) => termLabel(term, source.columnLabels)),
     responseLabels: source.responseLabels,
     terms: multiply(parts.left, termMap(source.terms, whitened, whitening)),
     responses: shiftBack(parts.right, columnOf(parts.left, 0), whitening.shift.subarray(base)),

@@ -55,7 +55,15 @@ function whiten(columns: readonly Float64Array[], place: number, rows: number, {
     target.fill(0);
     return;
   }
-  for (let i = 0; i < place; i++) {
+  // Four columns at a time: the target is read and written a quarter as often.
+  let i = 0;
+  for (; i + 3 < place; i += 4) {
+    const [f0, f1, f2, f3] = triangle.values.subarray(offset + i, offset + i + 4);
+    if (f0 === 0 && f1 === 0 && f2 === 0 && f3 === 0) continue;
+    const [c0, c1, c2, c3] = columns.slice(i, i + 4);
+    for (let t = 0; t < rows; t++) target[t] -= f0 * c0[t] + f1 * c1[t] + f2 * c2[t] + f3 * c3[t];
+  }
+  for (; i < place; i++) {
     const factor = triangle.values[offset + i];
     if (factor === 0) continue;
     const earlier = columns[i];
