@@ -26,8 +26,3 @@ export function useStudyConnection(
 export function useStudyPart<K extends keyof StudySnapshot>(study: StudyConnection, part: K): StudySnapshot[K] {
   return useSyncExternalStore(study.subscribe, () => study.snapshot()[part]);
 }
-
-/** One cell; undefined when it has been removed. */
-export function useCell(study: StudyConnection, cellId: string): StudySnapshot["cells"][number] | undefined {
-  return useSyncExternalStore(study.subscribe, () => study.snapshot().cells.find(({ id }) => id === cellId));
-}

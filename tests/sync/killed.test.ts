@@ -93,6 +93,7 @@ it(
     // From two planes of Unicode without surrogate halves to split: Han and Hangul.
     const [ilse, tomas] = [new Typist("ilse", 0x4e00, chance), new Typist("tomas", 0xac00, chance)];
     let stored = 0;
+    let underway = 0;
     for (let round = 0; round < KILLS; round++) {
       await start();
       await until(() => [ilse, tomas].every(({ page }) => page.snapshot().connection.state === "connected"), "alone");
@@ -101,12 +102,16 @@ it(
         (chance.uniform() < 0.5 ? ilse : tomas).type();
         await new Promise((later) => setTimeout(later, chance.integer(6)));
       }
+      // A burst, so that the end finds edits at every stage of their way.
+      for (let edit = 0; edit < 40; edit++) (edit % 2 === 0 ? ilse : tomas).type();
+      await new Promise((later) => setTimeout(later, chance.integer(12)));
       const killed = kill();
-      (chance.uniform() < 0.5 ? ilse : tomas).type();
+      ilse.type();
       await killed;
       const file = sourceInFile();
       for (const typist of [ilse, tomas]) expect(typist.untrue(file), `kill ${round + 1}`).toEqual([]);
       stored = ilse.edits + tomas.edits - unstored(ilse, tomas);
+      underway += unstored(ilse, tomas);
     }
     await start();
     await until(
@@ -117,7 +122,8 @@ it(
     await until(() => texts()[0] === texts()[1], "the pages differ");
     await kill();
     expect(sourceInFile()).toBe(texts()[0]);
-    console.info(`${KILLS} kills, ${ilse.edits + tomas.edits} edits, ${stored} called stored before the last kill`);
+    console.info(`${KILLS} kills, ${ilse.edits + tomas.edits} edits, ${underway} under way when the server was killed`);
+    expect(underway).toBeGreaterThan(KILLS);
     expect(stored).toBeGreaterThan(KILLS);
     await Promise.all([ilse.page.close(), tomas.page.close()]);
   },
