@@ -21,6 +21,9 @@ interface Context {
   readonly uploads: readonly UploadShape[];
 }
 
+/** With a wrong upload everything is unknown: so many are told at once, and looking for the nearest takes time. */
+const MOST_TOLD = 20;
+
 /** Columns and goods a specification names that are not there, each with the nearest that is. */
 export function columnProblems(context: Context): Problem[] {
   const { specification } = context;
@@ -64,6 +67,7 @@ function dataProblems(specification: DataSpecification, { places, uploads }: Con
   }
   return used
     .filter(([, column]) => !known.has(column))
+    .slice(0, MOST_TOLD)
     .map(([path, column]) => tell(path, ...noColumn(upload.name, column, names)));
 }
 
@@ -82,8 +86,9 @@ function systemProblems(specification: SystemSpecification, context: Context): P
   if (upload) {
     const numeric = upload.columns.filter(({ type }) => type === "number").map(({ name }) => name);
     const names = [...numeric, ...Object.keys(data.derive ?? {})];
+    const known = new Set(names);
     specification.demographics.forEach((column, i) => {
-      if (names.includes(column)) return;
+      if (known.has(column) || problems.length >= MOST_TOLD) return;
       const isText = upload.columns.some(({ name, type }) => name === column && type === "text");
       const text = `${column} of ${specification.data} is a text column; demographics need numbers: derive one, such as ${column} == "…".`;
       problems.push(
@@ -113,8 +118,10 @@ function slutskyProblems(specification: SlutskySpecification, context: Context):
   if (system?.kind !== "system" || data?.kind !== "data") return [];
   const goods = Object.keys(data.goods);
   const priced = Object.keys(at.prices);
+  const known = new Set(goods);
   const problems: Problem[] = priced
-    .filter((good) => !goods.includes(good))
+    .filter((good) => !known.has(good))
+    .slice(0, MOST_TOLD)
     .map((good) => {
       const [sentence, nearest] = noGood(
         system.data,

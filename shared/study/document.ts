@@ -15,7 +15,7 @@ import { NOWHERE } from "./cell-source.ts";
 import { groupThousands } from "./words.ts";
 
 /** The longest source a cell, or a study file, may have, in characters. */
-export const LONGEST_SOURCE = 65_536;
+export const LONGEST_SOURCE = 32_768;
 export const LONGEST_STUDY_FILE = 1_048_576;
 
 /** A YAML text read: its value as plain objects, and where everything stands. */

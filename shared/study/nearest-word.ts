@@ -22,6 +22,9 @@ export function editDistance(left: string, right: string): number {
   return last[right.length];
 }
 
+/** Longer ones are not mistypings of anything, and comparing them costs time. */
+const LONGEST_WORD = 80;
+
 /** Words differing in case, spaces, hyphens and underscores only are the same word mistyped. */
 const plain = (word: string): string =>
   word
@@ -35,7 +38,7 @@ const plain = (word: string): string =>
  * of exactly one candidate. The earlier candidate wins a tie.
  */
 export function nearestWord(word: string, candidates: Iterable<string>): string | undefined {
-  const written = plain(word.slice(0, 200));
+  const written = plain(word.slice(0, LONGEST_WORD));
   if (written === "") return undefined;
   const words = [...candidates].map((candidate) => ({ candidate, plain: plain(candidate) }));
   let nearest: string | undefined;
