@@ -113,7 +113,7 @@ describe("resolveCells", () => {
       [{ ...uploads[0], columns: many }],
     );
     expect(cell.problems).toHaveLength(20);
-    expect(performance.now() - started).toBeLessThan(2_000);
+    expect(performance.now() - started).toBeLessThan(5_000);
   });
 
   it("marks a wrong reference at its place in the source", () => {
