@@ -2,6 +2,7 @@ import type { ReactNode } from "react";
 import { Mark } from "../components/mark.tsx";
 import { useInstallation } from "../features/accounts/api/get-installation.ts";
 import { IndifferenceDrawing } from "../features/accounts/indifference-drawing.tsx";
+import { installationInWords } from "./installation-words.ts";
 import { ThemeWords } from "./theme-words.tsx";
 
 /** The door: the drawing on the source page, the form on the finding page. */
@@ -26,7 +27,7 @@ export function Door({ title, children }: { title: string; children: ReactNode }
           </p>
         </div>
         <footer className="type-small mt-auto flex w-full max-w-[27rem] flex-wrap items-baseline justify-between gap-x-6 gap-y-2 pt-12 text-ink2">
-          <span>{installation ? `Installation of ${installation.name}.` : ""}</span>
+          <span>{installation && installationInWords(installation.name)}</span>
           <ThemeWords />
         </footer>
       </main>

@@ -52,7 +52,7 @@ export function StateShape({ state }: { state: ShownState }) {
       viewBox="0 0 11 11"
       width="11"
       height="11"
-      className="shrink-0 overflow-visible"
+      className="shrink-0 translate-y-[0.5px] overflow-visible"
       data-state={state}
     >
       <StateFigure state={state} />
@@ -63,7 +63,7 @@ export function StateShape({ state }: { state: ShownState }) {
 /** Shape and words: "4 current". */
 export function StateWords({ state, words }: { state: ShownState; words: string }) {
   return (
-    <span className="inline-flex items-center gap-2 font-semibold" style={{ color: STATE_COLOURS[state] }}>
+    <span className="inline-flex items-baseline gap-2 font-semibold" style={{ color: STATE_COLOURS[state] }}>
       <StateShape state={state} />
       {words}
     </span>

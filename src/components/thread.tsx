@@ -47,7 +47,7 @@ export function Thread({ stops, width, height, focused, addressOf, onFollow, onM
               dot,
               yOf.get(arc.from.id) ?? 0,
               yOf.get(arc.reader.id) ?? 0,
-              reachOf(arc, arcs, dot - 4),
+              reachOf(arc, arcs, dot - 7),
             );
             const lit = touches(arc, focused);
             return (

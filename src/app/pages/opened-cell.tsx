@@ -7,7 +7,7 @@ import { pages } from "../../lib/paths.ts";
 import { useStudyPart } from "../../sync/index.ts";
 import { BandSource, type SourcePage } from "../workspace/band-source.tsx";
 import { type OpenStudy, useOpenStudy } from "../workspace/open-study.ts";
-import { OpenedFinding } from "../workspace/opened-finding.tsx";
+import { FindingAside, OpenedFinding } from "../workspace/opened-finding.tsx";
 import { ReadByThread } from "../workspace/read-by-thread.tsx";
 import { StudyBar, type StudyDialog } from "../workspace/study-bar.tsx";
 import { StudyDialogs } from "../workspace/study-dialogs.tsx";
@@ -46,7 +46,7 @@ export default function OpenedCellPage() {
       <main>
         {standing ? (
           <div className="desk">
-            <div className="ledger opened">
+            <div className={`ledger opened opened-${standing.kind ?? "none"}`}>
               <div className="band opened-band">
                 <ReadByThread studyId={study.id} standing={standing} cells={cells} />
                 <div className="verso">
@@ -75,6 +75,7 @@ export default function OpenedCellPage() {
                     typing={typing.length > 0 && <TypingHere people={typing} className="mt-4 block" />}
                     title
                   />
+                  <FindingAside studyId={study.id} fingerprint={standing.fingerprint} />
                 </div>
                 <div className="recto">
                   <OpenedFinding {...open} standing={standing} cells={cells} uploads={uploads} />

@@ -13,6 +13,7 @@ import { StudyList } from "../../features/studies/study-list.tsx";
 import { sentenceOf } from "../../lib/api.ts";
 import { usePageTitle } from "../../lib/page-title.ts";
 import { pages } from "../../lib/paths.ts";
+import { installationInWords } from "../installation-words.ts";
 import { SettingsDialog } from "../settings-dialog.tsx";
 import { useLeave } from "../use-leave.ts";
 
@@ -37,9 +38,9 @@ export default function StudiesPage() {
       <main className="studies">
         <div className="studies-left">
           <h1 className="type-display">Studies</h1>
-          <p className="type-finding pt-2 pb-9">{installation && `The installation of ${installation.name}.`}</p>
+          <p className="type-finding pt-2 pb-5 lg:pb-9">{installation && installationInWords(installation.name)}</p>
           <StudyFinder studies={studies ?? []} filter={filter} find={find} onFilter={setFilter} onFind={setFind} />
-          <div className="pt-9">
+          <div className="pt-6 lg:pt-9">
             <Button filled onClick={() => setDialog("new study")}>
               New study
             </Button>

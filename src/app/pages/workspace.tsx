@@ -1,4 +1,6 @@
 import { useState } from "react";
+import { Fault } from "../../components/field.tsx";
+import { sentenceOf } from "../../lib/api.ts";
 import { usePageTitle } from "../../lib/page-title.ts";
 import { pages } from "../../lib/paths.ts";
 import { BringUpToDate } from "../workspace/bring-up-to-date.tsx";
@@ -14,7 +16,7 @@ const CRUMBS = [{ to: pages.studies, words: "Studies" }];
 /** A study: every cell with its source and its finding. */
 export default function WorkspacePage() {
   const open = useOpenStudy();
-  const { standings, cells, uploads, isKnown } = useStandings(open);
+  const { standings, cells, uploads, error, isKnown } = useStandings(open);
   const [dialog, setDialog] = useState<StudyDialog>();
   const oneColumn = useOneColumn();
   usePageTitle(open.study.title);
@@ -25,6 +27,11 @@ export default function WorkspacePage() {
         {!oneColumn && bring}
       </StudyBar>
       <main aria-busy={!isKnown}>
+        {error && (
+          <div className="px-6 pb-3">
+            <Fault>{sentenceOf(error)}</Fault>
+          </div>
+        )}
         <Ledger
           {...open}
           standings={standings}

@@ -24,7 +24,8 @@ export function CellName({ cell, cells, headingId, renaming, onRename, onDone, t
           <NameField cell={cell} cells={cells} onRename={onRename} onDone={onDone} />
         ) : (
           <>
-            {cell.name || "without a name"} <span className="type-kind font-normal tracking-normal">{cell.kind}</span>
+            {cell.name || "without a name"}{" "}
+            <span className="type-kind ml-0.5 font-normal tracking-normal">{cell.kind}</span>
           </>
         )}
       </Heading>

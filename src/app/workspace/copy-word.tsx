@@ -15,13 +15,13 @@ export function CopyWord({ table, name }: { table: LabelledTable; name: string }
     }
   };
   return (
-    <>
-      <span role="status" className="text-ink2">
+    <span>
+      <span role="status" className={said ? "mr-3 text-ink2" : ""}>
         {said}
       </span>
       <Word onClick={() => void copy()}>
         Copy table<span className="sr-only"> of {name}</span>
       </Word>
-    </>
+    </span>
   );
 }

@@ -69,6 +69,10 @@ export function Ledger(props: LedgerProps) {
   return (
     <div className="desk">
       <div className="ledger" ref={ledger}>
+        <div className="pages-end" aria-hidden="true">
+          <div className="verso" />
+          <div className="recto" />
+        </div>
         <HeadBand study={study} standings={standings} readOnly={readOnly} action={headAction} />
         {removal?.after === null && removed}
         {standings.map((standing, place) => (
@@ -99,10 +103,6 @@ export function Ledger(props: LedgerProps) {
           </Fragment>
         ))}
         {!readOnly && <AddCellBand onAdd={(kind) => setTimeout(focusBand, 60, actions.add(kind))} />}
-        <div className="band pages-end" aria-hidden="true">
-          <div className="verso" />
-          <div className="recto" />
-        </div>
         {places.width > 0 && (
           <Thread
             stops={stops}

@@ -4,7 +4,7 @@ import { Fault } from "../../components/field.tsx";
 import { ProgressLine } from "../../features/estimation/progress-line.tsx";
 import { useFinding } from "../../features/findings/api/get-finding.ts";
 import { sentenceOf } from "../../lib/api.ts";
-import { FindingOpen } from "./finding-view.tsx";
+import { FindingOpen, viewOf } from "./finding-view.tsx";
 import type { OpenStudy } from "./open-study.ts";
 import { ProblemList } from "./problem-list.tsx";
 import type { Standing } from "./standing.ts";
@@ -42,4 +42,15 @@ export function OpenedFinding({ study, connection, readOnly, standing, cells, up
       )}
     </>
   );
+}
+
+/** What a kind says of its finding on the source page: how each check is made. */
+export function FindingAside({ studyId, fingerprint }: { studyId: string; fingerprint: string | undefined }) {
+  const { data } = useFinding(studyId, fingerprint);
+  const Aside = data && viewOf(data.finding.kind).Aside;
+  return Aside ? (
+    <div className="mt-6">
+      <Aside finding={data.finding} />
+    </div>
+  ) : null;
 }

@@ -38,7 +38,8 @@ export function ReadByThread({ studyId, standing, cells }: ReadByThreadProps) {
         fill="none"
       >
         <path d="M-18 36H0" stroke="var(--ink)" strokeWidth="1.15" />
-        <path d="M-18 36C-44 36 -56 38 -56 74V120" stroke="var(--ink2)" strokeWidth="1.15" />
+        {reads.length > 0 && <path d="M-43 0V14C-43 30 -38 36 -18 36" stroke="var(--ink2)" strokeWidth="1.15" />}
+        {readBy.length > 0 && <path d="M-18 36C-44 36 -56 38 -56 74V120" stroke="var(--ink2)" strokeWidth="1.15" />}
         <g transform="translate(-23.5 30.5)">
           <StateFigure state={state} />
         </g>
@@ -51,7 +52,7 @@ export function ReadByThread({ studyId, standing, cells }: ReadByThreadProps) {
       )}
       {readBy.length > 0 && (
         <>
-          <p className={reads.length > 0 ? "pt-3" : ""}>read by</p>
+          <p className={`whitespace-nowrap ${reads.length > 0 ? "pt-3" : ""}`}>read by</p>
           <ul>{readBy.map(link)}</ul>
         </>
       )}

@@ -4,6 +4,7 @@ import type { CellStatus, Progress, StudyStatus } from "../../../shared/schemas/
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { describeChanges } from "../../../shared/study/changes.ts";
 import type { ResolvedCell } from "../../../shared/study/resolve.ts";
+import { lacksUpload } from "./cell-words.ts";
 
 /** A cell as its band shows it: the document as it is here, with what the server has said of it. */
 export interface Standing {
@@ -25,39 +26,43 @@ export interface Standing {
 
 /**
  * Where every cell stands, in order. The document here may be ahead of the server: a finding is shown only
- * while the source, and all it reads, still asks what the finding answers.
+ * while its fingerprint is that of the question as it stands here.
  */
 export function standingsOf(
   cells: readonly CellSource[],
   resolved: readonly ResolvedCell[],
+  fingerprints: ReadonlyMap<string, string>,
   status: StudyStatus | undefined,
 ): Standing[] {
   const statuses = new Map(status?.cells.map((one) => [one.cellId, one]));
-  const byName = new Map<string, ResolvedCell>();
-  for (const one of resolved) if (!byName.has(one.name)) byName.set(one.name, one);
-  const ahead = aheadOf(resolved, statuses, byName);
+  const isAhead = (own: ResolvedCell) => {
+    const told = statuses.get(own.id);
+    return told?.state === "current" && told.fingerprint !== fingerprints.get(own.id);
+  };
+  const ahead = new Set(resolved.filter(isAhead).map(({ name }) => name));
   return cells.flatMap((cell) => {
     const own = resolved.find(({ id }) => id === cell.id);
     if (!own) return [];
     const readBy = resolved.filter(({ reads }) => reads.includes(cell.name)).map(({ name }) => name);
     const common = { cell, kind: own.kind, reads: own.reads, readBy };
-    return [{ ...common, ...stands(own, statuses.get(cell.id), ahead.get(cell.id)) }];
+    return [{ ...common, ...stands(own, cell, statuses.get(cell.id), ahead) }];
   });
 }
 
-function stands(own: ResolvedCell, status: CellStatus | undefined, ahead: string | undefined) {
-  const kept = { ...(status?.last && { last: status.last }), ...(status && { status }) };
+function stands(own: ResolvedCell, cell: CellSource, status: CellStatus | undefined, ahead: ReadonlySet<string>) {
+  const kept = { ...(status?.last && { last: status.last }), ...(status && { status }), problems: [] };
+  if (lacksUpload(cell)) return { ...kept, state: "draft" as const, because: "waits for a file" };
   if (own.problems.length > 0) {
     const told = status?.state === "failed" ? status.because : undefined;
-    return { state: "failed" as const, because: told ?? "before estimation", problems: own.problems, ...kept };
+    return { ...kept, state: "failed" as const, because: told ?? "before estimation", problems: own.problems };
   }
-  if (!status) return { state: "draft" as const, problems: [], ...kept };
-  if (ahead !== undefined) return { state: "out of date" as const, because: ahead, problems: [], ...kept };
+  if (!status) return { ...kept, state: "draft" as const };
+  if (ahead.has(own.name)) return { ...kept, state: "out of date" as const, because: whyAhead(own, status, ahead) };
   const { state, because, problems, aboutMs, progress, fingerprint } = status;
   return {
+    ...kept,
     state,
     problems,
-    ...kept,
     ...(because !== undefined && { because }),
     ...(aboutMs !== undefined && { aboutMs }),
     ...(progress && { progress }),
@@ -65,32 +70,11 @@ function stands(own: ResolvedCell, status: CellStatus | undefined, ahead: string
   };
 }
 
-/** Cells the server calls current whose question has changed here since, and why; those that read them with them. */
-function aheadOf(
-  resolved: readonly ResolvedCell[],
-  statuses: ReadonlyMap<string, CellStatus>,
-  byName: ReadonlyMap<string, ResolvedCell>,
-): Map<string, string> {
-  const ahead = new Map<string, string>();
-  const seen = new Set<string>();
-  const look = (cell: ResolvedCell): string | undefined => {
-    if (seen.has(cell.id)) return ahead.get(cell.id);
-    seen.add(cell.id);
-    const status = statuses.get(cell.id);
-    if (status?.state !== "current") return undefined;
-    const changed =
-      (status.last && describeChanges(status.last.source, cell.source)) ??
-      cell.reads
-        .filter((name) => {
-          const read = byName.get(name);
-          return !read || read.problems.length > 0 || look(read) !== undefined;
-        })
-        .map((name) => `${name} changed`)[0];
-    if (changed !== undefined) ahead.set(cell.id, changed);
-    return changed;
-  };
-  for (const cell of resolved) look(cell);
-  return ahead;
+/** What has changed here and not reached the server yet. */
+function whyAhead(own: ResolvedCell, { last }: CellStatus, ahead: ReadonlySet<string>): string {
+  const above = own.reads.find((name) => ahead.has(name));
+  const changed = last && describeChanges(last.source, own.source);
+  return changed ?? (above ? `${above} changed` : "what it rests on changed; load the page again if this stays");
 }
 
 /** Those that wait to be asked for: how many, and about how long together. */

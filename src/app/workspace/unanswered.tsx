@@ -1,10 +1,12 @@
 import { useState } from "react";
+import { describeChanges } from "../../../shared/study/changes.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
 import { Button, Word } from "../../components/button.tsx";
 import { Fault } from "../../components/field.tsx";
 import { useStartEstimation } from "../../features/estimation/api/start-estimation.ts";
 import { sentenceOf } from "../../lib/api.ts";
 import { aboutInWords, whenInWords } from "../../lib/dates.ts";
+import { lacksUpload } from "./cell-words.ts";
 import { KeptFinding } from "./kept-finding.tsx";
 import type { Standing } from "./standing.ts";
 
@@ -32,13 +34,20 @@ export function Unanswered({ studyId, standing, onChange }: UnansweredProps) {
   const [looking, setLooking] = useState(false);
   const { cell, last, aboutMs } = standing;
   const called = calledLast(standing);
-  const own = cell.source === last?.source;
+  const own = last !== undefined && describeChanges(last.source, cell.source) === undefined;
+  const failed = standing.state === "failed";
   return (
     <div>
-      {last && (
+      {last && !failed && (
         <p className="type-finding max-w-[40rem]">
           No finding stands under this specification yet. The last one{called === "last" ? "" : `, ${called}`}, of{" "}
           {whenInWords(last.at)}, is kept under its own.
+        </p>
+      )}
+      {lacksUpload(cell) && (
+        <p className="type-finding max-w-[40rem]">
+          A file comes first: a row for each household or period, with what was paid and bought of each good, any two of
+          price, quantity and expenditure.
         </p>
       )}
       <div className="flex flex-wrap items-center gap-x-6 gap-y-2 pt-2">

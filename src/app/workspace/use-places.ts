@@ -28,7 +28,7 @@ export function usePlaces(ledger: RefObject<HTMLElement | null>, ids: readonly s
 
 function measured(root: HTMLElement): Places {
   const top = root.getBoundingClientRect();
-  const verso = root.querySelector(".verso")?.getBoundingClientRect();
+  const verso = root.querySelector(".band > .verso")?.getBoundingClientRect();
   const y = new Map<string, number>();
   for (const band of root.querySelectorAll("section.band")) {
     const name = band.querySelector("[data-stop]")?.getBoundingClientRect();

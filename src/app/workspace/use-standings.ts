@@ -1,5 +1,6 @@
 import { useQueryClient } from "@tanstack/react-query";
 import { useEffect, useMemo } from "react";
+import { fingerprintCells } from "../../../shared/study/fingerprints.ts";
 import { resolveCells } from "../../../shared/study/resolve.ts";
 import { useStatus } from "../../features/findings/api/get-status.ts";
 import { useUploads } from "../../features/uploads/api/list-uploads.ts";
@@ -14,14 +15,15 @@ export function useStandings({ study, connection }: Pick<OpenStudy, "study" | "c
   const cells = useStudyPart(connection, "cells");
   const told = useStudyPart(connection, "status");
   const { data: first } = useStatus(study.id);
-  const { data: uploads } = useUploads(study.id);
+  const { data: uploads, error } = useUploads(study.id);
   const status = told ?? first;
   useUploadsOfOthers(study.id, cells, uploads);
+  const resolved = useMemo(() => (uploads ? resolveCells(cells, uploads) : NONE), [cells, uploads]);
   const standings = useMemo(
-    () => standingsOf(cells, uploads ? resolveCells(cells, uploads) : resolveCells(cells, NONE), status),
-    [cells, uploads, status],
+    () => standingsOf(cells, resolved, fingerprintCells(resolved, uploads ?? NONE), status),
+    [cells, resolved, uploads, status],
   );
-  return { standings, cells, uploads: uploads ?? NONE, isKnown: uploads !== undefined && status !== undefined };
+  return { standings, cells, uploads: uploads ?? NONE, error, isKnown: uploads !== undefined && status !== undefined };
 }
 
 /** A cell that names an upload unknown here may name one a coauthor has just added. */

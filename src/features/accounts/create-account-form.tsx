@@ -23,7 +23,7 @@ export function CreateAccountForm({ onSignedIn }: { onSignedIn: () => void }) {
       />
       {signUp.isError && <Fault>{sentenceOf(signUp.error)}</Fault>}
       <div className="pt-1">
-        <Button type="submit" filled disabled={signUp.isPending}>
+        <Button type="submit" filled disabled={signUp.isPending} className="min-h-10.5!">
           {signUp.isPending ? "Creating the account" : "Create the account"}
         </Button>
       </div>

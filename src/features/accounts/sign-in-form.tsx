@@ -28,7 +28,7 @@ export function SignInForm({ onSignedIn }: { onSignedIn: () => void }) {
         />
         {signIn.isError && <Fault>{sentenceOf(signIn.error)}</Fault>}
         <div className="pt-1">
-          <Button type="submit" filled disabled={signIn.isPending} className="min-w-24">
+          <Button type="submit" filled disabled={signIn.isPending} className="min-h-10.5! min-w-24">
             {signIn.isPending ? "Signing in" : "Sign in"}
           </Button>
         </div>

@@ -32,7 +32,7 @@ export function SealedLink({ token, cellName, onAnother }: SealedLinkProps) {
           ref={field}
           readOnly
           aria-label="Link to the referee copy"
-          className="field type-source min-w-0 flex-1 basis-72"
+          className="field type-source min-w-0 flex-1 basis-72 text-[0.8125rem]"
           value={link}
           onFocus={(event) => event.target.select()}
         />

@@ -19,7 +19,9 @@ export function StudyEntry({ study, you }: { study: StudySummary; you: string })
           </Link>
         </h2>
         {study.lede && (
-          <p className="line-clamp-3 max-w-[34rem] font-serif text-[1.03125rem]/[1.4375rem] text-ink2">{study.lede}</p>
+          <p className="mt-1 line-clamp-3 max-w-[34rem] font-serif text-[1.03125rem]/[1.4375rem] text-ink2">
+            {study.lede}
+          </p>
         )}
         <p className="type-small flex flex-wrap gap-x-5 gap-y-1 pt-1.5">
           {stateCounts(states).map(({ state, words }) => (

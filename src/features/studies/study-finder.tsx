@@ -15,14 +15,14 @@ export function StudyFinder({ studies, filter, find, onFilter, onFind }: StudyFi
   const id = useId();
   return (
     <search>
-      <ul className="border-rule2 border-b">
+      <ul className="finder-filters border-rule2 border-b">
         {STUDY_FILTERS.map(({ key, words }) => (
           <li key={key} className="border-rule2 border-t">
             <button
               type="button"
               aria-pressed={filter === key}
               onClick={() => onFilter(key)}
-              className={`flex min-h-8.5 w-full items-center justify-between hover:text-accent ${filter === key ? "font-semibold" : ""}`}
+              className={`flex min-h-8.5 w-full items-center justify-between gap-2 hover:text-accent ${filter === key ? "font-semibold" : ""}`}
             >
               <span>{words}</span>
               <span className="tabular-nums">{shownStudies(studies, key, "").length}</span>
@@ -30,7 +30,7 @@ export function StudyFinder({ studies, filter, find, onFilter, onFind }: StudyFi
           </li>
         ))}
       </ul>
-      <label htmlFor={id} className="type-small block pt-8 text-ink2">
+      <label htmlFor={id} className="type-small block pt-6 text-ink2 lg:pt-8">
         Find
       </label>
       <input
