@@ -109,6 +109,14 @@ describe("estimators", () => {
     expect(largestDifference(least.fitted.covariance.flat(), likelihood.fitted.covariance.flat())).toBeLessThan(1e-12);
   });
 
+  it("Laitinen's test is exact only where the index holds no current share and rows weigh the same", () => {
+    const approximate = (rows: typeof data, index: string) =>
+      estimated(rows, { form: "la-aids", index }).tests[0].exact!.approximate;
+    expect(approximate(data, "laspeyres")).toBe(false);
+    for (const index of ["tornqvist", "stone", "paasche"]) expect(approximate(data, index)).toBe(true);
+    expect(approximate({ ...data, weights: new Float64Array(data.rows).fill(1) }, "laspeyres")).toBe(true);
+  });
+
   it("two goods: one equation", () => {
     const two = simulateShares({ form: "aids", goods: 2, rows: 200, random: seededRandom(4), noise: 0.02 });
     for (const form of ["aids", "la-aids", "les"]) {
