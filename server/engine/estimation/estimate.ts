@@ -1,4 +1,5 @@
 import type { SystemFinding, SystemSpecification } from "../../../shared/schemas/system.ts";
+import { nearestWord } from "../../../shared/study/nearest-word.ts";
 import type { DemandSystem, SystemSize } from "../../../shared/systems/demand-system.ts";
 import { SYSTEMS } from "../../../shared/systems/index.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
@@ -102,9 +103,9 @@ function placeOfDropped({ dropped }: SystemSpecification, goods: readonly string
   if (dropped === undefined) return goods.length - 1;
   const place = goods.indexOf(dropped);
   if (place >= 0) return place;
-  throw new Refusal([
-    { sentence: `dropped names "${dropped}", which is none of the goods ${goods.join(", ")}.`, key: ["dropped"] },
-  ]);
+  const nearest = nearestWord(dropped, goods);
+  const sentence = `dropped names "${dropped}", which is none of the ${goods.length} goods ${goods.join(", ")}.`;
+  throw new Refusal([{ sentence, key: ["dropped"], ...(nearest !== undefined && { nearest }) }]);
 }
 
 function solve(

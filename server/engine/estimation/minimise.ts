@@ -1,3 +1,4 @@
+import { Refusal } from "../refusal.ts";
 import { Cancelled, type RunControl } from "../run.ts";
 import { type CoefficientForm, expand } from "./coefficient-form.ts";
 import { type Columns, dot, pickColumns } from "./columns.ts";
@@ -179,12 +180,9 @@ function search(
 ): State | undefined {
   const rounding = 1e-13 * Math.max(1, Math.abs(state.value));
   const attempt = (by: Float64Array, size: number): State | undefined => {
-    const next = evaluate(
-      estimation,
-      criterion,
-      state.free.map((value, f) => value + size * by[f]),
-    );
-    return next.value <= state.value + rounding ? next : undefined;
+    const free = state.free.map((value, f) => value + size * by[f]);
+    const next = unlessRefused(() => evaluate(estimation, criterion, free));
+    return next !== undefined && next.value <= state.value + rounding ? next : undefined;
   };
   if (slope < 0) {
     for (let halving = 0; halving <= MOST_HALVINGS; halving++) {
@@ -197,6 +195,16 @@ function search(
     if (next !== undefined) return next;
   }
   return undefined;
+}
+
+/** A step too far may have no criterion (a singular residual covariance): then a shorter one is tried. */
+function unlessRefused(find: () => State): State | undefined {
+  try {
+    return find();
+  } catch (error) {
+    if (error instanceof Refusal) return undefined;
+    throw error;
+  }
 }
 
 function relativeStep(form: CoefficientForm, free: readonly number[], step: Float64Array): number {

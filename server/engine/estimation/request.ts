@@ -1,4 +1,6 @@
+import type { Problem } from "../../../shared/schemas/problem.ts";
 import type { SystemSpecification } from "../../../shared/schemas/system.ts";
+import { nearestWord } from "../../../shared/study/nearest-word.ts";
 import type { BaseColumn, MomentTerm, SystemSize } from "../../../shared/systems/demand-system.ts";
 import { SYSTEMS } from "../../../shared/systems/index.ts";
 import type { PriceIndexName } from "../../../shared/systems/names.ts";
@@ -38,28 +40,30 @@ export function momentsRequest(specification: SystemSpecification, data: Prepare
   const system = SYSTEMS[specification.form];
   const { demographics } = specification;
   if (demographics.length > 0 && !system.takesDemographics) {
-    throw new Refusal([
-      {
-        sentence: `The ${system.longName} takes no demographics, and ${demographics.length} are named.`,
-        key: ["demographics"],
-      },
-    ]);
+    const sentence = `The ${system.longName} takes no demographics, and ${demographics.length} are named.`;
+    throw new Refusal([{ sentence, key: ["demographics"] }]);
   }
-  for (const name of demographics) {
-    if (data.numeric.has(name)) continue;
-    throw new Refusal([
-      {
-        sentence: `demographics names "${name}", which is no numeric column of the data.`,
-        key: ["demographics"],
-        column: name,
-      },
-    ]);
-  }
+  const problems = demographics.filter((name) => !data.numeric.has(name)).map((name) => noDemographic(name, data));
+  if (problems.length > 0) throw new Refusal(problems);
   const terms = system.moments.terms({ goods: data.goods.length, demographics: demographics.length, alpha0: 0 });
   const index = terms.some((term) => columnsOf(term).some((column) => column.kind === "deflated log total"))
     ? (specification.index ?? DEFAULT_INDEX)
     : undefined;
   return { key: JSON.stringify({ terms, demographics, index }), terms, demographics, ...(index && { index }) };
+}
+
+function noDemographic(name: string, data: PreparedData): Problem {
+  const incomplete = data.incomplete?.get(name);
+  const place = { key: ["demographics"], column: name };
+  if (incomplete !== undefined) {
+    const { missing, firstRow } = incomplete;
+    const sentence = `demographics names "${name}", which has no value in ${missing} of the ${data.rows} rows used, first in row ${firstRow}: leave them out with keep, or name another column.`;
+    return { sentence, ...place, row: firstRow };
+  }
+  const nearest = nearestWord(name, [...data.numeric.keys()]);
+  const instead = nearest === undefined ? "" : ` The nearest is "${nearest}".`;
+  const sentence = `demographics names "${name}", which is no numeric column of the data.${instead}`;
+  return { sentence, ...place, ...(nearest !== undefined && { nearest }) };
 }
 
 /** The rows that a request speaks of. */

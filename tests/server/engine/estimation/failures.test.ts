@@ -96,6 +96,10 @@ describe("a specification the data do not fit", () => {
     expect(refusalOf(() => momentsRequest(systemOver(data, { form: "aids", demographics: ["age"] }), data))).toContain(
       '"age"',
     );
+    const gaps = { ...data, numeric: new Map(), incomplete: new Map([["age", { missing: 3, firstRow: 17 }]]) };
+    expect(refusalOf(() => momentsRequest(systemOver(gaps, { form: "aids", demographics: ["age"] }), gaps))).toContain(
+      'demographics names "age", which has no value in 3 of the 120 rows used, first in row 17',
+    );
     expect(refusalOf(() => momentsRequest(systemOver(data, { form: "les" }), data))).toMatch(
       /linear expenditure system takes no demographics, and 1/,
     );
