@@ -1,4 +1,3 @@
-import { Refusal } from "../refusal.ts";
 import { Cancelled, type RunControl } from "../run.ts";
 import { type CoefficientForm, expand } from "./coefficient-form.ts";
 import { type Columns, dot, pickColumns } from "./columns.ts";
@@ -181,8 +180,8 @@ function search(
   const rounding = 1e-13 * Math.max(1, Math.abs(state.value));
   const attempt = (by: Float64Array, size: number): State | undefined => {
     const free = state.free.map((value, f) => value + size * by[f]);
-    const next = unlessRefused(() => evaluate(estimation, criterion, free));
-    return next !== undefined && next.value <= state.value + rounding ? next : undefined;
+    const next = evaluate(estimation, criterion, free);
+    return next.value <= state.value + rounding ? next : undefined;
   };
   if (slope < 0) {
     for (let halving = 0; halving <= MOST_HALVINGS; halving++) {
@@ -195,16 +194,6 @@ function search(
     if (next !== undefined) return next;
   }
   return undefined;
-}
-
-/** A step too far may have no criterion (a singular residual covariance): then a shorter one is tried. */
-function unlessRefused(find: () => State): State | undefined {
-  try {
-    return find();
-  } catch (error) {
-    if (error instanceof Refusal) return undefined;
-    throw error;
-  }
 }
 
 function relativeStep(form: CoefficientForm, free: readonly number[], step: Float64Array): number {
