@@ -35,7 +35,6 @@ export function CopyTable({ table }: { table: LabelledTable }) {
   };
   return (
     <div className="flex flex-wrap items-baseline gap-x-4 text-[0.8125rem]/[1.5rem] text-ink2 print:hidden">
-      <span role="status">{said}</span>
       <span>Copy as</span>
       {WAYS.map((way) => (
         <button
@@ -48,6 +47,9 @@ export function CopyTable({ table }: { table: LabelledTable }) {
           {way}
         </button>
       ))}
+      <span role="status" className="empty:w-0">
+        {said}
+      </span>
     </div>
   );
 }

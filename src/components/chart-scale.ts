@@ -13,7 +13,8 @@ export function linearScale(from: number, to: number, start: number, end: number
 export function roundTicks(from: number, to: number, about: number): { ticks: number[]; decimals: number } {
   const rough = (to - from) / about;
   const power = 10 ** Math.floor(Math.log10(rough));
-  const step = [1, 2, 5, 10].map((multiple) => multiple * power).find((size) => size >= rough) ?? 10 * power;
+  const distance = (size: number) => Math.abs(Math.log(size / rough));
+  const [step] = [1, 2, 5, 10].map((multiple) => multiple * power).sort((a, b) => distance(a) - distance(b));
   const decimals = Math.max(0, -Math.floor(Math.log10(step) + 1e-9));
   const first = Math.ceil(from / step - 1e-9);
   const last = Math.floor(to / step + 1e-9);

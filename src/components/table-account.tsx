@@ -33,7 +33,7 @@ function Row({ line, strong = false, total = false }: { line: AccountLine; stron
 /** An account: what there was, what is taken off, and what is left under a single rule and over a double one. */
 export function AccountTable({ caption, first, lines, total }: AccountProps) {
   return (
-    <table className="w-full border-line border-b-[3px] border-double text-[0.875rem]/[1.25rem] tabular-nums">
+    <table className="relative w-full border-line border-b-[3px] border-double text-[0.875rem]/[1.25rem] tabular-nums">
       <caption className="sr-only">{caption}</caption>
       <tbody>
         <Row line={first} strong={first.between !== undefined} />

@@ -34,7 +34,7 @@ function Line({ line, heads }: { line: TableLine; heads: readonly TableHead[] })
       {line.cells.map((cell, index) => (
         <td
           key={heads[index + 1].key}
-          className={`py-0.5 pr-[0.33em] pl-4 ${heads[index + 1].align === "left" ? "text-left" : "whitespace-nowrap text-right"}`}
+          className={`py-0.5 pr-[0.33em] pl-4 ${heads[index + 1].align === "left" ? "min-w-36 text-left" : "whitespace-nowrap text-right"}`}
         >
           {cell}
         </td>
@@ -47,7 +47,7 @@ function Line({ line, heads }: { line: TableLine; heads: readonly TableHead[] })
 export function Table({ caption, heads, lines, className = "" }: TableProps) {
   return (
     // biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls sideways must be reachable by keyboard
-    <section aria-label={caption} tabIndex={0} className={`overflow-x-auto ${className}`}>
+    <section aria-label={caption} tabIndex={0} className={`relative overflow-x-auto ${className}`}>
       <table className="w-full border-line border-b text-[0.875rem]/[1.25rem] tabular-nums">
         <thead>
           <tr className="border-line border-b">

@@ -17,7 +17,7 @@ export interface StripVerdict {
 /** Five columns on a wide page, three and two on a narrower one, rows on a phone. */
 const ITEM = [
   "grid grid-cols-[1fr_auto] items-center gap-x-3 border-rule py-2.5 not-last:border-b",
-  "min-[600px]:block min-[600px]:border-rule2 min-[600px]:border-b min-[600px]:py-1.5 min-[600px]:pl-3.5",
+  "min-[600px]:block min-[600px]:border-rule2 min-[600px]:border-b min-[600px]:py-1.5 min-[600px]:pr-2 min-[600px]:pl-3.5",
   "min-[600px]:max-[1023px]:nth-[3n+1]:pl-0 min-[600px]:max-[1023px]:not-nth-[3n+1]:border-l-rule",
   "min-[600px]:max-[1023px]:not-nth-[3n+1]:border-l",
   "min-[1024px]:first:pl-0 min-[1024px]:not-first:border-l min-[1024px]:not-first:border-l-rule",

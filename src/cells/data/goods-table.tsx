@@ -36,7 +36,7 @@ function GoodRow({
         {capital(good)}
       </th>
       {SLOTS.map((slot) => (
-        <td key={slot} className="min-w-[5.5rem] py-1 pr-3">
+        <td key={slot} className="min-w-[7rem] py-1 pr-3">
           <ChoiceControl
             aria-label={`${capital(slot)} of ${good}`}
             value={mapping[slot] ?? ""}
@@ -49,7 +49,7 @@ function GoodRow({
         </td>
       ))}
       {found && (
-        <td className="py-1 type-small">
+        <td className="type-small min-w-40 py-1">
           {description &&
             `share ${printFixed(description.meanShare, DECIMALS.share)}, ${
               description.boughtNone === 0 ? "bought by all" : `${printPercent(description.boughtNone)} bought none`
@@ -107,7 +107,7 @@ export function GoodsTable({ form, found }: GoodsTableProps) {
     <div>
       {goods.length > 0 && (
         // biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls sideways must be reachable by keyboard
-        <section aria-label="Goods and their columns" tabIndex={0} className="overflow-x-auto">
+        <section aria-label="Goods and their columns" tabIndex={0} className="relative overflow-x-auto">
           <table className="w-full">
             <thead>
               <tr className="border-line border-b text-left type-small text-ink2">

@@ -40,9 +40,9 @@ export function RowAccountingView({ accounting }: { accounting: RowAccounting })
   return (
     <section aria-labelledby="row-accounting">
       <div className="mb-1 flex items-baseline justify-between">
-        <h3 id="row-accounting" className="type-section">
+        <h2 id="row-accounting" className="type-section">
           Row accounting
-        </h3>
+        </h2>
         <CopyTable table={rowAccountingTable(accounting)} />
       </div>
       <AccountTable

@@ -28,18 +28,18 @@ export function DataOpen({ finding, form }: OpenProps<"data">) {
       {form && (
         <section aria-labelledby="goods" className="border-line border-t pt-4">
           <div className="mb-1 flex flex-wrap items-baseline gap-x-4">
-            <h3 id="goods" className="type-section">
+            <h2 id="goods" className="type-section">
               Goods
-            </h3>
+            </h2>
             <p className="type-small text-ink2">Any two of price, expenditure and quantity; the third follows.</p>
           </div>
           <GoodsTable form={form} found={finding.goods} />
         </section>
       )}
       <section aria-labelledby="description" className="border-line border-t pt-4">
-        <h3 id="description" className="type-section mb-1">
+        <h2 id="description" className="type-section mb-1">
           Shares and prices
-        </h3>
+        </h2>
         <Description finding={finding} />
       </section>
       <div className="border-line border-t pt-4">

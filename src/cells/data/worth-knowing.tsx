@@ -7,7 +7,7 @@ type Flag = DataFinding["flags"][number];
 function Note({ flag }: { flag: Flag }) {
   return (
     <div className="max-w-[26rem] break-inside-avoid pb-3">
-      <h4 className="text-[0.90625rem]/[1.3125rem] font-semibold">{capital(flag.about)}</h4>
+      <h3 className="text-[0.90625rem]/[1.3125rem] font-semibold">{capital(flag.about)}</h3>
       <p className="text-[0.875rem]/[1.25rem] text-ink2">{capital(flag.sentence)}</p>
       {flag.rows.length > 0 && (
         <details className="type-small">
@@ -25,9 +25,9 @@ function Note({ flag }: { flag: Flag }) {
 export function WorthKnowing({ flags }: { flags: readonly Flag[] }) {
   return (
     <section aria-labelledby="worth-knowing" className="border-line border-t pt-4">
-      <h3 id="worth-knowing" className="mb-1 type-section">
+      <h2 id="worth-knowing" className="mb-1 type-section">
         Worth knowing before estimating
-      </h3>
+      </h2>
       {flags.length === 0 ? (
         <p className="text-[0.875rem]/[1.25rem] text-ink2">
           Nothing unusual in zeros, outliers, price variation or collinearity.

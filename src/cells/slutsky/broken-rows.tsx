@@ -21,7 +21,7 @@ export function BrokenRows({ rows, total }: { rows: readonly BrokenRow[]; total:
   return (
     <>
       <div className="flex items-baseline justify-between gap-4">
-        <h3 className="type-section">Where it breaks</h3>
+        <h2 className="type-section">Where it breaks</h2>
         {more && (
           <button type="button" aria-expanded={all} onClick={() => setAll(!all)} className="word type-small">
             {all ? `First ${FIRST} rows` : `All ${printCount(rows.length)} rows`}

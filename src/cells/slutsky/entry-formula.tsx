@@ -40,13 +40,14 @@ function SlopeNote({ parts }: { parts: FormulaParts }) {
     return value < 0 && bracketed ? `(${printed})` : printed;
   };
   const symbols = joined((term) => term.factors.map(({ symbol }) => symbol).join(" "));
+  // For an own price j is i, in every index.
+  const named = parts.own ? symbols.replace(/_[a-z]+/g, (index) => index.replaceAll("j", "i")) : symbols;
   const numbers = joined((term) =>
     term.factors.map(({ value }, index) => print(value, index > 0 || term.sign < 0 || term !== terms[0])).join(" × "),
   );
   return (
     <p className="text-[0.8125rem]/[1.1875rem] text-ink2">
-      with <MathText text={parts.own ? "μ_ii" : "μ_ij"} /> ={" "}
-      <MathText text={parts.own ? symbols.replace(/_j\b/g, "_i").replace(/_ij\b/g, "_ii") : symbols} /> = {numbers}
+      with <MathText text={parts.own ? "μ_ii" : "μ_ij"} /> = <MathText text={named} /> = {numbers}
     </p>
   );
 }

@@ -109,7 +109,7 @@ export function EntryPanel(props: EntryPanelProps) {
         Row {goods[i]}, column {goods[j]}
       </p>
       <div role="status">
-        <h3 className="type-section">{capital(entryWord(entry, error, i === j))}</h3>
+        <h2 className="type-section">{capital(entryWord(entry, error, i === j))}</h2>
         <p className="type-entry max-[599px]:text-[1.75rem]/[2.25rem]">
           {full(entry)} <span className="text-[0.6em] text-ink2">({full(error)})</span>
         </p>

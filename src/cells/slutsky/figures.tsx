@@ -18,9 +18,9 @@ export function Eigenvalues({ finding }: { finding: Pick<SlutskyFinding, "at"> }
   const { eigenvalues } = finding.at;
   return (
     <section aria-labelledby="eigenvalues" className="border-line border-t pt-4">
-      <h3 id="eigenvalues" className="type-section">
+      <h2 id="eigenvalues" className="type-section">
         Eigenvalues
-      </h3>
+      </h2>
       {eigenvalues.length === 0 ? (
         <p className="type-small max-w-[38rem] text-ink2">
           Not stated: without homogeneity the symmetrised matrix is indefinite by construction, whatever the data.
@@ -45,18 +45,18 @@ export function NegativityOverSample({ finding }: { finding: Pick<SlutskyFinding
   return (
     <div className="grid gap-x-14 gap-y-6 border-line border-t pt-4 min-[1100px]:grid-cols-2">
       <section aria-labelledby="negativity">
-        <h3 id="negativity" className="type-section">
+        <h2 id="negativity" className="type-section">
           Negativity over the sample
-        </h3>
+        </h2>
         <p className="type-small mb-3 text-ink2">
           Largest eigenvalue at each row’s own prices and expenditure, shares of rows by weight
         </p>
         <NegativityHistogram sample={sample} brokenRows={brokenRows} holds={negativity.weightedShareThatHolds} />
       </section>
       <section aria-labelledby="tenths">
-        <h3 id="tenths" className="type-section">
+        <h2 id="tenths" className="type-section">
           By tenth of expenditure
-        </h3>
+        </h2>
         <p className="type-small mb-3 text-ink2">
           Share of rows where negativity holds; the axis begins at {printPercent(axisFloor(sample.byTenth), 0)}
         </p>

@@ -14,9 +14,9 @@ const CHECKS = [
 export function HowChecked({ finding }: { finding: SlutskyFinding }) {
   return (
     <section className="border-rule2 border-t pt-3" aria-labelledby="how-checked">
-      <h3 id="how-checked" className="mb-2 type-small text-ink2">
+      <h2 id="how-checked" className="mb-2 type-small text-ink2">
         How each check is made
-      </h3>
+      </h2>
       {CHECKS.map(([law, says]) => (
         <p key={law} className="mb-2 font-serif text-[0.9375rem]/[1.375rem]">
           <i>{law}.</i> {says}

@@ -41,7 +41,11 @@ function ColumnHeads({ shown, setting, pointed, sums }: Omit<MatrixFieldProps, "
   const turned = setting === "phone" || setting === "many";
   return (
     <tr>
-      <td className="sticky left-0 z-2 bg-recto pb-1 align-bottom text-[0.8125rem] text-ink2">{shown.unit}</td>
+      <td
+        className={`sticky left-0 z-2 bg-recto pb-1 align-bottom text-[0.8125rem] text-ink2 ${setting === "phone" ? "w-[6.6rem]" : ""}`}
+      >
+        {shown.unit}
+      </td>
       {shown.goods.map((good, j) => (
         <th
           key={good}
@@ -77,7 +81,7 @@ function Entry({ shown, setting, pointed, onPoint, place }: EntryProps) {
   const token = scaleToken(shown.entries[i][j], shown.steps);
   const isPointed = pointed?.[0] === i && pointed[1] === j;
   const isMirror = pointed !== undefined && pointed[0] === j && pointed[1] === i && !isPointed;
-  const ink = isDeep(token) ? "text-recto [[data-theme=dark]_&]:text-paper" : "text-ink";
+  const ink = isDeep(token) ? "text-recto print:text-ink! [[data-theme=dark]_&]:text-paper" : "text-ink";
   const ring = isPointed ? `${RING} outline-solid` : isMirror ? `${RING} outline-dashed` : "";
   const interactive = onPoint !== undefined;
   return (
@@ -145,13 +149,13 @@ export function MatrixField({ shown, setting, label, pointed, onPoint, sums }: M
     onPoint(next);
   };
   return (
-    <div className="overflow-x-auto p-1 -m-1">
+    <div className="relative -m-1 overflow-x-auto p-1">
       <table
         ref={ref}
         role={onPoint ? "grid" : undefined}
         aria-label={label}
         onKeyDown={onKeyDown}
-        className={`border-separate border-spacing-px ${setting === "phone" ? "w-full" : ""}`}
+        className={`border-separate border-spacing-px ${setting === "phone" ? "w-full table-fixed" : ""}`}
       >
         <thead>
           <ColumnHeads shown={shown} setting={setting} pointed={pointed} sums={sums} />

@@ -33,7 +33,7 @@ export function SealedMatrix({ finding }: { finding: SealedSlutsky }) {
         form={finding.form}
         below={
           eigenvalues.length > 0 && (
-            <div className="max-w-xl">
+            <div className="max-w-lg">
               <EigenvalueList eigenvalues={eigenvalues} directions />
             </div>
           )

@@ -1,6 +1,6 @@
 import { slutskySentence } from "../../../shared/tables/sentence.ts";
 import { slutskyTable, withArticle } from "../../../shared/tables/slutsky-matrix.ts";
-import { slutskyVerdicts } from "../../../shared/tables/verdicts.ts";
+import { slutskyVerdicts, verdictsOf } from "../../../shared/tables/verdicts.ts";
 import { usePhone } from "../../components/use-media.ts";
 import { VerdictStrip } from "../../components/verdict-strip.tsx";
 import { CopyTable } from "../copy-table.tsx";
@@ -24,7 +24,10 @@ export function SlutskyBand({ finding }: BandProps<"slutsky">) {
   return (
     <div className="space-y-3">
       <Headline sentence={slutskySentence(finding)} />
-      <VerdictStrip label="What theory says of the matrix" verdicts={stripOf(slutskyVerdicts(finding))} />
+      <VerdictStrip
+        label="What theory says of the matrix"
+        verdicts={stripOf(verdictsOf(finding.at.checks, finding.tests))}
+      />
       <div className="flex flex-wrap items-start justify-between gap-x-6 gap-y-4">
         <div className="min-w-0 max-w-full">
           <MatrixField shown={shown} setting={setting} label={label} />

@@ -32,7 +32,7 @@ function RowLabel({ row }: { row: CoefficientRow }) {
 function Row({ row, goods }: { row: CoefficientRow; goods: readonly string[] }) {
   return (
     <tr>
-      <th scope="row" className="sticky left-0 bg-recto py-0.5 pr-3 text-left font-normal">
+      <th scope="row" className="sticky left-0 whitespace-nowrap bg-recto py-0.5 pr-3 text-left font-normal">
         <RowLabel row={row} />
       </th>
       {row.cells.map((cell, index) => (
@@ -61,7 +61,7 @@ function Heads({ finding }: { finding: SystemFinding }) {
         ))}
       </tr>
       <tr className="border-line border-b">
-        <td className="type-smallest sticky left-0 bg-recto pr-3 pb-1.5 align-bottom text-ink2">
+        <td className="type-smallest sticky left-0 min-w-22 bg-recto pr-3 pb-1.5 align-bottom text-ink2">
           Share against ln <i className="font-serif">x</i>, 0 to {printFixed(top, 2)}
         </td>
         {goods.map((good, i) => (
@@ -89,7 +89,7 @@ export function CoefficientView({ finding }: { finding: SystemFinding }) {
   return (
     <div>
       {/* biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls sideways must be reachable by keyboard */}
-      <section aria-label="Coefficients of the share equations" tabIndex={0} className="overflow-x-auto">
+      <section aria-label="Coefficients of the share equations" tabIndex={0} className="relative overflow-x-auto">
         <table className={`type-table w-full ${priceRows.length === 0 ? "border-line border-b" : ""}`}>
           <caption className="sr-only">Coefficients of the share equations, estimate over standard error</caption>
           <Heads finding={finding} />

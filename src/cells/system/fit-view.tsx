@@ -21,9 +21,9 @@ export function FitView({ finding }: { finding: SystemFinding }) {
   return (
     <div className="grid gap-x-14 gap-y-6 border-line border-t pt-4 min-[1100px]:grid-cols-2">
       <section aria-labelledby="elasticities">
-        <h3 id="elasticities" className="type-section mb-2">
+        <h2 id="elasticities" className="type-section mb-2">
           By good
-        </h3>
+        </h2>
         <Table
           caption="Expenditure elasticity at the base point, fit of the equation"
           heads={[
@@ -51,9 +51,9 @@ export function FitView({ finding }: { finding: SystemFinding }) {
         />
       </section>
       <section aria-labelledby="fit">
-        <h3 id="fit" className="type-section mb-2">
+        <h2 id="fit" className="type-section mb-2">
           Fit and convergence
-        </h3>
+        </h2>
         <dl className="type-table">
           <Fact label="Log-likelihood">{number(finding.logLikelihood)}</Fact>
           <Fact label="AIC, BIC">

@@ -24,9 +24,9 @@ function exactInWords(test: Test): string {
 export function TestsView({ tests }: Pick<SystemFinding, "tests">) {
   return (
     <section aria-labelledby="tests" className="border-line border-t pt-4">
-      <h3 id="tests" className="type-section mb-2">
+      <h2 id="tests" className="type-section mb-2">
         Tests of the theory
-      </h3>
+      </h2>
       {tests.length === 0 ? (
         <p className="type-small text-ink2">The functional form leaves no restriction to test.</p>
       ) : (

@@ -1,6 +1,5 @@
 import type { RefereeCopy, SealedContent } from "../../../shared/schemas/referee-copy.ts";
 import { canonicalJson } from "../../../shared/study/canonical-json.ts";
-import { setKey } from "../../../shared/study/edit.ts";
 import { coefficientTable } from "../../../shared/tables/coefficients.ts";
 import { covarianceCsv } from "../../../shared/tables/covariance.ts";
 import { tableCsv } from "../../../shared/tables/csv.ts";
@@ -26,12 +25,11 @@ export function specificationYaml({ study, cells }: SealedContent): string {
       .split("\n")
       .map((line) => (line === "" ? "" : `    ${line}`))
       .join("\n");
-  const blocks = cells.sources.map(({ name, kind, source }) => {
-    // A one-key document quotes the name as YAML needs it.
-    const head = setKey("", [name], "").replace(/:[^:]*$/, ":");
-    return `  ${head}\n    kind: ${kind}\n${indented(source)}\n`;
-  });
-  return `${setKey("", ["study"], study.title)}cells:\n${blocks.join("")}`;
+  // A JSON string is a YAML one too: any title and any name may stand in quotes.
+  const blocks = cells.sources.map(
+    ({ name, kind, source }) => `  ${JSON.stringify(name)}:\n    kind: ${kind}\n${indented(source)}\n`,
+  );
+  return `study: ${JSON.stringify(study.title)}\ncells:\n${blocks.join("")}`;
 }
 
 function tablesLatex(content: SealedContent): string {

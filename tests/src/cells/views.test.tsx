@@ -129,7 +129,9 @@ describe("a data cell", () => {
   it("says how many rows are used and describes every good", () => {
     render(<Band finding={finding} />);
     expect(screen.getByText(/^900 of 923 rows are used\./)).toBeInTheDocument();
-    expect(screen.getByRole("row", { name: /^Sweet drinks 0\.0641 0\.0337 3\.2\s% 4\.80 0\.201$/ })).toBeInTheDocument();
+    expect(
+      screen.getByRole("row", { name: /^Sweet drinks 0\.0641 0\.0337 3\.2\s% 4\.80 0\.201$/ }),
+    ).toBeInTheDocument();
     expect(screen.getByText(/Shares sum to 1\./)).toBeInTheDocument();
   });
 
