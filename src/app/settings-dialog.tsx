@@ -18,10 +18,10 @@ const KEYS: readonly (readonly [keys: string, does: string])[] = [
 ];
 
 /** What is chosen for this machine. */
-export function SettingsDialog({ open, onClose }: { open: boolean; onClose: () => void }) {
+export default function SettingsDialog({ onClose }: { onClose: () => void }) {
   const letters = useSyncExternalStore(onPreferencesChange, letterKeysAct);
   return (
-    <Dialog open={open} onClose={onClose} title="Settings" lede="Kept on this machine.">
+    <Dialog onClose={onClose} title="Settings" lede="Kept on this machine.">
       <div className="grid grid-cols-[auto_1fr] items-baseline gap-x-8 gap-y-4">
         <span className="text-ink2">Theme</span>
         <ThemeWords />

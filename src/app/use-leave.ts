@@ -1,7 +1,6 @@
 import { useNavigate } from "react-router-dom";
 import { useSignOut } from "../features/accounts/api/sign-out.ts";
 import { pages } from "../lib/paths.ts";
-import { forgetAccount } from "../sync/index.ts";
 
 /** Signs out: the session ends, and this browser forgets the account's documents. */
 export function useLeave(accountId: string | undefined) {
@@ -11,6 +10,8 @@ export function useLeave(accountId: string | undefined) {
     signOut.mutate(undefined, {
       onSuccess: async () => {
         await navigate(pages.signIn);
+        // Loaded when it is needed: the list of studies has no other use for it.
+        const { forgetAccount } = await import("../sync/index.ts");
         if (accountId !== undefined) await forgetAccount(accountId).catch(() => []);
       },
     });

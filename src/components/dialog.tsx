@@ -2,7 +2,6 @@ import { Dialog as Primitive } from "radix-ui";
 import type { ReactNode } from "react";
 
 interface DialogProps {
-  readonly open: boolean;
   readonly onClose: () => void;
   readonly title: string;
   /** A sentence or two below the title; read with it. */
@@ -11,9 +10,9 @@ interface DialogProps {
 }
 
 /** A page laid over the page: recto, an ink edge, no shadow. Escape and *Close* leave it. */
-export function Dialog({ open, onClose, title, lede, children }: DialogProps) {
+export function Dialog({ onClose, title, lede, children }: DialogProps) {
   return (
-    <Primitive.Root open={open} onOpenChange={(next) => !next && onClose()}>
+    <Primitive.Root open onOpenChange={(next) => !next && onClose()}>
       <Primitive.Portal>
         <Primitive.Overlay className="dialog-cover" />
         <Primitive.Content className="dialog popover" {...(!lede && { "aria-describedby": undefined })}>

@@ -20,7 +20,11 @@ export function TopBar({ home, crumbs = [], narrowName, children }: TopBarProps)
   return (
     <header className="top-bar">
       <nav aria-label="Where you are" className="flex min-w-0 items-center gap-3">
-        <Link to={home} className="flex min-w-0 items-center gap-3 text-ink no-underline">
+        <Link
+          to={home}
+          aria-label="Tangency, your studies"
+          className="flex min-w-0 items-center gap-3 text-ink no-underline"
+        >
           <Mark size={26} />
           <span className={`font-serif font-medium text-[1.1875rem]/[1.5rem] ${narrowName ? "wide-only" : ""}`}>
             Tangency

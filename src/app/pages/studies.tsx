@@ -1,4 +1,4 @@
-import { useState } from "react";
+import { lazy, Suspense, useState } from "react";
 import { useNavigate } from "react-router-dom";
 import { Button } from "../../components/button.tsx";
 import { Fault } from "../../components/field.tsx";
@@ -6,7 +6,6 @@ import { TopBar } from "../../components/top-bar.tsx";
 import { useInstallation } from "../../features/accounts/api/get-installation.ts";
 import { useMe } from "../../features/accounts/api/get-me.ts";
 import { useStudies } from "../../features/studies/api/list-studies.ts";
-import { NewStudyDialog } from "../../features/studies/new-study-dialog.tsx";
 import { type StudyFilter, shownStudies } from "../../features/studies/study-filters.ts";
 import { StudyFinder } from "../../features/studies/study-finder.tsx";
 import { StudyList } from "../../features/studies/study-list.tsx";
@@ -14,8 +13,10 @@ import { sentenceOf } from "../../lib/api.ts";
 import { usePageTitle } from "../../lib/page-title.ts";
 import { pages } from "../../lib/paths.ts";
 import { installationInWords } from "../installation-words.ts";
-import { SettingsDialog } from "../settings-dialog.tsx";
 import { useLeave } from "../use-leave.ts";
+
+const NewStudyDialog = lazy(() => import("../../features/studies/new-study-dialog.tsx"));
+const SettingsDialog = lazy(() => import("../settings-dialog.tsx"));
 
 export default function StudiesPage() {
   const { data: me } = useMe();
@@ -54,12 +55,12 @@ export default function StudiesPage() {
           {!studies && !error && <p role="status">Fetching the studies</p>}
         </div>
       </main>
-      <NewStudyDialog
-        open={dialog === "new study"}
-        onClose={close}
-        onCreated={(studyId) => navigate(pages.study(studyId))}
-      />
-      <SettingsDialog open={dialog === "settings"} onClose={close} />
+      <Suspense>
+        {dialog === "new study" && (
+          <NewStudyDialog onClose={close} onCreated={(studyId) => navigate(pages.study(studyId))} />
+        )}
+        {dialog === "settings" && <SettingsDialog onClose={close} />}
+      </Suspense>
     </>
   );
 }

@@ -65,6 +65,7 @@ export function BandSource(props: BandSourceProps) {
           {!readOnly && <CellMenu name={cell.name} actions={props.actions} />}
         </div>
       </div>
+      {title && <h2 className="sr-only">Source</h2>}
       {page === "closed" ? (
         <p className="type-source truncate text-ink2">{sourceInALine(cell.kind, cell.source)}</p>
       ) : (

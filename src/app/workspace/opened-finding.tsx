@@ -30,6 +30,7 @@ export function OpenedFinding({ study, connection, readOnly, standing, cells, up
   };
   return (
     <>
+      <h2 className="sr-only">Finding</h2>
       <StateLine standing={standing} />
       {fingerprint && data && <FindingOpen finding={data.finding} status={status} form={form} />}
       {fingerprint && error && <Fault>{sentenceOf(error)}</Fault>}

@@ -12,17 +12,15 @@ interface PeopleDialogProps {
   readonly studyId: string;
   readonly you: string;
   readonly isOwner: boolean;
-  readonly open: boolean;
   readonly onClose: () => void;
   /** You have left the study. */
   readonly onLeft: () => void;
 }
 
 /** Who is in the study, as what. An owner adds, changes and removes; anyone may leave. */
-export function PeopleDialog({ studyId, you, isOwner, open, onClose, onLeft }: PeopleDialogProps) {
+export default function PeopleDialog({ studyId, you, isOwner, onClose, onLeft }: PeopleDialogProps) {
   return (
     <Dialog
-      open={open}
       onClose={onClose}
       title="People"
       lede="Owners and coauthors write. Readers see everything and change nothing. Referees need no account: seal a copy for them."
@@ -33,7 +31,7 @@ export function PeopleDialog({ studyId, you, isOwner, open, onClose, onLeft }: P
   );
 }
 
-function PeopleList({ studyId, you, isOwner, onLeft }: Omit<PeopleDialogProps, "open" | "onClose">) {
+function PeopleList({ studyId, you, isOwner, onLeft }: Omit<PeopleDialogProps, "onClose">) {
   const { data: people, error } = usePeople(studyId);
   const change = useChangeRole(studyId);
   const remove = useRemovePerson(studyId);

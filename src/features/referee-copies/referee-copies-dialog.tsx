@@ -7,15 +7,13 @@ import { SealedLink } from "./sealed-link.tsx";
 interface RefereeCopiesDialogProps {
   readonly studyId: string;
   readonly matrices: readonly Sealable[];
-  readonly open: boolean;
   readonly onClose: () => void;
 }
 
 /** Seals a copy for a referee, tells its link once, and revokes. */
-export function RefereeCopiesDialog({ open, onClose, ...contents }: RefereeCopiesDialogProps) {
+export default function RefereeCopiesDialog({ onClose, ...contents }: RefereeCopiesDialogProps) {
   return (
     <Dialog
-      open={open}
       onClose={onClose}
       title="Referee copies"
       lede="A sealed copy holds the matrix, its checks, the specification, the coefficients and the row accounting. It holds no rows."

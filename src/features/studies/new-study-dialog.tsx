@@ -8,14 +8,13 @@ import { sentenceOf } from "../../lib/api.ts";
 import { type NewStudyForm, newStudyForm, useCreateStudy } from "./api/create-study.ts";
 
 interface NewStudyDialogProps {
-  readonly open: boolean;
   readonly onClose: () => void;
   readonly onCreated: (studyId: string) => void;
 }
 
-export function NewStudyDialog({ open, onClose, onCreated }: NewStudyDialogProps) {
+export default function NewStudyDialog({ onClose, onCreated }: NewStudyDialogProps) {
   return (
-    <Dialog open={open} onClose={onClose} title="New study" lede="You own it; people are added once it is there.">
+    <Dialog onClose={onClose} title="New study" lede="You own it; people are added once it is there.">
       <NewStudy onCreated={onCreated} />
     </Dialog>
   );

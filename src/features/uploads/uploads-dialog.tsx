@@ -10,22 +10,16 @@ import { originInWords, shapeInWords } from "./upload-words.ts";
 
 interface UploadsDialogProps {
   readonly studyId: string;
-  readonly open: boolean;
   readonly onClose: () => void;
   readonly readOnly: boolean;
 }
 
 /** The files of the study: what is there, another one, and away with one that no cell names. */
-export function UploadsDialog({ studyId, open, onClose, readOnly }: UploadsDialogProps) {
+export default function UploadsDialog({ studyId, onClose, readOnly }: UploadsDialogProps) {
   const { data: uploads = [], error } = useUploads(studyId);
   const remove = useRemoveUpload(studyId);
   return (
-    <Dialog
-      open={open}
-      onClose={onClose}
-      title="Uploads"
-      lede="Rows stay on this installation, with those entitled to them."
-    >
+    <Dialog onClose={onClose} title="Uploads" lede="Rows stay on this installation, with those entitled to them.">
       {error && <Fault>{sentenceOf(error)}</Fault>}
       {uploads.length === 0 && <p className="pb-4 text-ink2">Nothing has been uploaded yet.</p>}
       <ul>

@@ -1,0 +1,33 @@
+import type { StudySummary } from "../../../shared/schemas/resources.ts";
+import { Button } from "../../components/button.tsx";
+import { Dialog } from "../../components/dialog.tsx";
+import { Fault } from "../../components/field.tsx";
+import { sentenceOf } from "../../lib/api.ts";
+import { useDeleteStudy } from "./api/delete-study.ts";
+
+interface DeleteStudyDialogProps {
+  readonly study: Pick<StudySummary, "id" | "title">;
+  readonly onClose: () => void;
+  readonly onDeleted: () => void;
+}
+
+export default function DeleteStudyDialog({ study, onClose, onDeleted }: DeleteStudyDialogProps) {
+  const remove = useDeleteStudy();
+  return (
+    <Dialog
+      onClose={onClose}
+      title="Delete the study"
+      lede={`${study.title} goes with its cells, uploads, findings and referee copies, for everyone in it. There is no way back.`}
+    >
+      {remove.isError && <Fault>{sentenceOf(remove.error)}</Fault>}
+      <div className="flex flex-wrap gap-4">
+        <Button filled onClick={onClose}>
+          Keep it
+        </Button>
+        <Button disabled={remove.isPending} onClick={() => remove.mutate(study.id, { onSuccess: onDeleted })}>
+          Delete {study.title}
+        </Button>
+      </div>
+    </Dialog>
+  );
+}
