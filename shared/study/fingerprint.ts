@@ -1,16 +1,10 @@
-import { sha256 } from "@noble/hashes/sha2.js";
-import { bytesToHex, utf8ToBytes } from "@noble/hashes/utils.js";
 import type { CellKind, CellSpecification } from "../schemas/cell.ts";
 import { canonicalJson } from "./canonical-json.ts";
 import { normaliseSpecification } from "./normalise.ts";
+import { sha256Hex } from "./sha256.ts";
 import { REFERENCES } from "./vocabulary.ts";
 
-export { canonicalJson };
-
-/** SHA-256 (FIPS 180-4) of a text's UTF-8 bytes, or of bytes, in lower-case hexadecimal. */
-export function sha256Hex(content: string | Uint8Array): string {
-  return bytesToHex(sha256(typeof content === "string" ? utf8ToBytes(content) : content));
-}
+export { canonicalJson, sha256Hex };
 
 export interface FingerprintParts {
   readonly kind: CellKind;

@@ -47,7 +47,7 @@ export function CopyTable({ table }: { table: LabelledTable }) {
           {way}
         </button>
       ))}
-      <span role="status" className="empty:w-0">
+      <span role="status" className="empty:-ml-4">
         {said}
       </span>
     </div>

@@ -17,7 +17,7 @@ export interface StripVerdict {
 /** Five columns on a wide page, three and two on a narrower one, rows on a phone. */
 const ITEM = [
   "grid grid-cols-[1fr_auto] items-center gap-x-3 border-rule py-2.5 not-last:border-b",
-  "min-[600px]:block min-[600px]:border-rule2 min-[600px]:border-b min-[600px]:py-1.5 min-[600px]:pr-2 min-[600px]:pl-3.5",
+  "min-[600px]:block min-[600px]:border-rule2 min-[600px]:border-b min-[600px]:py-1.5 min-[600px]:pl-3",
   "min-[600px]:max-[1023px]:nth-[3n+1]:pl-0 min-[600px]:max-[1023px]:not-nth-[3n+1]:border-l-rule",
   "min-[600px]:max-[1023px]:not-nth-[3n+1]:border-l",
   "min-[1024px]:first:pl-0 min-[1024px]:not-first:border-l min-[1024px]:not-first:border-l-rule",
@@ -27,11 +27,11 @@ function Item({ verdict }: { verdict: StripVerdict }) {
   return (
     <li className={ITEM}>
       <div className="type-small text-ink2">{verdict.law}</div>
-      <div className="row-span-2 flex items-center gap-2 text-[0.90625rem]/[1.3125rem] font-semibold min-[600px]:gap-2.5">
+      <div className="row-span-2 flex items-center gap-2 whitespace-nowrap text-[0.90625rem]/[1.3125rem] font-semibold">
         <VerdictFigure shape={verdict.shape} />
         {verdict.word}
       </div>
-      <div className="type-smallest text-ink2">
+      <div className="type-smallest pr-1 text-ink2">
         <Printed text={verdict.below} />
         {verdict.mark}
       </div>

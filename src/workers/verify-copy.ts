@@ -2,7 +2,7 @@ import { compareMatrices, type MatrixComparison } from "../../shared/economics/c
 import { matrixAt } from "../../shared/economics/slutsky.ts";
 import type { RefereeCopy, SealedContent } from "../../shared/schemas/referee-copy.ts";
 import { canonicalJson } from "../../shared/study/canonical-json.ts";
-import { sha256Hex } from "../../shared/study/fingerprint.ts";
+import { sha256Hex } from "../../shared/study/sha256.ts";
 
 /** What a referee's own machine makes of a sealed copy. */
 export interface Verification {

@@ -49,7 +49,7 @@ function GoodRow({
         </td>
       ))}
       {found && (
-        <td className="type-small min-w-40 py-1">
+        <td className="type-small min-w-50 py-1">
           {description &&
             `share ${printFixed(description.meanShare, DECIMALS.share)}, ${
               description.boughtNone === 0 ? "bought by all" : `${printPercent(description.boughtNone)} bought none`

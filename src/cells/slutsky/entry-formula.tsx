@@ -5,6 +5,11 @@ import { added, formulaDecimals } from "./formula.ts";
 import { MathText } from "./math-text.tsx";
 import type { Place } from "./moves.ts";
 
+const SET = "font-serif text-[0.875rem]/[1.4375rem] tabular-nums lining-nums";
+
+/** A line may break before the sign and never after it. */
+const TIMES = "×\u00a0";
+
 /** k_ij in letters; for the mirror with i and j exchanged, for an own price with its − w_i. */
 function letters(own: boolean, i: string, j: string): string {
   if (own) return `k_${i}${i} = μ_${i}${i} \u2212 w_${i} + (w_${i} + μ_${i})w_${i}`;
@@ -19,7 +24,8 @@ function Numbers({ parts }: { parts: FormulaParts }) {
   return (
     <>
       <div>
-        = {outside} + {factor} × {print(parts.otherShare)}
+        = {outside} + {factor} {TIMES}
+        {print(parts.otherShare)}
       </div>
       <div>
         = {outside} {added(parts.incomeTerm, decimals)} ={" "}
@@ -43,7 +49,9 @@ function SlopeNote({ parts }: { parts: FormulaParts }) {
   // For an own price j is i, in every index.
   const named = parts.own ? symbols.replace(/_[a-z]+/g, (index) => index.replaceAll("j", "i")) : symbols;
   const numbers = joined((term) =>
-    term.factors.map(({ value }, index) => print(value, index > 0 || term.sign < 0 || term !== terms[0])).join(" × "),
+    term.factors
+      .map(({ value }, index) => print(value, index > 0 || term.sign < 0 || term !== terms[0]))
+      .join(` ${TIMES}`),
   );
   return (
     <p className="text-[0.8125rem]/[1.1875rem] text-ink2">
@@ -54,12 +62,38 @@ function SlopeNote({ parts }: { parts: FormulaParts }) {
 
 type Evaluated = Pick<SlutskyFinding, "fitted" | "point">;
 
+interface QuantityProps {
+  readonly finding: Pick<SlutskyFinding, "at" | "point" | "priceScale" | "totalScale">;
+  readonly place: Place;
+  /** S_ij as the matrix prints it. */
+  readonly printed: string;
+}
+
+/** How an entry of the quantity form follows from its share form: S_ij = k_ij x/(p_i p_j), in the units uploaded. */
+export function QuantityFormula({ finding, place: [i, j], printed }: QuantityProps) {
+  const price = (good: number) => printFixed(finding.point.prices[good] * finding.priceScale[good], DECIMALS.money);
+  const total = printFixed(finding.point.total * finding.totalScale, DECIMALS.money);
+  const entry = printFixed(finding.at.share[i][j], DECIMALS.entry);
+  return (
+    <section aria-label="Formula of the quantity form" className={`${SET} mb-2`}>
+      <div>
+        <MathText text={i === j ? "S_ii = k_ii x/(p_i p_i)" : "S_ij = k_ij x/(p_i p_j)"} />
+      </div>
+      <div>
+        = {entry} {TIMES}
+        {total}/({price(i)} {TIMES}
+        {price(j)}) = <strong className="font-semibold">{printed}</strong>
+      </div>
+    </section>
+  );
+}
+
 /** The formula of an entry twice: once with its own numbers, once with its mirror's. Share form. */
 export function EntryFormula({ finding, place: [i, j] }: { finding: Evaluated; place: Place }) {
   const own = i === j;
   const entry = formulaParts(finding.fitted, finding.point, i, j);
   return (
-    <div className="space-y-2 font-serif text-[0.875rem]/[1.4375rem] tabular-nums lining-nums">
+    <div className={`${SET} space-y-2`}>
       <section aria-label="Formula">
         <div>
           <MathText text={letters(own, "i", "j")} />

@@ -3,7 +3,7 @@ import type { SlutskyFinding } from "../../../shared/schemas/slutsky.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { DECIMALS, printFixed, printSize, THIN_SPACE } from "../../../shared/tables/numbers.ts";
 import { matrixInForm, printEntry } from "../../../shared/tables/slutsky-matrix.ts";
-import { EntryFormula } from "./entry-formula.tsx";
+import { EntryFormula, QuantityFormula } from "./entry-formula.tsx";
 import type { Place } from "./moves.ts";
 import type { ShownMatrix } from "./shown-matrix.ts";
 import { printSum } from "./sums.ts";
@@ -11,7 +11,7 @@ import { printSum } from "./sums.ts";
 /** 97.5 % point of the normal distribution, for 95 % intervals. */
 const NORMAL_975 = 1.959963984540054;
 
-export type PanelFinding = Pick<SlutskyFinding, "at" | "fitted" | "point" | "pointName">;
+export type PanelFinding = Pick<SlutskyFinding, "at" | "fitted" | "point" | "pointName" | "priceScale" | "totalScale">;
 
 interface EntryPanelProps {
   readonly finding: PanelFinding;
@@ -119,6 +119,7 @@ export function EntryPanel(props: EntryPanelProps) {
         <Facts {...props} />
       </div>
       <div className="mt-2 border-rule2 border-t pt-2">
+        {shown.form === "quantity" && <QuantityFormula finding={finding} place={place} printed={full(entry)} />}
         <EntryFormula finding={finding} place={place} />
       </div>
     </section>

@@ -18,7 +18,7 @@ export function stepsInWords(steps: readonly number[]): string {
 export function MatrixLegend({ steps, unit }: { steps: readonly number[]; unit?: string }) {
   const bounds = [...steps.toReversed().map((step) => -step), ...steps];
   return (
-    <figure className="type-small text-ink2" aria-label="Scale of the matrix">
+    <figure className="type-small text-ink2 print:hidden" aria-label="Scale of the matrix">
       <div className="flex" aria-hidden="true">
         {SCALE_TOKENS.map((token) => (
           <span key={token} className="h-2 flex-1" style={{ backgroundColor: `var(--${token})` }} />
@@ -47,7 +47,7 @@ export function MatrixLegend({ steps, unit }: { steps: readonly number[]; unit?:
 /** The scale in one line, for a band and a phone. */
 export function MatrixLegendLine({ steps }: { steps: readonly number[] }) {
   return (
-    <div className="flex flex-wrap items-center gap-x-3 type-small text-ink2">
+    <div className="flex flex-wrap items-center gap-x-3 type-small text-ink2 print:hidden">
       <span>Complements</span>
       <span className="flex min-w-36 max-w-72 flex-1" aria-hidden="true">
         {SCALE_TOKENS.map((token) => (

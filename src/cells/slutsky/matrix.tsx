@@ -98,7 +98,7 @@ function Entry({ shown, setting, pointed, onPoint, place }: EntryProps) {
       data-mirror={isMirror || undefined}
       data-step={token}
       style={{ backgroundColor: `var(--${token})` }}
-      className={`${SIZES[setting]} ${CENTRED[setting]} tabular-nums print:border print:border-rule2 ${ink} ${ring}`}
+      className={`${SIZES[setting]} ${CENTRED[setting]} tabular-nums print:border print:border-rule2 print:bg-transparent! ${ink} ${ring}`}
     >
       {shown.short(shown.entries[i][j])}
       {setting === "errors" && (

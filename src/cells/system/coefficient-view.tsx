@@ -55,7 +55,7 @@ function Heads({ finding }: { finding: SystemFinding }) {
           Share equation
         </th>
         {goods.map((good) => (
-          <th key={good} scope="col" className="type-small pr-[0.33em] pl-3 text-right align-bottom font-semibold">
+          <th key={good} scope="col" className="type-small pr-[0.33em] pl-2 text-right align-bottom font-semibold">
             {capital(good)}
           </th>
         ))}

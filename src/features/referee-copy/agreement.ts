@@ -41,7 +41,7 @@ export function partsCompared({ comparison, coefficients }: Verification, conten
     {
       part: "Verdicts",
       what: "five laws at the point",
-      difference: comparison.verdictsAgree ? "agree" : "differ",
+      difference: comparison.verdictsAgree ? "agree" : "some otherwise",
       agrees: comparison.verdictsAgree,
     },
   ];

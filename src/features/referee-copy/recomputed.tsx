@@ -44,8 +44,7 @@ function Differences({ verification, content }: { verification: Verification; co
             {what}
           </span>,
           <span key="difference" className={good ? "" : "font-semibold text-fail"}>
-            {!good && <span aria-hidden="true">× </span>}
-            <Printed text={difference} />
+            <Printed text={good ? difference : `differs, ${difference}`} />
           </span>,
         ],
       }))}

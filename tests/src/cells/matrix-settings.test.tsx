@@ -27,7 +27,7 @@ function expenditureSystem(n: number) {
   };
   const point = { prices: goods.map(() => 1), total: 1, demographics: [] };
   const at = matrixAt(fitted, point, { priceScale: goods.map(() => 1), totalScale: 1, pointName: "base point" });
-  return { fitted, point, at, pointName: "base point" };
+  return { fitted, point, at, pointName: "base point", priceScale: goods.map(() => 1), totalScale: 1 };
 }
 
 describe("the field of the matrix", () => {

@@ -93,6 +93,8 @@ describe("the matrix", () => {
     open("quantity");
     expect(screen.queryByText("Row sum")).not.toBeInTheDocument();
     expect(screen.getByRole("grid", { name: /quantity form in units uploaded/ })).toBeInTheDocument();
+    const derived = screen.getByRole("region", { name: "Formula of the quantity form" });
+    expect(derived).toHaveTextContent(`= 0.0238 × 184.60/(6.20 × 9.10) = ${printFixed(finding.at.quantity[0][1], 4)}`);
   });
 });
 
@@ -138,7 +140,7 @@ describe("the formula of an entry", () => {
 
 /** "= a − w + (b − c) × d" as [a − w, b, −c, d]. */
 function numbers(line: string, own: boolean): [number, number, number, number] {
-  const match = /^= (\S+)(?: ([+\u2212]) (\S+))? \+ \((\S+) ([+\u2212]) (\S+)\) × (\S+)$/.exec(line);
+  const match = /^= (\S+)(?: ([+\u2212]) (\S+))? \+ \((\S+) ([+\u2212]) (\S+)\) ×\s(\S+)$/.exec(line);
   expect(match, line).not.toBeNull();
   const [, first, ownSign, ownShare, share, sign, slope, other] = match!;
   expect(ownSign !== undefined).toBe(own);
