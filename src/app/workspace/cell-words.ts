@@ -1,6 +1,7 @@
 import type { CellKind } from "../../../shared/schemas/cell.ts";
 import type { Upload } from "../../../shared/schemas/resources.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
+import { readDocument } from "../../../shared/study/document.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
 import { suggestData } from "../../../shared/study/suggest.ts";
 import { counted } from "../../../shared/study/words.ts";
@@ -26,9 +27,9 @@ export function freshSource(kind: CellKind, cells: readonly CellSource[], upload
   return upload ? suggestData(upload.name, upload.columns) : "";
 }
 
-/** Whether a data cell has no upload yet. */
+/** Whether a data cell has no upload yet. A text that cannot be read may name one: it is mended, not begun again. */
 export function lacksUpload({ kind, source }: CellSource): boolean {
-  if (kind !== "data") return false;
+  if (kind !== "data" || readDocument(source).problems.length > 0) return false;
   const { upload } = parseCell("data", source).written;
   return upload === undefined || upload === null || upload === "";
 }
