@@ -28,8 +28,7 @@ export function BandFinding({ studyId, standing, beside, onChange }: BandFinding
   const actions = fingerprint && data && (
     <>
       <LinkWord to={pages.cell(studyId, cell.id)}>
-        {kind === "data" ? "Row accounting" : "Open"}
-        <span className="sr-only"> of {cell.name}</span>
+        {kind === "data" ? "Row accounting" : "Open"} <span className="sr-only">of {cell.name}</span>
       </LinkWord>
       {kind !== "data" && table && <CopyWord table={table} name={cell.name} />}
     </>

@@ -20,7 +20,7 @@ export function CopyWord({ table, name }: { table: LabelledTable; name: string }
         {said}
       </span>
       <Word onClick={() => void copy()}>
-        Copy table<span className="sr-only"> of {name}</span>
+        Copy table <span className="sr-only">of {name}</span>
       </Word>
     </span>
   );

@@ -18,7 +18,7 @@ export function RemovedCell({ cell, onUndo, onDismiss }: RemovedCellProps) {
       </div>
       <div className="recto flex flex-wrap items-baseline gap-x-5 py-3!">
         <Word onClick={onUndo}>
-          Undo<span className="sr-only"> the removal of {cell.name}</span>
+          Undo <span className="sr-only">the removal of {cell.name}</span>
         </Word>
         <Word quiet onClick={onDismiss}>
           Leave it so

@@ -13,8 +13,7 @@ export function PassphraseField(props: PassphraseFieldProps) {
       type={shown ? "text" : "password"}
       beside={
         <button type="button" className="word type-small" aria-pressed={shown} onClick={() => setShown(!shown)}>
-          {shown ? "Hide" : "Show"}
-          <span className="sr-only"> the passphrase</span>
+          {shown ? "Hide" : "Show"} <span className="sr-only">the passphrase</span>
         </button>
       }
     />

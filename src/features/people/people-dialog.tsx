@@ -58,8 +58,8 @@ function PeopleList({ studyId, you, isOwner, onLeft }: Omit<PeopleDialogProps, "
             )}
             {(isOwner || person.id === you) && (
               <Word disabled={remove.isPending} onClick={() => leave(person)} className="justify-self-end">
-                {person.id === you ? "Leave" : "Remove"}
-                <span className="sr-only">{person.id === you ? " the study" : ` ${person.name}`}</span>
+                {person.id === you ? "Leave" : "Remove"}{" "}
+                <span className="sr-only">{person.id === you ? "the study" : person.name}</span>
               </Word>
             )}
           </li>

@@ -39,7 +39,7 @@ export function CopyList({ studyId }: { studyId: string }) {
             </div>
             {!copy.revokedAt && (
               <Word disabled={revoke.isPending} onClick={() => revoke.mutate(copy.id)}>
-                Revoke<span className="sr-only"> the copy of {copy.cellName}</span>
+                Revoke <span className="sr-only">the copy of {copy.cellName}</span>
               </Word>
             )}
           </li>

@@ -24,8 +24,7 @@ export function StudyFinder({ studies, filter, find, onFilter, onFind }: StudyFi
               onClick={() => onFilter(key)}
               className={`flex min-h-8.5 w-full items-center justify-between gap-2 hover:text-accent ${filter === key ? "font-semibold" : ""}`}
             >
-              <span>{words}</span>
-              <span className="tabular-nums">{shownStudies(studies, key, "").length}</span>
+              <span>{words}</span> <span className="tabular-nums">{shownStudies(studies, key, "").length}</span>
             </button>
           </li>
         ))}

@@ -53,7 +53,7 @@ function UploadEntry({ upload, onRemove, busy }: { upload: Upload; onRemove?: ()
       </div>
       {onRemove && (
         <Word onClick={onRemove} disabled={busy}>
-          Remove<span className="sr-only"> {upload.name}</span>
+          Remove <span className="sr-only">{upload.name}</span>
         </Word>
       )}
     </li>
