@@ -1,4 +1,5 @@
 import type { Completion, CompletionContext, CompletionResult } from "@codemirror/autocomplete";
+import { readDocument } from "../../../shared/study/document.ts";
 import { keyEdit } from "../../../shared/study/edit.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
 import { type KeyWord, VOCABULARY } from "../../../shared/study/vocabulary.ts";
@@ -12,8 +13,16 @@ export function completeSource(context: CompletionContext): CompletionResult | n
   const text = context.state.doc.toString();
   const where = whereInYaml(text, context.pos);
   if (where.from === context.pos && !context.explicit && where.key === undefined) return null;
-  const options = where.key === undefined ? keys(subject, where) : values(subject, where, text);
+  const options = where.key === undefined ? keys(subject, where) : values(subject, where, readable(text, context.pos));
   return options.length === 0 ? null : { from: where.from, options, validFor: /^[^,:[\]{}#\n]*$/ };
+}
+
+/** The text as far as it can be read: a line still being written is left out where it spoils the rest. */
+function readable(text: string, caret: number): string {
+  if (readDocument(text).problems.length === 0) return text;
+  const start = text.lastIndexOf("\n", caret - 1) + 1;
+  const end = text.indexOf("\n", caret);
+  return text.slice(0, start) + (end < 0 ? "" : text.slice(end + 1));
 }
 
 /** The key words that may stand where the caret is. */
