@@ -1,4 +1,5 @@
 import type { ReactNode } from "react";
+import { TableScroller } from "./table-scroller.tsx";
 
 export interface TableHead {
   readonly key: string;
@@ -46,8 +47,7 @@ function Line({ line, heads }: { line: TableLine; heads: readonly TableHead[] })
 /** A table with rules under its heads and at its foot, nothing vertical; wide ones scroll with their first column held. */
 export function Table({ caption, heads, lines, className = "" }: TableProps) {
   return (
-    // biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls sideways must be reachable by keyboard
-    <section aria-label={caption} tabIndex={0} className={`relative overflow-x-auto ${className}`}>
+    <TableScroller label={caption} className={className}>
       <table className="w-full border-line border-b text-[0.875rem]/[1.25rem] tabular-nums">
         <thead>
           <tr className="border-line border-b">
@@ -71,6 +71,6 @@ export function Table({ caption, heads, lines, className = "" }: TableProps) {
           ))}
         </tbody>
       </table>
-    </section>
+    </TableScroller>
   );
 }

@@ -27,7 +27,7 @@ function Item({ verdict }: { verdict: StripVerdict }) {
   return (
     <li className={ITEM}>
       <div className="type-small text-ink2">{verdict.law}</div>
-      <div className="row-span-2 flex items-center gap-2 whitespace-nowrap text-[0.90625rem]/[1.3125rem] font-semibold">
+      <div className="row-span-2 flex items-center gap-2 text-[0.90625rem]/[1.3125rem] font-semibold">
         <VerdictFigure shape={verdict.shape} />
         {verdict.word}
       </div>

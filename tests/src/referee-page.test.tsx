@@ -129,7 +129,7 @@ describe("the referee's page", () => {
     await user.click(screen.getByRole("button", { name: "As text" }));
     expect(screen.getByText(/impose: \[homogeneity, symmetry\]/)).toBeInTheDocument();
     await user.click(screen.getByRole("button", { name: "Coefficients, 60 of them" }));
-    expect(screen.getByRole("region", { name: "Coefficients of the share equations" })).toBeInTheDocument();
+    expect(screen.getByRole("group", { name: "Coefficients of the share equations" })).toBeInTheDocument();
   });
 
   it("makes its downloads from the sealed content", async () => {

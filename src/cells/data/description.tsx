@@ -6,7 +6,7 @@ import { Table } from "../../components/table.tsx";
 function Share({ share, largest }: { share: number; largest: number }) {
   return (
     <span className="flex items-center justify-end gap-3">
-      <span aria-hidden="true" className="relative h-px w-19 shrink bg-rule max-[599px]:hidden">
+      <span aria-hidden="true" className="relative h-px w-16 shrink bg-rule max-[599px]:hidden">
         <span
           className="absolute inset-y-[-2.5px] left-0 bg-ink2"
           style={{ width: `${Math.max(0, (share / largest) * 82)}%` }}
@@ -26,7 +26,7 @@ export function Description({ finding }: { finding: DataFinding }) {
       <Table
         caption={`Shares and prices over ${printCount(finding.accounting.used)} rows used`}
         heads={[
-          { key: "good", content: finding.weighted ? "Weighted over the rows used" : "Over the rows used" },
+          { key: "good", content: finding.weighted ? "Rows used, weighted" : "Rows used" },
           { key: "share", content: "Mean share" },
           { key: "deviation", content: "Std. dev." },
           { key: "none", content: "Bought none" },

@@ -3,6 +3,7 @@ import type { DataFinding } from "../../../shared/schemas/data.ts";
 import { suggestGoods } from "../../../shared/study/suggest.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { DECIMALS, printFixed, printPercent } from "../../../shared/tables/numbers.ts";
+import { TableScroller } from "../../components/table-scroller.tsx";
 import { ChoiceControl, TextControl } from "../form/fields.tsx";
 import { readWritten, type Written } from "../form/written.ts";
 import type { FormProps } from "../types.ts";
@@ -106,8 +107,7 @@ export function GoodsTable({ form, found }: GoodsTableProps) {
   return (
     <div>
       {goods.length > 0 && (
-        // biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls sideways must be reachable by keyboard
-        <section aria-label="Goods and their columns" tabIndex={0} className="relative overflow-x-auto">
+        <TableScroller label="Goods and their columns">
           <table className="w-full">
             <thead>
               <tr className="border-line border-b text-left type-small text-ink2">
@@ -129,7 +129,7 @@ export function GoodsTable({ form, found }: GoodsTableProps) {
               ))}
             </tbody>
           </table>
-        </section>
+        </TableScroller>
       )}
       {!form.readOnly && suggested.length > 0 && (
         <button type="button" className={LINK} onClick={takeSuggested}>

@@ -4,6 +4,7 @@ import { capital } from "../../../shared/study/words.ts";
 import { type CoefficientRow, coefficientRows, isPriceBlock } from "../../../shared/tables/coefficients.ts";
 import { printFixed } from "../../../shared/tables/numbers.ts";
 import { Estimate } from "../../components/number.tsx";
+import { TableScroller } from "../../components/table-scroller.tsx";
 import { commonTop, EngelCurve } from "./engel-curve.tsx";
 
 function RowLabel({ row }: { row: CoefficientRow }) {
@@ -32,7 +33,7 @@ function RowLabel({ row }: { row: CoefficientRow }) {
 function Row({ row, goods }: { row: CoefficientRow; goods: readonly string[] }) {
   return (
     <tr>
-      <th scope="row" className="sticky left-0 whitespace-nowrap bg-recto py-0.5 pr-3 text-left font-normal">
+      <th scope="row" className="sticky left-0 min-w-22 bg-recto py-0.5 pr-3 text-left font-normal">
         <RowLabel row={row} />
       </th>
       {row.cells.map((cell, index) => (
@@ -88,8 +89,7 @@ export function CoefficientView({ finding }: { finding: SystemFinding }) {
   const others = rows.filter((row) => !isPriceBlock(row.block));
   return (
     <div>
-      {/* biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls sideways must be reachable by keyboard */}
-      <section aria-label="Coefficients of the share equations" tabIndex={0} className="relative overflow-x-auto">
+      <TableScroller label="Coefficients of the share equations">
         <table className={`type-table w-full ${priceRows.length === 0 ? "border-line border-b" : ""}`}>
           <caption className="sr-only">Coefficients of the share equations, estimate over standard error</caption>
           <Heads finding={finding} />
@@ -106,7 +106,7 @@ export function CoefficientView({ finding }: { finding: SystemFinding }) {
             </tbody>
           )}
         </table>
-      </section>
+      </TableScroller>
       {priceRows.length > 0 && (
         <div className="border-line border-b pb-1">
           <button

@@ -23,6 +23,7 @@ function offered({ cells, uploads }: FormProps["context"], dataName: string) {
   const taken = new Set([
     ...Object.values(goods).flatMap((mapping) => (isMap(mapping) ? Object.values(mapping) : [])),
     written.weight,
+    written.cluster,
     written.total,
   ]);
   const derived = isMap(written.derive) ? Object.keys(written.derive) : [];

@@ -60,7 +60,7 @@ describe("a slutsky cell", () => {
 
   it("names the rows where negativity breaks, worst first, the rest one press away", async () => {
     render(<Open finding={finding} />);
-    const table = screen.getByRole("region", { name: "Rows where a law breaks" });
+    const table = screen.getByRole("group", { name: "Rows where a law breaks" });
     const rows = () => within(table).getAllByRole("row").slice(1);
     expect(rows()).toHaveLength(5);
     const [worst] = finding.brokenRows;
@@ -73,7 +73,7 @@ describe("a slutsky cell", () => {
   it("has the numbers of every figure as a table", async () => {
     render(<Open finding={finding} />);
     await userEvent.click(screen.getByText(/^of share of rows where negativity holds/i));
-    const numbers = screen.getByRole("region", { name: /Share of rows where negativity holds, by tenth/ });
+    const numbers = screen.getByRole("group", { name: /Share of rows where negativity holds, by tenth/ });
     const cells = within(numbers)
       .getAllByRole("row")
       .slice(1)
@@ -95,7 +95,7 @@ describe("a system cell", () => {
 
   it("shows coefficients with price terms folded, and unfolds them", async () => {
     render(<Band finding={finding} />);
-    const coefficients = screen.getByRole("region", { name: "Coefficients of the share equations" });
+    const coefficients = screen.getByRole("group", { name: "Coefficients of the share equations" });
     expect(within(coefficients).queryByRole("rowheader", { name: /ln p, grains/ })).not.toBeInTheDocument();
     await userEvent.click(screen.getByRole("button", { name: "Price terms Γ, 6 × 6" }));
     const row = within(coefficients).getByRole("row", { name: /ln p, grains/ });
