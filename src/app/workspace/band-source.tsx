@@ -66,11 +66,14 @@ export function BandSource(props: BandSourceProps) {
         </div>
       </div>
       {title && <h2 className="sr-only">Source</h2>}
-      {page === "closed" ? (
-        <p className="type-source truncate text-ink2">{sourceInALine(cell.kind, cell.source)}</p>
-      ) : (
-        <Source {...props} />
-      )}
+      <div className="no-print">
+        {page === "closed" ? (
+          <p className="type-source truncate text-ink2">{sourceInALine(cell.kind, cell.source)}</p>
+        ) : (
+          <Source {...props} />
+        )}
+      </div>
+      <pre className="print-only type-source whitespace-pre-wrap">{cell.source}</pre>
       {typing}
       {page !== "closed" && <SourceFoot standing={standing} idOf={idOf} />}
     </>
