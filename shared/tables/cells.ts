@@ -1,4 +1,4 @@
-import { printCount, printFixed, printPercent, printQuantity, type QuantityKind } from "./numbers.ts";
+import { printFixed, printPercent, printQuantity, type QuantityKind } from "./numbers.ts";
 import type { TableCell } from "./table.ts";
 
 export const EMPTY: TableCell = { kind: "empty" };
@@ -9,10 +9,6 @@ export function textCell(text: string): TableCell {
 
 export function numberCell(value: number, kind: QuantityKind, unit?: string): TableCell {
   return { kind: "number", value, printed: printQuantity(value, kind), unit };
-}
-
-export function countCell(value: number): TableCell {
-  return { kind: "number", value, printed: printCount(value) };
 }
 
 /** A fraction, kept as such and printed as per cent. */

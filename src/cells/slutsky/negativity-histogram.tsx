@@ -42,8 +42,19 @@ function Ticks({ rows, scale }: { rows: BrokenRows; scale: Scale }) {
   ));
 }
 
-function BreakWords({ sample, listed, x, holds }: { sample: Sample; listed: number; x: number; holds: number }) {
-  const ticks = listed === sample.breaks ? ", each a tick" : listed > 0 ? `, ${printCount(listed)} ticked` : "";
+interface BreakWordsProps {
+  readonly sample: Sample;
+  readonly listed: number;
+  readonly x: number;
+  /** How much room there is to the right of nought. */
+  readonly room: number;
+  readonly holds: number;
+}
+
+function BreakWords({ sample, listed, x, room, holds }: BreakWordsProps) {
+  const ticks = listed === sample.breaks ? "each a tick" : listed > 0 ? `${printCount(listed)} ticked` : "";
+  const rows = `${printCount(sample.breaks)} of ${printCount(sample.rows)} rows`;
+  const lines = room < 220 ? [rows, ticks] : [[rows, ticks].filter(Boolean).join(", ")];
   return (
     <g>
       <text x={x - 14} y="58" textAnchor="end" fontWeight="600" fill="var(--ink)">
@@ -52,9 +63,11 @@ function BreakWords({ sample, listed, x, holds }: { sample: Sample; listed: numb
       <text x={x + 12} y="58" fontWeight="600" fill="var(--ink)" {...CLEAR}>
         {printPercent(1 - holds)} break
       </text>
-      <text x={x + 12} y="75" fill="var(--ink2)" {...CLEAR}>
-        {printCount(sample.breaks)} of {printCount(sample.rows)} rows{ticks}
-      </text>
+      {lines.map((line, index) => (
+        <text key={line} x={x + 12} y={75 + 16 * index} fill="var(--ink2)" {...CLEAR}>
+          {line}
+        </text>
+      ))}
     </g>
   );
 }
@@ -94,7 +107,7 @@ export function NegativityHistogram({ sample, brokenRows, holds }: HistogramProp
         <Bars histogram={sample.histogram} scale={scale} />
         <Ticks rows={brokenRows} scale={scale} />
         <path d={`M${nought} 0V${BOTTOM}`} stroke="var(--ink)" strokeWidth="1.3" />
-        <BreakWords sample={sample} listed={listed} x={nought} holds={holds} />
+        <BreakWords sample={sample} listed={listed} x={nought} room={width - nought} holds={holds} />
         <BottomAxis scale={scale} y={BOTTOM} ticks={ticks} print={(tick) => printFixed(tick, decimals)} />
       </svg>
       <ChartNumbers

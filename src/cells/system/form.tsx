@@ -1,10 +1,11 @@
 import { ESTIMATOR_NAMES } from "../../../shared/schemas/system.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
+import { listWords } from "../../../shared/study/words.ts";
 import { SYSTEMS } from "../../../shared/systems/index.ts";
 import { PRICE_INDEX_NAMES, RESTRICTION_NAMES, SYSTEM_NAMES, type SystemName } from "../../../shared/systems/names.ts";
 import { CheckGroup } from "../form/choices.tsx";
-import { asChoices, ChoiceField, TextField, Unreadable } from "../form/fields.tsx";
-import { readWritten } from "../form/written.ts";
+import { asChoices, ChoiceField, FormRow, TextField, Unreadable } from "../form/fields.tsx";
+import { readWritten, type Written } from "../form/written.ts";
 import type { FormProps } from "../types.ts";
 
 const FORMS = SYSTEM_NAMES.map((name) => ({ value: name, label: SYSTEMS[name].longName }));
@@ -62,13 +63,7 @@ export function SystemForm(props: FormProps) {
           onChange={(value) => written.write([["index"], value || undefined])}
         />
       )}
-      <CheckGroup
-        legend="Impose"
-        values={written.list("impose")}
-        choices={asChoices(RESTRICTION_NAMES)}
-        readOnly={readOnly}
-        onChange={(values) => written.write([["impose"], values])}
-      />
+      <Impose form={form} written={written} readOnly={readOnly} />
       <ChoiceField
         label="Estimator"
         value={written.text("estimator")}
@@ -100,7 +95,30 @@ export function SystemForm(props: FormProps) {
   );
 }
 
-function AlphaNought({ written, readOnly }: { written: ReturnType<typeof readWritten>; readOnly: boolean }) {
+/** Restrictions to impose; a form that holds them by itself leaves none to choose. */
+function Impose({ form, written, readOnly }: { form: string; written: Written; readOnly: boolean }) {
+  const held = isSystem(form) ? SYSTEMS[form].heldByForm : [];
+  const open = RESTRICTION_NAMES.filter((name) => !held.includes(name));
+  const imposed = written.list("impose");
+  if (open.length === 0 && imposed.length === 0) {
+    return (
+      <FormRow label="Impose">
+        <span className="text-[0.875rem]/[1.25rem]">{listWords(held)} hold by the form itself</span>
+      </FormRow>
+    );
+  }
+  return (
+    <CheckGroup
+      legend="Impose"
+      values={imposed}
+      choices={asChoices(RESTRICTION_NAMES)}
+      readOnly={readOnly}
+      onChange={(values) => written.write([["impose"], values])}
+    />
+  );
+}
+
+function AlphaNought({ written, readOnly }: { written: Written; readOnly: boolean }) {
   return (
     <TextField
       label="α₀, held fixed"

@@ -189,6 +189,14 @@ describe("the form of a system cell", () => {
     expect(parseCell("system", written.source).problems[0].sentence).toContain("symmetry is imposed given homogeneity");
   });
 
+  it("leaves no restriction to choose where the form holds them by itself", async () => {
+    const { user, written } = open(SystemForm, "data: survey\nform: aids\n");
+    await user.selectOptions(screen.getByRole("combobox", { name: "Form" }), "les");
+    expect(screen.getByText("homogeneity and symmetry hold by the form itself")).toBeInTheDocument();
+    expect(screen.queryByRole("checkbox")).not.toBeInTheDocument();
+    expect(written.source).toBe("data: survey\nform: les\n");
+  });
+
   it("offers as demographics what is neither price nor purchase nor weight", () => {
     open(SystemForm, SYSTEM);
     const group = screen.getByRole("group", { name: "Demographics" });
