@@ -39,7 +39,7 @@ export function logRequests(logger: Logger): RequestHandler {
   }) as RequestHandler;
 }
 
-/** The path without its query, and without a referee's token. */
+/** The path without its query, and without a referee's token; addresses are routed whatever their capitals. */
 export function withoutSecrets(text: string): string {
-  return text.replace(/\?\S*/g, "").replace(/(\/referee\/)[^/\s]+/g, "$1…");
+  return text.replace(/\?\S*/g, "").replace(/(\/referee\/)[^/\s]+/gi, "$1…");
 }
