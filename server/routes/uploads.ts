@@ -70,13 +70,20 @@ function receiveFile(uploads: UploadService): RequestHandler {
   return (request, response, next) => {
     receive(request, response, (error: unknown) => {
       if (error !== undefined && request.readableAborted) return next(brokenOff());
-      if (!(error instanceof multer.MulterError)) return next(error);
-      if (error.code === "LIMIT_FILE_SIZE") {
+      if (error instanceof multer.MulterError && error.code === "LIMIT_FILE_SIZE") {
         return next(tooLarge(sizeRefusal(`more than ${inMegabytes(LARGEST_UPLOAD)}`)));
       }
-      next(invalid("An upload is a form with one file, in the field file."));
+      if (error instanceof multer.MulterError || isNoForm(error)) {
+        return next(invalid("An upload is a form with one file, in the field file."));
+      }
+      next(error);
     });
   };
+}
+
+/** The reader of forms has no error of its own kind for a form that is cut short or put together wrongly. */
+function isNoForm(error: unknown): boolean {
+  return error instanceof Error && /^(Malformed |Multipart: |Unexpected end of f)/.test(error.message);
 }
 
 /** Aborted when the client goes away before it is answered. */

@@ -97,7 +97,7 @@ function visitor(origin: string, about = { id: "", name: "", email: "" }, cookie
   return {
     ...about,
     ask: (method, path, body, headers = {}) => {
-      const form = body instanceof FormData;
+      const form = body instanceof FormData || body instanceof Blob;
       return ask(`${origin}${path}`, {
         method,
         headers: {

@@ -54,6 +54,22 @@ describe("an upload", () => {
     expect(names).toEqual(["weeks.csv", "weeks (2).csv", "weeks (3).csv"]);
   });
 
+  test.each([
+    ["cut short", '--XX\r\nContent-Disposition: form-data; name="file"; filename="a.csv"\r\n\r\np1\n1\n'],
+    ["without a part", ""],
+    [
+      "with a control character in the name",
+      '--XX\r\nContent-Disposition: form-data; name="file"; filename="a\u0000.csv"\r\n\r\np1\n1\r\n--XX--\r\n',
+    ],
+  ])("in a form %s is refused as no form, and nothing of it stays", async (_how, body) => {
+    const before = [uploads, uploadChunks, uploadColumns].map(rowsOf);
+    const answer = await owner.ask("POST", `/api/studies/${studyId}/uploads`, new Blob([body]), {
+      "content-type": "multipart/form-data; boundary=XX",
+    });
+    expect([answer.status, answer.body.error.code]).toEqual([400, "invalid"]);
+    expect([uploads, uploadChunks, uploadColumns].map(rowsOf)).toEqual(before);
+  });
+
   test("that will not do is told with its problems, and nothing of it stays", async () => {
     const before = [uploads, uploadChunks, uploadColumns].map(rowsOf);
     application.parser.refuse = "Row 3: p1 has the text abc.";
