@@ -138,13 +138,24 @@ function readBy(all: readonly CellStatus[], reader: CellStatus): CellStatus {
   return read;
 }
 
+/** Quantiles nearer the ends than this are the total of the poorest or the richest household asked. */
+const OUTERMOST_QUANTILE = 0.01;
+
 /** A matrix at a row of the upload would show a referee that household's prices and total. */
 function refuseOneHousehold({ name, source }: CellSource, pointName: string): void {
   const { specification } = parseCell("slutsky", source);
   if (specification?.kind !== "slutsky") throw conflict(`${name} is changing; seal it again.`);
-  if (typeof specification.at === "string" || !("row" in specification.at)) return;
+  const { at } = specification;
+  if (typeof at === "string" || "prices" in at) return;
+  if ("row" in at) {
+    throw conflict(
+      `${name} stands at ${pointName}, the prices and total of one household: seal it at the base point or the mean.`,
+    );
+  }
+  const fraction = Number(at.x.slice("quantile ".length));
+  if (fraction >= OUTERMOST_QUANTILE && fraction <= 1 - OUTERMOST_QUANTILE) return;
   throw conflict(
-    `${name} stands at ${pointName}, the prices and total of one household: seal it at the base point or the mean.`,
+    `${name} stands at ${pointName}, the total of one household: seal it at a quantile from ${OUTERMOST_QUANTILE} to ${1 - OUTERMOST_QUANTILE}.`,
   );
 }
 

@@ -3,6 +3,7 @@ import type { SealedContent } from "../../shared/schemas/referee-copy.ts";
 import type { SlutskyFinding } from "../../shared/schemas/slutsky.ts";
 import type { SystemFinding } from "../../shared/schemas/system.ts";
 import type { CellSource } from "../../shared/study/cell-source.ts";
+import { setKey } from "../../shared/study/edit.ts";
 
 /** The matrix and the two cells it rests on, sources and findings. */
 export interface SealedCells {
@@ -32,7 +33,9 @@ export function sealedContentOf(about: About, { matrix, system, data }: SealedCe
     note,
     sealedAt: sealedAt.toISOString(),
     cells: {
-      sources: [data.cell, system.cell, matrix.cell].map(({ name, kind, source }) => ({ name, kind, source })),
+      sources: [authors === undefined ? withoutFileName(data.cell) : data.cell, system.cell, matrix.cell].map(
+        ({ name, kind, source }) => ({ name, kind, source }),
+      ),
       matrix: matrix.cell.name,
       system: system.cell.name,
       data: data.cell.name,
@@ -46,6 +49,11 @@ export function sealedContentOf(about: About, { matrix, system, data }: SealedCe
       fingerprint: data.finding.dataFingerprint,
     },
   };
+}
+
+/** Files are often called after whoever made them. */
+function withoutFileName(cell: CellSource): CellSource {
+  return { ...cell, source: setKey(cell.source, ["upload"], "withheld") };
 }
 
 function matrixOf(finding: SlutskyFinding): SealedContent["slutsky"] {

@@ -17,7 +17,12 @@ beforeAll(async () => {
   owner = await application.person("Ilse Marchetti");
   studyId = (await owner.ask("POST", "/api/studies", { title: "Levy on sweet drinks" })).body.id;
   const { data, system, slutsky } = exampleFindings();
-  application.cells.put(studyId, { name: "survey", kind: "data", source: "upload: purchases.csv" }, [], data);
+  application.cells.put(
+    studyId,
+    { name: "survey", kind: "data", source: "upload: marchetti-2031.csv # weekly" },
+    [],
+    data,
+  );
   application.cells.put(studyId, { name: "base", kind: "system", source: "data: survey" }, ["survey"], system);
   matrixId = put("matrix", "system: base\nat: base point", slutsky).cellId;
 });
@@ -108,9 +113,12 @@ describe("a referee copy", () => {
 describe("sealing", () => {
   test("names the authors only when asked to", async () => {
     const { token } = (await seal(matrixId, { withholdAuthors: false })).body;
-    expect((await open(token)).body.content.study.authors).toEqual(["Ilse Marchetti"]);
-    const withheld = (await seal(matrixId)).body.token;
-    expect(JSON.stringify((await open(withheld)).body)).not.toContain("Marchetti");
+    const { content } = (await open(token)).body;
+    expect(content.study.authors).toEqual(["Ilse Marchetti"]);
+    expect(content.cells.sources[0].source).toBe("upload: marchetti-2031.csv # weekly");
+    const withheld = (await open((await seal(matrixId)).body.token)).body;
+    expect(withheld.content.cells.sources[0].source).toBe("upload: withheld # weekly");
+    expect(JSON.stringify(withheld)).not.toMatch(/marchetti/i);
   });
 
   test.each(["out of date", "estimating", "failed"])("refuses a cell that is %s, and says so", async (state) => {
@@ -139,6 +147,22 @@ describe("sealing", () => {
     });
     const answer = await seal(cellId);
     expect([answer.status, answer.body.error.sentence]).toEqual([409, expect.stringContaining("one household")]);
+  });
+
+  test.each([
+    ["0", 409],
+    ["0.005", 409],
+    ["0.01", 201],
+    ["0.9", 201],
+    ["0.999", 409],
+    ["1", 409],
+  ])("at quantile %s of expenditure answers %d: the outermost are single households", async (fraction, status) => {
+    const pointName = `quantile ${fraction} of expenditure`;
+    const source = `system: base\nat: {x: quantile ${fraction}}`;
+    const { cellId } = put(`matrix at ${fraction}`, source, { ...exampleFindings().slutsky, pointName });
+    const answer = await seal(cellId);
+    expect(answer.status).toBe(status);
+    if (status === 409) expect(answer.body.error.sentence).toContain(`${pointName}, the total of one household`);
   });
 });
 
