@@ -1,12 +1,15 @@
 import type { Installation } from "../../shared/schemas/resources.ts";
 import type { Database } from "../db/client.ts";
-import { closeAccounts, countAccounts, findAccountByEmail } from "../db/queries/accounts.ts";
+import { closeAccounts, countAccounts, hasPassphrase } from "../db/queries/accounts.ts";
 import { type Authentication, ensureAccount } from "../services/authentication.ts";
 import { DEMO_PASSPHRASE, DEMO_PEOPLE } from "./people.ts";
 
-/** Whether this installation is a demo: as the environment says, else when it is new or was one before. */
+/**
+ * Whether this installation is a demo: as the environment says, else when it is new or was one when it last ran.
+ * Accounts once closed stay closed until the environment opens them by name.
+ */
 export function isDemo(db: Database, wanted: boolean | undefined): boolean {
-  return wanted ?? (countAccounts(db) === 0 || findAccountByEmail(db, DEMO_PEOPLE[0].email) !== undefined);
+  return wanted ?? (countAccounts(db) === 0 || hasPassphrase(db, DEMO_PEOPLE[0].email));
 }
 
 /** Their ids, in the order of `DEMO_PEOPLE`. */

@@ -76,6 +76,8 @@ test("outside demo mode nobody gets in by the passphrase that everyone knows", a
   closeDemoAccounts(application.open.db);
   expect(await signIn(email, passphrase)).toBe(401);
   expect((await application.stranger.ask("GET", "/api/me", undefined, { cookie })).status).toBe(401);
+  // Started again without a word about the demo, it stays closed.
+  expect(isDemo(application.open.db, undefined)).toBe(false);
   await openDemoAccounts(application.auth, application.open.db);
   expect(await signIn(email, passphrase)).toBe(200);
 });
