@@ -1,4 +1,4 @@
-import { mkdirSync } from "node:fs";
+import { accessSync, constants, mkdirSync } from "node:fs";
 import { join } from "node:path";
 import SqliteDatabase from "better-sqlite3";
 
@@ -7,7 +7,7 @@ import SqliteDatabase from "better-sqlite3";
  * The lock is the operating system's, on a file held open, so that it goes with the process however that ends.
  */
 export function lockFolder(dataFolder: string): () => void {
-  mkdirSync(dataFolder, { recursive: true });
+  makeWritable(dataFolder);
   const file = new SqliteDatabase(join(dataFolder, "in-use"), { timeout: 0 });
   try {
     file.exec("BEGIN EXCLUSIVE");
@@ -18,4 +18,15 @@ export function lockFolder(dataFolder: string): () => void {
     );
   }
   return () => void file.close();
+}
+
+function makeWritable(dataFolder: string): void {
+  try {
+    mkdirSync(dataFolder, { recursive: true });
+    accessSync(dataFolder, constants.R_OK | constants.W_OK | constants.X_OK);
+  } catch (error) {
+    throw new Error(
+      `Data cannot be kept in ${dataFolder} (${(error as NodeJS.ErrnoException).code}): let this account write there, or set TANGENCY_DATA to another folder.`,
+    );
+  }
 }
