@@ -12,16 +12,20 @@ import {
 import type { Problem } from "../schemas/problem.ts";
 import type { KeyPath, Place, Places } from "./cell-source.ts";
 import { NOWHERE } from "./cell-source.ts";
+import { remembering } from "./remembering.ts";
 import { groupThousands } from "./words.ts";
 
 /** The longest source a cell, or a study file, may have, in characters. */
 export const LONGEST_SOURCE = 32_768;
 export const LONGEST_STUDY_FILE = 1_048_576;
 
-/** A YAML text read: its value as plain objects, and where everything stands. */
+/** Every source of a large study: while one cell is typed in, the others are not read again. */
+const REMEMBERED = 512 * 1024;
+
+/** A YAML text read: its value as plain objects, and where everything stands. Never changed. */
 export interface SourceDocument {
   readonly value: unknown;
-  readonly problems: Problem[];
+  readonly problems: readonly Problem[];
   readonly places: Places;
   /** The root node; absent when the text could not be read. */
   readonly root?: Node;
@@ -33,6 +37,12 @@ export interface SourceDocument {
  * no key twice. Every refusal names its place.
  */
 export function readDocument(text: string, longest = LONGEST_SOURCE): SourceDocument {
+  return longest === LONGEST_SOURCE ? readSource(text) : read(text, longest);
+}
+
+const readSource = remembering((text) => read(text, LONGEST_SOURCE), REMEMBERED);
+
+function read(text: string, longest: number): SourceDocument {
   const lines = new LineCounter();
   const refused = (sentence: string): SourceDocument => ({
     value: undefined,
@@ -121,6 +131,8 @@ function forbidden(document: Document, text: string, lines: LineCounter): Proble
     Pair: (_, pair) => {
       const key = pair.key as Node | null;
       if (key && !isScalar(key)) refuse(key, "A key is one word or a few, never a list or a map.");
+      // Records set it aside without a word, and what stands below it would be gone.
+      else if (key?.value === "__proto__") refuse(key, "__proto__ names nothing here; take another name.");
     },
   });
   return problems;

@@ -30,7 +30,7 @@ export interface StudyCell extends CellSource {
 export function parseCell(kind: string, source: string): ParsedCell {
   const { value, problems, places } = readDocument(source);
   if (problems.length > 0) {
-    return { ...(isKind(kind) && { kind }), problems, places, written: {} };
+    return { ...(isKind(kind) && { kind }), problems: [...problems], places, written: {} };
   }
   return parseValue(kind, value, places);
 }

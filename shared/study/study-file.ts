@@ -22,7 +22,8 @@ const KEYS = ["study", "lede", "cells"];
 
 /** Reads a study file; cells may be resolved with `resolveParsed(file.cells, uploads)`. */
 export function parseStudyFile(text: string): StudyFile {
-  const { value, problems, root, lines } = readDocument(text, LONGEST_STUDY_FILE);
+  const { value, problems: unreadable, root, lines } = readDocument(text, LONGEST_STUDY_FILE);
+  const problems = [...unreadable];
   const empty: StudyFile = { title: "", lede: "", cells: [], problems };
   if (problems.length > 0) return empty;
   if (!isMap(root)) {

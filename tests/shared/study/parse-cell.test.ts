@@ -155,6 +155,14 @@ describe("YAML that is refused", () => {
     expect(sentences("system", `data: ${"{a: ".repeat(3_000)}1${"}".repeat(3_000)}`).length).toBeGreaterThan(0);
   });
 
+  it("drops no good without a word: records set __proto__ aside", () => {
+    const goods = ["__proto__", "b", "c"].map((good) => `  ${good}: {price: p_${good}, quantity: q_${good}}`);
+    expect(sentences("data", `upload: u\ngoods:\n${goods.join("\n")}`)).toEqual([
+      "__proto__ names nothing here; take another name.",
+    ]);
+    expect(marked(`upload: u\ngoods:\n${goods.join("\n")}`, "data")).toEqual(["__proto__"]);
+  });
+
   it("cannot reach an object's prototype", () => {
     expect(sentences("system", "data: a\nform: aids\n__proto__: {polluted: 1}")).toHaveLength(1);
     expect(({} as Record<string, unknown>).polluted).toBeUndefined();
