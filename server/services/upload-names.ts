@@ -1,5 +1,6 @@
 import { parseDocument } from "yaml";
 import type { CellSource } from "../../shared/study/cell-source.ts";
+import { LONGEST_SOURCE } from "../../shared/study/document.ts";
 
 export const LARGEST_UPLOAD = 100 * 1024 * 1024;
 const LONGEST_NAME = 200;
@@ -20,11 +21,18 @@ export function freeName(name: string, taken: readonly string[]): string {
   return free;
 }
 
-/** Names of the data cells whose source says `upload: <name>`, in their order, however far their writing has come. */
+/**
+ * Names of the data cells whose source says `upload: <name>`, in their order, however far their writing has come.
+ * Of a source too long for a cell only as much is read as a cell could have: reading is on the requests' thread.
+ */
 export function cellsNamingUpload(sources: readonly CellSource[], upload: string): string[] {
   return sources
-    .filter(({ kind, source }) => kind === "data" && parseDocument(source).get("upload") === upload)
+    .filter(({ kind, source }) => kind === "data" && uploadOf(source.slice(0, LONGEST_SOURCE)) === upload)
     .map(({ name }) => name);
+}
+
+function uploadOf(source: string): unknown {
+  return parseDocument(source).get("upload");
 }
 
 export function inMegabytes(bytes: number): string {

@@ -1,5 +1,6 @@
 import { expect, test } from "vitest";
 import { cellsNamingUpload, freeName, inMegabytes, plainName } from "../../../server/services/upload-names.ts";
+import { LONGEST_SOURCE } from "../../../shared/study/document.ts";
 
 test.each([
   ["weeks.csv", "weeks.csv"],
@@ -36,6 +37,13 @@ test("a cell names an upload however far its writing has come", () => {
     cell("empty", ""),
   ];
   expect(cellsNamingUpload(cells, "weeks.csv")).toEqual(["whole", "quoted", "unfinished"]);
+});
+
+test("of a source too long for a cell no more is read than a cell could have", () => {
+  const cell = (source: string) => [{ id: "a", name: "a", kind: "data", order: "a", source }];
+  const filler = `# ${"x".repeat(LONGEST_SOURCE)}\n`;
+  expect(cellsNamingUpload(cell(`upload: weeks.csv\n${filler}`), "weeks.csv")).toEqual(["a"]);
+  expect(cellsNamingUpload(cell(`${filler}upload: weeks.csv\n`), "weeks.csv")).toEqual([]);
 });
 
 test("sizes are told in megabytes", () => {
