@@ -1,3 +1,4 @@
+import { memo } from "react";
 import type { CellKind, Finding } from "../../../shared/schemas/cell.ts";
 import type { CellStatus } from "../../../shared/schemas/status.ts";
 import { CELL_VIEWS } from "../../cells/index.ts";
@@ -8,10 +9,11 @@ export function viewOf(kind: CellKind): CellView<CellKind> {
   return CELL_VIEWS[kind] as unknown as CellView<CellKind>;
 }
 
-export function FindingBand({ finding, status }: { finding: Finding; status?: CellStatus }) {
+/** Drawn anew only for another finding: whoever types in one cell does not wait for the tables of the others. */
+export const FindingBand = memo(function FindingBand({ finding, status }: { finding: Finding; status?: CellStatus }) {
   const { Band } = viewOf(finding.kind);
   return <Band finding={finding} status={status} />;
-}
+});
 
 export function FindingOpen({ finding, status, form }: { finding: Finding; status?: CellStatus; form?: FormProps }) {
   const { Open } = viewOf(finding.kind);

@@ -29,17 +29,18 @@ export function InPlace({ label, value, className, longest, placeholder, needed,
   };
   return (
     <>
-      <textarea
-        aria-label={label}
-        rows={1}
-        maxLength={longest}
-        placeholder={placeholder}
-        className={`in-place ${className}`}
-        value={words}
-        onChange={(event) => setDraft(event.target.value)}
-        onBlur={commit}
-        onKeyDown={onKeyDown}
-      />
+      <div className={`in-place ${className}`} data-words={words || placeholder}>
+        <textarea
+          aria-label={label}
+          rows={1}
+          maxLength={longest}
+          placeholder={placeholder}
+          value={words}
+          onChange={(event) => setDraft(event.target.value)}
+          onBlur={commit}
+          onKeyDown={onKeyDown}
+        />
+      </div>
       {fault && <Fault>{fault}</Fault>}
     </>
   );

@@ -6,7 +6,6 @@ import { ask } from "../../../lib/api.ts";
 import { api } from "../../../lib/paths.ts";
 
 const storedFinding = z.strictObject({ finding, foundAt: instant, tookMs: finite });
-export type StoredFinding = z.infer<typeof storedFinding>;
 
 /** What is stored under a fingerprint never changes, so it is asked for once. */
 export const findingOptions = (studyId: string, fingerprint: string) =>

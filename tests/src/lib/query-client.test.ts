@@ -1,0 +1,17 @@
+import { describe, expect, it, vi } from "vitest";
+import { ApiRefusal } from "../../../src/lib/api.ts";
+import { createQueryClient } from "../../../src/lib/query-client.ts";
+
+const refused = (status: number) => () => Promise.reject(new ApiRefusal(status, "refused", "No."));
+
+describe("the query client", () => {
+  it("says that the session has ended, unless that is just what was asked", async () => {
+    const onSignedOut = vi.fn();
+    const client = createQueryClient(onSignedOut);
+    await client.fetchQuery({ queryKey: ["me"], queryFn: refused(401) }).catch(() => {});
+    await client.fetchQuery({ queryKey: ["studies"], queryFn: refused(403) }).catch(() => {});
+    expect(onSignedOut).not.toHaveBeenCalled();
+    await client.fetchQuery({ queryKey: ["studies"], queryFn: refused(401) }).catch(() => {});
+    expect(onSignedOut).toHaveBeenCalledOnce();
+  });
+});
