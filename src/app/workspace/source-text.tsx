@@ -20,9 +20,18 @@ export function SourceText({ connection, standing, cells, uploads, readOnly, onL
   const { cell, kind, problems, state, last } = standing;
   const text = connection.sourceOf(cell.id);
   const lastSource = state === "current" || !last ? undefined : last.source;
+  const names = cells.map((one) => one.name).join("\n");
   const subject = useMemo(
-    () => ({ kind, name: cell.name, cells, uploads, problems, ...(lastSource !== undefined && { lastSource }) }),
-    [kind, cell.name, cells, uploads, problems, lastSource],
+    () => ({
+      kind,
+      name: cell.name,
+      names: names.split("\n"),
+      cellsNow: () => connection.snapshot().cells,
+      uploads,
+      problems,
+      ...(lastSource !== undefined && { lastSource }),
+    }),
+    [kind, cell.name, names, connection, uploads, problems, lastSource],
   );
   if (!text) return null;
   return (

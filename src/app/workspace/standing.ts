@@ -77,6 +77,14 @@ function whyAhead(own: ResolvedCell, { last }: CellStatus, ahead: ReadonlySet<st
   return changed ?? (above ? `${above} changed` : "what it rests on changed; load the page again if this stays");
 }
 
+/** Whether two standings of a cell say the same. Cell and status are the same objects while nothing in them changes. */
+export function isSameStanding(a: Standing, b: Standing): boolean {
+  if (a.cell !== b.cell || a.status !== b.status) return false;
+  const { cell: _, status: __, ...left } = a;
+  const { cell: ___, status: ____, ...right } = b;
+  return JSON.stringify(left) === JSON.stringify(right);
+}
+
 /** Those that wait to be asked for: how many, and about how long together. */
 export function waitingToBeAsked(standings: readonly Standing[]): { count: number; aboutMs: number } {
   const waiting = standings.filter(

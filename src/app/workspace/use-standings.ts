@@ -1,12 +1,15 @@
 import { useQueryClient } from "@tanstack/react-query";
-import { useEffect, useMemo } from "react";
+import { useCallback, useEffect, useMemo, useState } from "react";
+import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { fingerprintCells } from "../../../shared/study/fingerprints.ts";
-import { resolveCells } from "../../../shared/study/resolve.ts";
+import { inOrder } from "../../../shared/study/order.ts";
+import { parseCell, type StudyCell } from "../../../shared/study/parse-cell.ts";
+import { resolveParsed } from "../../../shared/study/resolve.ts";
 import { useStatus } from "../../features/findings/api/get-status.ts";
 import { useUploads } from "../../features/uploads/api/list-uploads.ts";
 import { useStudyPart } from "../../sync/index.ts";
 import type { OpenStudy } from "./open-study.ts";
-import { standingsOf } from "./standing.ts";
+import { isSameStanding, type Standing, standingsOf } from "./standing.ts";
 
 const NONE: never[] = [];
 
@@ -18,12 +21,42 @@ export function useStandings({ study, connection }: Pick<OpenStudy, "study" | "c
   const { data: uploads, error } = useUploads(study.id);
   const status = told ?? first;
   useUploadsOfOthers(study.id, cells, uploads);
-  const resolved = useMemo(() => (uploads ? resolveCells(cells, uploads) : NONE), [cells, uploads]);
-  const standings = useMemo(
-    () => standingsOf(cells, resolved, fingerprintCells(resolved, uploads ?? NONE), status),
-    [cells, resolved, uploads, status],
+  const parse = useParsed();
+  const resolved = useMemo(
+    () => (uploads ? resolveParsed(inOrder(cells).map(parse), uploads) : NONE),
+    [cells, uploads, parse],
+  );
+  const standings = useUnchanged(
+    useMemo(
+      () => standingsOf(cells, resolved, fingerprintCells(resolved, uploads ?? NONE), status),
+      [cells, resolved, uploads, status],
+    ),
   );
   return { standings, cells, uploads: uploads ?? NONE, error, isKnown: uploads !== undefined && status !== undefined };
+}
+
+/** Reads a cell's text once for as long as it stays as it is: whoever types changes one text of many. */
+function useParsed(): (cell: CellSource) => StudyCell {
+  const [known] = useState(() => new WeakMap<CellSource, StudyCell>());
+  return useCallback(
+    (cell) => {
+      const before = known.get(cell);
+      if (before) return before;
+      const read = { ...cell, parsed: parseCell(cell.kind, cell.source) };
+      known.set(cell, read);
+      return read;
+    },
+    [known],
+  );
+}
+
+/** Standings that say what they said before are the same objects as before. */
+function useUnchanged(standings: readonly Standing[]): readonly Standing[] {
+  const [before, setBefore] = useState<readonly Standing[]>(NONE);
+  const kept = standings.map((now) => before.find((one) => isSameStanding(one, now)) ?? now);
+  const isSame = kept.length === before.length && kept.every((one, place) => one === before[place]);
+  if (!isSame) setBefore(kept);
+  return isSame ? before : kept;
 }
 
 /** A cell that names an upload unknown here may name one a coauthor has just added. */

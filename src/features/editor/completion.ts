@@ -1,4 +1,5 @@
 import type { Completion, CompletionContext, CompletionResult } from "@codemirror/autocomplete";
+import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { readDocument } from "../../../shared/study/document.ts";
 import { keyEdit } from "../../../shared/study/edit.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
@@ -55,7 +56,8 @@ function values(subject: EditorSubject, where: WhereInYaml, text: string): Compl
   return [...plain, ...named(subject, word, text)];
 }
 
-function named({ cells, uploads, name, kind }: EditorSubject, word: KeyWord, text: string): Completion[] {
+function named({ cellsNow, uploads, name, kind }: EditorSubject, word: KeyWord, text: string): Completion[] {
+  const cells = cellsNow();
   switch (word.names) {
     case undefined:
       return [];
@@ -78,7 +80,7 @@ function named({ cells, uploads, name, kind }: EditorSubject, word: KeyWord, tex
 /** A name as YAML writes it: in quotes where it must be. */
 const written = (name: string) => keyEdit("", ["k"], [name]).insert.trim().slice("k: [".length, -1);
 
-type Rest = Pick<EditorSubject, "cells" | "uploads" | "kind">;
+type Rest = Pick<EditorSubject, "uploads" | "kind"> & { readonly cells: readonly CellSource[] };
 
 /** The keys of the data cell the text is, or reads. */
 function dataOf({ cells, kind }: Pick<Rest, "cells" | "kind">, text: string): Readonly<Record<string, unknown>> {

@@ -8,14 +8,17 @@ import type { CellSource } from "../../../shared/study/cell-source.ts";
 export interface EditorSubject {
   readonly kind: CellKind | null;
   readonly name: string;
-  readonly cells: readonly CellSource[];
+  /** Names of all cells: what a reference may lead to. */
+  readonly names: readonly string[];
+  /** The cells as they are when something is to be completed. */
+  readonly cellsNow: () => readonly CellSource[];
   readonly uploads: readonly Upload[];
   readonly problems: readonly Problem[];
   /** The source of the last finding, while it is not this one's. */
   readonly lastSource?: string;
 }
 
-const NOTHING: EditorSubject = { kind: null, name: "", cells: [], uploads: [], problems: [] };
+const NOTHING: EditorSubject = { kind: null, name: "", names: [], cellsNow: () => [], uploads: [], problems: [] };
 
 /** Extensions read the subject from the state, so that one editor serves a cell for as long as it is shown. */
 export const editorSubject = Facet.define<EditorSubject, EditorSubject>({

@@ -36,14 +36,14 @@ const CHANGED = Decoration.mark({ class: "cm-changed" });
 
 /** Names of other cells, as links look. */
 function references(state: EditorState): Mark[] {
-  const { kind, cells } = state.facet(editorSubject);
+  const { kind, names } = state.facet(editorSubject);
   if (!kind) return [];
   const { places, value } = readDocument(state.doc.toString());
   const keys = [...Object.keys(REFERENCES[kind]), ...(kind === "system" ? [LIKE] : [])];
   return keys.flatMap((key) => {
     const name = (value as Record<string, unknown> | null | undefined)?.[key];
     const place = places.value([key]);
-    if (!place || place.to <= place.from || !cells.some((cell) => cell.name === name)) return [];
+    if (!place || place.to <= place.from || !names.includes(String(name))) return [];
     return [{ from: place.from, to: place.to, decoration: REFERENCE }];
   });
 }

@@ -43,7 +43,7 @@ function subject(kind: EditorSubject["kind"], base = "data: survey\nform: aids\n
   const all = cells(base);
   const own = all.find((cell) => cell.kind === kind)!;
   const problems = resolveCells(all, [upload]).find(({ id }) => id === own.id)!.problems;
-  return { kind, name: own.name, cells: all, uploads: [upload], problems };
+  return { kind, name: own.name, names: all.map(({ name }) => name), cellsNow: () => all, uploads: [upload], problems };
 }
 
 /** What is offered where | stands. */
