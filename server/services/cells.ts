@@ -72,6 +72,13 @@ export function createCellService({
     cancel: (studyId, cellId) => conductorOf(studyId).cancel(cellId),
     bringUpToDate: (studyId, userId) => conductorOf(studyId).bringUpToDate(userId),
 
+    removed(studyId) {
+      clearTimeout(rests.get(studyId));
+      rests.delete(studyId);
+      conductors.get(studyId)?.close();
+      conductors.delete(studyId);
+    },
+
     finding(studyId, fingerprint): StoredFinding | undefined {
       const row = findFinding(db, studyId, fingerprint);
       if (!row) return undefined;

@@ -13,6 +13,8 @@ export interface Cells {
   estimate(studyId: string, cellId: string, userId: string): Promise<void> | void;
   cancel(studyId: string, cellId: string): Promise<void> | void;
   bringUpToDate(studyId: string, userId: string): Promise<void> | void;
+  /** The study is gone: what runs for it stops, and nothing is kept of it. */
+  removed(studyId: string): void;
   finding(studyId: string, fingerprint: string): Promise<StoredFinding | undefined> | StoredFinding | undefined;
 }
 

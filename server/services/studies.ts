@@ -22,7 +22,7 @@ export interface StudyView {
 interface Collaborators {
   readonly db: Database;
   readonly access: Access;
-  readonly cells: Pick<Cells, "status">;
+  readonly cells: Pick<Cells, "status" | "removed">;
   readonly closePerson: ClosePerson;
 }
 
@@ -63,11 +63,12 @@ export function createStudyService({ db, access, cells, closePerson }: Collabora
       return this.read(actor, studyId);
     },
 
-    /** With its document, uploads, findings and referee copies; everyone's sockets are closed. */
+    /** With its document, uploads, findings and referee copies; estimations stop, everyone's sockets are closed. */
     delete(actor: Actor, studyId: string): void {
       access.allow(actor, "study.delete", studyId);
       const people = peopleOf(db, studyId);
       deleteStudy(db, studyId);
+      cells.removed(studyId);
       for (const person of people) closePerson(person.id, studyId);
     },
 

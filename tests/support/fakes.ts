@@ -55,6 +55,10 @@ export class FakeCells implements Cells {
     this.calls.push(`bring up to date ${studyId} ${userId}`);
   }
 
+  removed(studyId: string): void {
+    this.calls.push(`removed ${studyId}`);
+  }
+
   finding(studyId: string, fingerprint: string): StoredFinding | undefined {
     const found = this.#cellsOf(studyId).find(({ status }) => status.fingerprint === fingerprint)?.finding;
     return found === undefined ? undefined : { finding: found, foundAt: new Date(0), tookMs: 12 };

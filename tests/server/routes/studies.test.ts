@@ -97,6 +97,7 @@ test("a deleted study is gone for everyone, and its sockets are closed", async (
   await owner.ask("POST", study("/people"), { email: other.email, role: "reader" });
   application.sockets.closed.length = 0;
   expect((await owner.ask("DELETE", study())).status).toBe(204);
+  expect(application.cells.calls).toContain(`removed ${studyId}`);
   expect(application.sockets.closed.sort()).toEqual([`${owner.id} ${studyId}`, `${other.id} ${studyId}`].sort());
   expect((await owner.ask("GET", study())).status).toBe(404);
 });

@@ -227,6 +227,16 @@ describe("an estimation", () => {
     expect((await estimated()).base.state).toBe("current");
   });
 
+  it("stops without a fault when its study is removed, and nothing of it is kept", async () => {
+    await service.estimate(STUDY, "base", "u1");
+    const [{ signal }] = pool.open;
+    open.db.delete(studies).run();
+    service.removed(STUDY);
+    expect([signal.aborted, pool.open.length]).toEqual([true, 0]);
+    await new Promise((later) => setTimeout(later, 20));
+    expect(faults).toEqual([]);
+  });
+
   it("ends when its cell is removed", async () => {
     await settled();
     await service.estimate(STUDY, "base", "u1");
