@@ -63,7 +63,9 @@ function misused(sentence: string): number {
 
 function printed(file: string, { place, key, sentence }: Complaint): string {
   const where = place ? `${file}:${place.line}:${place.column}` : file;
-  return key === "" ? `${where}: ${sentence}` : `${where}: ${key}: ${sentence}`;
+  const line = key === "" ? `${where}: ${sentence}` : `${where}: ${key}: ${sentence}`;
+  // A name from someone else's file is shown on a terminal, which would obey the control characters in it.
+  return line.replace(/\p{Cc}/gu, "\uFFFD");
 }
 
 /** On a terminal, one line says how far it is; elsewhere nothing but errors is said. */

@@ -93,6 +93,14 @@ describe("the command", () => {
     );
   });
 
+  it("shows no control character of a file: a terminal would obey it", () => {
+    written(STUDY.replace("data/tuna.csv", '"\\e[2J\\a.csv"'), "escaping.yaml");
+    const { status, stderr } = command("escaping.yaml");
+    expect(status).toBe(1);
+    expect(stderr).toContain("\uFFFD[2J\uFFFD.csv");
+    expect(stderr.replaceAll("\n", "")).not.toMatch(/\p{Cc}/u);
+  });
+
   it.each([[[]], [["a.yaml", "b.yaml"]], [["--colour", "a.yaml"]], [["gone.yaml"]]])(
     "called wrongly with %j says how, and exits with 2",
     (words) => {
