@@ -61,7 +61,8 @@ function read(text: string, longest: number): SourceDocument {
       version: "1.2",
       schema: "core",
       merge: false,
-      uniqueKeys: (a, b) => isScalar(a) && isScalar(b) && String(a.value) === String(b.value),
+      // Looked for below, in a time that grows with the keys and not with their square.
+      uniqueKeys: false,
       lineCounter: lines,
       prettyErrors: false,
       logLevel: "error",
@@ -128,6 +129,15 @@ function forbidden(document: Document, text: string, lines: LineCounter): Proble
       }
       if (node.tag) refuse(node, "Tags (words after !) are not used here; remove it.", "!");
     },
+    Map: (_, map) => {
+      const seen = new Set<string>();
+      for (const { key } of map.items) {
+        if (!isScalar(key)) continue;
+        const word = String(key.value);
+        if (seen.has(word)) refuse(key, `${word.slice(0, 60)} is given twice; keep one.`);
+        seen.add(word);
+      }
+    },
     Pair: (_, pair) => {
       const key = pair.key as Node | null;
       if (key && !isScalar(key)) refuse(key, "A key is one word or a few, never a list or a map.");
@@ -157,10 +167,6 @@ function syntaxProblem(error: YAMLError, text: string, lines: LineCounter): Prob
   const from = Math.min(error.pos[0], text.length);
   const to = Math.min(Math.max(error.pos[1], from), text.length);
   const place = placeAt(lines, from, to);
-  if (error.code === "DUPLICATE_KEY") {
-    const key = text.slice(from).match(/^["']?([^:"'\n]{1,60})/)?.[1] ?? "a key";
-    return { sentence: `${key.trim()} is given twice; keep one.`, place };
-  }
   const unclosed = /must be sufficiently indented and end with a (.)/.exec(error.message);
   if (unclosed) return { sentence: `A closing ${unclosed[1]} is missing before this place.`, place };
   return { sentence: SYNTAX[error.code] ?? "This cannot be read as YAML here.", place };

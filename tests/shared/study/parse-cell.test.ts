@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { LONGEST_SOURCE } from "../../../shared/study/document.ts";
+import { LONGEST_SOURCE, LONGEST_STUDY_FILE, readDocument } from "../../../shared/study/document.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
 
 const sentences = (kind: string, source: string) => parseCell(kind, source).problems.map(({ sentence }) => sentence);
@@ -148,6 +148,13 @@ describe("YAML that is refused", () => {
     expect(sentences("system", `# ${"x".repeat(LONGEST_SOURCE)}`)).toEqual([
       "The text has 32,770 characters; at most 32,768 are read.",
     ]);
+  });
+
+  it("with many keys is read in a time that grows with them, not with their square", () => {
+    const keys = Array.from({ length: 60_000 }, (_, i) => `k${i}: 1`);
+    const started = performance.now();
+    expect(readDocument(keys.join("\n"), LONGEST_STUDY_FILE).problems).toEqual([]);
+    expect(performance.now() - started).toBeLessThan(8_000);
   });
 
   it("may be nested as deep as it likes without harm", () => {
