@@ -28,7 +28,7 @@ export interface JobPool {
 }
 
 interface PoolSettings extends WorkerSettings {
-  /** Default: the processors there are, less the one that answers requests. */
+  /** For cells; one more reads uploads. Default: the processors there are, less the one that answers requests. */
   readonly threads?: number;
 }
 
@@ -36,16 +36,9 @@ interface PoolSettings extends WorkerSettings {
 const GRACE_MILLISECONDS = 5_000;
 
 export function createPool({ databasePath, threads = Math.max(1, availableParallelism() - 1) }: PoolSettings): JobPool {
-  const isSource = import.meta.url.endsWith(".ts");
-  const pool = new Piscina({
-    filename: new URL(isSource ? "./worker.ts" : "./worker.js", import.meta.url).href,
-    // From the TypeScript sources, a worker needs the same loader as the program.
-    ...(isSource && { execArgv: ["--import", "tsx"] }),
-    workerData: { databasePath } satisfies WorkerSettings,
-    minThreads: 1,
-    maxThreads: threads,
-    idleTimeout: 5 * 60_000,
-  });
+  const cells = threadsFor(databasePath, threads, 1);
+  // Someone waits for an answer: a file is not read behind other people's estimations.
+  const uploads = threadsFor(databasePath, 1, 0);
   const running = new Set<AbortController>();
 
   async function send<T>(task: Task, onProgress: (now: ProgressNow) => void, signal: AbortSignal): Promise<T> {
@@ -65,6 +58,7 @@ export function createPool({ databasePath, threads = Math.max(1, availableParall
     running.add(stopper);
     try {
       const sent: Sent = { task, flag, port: port2 };
+      const pool = task.kind === "cell" ? cells : uploads;
       const outcome: Outcome<T> = await pool.run(sent, { transferList: [port2], signal: ender.signal });
       return resultOf(outcome);
     } catch (error) {
@@ -84,7 +78,20 @@ export function createPool({ databasePath, threads = Math.max(1, availableParall
       send<ParsedUploadResult>({ kind: "parse upload", uploadId }, onProgress, signal),
     async close() {
       for (const stopper of running) stopper.abort();
-      await pool.destroy();
+      await Promise.all([cells.destroy(), uploads.destroy()]);
     },
   };
+}
+
+function threadsFor(databasePath: string, most: number, fewest: number): Piscina {
+  const isSource = import.meta.url.endsWith(".ts");
+  return new Piscina({
+    filename: new URL(isSource ? "./worker.ts" : "./worker.js", import.meta.url).href,
+    // From the TypeScript sources, a worker needs the same loader as the program.
+    ...(isSource && { execArgv: ["--import", "tsx"] }),
+    workerData: { databasePath } satisfies WorkerSettings,
+    minThreads: fewest,
+    maxThreads: most,
+    idleTimeout: 5 * 60_000,
+  });
 }

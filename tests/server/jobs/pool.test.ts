@@ -140,6 +140,28 @@ describe("the worker threads", () => {
     ]);
   });
 
+  it("compute cells while a file is read, neither waiting for the other", async () => {
+    const lines = Array.from({ length: 400_000 }, (_, i) => `${i},${i * 7},word ${i}`);
+    addUpload("meanwhile", Buffer.from(`a,b,c\n${lines.join("\n")}\n`));
+    const single = createPool({ databasePath: open.path, threads: 1 });
+    const stopper = new AbortController();
+    let isRead = false;
+    let reading: Promise<unknown> = Promise.resolve();
+    await new Promise<void>((begun) => {
+      reading = single
+        .parseUpload("meanwhile", () => begun(), stopper.signal)
+        .catch((error: unknown) => error)
+        .finally(() => {
+          isRead = true;
+        });
+    });
+    await single.runCell(job("d", data), () => {}, signal);
+    expect(isRead).toBe(false);
+    stopper.abort();
+    await reading;
+    await single.close();
+  });
+
   it("stop within a row's time when cancelled, and go on with the next", async () => {
     // Rows enough for half a minute of reading.
     const lines = Array.from({ length: 400_000 }, (_, i) => `${i},${i * 7},word ${i}`);
