@@ -1,11 +1,16 @@
 import { useEffect, useId, useState } from "react";
 import { useNavigate, useParams } from "react-router-dom";
+import type { Upload } from "../../../shared/schemas/resources.ts";
+import type { CellSource } from "../../../shared/study/cell-source.ts";
+import { parseCell } from "../../../shared/study/parse-cell.ts";
 import { LinkButton, LinkWord } from "../../components/button.tsx";
 import { presentPeople, typists } from "../../features/presence/present.ts";
 import { usePageTitle } from "../../lib/page-title.ts";
 import { pages } from "../../lib/paths.ts";
 import { useStudyPart } from "../../sync/index.ts";
 import { BandSource, type SourcePage } from "../workspace/band-source.tsx";
+import { ColumnList } from "../workspace/column-list.tsx";
+import { demographicsOn } from "../workspace/column-uses.ts";
 import { type OpenStudy, useOpenStudy } from "../workspace/open-study.ts";
 import { FindingAside, OpenedFinding } from "../workspace/opened-finding.tsx";
 import { ReadByThread } from "../workspace/read-by-thread.tsx";
@@ -23,6 +28,7 @@ export default function OpenedCellPage() {
   const { study, connection, readOnly } = open;
   const { standings, cells, uploads } = useStandings(open);
   const standing = standings.find(({ cell }) => cell.id === cellId);
+  const upload = standing && uploadOf(standing.cell, uploads);
   const [dialog, setDialog] = useState<StudyDialog>();
   const [renaming, setRenaming] = useState(false);
   const oneColumn = useOneColumn();
@@ -75,6 +81,13 @@ export default function OpenedCellPage() {
                     typing={typing.length > 0 && <TypingHere people={typing} className="mt-4 block" />}
                     title
                   />
+                  {upload && (
+                    <ColumnList
+                      upload={upload}
+                      source={standing.cell.source}
+                      demographics={demographicsOn(standing.cell.name, cells)}
+                    />
+                  )}
                   <FindingAside studyId={study.id} fingerprint={standing.fingerprint} />
                 </div>
                 <div className="recto">
@@ -93,6 +106,13 @@ export default function OpenedCellPage() {
       <StudyDialogs {...open} standings={standings} open={dialog} onClose={() => setDialog(undefined)} />
     </>
   );
+}
+
+/** The upload a data cell names. */
+function uploadOf({ kind, source }: CellSource, uploads: readonly Upload[]): Upload | undefined {
+  if (kind !== "data") return undefined;
+  const { upload } = parseCell("data", source).written;
+  return uploads.find(({ name }) => name === upload);
 }
 
 /** Tells the others that this person has the cell open. */
