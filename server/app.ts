@@ -1,3 +1,4 @@
+import compression from "compression";
 import express, { type Express, type RequestHandler } from "express";
 import type { Logger } from "pino";
 import type { Installation } from "../shared/schemas/resources.ts";
@@ -36,6 +37,7 @@ export function createApp({ config, auth, services, installation, logger, pages 
   app.set("query parser", "simple");
   app.use(logRequests(logger));
   app.use(protectPages(config));
+  app.use(compression());
   app.use("/api", neverKept, ownPagesOnly(config.trustedOrigins), express.json({ limit: "256kb" }));
   app.use("/api/auth", authenticationRoutes({ auth, limits: config.limits, signedOut: services.signedOut }));
   app.use("/api", readSession(auth), apiRoutes({ config, services, installation }), nothingHere);

@@ -1,3 +1,4 @@
+import { createServer, type Server } from "node:http";
 import { assemble } from "./assemble.ts";
 import { type Config, readConfig } from "./config.ts";
 
@@ -14,6 +15,8 @@ const say = (line: string) => console.log(line);
 
 try {
   const config = readConfig(process.env);
+  // Asked first: a demo study takes seconds to make, and a taken port should not cost them.
+  await release(await listen(createServer(), config));
   const running = await assemble(config, say);
   await listen(running.server, config);
   announce(config, running.installation.demo);
@@ -23,14 +26,18 @@ try {
   process.exit(1);
 }
 
-function listen(server: Awaited<ReturnType<typeof assemble>>["server"], { port, host }: Config): Promise<void> {
+function listen(server: Server, { port, host }: Config): Promise<Server> {
   return new Promise((ready, fail) => {
     server.once("error", (error: NodeJS.ErrnoException) => {
       if (error.code !== "EADDRINUSE") return fail(error);
       fail(new Error(`Port ${port} is taken by another program: stop that one, or set PORT to another.`));
     });
-    server.listen(port, host, ready);
+    server.listen(port, host, () => ready(server));
   });
+}
+
+function release(server: Server): Promise<void> {
+  return new Promise((ready) => server.close(() => ready()));
 }
 
 function announce({ url }: Config, demo: readonly { email: string; passphrase: string; role: string }[]): void {

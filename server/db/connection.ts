@@ -21,6 +21,8 @@ export function connectDatabase(path: string): OpenDatabase {
     // An acknowledged edit survives a crash of the program under NORMAL, and of the machine under FULL.
     sqlite.pragma("synchronous = FULL");
     sqlite.pragma("foreign_keys = ON");
+    // Households' data that someone removed leave the file, not only its index.
+    sqlite.pragma("secure_delete = ON");
   } catch (error) {
     sqlite.close();
     throw isNotADatabase(error)

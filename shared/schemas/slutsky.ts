@@ -17,7 +17,6 @@ export const pointSpecification = z.union([
   /** One's own, in the units uploaded. */
   z.strictObject({ prices: z.record(goodName, finite.positive()), x: finite.positive() }),
 ]);
-export type PointSpecification = z.infer<typeof pointSpecification>;
 
 export const slutskySpecification = z.strictObject({
   kind: z.literal("slutsky"),

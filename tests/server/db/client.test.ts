@@ -1,4 +1,4 @@
-import { writeFileSync } from "node:fs";
+import { readFileSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { afterEach, expect, test } from "vitest";
 import { connectDatabase, openDatabase } from "../../../server/db/client.ts";
@@ -29,6 +29,18 @@ test("what is written is there for the next to open it, and goes with its study"
   deleteStudy(second.db, "s");
   expect(loadUpdates(second.db, "s")).toEqual([]);
   second.close();
+});
+
+test("what is deleted leaves the file, not only its index", () => {
+  const open = openDatabase(path());
+  insertStudy(open.db, { id: "s", title: "Levy", lede: "", createdAt: new Date(), changedAt: new Date() });
+  appendUpdate(open.db, "s", new TextEncoder().encode("household 4711 bought nothing"), null);
+  open.sqlite.pragma("wal_checkpoint(TRUNCATE)");
+  expect(readFileSync(path()).includes("household 4711")).toBe(true);
+  deleteStudy(open.db, "s");
+  open.sqlite.pragma("wal_checkpoint(TRUNCATE)");
+  expect(readFileSync(path()).includes("household 4711")).toBe(false);
+  open.close();
 });
 
 test("a database of a newer program is refused with both versions, and not touched", () => {
