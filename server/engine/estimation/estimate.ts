@@ -12,13 +12,14 @@ import { conventionalCovariance, leastSquaresCovariance } from "./covariance.ts"
 import { durbinWatson } from "./durbin-watson.ts";
 import type { Estimation } from "./estimation.ts";
 import { leastSquares, maximumLikelihood, seeminglyUnrelated } from "./estimators.ts";
-import { refuseTooFewRows } from "./failures.ts";
-import { fitMeasures, meanResponses } from "./fit-measures.ts";
+import { refuseConstantShares, refuseTooFewRows } from "./failures.ts";
+import { fitMeasures } from "./fit-measures.ts";
 import type { Solution } from "./minimise.ts";
 import type { Moments } from "./moments.ts";
 import { nestedFits, rememberFit } from "./nested-fits.ts";
 import { DEFAULT_INDEX } from "./price-index.ts";
 import { momentsRequest, sizeOf, sourceOf } from "./request.ts";
+import { meanResponses } from "./responses.ts";
 import { covarianceOf } from "./weighting.ts";
 
 /** A system finding but for what the economics of the fitted system adds. */
@@ -48,6 +49,7 @@ export function estimateSystem(
   };
   const within = systemForm(system, size, withinEquations(specification)).free;
   refuseTooFewRows(moments.rows, estimation.form.free, estimation.equations.length, within);
+  refuseConstantShares(estimation);
   const solution = solve(specification, system, size, estimation, control);
   const covariance =
     specification.estimator === "least squares"

@@ -1,9 +1,10 @@
+import { printQuantity, printSize } from "../../../shared/tables/numbers.ts";
 import { Refusal } from "../refusal.ts";
+import { columnOf, dot } from "./columns.ts";
 import type { Estimation } from "./estimation.ts";
 import type { NormalFactor } from "./normal-factor.ts";
+import { centredResponses, meanResponses } from "./responses.ts";
 import type { DependentColumn } from "./whitening.ts";
-
-const digits = (value: number) => value.toPrecision(3);
 
 export function refuseNotConverged(
   iterations: number,
@@ -12,8 +13,8 @@ export function refuseNotConverged(
   condition: number,
 ): never {
   throw new Refusal(
-    `The estimation did not converge: after ${iterations} iterations the largest gradient per observation is ${digits(gradient)}, ` +
-      `the largest step ${digits(largestStep)} where 1e-10 was wanted, and the condition number ${digits(condition)}.`,
+    `The estimation did not converge: after ${iterations} iterations the largest gradient per observation is ${printSize(gradient)}, ` +
+      `the largest step ${printSize(largestStep)} where 10⁻¹⁰ was wanted, and the condition number ${printSize(condition)}.`,
   );
 }
 
@@ -35,6 +36,26 @@ function dependence({ column, on }: DependentColumn): string {
   if (on.length === 0) return `${column} is constant`;
   return `${column} is an exact linear combination of ${on.join(", ")}${on.length === 1 ? " and the constant" : ""}`;
 }
+
+/** Deviations below this, relative to the largest mean share, are rounding. */
+const ROUNDING = 1e-13;
+
+/** Shares that never vary leave their equations nothing to explain, and rounding to be taken for residuals. */
+export function refuseConstantShares({ moments, equations }: Pick<Estimation, "moments" | "equations">): void {
+  const centred = centredResponses({ moments });
+  const means = meanResponses({ moments });
+  const least = ROUNDING * Math.max(...means.map(Math.abs)) * Math.sqrt(moments.rows);
+  const constant = means.flatMap((mean, i) => (lengthOf(columnOf(centred, i)) <= least ? [{ mean, i }] : []));
+  if (constant.length === 0) return;
+  throw new Refusal(
+    constant.map(({ mean, i }) => ({
+      sentence: `The residual covariance is singular: ${moments.responseLabels[i]} is ${printShare(mean)} in all ${moments.rows} rows used, so that its equation (one of ${equations.length + 1}) has nothing to explain.`,
+    })),
+  );
+}
+
+const lengthOf = (column: Float64Array) => Math.sqrt(dot(column, column));
+const printShare = (share: number) => printQuantity(Math.abs(share) < ROUNDING ? 0 : share, "share");
 
 /**
  * Each equation needs as many rows as it has coefficients before restrictions across equations, and

@@ -1,7 +1,8 @@
-import { type Columns, columnOf, dot, pickColumns } from "./columns.ts";
+import { columnOf, dot, pickColumns } from "./columns.ts";
 import type { Estimation } from "./estimation.ts";
 import { LOG_TWO_PI_E, type Solution } from "./minimise.ts";
 import { asOneColumn, weightBlocks } from "./residuals.ts";
+import { centredResponses } from "./responses.ts";
 import { residualCovariance } from "./weighting.ts";
 
 export interface FitMeasures {
@@ -36,25 +37,4 @@ export function fitMeasures(estimation: Estimation, solution: Solution): FitMeas
     }),
     systemRSquared: 1 - (equations.length * rows) / dot(spread.values, spread.values),
   };
-}
-
-/** Weighted means of the responses; the first term is the constant. */
-export function meanResponses({ moments }: Pick<Estimation, "moments">): number[] {
-  const constant = columnOf(moments.terms, 0);
-  const squares = dot(constant, constant);
-  return Array.from(
-    { length: moments.responses.columns },
-    (_, i) => dot(constant, columnOf(moments.responses, i)) / squares,
-  );
-}
-
-function centredResponses(estimation: Estimation): Columns {
-  const { responses, terms } = estimation.moments;
-  const constant = columnOf(terms, 0);
-  const centred: Columns = { ...responses, values: responses.values.slice() };
-  meanResponses(estimation).forEach((mean, i) => {
-    const column = columnOf(centred, i);
-    for (let r = 0; r < column.length; r++) column[r] -= mean * constant[r];
-  });
-  return centred;
 }

@@ -81,11 +81,35 @@ describe("too little data", () => {
     expect(message).toContain("12 free coefficients in 3 equations need at least 8");
   });
 
-  it("a good whose share never differs from what is predicted", () => {
+  it("a share that never varies, zero or not, whichever equation is dropped", () => {
     const data = sample();
-    const shares = [data.shares[0], data.shares[0].map((share) => 1 - share), data.shares[2].map(() => 0)];
-    const message = refusalOf(() => estimated({ ...data, shares }, SYMMETRIC));
-    expect(message).toMatch(/residual covariance is singular: the residuals of the share of good \d/);
+    const { shares } = data;
+    const rest = (level: number) => shares[0].map((share) => 1 - level - 0.5 * share);
+    const half = shares[0].map((share) => 0.5 * share);
+    for (const level of [0, 0.1]) {
+      const constant = shares[0].map(() => level);
+      for (const [place, arranged] of [
+        [1, [constant, half, rest(level)]],
+        [2, [half, constant, rest(level)]],
+        [3, [half, rest(level), constant]],
+      ] as const) {
+        for (const form of ["aids", "la-aids", "les"]) {
+          const message = refusalOf(() => estimated({ ...data, shares: [...arranged] }, { form }));
+          expect(message).toContain(
+            `the share of good ${place} is ${level === 0 ? "0" : "0.1000"} in all 120 rows used`,
+          );
+        }
+      }
+    }
+  });
+
+  it("residuals of one equation that follow from those of the others", () => {
+    const data = sample(120, 4);
+    const [first, second] = data.shares;
+    const shares = [first, second, first.map((share, t) => 0.5 * (1 - share - second[t]) + 0.1 * (share - second[t]))];
+    shares.push(first.map((_, t) => 1 - shares[0][t] - shares[1][t] - shares[2][t]));
+    const message = refusalOf(() => estimated({ ...data, shares }, { form: "la-aids", index: "laspeyres" }));
+    expect(message).toMatch(/singular: the residuals of the share of good 3 are a linear combination/);
   });
 });
 
