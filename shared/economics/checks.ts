@@ -1,4 +1,4 @@
-import type { Matrix } from "../numerics/matrix.ts";
+import { largestEntry, type Matrix } from "../numerics/matrix.ts";
 import type { Point } from "../systems/demand-system.ts";
 import type { FittedCoefficients } from "../systems/index.ts";
 import { SYSTEMS } from "../systems/index.ts";
@@ -9,6 +9,11 @@ import { slutskyDerivatives, slutskyMatrix } from "./slutsky-matrix.ts";
 
 /** Laws that hold by construction hold to rounding; this leaves room for it and for nothing else. */
 export const TOLERANCE = 1e-8;
+
+/** Entries of the share form far above one, as far from the sample, carry rounding in proportion. */
+export function toleranceOf(largest: number): number {
+  return TOLERANCE * Math.max(1, largest);
+}
 
 export type LawStatus = "imposed" | "by form" | "free";
 
@@ -29,16 +34,18 @@ export interface LawsAtPoint {
 
 /** Whether a law is imposed on the estimates, holds by the functional form, or is free. */
 export function lawStatus(
-  { form, imposed }: Pick<FittedCoefficients, "form" | "imposed">,
+  { form, imposed, goods }: Pick<FittedCoefficients, "form" | "imposed" | "goods">,
   law: RestrictionName,
 ): LawStatus {
   if (SYSTEMS[form].heldByForm.includes(law)) return "by form";
+  // Of two goods that add up, homogeneity leaves one entry free: K is symmetric.
+  if (law === "symmetry" && goods.length === 2 && imposed.includes("homogeneity")) return "imposed";
   // In share equations that add up, symmetry implies homogeneity.
   return imposed.includes(law) || (law === "homogeneity" && imposed.includes("symmetry")) ? "imposed" : "free";
 }
 
 /** Whether the fitted system states negativity anywhere: where homogeneity is imposed or holds by form. */
-export function statesNegativity(fitted: Pick<FittedCoefficients, "form" | "imposed">): boolean {
+export function statesNegativity(fitted: Pick<FittedCoefficients, "form" | "imposed" | "goods">): boolean {
   return lawStatus(fitted, "homogeneity") !== "free";
 }
 
@@ -63,26 +70,27 @@ export function lawSizes(k: Matrix): { addingUp: number; homogeneity: number; sy
 
 /** The laws from a matrix, its shares and its eigenvalues (none without homogeneity). */
 export function lawsOf(
-  fitted: Pick<FittedCoefficients, "form" | "imposed">,
+  fitted: Pick<FittedCoefficients, "form" | "imposed" | "goods">,
   pointName: string,
   matrix: Matrix,
   shares: readonly number[],
   eigenvalues: readonly SlutskyEigenvalue[],
 ): LawsAtPoint {
   const sizes = lawSizes(matrix);
+  const tolerance = toleranceOf(largestEntry(matrix));
   const [largest] = eigenvalues;
   const lowest = Math.min(...shares);
   const highest = Math.max(...shares);
   return {
     pointName,
-    tolerance: TOLERANCE,
-    addingUp: { size: sizes.addingUp, holds: sizes.addingUp <= TOLERANCE },
+    tolerance,
+    addingUp: { size: sizes.addingUp, holds: sizes.addingUp <= tolerance },
     homogeneity: {
       size: sizes.homogeneity,
-      holds: sizes.homogeneity <= TOLERANCE,
+      holds: sizes.homogeneity <= tolerance,
       status: lawStatus(fitted, "homogeneity"),
     },
-    symmetry: { size: sizes.symmetry, holds: sizes.symmetry <= TOLERANCE, status: lawStatus(fitted, "symmetry") },
+    symmetry: { size: sizes.symmetry, holds: sizes.symmetry <= tolerance, status: lawStatus(fitted, "symmetry") },
     negativity:
       largest === undefined
         ? { stated: false }

@@ -66,6 +66,7 @@ function linearEvaluator(theta: readonly number[], size: SystemSize): Evaluator 
         numerator -= (own * levels[i] + fixed[i]) * deviation;
         denominator += own * beta[i] * deviation;
       }
+      if (!(denominator > 0)) refuseUndefined(denominator);
       const real = numerator / denominator;
       for (let i = 0; i < n; i++) shares[i] = levels[i] + beta[i] * real;
       for (let i = 0; i < n; i++) {
@@ -73,6 +74,13 @@ function linearEvaluator(theta: readonly number[], size: SystemSize): Evaluator 
       }
     },
   };
+}
+
+function refuseUndefined(denominator: number): never {
+  const below = Math.abs(denominator).toFixed(3);
+  throw new RangeError(
+    `the linear approximate system predicts no shares at these prices: 1 + a Σ β_k d_k must be above 0 and is ${below} below it, d_k being the log price of good k from its base (normalise: mean keeps them small)`,
+  );
 }
 
 /** Shares with the index's weights frozen at the predicted shares at `point`. */
@@ -143,7 +151,8 @@ function linearDerivatives(theta: readonly number[], size: SystemSize, point: Po
  *     m = (ln x − a Σ_k A_k d_k − b Σ_k w̄_k d_k) / (1 + a Σ_k β_k d_k),   A_k = α_k(z) + Σ_j γ_kj ln p_j
  *
  * Where prices are at their means d = 0 and m = ln x: the base point of normalised data. The shares are
- * not defined where 1 + a Σ β_k d_k ≤ 0 (no prices near a sample do that).
+ * not defined where 1 + a Σ β_k d_k ≤ 0, and refused there: no prices near a sample do that, but p = 1 may be
+ * far from one whose prices are not normalised.
  *
  * **Slopes** hold the index's weights fixed and take them to be the predicted shares at the point
  * (Chalfant 1987, Journal of Business and Economic Statistics 5, 233–242): μ_i = β_i, μ_ij = γ_ij − β_i w_j.

@@ -15,6 +15,8 @@ const GOODS = ["grains", "dairy", "sweet drinks"];
 /** α, Γ and β of an almost ideal system whose base point is easy by hand. */
 const THETA = [0.5, 0.3, 0.2, 0.06, -0.04, -0.02, -0.04, 0.05, -0.01, -0.02, -0.01, 0.03, -0.1, 0.02, 0.08];
 const BASE = { prices: [1, 1, 1], total: 1, demographics: [] };
+const TWO = { prices: [1.2, 0.9], total: 1.1, demographics: [] };
+const twoScales = { priceScale: [1, 1], totalScale: 1, pointName: "row 1" };
 const options = (pointName = "base point") => ({ priceScale: [2, 4, 5], totalScale: 100, pointName });
 
 describe("matrixAt", () => {
@@ -80,6 +82,27 @@ describe("matrixAt", () => {
     expect(free.eigenvalues).toEqual([]);
     expect(free.checks.negativity).toEqual({ stated: false });
     expect(free.checks.homogeneity.status).toBe("free");
+  });
+
+  test("far from the sample, where entries are large, laws that hold by form are judged in proportion", () => {
+    const les = exactly("les", GOODS, [0.3, 0.2, 0.1, 0.37, 0.41, 0.22], { imposed: [] });
+    const far = matrixAt(les, { prices: [1e6, 3e-3, 7e4], total: 0.37, demographics: [] }, options());
+    expect(Math.max(...far.share.flat().map(Math.abs))).toBeGreaterThan(1e5);
+    expect(far.checks.symmetry).toMatchObject({ status: "by form", holds: true });
+    expect(far.checks.homogeneity).toMatchObject({ status: "by form", holds: true });
+    expect(far.checks.tolerance).toBeGreaterThan(1e-3);
+    expect(far.checks.negativity.holds).toBe(false);
+  });
+
+  test("of two goods, homogeneity imposes symmetry too", () => {
+    const two = ["bread", "milk"];
+    const theta = [0.4, 0.6, 0.05, -0.05, -0.05, 0.05, 0.1, -0.1];
+    const { symmetry } = matrixAt(exactly("aids", two, theta, { imposed: ["homogeneity"] }), TWO, twoScales).checks;
+    expect(symmetry).toMatchObject({ status: "imposed", holds: true });
+    const three = matrixAt(exactly("aids", GOODS, THETA, { imposed: ["homogeneity"] }), BASE, options());
+    expect(three.checks.symmetry.status).toBe("free");
+    const free = matrixAt(exactly("aids", two, [...theta.slice(0, 6), 0.1, -0.1], { imposed: [] }), TWO, twoScales);
+    expect(free.checks.symmetry.status).toBe("free");
   });
 
   test("refusals name the thing and both numbers", () => {

@@ -66,3 +66,15 @@ test("evaluation without an index, or with means of another length, is refused",
     "mean prices has 2 entries, the system has 3 goods",
   );
 });
+
+test("prices so far from the sample's that the index's own shares have no solution are refused", () => {
+  const steep = [...theta.slice(0, 12), -0.2, 0.05, 0.15];
+  const far = sizeWith("paasche", [1e-6, 1, 1e6]);
+  // 1 + Σ β_k d_k with d = (ln 10⁶, 0, −ln 10⁶).
+  expect(1 - 0.35 * Math.log(1e6)).toBeLessThan(-3.8);
+  expect(() => system.slopes(steep, far, { prices: [1, 1, 1], total: 1, demographics: [] })).toThrow(
+    "1 + a Σ β_k d_k must be above 0 and is 3.835 below it",
+  );
+  const near = system.slopes(steep, far, { prices: [1e-6, 1, 1e6], total: 1, demographics: [] });
+  expect(near.shares.reduce((sum, share) => sum + share, 0)).toBeCloseTo(1, 14);
+});
