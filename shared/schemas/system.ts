@@ -105,6 +105,8 @@ export const systemFinding = z.strictObject({
   dropped: goodName,
   rows: count,
   weighted: z.boolean(),
+  /** Where prices are not normalised: by what the estimates depend on the units they were uploaded in, if they do. */
+  unitsMatterBy: z.enum(["a fixed α₀", "Stone's index"]).optional(),
   freeCoefficients: count,
   logLikelihood: finite,
   aic: finite,
@@ -121,11 +123,11 @@ export const systemFinding = z.strictObject({
   tests: z.array(restrictionTest),
   /** In units of estimation (normalised when the data are). */
   points: z.strictObject({ base: namedPoint, mean: namedPoint }),
-  /** η_i at the base point with its standard error, for the sentence at the head. */
+  /** η_i at the point of the checks below with its standard error, for the sentence at the head. */
   expenditureElasticities: z.array(z.strictObject({ good: goodName, estimate: finite, standardError: finite })),
   /** Predicted shares against ln x at mean prices, for the small curves in the head: 25 points over the 1st to 99th percentile. */
   engel: z.strictObject({ logTotal: vector, shares: matrix }),
-  /** Checks at the base point and over all rows: the verdict strip of everything that rests on this system. */
+  /** Checks at the base point (at the mean where prices are not normalised) and over all rows: the system's verdict strip. */
   checks: theoryChecks,
 });
 export type SystemFinding = z.infer<typeof systemFinding>;

@@ -49,9 +49,20 @@ export function printCount(count: number): string {
   return printFixed(count, 0);
 }
 
-/** A fraction as per cent, with a thin space: 99.0 %. */
+/** A sum of weights that misses none or all by this much is none or all. */
+const ROUNDING = 1e-12;
+
+/**
+ * A fraction as per cent, with a thin space: 99.0 %. What is not none does not print as none, nor what is not all as
+ * all: below 0.1 %, above 99.9 %.
+ */
 export function printPercent(fraction: number, decimals: number = DECIMALS.percent): string {
-  return `${printFixed(fraction * 100, decimals)}${THIN_SPACE}%`;
+  const rounded = Number((fraction * 100).toFixed(decimals));
+  const step = 10 ** -decimals;
+  const printed = (percent: number) => `${printFixed(percent, decimals)}${THIN_SPACE}%`;
+  if (rounded === 0 && fraction > ROUNDING) return `below ${printed(step)}`;
+  if (rounded === 100 && fraction < 1 - ROUNDING) return `above ${printed(100 - step)}`;
+  return printed(fraction * 100);
 }
 
 function superscript(exponent: number): string {

@@ -26,11 +26,16 @@ export function dataSentence({ accounting }: Pick<DataFinding, "accounting">): s
   return `${printCount(used)} of ${printCount(uploaded)} rows ${verb} used. Of the ${printCount(uploaded - used)} left out, ${listed(parts)}.`;
 }
 
-type ToldSystem = Pick<SystemFinding, "checks" | "tests" | "expenditureElasticities" | "rows">;
+type ToldSystem = Pick<SystemFinding, "checks" | "tests" | "expenditureElasticities" | "rows" | "unitsMatterBy">;
 
 /** Which goods are luxuries and necessities beyond doubt, then what theory is violated. */
 export function systemSentence(system: ToldSystem): string {
-  return [classesOfGoods(system), ...violations(system)].join(" ");
+  return [classesOfGoods(system), ...violations(system), ...ofUnits(system)].join(" ");
+}
+
+function ofUnits({ unitsMatterBy }: ToldSystem): string[] {
+  if (unitsMatterBy === undefined) return [];
+  return [`Prices are not normalised, so with ${unitsMatterBy} the estimates depend on their units.`];
 }
 
 /** Normal quantile of a 95 % interval. */
@@ -55,9 +60,14 @@ function classesOfGoods({ expenditureElasticities, checks }: ToldSystem): string
 }
 
 function violations({ checks, tests, rows }: ToldSystem): string[] {
+  const isGiven = checks.homogeneity.status !== "free";
   const laws = [
     { name: "homogeneity", status: checks.homogeneity.status, test: testOf("homogeneity", tests) },
-    { name: "symmetry", status: checks.symmetry.status, test: testOf("symmetry given homogeneity", tests) },
+    {
+      name: isGiven ? "symmetry" : "symmetry given homogeneity",
+      status: checks.symmetry.status,
+      test: testOf("symmetry given homogeneity", tests),
+    },
   ];
   const rejected = laws.filter(({ test }) => isRejected(test));
   const imposed = rejected.filter(({ status }) => status === "imposed").map(({ name }) => name);
@@ -115,6 +125,6 @@ function whereItBreaks(sample: ToldMatrix["sample"]): string[] {
   // Said where the richest tenth has more than twice its part of the breaks.
   const isOfTheRich = breaks > 1 && breaksInRichestTenth / breaks > 0.2;
   const rich = isOfTheRich ? `, ${printCount(breaksInRichestTenth)} of them in the richest tenth` : "";
-  const through = goods.length > 0 ? `, mostly through ${listed(goods.slice(0, 2))}` : "";
+  const through = goods.length > 0 ? `, most often through ${listed(goods.slice(0, 2))}` : "";
   return [`Negativity breaks in ${printCount(breaks)} of ${countedRows(rows)}${rich}${through}.`];
 }

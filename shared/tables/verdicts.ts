@@ -130,7 +130,9 @@ function overSample(
 ): Pick<Verdict, "figure" | "word" | "note"> {
   if (!counts || rows === undefined) return { figure: "holds here", word: atPoint(pointName), note: otherwise };
   if (counts.breaks === 0) return { figure: "holds", word: "holds", note: `in all ${printCount(rows)} rows` };
-  const share = detail ? `, ${printPercent(1 - counts.weightedShareThatHolds)}` : "";
+  const broken = 1 - counts.weightedShareThatHolds;
+  const isWeighted = Math.abs(broken - counts.breaks / rows) > 1e-9;
+  const share = detail ? `, ${printPercent(broken)}${isWeighted ? " by weight" : ""}` : "";
   return { figure: "holds here", word: atPoint(pointName), note: `breaks in ${countedRows(counts.breaks)}${share}` };
 }
 

@@ -18,7 +18,8 @@ import { checkSample } from "./sample-checks.ts";
 import { weightedQuantiles } from "./weighted.ts";
 
 /**
- * A system cell: moments, estimates, and what the estimates say at the base point and over the sample.
+ * A system cell: moments, estimates, and what the estimates say at the base point (of data not normalised,
+ * the mean) and over the sample.
  * Errors: `Refusal` (fewer rows than coefficients, singular, not converged …), `Cancelled`.
  */
 export function runSystem(
@@ -31,10 +32,13 @@ export function runSystem(
   const { fitted } = estimate;
   const base = basePoint(data, fitted.demographics);
   const mean = meanPoint(data, fitted.demographics);
+  // What is not normalised is nowhere near p = x = 1: then the head of the finding stands at the sample mean.
+  const [point, pointName] = data.finding.normalise === "mean" ? [base, "base point"] : [mean, "mean"];
   return refusingRanges(() => {
-    const { expenditure, expenditureErrors } = elasticitiesAt(fitted, base);
+    const { expenditure, expenditureErrors } = elasticitiesAt(fitted, point);
     return systemFinding.parse({
       ...estimate,
+      ...unitsMatter(specification, data),
       points: { base, mean },
       expenditureElasticities: fitted.goods.map((good, i) => ({
         good,
@@ -42,9 +46,16 @@ export function runSystem(
         standardError: expenditureErrors[i],
       })),
       engel: engelCurves(fitted, data, mean),
-      checks: { ...theoryChecksAt(fitted, base, "base point"), sample: checkSample(fitted, data, control) },
+      checks: { ...theoryChecksAt(fitted, point, pointName), sample: checkSample(fitted, data, control) },
     });
   });
+}
+
+/** AIDS with α₀ fixed and Stone's index are not invariant to units (Moschini 1995, American Journal of Agricultural Economics 77). */
+function unitsMatter({ form, index }: SystemSpecification, data: PreparedData): Pick<SystemFinding, "unitsMatterBy"> {
+  if (data.finding.normalise === "mean") return {};
+  if (form === "aids") return { unitsMatterBy: "a fixed α₀" };
+  return form === "la-aids" && index === "stone" ? { unitsMatterBy: "Stone's index" } : {};
 }
 
 /** Specifications on the same rows that need the same moments read the rows once between them. */

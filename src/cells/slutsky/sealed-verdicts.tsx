@@ -7,12 +7,12 @@ import { stripOf } from "../verdicts.ts";
 
 type SealedSlutsky = SealedContent["slutsky"];
 
-/** "48 rows, 44 of them in the richest tenth of expenditure, mostly through grains and meat & fish." */
+/** "48 rows, 44 of them in the richest tenth of expenditure, most often through grains and meat & fish." */
 function whereItBreaks({ breaks, breaksInRichestTenth, goods }: NonNullable<SealedSlutsky["sample"]>): string {
   const rows = breaks === 1 ? "1 row" : `${printCount(breaks)} rows`;
   const rich =
     breaksInRichestTenth > 0 ? `, ${printCount(breaksInRichestTenth)} of them in the richest tenth of expenditure` : "";
-  const through = goods.length > 0 ? `, mostly through ${listWords(goods.slice(0, 2))}` : "";
+  const through = goods.length > 0 ? `, most often through ${listWords(goods.slice(0, 2))}` : "";
   return `${rows}${rich}${through}.`;
 }
 

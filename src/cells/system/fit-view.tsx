@@ -2,6 +2,7 @@ import type { ReactNode } from "react";
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { DECIMALS, printCount, printFixed, printSize } from "../../../shared/tables/numbers.ts";
+import { withArticle } from "../../../shared/tables/slutsky-matrix.ts";
 import { Estimate, Printed } from "../../components/number.tsx";
 import { Table } from "../../components/table.tsx";
 
@@ -14,7 +15,7 @@ function Fact({ label, children }: { label: string; children: ReactNode }) {
   );
 }
 
-/** Fit and convergence, and what the coefficients say of each good at the base point. */
+/** Fit and convergence, and what the coefficients say of each good at the point of the checks. */
 export function FitView({ finding }: { finding: SystemFinding }) {
   const { convergence, durbinWatson, fitted } = finding;
   const number = (value: number) => printFixed(value, DECIMALS.statistic);
@@ -25,7 +26,7 @@ export function FitView({ finding }: { finding: SystemFinding }) {
           By good
         </h2>
         <Table
-          caption="Expenditure elasticity at the base point, fit of the equation"
+          caption={`Expenditure elasticity at ${withArticle(finding.checks.pointName)}, fit of the equation`}
           heads={[
             { key: "good", content: "Good" },
             { key: "eta", content: "Expenditure elasticity" },

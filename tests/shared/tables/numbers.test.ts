@@ -33,6 +33,10 @@ describe("printed numbers", () => {
     expect(printQuantity(184.6, "money")).toBe("184.60");
     expect(printPercent(0.99)).toBe("99.0\u2009%");
     expect(printPercent(0)).toBe("0\u2009%");
+    expect(printPercent(1)).toBe("100.0\u2009%");
+    expect(printPercent(0.0002)).toBe("below 0.1\u2009%");
+    expect(printPercent(0.9998)).toBe("above 99.9\u2009%");
+    expect(printPercent(0.002, 0)).toBe("below 1\u2009%");
   });
 
   it("are never in E-notation", () => {

@@ -66,9 +66,17 @@ describe("verdictsOf", () => {
       "Adding-up | holds | holds | largest column sum 4 × 10⁻¹⁷",
       "Homogeneity | imposed | imposed | LR 6.2 on 5, p 0.286",
       "Symmetry | imposed | imposed | LR 18.1 on 10, p 0.053",
-      "Negativity | holds here | at base point | breaks in 48 rows, 1.0\u2009%",
-      "Monotonicity | holds here | at base point | breaks in 1 row, 0.0\u2009%",
+      "Negativity | holds here | at base point | breaks in 48 rows, 1.0\u2009% by weight",
+      "Monotonicity | holds here | at base point | breaks in 1 row, below 0.1\u2009% by weight",
     ]);
+  });
+
+  it("says of which the percentage is, where rows do not weigh the same", () => {
+    const counted = { breaks: 48, weightedShareThatHolds: 1 - 48 / 4812 };
+    const unweighted = { ...checks, sample: { rows: 4812, negativity: counted, monotonicity: counted } };
+    expect(lines(unweighted, [], { detail: true })[3]).toBe(
+      "Negativity | holds here | at base point | breaks in 48 rows, 1.0\u2009%",
+    );
   });
 
   it("says what is rejected, and that negativity breaks with its size", () => {
@@ -139,10 +147,16 @@ describe("sentences", () => {
       "The data reject homogeneity and symmetry, which are imposed.",
     );
     expect(system({ checks: unbound, tests: [laitinen, rejected] })).toBe(
-      "Meat & fish is a luxury and grains a necessity at the base point. Symmetry is rejected. Homogeneity is not rejected. It is not imposed either, so negativity cannot be stated.",
+      "Meat & fish is a luxury and grains a necessity at the base point. Symmetry given homogeneity is rejected. Homogeneity is not rejected. It is not imposed either, so negativity cannot be stated.",
     );
     expect(system({ expenditureElasticities: [] })).toMatch(
       /^No good is a luxury or a necessity beyond doubt at the base point\./,
+    );
+  });
+
+  it("of a system whose estimates depend on units", () => {
+    expect(system({ unitsMatterBy: "Stone's index" })).toMatch(
+      / Prices are not normalised, so with Stone's index the estimates depend on their units\.$/,
     );
   });
 
@@ -156,7 +170,7 @@ describe("sentences", () => {
       goods: ["grains", "meat & fish"],
     };
     expect(slutskySentence({ at: { ...at, checks }, pointName: "base point", sample })).toBe(
-      "The matrix is symmetric and negative semidefinite at the base point. Negativity breaks in 48 of 4,812 rows, 44 of them in the richest tenth, mostly through grains and meat & fish.",
+      "The matrix is symmetric and negative semidefinite at the base point. Negativity breaks in 48 of 4,812 rows, 44 of them in the richest tenth, most often through grains and meat & fish.",
     );
     expect(slutskySentence({ at: { ...at, checks: unbound }, pointName: "mean" })).toBe(
       "The matrix is not symmetric, by up to 0.020 at the sample mean. Without homogeneity, negativity cannot be stated.",

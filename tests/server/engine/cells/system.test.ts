@@ -56,6 +56,24 @@ describe("runSystem", () => {
     expect(checks.sample).toEqual({ rows: 338, monotonicity: checks.sample?.monotonicity });
   });
 
+  it("of data not normalised, speaks of the mean, and says what makes units matter", async () => {
+    const asUploaded = await tunaWeeks("normalise: none");
+    const found = (source: string) => runSystem(specificationOf("system", `data: weeks\n${source}`), asUploaded);
+    const les = found("form: les");
+    expect(les.checks.pointName).toBe("mean");
+    // The linear expenditure system is the same in any units, and so is what it says at the mean.
+    const normalised = runSystem(specificationOf("system", "data: weeks\nform: les"), data);
+    const options = { priceScale: data.priceScale, totalScale: data.totalScale, pointName: "mean" };
+    const { eigenvalues } = matrixAt(normalised.fitted, normalised.points.mean, options);
+    expect(les.checks.negativity.largest).toBeCloseTo(eigenvalues[0].value, 8);
+    expect(les.unitsMatterBy).toBeUndefined();
+    expect(found("form: aids").unitsMatterBy).toBe("a fixed α₀");
+    expect(found("form: la-aids\nindex: stone").unitsMatterBy).toBe("Stone's index");
+    expect(found("form: la-aids").unitsMatterBy).toBeUndefined();
+    expect(runSystem(AIDS, data)).not.toHaveProperty("unitsMatterBy");
+    expect(runSystem(AIDS, data).checks.pointName).toBe("base point");
+  });
+
   it("stands at the base point and at the geometric mean", () => {
     const { points } = runSystem(AIDS, weighted);
     expect(points.base).toEqual({ prices: [1, 1, 1, 1, 1, 1, 1], total: 1, demographics: [] });
