@@ -18,7 +18,7 @@ export function ReadByThread({ studyId, standing, cells }: ReadByThreadProps) {
     return (
       <li key={name}>
         {cell ? (
-          <Link className="reference" to={pages.cell(studyId, cell.id)}>
+          <Link className="reference inline-flex min-h-6 items-center" to={pages.cell(studyId, cell.id)}>
             {name}
           </Link>
         ) : (
