@@ -7,6 +7,7 @@ import { Headline, OpenHead } from "../headline.tsx";
 import type { BandProps, OpenProps } from "../types.ts";
 import { stripOf } from "../verdicts.ts";
 import { CoefficientView } from "./coefficient-view.tsx";
+import { EngelView } from "./engel-view.tsx";
 import { FitView } from "./fit-view.tsx";
 import { SystemNote } from "./note.tsx";
 import { TestsView } from "./tests-view.tsx";
@@ -35,6 +36,7 @@ export function SystemOpen({ finding }: OpenProps<"system">) {
         <CoefficientView finding={finding} />
         <SystemNote finding={finding} />
       </div>
+      <EngelView finding={finding} />
       <TestsView tests={finding.tests} />
       <FitView finding={finding} />
     </div>

@@ -58,6 +58,9 @@ function SealedHead({ copy, result }: { copy: RefereeCopy; result: VerificationS
   );
 }
 
+/** A note may end as its author likes; what follows it begins a sentence. */
+const asSentence = (note: string) => (note === "" || /[.!?…]$/.test(note) ? note : `${note}.`);
+
 function Title({ content }: { content: SealedContent }) {
   const { title, authors } = content.study;
   const by = authors === undefined ? "Authors withheld for review." : `By ${listWords(authors)}.`;
@@ -65,7 +68,7 @@ function Title({ content }: { content: SealedContent }) {
     <div>
       <h1 className="type-title min-[900px]:text-[2.375rem]/[2.875rem]">{title}</h1>
       <p className="mt-1 mb-5 text-[0.9375rem]/[1.375rem] text-ink2">
-        {content.note} {by}
+        {asSentence(content.note)} {by}
       </p>
     </div>
   );

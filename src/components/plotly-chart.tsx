@@ -1,0 +1,110 @@
+import type { Config, Data, Layout } from "plotly.js-dist-min";
+import { useEffect, useRef, useState } from "react";
+import { Word } from "./button.tsx";
+
+/** A token of the palette as the page has it now: "ink" → "#1D1B20". */
+export type TokenColour = (name: string) => string;
+
+export interface PlotlyFigure {
+  readonly data: Data[];
+  readonly layout: Partial<Layout>;
+}
+
+interface PlotlyChartProps {
+  /** What the figure shows, for those who do not see it; its numbers stand beside it as a table. */
+  readonly label: string;
+  readonly fileName: string;
+  readonly height: number;
+  readonly figure: (colour: TokenColour) => PlotlyFigure;
+}
+
+type Plotly = typeof import("plotly.js-dist-min");
+
+const CONFIG: Partial<Config> = { displayModeBar: false, displaylogo: false, responsive: true, showTips: false };
+const FACE = "'Source Sans 3 Variable', sans-serif";
+
+const colourOnPage: TokenColour = (name) =>
+  getComputedStyle(document.documentElement).getPropertyValue(`--${name}`).trim();
+
+/** What every figure shares: the page's own face and paper, no frame, nothing of the library's furniture. */
+function layoutOn(colour: TokenColour, own: Partial<Layout>, height: number): Partial<Layout> {
+  return {
+    height,
+    autosize: true,
+    showlegend: false,
+    paper_bgcolor: colour("recto"),
+    plot_bgcolor: colour("recto"),
+    font: { family: FACE, size: 13, color: colour("ink2") },
+    hoverlabel: {
+      bgcolor: colour("recto"),
+      bordercolor: colour("ink"),
+      font: { family: FACE, size: 13, color: colour("ink") },
+    },
+    ...own,
+  };
+}
+
+/** A figure drawn by Plotly, which is fetched when the figure comes near the window and not before. */
+export function PlotlyChart({ label, fileName, height, figure }: PlotlyChartProps) {
+  const frame = useRef<HTMLDivElement>(null);
+  const [plotly, setPlotly] = useState<Plotly>();
+  const [failed, setFailed] = useState(false);
+
+  useEffect(() => {
+    const element = frame.current;
+    if (element === null) return;
+    const fetchLibrary = () =>
+      void import("plotly.js-dist-min").then(
+        (library) => setPlotly(library.default as unknown as Plotly),
+        () => setFailed(true),
+      );
+    if (typeof IntersectionObserver === "undefined") return fetchLibrary();
+    const observer = new IntersectionObserver(
+      ([entry]) => {
+        if (!entry.isIntersecting) return;
+        observer.disconnect();
+        fetchLibrary();
+      },
+      { rootMargin: "200px" },
+    );
+    observer.observe(element);
+    return () => observer.disconnect();
+  }, []);
+
+  useEffect(() => {
+    const element = frame.current;
+    if (element === null || plotly === undefined) return;
+    const draw = () => {
+      const { data, layout } = figure(colourOnPage);
+      void plotly.react(element, data, layoutOn(colourOnPage, layout, height), CONFIG);
+    };
+    draw();
+    const theme = new MutationObserver(draw);
+    theme.observe(document.documentElement, { attributes: true, attributeFilter: ["data-theme"] });
+    return () => {
+      theme.disconnect();
+      plotly.purge(element);
+    };
+  }, [plotly, figure, height]);
+
+  const download = (format: "svg" | "png") => {
+    if (frame.current === null) return;
+    void plotly?.downloadImage(frame.current, { format, filename: fileName, width: 960, height: 560 });
+  };
+  return (
+    <div>
+      <div ref={frame} role="img" aria-label={label} style={{ minHeight: height }}>
+        {failed && <p className="type-small text-ink2">The drawing could not be fetched. Its numbers stand below.</p>}
+      </div>
+      <p className="type-small flex gap-4 print:hidden">
+        <span className="text-ink3">Download as</span>
+        <Word onClick={() => download("svg")} disabled={plotly === undefined}>
+          SVG
+        </Word>
+        <Word onClick={() => download("png")} disabled={plotly === undefined}>
+          PNG
+        </Word>
+      </p>
+    </div>
+  );
+}
