@@ -14,6 +14,7 @@ export type EngelCurves = Pick<SystemFinding, "engel"> & { readonly fitted: Pick
 /** Predicted shares against total expenditure: one line a good, its name at the line's end, no legend. */
 export function engelFigure({ engel, fitted }: EngelCurves, colour: TokenColour): PlotlyFigure {
   const totals = engel.logTotal.map(Math.exp);
+  const last = totals[totals.length - 1];
   const lines = fitted.goods.map((name, i) => ({
     name: capital(name),
     shares: engel.shares[i],
@@ -38,7 +39,7 @@ export function engelFigure({ engel, fitted }: EngelCurves, colour: TokenColour)
   const annotations: Partial<Annotation>[] = lines.map(({ name, colour: color }, i) => ({
     text: name,
     // On a logarithmic axis an annotation is placed by the logarithm.
-    x: Math.log10(totals[totals.length - 1]),
+    x: Math.log10(last),
     y: places[i],
     xanchor: "left",
     xshift: 8,
@@ -60,15 +61,26 @@ export function engelFigure({ engel, fitted }: EngelCurves, colour: TokenColour)
         ...axis,
         ticks: "outside",
         type: "log",
+        range: [Math.log10(totals[0]), Math.log10(last)],
+        tickvals: ticksBetween(totals[0], last),
         showgrid: false,
         showline: true,
-        nticks: 8,
-        title: { text: "Total expenditure, units of estimation, logarithmic scale" },
+        title: { text: "Total expenditure, logarithmic scale", font: { size: 13 } },
       },
       yaxis: { ...axis, ticks: "outside", range: [lowest, highest], nticks: 4, gridcolor: colour("rule") },
       annotations,
     },
   };
+}
+
+/** Numbers that begin with 1, 2 or 5, as many as lie between two totals. */
+export function ticksBetween(low: number, high: number): number[] {
+  const decades = Array.from(
+    { length: Math.ceil(Math.log10(high)) - Math.floor(Math.log10(low)) + 1 },
+    (_, i) => Math.floor(Math.log10(low)) + i,
+  );
+  const ticks = decades.flatMap((decade) => [1, 2, 5].map((digit) => Number(`${digit}e${decade}`)));
+  return ticks.filter((tick) => tick >= low && tick <= high);
 }
 
 /** The values in their order, each moved up as little as keeps it `apart` from the one below. */

@@ -1,6 +1,6 @@
 import { render, screen, waitFor, within } from "@testing-library/react";
 import { afterEach, beforeEach, expect, test, vi } from "vitest";
-import { engelFigure, standApart } from "../../../src/cells/system/engel-figure.ts";
+import { engelFigure, standApart, ticksBetween } from "../../../src/cells/system/engel-figure.ts";
 import { EngelView } from "../../../src/cells/system/engel-view.tsx";
 import { sampleSystem } from "../../support/sample-findings.ts";
 
@@ -64,4 +64,9 @@ test("labels at the lines' ends stand apart and keep their order", () => {
   [0.3, 0.1, 0.15, 0.2].forEach((place, i) => {
     expect(placed[i]).toBeCloseTo(place, 12);
   });
+});
+
+test("the axis is marked at numbers that begin with 1, 2 or 5", () => {
+  expect(ticksBetween(0.32, 3.1)).toEqual([0.5, 1, 2]);
+  expect(ticksBetween(90, 2100)).toEqual([100, 200, 500, 1000, 2000]);
 });
