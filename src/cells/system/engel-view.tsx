@@ -17,8 +17,8 @@ export function EngelView({ finding }: { finding: EngelCurves }) {
         Engel curves
       </h2>
       <p className="type-small mb-2 text-ink2">
-        Predicted shares against total expenditure, at the sample mean of log prices, from the 1st to the 99th
-        percentile of expenditure
+        Predicted shares against total expenditure in units of estimation, its 1st to 99th percentile; prices and
+        demographics at the sample mean
       </p>
       <PlotlyChart
         label={`Predicted shares of ${fitted.goods.length} goods against total expenditure`}
