@@ -10,6 +10,53 @@ export const ESTIMATOR_NAMES = [
   "maximum likelihood",
 ] as const;
 
+/** Resampling: whole rows, whole clusters, residuals of the fit, or moving blocks of consecutive periods. */
+export const BOOTSTRAP_NAMES = ["rows", "clusters", "residuals", "blocks"] as const;
+
+export const bootstrapSpecification = z.strictObject({
+  bootstrap: z.enum(BOOTSTRAP_NAMES),
+  replicates: z.number().int().min(20).max(10_000).default(500),
+  /** The same seed, the same intervals bit for bit, whatever the number of threads. */
+  seed: z
+    .number()
+    .int()
+    .nonnegative()
+    .max(2 ** 32 - 1)
+    .default(1),
+  /** Length of a moving block in periods. */
+  block: z.number().int().min(2).optional(),
+});
+export type BootstrapSpecification = z.infer<typeof bootstrapSpecification>;
+
+export const standardErrorsSpecification = z.union([
+  z.enum(["conventional", "heteroskedastic"]),
+  /** Rows with the same value of the column were sampled together. */
+  z.strictObject({ cluster: columnName }),
+  bootstrapSpecification,
+]);
+export type StandardErrorsSpecification = z.infer<typeof standardErrorsSpecification>;
+
+/** Terms of the season as shifts of the intercepts: dummies, or pairs of sine and cosine. */
+export const seasonSpecification = z.strictObject({
+  /** Periods of the time column in one round: 4, 12, 52. */
+  period: z.number().int().min(2).max(366),
+  /** Pairs of sine and cosine; without it a dummy for every period but the last. */
+  harmonics: z.number().int().min(1).optional(),
+});
+
+/** K(point) = −LL' with L lower triangular of the rank (Diewert & Wales 1987; Moschini 1998; Ryan & Wales 1998). */
+export const curvatureSpecification = z.strictObject({
+  at: z.union([z.enum(["base point", "mean"]), z.strictObject({ row: z.number().int().positive() })]),
+  /** Of K at the point; n − 1, the most there can be, unless said otherwise. */
+  rank: z.number().int().positive().optional(),
+});
+
+export const INTERACTION_NAMES = [
+  "prices with expenditure",
+  "prices with demographics",
+  "expenditure with demographics",
+] as const;
+
 export const systemSpecification = z
   .strictObject({
     kind: z.literal("system"),
@@ -24,7 +71,25 @@ export const systemSpecification = z
     alpha0: finite.default(0),
     /** The good whose equation is dropped; nothing depends on it under maximum likelihood. Default: the last. */
     dropped: goodName.optional(),
-    "standard errors": z.literal("conventional").default("conventional"),
+    "standard errors": standardErrorsSpecification.default("conventional"),
+    /** Of the linear expenditure system: on which the errors stand. Shares, unless said otherwise. */
+    errors: z.enum(["shares", "expenditures"]).optional(),
+    /** Of easi: the degree of the Engel curves in real expenditure; 3 unless said otherwise. */
+    degree: z.number().int().min(1).max(6).optional(),
+    /** Of easi: which products enter beside main effects. */
+    interactions: z.array(z.enum(INTERACTION_NAMES)).optional(),
+    /** Of easi: deflated by mean shares and linear, or the exact implicit utility. Exact, unless said otherwise. */
+    "real expenditure": z.enum(["exact", "approximate"]).optional(),
+    /** Changes from one period of the time column to the next instead of levels. */
+    differences: z.boolean().optional(),
+    season: seasonSpecification.optional(),
+    /** A linear trend in the time column among the intercepts. */
+    trend: z.boolean().optional(),
+    /** Total expenditure is endogenous: columns that explain it and stand in no share equation. */
+    instruments: z.array(columnName).min(1).optional(),
+    /** Goods not bought by two steps: participation explained by these columns beside prices and expenditure. */
+    zeros: z.union([z.literal("two-step"), z.strictObject({ "two-step": z.array(columnName) })]).optional(),
+    curvature: curvatureSpecification.optional(),
   })
   .superRefine((system, context) => {
     if (system.index !== undefined && system.form !== "la-aids") {
