@@ -4,14 +4,14 @@ import type { PreparedData } from "./prepared-data.ts";
 
 type Fingerprinted = Omit<
   PreparedData,
-  "fingerprint" | "finding" | "rowNumbers" | "incomplete" | "priceScale" | "totalScale"
+  "fingerprint" | "finding" | "rowNumbers" | "incomplete" | "nearlyUnique" | "priceScale" | "totalScale"
 >;
 
 /**
  * SHA-256 of the columns an estimation may use, in the order: goods with their shares and log prices, log total,
- * weights, cluster of each row, time, numeric columns by name. Rows as used; Float64 and Int32 little-endian, each
- * column after its name and length. The file's name, the rows left out, and columns that are text or lack a number in some
- * row used do not enter.
+ * weights, cluster of each row, time, numeric columns by name, columns of text by name with their labels. Rows as used;
+ * Float64 and Int32 little-endian, each column after its name and length. The file's name, the rows left out, and columns
+ * that lack a value in some row used do not enter.
  */
 export function dataFingerprint(data: Fingerprinted): string {
   const hash = createHash("sha256");
@@ -31,6 +31,11 @@ export function dataFingerprint(data: Fingerprinted): string {
   }
   if (data.time) add("time", data.time);
   for (const name of [...data.numeric.keys()].sort()) add(`column ${name}`, data.numeric.get(name)!);
+  for (const [name, column] of [...(data.labelled ?? [])].sort(([one], [two]) => (one < two ? -1 : 1))) {
+    if (column.missing !== undefined) continue;
+    hash.update(JSON.stringify(column.labels));
+    add(`text ${name}`, Int32Array.from(column.codes));
+  }
   return hash.digest("hex");
 }
 

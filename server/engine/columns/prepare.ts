@@ -7,6 +7,7 @@ import { clustersOf } from "./clusters.ts";
 import { dataFingerprint } from "./data-fingerprint.ts";
 import { type DerivedColumns, deriveColumns } from "./derive-columns.ts";
 import { type FormedGood, formGood, sumOfGoods } from "./form-goods.ts";
+import { labelledColumns } from "./labelled-columns.ts";
 import { type LeftOut, leaveOut } from "./leave-out.ts";
 import { numericColumns } from "./numeric-columns.ts";
 import { pickRows } from "./pick-rows.ts";
@@ -92,6 +93,7 @@ function formColumns(
     ...(roles.cluster && { clusters: clustersOf(roles.cluster, indices) }),
     ...(roles.time && { time: pick(roles.time.values) }),
     ...numericColumns(derived.columns, roles, indices),
+    ...labelledColumns(derived.columns, roles.cluster?.name, indices),
     priceScale,
     totalScale,
     prices,

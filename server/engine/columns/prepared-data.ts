@@ -26,6 +26,15 @@ export interface IncompleteColumn {
   readonly firstRow: number;
 }
 
+/** A column of text over the rows used. */
+export interface LabelledColumn {
+  /** Of each row used, a place in `labels`; `labels.length` for an empty cell. */
+  readonly codes: Int32Array | Uint16Array;
+  /** Those that occur, in ascending order. */
+  readonly labels: readonly string[];
+  readonly missing?: IncompleteColumn;
+}
+
 /**
  * A data cell's rows used, ready for estimation: T rows, n goods, everything column-wise in Float64.
  * Prices and total are in units of estimation (divided by `priceScale` and `totalScale`).
@@ -47,6 +56,10 @@ export interface PreparedData {
   readonly numeric: ReadonlyMap<string, Float64Array>;
   /** Columns of numbers that lack a value in some row used, and so are no demographics: for the refusal that says so. */
   readonly incomplete?: ReadonlyMap<string, IncompleteColumn>;
+  /** Columns of text that rows can be grouped by (`groupsOf`). */
+  readonly labelled?: ReadonlyMap<string, LabelledColumn>;
+  /** Columns of text not kept, as more than half the rows differ in them, with the number of labels. */
+  readonly nearlyUnique?: ReadonlyMap<string, number>;
   readonly priceScale: readonly number[];
   readonly totalScale: number;
   readonly finding: DataFinding;
