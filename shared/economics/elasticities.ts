@@ -1,51 +1,68 @@
 import { type Matrix, standardError } from "../numerics/matrix.ts";
 import type { Point } from "../systems/demand-system.ts";
 import type { FittedCoefficients } from "../systems/index.ts";
-import { combined, evaluateAt } from "./evaluation.ts";
-import { slutskyDerivatives, slutskyMatrix } from "./slutsky-matrix.ts";
+import { combined } from "./evaluation.ts";
+import { type ResponseGradients, type ResponseOptions, type Responses, responsesAt } from "./responses.ts";
 
-/** Elasticities at a point with standard errors by the exact-derivative delta method; shares are predicted ones. */
-export interface Elasticities {
+/** Elasticities, and the shares that stand in them. */
+export interface ElasticityValues {
   readonly shares: number[];
   /** η_i = 1 + μ_i/w_i, n. */
   readonly expenditure: number[];
-  readonly expenditureErrors: number[];
   /** ε_ij = μ_ij/w_i − δ_ij (Marshall), n × n. */
   readonly uncompensated: Matrix;
-  readonly uncompensatedErrors: Matrix;
   /** ε*_ij = ε_ij + η_i w_j = k_ij/w_i (Hicks), n × n. */
   readonly compensated: Matrix;
+}
+
+/** Elasticities with standard errors by the exact-derivative delta method. */
+export interface Elasticities extends ElasticityValues {
+  readonly expenditureErrors: number[];
+  readonly uncompensatedErrors: Matrix;
   readonly compensatedErrors: Matrix;
 }
 
 /**
- * Expenditure, uncompensated and compensated elasticities at (p, x, z).
+ * Expenditure, uncompensated and compensated elasticities at (p, x, z). The shares in them are the predicted
+ * ones unless observed ones are given.
  *
- * Error: a predicted share of exactly zero, by which nothing can be divided.
+ * Error: a share of exactly zero, by which nothing can be divided.
  */
-export function elasticitiesAt(fitted: FittedCoefficients, point: Point): Elasticities {
-  const { slopes, derivatives } = evaluateAt(fitted, point);
-  const { total, prices } = slopes;
-  const shares = nonZeroShares(slopes.shares, fitted.goods);
-  const errorOf = (gradient: readonly number[]) => standardError(fitted.covariance, gradient);
-  const matrix = slutskyMatrix(slopes);
-  const matrixGradients = slutskyDerivatives(slopes, derivatives);
+export function elasticitiesAt(fitted: FittedCoefficients, point: Point, options: ResponseOptions = {}): Elasticities {
+  const { responses, gradients } = responsesAt(fitted, point, options);
+  nonZeroShares(responses.shares, fitted.goods);
+  return elasticitiesOf(responses, gradients, fitted.covariance);
+}
+
+/** The elasticities alone. */
+export function elasticityValues({ shares, total, prices, compensated }: Responses): ElasticityValues {
   return {
     shares,
     expenditure: shares.map((share, i) => 1 + total[i] / share),
-    expenditureErrors: shares.map((share, i) =>
-      errorOf(ratioGradient(total[i], derivatives.total[i], share, derivatives.shares[i])),
-    ),
     uncompensated: prices.map((row, i) => row.map((slope, j) => slope / shares[i] - (i === j ? 1 : 0))),
-    uncompensatedErrors: prices.map((row, i) =>
-      row.map((slope, j) => errorOf(ratioGradient(slope, derivatives.prices[i][j], shares[i], derivatives.shares[i]))),
+    compensated: compensated.map((row, i) => row.map((entry) => entry / shares[i])),
+  };
+}
+
+/** Elasticities as quotients of responses, with √(g'V g) from the responses' derivatives. */
+export function elasticitiesOf(
+  responses: Responses,
+  gradients: ResponseGradients,
+  covariance: FittedCoefficients["covariance"],
+): Elasticities {
+  const { shares, total, prices, compensated } = responses;
+  const errorOf = (gradient: readonly number[]) => standardError(covariance, gradient);
+  const quotientErrors = (entries: Matrix, of: number[][][]) =>
+    entries.map((row, i) =>
+      row.map((entry, j) => errorOf(ratioGradient(entry, of[i][j], shares[i], gradients.shares[i]))),
+    );
+  return {
+    ...elasticityValues(responses),
+    expenditureErrors: shares.map((share, i) =>
+      errorOf(ratioGradient(total[i], gradients.total[i], share, gradients.shares[i])),
     ),
-    compensated: matrix.map((row, i) => row.map((entry) => entry / shares[i])),
-    compensatedErrors: matrix.map((row, i) =>
-      row.map((entry, j) =>
-        errorOf(compensatedGradient(entry, matrixGradients[i][j], shares[i], derivatives.shares[i])),
-      ),
-    ),
+    uncompensatedErrors: quotientErrors(prices, gradients.prices),
+    compensatedErrors: quotientErrors(compensated, gradients.compensated),
   };
 }
 
