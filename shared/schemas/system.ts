@@ -1,5 +1,5 @@
 import { z } from "zod";
-import { PRICE_INDEX_NAMES, RESTRICTION_NAMES, SYSTEM_NAMES } from "../systems/names.ts";
+import { INTERACTION_NAMES, PRICE_INDEX_NAMES, RESTRICTION_NAMES, SYSTEM_NAMES } from "../systems/names.ts";
 import { theoryChecks } from "./checks.ts";
 import { cellName, columnName, count, fingerprint, finite, goodName, matrix, vector } from "./primitives.ts";
 
@@ -50,12 +50,6 @@ export const curvatureSpecification = z.strictObject({
   /** Of K at the point; n − 1, the most there can be, unless said otherwise. */
   rank: z.number().int().positive().optional(),
 });
-
-export const INTERACTION_NAMES = [
-  "prices with expenditure",
-  "prices with demographics",
-  "expenditure with demographics",
-] as const;
 
 export const systemSpecification = z
   .strictObject({
@@ -141,12 +135,21 @@ export const restrictionTest = z.strictObject({
 });
 export type RestrictionTest = z.infer<typeof restrictionTest>;
 
+/** A restriction that could not be tested, and why: a fit refused, or too few rows. */
+export const untestedRestriction = z.strictObject({
+  restriction: restrictionTest.shape.restriction,
+  reason: z.string(),
+});
+export type UntestedRestriction = z.infer<typeof untestedRestriction>;
+
 /** Everything needed to evaluate the fitted system anywhere: what a referee's browser recomputes from. */
 export const fittedSystem = z.strictObject({
   form: z.enum(SYSTEM_NAMES),
   index: z.enum(PRICE_INDEX_NAMES).optional(),
   /** Weighted means of the shares, and of the prices in units of estimation: what the index of la-aids is evaluated with. */
   indexMeans: z.strictObject({ shares: vector, prices: vector }).optional(),
+  /** Of easi: what its layout follows from. */
+  easi: z.strictObject({ degree: count, interactions: z.array(z.enum(INTERACTION_NAMES)) }).optional(),
   goods: z.array(goodName),
   demographics: z.array(columnName),
   alpha0: finite,
@@ -186,6 +189,8 @@ export const systemFinding = z.strictObject({
   /** Residual covariance of all n goods, divided by T; singular. */
   residualCovariance: matrix,
   tests: z.array(restrictionTest),
+  /** Absent where every restriction that the form leaves open was tested. */
+  untested: z.array(untestedRestriction).optional(),
   /** In units of estimation (normalised when the data are). */
   points: z.strictObject({ base: namedPoint, mean: namedPoint }),
   /** η_i at the point of the checks below with its standard error, for the sentence at the head. */

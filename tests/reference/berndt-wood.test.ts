@@ -205,7 +205,7 @@ describe("tests", () => {
   const [homogeneity, symmetry] = restrictionTests(
     { unrestricted: fitOf("none"), homogeneity: fitOf("homogeneity"), symmetry: fitOf("symmetry") },
     { rows, equations: 3, linear: { exact: true } },
-  );
+  ).tests;
 
   it("homogeneity: LR, Italianer's LR, Laitinen's exact T² and F", () => {
     // From R's lm and qr on these data; systemfit's iterates stop at 10.37876481, half a unit of the last digit off.

@@ -92,7 +92,7 @@ export function estimateSystem(
     convergence: { iterations, gradient, largestStep, condition },
     ...(durbin && { durbinWatson: durbin }),
     residualCovariance: covarianceOf(solution.residuals, moments.rows),
-    tests: testsOf(specification, system, size, estimation, solution, control),
+    ...testsOf(specification, system, size, estimation, solution, control),
   };
 }
 
@@ -155,15 +155,16 @@ function testsOf(
   estimation: Estimation,
   solution: Solution,
   control: RunControl,
-) {
-  if (system.heldByForm.length > 0) return [];
+): Pick<SystemFinding, "tests" | "untested"> {
+  if (system.heldByForm.length > 0) return { tests: [] };
   const fits: NestedFits = nestedFits(estimation, system, size, specification, solution.theta, control);
   const index = specification.index ?? DEFAULT_INDEX;
-  return restrictionTests(fits, {
+  const { tests, untested } = restrictionTests(fits, {
     rows: estimation.moments.rows,
     equations: estimation.equations.length,
     ...(specification.form === "la-aids" && {
       linear: { exact: index === "laspeyres" && !estimation.moments.weighted },
     }),
   });
+  return { tests, ...(untested.length > 0 && { untested }) };
 }

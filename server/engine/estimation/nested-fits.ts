@@ -1,7 +1,7 @@
 import type { SystemSpecification } from "../../../shared/schemas/system.ts";
 import type { DemandSystem, SystemSize } from "../../../shared/systems/demand-system.ts";
 import type { RestrictionName } from "../../../shared/systems/names.ts";
-import type { NestedFits } from "../inference/restriction-tests.ts";
+import type { NestedFits, RefusedFit } from "../inference/restriction-tests.ts";
 import { Refusal } from "../refusal.ts";
 import type { RunControl } from "../run.ts";
 import { systemForm } from "./coefficient-form.ts";
@@ -16,8 +16,8 @@ interface Likelihood {
   readonly freeCoefficients: number;
 }
 
-/** Likelihoods already found from the same moments; absent (undefined) where the data allow no such fit. */
-const known = new WeakMap<Moments, Map<string, Likelihood | undefined>>();
+/** Likelihoods already found from the same moments, or why the data allow no such fit. */
+const known = new WeakMap<Moments, Map<string, Likelihood | RefusedFit>>();
 
 const NESTED: Readonly<Record<keyof NestedFits, readonly RestrictionName[]>> = {
   unrestricted: [],
@@ -67,8 +67,11 @@ function allButLast({ moments }: Estimation): number[] {
   return Array.from({ length: moments.responses.columns - 1 }, (_, equation) => equation);
 }
 
-/** Straight from the fit that was asked for, which is near; the long way round only where that fails. */
-function fromNearby(nested: Estimation, start: readonly number[], control: RunControl): Solution {
+/**
+ * Maximum likelihood straight from a fit that is near; the long way round only where that fails.
+ * Errors: as `maximumLikelihood`.
+ */
+export function fromNearby(nested: Estimation, start: readonly number[], control: RunControl): Solution {
   try {
     return minimise(nested, { kind: "likelihood", step: "newton" }, start, control);
   } catch (error) {
@@ -77,19 +80,19 @@ function fromNearby(nested: Estimation, start: readonly number[], control: RunCo
   }
 }
 
-function remembered(moments: Moments, key: string, find: () => Likelihood): Likelihood | undefined {
+function remembered(moments: Moments, key: string, find: () => Likelihood): Likelihood | RefusedFit {
   if (!known.has(moments)) known.set(moments, new Map());
   const fits = known.get(moments)!;
   if (!fits.has(key)) fits.set(key, unlessRefused(find));
-  return fits.get(key);
+  return fits.get(key)!;
 }
 
-/** A wider model may not be identified where the one asked for is: then there is no test, and no failure. */
-function unlessRefused(find: () => Likelihood): Likelihood | undefined {
+/** A wider model may not be identified where the one asked for is: then there is no test but a reason, and no failure. */
+export function unlessRefused<T>(find: () => T): T | RefusedFit {
   try {
     return find();
   } catch (error) {
-    if (error instanceof Refusal) return undefined;
+    if (error instanceof Refusal) return { refused: error.message };
     throw error;
   }
 }

@@ -1,5 +1,5 @@
 import { chiSquareTail, fTail } from "../../../shared/numerics/distributions.ts";
-import type { RestrictionTest } from "../../../shared/schemas/system.ts";
+import type { RestrictionTest, UntestedRestriction } from "../../../shared/schemas/system.ts";
 
 /** What a test needs of a fitted model. */
 export interface NestedFit {
@@ -7,11 +7,16 @@ export interface NestedFit {
   readonly freeCoefficients: number;
 }
 
-/** Fits by maximum likelihood, each nested in the one before; absent where the data do not allow one. */
+/** Why the data do not allow a fit, in the words of the refusal. */
+export interface RefusedFit {
+  readonly refused: string;
+}
+
+/** Fits by maximum likelihood, each nested in the one before; symmetry says nothing of two goods and is absent. */
 export interface NestedFits {
-  readonly unrestricted?: NestedFit;
-  readonly homogeneity?: NestedFit;
-  readonly symmetry?: NestedFit;
+  readonly unrestricted: NestedFit | RefusedFit;
+  readonly homogeneity: NestedFit | RefusedFit;
+  readonly symmetry?: NestedFit | RefusedFit;
 }
 
 export interface TestedSystem {
@@ -26,20 +31,40 @@ export interface TestedSystem {
   readonly linear?: { readonly exact: boolean };
 }
 
+export interface RestrictionTests {
+  readonly tests: RestrictionTest[];
+  /** What could not be tested, each with its reason. */
+  readonly untested: UntestedRestriction[];
+}
+
 /** Homogeneity, and symmetry given homogeneity: likelihood ratios with their small-sample companions. */
-export function restrictionTests(fits: NestedFits, system: TestedSystem): RestrictionTest[] {
-  const tests: RestrictionTest[] = [];
+export function restrictionTests(fits: NestedFits, system: TestedSystem): RestrictionTests {
   const { unrestricted, homogeneity, symmetry } = fits;
-  if (unrestricted && homogeneity) {
-    const test = likelihoodRatioTest("homogeneity", unrestricted, homogeneity, system);
-    const exact = system.linear && laitinenTest(test?.statistic ?? 0, unrestricted, system, system.linear.exact);
-    if (test) tests.push({ ...test, ...(exact && { exact }) });
+  const first = tested("homogeneity", unrestricted, homogeneity, system);
+  if ("statistic" in first && system.linear && !("refused" in unrestricted)) {
+    const exact = laitinenTest(first.statistic, unrestricted, system, system.linear.exact);
+    if (exact) first.exact = exact;
   }
-  if (homogeneity && symmetry) {
-    const test = likelihoodRatioTest("symmetry given homogeneity", homogeneity, symmetry, system);
-    if (test) tests.push(test);
-  }
-  return tests;
+  const all = [first, ...(symmetry ? [tested("symmetry given homogeneity", homogeneity, symmetry, system)] : [])];
+  return {
+    tests: all.filter((test) => "statistic" in test),
+    untested: all.filter((test) => "reason" in test),
+  };
+}
+
+function tested(
+  restriction: RestrictionTest["restriction"],
+  wide: NestedFit | RefusedFit,
+  narrow: NestedFit | RefusedFit,
+  system: TestedSystem,
+): RestrictionTest | UntestedRestriction {
+  if ("refused" in wide) return { restriction, reason: `Without the restriction there is no fit: ${wide.refused}` };
+  if ("refused" in narrow) return { restriction, reason: `Under the restriction there is no fit: ${narrow.refused}` };
+  return likelihoodRatioTest(restriction, wide, narrow, system) ?? { restriction, reason: tooFewFor(wide, system) };
+}
+
+function tooFewFor({ freeCoefficients }: NestedFit, { rows, equations }: TestedSystem): string {
+  return `${rows} rows are too few to correct a likelihood ratio of ${freeCoefficients} coefficients in ${equations} equations for small samples, and uncorrected it would reject far too often.`;
 }
 
 /**

@@ -21,15 +21,16 @@ function exactInWords(test: Test): string {
 }
 
 /** Tests of the restrictions of theory, asymptotic and corrected for small samples. */
-export function TestsView({ tests }: Pick<SystemFinding, "tests">) {
+export function TestsView({ tests, untested = [] }: Pick<SystemFinding, "tests" | "untested">) {
   return (
     <section aria-labelledby="tests" className="border-line border-t pt-4">
       <h2 id="tests" className="type-section mb-2">
         Tests of the theory
       </h2>
-      {tests.length === 0 ? (
+      {tests.length === 0 && untested.length === 0 && (
         <p className="type-small text-ink2">The functional form leaves no restriction to test.</p>
-      ) : (
+      )}
+      {tests.length > 0 && (
         <>
           <Table
             caption="Likelihood-ratio tests of homogeneity and symmetry"
@@ -63,6 +64,11 @@ export function TestsView({ tests }: Pick<SystemFinding, "tests">) {
           </p>
         </>
       )}
+      {untested.map(({ restriction, reason }) => (
+        <p key={restriction} className="type-small mt-2 max-w-[62ch] text-ink2">
+          {capital(restriction)} is not tested. {reason}
+        </p>
+      ))}
     </section>
   );
 }

@@ -37,7 +37,7 @@ export function SystemOpen({ finding }: OpenProps<"system">) {
         <SystemNote finding={finding} />
       </div>
       <EngelView finding={finding} />
-      <TestsView tests={finding.tests} />
+      <TestsView tests={finding.tests} untested={finding.untested} />
       <FitView finding={finding} />
     </div>
   );

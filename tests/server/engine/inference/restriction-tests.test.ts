@@ -73,18 +73,36 @@ describe("the tests of a system", () => {
   const symmetry = { logLikelihood: 26, freeCoefficients: 9 };
   const system = { rows: 50, equations: 3 };
 
-  it("are those whose fits exist", () => {
-    const named = (fits: object) => restrictionTests(fits, system).map((test) => test.restriction);
-    expect(named({ unrestricted, homogeneity, symmetry })).toEqual(["homogeneity", "symmetry given homogeneity"]);
-    expect(named({ homogeneity, symmetry })).toEqual(["symmetry given homogeneity"]);
-    expect(named({ unrestricted, homogeneity })).toEqual(["homogeneity"]);
-    expect(named({})).toEqual([]);
+  it("are those whose fits exist; the others say why there is none", () => {
+    const none = { refused: "The moments are singular." };
+    const named = (fits: Parameters<typeof restrictionTests>[0]) => {
+      const { tests, untested } = restrictionTests(fits, system);
+      return [tests.map((test) => test.restriction), untested.map((test) => test.restriction)];
+    };
+    const [first, second] = ["homogeneity", "symmetry given homogeneity"];
+    expect(named({ unrestricted, homogeneity, symmetry })).toEqual([[first, second], []]);
+    expect(named({ unrestricted: none, homogeneity, symmetry })).toEqual([[second], [first]]);
+    expect(named({ unrestricted, homogeneity })).toEqual([[first], []]);
+    expect(named({ unrestricted, homogeneity: none, symmetry })).toEqual([[], [first, second]]);
+    const { untested } = restrictionTests({ unrestricted, homogeneity: none, symmetry }, system);
+    expect(untested[0].reason).toBe("Under the restriction there is no fit: The moments are singular.");
+    expect(untested[1].reason).toBe("Without the restriction there is no fit: The moments are singular.");
+  });
+
+  it("are none where rows are too few to correct them, and say so with the numbers", () => {
+    const wide = { logLikelihood: 30, freeCoefficients: 20 };
+    const { tests, untested } = restrictionTests(
+      { unrestricted: wide, homogeneity: { ...wide, freeCoefficients: 16 } },
+      { rows: 6, equations: 4 },
+    );
+    expect(tests).toEqual([]);
+    expect(untested[0].reason).toMatch(/^6 rows are too few .* 20 coefficients in 4 equations/);
   });
 
   it("have Laitinen's beside homogeneity in linear systems only, exact or not as the index says", () => {
     const fits = { unrestricted, homogeneity, symmetry };
-    expect(restrictionTests(fits, system)[0].exact).toBeUndefined();
-    const [first, second] = restrictionTests(fits, { ...system, linear: { exact: false } });
+    expect(restrictionTests(fits, system).tests[0].exact).toBeUndefined();
+    const [first, second] = restrictionTests(fits, { ...system, linear: { exact: false } }).tests;
     expect(first.exact).toMatchObject({ numerator: 3, denominator: 50 - 5 - 3 + 1, approximate: true });
     expect(first.exact!.pValue).toBeCloseTo(fTail(first.exact!.f, 3, 43), 14);
     expect(second.exact).toBeUndefined();
@@ -92,7 +110,7 @@ describe("the tests of a system", () => {
 
   it("count a likelihood that rounding made larger as equal", () => {
     const rounded = { logLikelihood: 30 + 1e-12, freeCoefficients: 12 };
-    const [test] = restrictionTests({ unrestricted, homogeneity: rounded }, system);
+    const [test] = restrictionTests({ unrestricted, homogeneity: rounded }, system).tests;
     expect([test.statistic, test.pValue]).toEqual([0, 1]);
   });
 });
