@@ -7,7 +7,10 @@ import { leastSquares, maximumLikelihood, seeminglyUnrelated } from "../../serve
 import { fitMeasures } from "../../server/engine/estimation/fit-measures.ts";
 import type { MomentSource } from "../../server/engine/estimation/moment-source.ts";
 import { reduceRows } from "../../server/engine/estimation/moments.ts";
+import { nestedForm } from "../../server/engine/inference/nested-form.ts";
 import { restrictionTests } from "../../server/engine/inference/restriction-tests.ts";
+import { scoreTest } from "../../server/engine/inference/score-test.ts";
+import { waldTest } from "../../server/engine/inference/wald-test.ts";
 import { QUIET } from "../../server/engine/run.ts";
 import { chiSquareTail } from "../../shared/numerics/distributions.ts";
 import { symmetricEigen } from "../../shared/numerics/eigen.ts";
@@ -221,7 +224,22 @@ describe("tests", () => {
     expectDigits(exact.pValue, 0.05338436, 8);
   });
 
-  it("homogeneity: Wald and score follow from T², W ≥ LR ≥ LM", () => {
+  it("homogeneity: Wald from the unrestricted fit, score from the restricted, W ≥ LR ≥ LM", () => {
+    const [wide, narrow] = [iterated("none"), iterated("homogeneity")];
+    const covariance = conventionalCovariance(wide.estimation, wide.solution);
+    const { places } = wide.estimation.form.expand;
+    const ofFree = places.map((a) => places.map((b) => covariance[a][b]));
+    const restrictions = nestedForm(wide.estimation.form.expand, narrow.estimation.form.expand);
+    const wald = waldTest(wide.solution.free, ofFree, restrictions);
+    const score = scoreTest(wide.estimation, narrow.solution.theta, restrictions.normals.columns);
+    if ("absent" in wald || "absent" in score) throw new Error("a test is absent");
+    expectDigits(wald.statistic, 12.86497026, 8);
+    expectDigits(wald.pValue, 0.004938, 6);
+    expectDigits(score.statistic, 8.49397885, 8);
+    expectDigits(score.pValue, 0.036833, 6);
+  });
+
+  it("homogeneity: Wald and score as they follow from T²", () => {
     const { tSquared } = homogeneity.exact!;
     const wald = (rows * tSquared) / 20;
     const score = (rows * tSquared) / (20 + tSquared);

@@ -31,7 +31,11 @@ export function systemForm(
   size: SystemSize,
   impose: readonly RestrictionName[],
 ): CoefficientForm {
-  const form = system.free(size, impose);
+  return constrainedForm(system, size, system.free(size, impose));
+}
+
+/** The share equations of a demand system under any linear restrictions θ = S φ + s. */
+export function constrainedForm(system: DemandSystem, size: SystemSize, form: FreeForm): CoefficientForm {
   return {
     free: form.places.length,
     expand: form,

@@ -79,9 +79,7 @@ export function likelihoodRatioTest(
   { rows, equations }: Pick<TestedSystem, "rows" | "equations">,
 ): RestrictionTest | undefined {
   const degreesOfFreedom = wide.freeCoefficients - narrow.freeCoefficients;
-  const size = equations * rows;
-  const factor =
-    (size - (wide.freeCoefficients + narrow.freeCoefficients) / 2 - (equations * (equations + 1)) / 2) / size;
+  const factor = italianerFactor(wide.freeCoefficients, narrow.freeCoefficients, { rows, equations });
   if (degreesOfFreedom <= 0 || factor <= 0) return undefined;
   // A difference below zero is rounding of two equal likelihoods.
   const statistic = Math.max(0, 2 * (wide.logLikelihood - narrow.logLikelihood));
@@ -93,6 +91,16 @@ export function likelihoodRatioTest(
     pValue: chiSquareTail(statistic, degreesOfFreedom),
     corrected: { statistic: corrected, pValue: chiSquareTail(corrected, degreesOfFreedom) },
   };
+}
+
+/** [mT − ½(k_u + k_r) − ½m(m + 1)]/(mT), Italianer (1985); not positive where rows are too few for any test. */
+export function italianerFactor(
+  wide: number,
+  narrow: number,
+  { rows, equations }: Pick<TestedSystem, "rows" | "equations">,
+): number {
+  const size = equations * rows;
+  return (size - (wide + narrow) / 2 - (equations * (equations + 1)) / 2) / size;
 }
 
 /**

@@ -1,0 +1,110 @@
+import type { SystemSpecification } from "../../../shared/schemas/system.ts";
+import type { HypothesisName, UnmadeTest } from "../../../shared/schemas/tests.ts";
+import type { DemandSystem, FreeForm, SystemSize } from "../../../shared/systems/demand-system.ts";
+import type { RestrictionName } from "../../../shared/systems/names.ts";
+import { withoutCoefficients } from "./nested-form.ts";
+
+/** A restriction to test: the model without it, and with it. */
+export interface Hypothesis {
+  readonly hypothesis: HypothesisName;
+  /** The demographic tested alone. */
+  readonly column?: string;
+  /** What holds in both models. */
+  readonly given: readonly RestrictionName[];
+  readonly wide: FreeForm;
+  readonly narrow: FreeForm;
+}
+
+export interface Asked {
+  readonly system: DemandSystem;
+  readonly size: SystemSize;
+  readonly specification: Pick<SystemSpecification, "form" | "impose">;
+  /** Names of what shifts the intercepts, as many as the size has. */
+  readonly demographics: readonly string[];
+}
+
+/**
+ * The hypotheses of a system, or why there is nothing to test. Those of theory are taken from the least restricted
+ * system, whatever the specification imposes; those of its own terms from the system as it is specified.
+ */
+export function hypothesesOf(names: readonly HypothesisName[], asked: Asked): (Hypothesis | UnmadeTest)[] {
+  const forms = new Map<string, FreeForm>();
+  const under = (...impose: RestrictionName[]): FreeForm => {
+    const key = impose.join();
+    const known = forms.get(key) ?? asked.system.free(asked.size, impose);
+    forms.set(key, known);
+    return known;
+  };
+  const find: Readonly<Partial<Record<HypothesisName, () => (Hypothesis | UnmadeTest)[]>>> = {
+    homogeneity: () => [theory(asked, "homogeneity", [], under(), under("homogeneity"))],
+    symmetry: () => [symmetry(asked, under("homogeneity"), under("homogeneity", "symmetry"))],
+    "homogeneity and symmetry": () => [
+      theory(asked, "homogeneity and symmetry", [], under(), under("homogeneity", "symmetry")),
+    ],
+    demographics: () => demographicTests(asked, under(...maintained(asked))),
+    "quadratic terms": () => [quadraticTerms(asked, under(...maintained(asked)))],
+  };
+  return names.flatMap((name) => find[name]?.() ?? []);
+}
+
+const nothing = (hypothesis: HypothesisName, reason: string): UnmadeTest => ({
+  hypothesis,
+  because: "nothing to test",
+  reason,
+});
+
+function theory(
+  { system }: Asked,
+  hypothesis: HypothesisName,
+  given: readonly RestrictionName[],
+  wide: FreeForm,
+  narrow: FreeForm,
+): Hypothesis | UnmadeTest {
+  if (system.heldByForm.length > 0 && wide.places.length === narrow.places.length) {
+    const reason = `Of the ${system.longName} it holds by the form itself, whatever the coefficients.`;
+    return { hypothesis, because: "by form", reason };
+  }
+  return { hypothesis, given, wide, narrow };
+}
+
+function symmetry(asked: Asked, wide: FreeForm, narrow: FreeForm): Hypothesis | UnmadeTest {
+  const test = theory(asked, "symmetry", ["homogeneity"], wide, narrow);
+  if ("because" in test || wide.places.length > narrow.places.length) return test;
+  return nothing("symmetry", "Between two goods symmetry follows from adding-up and homogeneity.");
+}
+
+/** What the specification imposes; symmetry brings homogeneity with it. */
+function maintained({ system, specification: { impose } }: Asked): RestrictionName[] {
+  const held = new Set([...system.heldByForm, ...impose]);
+  return (["homogeneity", "symmetry"] as const).filter((name) => held.has(name));
+}
+
+function demographicTests(asked: Asked, wide: FreeForm): (Hypothesis | UnmadeTest)[] {
+  const { system, size, demographics } = asked;
+  if (demographics.length === 0) {
+    const why = system.takesDemographics ? "names no demographics" : "takes no demographics";
+    return [nothing("demographics", `The ${system.longName} as specified ${why}.`)];
+  }
+  const blocks = new Set(system.blocks.flatMap(({ name, columns }) => (columns === "demographics" ? [name] : [])));
+  const layout = system.layout(size);
+  const test = (isTested: (index: number | undefined) => boolean): Pick<Hypothesis, "given" | "wide" | "narrow"> => {
+    const zero = new Set(layout.flatMap(({ block, column }, a) => (blocks.has(block) && isTested(column) ? [a] : [])));
+    return { given: maintained(asked), wide, narrow: withoutCoefficients(wide, zero) };
+  };
+  const together: Hypothesis = { hypothesis: "demographics", ...test(() => true) };
+  if (demographics.length === 1) return [{ ...together, column: demographics[0] }];
+  const alone = demographics.map(
+    (column, index): Hypothesis => ({ hypothesis: "demographics", column, ...test((of) => of === index) }),
+  );
+  return [together, ...alone];
+}
+
+function quadraticTerms(asked: Asked, wide: FreeForm): Hypothesis | UnmadeTest {
+  const layout = asked.system.layout(asked.size);
+  const zero = new Set(layout.flatMap(({ block }, a) => (block === "lambda" ? [a] : [])));
+  if (zero.size === 0) {
+    return nothing("quadratic terms", `The ${asked.system.longName} has no quadratic terms.`);
+  }
+  const narrow = withoutCoefficients(wide, zero);
+  return { hypothesis: "quadratic terms", given: maintained(asked), wide, narrow };
+}
