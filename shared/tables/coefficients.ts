@@ -8,6 +8,7 @@ type Coefficient = SystemFinding["coefficients"][number];
 /** What a paper calls the rows of each block. Demographic and price rows are named by their column. */
 const ROW_NAMES: Record<string, { label: string; symbol?: string }> = {
   alpha: { label: "Constant", symbol: "α" },
+  constant: { label: "Constant", symbol: "b₀" },
   beta: { label: "ln x,", symbol: "β" },
   committed: { label: "Committed quantity", symbol: "c" },
   marginal: { label: "Marginal share", symbol: "b" },
@@ -17,9 +18,21 @@ export interface CoefficientRow extends TableRow {
   readonly block: string;
 }
 
-/** A block has a row for each price when its columns are the goods themselves. */
+/** Blocks with a row for each price, alone or times something else, and the matrix each of them is. */
+const PRICE_BLOCKS: Readonly<Record<string, string>> = {
+  gamma: "Γ",
+  price: "A",
+  "price demographic": "A",
+  "price expenditure": "B",
+};
+
 export function isPriceBlock(block: string): boolean {
-  return block === "gamma";
+  return block in PRICE_BLOCKS;
+}
+
+/** The matrices of price effects among the rows: "Γ", "A, B". */
+export function priceMatrices(rows: readonly CoefficientRow[]): string {
+  return [...new Set(rows.filter((row) => isPriceBlock(row.block)).map((row) => PRICE_BLOCKS[row.block]))].join(", ");
 }
 
 function headOf(coefficient: Coefficient): { label: string; symbol?: string } {

@@ -1,7 +1,12 @@
 import { useId, useState } from "react";
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { capital } from "../../../shared/study/words.ts";
-import { type CoefficientRow, coefficientRows, isPriceBlock } from "../../../shared/tables/coefficients.ts";
+import {
+  type CoefficientRow,
+  coefficientRows,
+  isPriceBlock,
+  priceMatrices,
+} from "../../../shared/tables/coefficients.ts";
 import { printFixed } from "../../../shared/tables/numbers.ts";
 import { Estimate } from "../../components/number.tsx";
 import { TableScroller } from "../../components/table-scroller.tsx";
@@ -101,7 +106,7 @@ export function CoefficientView({ finding }: { finding: SystemFinding }) {
           {unfolded && (
             <tbody id={id}>
               {priceRows.map((row) => (
-                <Row key={row.label} row={row} goods={goods} />
+                <Row key={row.block + row.label} row={row} goods={goods} />
               ))}
             </tbody>
           )}
@@ -116,7 +121,8 @@ export function CoefficientView({ finding }: { finding: SystemFinding }) {
             className="word type-small"
             onClick={() => setUnfolded(!unfolded)}
           >
-            {unfolded ? "Fold the price terms" : "Price terms"} Γ, {goods.length} × {goods.length}
+            {unfolded ? "Fold the price terms" : "Price terms"} {priceMatrices(priceRows)}, {goods.length} ×{" "}
+            {goods.length}
           </button>
         </div>
       )}
