@@ -1,4 +1,5 @@
 import { zeros } from "../numerics/matrix.ts";
+import type { SlopeDerivatives, Slopes } from "../systems/demand-system.ts";
 import type { ResponseGradients, Responses } from "./responses.ts";
 
 /**
@@ -54,46 +55,73 @@ export class AggregateResponses {
   }
 }
 
-/** Derivatives in θ of the aggregate responses: the same sums over the rows' derivatives. */
+/**
+ * Derivatives in θ of the aggregate responses: the same sums over the rows' derivatives. Rows are added by their
+ * slopes, and ∂k_ij = ∂μ_ij + (w_j − δ_ij) ∂w_i + w_j ∂μ_i + (w_i + μ_i) ∂w_j is formed while summing.
+ */
 export class AggregateGradients {
-  #sums: ResponseGradients | undefined;
+  readonly #n: number;
+  readonly #k: number;
+  readonly #shares: Float64Array[];
+  readonly #total: Float64Array[];
+  /** Row by row, n². */
+  readonly #prices: Float64Array[];
+  readonly #compensated: Float64Array[];
   #weight = 0;
 
-  add(gradients: ResponseGradients, weight: number): void {
-    const { shares, total, prices, compensated } = gradients;
-    const k = shares[0].length;
-    const n = shares.length;
-    this.#sums ??= {
-      shares: zeros(n, k),
-      total: zeros(n, k),
-      prices: shares.map(() => zeros(n, k)),
-      compensated: shares.map(() => zeros(n, k)),
-    };
+  constructor(goods: number, coefficients: number) {
+    this.#n = goods;
+    this.#k = coefficients;
+    const rows = (count: number) => Array.from({ length: count }, () => new Float64Array(coefficients));
+    this.#shares = rows(goods);
+    this.#total = rows(goods);
+    this.#prices = rows(goods * goods);
+    this.#compensated = rows(goods * goods);
+  }
+
+  /** Adds a row by its slopes and their derivatives; `weight` as in `AggregateResponses`. */
+  add({ shares, total }: Slopes, derivatives: SlopeDerivatives, weight: number): void {
+    const n = this.#n;
+    const k = this.#k;
     this.#weight += weight;
     for (let i = 0; i < n; i++) {
-      addTo(this.#sums.shares[i], shares[i], weight);
-      addTo(this.#sums.total[i], total[i], weight);
+      const ofShare = derivatives.shares[i];
+      const ofTotal = derivatives.total[i];
+      addTo(this.#shares[i], ofShare, weight);
+      addTo(this.#total[i], ofTotal, weight);
+      const marginal = weight * (shares[i] + total[i]);
       for (let j = 0; j < n; j++) {
-        addTo(this.#sums.prices[i][j], prices[i][j], weight);
-        addTo(this.#sums.compensated[i][j], compensated[i][j], weight);
+        const ofPrice = derivatives.prices[i][j];
+        const ofOther = derivatives.shares[j];
+        const byShare = weight * (shares[j] - (i === j ? 1 : 0));
+        const byTotal = weight * shares[j];
+        const prices = this.#prices[i * n + j];
+        const compensated = this.#compensated[i * n + j];
+        for (let a = 0; a < k; a++) {
+          const slope = weight * ofPrice[a];
+          prices[a] += slope;
+          compensated[a] += slope + byShare * ofShare[a] + byTotal * ofTotal[a] + marginal * ofOther[a];
+        }
       }
     }
   }
 
   /** Errors: `RangeError` where no row was added. */
   result(): ResponseGradients {
-    const sums = this.#sums;
-    if (sums === undefined) throw new RangeError("a group without a row has no derivatives");
-    const mean = (row: readonly number[]) => row.map((sum) => sum / this.#weight);
+    if (this.#weight === 0) throw new RangeError("a group without a row has no derivatives");
+    const n = this.#n;
+    const mean = (row: Float64Array) => Array.from(row, (sum) => sum / this.#weight);
+    const square = (rows: Float64Array[]) =>
+      Array.from({ length: n }, (_, i) => rows.slice(i * n, (i + 1) * n).map(mean));
     return {
-      shares: sums.shares.map(mean),
-      total: sums.total.map(mean),
-      prices: sums.prices.map((rows) => rows.map(mean)),
-      compensated: sums.compensated.map((rows) => rows.map(mean)),
+      shares: this.#shares.map(mean),
+      total: this.#total.map(mean),
+      prices: square(this.#prices),
+      compensated: square(this.#compensated),
     };
   }
 }
 
-function addTo(sums: number[], row: ArrayLike<number>, weight: number): void {
+function addTo(sums: number[] | Float64Array, row: ArrayLike<number>, weight: number): void {
   for (let a = 0; a < sums.length; a++) sums[a] += weight * row[a];
 }

@@ -37,25 +37,51 @@ export function intervalOf(estimate: number, standardError: number, level: numbe
   return [estimate - width, estimate + width];
 }
 
+/** Intervals of elasticities, however they came about: expenditure (n), uncompensated and compensated (n × n). */
+export interface ElasticityIntervals {
+  readonly expenditure: Interval[];
+  readonly uncompensated: Interval[][];
+  readonly compensated: Interval[][];
+}
+
+/** Estimate ± z·standard error of every elasticity. */
+export function normalIntervals(elasticities: Elasticities, level: number): ElasticityIntervals {
+  const { expenditure, expenditureErrors, uncompensated, uncompensatedErrors } = elasticities;
+  const ofMatrix = (estimates: number[][], errors: number[][]) =>
+    estimates.map((row, i) => row.map((estimate, j) => intervalOf(estimate, errors[i][j], level)));
+  return {
+    expenditure: expenditure.map((estimate, i) => intervalOf(estimate, expenditureErrors[i], level)),
+    uncompensated: ofMatrix(uncompensated, uncompensatedErrors),
+    compensated: ofMatrix(elasticities.compensated, elasticities.compensatedErrors),
+  };
+}
+
 /** Classes of goods and of pairs at a point, with confidence `level`. */
 export function classesOfGoods(elasticities: Elasticities, goods: readonly string[], level = 0.95): GoodClasses {
-  const { expenditure, expenditureErrors, uncompensated, uncompensatedErrors } = elasticities;
+  return classesByIntervals(normalIntervals(elasticities, level), goods, level);
+}
+
+/** The same from intervals of that level. */
+export function classesByIntervals(
+  { expenditure, uncompensated, compensated }: ElasticityIntervals,
+  goods: readonly string[],
+  level: number,
+): GoodClasses {
   return {
     level,
     goods: goods.map((good, i) => {
-      const interval = intervalOf(expenditure[i], expenditureErrors[i], level);
-      const own = intervalOf(uncompensated[i][i], uncompensatedErrors[i][i], level);
+      const interval = expenditure[i];
       return {
         good,
         kind: kindOf(interval),
         interval,
         normal: interval[0] > 0 ? "yes" : interval[1] < 0 ? "no" : "undecided",
         incomeNeutral: interval[0] <= 0 && interval[1] >= 0,
-        giffen: giffenBy(own, interval),
+        giffen: giffenBy(uncompensated[i][i], interval),
       };
     }),
-    net: pairsBy(elasticities.compensated, elasticities.compensatedErrors, level),
-    gross: pairsBy(uncompensated, uncompensatedErrors, level),
+    net: pairsBy(compensated),
+    gross: pairsBy(uncompensated),
   };
 }
 
@@ -71,11 +97,10 @@ function giffenBy([ownLow, ownHigh]: Interval, [low, high]: Interval): Verdict {
   return ownHigh < 0 || low > 0 ? "no" : "undecided";
 }
 
-function pairsBy(estimates: number[][], errors: number[][], level: number): (PairClass | null)[][] {
-  return estimates.map((row, i) =>
-    row.map((estimate, j) => {
+function pairsBy(intervals: readonly Interval[][]): (PairClass | null)[][] {
+  return intervals.map((row, i) =>
+    row.map(([low, high], j) => {
       if (i === j) return null;
-      const [low, high] = intervalOf(estimate, errors[i][j], level);
       return low > 0 ? "substitutes" : high < 0 ? "complements" : "undecided";
     }),
   );

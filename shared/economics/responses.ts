@@ -35,18 +35,27 @@ export interface ResponseOptions {
   readonly index?: IndexResponse;
 }
 
+/** The slopes at a point that responses are formed from, with their derivatives in θ. */
+export function slopesAt(
+  fitted: FittedCoefficients,
+  point: Point,
+  options: ResponseOptions = {},
+): { slopes: Slopes; derivatives: SlopeDerivatives } {
+  const { slopes: held, derivatives: ofHeld } = evaluateAt(fitted, point);
+  const at = chosen(fitted.form, { slopes: held, derivatives: ofHeld }, point.prices.map(Math.log), options);
+  return { slopes: at.slopes, derivatives: at.derivatives as SlopeDerivatives };
+}
+
 /** Responses at a point with their derivatives in θ. */
 export function responsesAt(
   fitted: FittedCoefficients,
   point: Point,
   options: ResponseOptions = {},
 ): { responses: Responses; gradients: ResponseGradients } {
-  const { slopes: held, derivatives: heldDerivatives } = evaluateAt(fitted, point);
-  const at = chosen(fitted.form, { slopes: held, derivatives: heldDerivatives }, point.prices.map(Math.log), options);
-  const derivatives = at.derivatives as SlopeDerivatives;
+  const { slopes, derivatives } = slopesAt(fitted, point, options);
   return {
-    responses: { ...at.slopes, compensated: slutskyMatrix(at.slopes) },
-    gradients: { ...derivatives, compensated: slutskyDerivatives(at.slopes, derivatives) },
+    responses: { ...slopes, compensated: slutskyMatrix(slopes) },
+    gradients: { ...derivatives, compensated: slutskyDerivatives(slopes, derivatives) },
   };
 }
 

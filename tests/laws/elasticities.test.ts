@@ -1,7 +1,7 @@
 import { describe, expect, test } from "vitest";
 import { AggregateGradients, AggregateResponses } from "../../shared/economics/aggregate.ts";
 import { elasticitiesAt, elasticitiesOf, elasticityValues } from "../../shared/economics/elasticities.ts";
-import { type ResponseOptions, responsesAt } from "../../shared/economics/responses.ts";
+import { type ResponseOptions, responsesAt, slopesAt } from "../../shared/economics/responses.ts";
 import { standardError } from "../../shared/numerics/matrix.ts";
 import { seededRandom } from "../../shared/numerics/random.ts";
 import type { Point } from "../../shared/systems/demand-system.ts";
@@ -40,11 +40,11 @@ function groups(name: SystemName, impose: (typeof IMPOSED)[number], seed: number
 
 function aggregate({ fitted, points, weights }: Group, options?: ResponseOptions) {
   const responses = new AggregateResponses(fitted.goods.length);
-  const gradients = new AggregateGradients();
+  const gradients = new AggregateGradients(fitted.goods.length, fitted.theta.length);
   points.forEach((point, t) => {
-    const row = responsesAt(fitted, point, options);
-    responses.add(row.responses, weights[t]);
-    gradients.add(row.gradients, weights[t]);
+    responses.add(responsesAt(fitted, point, options).responses, weights[t]);
+    const { slopes, derivatives } = slopesAt(fitted, point, options);
+    gradients.add(slopes, derivatives, weights[t]);
   });
   return { responses: responses.result(), gradients: gradients.result() };
 }
@@ -193,10 +193,13 @@ describe("Stone's index moving with the shares", () => {
         return shares.map((share, i) => Math.log((share * at.total) / at.prices[i]));
       };
       const exact = elasticitiesAt(fitted, point, { index: "exact" });
-      const byTotal = derivative((step) => logQuantities({ ...point, total: point.total * Math.exp(step) }));
+      const byTotal = derivative((step) => logQuantities({ ...point, total: point.total * Math.exp(step) }), 0.01);
       expect(gap(exact.expenditure, byTotal)).toBeLessThan(1e-8);
       for (let j = 0; j < point.prices.length; j++) {
-        const byPrice = derivative((step) => logQuantities({ ...point, prices: repriced(point.prices, j, step) }));
+        const byPrice = derivative(
+          (step) => logQuantities({ ...point, prices: repriced(point.prices, j, step) }),
+          0.01,
+        );
         expect(
           gap(
             exact.uncompensated.map((row) => row[j]),

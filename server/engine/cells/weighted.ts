@@ -38,3 +38,24 @@ export function tenths(values: Float64Array, weights?: Float64Array): Uint8Array
   }
   return tenth;
 }
+
+/**
+ * For each value its group of `count` of equal weight, 0 the lowest: where the middle of the weight of all values
+ * equal to it falls among all weight in ascending order, so that equal values are never parted.
+ */
+export function quantileGroups(values: Float64Array, count: number, weights?: Float64Array): Uint8Array {
+  const weightOf = (t: number) => (weights ? weights[t] : 1);
+  const total = weights ? weights.reduce((sum, weight) => sum + weight, 0) : values.length;
+  const group = new Uint8Array(values.length);
+  const order = ascending(values);
+  let reached = 0;
+  for (let from = 0; from < order.length; ) {
+    let to = from;
+    let weight = 0;
+    while (to < order.length && values[order[to]] === values[order[from]]) weight += weightOf(order[to++]);
+    const own = Math.min(count - 1, Math.floor((count * (reached + weight / 2)) / total));
+    for (; from < to; from++) group[order[from]] = own;
+    reached += weight;
+  }
+  return group;
+}

@@ -1,0 +1,85 @@
+import {
+  type ElasticitiesFinding,
+  type ElasticitiesSpecification,
+  elasticitiesFinding,
+} from "../../../shared/schemas/elasticities.ts";
+import type { SystemFinding } from "../../../shared/schemas/system.ts";
+import { capital } from "../../../shared/study/words.ts";
+import { withArticle } from "../../../shared/tables/slutsky-matrix.ts";
+import type { PreparedData } from "../columns/prepared-data.ts";
+import { Refusal } from "../refusal.ts";
+import { Cancelled, QUIET, type RunControl } from "../run.ts";
+import { type RowGroup, rowGroups } from "./elasticity-groups.ts";
+import { atGroupMean, atOnePoint, type GroupOrReason } from "./elasticity-points.ts";
+import { overRows } from "./elasticity-rows.ts";
+import { refusingRanges } from "./refusing.ts";
+
+/**
+ * An elasticities cell: a fitted system's elasticities at one point, at the mean point of each group of rows, or over
+ * the rows of each, with standard errors, intervals and classes of goods (methods 3 and 3.2).
+ * Errors: `Refusal` (a column that is not there, no group with positive shares, Stone's index asked to move in another
+ * system), `Cancelled`.
+ */
+export function runElasticities(
+  specification: ElasticitiesSpecification,
+  system: SystemFinding,
+  data: PreparedData,
+  control: RunControl = QUIET,
+): ElasticitiesFinding {
+  const { fitted } = system;
+  const { groups: groupedBy, over, shares, index, level } = specification;
+  if (index === "exact" && fitted.index !== "stone") throw new Refusal([{ sentence: MOVES, key: ["index"] }]);
+  const { groups, derivativeRows } = evaluated(specification, system, data, control);
+  const found = groups.filter((group) => !("undefined" in group));
+  const without = groups.filter((group) => "undefined" in group);
+  if (found.length === 0) throw new Refusal(without.map((group) => refused(group, groupedBy !== undefined)));
+  return elasticitiesFinding.parse({
+    kind: "elasticities",
+    dataFingerprint: system.dataFingerprint,
+    form: fitted.form,
+    ...(fitted.index && { priceIndex: fitted.index }),
+    goods: fitted.goods,
+    over,
+    shares,
+    index,
+    level,
+    intervals: "normal",
+    ...(groupedBy && { groupedBy }),
+    groups: found,
+    without,
+    ...(derivativeRows && derivativeRows.used < derivativeRows.of && { derivativeRows }),
+  });
+}
+
+const MOVES = "index: exact lets the weights of Stone's index in la-aids move; this system has no such index.";
+
+function evaluated(
+  specification: ElasticitiesSpecification,
+  system: SystemFinding,
+  data: PreparedData,
+  control: RunControl,
+): { groups: GroupOrReason[]; derivativeRows?: { used: number; of: number } } {
+  const { groups: groupedBy, over, at } = specification;
+  if (!groupedBy && over === "means") {
+    return { groups: [refusingRanges(() => atOnePoint(at, specification, system, data))] };
+  }
+  const groups = groupedBy ? rowGroups(groupedBy, data) : [allRows(data)];
+  if (over === "rows") return refusingRanges(() => overRows(groups, specification, system, data, control));
+  return {
+    groups: groups.map((group, done) => {
+      if (control.cancelled()) throw new Cancelled("cancelled between groups");
+      control.progress({ step: "evaluating groups", fraction: done / groups.length });
+      return atGroupMean(group, specification, system, data);
+    }),
+  };
+}
+
+function allRows({ rows }: PreparedData): RowGroup {
+  return { name: "all rows", rows: Int32Array.from({ length: rows }, (_, t) => t) };
+}
+
+function refused(group: Exclude<GroupOrReason, { shares: unknown }>, isOneOfSeveral: boolean) {
+  const { name, undefined: reason } = group;
+  const sentence = isOneOfSeveral ? `${capital(name)}: ${reason}` : `At ${withArticle(name)}: ${reason}`;
+  return { sentence, key: isOneOfSeveral ? ["groups"] : ["at"] };
+}

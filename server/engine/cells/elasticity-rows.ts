@@ -1,0 +1,128 @@
+import { AggregateGradients, AggregateResponses } from "../../../shared/economics/aggregate.ts";
+import { type ResponseOptions, responsesFrom, slopesAt } from "../../../shared/economics/responses.ts";
+import type { ElasticitiesSpecification } from "../../../shared/schemas/elasticities.ts";
+import type { SystemFinding } from "../../../shared/schemas/system.ts";
+import type { Evaluator, Slopes } from "../../../shared/systems/demand-system.ts";
+import { systemOf } from "../../../shared/systems/index.ts";
+import type { PreparedData } from "../columns/prepared-data.ts";
+import { Refusal } from "../refusal.ts";
+import { Cancelled, type RunControl } from "../run.ts";
+import { evaluatedGroup, notPositive } from "./elasticity-at.ts";
+import type { RowGroup } from "./elasticity-groups.ts";
+import { type GroupOrReason, meanOver, weightOver } from "./elasticity-points.ts";
+import { demographicColumns, pointOfRow } from "./points.ts";
+
+type Options = Pick<ElasticitiesSpecification, "shares" | "index" | "level">;
+
+const ROWS_BETWEEN_REPORTS = 1024;
+/** Products that the derivatives of all groups may come to: some seconds. Further rows enter the estimates alone. */
+const MOST_PRODUCTS = 1e8;
+/** No group's derivatives rest on fewer rows than these, if it has them. */
+const FEWEST_SAMPLED = 500;
+
+/** How many rows the derivatives of the standard errors are taken at. */
+export interface DerivativeRows {
+  used: number;
+  readonly of: number;
+}
+
+/**
+ * Elasticities over the rows of each group, each row weighted by what it spends on the good (`AggregateResponses`).
+ * The estimates go over every row. The derivatives behind the standard errors cost n²k products a row and go over
+ * every row too, up to a budget; beyond it over every m-th row of the group, which moves a standard error by about
+ * 1/√rows of itself, and the finding says so.
+ */
+export function overRows(
+  groups: readonly RowGroup[],
+  options: Options,
+  system: SystemFinding,
+  data: PreparedData,
+  control: RunControl,
+): { groups: GroupOrReason[]; derivativeRows: DerivativeRows } {
+  const { fitted } = system;
+  const products = data.goods.length ** 2 * fitted.theta.length;
+  const stride = Math.max(1, Math.ceil((data.rows * products) / MOST_PRODUCTS));
+  const derivativeRows: DerivativeRows = { used: 0, of: data.rows };
+  let done = 0;
+  const report = () => {
+    if (control.cancelled()) throw new Cancelled("cancelled while going over the rows");
+    control.progress({ step: "going over the rows", fraction: done / data.rows });
+  };
+  const passed = () => {
+    if (done++ % ROWS_BETWEEN_REPORTS === 0) report();
+  };
+  const evaluated = groups.map((group) => {
+    const every = Math.max(1, Math.min(stride, Math.floor(group.rows.length / FEWEST_SAMPLED)));
+    return overGroup(group, { ...options, every }, system, data, passed, derivativeRows);
+  });
+  return { groups: evaluated, derivativeRows };
+}
+
+function overGroup(
+  { name, rows }: RowGroup,
+  { shares, index, level, every }: Options & { every: number },
+  { fitted }: SystemFinding,
+  data: PreparedData,
+  passed: () => void,
+  derivativeRows: DerivativeRows,
+): GroupOrReason {
+  const { system, size } = systemOf(fitted);
+  const evaluator = system.evaluator(fitted.theta, size);
+  const demographics = demographicColumns(data, fitted.demographics);
+  const goods = data.goods.map((_, i) => i);
+  const sums = new AggregateResponses(goods.length);
+  const gradients = new AggregateGradients(goods.length, fitted.theta.length);
+  const below = goods.map(() => 0);
+  const add = (t: number, withDerivatives: boolean) => {
+    const logPrices = data.logPrices.map((column) => column[t]);
+    const observed = shares === "observed" ? data.shares.map((column) => column[t]) : undefined;
+    const rowOptions: ResponseOptions = { index, ...(observed && { observed }) };
+    const weight = (data.weights ? data.weights[t] : 1) * Math.exp(data.logTotal[t]);
+    evaluator.at(
+      logPrices,
+      data.logTotal[t],
+      demographics.map((column) => column[t]),
+    );
+    const responses = responsesFrom(fitted.form, heldBy(evaluator), logPrices, rowOptions);
+    sums.add(responses, weight);
+    for (const i of goods) if (!(responses.shares[i] > 0)) below[i]++;
+    if (!withDerivatives) return;
+    derivativeRows.used++;
+    const { slopes, derivatives } = slopesAt(fitted, pointOfRow(data, fitted.demographics, t), rowOptions);
+    gradients.add(slopes, derivatives, weight);
+  };
+  rows.forEach((t, at) => {
+    passed();
+    try {
+      add(t, at % every === every >> 1);
+    } catch (error) {
+      // What a system does not define at a row (LA-AIDS far from its base prices) says so itself, without the row.
+      if (!(error instanceof RangeError)) throw error;
+      throw new Refusal([{ sentence: `Row ${data.rowNumbers[t]}: ${error.message}.`, row: data.rowNumbers[t] }]);
+    }
+  });
+  const about = {
+    name,
+    rows: rows.length,
+    weightShare: weightOver(rows, data.weights) / weightOver(undefined, data.weights, data.rows),
+    total: meanOver(data.logTotal.map(Math.exp), rows, data.weights) * data.totalScale,
+  };
+  const responses = sums.result();
+  const reason = notPositive(responses.shares, fitted.goods, shares);
+  if (reason !== undefined) return { ...about, undefined: reason };
+  return {
+    ...about,
+    notPositive: goods.flatMap((i) => (below[i] > 0 ? [{ good: fitted.goods[i], rows: below[i] }] : [])),
+    ...evaluatedGroup(fitted, { responses, gradients: gradients.result() }, level),
+  };
+}
+
+/** What an evaluator carries, as rows of numbers of one's own. */
+function heldBy({ shares, total, prices }: Evaluator): Slopes {
+  const n = shares.length;
+  return {
+    shares: Array.from(shares),
+    total: Array.from(total),
+    prices: Array.from({ length: n }, (_, i) => Array.from(prices.subarray(i * n, (i + 1) * n))),
+  };
+}

@@ -1,0 +1,116 @@
+import { z } from "zod";
+import { PRICE_INDEX_NAMES, SYSTEM_NAMES } from "../systems/names.ts";
+import { cellName, columnName, count, fingerprint, finite, goodName, matrix, vector } from "./primitives.ts";
+import { pointSpecification } from "./slutsky.ts";
+import { namedPoint } from "./system.ts";
+
+/** What stands for total expenditure where a column is asked for. */
+export const TOTAL_EXPENDITURE = "total expenditure";
+
+/** Rows parted by the values of a column, or by quantiles of one. */
+export const groupsSpecification = z.strictObject({
+  /** A column of the data, text or number; or total expenditure. */
+  of: columnName,
+  /** So many groups of equal weight, lowest first; without it each value is a group. */
+  quantiles: z.number().int().min(2).max(20).optional(),
+});
+export type GroupsSpecification = z.infer<typeof groupsSpecification>;
+
+export const elasticitiesSpecification = z
+  .strictObject({
+    kind: z.literal("elasticities"),
+    system: cellName,
+    /** One point; the mean unless said otherwise. */
+    at: pointSpecification.optional(),
+    groups: groupsSpecification.optional(),
+    /** At the mean point, or over the rows, each weighted by what it spends on the good. */
+    over: z.enum(["means", "rows"]).default("means"),
+    /** Which shares stand in the formulas. */
+    shares: z.enum(["predicted", "observed"]).default("predicted"),
+    /** Whether the weights of Stone's index in la-aids are held or move with the shares. */
+    index: z.enum(["held", "exact"]).default("held"),
+    /** Of confidence, of every interval and class. */
+    level: z.number().min(0.5).max(0.999).default(0.95),
+  })
+  .superRefine(({ at, groups, over, shares }, context) => {
+    const tell = (path: string, message: string) => context.addIssue({ code: "custom", path: [path], message });
+    if (at !== undefined && groups !== undefined) {
+      tell("at", "at is one point and groups are several: give one of them");
+    } else if (at !== undefined && over === "rows") {
+      tell("at", "at is one point, and over: rows goes over all rows or groups of them: give one of them");
+    }
+    const unobserved = typeof at === "object" && ("prices" in at || "x" in at);
+    if (shares === "observed" && unobserved) {
+      tell("shares", "shares are observed in rows, and none at this point: give the base point, the mean or a row");
+    }
+  });
+export type ElasticitiesSpecification = z.infer<typeof elasticitiesSpecification>;
+
+/** Estimates with standard errors and the ends of their intervals. */
+const estimates = z.strictObject({ values: vector, errors: vector, low: vector, high: vector });
+const estimatesByPrice = z.strictObject({ values: matrix, errors: matrix, low: matrix, high: matrix });
+export type EstimatesByPrice = z.infer<typeof estimatesByPrice>;
+
+export const VERDICTS = ["yes", "no", "undecided"] as const;
+const verdict = z.enum(VERDICTS);
+/** By the sign of an elasticity: null on the diagonal. */
+const pair = z.enum(["substitutes", "complements", "undecided"]).nullable();
+
+export const classOfGood = z.strictObject({
+  good: goodName,
+  kind: z.enum(["luxury", "necessity", "inferior", "undecided"]),
+  normal: verdict,
+  incomeNeutral: z.boolean(),
+  giffen: verdict,
+});
+export type ClassOfGood = z.infer<typeof classOfGood>;
+
+/** Who is spoken of: rows used (none of an imagined point) and their part of the weight. */
+const about = {
+  name: z.string(),
+  rows: count.optional(),
+  weightShare: finite.optional(),
+  /** In the units uploaded: total expenditure at the point, or the mean over the rows. */
+  total: finite,
+};
+
+export const elasticityGroup = z.strictObject({
+  ...about,
+  /** Where they are evaluated, in units of estimation; absent over rows. */
+  point: namedPoint.optional(),
+  /** Those that stand in the formulas; over rows the group's expenditure on each good by its total. */
+  shares: vector,
+  expenditure: estimates,
+  uncompensated: estimatesByPrice,
+  compensated: estimatesByPrice,
+  classes: z.array(classOfGood),
+  net: z.array(z.array(pair)),
+  gross: z.array(z.array(pair)),
+  /** Over rows: how many rows have a share that is not positive, by good. */
+  notPositive: z.array(z.strictObject({ good: goodName, rows: count })),
+});
+export type ElasticityGroup = z.infer<typeof elasticityGroup>;
+
+/** A group that has none, with the reason. */
+export const undefinedGroup = z.strictObject({ ...about, undefined: z.string() });
+
+export const elasticitiesFinding = z.strictObject({
+  kind: z.literal("elasticities"),
+  dataFingerprint: fingerprint,
+  form: z.enum(SYSTEM_NAMES),
+  priceIndex: z.enum(PRICE_INDEX_NAMES).optional(),
+  goods: z.array(goodName),
+  over: z.enum(["means", "rows"]),
+  shares: z.enum(["predicted", "observed"]),
+  index: z.enum(["held", "exact"]),
+  level: finite,
+  /** Estimate and standard error times a normal quantile, or the bootstrap's own percentiles. */
+  intervals: z.enum(["normal", "percentile"]),
+  /** What parts the rows; absent of one point, and over all rows. */
+  groupedBy: groupsSpecification.optional(),
+  groups: z.array(elasticityGroup).min(1),
+  without: z.array(undefinedGroup),
+  /** Over rows: how many of them the standard errors' derivatives were taken at, where not at all. */
+  derivativeRows: z.strictObject({ used: count, of: count }).optional(),
+});
+export type ElasticitiesFinding = z.infer<typeof elasticitiesFinding>;
