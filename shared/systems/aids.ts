@@ -26,6 +26,7 @@ import { requirePoint, slopesByEvaluator } from "./evaluation.ts";
  */
 export const aids: DemandSystem = {
   name: "aids",
+  kind: "levels",
   longName: "almost ideal demand system",
   source: "Deaton and Muellbauer (1980), American Economic Review 70",
   blocks: ALMOST_IDEAL_BLOCKS,

@@ -1,5 +1,5 @@
 import type { Matrix } from "../numerics/matrix.ts";
-import type { PriceIndexName, RestrictionName, SystemName } from "./names.ts";
+import type { InteractionName, PriceIndexName, RestrictionName, SystemName } from "./names.ts";
 
 export type { Matrix };
 
@@ -27,6 +27,12 @@ export interface PriceIndex {
   readonly meanPrices: readonly number[];
 }
 
+/** What EASI is made of: the degree of its Engel curves and the products beside main effects. */
+export interface EasiSize {
+  readonly degree: number;
+  readonly interactions: readonly InteractionName[];
+}
+
 /** What fixes the length and meaning of the coefficient vector. */
 export interface SystemSize {
   readonly goods: number;
@@ -35,6 +41,10 @@ export interface SystemSize {
   readonly alpha0: number;
   /** Needed to evaluate LA-AIDS at a point; not for its layout, moments or free form. */
   readonly index?: PriceIndex;
+  /** Needed by EASI, whose layout it fixes. */
+  readonly easi?: EasiSize;
+  /** Weighted means of the observed shares, n: what a system in differences is evaluated at. */
+  readonly meanShares?: readonly number[];
 }
 
 /** One coefficient of θ: which block, which good (equation), and which price or demographic it belongs to. */
@@ -46,11 +56,24 @@ export interface CoefficientPlace {
   readonly column?: number;
 }
 
+/**
+ * What the columns of a block are: powers of real expenditure from the first, or products; "goods by demographics"
+ * runs over the goods of the first demographic, then of the next.
+ */
+export type BlockColumns =
+  | "one"
+  | "goods"
+  | "demographics"
+  | "powers"
+  | "demographics by expenditure"
+  | "goods by expenditure"
+  | "goods by demographics";
+
 /** A block as tables print it: symbol and how many columns it has for each good. */
 export interface CoefficientBlock {
   readonly name: string;
   readonly symbol: string;
-  readonly columns: "one" | "goods" | "demographics";
+  readonly columns: BlockColumns;
 }
 
 /** Shares and their slopes at a point. */
@@ -75,6 +98,8 @@ export interface Evaluator {
   /** μ_ij, n × n row by row. */
   readonly prices: Float64Array;
   at(logPrices: ArrayLike<number>, logTotal: number, demographics: ArrayLike<number>): void;
+  /** Systems in differences: stands at these observed shares, since none are predicted. */
+  atShares?(shares: ArrayLike<number>): void;
 }
 
 /** One price slope as its formula and numbers: μ_ij = Σ of the terms, each a sign and a product. */
@@ -102,22 +127,77 @@ export type BaseColumn =
   | { readonly kind: "log total" }
   | { readonly kind: "demographic"; readonly index: number }
   | { readonly kind: "price over total"; readonly good: number }
+  | { readonly kind: "price"; readonly good: number }
+  | { readonly kind: "total" }
+  /** Divisia's volume of all goods, whose change is Δln Q = Σ_i w̄_i Δln q_i (Rotterdam). */
+  | { readonly kind: "log volume" }
   /** ln(x/P) with P an index without parameters (LA-AIDS); the estimator asks the data for it. */
-  | { readonly kind: "deflated log total" };
+  | { readonly kind: "deflated log total" }
+  /** A power of y, real expenditure of EASI: by mean shares where it is linear, else implicit utility. */
+  | { readonly kind: "real expenditure"; readonly power: number }
+  /** A column that moves with θ, by its place among those of the form's `local`. */
+  | { readonly kind: "local"; readonly index: number };
 
 export type MomentTerm =
   | { readonly kind: "constant" }
   | { readonly kind: "column"; readonly column: BaseColumn }
-  | { readonly kind: "product"; readonly left: BaseColumn; readonly right: BaseColumn };
+  | { readonly kind: "product"; readonly left: BaseColumn; readonly right: BaseColumn }
+  /** A product of more columns than two. */
+  | { readonly kind: "monomial"; readonly factors: readonly BaseColumn[] };
 
-/** The representation that lets a likelihood be computed from second moments alone (methods section 6). */
+/** A non-zero derivative: what multiplies a term in the equation of a good. */
+export type MomentEntry = [good: number, term: number, value: number];
+
+/**
+ * The representation that lets a likelihood be computed from second moments alone (methods section 6).
+ *
+ * Where a form declares `local`, some base columns are functions of θ too: then Z is Z(θ), and the moments
+ * are accumulated again at every θ the iteration stops at.
+ */
 export interface MomentForm {
   /** The terms of Z, in order; the first is the constant. */
   terms(size: SystemSize): MomentTerm[];
-  /** C(θ), n × |Z|: predicted shares are C(θ)·Z. */
+  /** C(θ), n × |Z|: predicted shares are C(θ)·Z, the latter at the same θ where it moves with it. */
   coefficients(theta: readonly number[], size: SystemSize): Matrix;
-  /** ∂C/∂θ_a for each coefficient a, as sparse entries [good, term, value]. */
-  derivatives(theta: readonly number[], size: SystemSize): [good: number, term: number, value: number][][];
+  /**
+   * ∂ŵ/∂θ_a = D_a·Z for each coefficient a, D_a (n × |Z|) as sparse entries. Without `local` D_a is ∂C/∂θ_a;
+   * with it D_a holds besides what the columns do as θ_a moves them, in terms of Z at that θ.
+   */
+  derivatives(theta: readonly number[], size: SystemSize): MomentEntry[][];
+  readonly local?: LocalColumns;
+}
+
+/** Base columns that are functions of (θ, ln p, ln x, z, w) of their row. */
+export interface LocalColumns {
+  /** What a refusal calls each of them: "real expenditure squared over b(p)". */
+  readonly labels: readonly string[];
+  filler(theta: readonly number[], size: SystemSize): LocalFiller;
+  readonly from: NearbyForm;
+}
+
+/** The local columns of a row at fixed θ: `at` overwrites `values` and allocates nothing. */
+export interface LocalFiller {
+  readonly values: Float64Array;
+  /** w are the observed shares (EASI's implicit utility holds them). */
+  at(
+    logPrices: ArrayLike<number>,
+    logTotal: number,
+    demographics: ArrayLike<number>,
+    shares: ArrayLike<number>,
+  ): void;
+}
+
+/**
+ * The form without local columns that is estimated first, from moments read once: where the iteration of
+ * one with them starts.
+ */
+export interface NearbyForm {
+  readonly moments: MomentForm;
+  layout(size: SystemSize): CoefficientPlace[];
+  free(size: SystemSize, impose: readonly RestrictionName[]): FreeForm;
+  start(size: SystemSize, meanShares: readonly number[]): number[];
+  /** θ of the larger system at which it predicts what the nearby one does at `theta`. */
+  embed(theta: readonly number[], size: SystemSize): number[];
 }
 
 /**
@@ -152,6 +232,11 @@ export interface CostFunction {
 
 export interface DemandSystem {
   readonly name: SystemName;
+  /**
+   * "levels": shares are a function of prices, total and demographics. "differences": only their changes from
+   * one period to the next are explained (Rotterdam), and the slopes stand at observed shares.
+   */
+  readonly kind: "levels" | "differences";
   /** As a table or sentence calls it, e.g. "almost ideal demand system". */
   readonly longName: string;
   /** Authors, year, journal. */
@@ -178,6 +263,10 @@ export interface DemandSystem {
   /** μ_ij in the terms of the system's own formula. */
   explainPriceSlope(theta: readonly number[], size: SystemSize, point: Point, i: number, j: number): PriceSlopeTerm[];
   readonly moments: MomentForm;
+  /** The same coefficients where the responses are expenditures p_i q_i in units of estimation. */
+  readonly expenditureMoments?: MomentForm;
+  /** Why there is no share function, in a system in differences. */
+  readonly shareFunction?: { readonly absent: string };
   /** Where iteration starts: θ (k) that satisfies every restriction, from the mean shares (n). */
   start(size: SystemSize, meanShares: readonly number[]): number[];
   /** Absent with a reason where there is none (LA-AIDS): welfare refuses it and names the exact system. */

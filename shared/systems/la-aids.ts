@@ -161,6 +161,7 @@ function linearDerivatives(theta: readonly number[], size: SystemSize, point: Po
  */
 export const laAids: DemandSystem = {
   name: "la-aids",
+  kind: "levels",
   longName: "linear approximate almost ideal demand system",
   source: "Deaton and Muellbauer (1980), American Economic Review 70",
   blocks: ALMOST_IDEAL_BLOCKS,

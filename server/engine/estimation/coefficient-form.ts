@@ -15,11 +15,20 @@ export interface CoefficientForm {
   coefficients(free: readonly number[]): number[][];
   /** ∂C/∂φ_f for every f; entries at the same place add up. */
   derivatives(free: readonly number[]): Entry[][];
-  /** All k coefficients from the free ones: θ = S φ + s. */
-  readonly expand: FreeForm;
+  /** All k coefficients from the free ones. */
+  readonly expand: Expansion;
 }
 
-export function expand({ matrix, offset }: FreeForm, free: readonly number[]): number[] {
+/**
+ * θ = S φ + s; or, where curvature is imposed, a bent function of φ, whose derivative at the φ it was formed
+ * at is S. `places` then name the coefficient of θ that a free one speaks of most nearly.
+ */
+export interface Expansion extends FreeForm {
+  readonly bent?: (free: readonly number[]) => number[];
+}
+
+export function expand({ matrix, offset, bent }: Expansion, free: readonly number[]): number[] {
+  if (bent) return bent(free);
   return matrix.map((row, a) =>
     row.reduce((sum, weight, f) => (weight === 0 ? sum : sum + weight * free[f]), offset[a]),
   );
@@ -27,7 +36,7 @@ export function expand({ matrix, offset }: FreeForm, free: readonly number[]): n
 
 /** The share equations of a demand system under the restrictions imposed. */
 export function systemForm(
-  system: DemandSystem,
+  system: Pick<DemandSystem, "free" | "moments">,
   size: SystemSize,
   impose: readonly RestrictionName[],
 ): CoefficientForm {
@@ -35,7 +44,7 @@ export function systemForm(
 }
 
 /** The share equations of a demand system under any linear restrictions θ = S φ + s. */
-export function constrainedForm(system: DemandSystem, size: SystemSize, form: FreeForm): CoefficientForm {
+export function constrainedForm(system: Pick<DemandSystem, "moments">, size: SystemSize, form: FreeForm): CoefficientForm {
   return {
     free: form.places.length,
     expand: form,
@@ -73,7 +82,7 @@ export function linearForm(
   };
 }
 
-function throughRestrictions(byCoefficient: readonly (readonly Entry[])[], { matrix, places }: FreeForm): Entry[][] {
+export function throughRestrictions(byCoefficient: readonly (readonly Entry[])[], { matrix, places }: Pick<FreeForm, "matrix" | "places">): Entry[][] {
   const byFree: Entry[][] = places.map(() => []);
   byCoefficient.forEach((entries, a) => {
     matrix[a].forEach((weight, f) => {

@@ -17,9 +17,11 @@ export function durbinWatson(
   const last = new Float64Array(coefficients.length);
   const terms = new Float64Array(source.terms.length);
   order.forEach((row, place) => {
-    source.terms.forEach(([left, right], term) => {
-      const first = left === 0 ? 1 : source.columns[left - 1][row];
-      terms[term] = right === 0 ? 1 : first * source.columns[right - 1][row];
+    source.terms.forEach((factors, term) => {
+      terms[term] = factors.reduce(
+        (product, place) => (place === 0 ? product : product * source.columns[place - 1][row]),
+        1,
+      );
     });
     coefficients.forEach((equation, i) => {
       let residual = source.responses[i][row];

@@ -2,7 +2,9 @@ import type { SystemFinding, SystemSpecification } from "../../../shared/schemas
 import { nearestWord } from "../../../shared/study/nearest-word.ts";
 import type { DemandSystem, SystemSize } from "../../../shared/systems/demand-system.ts";
 import { SYSTEMS } from "../../../shared/systems/index.ts";
+import { pickRows } from "../columns/pick-rows.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
+import { weightedMean } from "../columns/weighted.ts";
 import { type NestedFits, restrictionTests } from "../inference/restriction-tests.ts";
 import { Refusal } from "../refusal.ts";
 import type { RunControl } from "../run.ts";
@@ -10,16 +12,19 @@ import { systemForm } from "./coefficient-form.ts";
 import { coefficientNames, labelOfCoefficient } from "./coefficient-labels.ts";
 import { conventionalCovariance, leastSquaresCovariance } from "./covariance.ts";
 import { durbinWatson } from "./durbin-watson.ts";
+import { equationsExplainedBy } from "./equations-explained.ts";
+import { firstStepFindings } from "./first-steps/findings.ts";
 import type { Estimation } from "./estimation.ts";
-import { leastSquares, maximumLikelihood, seeminglyUnrelated } from "./estimators.ts";
 import { refuseConstantShares, refuseTooFewRows } from "./failures.ts";
 import { fitMeasures } from "./fit-measures.ts";
 import type { Solution } from "./minimise.ts";
+import { locatable, sourceAt } from "./local-moments.ts";
 import type { Moments } from "./moments.ts";
 import { nestedFits, rememberFit } from "./nested-fits.ts";
 import { DEFAULT_INDEX } from "./price-index.ts";
 import { momentsRequest, sizeOf, sourceOf } from "./request.ts";
-import { meanResponses } from "./responses.ts";
+import { solve, withinEquations } from "./solve.ts";
+import { sampleOf, specifiedSystem } from "./specified-system.ts";
 import { covarianceOf } from "./weighting.ts";
 
 /** A system finding but for what the economics of the fitted system adds. */
@@ -34,17 +39,19 @@ export type Estimate = Omit<SystemFinding, "points" | "expenditureElasticities" 
 export function estimateSystem(
   specification: SystemSpecification,
   data: PreparedData,
-  moments: Moments,
+  given: Moments,
   control: RunControl,
 ): Estimate {
-  const system = SYSTEMS[specification.form];
+  const system = specifiedSystem(specification, data);
   const size = sizeOf(specification, data);
+  const moments = locatable(given, data, momentsRequest(specification, data), system.moments, size);
   const names = coefficientNames(system, size, data.goods, specification.demographics);
   const dropped = placeOfDropped(specification, data.goods);
   const estimation: Estimation = {
     moments,
     form: systemForm(system, size, specification.impose),
-    equations: data.goods.map((_, good) => good).filter((good) => good !== dropped),
+    // Zeros in two steps: expected shares do not add up, so that no equation follows from the others.
+    equations: data.goods.map((_, good) => good).filter((good) => good !== dropped || specification.zeros !== undefined),
     coefficientLabels: names.map(labelOfCoefficient),
   };
   const within = systemForm(system, size, withinEquations(specification)).free;
@@ -55,12 +62,16 @@ export function estimateSystem(
     specification.estimator === "least squares"
       ? leastSquaresCovariance(estimation, solution)
       : conventionalCovariance(estimation, solution);
+  // What the first steps add stands after the coefficients of the system itself.
+  const own = SYSTEMS[specification.form].layout(size).length;
+  const fit = { specification, data, system, size, estimation, solution, covariance, own };
   const { iterations, gradient, largestStep, condition } = solution;
   const measures = fitMeasures(estimation, solution);
   if (specification.estimator === "maximum likelihood") {
     rememberFit(estimation, specification, measures.logLikelihood);
   }
-  const durbin = durbinWatsonOf(specification, data, estimation, solution);
+  const equations = equationsExplainedBy(sampleOf(specification), data, moments.rows);
+  const durbin = durbinWatsonOf(specification, data, system, size, estimation, solution);
   return {
     kind: "system",
     dataFingerprint: data.fingerprint,
@@ -71,21 +82,25 @@ export function estimateSystem(
         indexMeans: { shares: [...size.index.meanShares], prices: [...size.index.meanPrices] },
       }),
       goods: [...data.goods],
+      ...(system.kind === "differences" && {
+        meanShares: data.shares.map((share) => weightedMean(share, data.weights)),
+      }),
       demographics: [...specification.demographics],
       alpha0: specification.alpha0,
       imposed: [...specification.impose],
-      theta: solution.theta,
-      covariance,
+      theta: solution.theta.slice(0, own),
+      covariance: covariance.slice(0, own).map((row) => row.slice(0, own)),
     },
-    coefficients: names.map((name, a) => ({
+    coefficients: names.slice(0, own).map((name, a) => ({
       ...name,
       estimate: solution.theta[a],
       standardError: Math.sqrt(covariance[a][a]),
     })),
     estimator: specification.estimator,
     standardErrors: "conventional",
-    dropped: data.goods[dropped],
+    ...(specification.zeros === undefined && { dropped: data.goods[dropped] }),
     rows: moments.rows,
+    ...(equations && { equations }),
     weighted: moments.weighted,
     freeCoefficients: estimation.form.free,
     ...measures,
@@ -93,12 +108,8 @@ export function estimateSystem(
     ...(durbin && { durbinWatson: durbin }),
     residualCovariance: covarianceOf(solution.residuals, moments.rows),
     ...testsOf(specification, system, size, estimation, solution, control),
+    ...firstStepFindings(fit, () => sourceOf(data, momentsRequest(specification, data)), control),
   };
-}
-
-/** The restrictions that act within equations only. */
-function withinEquations({ impose }: SystemSpecification) {
-  return impose.filter((restriction) => restriction !== "symmetry");
 }
 
 function placeOfDropped({ dropped }: SystemSpecification, goods: readonly string[]): number {
@@ -110,41 +121,19 @@ function placeOfDropped({ dropped }: SystemSpecification, goods: readonly string
   throw new Refusal([{ sentence, key: ["dropped"], ...(nearest !== undefined && { nearest }) }]);
 }
 
-function solve(
-  specification: SystemSpecification,
-  system: DemandSystem,
-  size: SystemSize,
-  estimation: Estimation,
-  control: RunControl,
-): Solution {
-  const theta = system.start(size, meanResponses(estimation));
-  const start = estimation.form.expand.places.map((place) => theta[place]);
-  switch (specification.estimator) {
-    case "least squares":
-      return leastSquares(estimation, true, start, control);
-    case "seemingly unrelated": {
-      // With symmetry in the first step, Σ̂ would depend on the dropped good.
-      const form = systemForm(system, size, withinEquations(specification));
-      const from = form.expand.places.map((place) => theta[place]);
-      const first = leastSquares({ ...estimation, form }, true, from, control);
-      return seeminglyUnrelated(estimation, first, start, control);
-    }
-    case "iterated seemingly unrelated":
-      return maximumLikelihood(estimation, true, start, "update", control);
-    case "maximum likelihood":
-      return maximumLikelihood(estimation, true, start, "newton", control);
-  }
-}
-
 function durbinWatsonOf(
   specification: SystemSpecification,
   data: PreparedData,
+  system: DemandSystem,
+  size: SystemSize,
   { form }: Estimation,
   solution: Solution,
 ): number[] | undefined {
   if (data.time === undefined) return undefined;
-  const source = sourceOf(data, momentsRequest(specification, data));
-  return durbinWatson(source, data.time, form.coefficients(solution.free));
+  const source = sourceAt(data, momentsRequest(specification, data), system.moments, size, solution.theta);
+  const { dataRows } = source;
+  const time = dataRows ? pickRows(data.time, dataRows) : data.time;
+  return durbinWatson(source, time, form.coefficients(solution.free));
 }
 
 /** Restrictions that hold by the form itself cannot be tested. */
@@ -165,6 +154,8 @@ function testsOf(
     ...(specification.form === "la-aids" && {
       linear: { exact: index === "laspeyres" && !estimation.moments.weighted },
     }),
+    // The volume is given, as Laitinen had it in this very system: theory makes it independent of the errors.
+    ...(specification.form === "rotterdam" && { linear: { exact: !estimation.moments.weighted } }),
   });
   return { tests, ...(untested.length > 0 && { untested }) };
 }

@@ -3,6 +3,7 @@ import type { Moments } from "./moments.ts";
 
 /** What is to be estimated: a model, its moments, and the equations estimated (all but the dropped one). */
 export interface Estimation {
+  /** Where the form's terms move with θ they say where to find those of any θ: `Solution.moments` are those at the solution. */
   readonly moments: Moments;
   readonly form: CoefficientForm;
   readonly equations: readonly number[];

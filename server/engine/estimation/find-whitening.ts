@@ -53,8 +53,9 @@ function guessedMeans(source: MomentSource): Float64Array {
   });
 }
 
-/** Weighted covariance (divisor T) and means of the whitened base columns. */
+/** Weighted covariance (divisor T) and means of the whitened base columns; none between columns of two groups. */
 function covariance(source: MomentSource, whitening: Whitening, control: RunControl) {
+  const { groups } = source;
   const base = source.columns.length;
   const terms: TermPair[] = Array.from({ length: base + 1 }, (_, place) => [0, place]);
   const plan = planTiles(terms);
@@ -66,6 +67,7 @@ function covariance(source: MomentSource, whitening: Whitening, control: RunCont
   const matrix = zeros(base, base);
   for (let i = 0; i < base; i++) {
     for (let j = 0; j < base; j++) {
+      if (groups !== undefined && groups[i] !== groups[j]) continue;
       matrix.values[j * base + i] = moments[(j + 1) * size + i + 1] / moments[0] - means[i] * means[j];
     }
   }

@@ -4,6 +4,7 @@ import { type Columns, dot, pickColumns } from "./columns.ts";
 import { conditionOf } from "./condition.ts";
 import type { Estimation } from "./estimation.ts";
 import { refuseNotConverged, refuseNotIdentified } from "./failures.ts";
+import type { Moments } from "./moments.ts";
 import { type NormalFactor, normalFactor } from "./normal-factor.ts";
 import { asOneColumn, residualFactor, residualJacobian, weightBlocks } from "./residuals.ts";
 import { dampedStep, gaussNewtonStep, likelihoodStep } from "./steps.ts";
@@ -18,6 +19,8 @@ export type Criterion =
   | { readonly kind: "likelihood"; readonly step: "newton" | "update" };
 
 export interface Solution {
+  /** What residuals and derivatives were formed from; at the solution where the form's terms move with θ. */
+  readonly moments: Moments;
   readonly free: number[];
   /** θ, k. */
   readonly theta: number[];
@@ -67,17 +70,24 @@ export function minimise(
   control: RunControl,
   tolerance: number = TOLERANCE,
 ): Solution {
-  let state = evaluate(estimation, criterion, [...start]);
+  let state = evaluate(estimation, criterion, [...start], control);
   let largestStep = Number.POSITIVE_INFINITY;
   let lastSpoken = Number.NEGATIVE_INFINITY;
+  let spoken: Parameters<RunControl["progress"]>[0] = { step: "iterating" };
+  // Passes over the rows within an iteration can be cancelled, and say where the iteration stands.
+  const inside: RunControl = {
+    ...(control.threads && { threads: control.threads }),
+    cancelled: () => control.cancelled(),
+    progress: ({ fraction }) => control.progress({ ...spoken, ...(fraction !== undefined && { fraction }) }),
+  };
   for (let iteration = 1; ; iteration++) {
     if (control.cancelled()) throw new Cancelled("cancelled while iterating");
-    const { jacobian, factor, gradient } = linearise(estimation, state);
+    const { moments, jacobian, factor, gradient, weighted } = linearise(estimation, state, inside);
     // Collinear columns that leave the start undetermined could be told apart by curvature alone.
     if (iteration === 1 && factor.dependent.length > 0 && estimation.moments.dependent.length > 0) {
       refuseNotIdentified(estimation, factor);
     }
-    const step = chooseStep(criterion, factor, jacobian, state.weighted, estimation.moments.rows);
+    const step = chooseStep(criterion, factor, jacobian, weighted, estimation.moments.rows);
     const slope = dot(gradient, step);
     const previous = largestStep;
     largestStep = relativeStep(estimation.form, state.free, step);
@@ -89,19 +99,20 @@ export function minimise(
       if (factor.dependent.length > 0) refuseNotIdentified(estimation, factor);
       const free = state.free.map((value, f) => value + step[f]);
       return {
+        moments,
         free,
         theta: expand(estimation.form.expand, free),
         iterations: iteration,
         gradient: largestGradient,
         largestStep,
         condition: conditionOf(factor.triangle),
-        residuals: residualFactor(estimation.moments, estimation.form, free),
+        residuals: residualsAfter(estimation, moments, state.free, step),
         weight: state.weight,
         jacobian,
         factor,
       };
     }
-    const next = search(estimation, criterion, state, step, slope, factor);
+    const next = search(estimation, criterion, state, step, slope, factor, inside);
     if (next === undefined || iteration >= MOST_ITERATIONS) {
       if (factor.dependent.length > 0) refuseNotIdentified(estimation, factor);
       refuseNotConverged(iteration, largestGradient, largestStep, conditionOf(factor.triangle));
@@ -109,7 +120,7 @@ export function minimise(
     state = next;
     if (performance.now() - lastSpoken > POLL_MS) {
       lastSpoken = performance.now();
-      control.progress({
+      spoken = {
         step: "iterating",
         iteration,
         gradient: largestGradient,
@@ -117,7 +128,8 @@ export function minimise(
         ...(criterion.kind === "likelihood" && {
           logLikelihood: -state.value - (estimation.moments.rows / 2) * estimation.equations.length * LOG_TWO_PI_E,
         }),
-      });
+      };
+      control.progress(spoken);
     }
   }
 }
@@ -125,32 +137,66 @@ export function minimise(
 /** 1 + ln 2π: what a normal equation adds to −2 lnL/T beside ln|Σ̂|. */
 export const LOG_TWO_PI_E = 1 + Math.log(2 * Math.PI);
 
-function evaluate({ moments, form, equations }: Estimation, criterion: Criterion, free: number[]): State {
-  const residuals = residualFactor(moments, form, free);
+function evaluate(estimation: Estimation, criterion: Criterion, free: number[], control: RunControl): State {
+  const { moments, form, equations } = estimation;
+  const residuals = moments.local?.residuals(expand(form.expand, free), control) ?? residualFactor(moments, form, free);
   const { weight, logDeterminant } =
     criterion.kind === "weighted"
       ? { weight: criterion.weight, logDeterminant: 0 }
       : residualCovariance(residuals, moments.rows, equations, moments.responseLabels);
-  const chosen = asOneColumn(pickColumns(residuals, equations));
-  const weighted: Columns = {
-    rows: residuals.rows,
-    columns: equations.length,
-    values: weightBlocks(chosen, residuals.rows, weight).values,
-  };
+  const weighted = weightedResiduals(residuals, equations, weight);
   const value =
     criterion.kind === "weighted" ? 0.5 * dot(weighted.values, weighted.values) : (moments.rows / 2) * logDeterminant;
   return { free, residuals, weight, weighted, value };
 }
 
-function linearise({ moments, form, equations }: Estimation, state: State) {
+/** Ê of the equations estimated. */
+function weightedResiduals(residuals: Columns, equations: readonly number[], weight: Columns): Columns {
+  const chosen = asOneColumn(pickColumns(residuals, equations));
+  const { values } = weightBlocks(chosen, residuals.rows, weight);
+  return { rows: residuals.rows, columns: equations.length, values };
+}
+
+/** Derivatives and residuals over the same rows; where terms move with θ their moments are accumulated there first. */
+function linearise(estimation: Estimation, state: State, control: RunControl) {
+  const { form, equations } = estimation;
+  const { local } = estimation.moments;
+  const moments = local?.at(expand(form.expand, state.free), control) ?? estimation.moments;
+  const weighted =
+    local === undefined
+      ? state.weighted
+      : weightedResiduals(residualFactor(moments, form, state.free), equations, state.weight);
   const unweighted = residualJacobian(moments, form, state.free, equations);
   const jacobian = weightBlocks(unweighted, moments.terms.rows, state.weight);
-  const residuals = asOneColumn(state.weighted);
+  const residuals = asOneColumn(weighted);
   const factor = normalFactor(jacobian, residuals);
   const gradient = Float64Array.from({ length: form.free }, (_, f) =>
     dot(jacobian.values.subarray(f * jacobian.rows, (f + 1) * jacobian.rows), residuals.values),
   );
-  return { jacobian, factor, gradient };
+  return { moments, jacobian, factor, gradient, weighted };
+}
+
+/** E after the last step. Where terms move with θ, to the first order of a step that is as small as rounding. */
+function residualsAfter(
+  { moments: { local }, form }: Estimation,
+  moments: Moments,
+  free: number[],
+  step: Float64Array,
+): Columns {
+  if (local === undefined) {
+    return residualFactor(
+      moments,
+      form,
+      free.map((value, f) => value + step[f]),
+    );
+  }
+  const residuals = residualFactor(moments, form, free);
+  const every = Array.from({ length: residuals.columns }, (_, equation) => equation);
+  const slopes = residualJacobian(moments, form, free, every);
+  step.forEach((size, f) => {
+    for (let r = 0; r < slopes.rows; r++) residuals.values[r] += size * slopes.values[f * slopes.rows + r];
+  });
+  return residuals;
 }
 
 function chooseStep(
@@ -176,11 +222,12 @@ function search(
   step: Float64Array,
   slope: number,
   factor: NormalFactor,
+  control: RunControl,
 ): State | undefined {
   const rounding = 1e-13 * Math.max(1, Math.abs(state.value));
   const attempt = (by: Float64Array, size: number): State | undefined => {
     const free = state.free.map((value, f) => value + size * by[f]);
-    const next = evaluate(estimation, criterion, free);
+    const next = evaluate(estimation, criterion, free, control);
     return next.value <= state.value + rounding ? next : undefined;
   };
   if (slope < 0) {

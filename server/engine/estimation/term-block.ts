@@ -22,6 +22,7 @@ export function termBlock(source: MomentSource, whitening: Whitening, terms: rea
   const roots = new Float64Array(BLOCK_ROWS).fill(1);
   const block = new Float64Array(terms.length * BLOCK_ROWS);
   const columns = terms.map((_, term) => block.subarray(term * BLOCK_ROWS, (term + 1) * BLOCK_ROWS));
+  const shorter = shorterTerms(terms);
 
   function fill(from: number, rows: number): void {
     for (let input = 0; input < inputs.length; input++) {
@@ -33,13 +34,26 @@ export function termBlock(source: MomentSource, whitening: Whitening, terms: rea
       for (let input = 0; input < inputs.length; input++) multiplyInto(scaled[input], whitened[input], roots, rows);
     }
     for (let term = 0; term < terms.length; term++) {
-      const [left, right] = terms[term];
-      if (right === 0) copyInto(columns[term], roots, rows);
+      const [left, right, ...more] = terms[term];
+      if (more.length > 0) {
+        multiplyInto(columns[term], columns[shorter[term]], whitened[more[more.length - 1] - 1], rows);
+      } else if (right === 0) copyInto(columns[term], roots, rows);
       else if (left === 0) copyInto(columns[term], scaled[right - 1], rows);
       else multiplyInto(columns[term], whitened[left - 1], scaled[right - 1], rows);
     }
   }
   return { block, fill };
+}
+
+/** For each product of more than two columns, the place of the one without its last: formed before it. */
+function shorterTerms(terms: readonly TermPair[]): number[] {
+  const places = new Map(terms.map((term, at) => [term.join(), at]));
+  return terms.map((term, at) => {
+    if (term.length === 2) return -1;
+    const place = places.get(term.slice(0, -1).join());
+    if (place === undefined || place > at) throw new RangeError(`the product ${term} stands before its factors`);
+    return place;
+  });
 }
 
 function shiftInto(target: Float64Array, column: Float64Array, from: number, rows: number, shift: number): void {

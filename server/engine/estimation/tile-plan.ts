@@ -1,4 +1,4 @@
-import { ordered, type TermPair } from "./moment-source.ts";
+import { ordered, type TermPair, termOf } from "./moment-source.ts";
 
 /** Tiles are squares of this many block columns. */
 export const TILE = 4;
@@ -77,11 +77,15 @@ interface Group {
 }
 
 function monomialOf(left: TermPair, right: TermPair): number[] {
-  return [...left, ...right].sort((a, b) => a - b);
+  const factors = [...left, ...right].filter((place) => place !== 0).sort((a, b) => a - b);
+  while (factors.length < 4) factors.unshift(0);
+  return factors;
 }
 
 /** The first split of a monomial into two terms: neighbours first, so that equal rows want equal columns. */
-function splitOf([a, b, c, d]: number[], place: ReadonlyMap<string, number>): [number, number] | undefined {
+function splitOf(monomial: number[], place: ReadonlyMap<string, number>): [number, number] | undefined {
+  if (monomial.length > 4) return splitOfMore(monomial, place);
+  const [a, b, c, d] = monomial;
   for (const [one, two] of [
     [ordered(a, b), ordered(c, d)],
     [ordered(a, c), ordered(b, d)],
@@ -95,13 +99,33 @@ function splitOf([a, b, c, d]: number[], place: ReadonlyMap<string, number>): [n
   return undefined;
 }
 
+/**
+ * The same where there are more than four factors: the first two with none, the last, or any of the others
+ * first, so that (ln p₁ ln p₂)(ln p₃ ln p₄ r) stands in the row of ln p₁ ln p₂.
+ */
+function splitOfMore(monomial: number[], place: ReadonlyMap<string, number>): [number, number] | undefined {
+  const last = 1 << (monomial.length - 1);
+  const liked = [3, 3 | last, 3 | (last >> 1)];
+  const all = Array.from({ length: 2 * last }, (_, subset) => subset);
+  for (const subset of [...liked, ...all]) {
+    const parts: [number[], number[]] = [[], []];
+    monomial.forEach((factor, at) => {
+      parts[(subset >> at) & 1].push(factor);
+    });
+    const row = place.get(termOf(parts[1]).join());
+    const column = place.get(termOf(parts[0]).join());
+    if (row !== undefined && column !== undefined) return [row, column];
+  }
+  return undefined;
+}
+
 /** Rows with the same second base column want (nearly) the same columns: one rectangle each. */
 function groupRows(terms: readonly TermPair[], wanted: ReadonlyMap<number, ReadonlySet<number>>): Group[] {
-  const groups = new Map<number, { rows: number[]; columns: Set<number> }>();
+  const groups = new Map<string, { rows: number[]; columns: Set<number> }>();
   for (const [row, columns] of wanted) {
-    const second = terms[row][1];
-    if (!groups.has(second)) groups.set(second, { rows: [], columns: new Set() });
-    const group = groups.get(second)!;
+    const alike = terms[row].slice(1).join();
+    if (!groups.has(alike)) groups.set(alike, { rows: [], columns: new Set() });
+    const group = groups.get(alike)!;
     group.rows.push(row);
     for (const column of columns) group.columns.add(column);
   }
@@ -159,5 +183,26 @@ export function densePlan(columns: number): TilePlan {
       right.push(...others);
     }
   });
+  return { columns, tiles: left.length / TILE, left: Int32Array.from(left), right: Int32Array.from(right), placeOf };
+}
+
+/** The plan of products with the columns from `first` on only, with all columns before them and each other. */
+export function responsePlan(first: number, columns: number): TilePlan {
+  const left: number[] = [];
+  const right: number[] = [];
+  const placeOf = new Int32Array(columns * columns);
+  const all = Array.from({ length: columns }, (_, column) => column);
+  for (const others of fours(all.slice(first))) {
+    for (const rows of fours(all)) {
+      const base = left.length * TILE;
+      rows.forEach((row, r) => {
+        others.forEach((column, c) => {
+          placeOf[row * columns + column] = base + r * TILE + c;
+        });
+      });
+      left.push(...rows);
+      right.push(...others);
+    }
+  }
   return { columns, tiles: left.length / TILE, left: Int32Array.from(left), right: Int32Array.from(right), placeOf };
 }

@@ -1,0 +1,104 @@
+import type { LocalColumns, LocalFiller, MomentForm, SystemSize } from "../../../shared/systems/demand-system.ts";
+import type { PreparedData } from "../columns/prepared-data.ts";
+import { Cancelled, QUIET, type RunControl } from "../run.ts";
+import { localResiduals } from "./local-residuals.ts";
+import type { MomentSource } from "./moment-source.ts";
+import { type LocalMoments, type Moments, type Reduction, reduceRows } from "./moments.ts";
+import { localRequest, type MomentsRequest, sourceOf } from "./request.ts";
+
+/** A form whose terms move with θ. */
+type LocalForm = MomentForm & { readonly local: LocalColumns };
+
+function hasLocalColumns(form: MomentForm): form is LocalForm {
+  return form.local !== undefined;
+}
+
+/**
+ * The moments of a form estimated first with, where the form itself has columns that move with θ, the way to its
+ * own at any θ; `request` is that of the moments given.
+ */
+export function locatable(
+  nearby: Moments,
+  data: PreparedData,
+  request: MomentsRequest,
+  form: MomentForm,
+  size: SystemSize,
+  reduction?: Reduction,
+): Moments {
+  if (!hasLocalColumns(form) || nearby.local !== undefined) return nearby;
+  const rows = localRows(data, request, form, size);
+  let last: { theta: readonly number[]; moments: Moments } | undefined;
+  const local: LocalMoments = {
+    nearby,
+    at(theta, control) {
+      if (last === undefined || !sameNumbers(last.theta, theta)) {
+        last = { theta: [...theta], moments: reduceRows(rows.at(theta, control), rows.key, control, reduction) };
+      }
+      return last.moments;
+    },
+    residuals(theta, control) {
+      return localResiduals(rows.at(theta, control), form.coefficients(theta, size), control);
+    },
+  };
+  return { ...nearby, key: rows.key, local };
+}
+
+/** The rows that a request speaks of, where the form has columns that move with θ with those at `theta`. */
+export function sourceAt(
+  data: PreparedData,
+  request: MomentsRequest,
+  form: MomentForm,
+  size: SystemSize,
+  theta: readonly number[],
+  control: RunControl = QUIET,
+): MomentSource {
+  return hasLocalColumns(form) ? localRows(data, request, form, size).at(theta, control) : sourceOf(data, request);
+}
+
+/** The columns are filled in place: a source holds until the next θ. */
+function localRows(data: PreparedData, nearby: MomentsRequest, form: LocalForm, size: SystemSize) {
+  const request = localRequest(form, form.local, size, nearby);
+  const columns = form.local.labels.map(() => new Float64Array(data.rows));
+  let last: readonly number[] | undefined;
+  return {
+    key: request.key,
+    at(theta: readonly number[], control: RunControl): MomentSource {
+      if (last === undefined || !sameNumbers(last, theta)) {
+        last = undefined;
+        fillColumns(data, nearby, form.local.filler(theta, size), columns, control);
+        last = [...theta];
+      }
+      return sourceOf(data, request, columns);
+    },
+  };
+}
+
+/** Rows between two looks at `cancelled()`. */
+const CHUNK_ROWS = 16_384;
+
+function fillColumns(
+  data: PreparedData,
+  { demographics }: MomentsRequest,
+  filler: LocalFiller,
+  columns: readonly Float64Array[],
+  control: RunControl,
+): void {
+  const shifts = demographics.map((name) => data.numeric.get(name)!);
+  const logPrices = new Float64Array(data.goods.length);
+  const shares = new Float64Array(data.goods.length);
+  const z = new Float64Array(shifts.length);
+  for (let t = 0; t < data.rows; t++) {
+    if (t % CHUNK_ROWS === 0 && control.cancelled()) throw new Cancelled("cancelled while forming columns");
+    for (let i = 0; i < logPrices.length; i++) {
+      logPrices[i] = data.logPrices[i][t];
+      shares[i] = data.shares[i][t];
+    }
+    for (let k = 0; k < z.length; k++) z[k] = shifts[k][t];
+    filler.at(logPrices, data.logTotal[t], z, shares);
+    for (let c = 0; c < columns.length; c++) columns[c][t] = filler.values[c];
+  }
+}
+
+function sameNumbers(left: readonly number[], right: readonly number[]): boolean {
+  return left.length === right.length && left.every((value, at) => value === right[at]);
+}
