@@ -4,7 +4,7 @@ import { join, resolve } from "node:path";
 import type { Logger } from "pino";
 import type { Installation } from "../shared/schemas/resources.ts";
 import { createApp } from "./app.ts";
-import type { Config } from "./config.ts";
+import { type Config, threadsOfOneComputation } from "./config.ts";
 import { type OpenDatabase, openDatabase } from "./db/client.ts";
 import { closeDemoAccounts, demoSignIns, isDemo, openDemoAccounts } from "./demo/accounts.ts";
 import { demoStudy } from "./demo/cells.ts";
@@ -68,7 +68,11 @@ export async function assemble(config: Config, say: (line: string) => void): Pro
     secure: config.secure,
     secret: config.secret ?? keptSecret(dataFolder),
   });
-  const pool = createPool({ databasePath: open.path, threads: config.threads });
+  const pool = createPool({
+    databasePath: open.path,
+    threads: config.threads,
+    threadsEach: threadsOfOneComputation(config),
+  });
   const { services, sync, stopCells } = live({ open, auth, pool, logger, origins: config.trustedOrigins });
   services.uploads.removeUnfinished();
 

@@ -1,3 +1,4 @@
+import { availableParallelism } from "node:os";
 import { z } from "zod";
 
 const flag = z
@@ -54,6 +55,13 @@ export interface Limits {
   readonly signInsPerMinute: number;
   readonly uploadsPerHour: number;
   readonly refereeReadsPerMinute: number;
+}
+
+const MOST_THREADS_EACH = 8;
+
+/** Among how many threads one computation is divided: as many as the setting says, or there are processors. */
+export function threadsOfOneComputation({ threads }: Pick<Config, "threads">): number {
+  return Math.min(threads ?? availableParallelism(), MOST_THREADS_EACH);
 }
 
 /** Reads the environment, or throws one sentence that names every variable that will not do. */

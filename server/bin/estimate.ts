@@ -1,7 +1,9 @@
 import { readFile } from "node:fs/promises";
 import { resolve } from "node:path";
 import { parseArgs } from "node:util";
+import { readConfig, threadsOfOneComputation } from "../config.ts";
 import type { RunControl } from "../engine/run.ts";
+import { startThreads } from "../engine/threads/start-threads.ts";
 import { type Complaint, estimateStudy } from "./estimate-study.ts";
 
 /**
@@ -80,6 +82,7 @@ function control(): RunControl {
       process.stderr.write(`\r\u001b[K${step}${at}${likelihood}`);
     },
     cancelled: () => false,
+    threads: startThreads(threadsOfOneComputation(readConfig(process.env))),
   };
 }
 

@@ -56,4 +56,6 @@ export type Outcome<T> =
 /** What a worker is told once, when it starts. */
 export interface WorkerSettings {
   readonly databasePath: string;
+  /** Among how many threads, its own included, a worker may divide one computation. */
+  readonly threadsEach: number;
 }

@@ -1,6 +1,7 @@
 import { availableParallelism } from "node:os";
 import { MessageChannel } from "node:worker_threads";
 import { Piscina } from "piscina";
+import type { CellSpecification } from "../../shared/schemas/cell.ts";
 import { Cancelled } from "../engine/run.ts";
 import type {
   CellJob,
@@ -27,19 +28,38 @@ export interface JobPool {
   close(): Promise<void>;
 }
 
-interface PoolSettings extends WorkerSettings {
-  /** For cells; one more reads uploads. Default: the processors there are, less the one that answers requests. */
+interface PoolSettings extends Pick<WorkerSettings, "databasePath">, Partial<Pick<WorkerSettings, "threadsEach">> {
+  /**
+   * For cells; one more reads uploads, and one more computes what is soon done while estimations take all of these.
+   * Default: the processors there are, less the one that answers requests.
+   */
   readonly threads?: number;
 }
+
+/** What takes minutes on large data. Everything else is soon done, and does not wait for it. */
+const LONG: ReadonlySet<CellSpecification["kind"]> = new Set(["system"]);
 
 /** A task asks its flag many times a second; one that has not heard after so long is ended with its thread. */
 const GRACE_MILLISECONDS = 5_000;
 
-export function createPool({ databasePath, threads = Math.max(1, availableParallelism() - 1) }: PoolSettings): JobPool {
-  const cells = threadsFor(databasePath, threads, 1);
-  // Someone waits for an answer: a file is not read behind other people's estimations.
-  const uploads = threadsFor(databasePath, 1, 0);
+export function createPool({
+  databasePath,
+  threads = Math.max(1, availableParallelism() - 1),
+  threadsEach = 1,
+}: PoolSettings): JobPool {
+  const settings = { databasePath, threadsEach };
+  const cells = threadsFor(settings, threads, 1);
+  // Someone waits for an answer: neither a file nor a cell that is soon done stands behind other people's estimations.
+  const uploads = threadsFor(settings, 1, 0);
+  const aside = threadsFor(settings, 1, 0);
   const running = new Set<AbortController>();
+  let inCells = 0;
+
+  /** A thread that has just computed the rows beneath a cell still has them, so `aside` is for when none is free. */
+  function poolFor(task: Task): Piscina {
+    if (task.kind === "parse upload") return uploads;
+    return inCells >= threads && !LONG.has(task.job.specification.kind) ? aside : cells;
+  }
 
   async function send<T>(task: Task, onProgress: (now: ProgressNow) => void, signal: AbortSignal): Promise<T> {
     if (signal.aborted) throw new Cancelled("cancelled");
@@ -56,9 +76,10 @@ export function createPool({ databasePath, threads = Math.max(1, availableParall
     signal.addEventListener("abort", stop, { once: true });
     port1.on("message", onProgress);
     running.add(stopper);
+    const pool = poolFor(task);
+    if (pool === cells) inCells++;
     try {
       const sent: Sent = { task, flag, port: port2 };
-      const pool = task.kind === "cell" ? cells : uploads;
       const outcome: Outcome<T> = await pool.run(sent, { transferList: [port2], signal: ender.signal });
       return resultOf(outcome);
     } catch (error) {
@@ -68,6 +89,7 @@ export function createPool({ databasePath, threads = Math.max(1, availableParall
       clearTimeout(grace);
       signal.removeEventListener("abort", stop);
       running.delete(stopper);
+      if (pool === cells) inCells--;
       port1.close();
     }
   }
@@ -78,18 +100,18 @@ export function createPool({ databasePath, threads = Math.max(1, availableParall
       send<ParsedUploadResult>({ kind: "parse upload", uploadId }, onProgress, signal),
     async close() {
       for (const stopper of running) stopper.abort();
-      await Promise.all([cells.destroy(), uploads.destroy()]);
+      await Promise.all([cells, uploads, aside].map((pool) => pool.destroy()));
     },
   };
 }
 
-function threadsFor(databasePath: string, most: number, fewest: number): Piscina {
+function threadsFor(settings: WorkerSettings, most: number, fewest: number): Piscina {
   const isSource = import.meta.url.endsWith(".ts");
   return new Piscina({
     filename: new URL(isSource ? "./worker.ts" : "./worker.js", import.meta.url).href,
     // From the TypeScript sources, a worker needs the same loader as the program.
     ...(isSource && { execArgv: ["--import", "tsx"] }),
-    workerData: { databasePath } satisfies WorkerSettings,
+    workerData: settings,
     minThreads: fewest,
     maxThreads: most,
     idleTimeout: 5 * 60_000,

@@ -1,5 +1,6 @@
 import { workerData } from "node:worker_threads";
 import { connectDatabase } from "../db/client.ts";
+import { startThreads } from "../engine/threads/start-threads.ts";
 import { workerControl } from "./control.ts";
 import type { CellResult, Outcome, ParsedUploadResult, Sent, WorkerSettings } from "./job.ts";
 import { outcomeOf } from "./outcome.ts";
@@ -7,11 +8,13 @@ import { runCellJob, WorkerMemory } from "./run-cell.ts";
 import { parseStoredUpload } from "./upload-tables.ts";
 
 /** A worker thread: its own connection to the database, its own memory, one task at a time. */
-const { db } = connectDatabase(settings().databasePath);
+const { databasePath, threadsEach } = settings();
+const { db } = connectDatabase(databasePath);
+const threads = startThreads(threadsEach);
 const memory = new WorkerMemory();
 
 export default async function run({ task, flag, port }: Sent): Promise<Outcome<CellResult | ParsedUploadResult>> {
-  const control = workerControl(port, flag);
+  const control = workerControl(port, flag, threads);
   try {
     // Cancelled while it stood in the queue.
     if (control.cancelled()) return { ended: "cancelled" };

@@ -14,6 +14,7 @@ import { pickRows } from "./pick-rows.ts";
 import type { PreparedData, UploadTable } from "./prepared-data.ts";
 import { qualityFlags } from "./quality-flags.ts";
 import { type Roles, resolveRoles } from "./resolve-roles.ts";
+import { mapColumn } from "./shared-memory.ts";
 import { type Weights, weightedDeviation, weightedMean } from "./weighted.ts";
 
 /**
@@ -90,7 +91,7 @@ function formColumns(
     logPrices,
     logTotal,
     ...(weights && { weights }),
-    ...(roles.cluster && { clusters: clustersOf(roles.cluster, indices) }),
+    ...(roles.cluster && { clusters: { column: roles.cluster.name, ...clustersOf(roles.cluster, indices) } }),
     ...(roles.time && { time: pick(roles.time.values) }),
     ...numericColumns(derived.columns, roles, indices),
     ...labelledColumns(derived.columns, roles.cluster?.name, indices),
@@ -110,7 +111,7 @@ function formColumns(
 
 /** ln(v / scale); numbers at the edge of what doubles hold are refused rather than turned into infinities. */
 function logOf(values: Float64Array, scale: number, what: string, indices: Int32Array): Float64Array {
-  const logs = values.map((value) => Math.log(value / scale));
+  const logs = mapColumn(values, (value) => Math.log(value / scale));
   const spoiled = logs.findIndex((value) => !Number.isFinite(value));
   if (spoiled < 0) return logs;
   const row = indices[spoiled] + 1;
@@ -120,7 +121,7 @@ function logOf(values: Float64Array, scale: number, what: string, indices: Int32
 
 function scaledToCount(weights: Float64Array): Float64Array {
   const scale = weights.length / weights.reduce((sum, weight) => sum + weight, 0);
-  return weights.map((weight) => weight * scale);
+  return mapColumn(weights, (weight) => weight * scale);
 }
 
 /** Shares of the goods' own sum, which exactly add to one, and by how much those of the total would have missed it. */
@@ -129,7 +130,7 @@ function formShares(spent: readonly Float64Array[], total: Float64Array) {
   const sums = new Float64Array(total.length);
   for (const values of spent) for (let row = 0; row < sums.length; row++) sums[row] += values[row];
   for (let row = 0; row < sums.length; row++) gaps[row] = Math.abs(sums[row] / total[row] - 1);
-  return { shares: spent.map((values) => values.map((value, row) => value / sums[row])), gaps };
+  return { shares: spent.map((values) => mapColumn(values, (value, row) => value / sums[row])), gaps };
 }
 
 function noRowLeft({ uploaded, leftOut }: RowAccounting, { weight, keep }: DataSpecification): Refusal {

@@ -1,4 +1,6 @@
+import { onSharedMemory } from "../columns/shared-memory.ts";
 import { Cancelled, type RunControl } from "../run.ts";
+import { mapInOrder, task } from "../threads/map-in-order.ts";
 import { type Columns, zeros } from "./columns.ts";
 import type { MomentSource, TermPair } from "./moment-source.ts";
 import { multiplyAccumulate } from "./multiply-accumulate.ts";
@@ -6,8 +8,12 @@ import { BLOCK_ROWS, termBlock } from "./term-block.ts";
 import type { TilePlan } from "./tile-plan.ts";
 import type { Whitening } from "./whitening.ts";
 
-/** Rows between two looks at `cancelled()`: a few tens of milliseconds. */
+/** Rows summed by themselves: a few tens of milliseconds. What is summed with what depends on nothing else. */
 const CHUNK_ROWS = 64 * BLOCK_ROWS;
+/** Multiplications below which dividing the rows among threads would not pay: some fifty milliseconds. */
+const WORTH_DIVIDING = 1e8;
+/** Numbers that sums of chunks may take up at a time, 64 MB: they are added up in the order of the rows. */
+const MOST_NUMBERS = 8 * 2 ** 20;
 
 export interface RowRange {
   readonly from: number;
@@ -16,8 +22,9 @@ export interface RowRange {
 
 /**
  * The plan's weighted sums of products over a range of rows. Sums of disjoint ranges add up to those
- * of their union. Each chunk is summed by itself and added with compensation (Neumaier 1974), so the
- * error does not grow with the number of rows and hardly depends on how they are divided.
+ * of their union. Each chunk is summed by itself, on whichever thread, and the chunks are added in the order of
+ * the rows with compensation (Neumaier 1974, Zeitschrift für Angewandte Mathematik und Mechanik 54), so the error
+ * does not grow with the number of rows, and the sums are the same to the last bit on any number of threads.
  */
 export function accumulateSums(
   source: MomentSource,
@@ -28,24 +35,68 @@ export function accumulateSums(
   control: RunControl,
   fraction: (rowsDone: number) => number,
 ): Float64Array {
-  const { block, fill } = termBlock(source, whitening, terms);
-  const totals = new Float64Array(plan.tiles * 16);
-  const lost = new Float64Array(totals.length);
-  const sums = new Float64Array(totals.length);
-  for (let chunk = range.from; chunk < range.to; chunk += CHUNK_ROWS) {
-    if (control.cancelled()) throw new Cancelled("cancelled while accumulating moments");
-    const end = Math.min(chunk + CHUNK_ROWS, range.to);
-    sums.fill(0);
-    for (let from = chunk; from < end; from += BLOCK_ROWS) {
-      const rows = Math.min(BLOCK_ROWS, end - from);
-      fill(from, rows);
-      multiplyAccumulate(block, BLOCK_ROWS, rows, plan, sums);
-    }
-    addCompensated(totals, lost, sums);
-    control.progress({ step: "accumulating moments", fraction: fraction(end - range.from) });
+  const size = plan.tiles * 16;
+  const divided = (control.threads?.count ?? 1) > 1 && (range.to - range.from) * size >= WORTH_DIVIDING;
+  const { threads: _, ...alone } = control;
+  const totals = new Float64Array(size);
+  const lost = new Float64Array(size);
+  const together = divided ? Math.max(2 * control.threads!.count, Math.floor(MOST_NUMBERS / size)) : 1;
+  const chunks = chunksOf(range);
+  const rows: Rows = { source: divided ? onSharedColumns(source) : source, whitening, terms, plan };
+  for (let done = 0; done < chunks.length; done += together) {
+    const wave = chunks.slice(done, done + together);
+    const report = (finished: number) => {
+      const rowsDone = Math.min((done + finished) * CHUNK_ROWS, range.to - range.from);
+      control.progress({ step: "accumulating moments", fraction: fraction(rowsDone) });
+    };
+    const sums = mapInOrder(divided ? control : alone, sumChunk, rows, wave, report);
+    for (const ofChunk of sums) addCompensated(totals, lost, ofChunk);
   }
   for (let k = 0; k < totals.length; k++) totals[k] += lost[k];
   return totals;
+}
+
+function chunksOf({ from, to }: RowRange): RowRange[] {
+  const chunks: RowRange[] = [];
+  for (let at = from; at < to; at += CHUNK_ROWS) chunks.push({ from: at, to: Math.min(at + CHUNK_ROWS, to) });
+  return chunks;
+}
+
+interface Rows {
+  readonly source: MomentSource;
+  readonly whitening: Whitening;
+  readonly terms: readonly TermPair[];
+  readonly plan: TilePlan;
+}
+
+/** The sums of one chunk of rows. */
+export const sumChunk = task(
+  import.meta.url,
+  "sumChunk",
+  ({ source, whitening, terms, plan }: Rows, { from: first, to }: RowRange, control) => {
+    const { block, fill } = termBlock(source, whitening, terms);
+    const sums = new Float64Array(plan.tiles * 16);
+    for (let from = first; from < to; from += BLOCK_ROWS) {
+      if (control.cancelled()) throw new Cancelled("cancelled while accumulating moments");
+      const rows = Math.min(BLOCK_ROWS, to - from);
+      fill(from, rows);
+      multiplyAccumulate(block, BLOCK_ROWS, rows, plan, sums);
+    }
+    return sums;
+  },
+);
+
+/** What the sums need of a source: its columns, where other threads see them too. */
+function onSharedColumns({ rows, columns, responses, weights }: MomentSource): MomentSource {
+  return {
+    rows,
+    columns: columns.map(onSharedMemory),
+    columnLabels: [],
+    terms: [],
+    responses: responses.map(onSharedMemory),
+    responseLabels: [],
+    ...(weights && { weights: onSharedMemory(weights) }),
+  };
 }
 
 function addCompensated(totals: Float64Array, lost: Float64Array, sums: Float64Array): void {

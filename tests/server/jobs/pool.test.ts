@@ -9,6 +9,7 @@ import { Cancelled } from "../../../server/engine/run.ts";
 import type { CellJob, ProgressNow } from "../../../server/jobs/job.ts";
 import { createPool, type JobPool } from "../../../server/jobs/pool.ts";
 import { loadTable } from "../../../server/jobs/upload-tables.ts";
+import { seededRandom } from "../../../shared/numerics/random.ts";
 import type { SpecificationOf } from "../../../shared/schemas/cell.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
 import { temporaryFolder } from "../../support/temporary.ts";
@@ -78,8 +79,19 @@ const job = (fingerprint: string, specification: CellJob["specification"]): Cell
 async function parsed(id: string) {
   const result = await pool.parseUpload(id, () => {}, signal);
   const { rows, sha256, separator, decimalComma } = result;
-  open.db.update(uploads).set({ rows, sha256, separator, decimalComma, state: "ready" }).run();
+  open.sqlite
+    .prepare("UPDATE uploads SET rows = ?, sha256 = ?, separator = ?, decimal_comma = ?, state = 'ready' WHERE id = ?")
+    .run(rows, sha256, separator, decimalComma ? 1 : 0, id);
   return result;
+}
+
+/** Prices and quantities that know nothing of one another. */
+function wideTable(goods: number, rows: number): string {
+  const random = seededRandom(4);
+  const places = Array.from({ length: goods }, (_, i) => i);
+  const header = [...places.map((i) => `p${i}`), ...places.map((i) => `q${i}`)].join(",");
+  const line = () => Array.from({ length: 2 * goods }, () => Math.exp(0.2 * random.normal()).toFixed(4)).join(",");
+  return `${[header, ...Array.from({ length: rows }, line)].join("\n")}\n`;
 }
 
 describe("the worker threads", () => {
@@ -159,6 +171,32 @@ describe("the worker threads", () => {
     expect(isRead).toBe(false);
     stopper.abort();
     await reading;
+    await single.close();
+  });
+
+  it("compute what is soon done while an estimation takes the only thread for cells", async () => {
+    const goods = 16;
+    addUpload("wide", Buffer.from(wideTable(goods, 600)));
+    await parsed("wide");
+    const mapped = Array.from({ length: goods }, (_, i) => `  g${i}: {price: p${i}, quantity: q${i}}`).join("\n");
+    const wide = specification("data", `upload: wide.csv\ngoods:\n${mapped}\n`);
+    const long = { ...job("wide", system), data: { fingerprint: "w", specification: wide, uploadId: "wide" } };
+    const single = createPool({ databasePath: open.path, threads: 1 });
+    const stopper = new AbortController();
+    let isFound = false;
+    let estimating: Promise<unknown> = Promise.resolve();
+    await new Promise<void>((begun) => {
+      estimating = single
+        .runCell(long, ({ step }) => step === "iterating" && begun(), stopper.signal)
+        .catch((error: unknown) => error)
+        .finally(() => {
+          isFound = true;
+        });
+    });
+    await single.runCell(job("d", data), () => {}, signal);
+    expect(isFound).toBe(false);
+    stopper.abort();
+    await estimating;
     await single.close();
   });
 
