@@ -41,7 +41,7 @@ export function sealedContentOf(about: About, { matrix, system, data }: SealedCe
       data: data.cell.name,
     },
     slutsky: matrixOf(matrix.finding),
-    system: system.finding,
+    system: withoutRows(system.finding),
     accounting: accountingOf(data.finding),
     data: {
       meanTotal: data.finding.meanTotal,
@@ -49,6 +49,14 @@ export function sealedContentOf(about: About, { matrix, system, data }: SealedCe
       fingerprint: data.finding.dataFingerprint,
     },
   };
+}
+
+/** The rows of the linear expenditure system without supernumerary expenditure are counted, not listed. */
+function withoutRows(finding: SystemFinding): SystemFinding {
+  const { expenditure } = finding;
+  if (expenditure === undefined) return finding;
+  const withoutSupernumerary = { ...expenditure.withoutSupernumerary, firstRows: [] };
+  return { ...finding, expenditure: { ...expenditure, withoutSupernumerary } };
 }
 
 /** Files are often called after whoever made them. */

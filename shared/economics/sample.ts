@@ -12,6 +12,8 @@ export interface RowChecker {
   readonly shares: Float64Array;
   /** Evaluates the system at a row's log prices, log total and demographics, in units of estimation. */
   evaluate(logPrices: ArrayLike<number>, logTotal: number, demographics: ArrayLike<number>): void;
+  /** In a system in differences: stands at a row's own observed shares. */
+  evaluateAtShares?(shares: ArrayLike<number>): void;
   lowestShare(): number;
   highestShare(): number;
   /** Predicted shares within [0, 1]. */
@@ -31,7 +33,7 @@ export interface RowChecker {
 export function createRowChecker(fitted: Omit<FittedCoefficients, "covariance">): RowChecker {
   const { system, size } = systemOf(fitted);
   const n = size.goods;
-  const { shares, total, prices, at } = system.evaluator(fitted.theta, size);
+  const { shares, total, prices, at, atShares } = system.evaluator(fitted.theta, size);
   const matrix = new Float64Array(n * n);
   const projected = new Float64Array((n - 1) * (n - 1));
   const scratch = new Float64Array(n);
@@ -59,6 +61,7 @@ export function createRowChecker(fitted: Omit<FittedCoefficients, "covariance">)
     statesNegativity: stated,
     shares,
     evaluate: at,
+    ...(atShares && { evaluateAtShares: atShares }),
     lowestShare,
     highestShare,
     monotonicityHolds: () => lowestShare() >= 0 && highestShare() <= 1,

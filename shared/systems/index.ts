@@ -1,11 +1,14 @@
 import { aids } from "./aids.ts";
-import type { DemandSystem, SystemSize } from "./demand-system.ts";
+import type { DemandSystem, EasiSize, SystemSize } from "./demand-system.ts";
+import { easi } from "./easi.ts";
 import { laAids } from "./la-aids.ts";
 import { les } from "./les.ts";
+import { quaids } from "./quaids.ts";
+import { rotterdam } from "./rotterdam.ts";
 import type { PriceIndexName, RestrictionName, SystemName } from "./names.ts";
 
 /** Every demand system by its name; a record over the names, so none can be forgotten. */
-export const SYSTEMS: Readonly<Record<SystemName, DemandSystem>> = { "la-aids": laAids, aids, les };
+export const SYSTEMS: Readonly<Record<SystemName, DemandSystem>> = { "la-aids": laAids, aids, quaids, les, easi, rotterdam };
 
 /** What a fitted system says of itself: the part of a finding that evaluation needs. */
 export interface FittedCoefficients {
@@ -13,6 +16,10 @@ export interface FittedCoefficients {
   readonly index?: PriceIndexName;
   /** Required where there is an index: weighted sample means, prices in units of estimation. */
   readonly indexMeans?: { readonly shares: readonly number[]; readonly prices: readonly number[] };
+  /** Required of easi. */
+  readonly easi?: EasiSize;
+  /** Required of systems in differences: weighted means of the observed shares, n. */
+  readonly meanShares?: readonly number[];
   readonly goods: readonly string[];
   readonly demographics: readonly string[];
   readonly alpha0: number;
@@ -30,6 +37,8 @@ export function systemOf(fitted: Omit<FittedCoefficients, "covariance">): { syst
     goods: fitted.goods.length,
     demographics: fitted.demographics.length,
     alpha0: fitted.alpha0,
+    ...(fitted.meanShares && { meanShares: fitted.meanShares }),
+    ...(fitted.easi && { easi: fitted.easi }),
     ...(fitted.index !== undefined &&
       fitted.indexMeans !== undefined && {
         index: {

@@ -14,8 +14,8 @@ export interface IndexWeights {
 }
 
 /**
- * Stone (1954); the log-linear Laspeyres, Paasche ("corrected Stone") and Törnqvist indices as Moschini
- * (1995, American Journal of Agricultural Economics 77, 63–68) writes them, which unlike Stone's do not
+ * Stone (1954), and with the shares of the period before, Eales & Unnevehr (1988); the log-linear Laspeyres,
+ * Paasche ("corrected Stone") and Törnqvist indices as Moschini (1995, American Journal of Agricultural Economics 77, 63–68) writes them, which unlike Stone's do not
  * depend on the units of prices.
  */
 export const INDEX_WEIGHTS: Readonly<Record<PriceIndexName, IndexWeights>> = {
@@ -23,6 +23,8 @@ export const INDEX_WEIGHTS: Readonly<Record<PriceIndexName, IndexWeights>> = {
   stone: { own: 1, mean: 0, relative: false },
   laspeyres: { own: 0, mean: 1, relative: true },
   paasche: { own: 1, mean: 0, relative: true },
+  /** Where no period before is observed, its shares are taken to be the sample's mean. */
+  "lagged stone": { own: 0, mean: 1, relative: false },
 };
 
 /**

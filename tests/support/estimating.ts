@@ -1,4 +1,5 @@
 import type { PreparedData } from "../../server/engine/columns/prepared-data.ts";
+import { withTimeTerms } from "../../server/engine/columns/seasonal-terms.ts";
 import { estimateSystem } from "../../server/engine/estimation/estimate.ts";
 import { type Reduction, reduceRows } from "../../server/engine/estimation/moments.ts";
 import { momentsRequest, sourceOf } from "../../server/engine/estimation/request.ts";
@@ -16,7 +17,7 @@ export function systemOver(data: PreparedData, specification: object): SystemSpe
 
 /** Estimates from data in one call, by the reduction that is asked for. */
 export function estimated(data: PreparedData, specification: object, reduction?: Reduction) {
-  const parsed = systemOver(data, specification);
+  const parsed = withTimeTerms(systemOver(data, specification), data);
   const request = momentsRequest(parsed, data);
   return estimateSystem(parsed, data, reduceRows(sourceOf(data, request), request.key, QUIET, reduction), QUIET);
 }

@@ -42,6 +42,8 @@ export function fittedFrom(
     imposed,
     theta,
     covariance: multiply(carried, transpose(carried)),
+    ...(size.easi && { easi: size.easi }),
+    ...(size.meanShares && { meanShares: size.meanShares }),
     ...(size.index && {
       index: size.index.name,
       indexMeans: { shares: size.index.meanShares, prices: size.index.meanPrices },

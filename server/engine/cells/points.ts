@@ -1,5 +1,6 @@
 import type { Point } from "../../../shared/systems/demand-system.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
+import { demographicColumn } from "../columns/seasonal-terms.ts";
 import { weightedMean } from "../columns/weighted.ts";
 
 /** p = 1 and x = 1 in units of estimation, demographics at their weighted means. */
@@ -27,7 +28,7 @@ export function pointOfRow(data: PreparedData, demographics: readonly string[], 
 
 export function demographicColumns(data: PreparedData, names: readonly string[]): Float64Array[] {
   return names.map((name) => {
-    const column = data.numeric.get(name);
+    const column = demographicColumn(data, name);
     if (!column) throw new RangeError(`the data have no numeric column ${name}`);
     return column;
   });

@@ -7,7 +7,8 @@ import { demographicColumns } from "./points.ts";
 const ROWS_BETWEEN_REPORTS = 2048;
 
 /**
- * Stands the checker at every row used, in turn, at the row's own prices, total and demographics, and
+ * Stands the checker at every row used, in turn, at the row's own prices, total and demographics (in a system
+ * in differences, its own shares), and
  * hands it over with the row's position and weight. Says how far it is and stops when told to.
  */
 export function forEachRow(
@@ -20,6 +21,7 @@ export function forEachRow(
   const demographics = demographicColumns(data, fitted.demographics);
   const logPrices = new Float64Array(data.goods.length);
   const own = new Float64Array(demographics.length);
+  const observed = new Float64Array(data.goods.length);
   for (let t = 0; t < data.rows; t++) {
     if (t % ROWS_BETWEEN_REPORTS === 0) {
       if (control.cancelled()) throw new Cancelled("cancelled while checking rows");
@@ -28,6 +30,10 @@ export function forEachRow(
     for (let j = 0; j < logPrices.length; j++) logPrices[j] = data.logPrices[j][t];
     for (let k = 0; k < own.length; k++) own[k] = demographics[k][t];
     checker.evaluate(logPrices, data.logTotal[t], own);
+    if (checker.evaluateAtShares !== undefined) {
+      for (let j = 0; j < observed.length; j++) observed[j] = data.shares[j][t];
+      checker.evaluateAtShares(observed);
+    }
     visit(checker, t, data.weights ? data.weights[t] : 1);
   }
 }

@@ -4,6 +4,7 @@ import { type SystemFinding, type SystemSpecification, systemFinding } from "../
 import type { Point } from "../../../shared/systems/demand-system.ts";
 import { type FittedCoefficients, systemOf } from "../../../shared/systems/index.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
+import { withTimeTerms } from "../columns/seasonal-terms.ts";
 import {
   accumulateMoments,
   estimateSystem,
@@ -12,6 +13,8 @@ import {
   momentsRequest,
 } from "../estimation/index.ts";
 import { QUIET, type RunControl } from "../run.ts";
+import { curvaturePoint } from "./curvature-point.ts";
+import { expenditureReport } from "./expenditure-report.ts";
 import { basePoint, meanPoint } from "./points.ts";
 import { refusingRanges } from "./refusing.ts";
 import { checkSample } from "./sample-checks.ts";
@@ -22,13 +25,10 @@ import { weightedQuantiles } from "./weighted.ts";
  * the mean) and over the sample.
  * Errors: `Refusal` (fewer rows than coefficients, singular, not converged …), `Cancelled`.
  */
-export function runSystem(
-  specification: SystemSpecification,
-  data: PreparedData,
-  control: RunControl = QUIET,
-): SystemFinding {
+export function runSystem(given: SystemSpecification, data: PreparedData, control: RunControl = QUIET): SystemFinding {
+  const specification = withTimeTerms(given, data);
   const moments = momentsOf(data, momentsRequest(specification, data), control);
-  const estimate = estimateSystem(specification, data, moments, control);
+  const estimate = estimateSystem(specification, data, moments, control, curvaturePoint(specification, data));
   const { fitted } = estimate;
   const base = basePoint(data, fitted.demographics);
   const mean = meanPoint(data, fitted.demographics);
@@ -36,8 +36,10 @@ export function runSystem(
   const [point, pointName] = data.finding.normalise === "mean" ? [base, "base point"] : [mean, "mean"];
   return refusingRanges(() => {
     const { expenditure, expenditureErrors } = elasticitiesAt(fitted, point);
+    const expenditureOfLes = expenditureReport(fitted, data, point);
     return systemFinding.parse({
       ...estimate,
+      ...(expenditureOfLes && { expenditure: expenditureOfLes }),
       ...unitsMatter(specification, data),
       points: { base, mean },
       expenditureElasticities: fitted.goods.map((good, i) => ({
@@ -55,7 +57,9 @@ export function runSystem(
 function unitsMatter({ form, index }: SystemSpecification, data: PreparedData): Pick<SystemFinding, "unitsMatterBy"> {
   if (data.finding.normalise === "mean") return {};
   if (form === "aids") return { unitsMatterBy: "a fixed α₀" };
-  return form === "la-aids" && index === "stone" ? { unitsMatterBy: "Stone's index" } : {};
+  if (form !== "la-aids") return {};
+  if (index === "lagged stone") return { unitsMatterBy: "the lagged Stone index" };
+  return index === "stone" ? { unitsMatterBy: "Stone's index" } : {};
 }
 
 /** Specifications on the same rows that need the same moments read the rows once between them. */
@@ -73,9 +77,13 @@ function momentsOf(data: PreparedData, request: MomentsRequest, control: RunCont
 
 const CURVE_POINTS = 25;
 
-/** Predicted shares against ln x at mean prices and demographics, from the 1st to the 99th percentile of ln x. */
+/**
+ * Predicted shares against ln x at mean prices and demographics, from the 1st to the 99th percentile of ln x; none
+ * in a system in differences.
+ */
 function engelCurves(fitted: FittedCoefficients, data: PreparedData, mean: Point): SystemFinding["engel"] {
   const { system, size } = systemOf(fitted);
+  if (system.kind === "differences") return { logTotal: [], shares: fitted.goods.map(() => []) };
   const [low, high] = weightedQuantiles(data.logTotal, [0.01, 0.99], data.weights);
   const logTotal = Array.from({ length: CURVE_POINTS }, (_, i) => low + ((high - low) * i) / (CURVE_POINTS - 1));
   const curves = logTotal.map((log) => system.slopes(fitted.theta, size, { ...mean, total: Math.exp(log) }).shares);

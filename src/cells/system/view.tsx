@@ -36,7 +36,7 @@ export function SystemOpen({ finding }: OpenProps<"system">) {
         <CoefficientView finding={finding} />
         <SystemNote finding={finding} />
       </div>
-      <EngelView finding={finding} />
+      {finding.engel.logTotal.length > 0 && <EngelView finding={finding} />}
       <TestsView tests={finding.tests} untested={finding.untested} />
       <FitView finding={finding} />
     </div>

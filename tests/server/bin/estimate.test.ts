@@ -6,6 +6,7 @@ import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { estimateStudy } from "../../../server/bin/estimate-study.ts";
 import { QUIET } from "../../../server/engine/run.ts";
 import { finding } from "../../../shared/schemas/cell.ts";
+import { SYSTEM_NAMES } from "../../../shared/systems/names.ts";
 import { temporaryFolder } from "../../support/temporary.ts";
 
 const SCRIPT = fileURLToPath(new URL("../../../server/bin/estimate.mjs", import.meta.url));
@@ -87,7 +88,7 @@ describe("the command", () => {
     expect(stderr).toBe(
       [
         "wrong.yaml:12:23: weeks.goods.brand2.price: data/tuna.csv has no column p22. The nearest is p2.",
-        "wrong.yaml:18:11: base.form: form is not one of la-aids, aids, les: the nearest to aidz is aids.",
+        `wrong.yaml:18:11: base.form: form is not one of ${SYSTEM_NAMES.join(", ")}: the nearest to aidz is aids.`,
         "",
       ].join("\n"),
     );

@@ -1,6 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { LONGEST_SOURCE, LONGEST_STUDY_FILE, readDocument } from "../../../shared/study/document.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
+import { SYSTEM_NAMES } from "../../../shared/systems/names.ts";
 
 const sentences = (kind: string, source: string) => parseCell(kind, source).problems.map(({ sentence }) => sentence);
 const marked = (source: string, kind: string) =>
@@ -44,7 +45,7 @@ describe("wrong words", () => {
     const source = "data: survey\nform: aid\n";
     expect(parseCell("system", source).problems).toEqual([
       {
-        sentence: "form is not one of la-aids, aids, les: the nearest to aid is aids.",
+        sentence: `form is not one of ${SYSTEM_NAMES.join(", ")}: the nearest to aid is aids.`,
         key: ["form"],
         place: { line: 2, column: 7, from: 19, to: 22 },
         nearest: "aids",
@@ -57,7 +58,7 @@ describe("wrong words", () => {
       "system",
       "data: a\nfrom: aids",
       [
-        "A system cell needs form: one of la-aids, aids, les.",
+        `A system cell needs form: one of ${SYSTEM_NAMES.join(", ")}.`,
         "from is not a key of a system cell: the nearest is form.",
       ],
     ],
@@ -66,7 +67,7 @@ describe("wrong words", () => {
       "data: a\nform: aids\nimpose: [symetry]",
       ["impose has symetry, which is not one of homogeneity, symmetry: the nearest to symetry is symmetry."],
     ],
-    ["system", "data: a\nform:", ["form is empty: one of la-aids, aids, les."]],
+    ["system", "data: a\nform:", [`form is empty: one of ${SYSTEM_NAMES.join(", ")}.`]],
     ["system", "data: a\nform: aids\nimpose: homogeneity", ["impose needs a list: write impose: [homogeneity]."]],
     ["system", "data: a\nform: aids\nalpha0: three", ["alpha0 needs a number and has three."]],
     ["system", "data: a\nform: aids\nindex: stone", ["index belongs to la-aids; aids has none to choose."]],

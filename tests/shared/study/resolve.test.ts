@@ -1,5 +1,6 @@
 import { describe, expect, it } from "vitest";
 import { resolveCells } from "../../../shared/study/resolve.ts";
+import { SYSTEM_NAMES } from "../../../shared/systems/names.ts";
 
 const survey =
   "upload: purchases.csv\ngoods:\n  grains: {price: p_grains, expenditure: e_grains}\n  dairy: {price: p_dairy, expenditure: e_dairy}\nderive: {log_size: log(members)}\n";
@@ -158,7 +159,7 @@ describe("like", () => {
 
   it("tells what a taken over key does wrong where it was taken over", () => {
     expect(told("b", DATA, ["a", "system", "data: survey"], ["b", "system", "like: a"])).toEqual([
-      "As taken over from a: A system cell needs form: one of la-aids, aids, les.",
+      `As taken over from a: A system cell needs form: one of ${SYSTEM_NAMES.join(", ")}.`,
     ]);
   });
 

@@ -3,6 +3,7 @@ import { describe, expect, it } from "vitest";
 import { CELL_KINDS, SPECIFICATIONS } from "../../../shared/schemas/cell.ts";
 import { PROGRAM_VERSION } from "../../../shared/study/program.ts";
 import { keyWord, REFERENCES, VOCABULARY } from "../../../shared/study/vocabulary.ts";
+import { SYSTEM_NAMES } from "../../../shared/systems/names.ts";
 
 describe("VOCABULARY", () => {
   it.each(CELL_KINDS)("has every key of a %s cell's schema, and no other but like", (kind) => {
@@ -13,7 +14,7 @@ describe("VOCABULARY", () => {
   });
 
   it("reads values, lists and inner keys off the schemas", () => {
-    expect(keyWord("system", "form")).toMatchObject({ values: ["la-aids", "aids", "les"], needed: true, list: false });
+    expect(keyWord("system", "form")).toMatchObject({ values: [...SYSTEM_NAMES], needed: true, list: false });
     expect(keyWord("system", "impose")).toMatchObject({
       values: ["homogeneity", "symmetry"],
       needed: false,
