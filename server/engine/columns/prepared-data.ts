@@ -50,7 +50,7 @@ export interface PreparedData {
   readonly logTotal: Float64Array;
   /** Scaled to sum to T; absent when the data name no weight. */
   readonly weights?: Float64Array;
-  readonly clusters?: { readonly codes: Int32Array; readonly labels: readonly string[] };
+  readonly clusters?: { readonly column: string; readonly codes: Int32Array; readonly labels: readonly string[] };
   readonly time?: Float64Array;
   /** Numeric columns a system may use as demographics, derived ones included, rows used only. */
   readonly numeric: ReadonlyMap<string, Float64Array>;

@@ -36,6 +36,25 @@ export function leastSquaresCovariance(estimation: Estimation, solution: Solutio
   return outerSquare(multiply(multiply(restrictionMatrix(estimation), inverse), transpose(middle)));
 }
 
+/**
+ * Sandwich covariance of θ̂ (k × k, singular by the restrictions): S A⁻¹B A⁻¹S'·G/(G − 1) with B = Σ_g s_g s_g' of
+ * G independent scores, those of rows (heteroskedasticity-robust; White 1980, Econometrica 48) or of clusters
+ * (Liang & Zeger 1986, Biometrika 73).
+ */
+export function sandwichCovariance(
+  estimation: Estimation,
+  solution: Solution,
+  meat: Columns,
+  groups: number,
+): number[][] {
+  const inverse = inverseRoot(solution);
+  const inner = crossProduct(inverse, multiply(meat, inverse));
+  for (let k = 0; k < inner.values.length; k++) inner.values[k] *= groups / (groups - 1);
+  // In the metric of A every direction counts alike: what falls below this is rounding of a meat of low rank.
+  const middle = semidefiniteCholesky(inner, 1e-14).factor;
+  return outerSquare(multiply(multiply(restrictionMatrix(estimation), inverse), transpose(middle)));
+}
+
 /** D⁻¹R⁻¹: A⁻¹ is this times its transpose. */
 function inverseRoot({ factor }: Solution): Columns {
   const inverse = invertUpper(factor.triangle);

@@ -24,11 +24,15 @@ export function summedFactor(
   const plan = planTiles(terms);
   const range = { from: 0, to: source.rows };
   const sums = accumulateSums(source, whitening, terms, plan, range, control, (done) => done / source.rows);
-  const matrix = momentMatrix(plan, sums);
+  return factorOfMoments(momentMatrix(plan, sums), source.responses.length);
+}
+
+/** The triangular factor of second moments of whitened terms and, after them, responses. */
+export function factorOfMoments(matrix: Columns, responses: number): Columns {
   const { factor, dependent } = semidefiniteCholesky(matrix, ROUNDING);
   // A response that the terms explain to rounding keeps residuals of that size, so that no variance is zero.
   for (const column of dependent) {
-    if (column < terms.length - source.responses.length) continue;
+    if (column < matrix.columns - responses) continue;
     factor.values[column * factor.rows + column] = Math.sqrt(ROUNDING * matrix.values[column * matrix.rows + column]);
   }
   return factor;

@@ -135,7 +135,7 @@ describe("shares, prices and totals", () => {
       },
       { extra: [1, 2, null, 4] },
     );
-    expect(data.clusters).toEqual({ codes: Int32Array.of(0, 1, 1), labels: ["a", "b"] });
+    expect(data.clusters).toEqual({ column: "village", codes: Int32Array.of(0, 1, 1), labels: ["a", "b"] });
     expect([...(data.time ?? [])]).toEqual([2, 1, 2]);
     expect([...data.numeric.keys()]).toEqual(["month", "members", "e_total", "log_size"]);
     expect([...(data.numeric.get("log_size") ?? [])]).toEqual([2, 3, 4].map(Math.log));
