@@ -9,7 +9,7 @@ import { type ResolvedCell, resolveParsed } from "../../shared/study/resolve.ts"
 import { placed } from "../../shared/study/states.ts";
 import { parseStudyFile } from "../../shared/study/study-file.ts";
 import { sortByReading } from "../../shared/study/topology.ts";
-import { runData, runSlutsky, runSystem } from "../engine/cells/index.ts";
+import { runData, runSlutsky, runSystem, runTests } from "../engine/cells/index.ts";
 import type { PreparedData, UploadTable } from "../engine/columns/prepared-data.ts";
 import { readCsv } from "../engine/columns/read-csv.ts";
 import { Refusal } from "../engine/refusal.ts";
@@ -134,11 +134,12 @@ function runCells(
   const prepared = new Map<string, PreparedData>();
   const found = new Map<string, Finding>();
   const complaints: Complaint[] = [];
+  const specificationOf = (name: string) => cells.find((cell) => cell.name === name)?.specification;
   for (const cell of cells) {
     // What reads a cell that failed has nothing to say of its own.
     if (cell.reads.some((name) => !found.has(name))) continue;
     try {
-      found.set(cell.name, runCell(cell, prepared, found, tables, control));
+      found.set(cell.name, runCell(cell, prepared, found, tables, { control, specificationOf }));
     } catch (error) {
       if (!(error instanceof Refusal)) throw error;
       complaints.push(...placed(error.problems, cell.places).map((problem) => complaintOf(cell.name, problem)));
@@ -149,12 +150,17 @@ function runCells(
   return { findings: Object.fromEntries(asked.map((name) => [name, found.get(name)!])), complaints };
 }
 
+interface Running {
+  readonly control: RunControl;
+  readonly specificationOf: (name: string) => ResolvedCell["specification"];
+}
+
 function runCell(
   { name, specification }: ResolvedCell,
   prepared: Map<string, PreparedData>,
   found: ReadonlyMap<string, Finding>,
   tables: ReadonlyMap<string, UploadTable>,
-  control: RunControl,
+  { control, specificationOf }: Running,
 ): Finding {
   if (specification?.kind === "data") {
     const data = runData(specification, tables.get(specification.upload)!, control);
@@ -162,11 +168,23 @@ function runCell(
     return data.finding;
   }
   // The rows beneath a system go with it under its own name.
-  const below = specification?.kind === "system" ? specification.data : (specification?.system ?? "");
+  const below = readOf(specification);
   const data = prepared.get(below)!;
   prepared.set(name, data);
   if (specification?.kind === "system") return runSystem(specification, data, control);
   const system = found.get(below);
+  if (specification?.kind === "tests") {
+    const asked = specificationOf(below);
+    const tested = asked?.kind === "system" && system?.kind === "system" && { specification: asked, finding: system };
+    return runTests(specification, data, tested || undefined, control);
+  }
   if (specification?.kind !== "slutsky" || system?.kind !== "system") throw new Error(`${name} has no specification`);
   return runSlutsky(specification, system, data, control);
+}
+
+/** The one cell a cell reads. */
+function readOf(specification: ResolvedCell["specification"]): string {
+  if (!specification || specification.kind === "data") return "";
+  if ("system" in specification && specification.system !== undefined) return specification.system;
+  return "data" in specification ? (specification.data ?? "") : "";
 }

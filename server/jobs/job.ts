@@ -2,6 +2,7 @@ import type { MessagePort } from "node:worker_threads";
 import type { CellSpecification } from "../../shared/schemas/cell.ts";
 import type { DataSpecification } from "../../shared/schemas/data.ts";
 import type { Problem } from "../../shared/schemas/problem.ts";
+import type { SystemSpecification } from "../../shared/schemas/system.ts";
 import type { RunControl } from "../engine/run.ts";
 
 /** A cell to compute: its question, and what it rests on. Plain data, so that it crosses threads. */
@@ -16,8 +17,9 @@ export interface CellJob {
     readonly specification: DataSpecification;
     readonly uploadId: string;
   };
-  /** Where the system's finding is stored, for what rests on one. */
+  /** Where the system's finding is stored and what was asked of it, for what rests on one. */
   readonly systemFingerprint?: string;
+  readonly systemSpecification?: SystemSpecification;
 }
 
 export type ProgressNow = Parameters<RunControl["progress"]>[0];

@@ -3,7 +3,7 @@ import type { Finding } from "../../shared/schemas/cell.ts";
 import { type SystemFinding, systemFinding } from "../../shared/schemas/system.ts";
 import type { Database } from "../db/client.ts";
 import { findings } from "../db/schema/findings.ts";
-import { runData, runSlutsky, runSystem } from "../engine/cells/index.ts";
+import { runData, runSlutsky, runSystem, runTests } from "../engine/cells/index.ts";
 import type { PreparedData, UploadTable } from "../engine/columns/prepared-data.ts";
 import { Refusal } from "../engine/refusal.ts";
 import type { RunControl } from "../engine/run.ts";
@@ -32,6 +32,11 @@ function find(job: CellJob, db: Database, memory: WorkerMemory, control: RunCont
   const data = prepared(job, db, memory, control);
   if (specification.kind === "data") return data.finding;
   if (specification.kind === "system") return runSystem(specification, data, control);
+  if (specification.kind === "tests") {
+    const { systemSpecification } = job;
+    const system = systemSpecification && { specification: systemSpecification, finding: storedSystem(job, db) };
+    return runTests(specification, data, system, control);
+  }
   return runSlutsky(specification, storedSystem(job, db), data, control);
 }
 

@@ -2,15 +2,17 @@ import { z } from "zod";
 import { dataFinding, dataSpecification } from "./data.ts";
 import { slutskyFinding, slutskySpecification } from "./slutsky.ts";
 import { systemFinding, systemSpecification } from "./system.ts";
+import { testsFinding, testsSpecification } from "./tests.ts";
 
 /** The kinds of cell. A kind is added here, with its schema file, its engine file and its view. */
-export const CELL_KINDS = ["data", "system", "slutsky"] as const;
+export const CELL_KINDS = ["data", "system", "tests", "slutsky"] as const;
 export const cellKind = z.enum(CELL_KINDS);
 export type CellKind = z.infer<typeof cellKind>;
 
 export const cellSpecification = z.discriminatedUnion("kind", [
   dataSpecification,
   systemSpecification,
+  testsSpecification,
   slutskySpecification,
 ]);
 export type CellSpecification = z.infer<typeof cellSpecification>;
@@ -18,10 +20,11 @@ export type CellSpecification = z.infer<typeof cellSpecification>;
 export const SPECIFICATIONS = {
   data: dataSpecification,
   system: systemSpecification,
+  tests: testsSpecification,
   slutsky: slutskySpecification,
 } as const;
 
-export const finding = z.discriminatedUnion("kind", [dataFinding, systemFinding, slutskyFinding]);
+export const finding = z.discriminatedUnion("kind", [dataFinding, systemFinding, testsFinding, slutskyFinding]);
 export type Finding = z.infer<typeof finding>;
 export type FindingOf<K extends CellKind> = Extract<Finding, { kind: K }>;
 export type SpecificationOf<K extends CellKind> = Extract<CellSpecification, { kind: K }>;

@@ -29,7 +29,7 @@ export function columnProblems(context: Context): Problem[] {
   const { specification } = context;
   if (specification.kind === "data") return dataProblems(specification, context);
   if (specification.kind === "system") return systemProblems(specification, context);
-  return slutskyProblems(specification, context);
+  return specification.kind === "slutsky" ? slutskyProblems(specification, context) : [];
 }
 
 function teller(places: Places) {

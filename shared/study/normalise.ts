@@ -1,11 +1,16 @@
 import type { CellSpecification } from "../schemas/cell.ts";
+import { HYPOTHESIS_NAMES } from "../schemas/tests.ts";
 import { RESTRICTION_NAMES } from "../systems/names.ts";
 
 /**
  * One specification for every way of writing the same question: restrictions once each in their own
- * order, the default index of la-aids said. Defaults of the schema are already filled in.
+ * order (hypotheses too), the default index of la-aids said. Defaults of the schema are already filled in.
  */
 export function normaliseSpecification(specification: CellSpecification): CellSpecification {
+  if (specification.kind === "tests" && specification.of) {
+    const { of } = specification;
+    return { ...specification, of: HYPOTHESIS_NAMES.filter((name) => of.includes(name)) };
+  }
   if (specification.kind !== "system") return specification;
   return {
     ...specification,

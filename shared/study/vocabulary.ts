@@ -22,6 +22,7 @@ export interface KeyWord {
 export const REFERENCES: { readonly [K in CellKind]: Readonly<Record<string, CellKind>> } = {
   data: {},
   system: { data: "data" },
+  tests: { system: "system", data: "data" },
   slutsky: { system: "system" },
 };
 
@@ -64,6 +65,12 @@ const KEYS: { readonly [K in CellKind]: Readonly<Record<KeysOf<K>, Told>> } = {
     instruments: ["columns that explain an endogenous total expenditure", "numeric column"],
     zeros: ["goods not bought, by two steps: first participation, then shares"],
     curvature: ["negativity imposed at a point, with the rank of the matrix there"],
+  },
+  tests: {
+    system: ["the name of the system cell whose restrictions are tested; or give data", "system"],
+    data: ["the name of a data cell, for revealed preference, which needs no system", "data"],
+    of: ["which hypotheses; all that the system admits unless some are named"],
+    level: ["the probability below which a test rejects; 0.05 unless said otherwise"],
   },
   slutsky: {
     system: ["the name of the system cell it evaluates", "system"],

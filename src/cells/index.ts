@@ -1,9 +1,13 @@
-import type { CellKind } from "../../shared/schemas/cell.ts";
+import type { CellKind, FindingOf } from "../../shared/schemas/cell.ts";
 import { coefficientTable } from "../../shared/tables/coefficients.ts";
 import { dataDescriptionTable } from "../../shared/tables/data-description.ts";
 import { eigenvalueTable } from "../../shared/tables/eigenvalues.ts";
+import { equationsOf, equationTestsTable } from "../../shared/tables/equation-tests.ts";
+import { revealedOf, revealedTable } from "../../shared/tables/revealed-preference.ts";
 import { rowAccountingTable } from "../../shared/tables/row-accounting.ts";
 import { compensatedTable, slutskyTable } from "../../shared/tables/slutsky-matrix.ts";
+import type { LabelledTable } from "../../shared/tables/table.ts";
+import { testsTable } from "../../shared/tables/tests.ts";
 import { DataForm } from "./data/form.tsx";
 import { DataBand, DataOpen } from "./data/view.tsx";
 import { SlutskyForm } from "./slutsky/form.tsx";
@@ -11,6 +15,8 @@ import { HowChecked } from "./slutsky/how-checked.tsx";
 import { SlutskyBand, SlutskyOpen } from "./slutsky/view.tsx";
 import { SystemForm } from "./system/form.tsx";
 import { SystemBand, SystemOpen } from "./system/view.tsx";
+import { TestsForm } from "./tests/form.tsx";
+import { TestsBand, TestsOpen } from "./tests/view.tsx";
 import type { CellView } from "./types.ts";
 
 /** What each kind of cell shows; a kind is added here with its folder. */
@@ -27,6 +33,12 @@ export const CELL_VIEWS: { readonly [K in CellKind]: CellView<K> } = {
     Open: SystemOpen,
     tables: (finding) => [coefficientTable(finding)],
   },
+  tests: {
+    Form: TestsForm,
+    Band: TestsBand,
+    Open: TestsOpen,
+    tables: testsTables,
+  },
   slutsky: {
     Form: SlutskyForm,
     Band: SlutskyBand,
@@ -35,3 +47,12 @@ export const CELL_VIEWS: { readonly [K in CellKind]: CellView<K> } = {
     tables: (finding) => [slutskyTable(finding, finding.form), eigenvalueTable(finding), compensatedTable(finding)],
   },
 };
+
+function testsTables(finding: FindingOf<"tests">): LabelledTable[] {
+  const revealed = revealedOf(finding);
+  return [
+    ...(finding.tests.length > 0 ? [testsTable(finding)] : []),
+    ...(equationsOf(finding).length > 0 ? [equationTestsTable(finding)] : []),
+    ...(revealed ? [revealedTable(revealed)] : []),
+  ];
+}

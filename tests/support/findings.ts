@@ -2,6 +2,7 @@ import type { FindingOf } from "../../shared/schemas/cell.ts";
 import { dataFinding } from "../../shared/schemas/data.ts";
 import { slutskyFinding } from "../../shared/schemas/slutsky.ts";
 import { systemFinding } from "../../shared/schemas/system.ts";
+import { testsFinding } from "../../shared/schemas/tests.ts";
 
 /** Findings of two goods that fit their schemas, for tests of what carries findings about. The numbers mean nothing. */
 const sha = (digit: string) => digit.repeat(64);
@@ -37,6 +38,7 @@ export const ROW_NUMBERS = [700_001, 700_002];
 export function exampleFindings(): {
   data: FindingOf<"data">;
   system: FindingOf<"system">;
+  tests: FindingOf<"tests">;
   slutsky: FindingOf<"slutsky">;
 } {
   const good = {
@@ -104,6 +106,27 @@ export function exampleFindings(): {
         ],
       },
       checks,
+    }),
+    tests: testsFinding.parse({
+      kind: "tests",
+      dataFingerprint: sha("d"),
+      level: 0.05,
+      rows: 5,
+      covariance: "conventional",
+      weighted: true,
+      tests: [
+        {
+          hypothesis: "homogeneity",
+          given: [],
+          degreesOfFreedom: 1,
+          wald: { statistic: 4, pValue: 0.0455 },
+          likelihoodRatio: { statistic: 3, pValue: 0.0833 },
+          score: { statistic: 2, pValue: 0.1573 },
+          corrected: { statistic: 1, pValue: 0.3173 },
+          laitinen: { absent: "Laitinen's test needs equations linear in their coefficients." },
+        },
+        { hypothesis: "demographics", because: "nothing to test", reason: "The system names no demographics." },
+      ],
     }),
     slutsky: slutskyFinding.parse({
       kind: "slutsky",

@@ -45,7 +45,16 @@ export class Snapshot {
       fingerprint,
       specification,
       data: { fingerprint: dataFingerprint, specification: data.specification, uploadId: upload.id },
-      ...(specification.kind === "slutsky" && { systemFingerprint: this.fingerprintOf(specification.system) }),
+      ...this.#systemBelow(specification),
+    };
+  }
+
+  #systemBelow(specification: CellSpecification): Pick<CellJob, "systemFingerprint" | "systemSpecification"> {
+    if (!("system" in specification) || specification.system === undefined) return {};
+    const system = this.#byName.get(specification.system)?.specification;
+    return {
+      systemFingerprint: this.fingerprintOf(specification.system),
+      ...(system?.kind === "system" && { systemSpecification: system }),
     };
   }
 
@@ -66,6 +75,7 @@ export class Snapshot {
 }
 
 function readOf(specification: CellSpecification | undefined): string | undefined {
-  if (specification?.kind === "system") return specification.data;
-  return specification?.kind === "slutsky" ? specification.system : undefined;
+  if (!specification || specification.kind === "data") return undefined;
+  if ("system" in specification && specification.system !== undefined) return specification.system;
+  return "data" in specification ? specification.data : undefined;
 }

@@ -3,6 +3,7 @@ import { CELL_KINDS, type CellKind } from "../../../shared/schemas/cell.ts";
 const SAYS: Readonly<Record<CellKind, string>> = {
   data: "a file of purchases, and what its columns mean",
   system: "share equations estimated on data",
+  tests: "what the data say of theory, and of the system’s own terms",
   slutsky: "the matrix of compensated effects, checked",
 };
 

@@ -6,7 +6,12 @@ import { parseCell } from "../../../shared/study/parse-cell.ts";
 import { suggestData } from "../../../shared/study/suggest.ts";
 import { counted } from "../../../shared/study/words.ts";
 
-const FIRST_NAMES: Readonly<Record<CellKind, string>> = { data: "purchases", system: "base", slutsky: "matrix" };
+const FIRST_NAMES: Readonly<Record<CellKind, string>> = {
+  data: "purchases",
+  system: "base",
+  tests: "laws",
+  slutsky: "matrix",
+};
 
 /** A name for a fresh cell that no other has: "matrix", "matrix 2". */
 export function freshName(kind: CellKind, cells: readonly Pick<CellSource, "name">[]): string {
@@ -19,6 +24,10 @@ export function freshName(kind: CellKind, cells: readonly Pick<CellSource, "name
 export function freshSource(kind: CellKind, cells: readonly CellSource[], uploads: readonly Upload[]): string {
   const last = (of: CellKind) => cells.findLast((cell) => cell.kind === of)?.name ?? "";
   if (kind === "system") return `data: ${last("data")}\nform: aids\nimpose: [homogeneity, symmetry]\n`;
+  if (kind === "tests") {
+    const system = last("system");
+    return system || !last("data") ? `system: ${system}\n` : `data: ${last("data")}\n`;
+  }
   if (kind === "slutsky") return `system: ${last("system")}\nat: base point\nform: share\n`;
   const free = uploads.filter(
     ({ name }) => !cells.some(({ kind, source }) => kind === "data" && source.includes(name)),
@@ -51,6 +60,9 @@ export function sourceInALine(kind: string, source: string): string {
       ? `like ${text("like")}`
       : `${text("form") || "no form yet"} on ${text("data") || "no data yet"}`;
     return [head, listed(written.demographics), listed(written.impose)].filter(Boolean).join("; ");
+  }
+  if (kind === "tests") {
+    return [text("system") || text("data") || "no system yet", listed(written.of)].filter(Boolean).join("; ");
   }
   if (kind === "slutsky") {
     const at = typeof written.at === "object" && written.at ? inWords(written.at) : text("at") || "base point";

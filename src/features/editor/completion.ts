@@ -85,8 +85,9 @@ type Rest = Pick<EditorSubject, "uploads" | "kind"> & { readonly cells: readonly
 /** The keys of the data cell the text is, or reads. */
 function dataOf({ cells, kind }: Pick<Rest, "cells" | "kind">, text: string): Readonly<Record<string, unknown>> {
   if (kind === "data") return parseCell("data", text).written;
-  const key = kind === "system" ? "data" : "system";
-  const read = cells.find(({ name }) => name === parseCell(kind ?? "", text).written[key]);
+  const { system, data } = parseCell(kind ?? "", text).written;
+  const reads = kind === "system" ? data : (system ?? data);
+  const read = cells.find(({ name }) => name === reads);
   if (!read) return {};
   return read.kind === "data" ? parseCell("data", read.source).written : dataOf({ cells, kind: "system" }, read.source);
 }

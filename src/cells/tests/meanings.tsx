@@ -1,0 +1,38 @@
+import type { TestsFinding } from "../../../shared/schemas/tests.ts";
+import { capital } from "../../../shared/study/words.ts";
+import { hypothesisText, isMade, reasonsOf, testMeaning, testVerdict } from "../../../shared/tables/tests.ts";
+import { VerdictWord } from "./verdict.tsx";
+
+/** What each test means, in words, and why what is missing is missing. */
+export function Meanings({ finding }: { finding: TestsFinding }) {
+  if (finding.tests.length === 0) return null;
+  return (
+    <section aria-labelledby="meanings" className="border-line border-t pt-4">
+      <h2 id="meanings" className="type-section mb-2">
+        What it means
+      </h2>
+      <dl>
+        {finding.tests.map((test, place) => (
+          <div
+            key={place}
+            className="grid gap-x-6 gap-y-0.5 border-rule py-2 not-last:border-b min-[700px]:grid-cols-[13rem_8.5rem_minmax(0,1fr)]"
+          >
+            <dt className="type-table">{capital(hypothesisText(test))}</dt>
+            <dd className="type-table">
+              <VerdictWord {...testVerdict(test, finding)} />
+            </dd>
+            <dd className="type-table max-w-[62ch] text-pretty">
+              {testMeaning(test, finding)}
+              {isMade(test) &&
+                reasonsOf(test).map((reason) => (
+                  <span key={reason} className="type-small block text-ink2">
+                    {reason}
+                  </span>
+                ))}
+            </dd>
+          </div>
+        ))}
+      </dl>
+    </section>
+  );
+}

@@ -1,0 +1,53 @@
+import type { TestsFinding } from "../../../shared/schemas/tests.ts";
+import { printCount } from "../../../shared/tables/numbers.ts";
+import { printIndex, revealedOf, revealedTable } from "../../../shared/tables/revealed-preference.ts";
+import { Table } from "../../components/table.tsx";
+import { CopyTable } from "../copy-table.tsx";
+
+/** Violations of the generalised axiom and the efficiency index, with what they take for granted. */
+export function RevealedTable({ finding }: { finding: TestsFinding }) {
+  const revealed = revealedOf(finding);
+  if (!revealed) return null;
+  const table = revealedTable(revealed);
+  return (
+    <>
+      <Table
+        caption={table.title}
+        className="max-w-[27rem]"
+        heads={[
+          { key: "axiom", content: table.corner },
+          { key: "value", content: "" },
+        ]}
+        lines={[
+          { key: "rows", head: "Rows compared", cells: [printCount(revealed.rows)] },
+          { key: "involved", head: "Rows that contradict another", cells: [printCount(revealed.rowsInvolved)] },
+          { key: "pairs", head: "Ordered pairs of them", cells: [printCount(revealed.pairs)] },
+          { key: "direct", head: "of these, without a third row", cells: [printCount(revealed.directPairs)] },
+          { key: "index", head: "Afriat’s efficiency index", cells: [printIndex(revealed.index)] },
+        ]}
+      />
+      <p className="type-small mt-2 max-w-[62ch] text-pretty text-ink2">{table.notes.join(" ")}</p>
+    </>
+  );
+}
+
+/** The same as a section of an opened cell, or why there is none. */
+export function Revealed({ finding }: { finding: TestsFinding }) {
+  if (!finding.revealed) return null;
+  const revealed = revealedOf(finding);
+  return (
+    <section aria-labelledby="revealed" className="border-line border-t pt-4">
+      <div className="mb-2 flex flex-wrap items-baseline justify-between gap-x-6">
+        <h2 id="revealed" className="type-section">
+          Revealed preference
+        </h2>
+        {revealed && <CopyTable table={revealedTable(revealed)} />}
+      </div>
+      {"absent" in finding.revealed ? (
+        <p className="type-small max-w-[62ch] text-ink2">{finding.revealed.absent}</p>
+      ) : (
+        <RevealedTable finding={finding} />
+      )}
+    </section>
+  );
+}
