@@ -6,13 +6,12 @@ import {
   almostIdealLayout,
   almostIdealStart,
   interceptsAt,
-  type Parts,
   partsOf,
-  placesOf,
 } from "./almost-ideal.ts";
 import { almostIdealDerivatives, shareDerivatives } from "./almost-ideal-derivatives.ts";
-import type { DemandSystem, Evaluator, Matrix, Point, SlopeDerivatives, SystemSize } from "./demand-system.ts";
-import { requirePoint, slopesByEvaluator } from "./evaluation.ts";
+import type { DemandSystem, Evaluator, Point, SlopeDerivatives, SystemSize } from "./demand-system.ts";
+import { slopesByEvaluator } from "./evaluation.ts";
+import { symmetricPart, translogAt, translogDerivatives } from "./translog.ts";
 
 /**
  * Almost ideal demand system with the exact translog index.
@@ -68,11 +67,6 @@ export const aids: DemandSystem = {
   },
 };
 
-/** ½(γ_jk + γ_kj), the only part of Γ the index sees; row by row. */
-function symmetricPart(gamma: Float64Array, n: number): Float64Array {
-  return gamma.map((entry, at) => 0.5 * (entry + gamma[(at % n) * n + Math.floor(at / n)]));
-}
-
 function aidsEvaluator(theta: readonly number[], size: SystemSize): Evaluator {
   const n = size.goods;
   const parts = partsOf(theta, size);
@@ -109,61 +103,14 @@ function aidsEvaluator(theta: readonly number[], size: SystemSize): Evaluator {
   };
 }
 
-interface Translog {
-  readonly parts: Parts;
-  readonly logPrices: number[];
-  readonly logIndex: number;
-  /** π_j. */
-  readonly indexSlopes: number[];
-}
-
-function translogAt(theta: readonly number[], size: SystemSize, point: Point): Translog {
-  requirePoint(size, point);
-  const n = size.goods;
-  const parts = partsOf(theta, size);
-  const symmetric = symmetricPart(parts.gamma, n);
-  const logPrices = point.prices.map(Math.log);
-  const intercepts = new Float64Array(n);
-  interceptsAt(parts, point.demographics, intercepts);
-  const indexSlopes = Array.from(intercepts, (intercept, j) => {
-    let slope = intercept;
-    for (let k = 0; k < n; k++) slope += symmetric[j * n + k] * logPrices[k];
-    return slope;
-  });
-  const logIndex = indexSlopes.reduce(
-    (sum, slope, j) => sum + 0.5 * (intercepts[j] + slope) * logPrices[j],
-    size.alpha0,
-  );
-  return { parts, logPrices, logIndex, indexSlopes };
-}
-
 function aidsDerivatives(theta: readonly number[], size: SystemSize, point: Point): SlopeDerivatives {
-  const { goods: n, demographics: s } = size;
   const { parts, logPrices, logIndex, indexSlopes } = translogAt(theta, size, point);
-  const places = placesOf(size);
-  const z = point.demographics;
-  const realByTheta = new Array<number>(places.count).fill(0);
-  for (let k = 0; k < n; k++) {
-    realByTheta[places.alpha(k)] = -logPrices[k];
-    for (let d = 0; d < s; d++) realByTheta[places.demographic(k, d)] = -logPrices[k] * z[d];
-    for (let j = 0; j < n; j++) realByTheta[places.gamma(k, j)] = -0.5 * logPrices[k] * logPrices[j];
-  }
-  const indexSlopesByTheta: Matrix = Array.from({ length: n }, (_, j) => {
-    const row = new Array<number>(places.count).fill(0);
-    row[places.alpha(j)] = 1;
-    for (let d = 0; d < s; d++) row[places.demographic(j, d)] = z[d];
-    for (let k = 0; k < n; k++) {
-      row[places.gamma(j, k)] += 0.5 * logPrices[k];
-      row[places.gamma(k, j)] += 0.5 * logPrices[k];
-    }
-    return row;
-  });
-  const real = Math.log(point.total) - logIndex;
+  const { realByTheta, indexSlopesByTheta } = translogDerivatives(size, logPrices, point.demographics);
   const sharesByTheta = shareDerivatives(size, {
     logPrices,
-    demographics: z,
+    demographics: point.demographics,
     beta: parts.beta,
-    real,
+    real: Math.log(point.total) - logIndex,
     realByTheta,
   });
   return almostIdealDerivatives(size, parts.beta, sharesByTheta, indexSlopes, indexSlopesByTheta);

@@ -50,6 +50,10 @@ export function almostIdealLayout({ goods, demographics }: SystemSize): Coeffici
 
 /** Σα_i = 1, Σ_i α_ik = Σ_i γ_ij = Σβ_i = 0; homogeneity Σ_j γ_ij = 0; symmetry γ_ij = γ_ji. */
 export function almostIdealFreeForm(size: SystemSize, impose: readonly RestrictionName[]): FreeForm {
+  return freeForm(placesOf(size).count, almostIdealDependences(size, impose));
+}
+
+export function almostIdealDependences(size: SystemSize, impose: readonly RestrictionName[]): Dependence[] {
   const { goods: n, demographics: s } = size;
   const at = placesOf(size);
   const goods = Array.from({ length: n }, (_, i) => i);
@@ -65,7 +69,7 @@ export function almostIdealFreeForm(size: SystemSize, impose: readonly Restricti
       for (let j = 0; j < i; j++) dependences.push({ place: at.gamma(i, j), constant: 0, on: [[at.gamma(j, i), 1]] });
     }
   }
-  return freeForm(at.count, dependences);
+  return dependences;
 }
 
 /** Iteration starts from constant shares. */
