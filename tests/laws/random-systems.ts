@@ -1,7 +1,12 @@
 import type { Random } from "../../shared/numerics/random.ts";
-import type { FreeForm, Point, SystemSize } from "../../shared/systems/demand-system.ts";
+import type { CoefficientPlace, EasiSize, FreeForm, Point, SystemSize } from "../../shared/systems/demand-system.ts";
 import { SYSTEMS } from "../../shared/systems/index.ts";
-import { PRICE_INDEX_NAMES, type RestrictionName, type SystemName } from "../../shared/systems/names.ts";
+import {
+  INTERACTION_NAMES,
+  PRICE_INDEX_NAMES,
+  type RestrictionName,
+  type SystemName,
+} from "../../shared/systems/names.ts";
 
 /** A system at random coefficients that satisfy the restrictions, and a random point near ordinary prices. */
 export interface Case {
@@ -47,11 +52,33 @@ export function randomCase(random: Random, name: SystemName, impose: readonly Re
       meanShares: proportions(random, goods),
       meanPrices: Array.from({ length: goods }, () => Math.exp(0.1 * random.normal())),
     },
+    meanShares: proportions(random, goods),
   };
+  if (name === "easi") Object.assign(size, { easi: randomEasi(random) });
   const free = system.free(size, impose);
   const start = system.start(size, proportions(random, goods));
-  const phi = free.places.map((place) => start[place] + 0.05 * random.normal());
+  const layout = system.layout(size);
+  const phi = free.places.map((place) => start[place] + spreadOf(layout[place]) * random.normal());
   return { size, free, phi, theta: thetaOf(free, phi), point: randomPoint(random, size) };
+}
+
+/** Powers of real expenditure bend Engel curves little, so that cost rises with utility around ordinary points. */
+function spreadOf({ block, column }: CoefficientPlace): number {
+  if (block !== "power") return 0.05;
+  return [0.05, 0.02, 0.006, 0.0015, 0.0003][column!];
+}
+
+/** The step of a numerical derivative in a coefficient: two fifths of how far the cases move it. */
+export function stepOf(place: CoefficientPlace): number {
+  return 0.4 * spreadOf(place);
+}
+
+/** Engel curves up to the fifth degree and each interaction half of the time. */
+function randomEasi(random: Random): EasiSize {
+  return {
+    degree: 1 + random.integer(5),
+    interactions: INTERACTION_NAMES.filter(() => random.uniform() < 0.5),
+  };
 }
 
 /** The restrictions under which the laws are checked, with the laws' names for them. */
