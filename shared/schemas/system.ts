@@ -1,7 +1,13 @@
 import { z } from "zod";
 import { INTERACTION_NAMES, PRICE_INDEX_NAMES, RESTRICTION_NAMES, SYSTEM_NAMES } from "../systems/names.ts";
 import { theoryChecks } from "./checks.ts";
+import { curvatureFinding, curvatureIssues, curvatureSpecification } from "./curvature.ts";
+import { equationsExplained, expenditureReport, sampleIssues } from "./equations.ts";
+import { endogeneity, firstStepIssues, zerosFinding } from "./first-steps.ts";
 import { cellName, columnName, count, fingerprint, finite, goodName, matrix, vector } from "./primitives.ts";
+import { bootstrapFinding, checkStandardErrors, clustersFinding, STANDARD_ERROR_KINDS, standardErrorsSpecification } from "./standard-errors.ts";
+
+export { type StandardErrorsSpecification, standardErrorsSpecification } from "./standard-errors.ts";
 
 export const ESTIMATOR_NAMES = [
   "least squares",
@@ -10,45 +16,12 @@ export const ESTIMATOR_NAMES = [
   "maximum likelihood",
 ] as const;
 
-/** Resampling: whole rows, whole clusters, residuals of the fit, or moving blocks of consecutive periods. */
-export const BOOTSTRAP_NAMES = ["rows", "clusters", "residuals", "blocks"] as const;
-
-export const bootstrapSpecification = z.strictObject({
-  bootstrap: z.enum(BOOTSTRAP_NAMES),
-  replicates: z.number().int().min(20).max(10_000).default(500),
-  /** The same seed, the same intervals bit for bit, whatever the number of threads. */
-  seed: z
-    .number()
-    .int()
-    .nonnegative()
-    .max(2 ** 32 - 1)
-    .default(1),
-  /** Length of a moving block in periods. */
-  block: z.number().int().min(2).optional(),
-});
-export type BootstrapSpecification = z.infer<typeof bootstrapSpecification>;
-
-export const standardErrorsSpecification = z.union([
-  z.enum(["conventional", "heteroskedastic"]),
-  /** Rows with the same value of the column were sampled together. */
-  z.strictObject({ cluster: columnName }),
-  bootstrapSpecification,
-]);
-export type StandardErrorsSpecification = z.infer<typeof standardErrorsSpecification>;
-
 /** Terms of the season as shifts of the intercepts: dummies, or pairs of sine and cosine. */
 export const seasonSpecification = z.strictObject({
   /** Periods of the time column in one round: 4, 12, 52. */
   period: z.number().int().min(2).max(366),
   /** Pairs of sine and cosine; without it a dummy for every period but the last. */
   harmonics: z.number().int().min(1).optional(),
-});
-
-/** K(point) = −LL' with L lower triangular of the rank (Diewert & Wales 1987; Moschini 1998; Ryan & Wales 1998). */
-export const curvatureSpecification = z.strictObject({
-  at: z.union([z.enum(["base point", "mean"]), z.strictObject({ row: z.number().int().positive() })]),
-  /** Of K at the point; n − 1, the most there can be, unless said otherwise. */
-  rank: z.number().int().positive().optional(),
 });
 
 export const systemSpecification = z
@@ -93,6 +66,12 @@ export const systemSpecification = z
         message: `index belongs to la-aids; ${system.form} has none to choose`,
       });
     }
+    for (const { path, message } of sampleIssues(system)) context.addIssue({ code: "custom", path, message });
+    for (const { path, message } of firstStepIssues(system)) context.addIssue({ code: "custom", path, message });
+    for (const { path, message } of curvatureIssues(system)) context.addIssue({ code: "custom", path, message });
+    checkStandardErrors(system["standard errors"], (key, message) =>
+      context.addIssue({ code: "custom", path: ["standard errors", key], message }),
+    );
     if (system.impose.includes("symmetry") && !system.impose.includes("homogeneity")) {
       context.addIssue({
         code: "custom",
@@ -146,6 +125,8 @@ export type UntestedRestriction = z.infer<typeof untestedRestriction>;
 export const fittedSystem = z.strictObject({
   form: z.enum(SYSTEM_NAMES),
   index: z.enum(PRICE_INDEX_NAMES).optional(),
+  /** Of systems in differences, which predict no shares: weighted means of the observed ones, n. */
+  meanShares: vector.optional(),
   /** Weighted means of the shares, and of the prices in units of estimation: what the index of la-aids is evaluated with. */
   indexMeans: z.strictObject({ shares: vector, prices: vector }).optional(),
   /** Of easi: what its layout follows from. */
@@ -169,12 +150,23 @@ export const systemFinding = z.strictObject({
   fitted: fittedSystem,
   coefficients: z.array(coefficient),
   estimator: z.enum(ESTIMATOR_NAMES),
-  standardErrors: z.literal("conventional"),
+  /** What `fitted.covariance` and every standard error rest on. */
+  standardErrors: z.enum(STANDARD_ERROR_KINDS),
+  /** Where rows were grouped by a column, for clustered standard errors or a bootstrap of clusters. */
+  clusters: clustersFinding.optional(),
+  bootstrap: bootstrapFinding.optional(),
+  /** Kish's effective sample size (Σh)²/Σh² of the rows used, where they are weighted. */
+  effectiveRows: finite.optional(),
   dropped: goodName,
+  /** T: rows of the equations, fewer than the rows used where the first period has none before it. */
   rows: count,
+  /** Absent where the equations explain the shares of every row used. */
+  equations: equationsExplained.optional(),
+  /** Of the linear expenditure system. */
+  expenditure: expenditureReport.optional(),
   weighted: z.boolean(),
   /** Where prices are not normalised: by what the estimates depend on the units they were uploaded in, if they do. */
-  unitsMatterBy: z.enum(["a fixed α₀", "Stone's index"]).optional(),
+  unitsMatterBy: z.enum(["a fixed α₀", "Stone's index", "the lagged Stone index"]).optional(),
   freeCoefficients: count,
   logLikelihood: finite,
   aic: finite,
@@ -189,13 +181,19 @@ export const systemFinding = z.strictObject({
   /** Residual covariance of all n goods, divided by T; singular. */
   residualCovariance: matrix,
   tests: z.array(restrictionTest),
+  /** Where the specification names instruments of total expenditure. */
+  endogeneity: endogeneity.optional(),
+  /** Where goods not bought take two steps. */
+  zeros: zerosFinding.optional(),
+  /** Where negativity is imposed at a point. */
+  curvature: curvatureFinding.optional(),
   /** Absent where every restriction that the form leaves open was tested. */
   untested: z.array(untestedRestriction).optional(),
   /** In units of estimation (normalised when the data are). */
   points: z.strictObject({ base: namedPoint, mean: namedPoint }),
   /** η_i at the point of the checks below with its standard error, for the sentence at the head. */
   expenditureElasticities: z.array(z.strictObject({ good: goodName, estimate: finite, standardError: finite })),
-  /** Predicted shares against ln x at mean prices, for the small curves in the head: 25 points over the 1st to 99th percentile. */
+  /** Predicted shares against ln x at mean prices, none in a system in differences, for the small curves in the head: 25 points over the 1st to 99th percentile. */
   engel: z.strictObject({ logTotal: vector, shares: matrix }),
   /** Checks at the base point (at the mean where prices are not normalised) and over all rows: the system's verdict strip. */
   checks: theoryChecks,

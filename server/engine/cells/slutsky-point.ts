@@ -44,11 +44,11 @@ function ownPoint(at: { prices: Record<string, number>; x: number }, system: Sys
   };
 }
 
-function positionOf(row: number, data: PreparedData): number {
+/** Where in the rows used a row of the upload stands. Errors: `Refusal` under `key`. */
+export function positionOf(row: number, data: PreparedData, key = ["at", "row"]): number {
   const position = data.rowNumbers.indexOf(row);
   if (position >= 0) return position;
   const { accounting } = data.finding;
-  const key = ["at", "row"];
   if (row > accounting.uploaded) {
     throw new Refusal([{ sentence: `The upload has ${accounting.uploaded} rows; there is no row ${row}.`, key, row }]);
   }

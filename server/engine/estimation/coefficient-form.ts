@@ -44,7 +44,11 @@ export function systemForm(
 }
 
 /** The share equations of a demand system under any linear restrictions θ = S φ + s. */
-export function constrainedForm(system: Pick<DemandSystem, "moments">, size: SystemSize, form: FreeForm): CoefficientForm {
+export function constrainedForm(
+  system: Pick<DemandSystem, "moments">,
+  size: SystemSize,
+  form: FreeForm,
+): CoefficientForm {
   return {
     free: form.places.length,
     expand: form,
@@ -82,7 +86,10 @@ export function linearForm(
   };
 }
 
-export function throughRestrictions(byCoefficient: readonly (readonly Entry[])[], { matrix, places }: Pick<FreeForm, "matrix" | "places">): Entry[][] {
+export function throughRestrictions(
+  byCoefficient: readonly (readonly Entry[])[],
+  { matrix, places }: Pick<FreeForm, "matrix" | "places">,
+): Entry[][] {
   const byFree: Entry[][] = places.map(() => []);
   byCoefficient.forEach((entries, a) => {
     matrix[a].forEach((weight, f) => {

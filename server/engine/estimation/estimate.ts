@@ -5,12 +5,13 @@ import { SYSTEMS } from "../../../shared/systems/index.ts";
 import { pickRows } from "../columns/pick-rows.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { weightedMean } from "../columns/weighted.ts";
+import { covarianceOfEstimates, inferenceFinding } from "../inference/covariance-of-estimates.ts";
 import { type NestedFits, restrictionTests } from "../inference/restriction-tests.ts";
 import { Refusal } from "../refusal.ts";
 import type { RunControl } from "../run.ts";
 import { systemForm } from "./coefficient-form.ts";
 import { coefficientNames, labelOfCoefficient } from "./coefficient-labels.ts";
-import { conventionalCovariance, leastSquaresCovariance } from "./covariance.ts";
+import { type CurvaturePoint, imposeCurvature } from "./curvature/impose.ts";
 import { durbinWatson } from "./durbin-watson.ts";
 import { equationsExplainedBy } from "./equations-explained.ts";
 import { firstStepFindings } from "./first-steps/findings.ts";
@@ -41,34 +42,34 @@ export function estimateSystem(
   data: PreparedData,
   given: Moments,
   control: RunControl,
+  curvatureAt?: CurvaturePoint,
 ): Estimate {
   const system = specifiedSystem(specification, data);
   const size = sizeOf(specification, data);
   const moments = locatable(given, data, momentsRequest(specification, data), system.moments, size);
   const names = coefficientNames(system, size, data.goods, specification.demographics);
   const dropped = placeOfDropped(specification, data.goods);
-  const estimation: Estimation = {
+  const linear: Estimation = {
     moments,
     form: systemForm(system, size, specification.impose),
-    // Zeros in two steps: expected shares do not add up, so that no equation follows from the others.
-    equations: data.goods.map((_, good) => good).filter((good) => good !== dropped || specification.zeros !== undefined),
+    equations: data.goods.map((_, good) => good).filter((good) => good !== dropped),
     coefficientLabels: names.map(labelOfCoefficient),
   };
   const within = systemForm(system, size, withinEquations(specification)).free;
-  refuseTooFewRows(moments.rows, estimation.form.free, estimation.equations.length, within);
-  refuseConstantShares(estimation);
-  const solution = solve(specification, system, size, estimation, control);
-  const covariance =
-    specification.estimator === "least squares"
-      ? leastSquaresCovariance(estimation, solution)
-      : conventionalCovariance(estimation, solution);
+  refuseTooFewRows(moments.rows, linear.form.free, linear.equations.length, within);
+  refuseConstantShares(linear);
+  const unbent = { estimation: linear, solution: solve(specification, system, size, linear, control) };
+  const { estimation, solution, curvature } = imposeCurvature(specification, system, size, unbent, curvatureAt, control);
+  const source = () => sourceAt(data, momentsRequest(specification, data), system.moments, size, solution.theta);
+  const inference = covarianceOfEstimates({ specification, data, size, estimation, solution, source }, control);
+  const { covariance } = inference;
   // What the first steps add stands after the coefficients of the system itself.
   const own = SYSTEMS[specification.form].layout(size).length;
   const fit = { specification, data, system, size, estimation, solution, covariance, own };
   const { iterations, gradient, largestStep, condition } = solution;
   const measures = fitMeasures(estimation, solution);
   if (specification.estimator === "maximum likelihood") {
-    rememberFit(estimation, specification, measures.logLikelihood);
+    rememberFit(linear, specification, curvature?.logLikelihoodWithout ?? measures.logLikelihood);
   }
   const equations = equationsExplainedBy(sampleOf(specification), data, moments.rows);
   const durbin = durbinWatsonOf(specification, data, system, size, estimation, solution);
@@ -97,8 +98,8 @@ export function estimateSystem(
       standardError: Math.sqrt(covariance[a][a]),
     })),
     estimator: specification.estimator,
-    standardErrors: "conventional",
-    ...(specification.zeros === undefined && { dropped: data.goods[dropped] }),
+    ...inferenceFinding(inference, own),
+    dropped: data.goods[dropped],
     rows: moments.rows,
     ...(equations && { equations }),
     weighted: moments.weighted,
@@ -108,6 +109,7 @@ export function estimateSystem(
     ...(durbin && { durbinWatson: durbin }),
     residualCovariance: covarianceOf(solution.residuals, moments.rows),
     ...testsOf(specification, system, size, estimation, solution, control),
+    ...(curvature && { curvature }),
     ...firstStepFindings(fit, () => sourceOf(data, momentsRequest(specification, data)), control),
   };
 }
@@ -151,9 +153,13 @@ function testsOf(
   const { tests, untested } = restrictionTests(fits, {
     rows: estimation.moments.rows,
     equations: estimation.equations.length,
-    ...(specification.form === "la-aids" && {
-      linear: { exact: index === "laspeyres" && !estimation.moments.weighted },
-    }),
+    // In two steps every equation has regressors of its own.
+    ...(specification.form === "la-aids" &&
+      specification.zeros === undefined && {
+        linear: {
+          exact: index === "laspeyres" && !estimation.moments.weighted && specification.instruments === undefined,
+        },
+      }),
     // The volume is given, as Laitinen had it in this very system: theory makes it independent of the errors.
     ...(specification.form === "rotterdam" && { linear: { exact: !estimation.moments.weighted } }),
   });

@@ -1,5 +1,6 @@
 import { symmetricEigen } from "../../../../shared/numerics/eigen.ts";
 import { type Matrix, zeros } from "../../../../shared/numerics/matrix.ts";
+import type { Slopes } from "../../../../shared/systems/demand-system.ts";
 
 /**
  * A negative semidefinite matrix whose rows sum to zero, K = −B B', B = E L (n × r), with L lower triangular
@@ -67,4 +68,11 @@ function lowerTriangular(factor: Matrix): Matrix {
     }
   }
   return turned;
+}
+
+/** K in share form, μ_ij − w_i δ_ij + (w_i + μ_i) w_j: what is to be made negative semidefinite. */
+export function compensatedResponses({ shares, total, prices }: Slopes): Matrix {
+  return prices.map((row, i) =>
+    row.map((slope, j) => slope + (shares[i] + total[i]) * shares[j] - (i === j ? shares[i] : 0)),
+  );
 }
