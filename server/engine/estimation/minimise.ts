@@ -93,8 +93,8 @@ export function minimise(
     largestStep = relativeStep(estimation.form, state.free, step);
     const largestGradient =
       gradient.reduce((most, value) => Math.max(most, Math.abs(value)), 0) / estimation.moments.rows;
-    const stalled =
-      previous < 1e-6 && largestStep > 0.5 * previous && Math.abs(slope) < 1e-12 * estimation.moments.rows;
+    // A step that shrinks by a third each time is slow, not stalled.
+    const stalled = previous < 1e-6 && largestStep > 0.9 * previous && Math.abs(slope) < 1e-12 * sizeOf(weighted);
     if (largestStep <= tolerance || stalled) {
       if (factor.dependent.length > 0) refuseNotIdentified(estimation, factor);
       const free = state.free.map((value, f) => value + step[f]);
@@ -132,6 +132,11 @@ export function minimise(
       control.progress(spoken);
     }
   }
+}
+
+/** ê'ê: what the squares to be saved by a step are compared with; that of rounding where there are no residuals. */
+function sizeOf(weighted: Columns): number {
+  return Math.max(dot(weighted.values, weighted.values), 1e-14 * weighted.rows);
 }
 
 /** 1 + ln 2π: what a normal equation adds to −2 lnL/T beside ln|Σ̂|. */
