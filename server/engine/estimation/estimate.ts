@@ -61,7 +61,10 @@ export function estimateSystem(
   const unbent = { estimation: linear, solution: solve(specification, system, size, linear, control) };
   const { estimation, solution, curvature } = imposeCurvature(specification, system, size, unbent, curvatureAt, control);
   const source = () => sourceAt(data, momentsRequest(specification, data), system.moments, size, solution.theta);
-  const inference = covarianceOfEstimates({ specification, data, size, estimation, solution, source }, control);
+  const inference = covarianceOfEstimates(
+    { specification, data, size, estimation, solution, source, ...(curvatureAt && { curvatureAt }) },
+    control,
+  );
   const { covariance } = inference;
   // What the first steps add stands after the coefficients of the system itself.
   const own = SYSTEMS[specification.form].layout(size).length;

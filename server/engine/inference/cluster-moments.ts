@@ -41,7 +41,8 @@ export function clusterMoments(
 ): ClusterMoments {
   const clusters = starts.length - 1;
   const width = 16 * tiles.tiles;
-  const sums = new Float64Array(clusters * width);
+  // Threads that estimate replicates read the same sums.
+  const sums = new Float64Array(new SharedArrayBuffer(8 * clusters * width));
   const weights = new Float64Array(clusters);
   const { block, fill } = termBlock(source, reduction.whitening, reduction.whitened);
   for (let cluster = 0; cluster < clusters; cluster++) {

@@ -2,6 +2,7 @@ import type { BootstrapSpecification, ClustersFinding } from "../../../../shared
 import type { SystemSpecification } from "../../../../shared/schemas/system.ts";
 import type { SystemSize } from "../../../../shared/systems/demand-system.ts";
 import type { PreparedData } from "../../columns/prepared-data.ts";
+import type { CurvaturePoint } from "../../estimation/curvature/impose.ts";
 import type { Estimation } from "../../estimation/estimation.ts";
 import type { Solution } from "../../estimation/minimise.ts";
 import type { MomentSource } from "../../estimation/moment-source.ts";
@@ -26,6 +27,8 @@ export interface Fitted {
   readonly solution: Solution;
   /** The rows of the equations, with terms that move with θ as they are at the solution. */
   source(): MomentSource;
+  /** Where negativity is imposed, if it is. */
+  readonly curvatureAt?: CurvaturePoint;
 }
 
 /**
@@ -53,6 +56,7 @@ export function replicateWork(
     theta: solution.theta,
     sampling,
     drawable,
+    ...(fitted.curvatureAt && { curvatureAt: fitted.curvatureAt }),
   };
   return { work, ...(clusters && { clusters }) };
 }

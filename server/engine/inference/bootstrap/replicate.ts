@@ -2,6 +2,7 @@ import type { SystemSpecification } from "../../../../shared/schemas/system.ts";
 import type { SystemSize } from "../../../../shared/systems/demand-system.ts";
 import type { PreparedData } from "../../columns/prepared-data.ts";
 import { systemForm } from "../../estimation/coefficient-form.ts";
+import { type CurvaturePoint, imposeCurvature } from "../../estimation/curvature/impose.ts";
 import type { Estimation } from "../../estimation/estimation.ts";
 import { locatable } from "../../estimation/local-moments.ts";
 import type { MomentSource } from "../../estimation/moment-source.ts";
@@ -43,6 +44,7 @@ export interface ReplicateWork {
   readonly theta: readonly number[];
   readonly sampling: Sampling;
   readonly drawable: Drawable;
+  readonly curvatureAt?: CurvaturePoint;
 }
 
 /** θ* of a replicate, or why it has none. */
@@ -98,14 +100,15 @@ function rowsOfClusters(drawn: Int32Array, starts: Int32Array): Int32Array {
 
 /** θ* by the estimator of the specification from the moments of a drawn sample. Errors: as those of estimating. */
 function reestimate(
-  { specification, data, size, equations, coefficientLabels, theta }: ReplicateWork,
+  { specification, data, size, equations, coefficientLabels, theta, curvatureAt }: ReplicateWork,
   moments: Moments,
   control: RunControl,
 ): number[] {
   const system = specifiedSystem(specification, data);
   const form = systemForm(system, size, specification.impose);
   const estimation: Estimation = { moments, form, equations, coefficientLabels };
-  return solveNear(theta, specification, system, size, estimation, control).theta;
+  const fit = { estimation, solution: solveNear(theta, specification, system, size, estimation, control) };
+  return imposeCurvature(specification, system, size, fit, curvatureAt, control).solution.theta;
 }
 
 /** θ* from the rows drawn, first steps included. Errors: as those of estimating. */
