@@ -9,7 +9,7 @@ import { type ResolvedCell, resolveParsed } from "../../shared/study/resolve.ts"
 import { placed } from "../../shared/study/states.ts";
 import { parseStudyFile } from "../../shared/study/study-file.ts";
 import { sortByReading } from "../../shared/study/topology.ts";
-import { runData, runSlutsky, runSystem, runTests } from "../engine/cells/index.ts";
+import { runData, runElasticities, runSlutsky, runSystem, runTests } from "../engine/cells/index.ts";
 import type { PreparedData, UploadTable } from "../engine/columns/prepared-data.ts";
 import { readCsv } from "../engine/columns/read-csv.ts";
 import { Refusal } from "../engine/refusal.ts";
@@ -178,7 +178,9 @@ function runCell(
     const tested = asked?.kind === "system" && system?.kind === "system" && { specification: asked, finding: system };
     return runTests(specification, data, tested || undefined, control);
   }
-  if (specification?.kind !== "slutsky" || system?.kind !== "system") throw new Error(`${name} has no specification`);
+  if (system?.kind !== "system") throw new Error(`${name} has no specification`);
+  if (specification?.kind === "elasticities") return runElasticities(specification, system, data, control);
+  if (specification?.kind !== "slutsky") throw new Error(`${name} has no specification`);
   return runSlutsky(specification, system, data, control);
 }
 

@@ -3,7 +3,7 @@ import type { Finding } from "../../shared/schemas/cell.ts";
 import { type SystemFinding, systemFinding } from "../../shared/schemas/system.ts";
 import type { Database } from "../db/client.ts";
 import { findings } from "../db/schema/findings.ts";
-import { runData, runSlutsky, runSystem, runTests } from "../engine/cells/index.ts";
+import { runData, runElasticities, runSlutsky, runSystem, runTests } from "../engine/cells/index.ts";
 import type { PreparedData, UploadTable } from "../engine/columns/prepared-data.ts";
 import { Refusal } from "../engine/refusal.ts";
 import type { RunControl } from "../engine/run.ts";
@@ -37,7 +37,9 @@ function find(job: CellJob, db: Database, memory: WorkerMemory, control: RunCont
     const system = systemSpecification && { specification: systemSpecification, finding: storedSystem(job, db) };
     return runTests(specification, data, system, control);
   }
-  return runSlutsky(specification, storedSystem(job, db), data, control);
+  const system = storedSystem(job, db);
+  if (specification.kind === "elasticities") return runElasticities(specification, system, data, control);
+  return runSlutsky(specification, system, data, control);
 }
 
 function prepared({ data }: CellJob, db: Database, memory: WorkerMemory, control: RunControl): PreparedData {

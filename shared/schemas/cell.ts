@@ -1,11 +1,12 @@
 import { z } from "zod";
 import { dataFinding, dataSpecification } from "./data.ts";
+import { elasticitiesFinding, elasticitiesSpecification } from "./elasticities.ts";
 import { slutskyFinding, slutskySpecification } from "./slutsky.ts";
 import { systemFinding, systemSpecification } from "./system.ts";
 import { testsFinding, testsSpecification } from "./tests.ts";
 
 /** The kinds of cell. A kind is added here, with its schema file, its engine file and its view. */
-export const CELL_KINDS = ["data", "system", "tests", "slutsky"] as const;
+export const CELL_KINDS = ["data", "system", "tests", "elasticities", "slutsky"] as const;
 export const cellKind = z.enum(CELL_KINDS);
 export type CellKind = z.infer<typeof cellKind>;
 
@@ -13,6 +14,7 @@ export const cellSpecification = z.discriminatedUnion("kind", [
   dataSpecification,
   systemSpecification,
   testsSpecification,
+  elasticitiesSpecification,
   slutskySpecification,
 ]);
 export type CellSpecification = z.infer<typeof cellSpecification>;
@@ -21,10 +23,17 @@ export const SPECIFICATIONS = {
   data: dataSpecification,
   system: systemSpecification,
   tests: testsSpecification,
+  elasticities: elasticitiesSpecification,
   slutsky: slutskySpecification,
 } as const;
 
-export const finding = z.discriminatedUnion("kind", [dataFinding, systemFinding, testsFinding, slutskyFinding]);
+export const finding = z.discriminatedUnion("kind", [
+  dataFinding,
+  systemFinding,
+  testsFinding,
+  elasticitiesFinding,
+  slutskyFinding,
+]);
 export type Finding = z.infer<typeof finding>;
 export type FindingOf<K extends CellKind> = Extract<Finding, { kind: K }>;
 export type SpecificationOf<K extends CellKind> = Extract<CellSpecification, { kind: K }>;

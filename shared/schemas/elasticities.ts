@@ -1,8 +1,9 @@
 import { z } from "zod";
 import { PRICE_INDEX_NAMES, SYSTEM_NAMES } from "../systems/names.ts";
+import { theoryChecks } from "./checks.ts";
 import { cellName, columnName, count, fingerprint, finite, goodName, matrix, vector } from "./primitives.ts";
 import { pointSpecification } from "./slutsky.ts";
-import { namedPoint } from "./system.ts";
+import { namedPoint, restrictionTest } from "./system.ts";
 
 /** What stands for total expenditure where a column is asked for. */
 export const TOTAL_EXPENDITURE = "total expenditure";
@@ -109,6 +110,9 @@ export const elasticitiesFinding = z.strictObject({
   /** What parts the rows; absent of one point, and over all rows. */
   groupedBy: groupsSpecification.optional(),
   groups: z.array(elasticityGroup).min(1),
+  /** What theory says: at the one point, or, of several groups, where the system's own checks stand. */
+  checks: theoryChecks,
+  tests: z.array(restrictionTest),
   without: z.array(undefinedGroup),
   /** Over rows: how many of them the standard errors' derivatives were taken at, where not at all. */
   derivativeRows: z.strictObject({ used: count, of: count }).optional(),

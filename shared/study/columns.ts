@@ -1,5 +1,6 @@
 import type { CellSpecification } from "../schemas/cell.ts";
 import type { DataSpecification } from "../schemas/data.ts";
+import { type ElasticitiesSpecification, TOTAL_EXPENDITURE } from "../schemas/elasticities.ts";
 import type { Problem } from "../schemas/problem.ts";
 import type { Upload } from "../schemas/resources.ts";
 import type { SlutskySpecification } from "../schemas/slutsky.ts";
@@ -29,7 +30,8 @@ export function columnProblems(context: Context): Problem[] {
   const { specification } = context;
   if (specification.kind === "data") return dataProblems(specification, context);
   if (specification.kind === "system") return systemProblems(specification, context);
-  return specification.kind === "slutsky" ? slutskyProblems(specification, context) : [];
+  if (specification.kind === "slutsky") return priceProblems(specification.at, specification.system, context);
+  return specification.kind === "elasticities" ? elasticitiesProblems(specification, context) : [];
 }
 
 function teller(places: Places) {
@@ -109,11 +111,41 @@ function noGood(owner: string, good: string, goods: readonly string[]): [string,
   return [`${owner} has no good ${good}. ${there}.`, nearest];
 }
 
-function slutskyProblems(specification: SlutskySpecification, context: Context): Problem[] {
-  const { at } = specification;
+function elasticitiesProblems(specification: ElasticitiesSpecification, context: Context): Problem[] {
+  const { at, groups, index, system: name } = specification;
+  const tell = teller(context.places);
+  const system = context.specifications.get(name);
+  const problems = at === undefined ? [] : priceProblems(at, name, context);
+  if (system?.kind === "system" && index === "exact" && (system.form !== "la-aids" || system.index !== "stone")) {
+    const found = system.form === "la-aids" ? `la-aids with ${system.index ?? "tornqvist"}` : system.form;
+    problems.push(
+      tell(
+        ["index"],
+        `exact lets the weights of Stone's index in la-aids move; ${name} is ${found}. Write held.`,
+        "held",
+      ),
+    );
+  }
+  const data = system?.kind === "system" ? context.specifications.get(system.data) : undefined;
+  const upload = data?.kind === "data" ? context.uploads.find((one) => one.name === data.upload) : undefined;
+  if (groups === undefined || data?.kind !== "data" || upload === undefined || groups.of === TOTAL_EXPENDITURE) {
+    return problems;
+  }
+  const column = upload.columns.find((one) => one.name === groups.of);
+  const derived = Object.keys(data.derive ?? {});
+  const names = [...upload.columns.map((one) => one.name), ...derived, TOTAL_EXPENDITURE];
+  if (!names.includes(groups.of)) problems.push(tell(["groups", "of"], ...noColumn(data.upload, groups.of, names)));
+  if (groups.quantiles !== undefined && column?.type === "text" && !derived.includes(groups.of)) {
+    problems.push(tell(["groups", "quantiles"], `${groups.of} is a text column and has no quantiles.`));
+  }
+  return problems;
+}
+
+/** Prices of one's own at which a system is evaluated: a price for each of its goods and no other. */
+function priceProblems(at: SlutskySpecification["at"], systemName: string, context: Context): Problem[] {
   if (typeof at === "string" || !("prices" in at)) return [];
   const tell = teller(context.places);
-  const system = context.specifications.get(specification.system);
+  const system = context.specifications.get(systemName);
   const data = system?.kind === "system" ? context.specifications.get(system.data) : undefined;
   if (system?.kind !== "system" || data?.kind !== "data") return [];
   const goods = Object.keys(data.goods);

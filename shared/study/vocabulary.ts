@@ -23,6 +23,7 @@ export const REFERENCES: { readonly [K in CellKind]: Readonly<Record<string, Cel
   data: {},
   system: { data: "data" },
   tests: { system: "system", data: "data" },
+  elasticities: { system: "system" },
   slutsky: { system: "system" },
 };
 
@@ -72,6 +73,15 @@ const KEYS: { readonly [K in CellKind]: Readonly<Record<KeysOf<K>, Told>> } = {
     of: ["which hypotheses; all that the system admits unless some are named"],
     level: ["the probability below which a test rejects; 0.05 unless said otherwise"],
   },
+  elasticities: {
+    system: ["the name of the system cell it evaluates", "system"],
+    at: ["one point: base point, mean, a row, a quantile of expenditure, or prices and x of one's own"],
+    groups: ["groups of rows: by a column, or by total expenditure"],
+    over: ["at the mean point, or over the rows, each weighted by what it spends"],
+    shares: ["which shares stand in the formulas: predicted by the system, or observed means"],
+    index: ["of Stone's index in la-aids: its weights held, or moving with the shares"],
+    level: ["the level of confidence of intervals and classes; 0.95 unless said otherwise"],
+  },
   slutsky: {
     system: ["the name of the system cell it evaluates", "system"],
     at: ["where: base point, mean, a row, a quantile of expenditure, or prices and x of one's own"],
@@ -83,6 +93,8 @@ const INNER: Readonly<Record<string, Told>> = {
   price: ["the column of its price", "numeric column"],
   quantity: ["the column of its quantity", "numeric column"],
   expenditure: ["the column of what was spent on it", "numeric column"],
+  of: ["the column whose values part the rows, or total expenditure", "column"],
+  quantiles: ["so many groups of equal weight, lowest first: 5 for fifths"],
   row: ["a row of the upload, the first after the header being 1"],
   x: ["total expenditure: quantile 0.9 at mean prices, or an amount beside prices"],
   prices: ["the price of each good, in the units uploaded"],

@@ -2,6 +2,7 @@ import type { CellKind, FindingOf } from "../../shared/schemas/cell.ts";
 import { coefficientTable } from "../../shared/tables/coefficients.ts";
 import { dataDescriptionTable } from "../../shared/tables/data-description.ts";
 import { eigenvalueTable } from "../../shared/tables/eigenvalues.ts";
+import { elasticityTables } from "../../shared/tables/elasticities.ts";
 import { equationsOf, equationTestsTable } from "../../shared/tables/equation-tests.ts";
 import { revealedOf, revealedTable } from "../../shared/tables/revealed-preference.ts";
 import { rowAccountingTable } from "../../shared/tables/row-accounting.ts";
@@ -10,6 +11,8 @@ import type { LabelledTable } from "../../shared/tables/table.ts";
 import { testsTable } from "../../shared/tables/tests.ts";
 import { DataForm } from "./data/form.tsx";
 import { DataBand, DataOpen } from "./data/view.tsx";
+import { ElasticitiesForm } from "./elasticities/form.tsx";
+import { ElasticitiesBand, ElasticitiesOpen } from "./elasticities/view.tsx";
 import { SlutskyForm } from "./slutsky/form.tsx";
 import { HowChecked } from "./slutsky/how-checked.tsx";
 import { SlutskyBand, SlutskyOpen } from "./slutsky/view.tsx";
@@ -38,6 +41,12 @@ export const CELL_VIEWS: { readonly [K in CellKind]: CellView<K> } = {
     Band: TestsBand,
     Open: TestsOpen,
     tables: testsTables,
+  },
+  elasticities: {
+    Form: ElasticitiesForm,
+    Band: ElasticitiesBand,
+    Open: ElasticitiesOpen,
+    tables: elasticityTables,
   },
   slutsky: {
     Form: SlutskyForm,

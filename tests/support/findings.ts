@@ -1,5 +1,6 @@
 import type { FindingOf } from "../../shared/schemas/cell.ts";
 import { dataFinding } from "../../shared/schemas/data.ts";
+import { elasticitiesFinding } from "../../shared/schemas/elasticities.ts";
 import { slutskyFinding } from "../../shared/schemas/slutsky.ts";
 import { systemFinding } from "../../shared/schemas/system.ts";
 import { testsFinding } from "../../shared/schemas/tests.ts";
@@ -39,6 +40,7 @@ export function exampleFindings(): {
   data: FindingOf<"data">;
   system: FindingOf<"system">;
   tests: FindingOf<"tests">;
+  elasticities: FindingOf<"elasticities">;
   slutsky: FindingOf<"slutsky">;
 } {
   const good = {
@@ -127,6 +129,47 @@ export function exampleFindings(): {
         },
         { hypothesis: "demographics", because: "nothing to test", reason: "The system names no demographics." },
       ],
+    }),
+    elasticities: elasticitiesFinding.parse({
+      kind: "elasticities",
+      dataFingerprint: sha("d"),
+      form: "aids",
+      goods: fitted.goods,
+      over: "means",
+      shares: "predicted",
+      index: "held",
+      level: 0.95,
+      intervals: "normal",
+      groups: [
+        {
+          name: "mean",
+          total: 80,
+          point,
+          shares: [0.4, 0.6],
+          expenditure: { values: [1, 1], errors: [0, 0], low: [1, 1], high: [1, 1] },
+          uncompensated: { values: zero, errors: zero, low: zero, high: zero },
+          compensated: { values: zero, errors: zero, low: zero, high: zero },
+          classes: fitted.goods.map((good) => ({
+            good,
+            kind: "undecided",
+            normal: "yes",
+            incomeNeutral: false,
+            giffen: "no",
+          })),
+          net: [
+            [null, "undecided"],
+            ["undecided", null],
+          ],
+          gross: [
+            [null, "undecided"],
+            ["undecided", null],
+          ],
+          notPositive: [],
+        },
+      ],
+      checks,
+      tests: [],
+      without: [],
     }),
     slutsky: slutskyFinding.parse({
       kind: "slutsky",

@@ -1,6 +1,9 @@
+import { theoryChecksAt } from "../../../shared/economics/checks.ts";
+import type { TheoryChecks } from "../../../shared/schemas/checks.ts";
 import {
   type ElasticitiesFinding,
   type ElasticitiesSpecification,
+  type ElasticityGroup,
   elasticitiesFinding,
 } from "../../../shared/schemas/elasticities.ts";
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
@@ -30,7 +33,7 @@ export function runElasticities(
   const { groups: groupedBy, over, shares, index, level } = specification;
   if (index === "exact" && fitted.index !== "stone") throw new Refusal([{ sentence: MOVES, key: ["index"] }]);
   const { groups, derivativeRows } = evaluated(specification, system, data, control);
-  const found = groups.filter((group) => !("undefined" in group));
+  const found = groups.filter((group): group is ElasticityGroup => !("undefined" in group));
   const without = groups.filter((group) => "undefined" in group);
   if (found.length === 0) throw new Refusal(without.map((group) => refused(group, groupedBy !== undefined)));
   return elasticitiesFinding.parse({
@@ -46,6 +49,8 @@ export function runElasticities(
     intervals: "normal",
     ...(groupedBy && { groupedBy }),
     groups: found,
+    checks: checksOf(system, found),
+    tests: system.tests,
     without,
     ...(derivativeRows && derivativeRows.used < derivativeRows.of && { derivativeRows }),
   });
@@ -72,6 +77,13 @@ function evaluated(
       return atGroupMean(group, specification, system, data);
     }),
   };
+}
+
+/** At the one point of a cell that has one; the system's own where there are groups. */
+function checksOf({ fitted, checks }: SystemFinding, groups: readonly ElasticityGroup[]): TheoryChecks {
+  const [{ name, rows, point }] = groups;
+  if (groups.length > 1 || rows !== undefined || point === undefined) return checks;
+  return { ...theoryChecksAt(fitted, point, name), ...(checks.sample && { sample: checks.sample }) };
 }
 
 function allRows({ rows }: PreparedData): RowGroup {

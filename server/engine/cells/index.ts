@@ -1,4 +1,5 @@
 export { runData } from "./data.ts";
+export { runElasticities } from "./elasticities.ts";
 export { runSlutsky } from "./slutsky.ts";
 export { runSystem } from "./system.ts";
 export { runTests } from "./tests.ts";

@@ -4,6 +4,7 @@ const SAYS: Readonly<Record<CellKind, string>> = {
   data: "a file of purchases, and what its columns mean",
   system: "share equations estimated on data",
   tests: "what the data say of theory, and of the system’s own terms",
+  elasticities: "elasticities at a point, by group or over rows, with intervals",
   slutsky: "the matrix of compensated effects, checked",
 };
 

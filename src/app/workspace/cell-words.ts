@@ -10,6 +10,7 @@ const FIRST_NAMES: Readonly<Record<CellKind, string>> = {
   data: "purchases",
   system: "base",
   tests: "laws",
+  elasticities: "elasticities",
   slutsky: "matrix",
 };
 
@@ -28,6 +29,7 @@ export function freshSource(kind: CellKind, cells: readonly CellSource[], upload
     const system = last("system");
     return system || !last("data") ? `system: ${system}\n` : `data: ${last("data")}\n`;
   }
+  if (kind === "elasticities") return `system: ${last("system")}\nat: mean\n`;
   if (kind === "slutsky") return `system: ${last("system")}\nat: base point\nform: share\n`;
   const free = uploads.filter(
     ({ name }) => !cells.some(({ kind, source }) => kind === "data" && source.includes(name)),
@@ -64,11 +66,21 @@ export function sourceInALine(kind: string, source: string): string {
   if (kind === "tests") {
     return [text("system") || text("data") || "no system yet", listed(written.of)].filter(Boolean).join("; ");
   }
+  if (kind === "elasticities") return elasticitiesInALine(written, text);
   if (kind === "slutsky") {
     const at = typeof written.at === "object" && written.at ? inWords(written.at) : text("at") || "base point";
     return `${text("system") || "no system yet"} at ${at}; ${text("form") || "share"} form`;
   }
   return source.split("\n", 1)[0];
+}
+
+function elasticitiesInALine(written: Record<string, unknown>, text: (key: string) => string): string {
+  const { at, groups } = written;
+  const isRows = text("over") === "rows";
+  const by = typeof groups === "object" && groups && "of" in groups ? ` by ${groups.of}` : "";
+  const where = typeof at === "object" && at ? inWords(at) : text("at") || "mean";
+  const rest = by || isRows ? `${by}${isRows ? " over rows" : " at means"}` : ` at ${where}`;
+  return `${text("system") || "no system yet"}${rest}`;
 }
 
 function inWords(at: object): string {

@@ -1,0 +1,40 @@
+import type { ElasticitiesFinding, ElasticityGroup } from "../../../shared/schemas/elasticities.ts";
+import { capital } from "../../../shared/study/words.ts";
+import { BY_GOOD, byGood } from "../../../shared/tables/elasticities.ts";
+import { whereOf } from "../../../shared/tables/elasticity-words.ts";
+import { DECIMALS, printFixed } from "../../../shared/tables/numbers.ts";
+import { Table } from "../../components/table.tsx";
+import { type Below, ElasticityEstimate } from "./one-estimate.tsx";
+import { ClassWord } from "./shapes.tsx";
+
+interface GoodsProps {
+  readonly finding: ElasticitiesFinding;
+  readonly group: ElasticityGroup;
+  readonly below: Below;
+}
+
+/** One group, a line for each good: its share, its elasticities, and what it is. */
+export function GoodsView({ finding, group, below }: GoodsProps) {
+  return (
+    <Table
+      caption={`Elasticities ${whereOf(finding, group.name)}`}
+      heads={[
+        { key: "good", content: "Good" },
+        { key: "share", content: "Share" },
+        { key: "expenditure", content: "Expenditure" },
+        { key: "own price", content: "Own price" },
+        { key: "own price, compensated", content: "Compensated" },
+        { key: "class", content: "Which makes it", align: "left" },
+      ]}
+      lines={finding.goods.map((good, i) => ({
+        key: good,
+        head: capital(good),
+        cells: [
+          printFixed(group.shares[i], DECIMALS.share),
+          ...BY_GOOD.map((which) => <ElasticityEstimate key={which} one={byGood(group, which, i)} below={below} />),
+          <ClassWord key="class" kind={group.classes[i].kind} />,
+        ],
+      }))}
+    />
+  );
+}

@@ -1,0 +1,73 @@
+import { useState } from "react";
+import { type ByGood, goodsTable, groupsTable } from "../../../shared/tables/elasticities.ts";
+import { elasticitiesSentence, whereOf } from "../../../shared/tables/elasticity-words.ts";
+import { capital } from "../../../shared/tables/phrases.ts";
+import { verdictsOf } from "../../../shared/tables/verdicts.ts";
+import { VerdictStrip } from "../../components/verdict-strip.tsx";
+import { CopyTable } from "../copy-table.tsx";
+import { Headline, OpenHead } from "../headline.tsx";
+import type { BandProps, OpenProps } from "../types.ts";
+import { stripOf } from "../verdicts.ts";
+import { ClassesView } from "./classes-view.tsx";
+import { GoodsView } from "./goods-view.tsx";
+import { ByGoodSwitch, GroupsView } from "./groups-view.tsx";
+import { ElasticityNotes } from "./notes.tsx";
+import { type Below, BelowSwitch } from "./one-estimate.tsx";
+import { PricesView } from "./prices-view.tsx";
+
+const LABEL = "What theory says of the system";
+
+/** Elasticities in their band: sentence, verdicts, one table, conventions. */
+export function ElasticitiesBand({ finding }: BandProps<"elasticities">) {
+  const [which, setWhich] = useState<ByGood>("expenditure");
+  const [first] = finding.groups;
+  return (
+    <div className="space-y-3">
+      <Headline sentence={elasticitiesSentence(finding)} />
+      <VerdictStrip label={LABEL} verdicts={stripOf(verdictsOf(finding.checks, finding.tests))} />
+      {finding.groups.length === 1 ? (
+        <GoodsView finding={finding} group={first} below="errors" />
+      ) : (
+        <div>
+          <div className="mb-1 flex justify-end">
+            <ByGoodSwitch which={which} onChange={setWhich} />
+          </div>
+          <GroupsView finding={finding} which={which} below="errors" />
+        </div>
+      )}
+      <ElasticityNotes finding={finding} />
+    </div>
+  );
+}
+
+/** Elasticities in full: groups compared, then one group's goods, price elasticities and classes. */
+export function ElasticitiesOpen({ finding }: OpenProps<"elasticities">) {
+  const [which, setWhich] = useState<ByGood>("expenditure");
+  const [below, setBelow] = useState<Below>("errors");
+  const [chosen, setChosen] = useState(0);
+  const several = finding.groups.length > 1;
+  const group = finding.groups[Math.min(chosen, finding.groups.length - 1)];
+  return (
+    <div className="space-y-6">
+      <OpenHead sentence={elasticitiesSentence(finding)}>
+        <CopyTable table={several ? groupsTable(finding, which) : goodsTable(finding, group)} />
+      </OpenHead>
+      <VerdictStrip label={LABEL} verdicts={stripOf(verdictsOf(finding.checks, finding.tests, { detail: true }))} />
+      <div className="flex flex-wrap items-baseline justify-between gap-x-8 gap-y-1">
+        {several && <ByGoodSwitch which={which} onChange={setWhich} />}
+        <BelowSwitch below={below} onChange={setBelow} />
+      </div>
+      {several && <GroupsView finding={finding} which={which} below={below} chosen={chosen} onChoose={setChosen} />}
+      <section aria-labelledby="goods-of-group" className="space-y-2" aria-live="polite">
+        <h2 id="goods-of-group" className="type-section">
+          {capital(whereOf(finding, group.name))}
+        </h2>
+        <GoodsView finding={finding} group={group} below={below} />
+        {several && <CopyTable table={goodsTable(finding, group)} />}
+      </section>
+      <PricesView finding={finding} group={group} below={below} />
+      <ClassesView group={group} />
+      <ElasticityNotes finding={finding} />
+    </div>
+  );
+}
