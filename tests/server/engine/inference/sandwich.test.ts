@@ -38,7 +38,7 @@ function survey(form: SystemName, weighted: boolean, rows = 240, goods = 4): Pre
 }
 
 const shifting = (data: PreparedData) => [...data.numeric.keys()].filter((name) => name !== "village");
-const fit = (data: PreparedData, specification: object) =>
+const fitOf = (data: PreparedData, specification: object) =>
   estimated(data, { impose: BOTH, demographics: shifting(data), ...specification }) as SystemFinding;
 const flat = (matrix: readonly (readonly number[])[]) => matrix.flat();
 const scale = (matrix: readonly (readonly number[])[]) => Math.max(...matrix.map((row, a) => row[a]));
@@ -56,11 +56,11 @@ describe("the sandwich against scores of every row from the system's own formula
   it.each(cases)("$form, weighted: $weighted", ({ form, weighted }) => {
     const data = survey(form, weighted);
     const impose = form === "les" ? [] : BOTH;
-    const robust = fit(data, { form, impose, ...HETEROSKEDASTIC });
+    const robust = fitOf(data, { form, impose, ...HETEROSKEDASTIC });
     expect(robust.standardErrors).toBe("heteroskedastic");
     const rows = Int32Array.from({ length: data.rows }, (_, t) => t);
     expect(apart(robust.fitted.covariance, slowSandwich(robust, data, rows))).toBeLessThan(1e-9);
-    const clustered = fit(data, { form, impose, ...CLUSTERED });
+    const clustered = fitOf(data, { form, impose, ...CLUSTERED });
     expect(clustered.clusters).toEqual({ column: "village", count: 24 });
     const villages = data.numeric.get("village")!;
     expect(apart(clustered.fitted.covariance, slowSandwich(clustered, data, villages))).toBeLessThan(1e-9);
@@ -98,9 +98,9 @@ describe("what the sandwich does not depend on", () => {
 
   it.each(["maximum likelihood", "seemingly unrelated", "least squares"])("the dropped good: %s", (estimator) => {
     for (const kind of kinds) {
-      const last = fit(data, { form: "la-aids", estimator, ...kind });
+      const last = fitOf(data, { form: "la-aids", estimator, ...kind });
       for (const dropped of data.goods.slice(0, -1)) {
-        const other = fit(data, { form: "la-aids", estimator, dropped, ...kind });
+        const other = fitOf(data, { form: "la-aids", estimator, dropped, ...kind });
         expect(apart(other.fitted.covariance, last.fitted.covariance)).toBeLessThan(1e-9);
       }
     }
@@ -121,16 +121,18 @@ describe("what the sandwich does not depend on", () => {
       numeric: new Map([...data.numeric].map(([name, column]) => [name, permuted(column)])),
     };
     for (const kind of kinds) {
-      const one = fit(data, { form: "aids", ...kind });
-      expect(apart(fit(other, { form: "aids", ...kind }).fitted.covariance, one.fitted.covariance)).toBeLessThan(1e-9);
+      const one = fitOf(data, { form: "aids", ...kind });
+      expect(apart(fitOf(other, { form: "aids", ...kind }).fitted.covariance, one.fitted.covariance)).toBeLessThan(
+        1e-9,
+      );
     }
   });
 
   it("whether rows of one each are called clusters", () => {
     const own = { ...data, numeric: new Map([...data.numeric, ["own", data.logTotal.map((_, t) => t)]]) };
     const demographics = shifting(data);
-    const rows = fit(own, { form: "aids", demographics, ...HETEROSKEDASTIC });
-    const clusters = fit(own, { form: "aids", demographics, "standard errors": { cluster: "own" } });
+    const rows = fitOf(own, { form: "aids", demographics, ...HETEROSKEDASTIC });
+    const clusters = fitOf(own, { form: "aids", demographics, "standard errors": { cluster: "own" } });
     expect(apart(clusters.fitted.covariance, rows.fitted.covariance)).toBeLessThan(1e-9);
   });
 });
@@ -140,7 +142,7 @@ describe("covariances of few clusters", () => {
     const data = survey("aids", false);
     const thirds = data.logTotal.map((_, t) => t % 3);
     const few = { ...data, numeric: new Map([...data.numeric, ["third", thirds]]) };
-    const found = fit(few, { form: "aids", demographics: shifting(data), "standard errors": { cluster: "third" } });
+    const found = fitOf(few, { form: "aids", demographics: shifting(data), "standard errors": { cluster: "third" } });
     expect(found.clusters).toEqual({ column: "third", count: 3 });
     for (const { standardError } of found.coefficients) expect(standardError).toBeGreaterThanOrEqual(0);
   });
@@ -149,7 +151,7 @@ describe("covariances of few clusters", () => {
     const data = survey("aids", false);
     const one = { ...data, numeric: new Map([...data.numeric, ["country", data.logTotal.map(() => 1)]]) };
     const problem = problemOf(() =>
-      fit(one, { form: "aids", demographics: shifting(data), "standard errors": { cluster: "country" } }),
+      fitOf(one, { form: "aids", demographics: shifting(data), "standard errors": { cluster: "country" } }),
     );
     expect(problem).toMatchObject({ key: ["standard errors", "cluster"], column: "country" });
     expect(problem.sentence).toMatch(/240 rows: 1 cluster.* at least 2/);
@@ -157,7 +159,7 @@ describe("covariances of few clusters", () => {
 
   it("a column that is not there is refused with the nearest", () => {
     const data = survey("aids", false);
-    const find = () => fit(data, { form: "aids", "standard errors": { cluster: "vilage" } });
+    const find = () => fitOf(data, { form: "aids", "standard errors": { cluster: "vilage" } });
     expect(problemOf(find)).toMatchObject({ key: ["standard errors", "cluster"], nearest: "village" });
   });
 });
@@ -168,9 +170,9 @@ describe("weights", () => {
     const weights = data.weights!.map((_, t) => (t === 0 ? 1e6 : 1));
     const scaled = weights.map((weight) => (weight * data.rows) / (1e6 + data.rows - 1));
     expect(
-      fit({ ...data, weights: scaled }, { form: "la-aids", estimator: "least squares" }).effectiveRows,
+      fitOf({ ...data, weights: scaled }, { form: "la-aids", estimator: "least squares" }).effectiveRows,
     ).toBeCloseTo(1, 3);
-    expect(fit(survey("aids", false), { form: "la-aids" }).effectiveRows).toBeUndefined();
+    expect(fitOf(survey("aids", false), { form: "la-aids" }).effectiveRows).toBeUndefined();
   });
 });
 
