@@ -94,7 +94,7 @@ export const coefficient = z.strictObject({
 
 /** One test of a restriction. */
 export const restrictionTest = z.strictObject({
-  restriction: z.enum(["homogeneity", "symmetry given homogeneity"]),
+  restriction: z.enum(["homogeneity", "symmetry given homogeneity", "quadratic terms zero"]),
   statistic: finite,
   degreesOfFreedom: count,
   pValue: finite,
@@ -168,9 +168,13 @@ export const systemFinding = z.strictObject({
   /** Where prices are not normalised: by what the estimates depend on the units they were uploaded in, if they do. */
   unitsMatterBy: z.enum(["a fixed α₀", "Stone's index", "the lagged Stone index"]).optional(),
   freeCoefficients: count,
+  /** Of easi: what y stands for in the equations, and what the estimator's name means then. */
+  implicit: z.strictObject({ realExpenditure: z.enum(["exact", "approximate"]), method: z.string() }).optional(),
+  /** At the estimates; the largest there is only by maximum likelihood or what equals it. */
   logLikelihood: finite,
-  aic: finite,
-  bic: finite,
+  /** Absent where the likelihood is not at its maximum and another estimator was asked for. */
+  aic: finite.optional(),
+  bic: finite.optional(),
   convergence: z.strictObject({ iterations: count, gradient: finite, largestStep: finite, condition: finite }),
   /** By good, all n. */
   rSquared: vector,

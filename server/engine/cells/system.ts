@@ -56,7 +56,7 @@ export function runSystem(given: SystemSpecification, data: PreparedData, contro
 /** AIDS with α₀ fixed and Stone's index are not invariant to units (Moschini 1995, American Journal of Agricultural Economics 77). */
 function unitsMatter({ form, index }: SystemSpecification, data: PreparedData): Pick<SystemFinding, "unitsMatterBy"> {
   if (data.finding.normalise === "mean") return {};
-  if (form === "aids") return { unitsMatterBy: "a fixed α₀" };
+  if (form === "aids" || form === "quaids") return { unitsMatterBy: "a fixed α₀" };
   if (form !== "la-aids") return {};
   if (index === "lagged stone") return { unitsMatterBy: "the lagged Stone index" };
   return index === "stone" ? { unitsMatterBy: "Stone's index" } : {};
@@ -65,7 +65,7 @@ function unitsMatter({ form, index }: SystemSpecification, data: PreparedData): 
 /** Specifications on the same rows that need the same moments read the rows once between them. */
 const MOMENTS = new WeakMap<PreparedData, Map<string, Moments>>();
 
-function momentsOf(data: PreparedData, request: MomentsRequest, control: RunControl): Moments {
+export function momentsOf(data: PreparedData, request: MomentsRequest, control: RunControl): Moments {
   const kept = MOMENTS.get(data) ?? new Map<string, Moments>();
   MOMENTS.set(data, kept);
   const moments = kept.get(request.key) ?? accumulateMoments(data, request, control);

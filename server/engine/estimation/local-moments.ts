@@ -6,6 +6,9 @@ import type { MomentSource } from "./moment-source.ts";
 import { type LocalMoments, type Moments, type Reduction, reduceRows } from "./moments.ts";
 import { localRequest, type MomentsRequest, sourceOf } from "./request.ts";
 
+/** As many moments are kept as a fit and those nested in it pass through. */
+const MOST_KEPT = 8;
+
 /** A form whose terms move with θ. */
 type LocalForm = MomentForm & { readonly local: LocalColumns };
 
@@ -27,15 +30,18 @@ export function locatable(
 ): Moments {
   if (!hasLocalColumns(form) || nearby.local !== undefined) return nearby;
   const rows = localRows(data, request, form, size);
-  let last: { theta: readonly number[]; moments: Moments } | undefined;
+  const kept: { theta: readonly number[]; moments: Moments }[] = [];
   const local: LocalMoments = {
     nearby,
     at(theta, control) {
-      if (last === undefined || !sameNumbers(last.theta, theta)) {
-        last = { theta: [...theta], moments: reduceRows(rows.at(theta, control), rows.key, control, reduction) };
-      }
-      return last.moments;
+      const known = kept.find((place) => sameNumbers(place.theta, theta));
+      if (known !== undefined) return known.moments;
+      const moments = reduceRows(rows.at(theta, control), rows.key, control, reduction);
+      kept.unshift({ theta: [...theta], moments });
+      kept.length = Math.min(kept.length, MOST_KEPT);
+      return moments;
     },
+    kept: (theta) => kept.find((place) => nearTo(place.theta, theta, 1e-8))?.theta,
     residuals(theta, control) {
       return localResiduals(rows.at(theta, control), form.coefficients(theta, size), control);
     },
@@ -99,6 +105,11 @@ function fillColumns(
   }
 }
 
+/** Equal but for the rounding of θ = S φ + s under one set of restrictions and another. */
 function sameNumbers(left: readonly number[], right: readonly number[]): boolean {
-  return left.length === right.length && left.every((value, at) => value === right[at]);
+  return nearTo(left, right, 8 * Number.EPSILON);
+}
+
+function nearTo(left: readonly number[], right: readonly number[], within: number): boolean {
+  return left.every((value, at) => Math.abs(value - right[at]) <= within * (1 + Math.abs(value)));
 }

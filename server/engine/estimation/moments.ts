@@ -32,6 +32,8 @@ export interface LocalMoments {
   readonly nearby: Moments;
   /** One structured pass: the second moments of (Z(θ), W). Those of the θ asked for last are kept. */
   at(theta: readonly number[], control: RunControl): Moments;
+  /** θ of moments that are kept, where there are any within 1e-8 of `theta`. */
+  kept(theta: readonly number[]): readonly number[] | undefined;
   /** A light pass: a factor of the residuals of every equation, n × n. */
   residuals(theta: readonly number[], control: RunControl): Columns;
 }

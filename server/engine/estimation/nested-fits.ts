@@ -4,12 +4,19 @@ import type { RestrictionName } from "../../../shared/systems/names.ts";
 import type { NestedFits, RefusedFit } from "../inference/restriction-tests.ts";
 import { Refusal } from "../refusal.ts";
 import type { RunControl } from "../run.ts";
-import { systemForm } from "./coefficient-form.ts";
+import { expand, systemForm } from "./coefficient-form.ts";
 import type { Estimation } from "./estimation.ts";
 import { maximumLikelihood } from "./estimators.ts";
 import { fitMeasures } from "./fit-measures.ts";
 import { minimise, type Solution } from "./minimise.ts";
 import type { Moments } from "./moments.ts";
+import { fitNearby, nearbyEstimation } from "./start.ts";
+
+/**
+ * Where each iteration reads the rows, steps are carried this far for a likelihood alone: it errs by the square of
+ * what the next would have been.
+ */
+const FOR_LIKELIHOOD = 1e-6;
 
 interface Likelihood {
   readonly logLikelihood: number;
@@ -19,7 +26,7 @@ interface Likelihood {
 /** Likelihoods already found from the same moments, or why the data allow no such fit. */
 const known = new WeakMap<Moments, Map<string, Likelihood | RefusedFit>>();
 
-const NESTED: Readonly<Record<keyof NestedFits, readonly RestrictionName[]>> = {
+const NESTED: Readonly<Record<Exclude<keyof NestedFits, "quadratic">, readonly RestrictionName[]>> = {
   unrestricted: [],
   homogeneity: ["homogeneity"],
   symmetry: ["homogeneity", "symmetry"],
@@ -44,14 +51,40 @@ export function nestedFits(
       const form = systemForm(system, size, impose);
       const start = form.expand.places.map((place) => theta[place]);
       const nested: Estimation = { ...estimation, equations, form };
-      const solution = fromNearby(nested, start, control);
+      const solution = fromNearby(nested, start, control, FOR_LIKELIHOOD);
       return { logLikelihood: fitMeasures(nested, solution).logLikelihood, freeCoefficients: form.free };
     });
+  const own = under(specification.impose);
   return {
     unrestricted: under(NESTED.unrestricted),
     homogeneity: under(NESTED.homogeneity),
     ...(size.goods > 2 && { symmetry: under(NESTED.symmetry) }),
+    ...(hasQuadraticTerms(system) && {
+      quadratic: {
+        wide: own,
+        narrow: unlessRefused(() => fitWithoutLocal(estimation, system, size, specification, control)),
+      },
+    }),
   };
+}
+
+const hasQuadraticTerms = (system: DemandSystem) => system.blocks.some(({ name }) => name === "lambda");
+
+/**
+ * Maximum likelihood of the form that the system contains and that is estimated first (the almost ideal system in
+ * the quadratic one), under what the specification imposes.
+ */
+export function fitWithoutLocal(
+  estimation: Estimation,
+  system: DemandSystem,
+  size: SystemSize,
+  { impose }: Pick<SystemSpecification, "impose">,
+  control: RunControl,
+): Likelihood {
+  const nearby = nearbyEstimation(system, size, impose, { ...estimation, equations: allButLast(estimation) });
+  if (nearby === undefined) throw new RangeError(`the ${system.longName} has no form that is estimated first`);
+  const { logLikelihood } = fitMeasures(nearby, fitNearby(system, size, nearby, control));
+  return { logLikelihood, freeCoefficients: nearby.form.free };
 }
 
 /** Keeps the likelihood of a fit by maximum likelihood, so that the tests need not find it again. */
@@ -71,9 +104,19 @@ function allButLast({ moments }: Estimation): number[] {
  * Maximum likelihood straight from a fit that is near; the long way round only where that fails.
  * Errors: as `maximumLikelihood`.
  */
-export function fromNearby(nested: Estimation, start: readonly number[], control: RunControl): Solution {
+export function fromNearby(
+  nested: Estimation,
+  start: readonly number[],
+  control: RunControl,
+  tolerance?: number,
+): Solution {
+  const { local } = nested.moments;
+  const { expand: form } = nested.form;
+  // Moments that move with θ are kept where the fit nearby ended, all but its last step.
+  const from = local ? local.kept(expand(form, start)) : undefined;
+  const free = from ? form.places.map((place) => from[place]) : start;
   try {
-    return minimise(nested, { kind: "likelihood", step: "newton" }, start, control);
+    return minimise(nested, { kind: "likelihood", step: "newton" }, free, control, local ? tolerance : undefined);
   } catch (error) {
     if (error instanceof Refusal) return maximumLikelihood(nested, true, start, "newton", control);
     throw error;

@@ -1,10 +1,10 @@
-import type { CoefficientPlace, DemandSystem, NearbyForm, SystemSize } from "../../../shared/systems/demand-system.ts";
+import type { CoefficientPlace, DemandSystem, SystemSize } from "../../../shared/systems/demand-system.ts";
 import type { RestrictionName } from "../../../shared/systems/names.ts";
 import type { RunControl } from "../run.ts";
 import { systemForm } from "./coefficient-form.ts";
 import type { Estimation } from "./estimation.ts";
 import { maximumLikelihood } from "./estimators.ts";
-import type { Moments } from "./moments.ts";
+import type { Solution } from "./minimise.ts";
 import { meanResponses } from "./responses.ts";
 
 /**
@@ -21,30 +21,36 @@ export function startOf(
   estimation: Estimation,
   control: RunControl,
 ): number[] {
-  const from = system.moments.local?.from;
-  const moments = estimation.moments.local?.nearby;
-  if (from === undefined || moments === undefined) return system.start(size, meanResponses(estimation));
-  const nearby = nearbyEstimation(system, from, size, impose, estimation, moments);
-  const theta = from.start(size, meanResponses(nearby));
-  const start = nearby.form.expand.places.map((place) => theta[place]);
-  return from.embed(maximumLikelihood(nearby, true, start, "newton", control).theta, size);
+  const nearby = nearbyEstimation(system, size, impose, estimation);
+  if (nearby === undefined) return system.start(size, meanResponses(estimation));
+  return system.moments.local!.from.embed(fitNearby(system, size, nearby, control).theta, size);
 }
 
-/** The form estimated first as an estimation of its own, its coefficients named as those of the larger system. */
-function nearbyEstimation(
+/**
+ * The form without terms that move with θ as an estimation of its own, its coefficients named as those of the
+ * larger system; absent where the system has no such terms.
+ */
+export function nearbyEstimation(
   system: DemandSystem,
-  from: NearbyForm,
   size: SystemSize,
   impose: readonly RestrictionName[],
-  { equations, coefficientLabels }: Estimation,
-  moments: Moments,
-): Estimation {
+  { equations, coefficientLabels, moments }: Pick<Estimation, "equations" | "coefficientLabels" | "moments">,
+): Estimation | undefined {
+  const from = system.moments.local?.from;
+  if (from === undefined || moments.local === undefined) return undefined;
   const keyOf = ({ block, good, column }: CoefficientPlace) => [block, good, column].join();
   const labels = new Map(system.layout(size).map((place, a) => [keyOf(place), coefficientLabels[a]]));
   return {
-    moments,
+    moments: moments.local.nearby,
     form: systemForm(from, size, impose),
     equations,
     coefficientLabels: from.layout(size).map((place) => labels.get(keyOf(place)) ?? place.block),
   };
+}
+
+/** Its maximum likelihood. */
+export function fitNearby(system: DemandSystem, size: SystemSize, nearby: Estimation, control: RunControl): Solution {
+  const theta = system.moments.local!.from.start(size, meanResponses(nearby));
+  const start = nearby.form.expand.places.map((place) => theta[place]);
+  return maximumLikelihood(nearby, true, start, "newton", control);
 }

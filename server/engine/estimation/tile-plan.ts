@@ -24,6 +24,18 @@ export interface TilePlan {
  * Responses are base columns of their own, multiplied with everything: give them as terms [0, place].
  */
 export function planTiles(terms: readonly TermPair[]): TilePlan {
+  const key = terms.join(" ");
+  const plan = plans.get(key) ?? newPlan(terms);
+  // The oldest goes: a study has few sets of terms, and an iteration asks for the same again and again.
+  if (!plans.has(key) && plans.size >= MOST_PLANS) plans.delete(plans.keys().next().value!);
+  plans.set(key, plan);
+  return plan;
+}
+
+const plans = new Map<string, TilePlan>();
+const MOST_PLANS = 12;
+
+function newPlan(terms: readonly TermPair[]): TilePlan {
   const columns = terms.length;
   const place = new Map(terms.map((term, at) => [term.join(), at]));
   const chosen = new Map<string, readonly [row: number, column: number]>();

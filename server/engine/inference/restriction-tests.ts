@@ -17,6 +17,8 @@ export interface NestedFits {
   readonly unrestricted: NestedFit | RefusedFit;
   readonly homogeneity: NestedFit | RefusedFit;
   readonly symmetry?: NestedFit | RefusedFit;
+  /** Systems with quadratic terms: under the restrictions imposed, with these terms and without. */
+  readonly quadratic?: { readonly wide: NestedFit | RefusedFit; readonly narrow: NestedFit | RefusedFit };
 }
 
 export interface TestedSystem {
@@ -37,15 +39,19 @@ export interface RestrictionTests {
   readonly untested: UntestedRestriction[];
 }
 
-/** Homogeneity, and symmetry given homogeneity: likelihood ratios with their small-sample companions. */
+/** Homogeneity, symmetry given homogeneity, and quadratic terms: likelihood ratios with their small-sample companions. */
 export function restrictionTests(fits: NestedFits, system: TestedSystem): RestrictionTests {
-  const { unrestricted, homogeneity, symmetry } = fits;
+  const { unrestricted, homogeneity, symmetry, quadratic } = fits;
   const first = tested("homogeneity", unrestricted, homogeneity, system);
   if ("statistic" in first && system.linear && !("refused" in unrestricted)) {
     const exact = laitinenTest(first.statistic, unrestricted, system, system.linear.exact);
     if (exact) first.exact = exact;
   }
-  const all = [first, ...(symmetry ? [tested("symmetry given homogeneity", homogeneity, symmetry, system)] : [])];
+  const all = [
+    first,
+    ...(symmetry ? [tested("symmetry given homogeneity", homogeneity, symmetry, system)] : []),
+    ...(quadratic ? [tested("quadratic terms zero", quadratic.wide, quadratic.narrow, system)] : []),
+  ];
   return {
     tests: all.filter((test) => "statistic" in test),
     untested: all.filter((test) => "reason" in test),

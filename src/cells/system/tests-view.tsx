@@ -22,6 +22,7 @@ function exactInWords(test: Test): string {
 
 /** Tests of the restrictions of theory, asymptotic and corrected for small samples. */
 export function TestsView({ tests, untested = [] }: Pick<SystemFinding, "tests" | "untested">) {
+  const hasQuadratic = tests.some(({ restriction }) => restriction === "quadratic terms zero");
   return (
     <section aria-labelledby="tests" className="border-line border-t pt-4">
       <h2 id="tests" className="type-section mb-2">
@@ -33,7 +34,7 @@ export function TestsView({ tests, untested = [] }: Pick<SystemFinding, "tests" 
       {tests.length > 0 && (
         <>
           <Table
-            caption="Likelihood-ratio tests of homogeneity and symmetry"
+            caption={`Likelihood-ratio tests of ${hasQuadratic ? "homogeneity, symmetry and quadratic terms" : "homogeneity and symmetry"}`}
             heads={[
               { key: "restriction", content: "Restriction" },
               { key: "lr", content: "LR" },
