@@ -51,7 +51,8 @@ export function secondOrderVariation(fitted: Fitted, point: Point, newPrices: re
   return point.total * sum;
 }
 
-function costOf(fitted: Fitted): { cost: CostFunction; size: SystemSize } {
+/** The cost function of a fitted system. Errors: `WelfareUndefined` where it has none. */
+export function costOf(fitted: Fitted): { cost: CostFunction; size: SystemSize } {
   const { system, size } = systemOf(fitted);
   if ("absent" in system.cost) throw new WelfareUndefined(system.cost.absent);
   for (const law of ["homogeneity", "symmetry"] as const) {
@@ -62,7 +63,8 @@ function costOf(fitted: Fitted): { cost: CostFunction; size: SystemSize } {
   return { cost: system.cost, size };
 }
 
-function utilityAt(cost: CostFunction, { theta }: Fitted, size: SystemSize, point: Point): number {
+/** v(p, x). Errors: `WelfareUndefined` where it is not defined. */
+export function utilityAt(cost: CostFunction, { theta }: Fitted, size: SystemSize, point: Point): number {
   const utility = cost.utility(theta, size, point);
   if (!Number.isFinite(utility)) throw new WelfareUndefined(`utility is not defined at a total of ${point.total}`);
   return utility;

@@ -9,6 +9,7 @@ import {
   partsOf,
 } from "./almost-ideal.ts";
 import { almostIdealDerivatives, shareDerivatives } from "./almost-ideal-derivatives.ts";
+import { aidsCostDerivatives } from "./cost-derivatives.ts";
 import type { DemandSystem, Evaluator, Point, SlopeDerivatives, SystemSize } from "./demand-system.ts";
 import { slopesByEvaluator } from "./evaluation.ts";
 import { symmetricPart, translogAt, translogDerivatives } from "./translog.ts";
@@ -54,6 +55,7 @@ export const aids: DemandSystem = {
   moments: aidsMoments,
   start: almostIdealStart,
   cost: {
+    logCostDerivatives: aidsCostDerivatives,
     /** ln c = ln P(p) + u Π p_k^β_k. */
     logCost: (theta, size, utility, prices, demographics) => {
       const { logIndex, logPrices, parts } = translogAt(theta, size, { prices, total: 1, demographics });

@@ -228,6 +228,20 @@ export interface CostFunction {
   ): number;
   /** u = v(p, x; z): `logCost` solved for utility. */
   utility(theta: readonly number[], size: SystemSize, point: Point): number;
+  /** Derivatives of `logCost`, where it is defined. */
+  logCostDerivatives(
+    theta: readonly number[],
+    size: SystemSize,
+    utility: number,
+    prices: readonly number[],
+    demographics: readonly number[],
+  ): CostDerivatives;
+}
+
+/** Of ln c(u, p; z): ∂/∂u with prices and coefficients held, and ∂/∂θ (k) with utility and prices held. */
+export interface CostDerivatives {
+  readonly utility: number;
+  readonly theta: number[];
 }
 
 export interface DemandSystem {

@@ -1,3 +1,4 @@
+import { easiCostDerivatives } from "./cost-derivatives.ts";
 import type { DemandSystem, Evaluator, Point, SystemSize } from "./demand-system.ts";
 import { easiDerivatives } from "./easi-derivatives.ts";
 import { EASI_BLOCKS, easiFreeForm, easiLayout, easiStart } from "./easi-layout.ts";
@@ -75,6 +76,7 @@ export const easi: DemandSystem = {
   moments: easiMoments,
   start: easiStart,
   cost: {
+    logCostDerivatives: easiCostDerivatives,
     /** NaN where cost falls with utility. */
     logCost: (theta, size, utility, prices, demographics) => {
       requirePoint(size, { prices, total: 1, demographics });

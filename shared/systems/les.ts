@@ -1,4 +1,5 @@
 import { zeros } from "../numerics/matrix.ts";
+import { lesCostDerivatives } from "./cost-derivatives.ts";
 import type {
   CoefficientPlace,
   DemandSystem,
@@ -155,6 +156,7 @@ export const les: DemandSystem = {
   /** Nothing committed: shares that do not move. */
   start: (size, meanShares) => [...new Array<number>(size.goods * (1 + size.demographics)).fill(0), ...meanShares],
   cost: {
+    logCostDerivatives: lesCostDerivatives,
     logCost: (theta, size, utility, prices, demographics) => {
       const { cost, logPrice } = subsistence(theta, size, prices, demographics);
       return utility > 0 ? Math.log(cost + utility * Math.exp(logPrice)) : Number.NaN;

@@ -5,6 +5,7 @@ import {
   almostIdealStart,
   interceptsAt,
 } from "./almost-ideal.ts";
+import { quaidsCostDerivatives } from "./cost-derivatives.ts";
 import type { DemandSystem, Evaluator, SystemSize } from "./demand-system.ts";
 import { slopesByEvaluator } from "./evaluation.ts";
 import { freeForm, remainder } from "./free-form.ts";
@@ -69,6 +70,7 @@ export const quaids: DemandSystem = {
   moments: quaidsMoments,
   start: (size, meanShares) => [...almostIdealStart(size, meanShares), ...meanShares.map(() => 0)],
   cost: {
+    logCostDerivatives: quaidsCostDerivatives,
     /** ln c = ln a(p) + b(p) u/(1 − λ(p) u) with u = ln V; NaN where 1 − λ(p) u ≤ 0. */
     logCost: (theta, size, utility, prices, demographics) => {
       const { logIndex, deflator, bend } = quaidsAt(theta, size, { prices, total: 1, demographics });
