@@ -41,6 +41,11 @@ at: {x: quantile 0.9}
 form: share
 `;
 
+const FIFTHS = `# do households that spend little answer prices more?
+system: base
+groups: {of: total expenditure, quantiles: 5}
+`;
+
 const LINEAR = `# how much the exact price index matters
 data: survey
 form: la-aids
@@ -67,6 +72,7 @@ const DEMO_CELLS: DemoStudy["cells"] = [
   { name: "base", kind: "system", source: BASE },
   { name: "matrix", kind: "slutsky", source: MATRIX },
   { name: "ninetieth", kind: "slutsky", source: NINETIETH },
+  { name: "fifths", kind: "elasticities", source: FIFTHS },
   { name: "linear", kind: "system", source: LINEAR },
   { name: "needs", kind: "system", source: NEEDS },
 ];

@@ -155,6 +155,7 @@ describe("the cells", () => {
       ["base", "system", ["survey"]],
       ["matrix", "slutsky", ["base"]],
       ["ninetieth", "slutsky", ["base"]],
+      ["fifths", "elasticities", ["base"]],
       ["linear", "system", ["survey"]],
       ["needs", "system", ["survey"]],
     ]);

@@ -106,7 +106,28 @@ describe("wrong words", () => {
     ["slutsky", "system: b\nat: {x: 3}", ["x of at is 3: write quantile 0.9, or give prices beside it."]],
     ["slutsky", "system: b\nat: {row: 0}", ["row of at is 0: it must be more than 0."]],
     ["slutsky", "system: b\nat: {prices: {a: -1}, x: 2}", ["a of prices is -1: it must be more than 0."]],
-    ["sistem", "", ["sistem is not a kind of cell (data, system, slutsky): the nearest is system."]],
+    [
+      "tests",
+      "of: [homogeneity]",
+      [
+        "A tests cell needs system: the name of the system cell whose restrictions are tested; or give data.",
+        "of: homogeneity is a hypothesis about a system; of data only revealed preference can be tested.",
+      ],
+    ],
+    ["tests", "system: b\ndata: d", ["data and system are both named: a tests cell reads one of them."]],
+    [
+      "tests",
+      "system: b\nof: [homogeniety]\nlevel: 0.7",
+      [
+        "of has homogeniety, which is not one of homogeneity, symmetry, homogeneity and symmetry, demographics, quadratic terms, exogeneity, revealed preference: the nearest to homogeniety is homogeneity.",
+        "level is too long or too large: at most 0.5.",
+      ],
+    ],
+    [
+      "sistem",
+      "",
+      ["sistem is not a kind of cell (data, system, tests, elasticities, slutsky): the nearest is system."],
+    ],
     ["data", "just words", ["A data cell is written as keys, each with a colon, a space and its value."]],
     [
       "data",
