@@ -30,7 +30,7 @@ export const testsSpecification = z
     if (system === undefined && data === undefined) {
       context.addIssue({
         code: "custom",
-        path: [],
+        path: ["system"],
         message: "a tests cell needs system, or data for revealed preference",
       });
     }

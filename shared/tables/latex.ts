@@ -23,6 +23,7 @@ const LATEX: Record<string, string> = {
   Γ: "$\\Gamma$",
   λ: "$\\lambda$",
   μ: "$\\mu$",
+  χ: "$\\chi$",
 };
 const POWER = /10([⁻]?[⁰¹²³⁴⁵⁶⁷⁸⁹]+)/g;
 const SUPERSCRIPT = "⁰¹²³⁴⁵⁶⁷⁸⁹";

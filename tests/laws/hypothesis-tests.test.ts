@@ -1,5 +1,6 @@
 import { describe, expect, it } from "vitest";
 import type { PreparedData } from "../../server/engine/columns/prepared-data.ts";
+import { accumulateMoments, momentsRequest } from "../../server/engine/estimation/index.ts";
 import { systemTests } from "../../server/engine/inference/system-tests.ts";
 import { QUIET } from "../../server/engine/run.ts";
 import { seededRandom } from "../../shared/numerics/random.ts";
@@ -13,7 +14,8 @@ const NAMES = ["homogeneity", "symmetry", "homogeneity and symmetry", "demograph
 function testsOf(data: PreparedData, specification: object) {
   const parsed = systemOver(data, specification);
   const { fitted } = estimated(data, specification);
-  const { tests } = systemTests(NAMES, parsed, fitted, data, QUIET);
+  const moments = accumulateMoments(data, momentsRequest(parsed, data), QUIET);
+  const { tests } = systemTests(NAMES, parsed, fitted, data, moments, QUIET);
   return tests.filter((test): test is MadeTest => "wald" in test);
 }
 

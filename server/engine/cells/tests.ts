@@ -7,11 +7,14 @@ import {
   testsFinding,
 } from "../../../shared/schemas/tests.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
+import { withTimeTerms } from "../columns/seasonal-terms.ts";
+import { momentsRequest } from "../estimation/index.ts";
 import { unlessRefused } from "../estimation/nested-fits.ts";
 import { type Purchases, revealedPreference } from "../inference/revealed-preference.ts";
 import { systemTests } from "../inference/system-tests.ts";
 import { Refusal } from "../refusal.ts";
 import { QUIET, type RunControl } from "../run.ts";
+import { momentsOf } from "./system.ts";
 
 /** The system a tests cell names: what was asked, and what was found. */
 export interface TestedSystem {
@@ -32,16 +35,26 @@ export function runTests(
 ): TestsFinding {
   const names = asked(specification);
   const revealed = names.includes("revealed preference") ? revealedOf(data, names.length === 1, control) : undefined;
-  const tests = system ? systemTests(names, system.specification, system.finding.fitted, data, control) : { tests: [] };
+  const tests = system ? testsOfSystem(names, system, data, control) : { tests: [], rows: data.rows };
   return testsFinding.parse({
     kind: "tests",
     dataFingerprint: data.fingerprint,
     level: specification.level,
-    rows: data.rows,
     weighted: data.weights !== undefined,
     ...tests,
     ...(revealed && { revealed }),
   });
+}
+
+function testsOfSystem(
+  names: readonly HypothesisName[],
+  system: TestedSystem,
+  data: PreparedData,
+  control: RunControl,
+) {
+  const specification = withTimeTerms(system.specification, data);
+  const moments = momentsOf(data, momentsRequest(specification, data), control);
+  return systemTests(names, specification, system.finding.fitted, data, moments, control);
 }
 
 /** Of data revealed preference; of a system everything else, unless it is named. */

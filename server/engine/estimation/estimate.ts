@@ -6,6 +6,7 @@ import { pickRows } from "../columns/pick-rows.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { weightedMean } from "../columns/weighted.ts";
 import { covarianceOfEstimates, inferenceFinding } from "../inference/covariance-of-estimates.ts";
+import { linearityOf } from "../inference/linearity.ts";
 import { type NestedFits, restrictionTests } from "../inference/restriction-tests.ts";
 import { Refusal } from "../refusal.ts";
 import type { RunControl } from "../run.ts";
@@ -14,17 +15,17 @@ import { coefficientNames, labelOfCoefficient } from "./coefficient-labels.ts";
 import { type CurvaturePoint, imposeCurvature } from "./curvature/impose.ts";
 import { durbinWatson } from "./durbin-watson.ts";
 import { equationsExplainedBy } from "./equations-explained.ts";
-import { firstStepFindings } from "./first-steps/findings.ts";
 import type { Estimation } from "./estimation.ts";
 import { refuseConstantShares, refuseTooFewRows } from "./failures.ts";
+import { firstStepFindings } from "./first-steps/findings.ts";
 import { fitMeasures } from "./fit-measures.ts";
-import type { Solution } from "./minimise.ts";
 import { locatable, sourceAt } from "./local-moments.ts";
+import type { Solution } from "./minimise.ts";
 import type { Moments } from "./moments.ts";
 import { nestedFits, rememberFit } from "./nested-fits.ts";
-import { DEFAULT_INDEX } from "./price-index.ts";
-import { momentsRequest, sizeOf, sourceOf } from "./request.ts";
+import { momentsRequest, sizeOf } from "./request.ts";
 import { solve, withinEquations } from "./solve.ts";
+import { rowsNeeded } from "./rows-needed.ts";
 import { sampleOf, specifiedSystem } from "./specified-system.ts";
 import { covarianceOf } from "./weighting.ts";
 
@@ -56,10 +57,17 @@ export function estimateSystem(
     coefficientLabels: names.map(labelOfCoefficient),
   };
   const within = systemForm(system, size, withinEquations(specification)).free;
-  refuseTooFewRows(moments.rows, linear.form.free, linear.equations.length, within);
+  refuseTooFewRows(moments.rows, linear.form.free, linear.equations.length, within, neededByForm(system, size, linear));
   refuseConstantShares(linear);
   const unbent = { estimation: linear, solution: solve(specification, system, size, linear, control) };
-  const { estimation, solution, curvature } = imposeCurvature(specification, system, size, unbent, curvatureAt, control);
+  const { estimation, solution, curvature } = imposeCurvature(
+    specification,
+    system,
+    size,
+    unbent,
+    curvatureAt,
+    control,
+  );
   const source = () => sourceAt(data, momentsRequest(specification, data), system.moments, size, solution.theta);
   const inference = covarianceOfEstimates(
     { specification, data, size, estimation, solution, source, ...(curvatureAt && { curvatureAt }) },
@@ -113,7 +121,7 @@ export function estimateSystem(
     residualCovariance: covarianceOf(solution.residuals, moments.rows),
     ...testsOf(specification, system, size, estimation, solution, control),
     ...(curvature && { curvature }),
-    ...firstStepFindings(fit, () => sourceOf(data, momentsRequest(specification, data)), control),
+    ...firstStepFindings(fit, source, control),
   };
 }
 
@@ -152,19 +160,11 @@ function testsOf(
 ): Pick<SystemFinding, "tests" | "untested"> {
   if (system.heldByForm.length > 0) return { tests: [] };
   const fits: NestedFits = nestedFits(estimation, system, size, specification, solution.theta, control);
-  const index = specification.index ?? DEFAULT_INDEX;
+  const linearity = linearityOf(specification, estimation.moments.weighted);
   const { tests, untested } = restrictionTests(fits, {
     rows: estimation.moments.rows,
     equations: estimation.equations.length,
-    // In two steps every equation has regressors of its own.
-    ...(specification.form === "la-aids" &&
-      specification.zeros === undefined && {
-        linear: {
-          exact: index === "laspeyres" && !estimation.moments.weighted && specification.instruments === undefined,
-        },
-      }),
-    // The volume is given, as Laitinen had it in this very system: theory makes it independent of the errors.
-    ...(specification.form === "rotterdam" && { linear: { exact: !estimation.moments.weighted } }),
+    ...(!("absent" in linearity) && { linear: { exact: linearity.exact } }),
   });
   return { tests, ...(untested.length > 0 && { untested }) };
 }

@@ -18,9 +18,8 @@ export interface Hypothesis {
 export interface Asked {
   readonly system: DemandSystem;
   readonly size: SystemSize;
-  readonly specification: Pick<SystemSpecification, "form" | "impose">;
-  /** Names of what shifts the intercepts, as many as the size has. */
-  readonly demographics: readonly string[];
+  /** With its terms of time among the demographics. */
+  readonly specification: Pick<SystemSpecification, "impose" | "demographics">;
 }
 
 /**
@@ -42,7 +41,8 @@ export function hypothesesOf(names: readonly HypothesisName[], asked: Asked): (H
       theory(asked, "homogeneity and symmetry", [], under(), under("homogeneity", "symmetry")),
     ],
     demographics: () => demographicTests(asked, under(...maintained(asked))),
-    "quadratic terms": () => [quadraticTerms(asked, under(...maintained(asked)))],
+    "quadratic terms": () => [blockTest(asked, "quadratic terms", "lambda", under(...maintained(asked)))],
+    exogeneity: () => [blockTest(asked, "exogeneity", "residual", under(...maintained(asked)))],
   };
   return names.flatMap((name) => find[name]?.() ?? []);
 }
@@ -79,32 +79,45 @@ function maintained({ system, specification: { impose } }: Asked): RestrictionNa
   return (["homogeneity", "symmetry"] as const).filter((name) => held.has(name));
 }
 
+/** Seasonal terms are one thing, however many; a trend is another. */
+const SEASON = /^season .* of \d+$/;
+const groupOf = (name: string): string => (SEASON.test(name) ? "season" : name);
+
 function demographicTests(asked: Asked, wide: FreeForm): (Hypothesis | UnmadeTest)[] {
-  const { system, size, demographics } = asked;
-  if (demographics.length === 0) {
-    const why = system.takesDemographics ? "names no demographics" : "takes no demographics";
-    return [nothing("demographics", `The ${system.longName} as specified ${why}.`)];
+  const { system, size } = asked;
+  const groups = asked.specification.demographics.map(groupOf);
+  if (groups.length === 0) {
+    const why = system.takesDemographics ? "as specified names no demographics" : "takes no demographics";
+    return [nothing("demographics", `The ${system.longName} ${why}.`)];
   }
   const blocks = new Set(system.blocks.flatMap(({ name, columns }) => (columns === "demographics" ? [name] : [])));
   const layout = system.layout(size);
-  const test = (isTested: (index: number | undefined) => boolean): Pick<Hypothesis, "given" | "wide" | "narrow"> => {
-    const zero = new Set(layout.flatMap(({ block, column }, a) => (blocks.has(block) && isTested(column) ? [a] : [])));
-    return { given: maintained(asked), wide, narrow: withoutCoefficients(wide, zero) };
+  const test = (isTested: (group: string) => boolean): Pick<Hypothesis, "hypothesis" | "given" | "wide" | "narrow"> => {
+    const zero = layout.flatMap(({ block, column = 0 }, a) =>
+      blocks.has(block) && isTested(groups[column]) ? [a] : [],
+    );
+    const narrow = withoutCoefficients(wide, new Set(zero));
+    return { hypothesis: "demographics", given: maintained(asked), wide, narrow };
   };
-  const together: Hypothesis = { hypothesis: "demographics", ...test(() => true) };
-  if (demographics.length === 1) return [{ ...together, column: demographics[0] }];
-  const alone = demographics.map(
-    (column, index): Hypothesis => ({ hypothesis: "demographics", column, ...test((of) => of === index) }),
-  );
-  return [together, ...alone];
+  const each = [...new Set(groups)];
+  const together = each.length > 1 ? [test(() => true)] : [];
+  return [...together, ...each.map((column) => ({ ...test((group) => group === column), column }))];
 }
 
-function quadraticTerms(asked: Asked, wide: FreeForm): Hypothesis | UnmadeTest {
+const ABSENT = {
+  "quadratic terms": "has no quadratic terms",
+  exogeneity: "names no instruments, so that nothing can tell whether its total expenditure is exogenous",
+} as const;
+
+/** Whether a block of coefficients is nought. */
+function blockTest(
+  asked: Asked,
+  hypothesis: "quadratic terms" | "exogeneity",
+  block: string,
+  wide: FreeForm,
+): Hypothesis | UnmadeTest {
   const layout = asked.system.layout(asked.size);
-  const zero = new Set(layout.flatMap(({ block }, a) => (block === "lambda" ? [a] : [])));
-  if (zero.size === 0) {
-    return nothing("quadratic terms", `The ${asked.system.longName} has no quadratic terms.`);
-  }
-  const narrow = withoutCoefficients(wide, zero);
-  return { hypothesis: "quadratic terms", given: maintained(asked), wide, narrow };
+  const zero = new Set(layout.flatMap((place, a) => (place.block === block ? [a] : [])));
+  if (zero.size === 0) return nothing(hypothesis, `The ${asked.system.longName} as specified ${ABSENT[hypothesis]}.`);
+  return { hypothesis, given: maintained(asked), wide, narrow: withoutCoefficients(wide, zero) };
 }

@@ -15,14 +15,22 @@ const INDEX_HOLDS: Readonly<Record<string, string>> = {
  * and nothing on the right that depends on current shares.
  */
 export function linearityOf(
-  { form, index = "tornqvist", differences }: Pick<SystemSpecification, "form" | "index" | "differences">,
+  specification: Pick<SystemSpecification, "form" | "index" | "differences" | "zeros" | "instruments">,
   weighted: boolean,
 ): Linearity {
-  if (form === "rotterdam") return { exact: false, because: "the change in real total holds current shares" };
-  if (form !== "la-aids") {
+  const { form, index = "tornqvist", differences, zeros, instruments } = specification;
+  if (form !== "la-aids" && form !== "rotterdam") {
     return { absent: `Laitinen's test needs equations linear in their coefficients, which those of ${form} are not.` };
   }
+  if (zeros !== undefined) {
+    return { absent: "Laitinen's test needs the same regressors in every equation; in two steps each has its own." };
+  }
   if (weighted) return { exact: false, because: "rows weigh differently" };
+  if (instruments !== undefined) return { exact: false, because: "the residual of the first stage is estimated" };
+  if (form === "rotterdam") {
+    // As Laitinen had it in this very system: theory makes the volume independent of the errors.
+    return { exact: true, because: "the change in volume is taken as given" };
+  }
   if (differences) return { exact: false, because: "errors in differences are correlated over time" };
   const holds = INDEX_HOLDS[index];
   if (holds) return { exact: false, because: holds };

@@ -1,8 +1,9 @@
 import { chiSquareTail } from "../../../shared/numerics/distributions.ts";
 import type { ChiSquareStatistic, MadeTest, UnmadeTest } from "../../../shared/schemas/tests.ts";
-import type { Estimation } from "../estimation/estimation.ts";
-import type { Solution } from "../estimation/minimise.ts";
+import type { FreeForm } from "../../../shared/systems/demand-system.ts";
+import type { RestrictionName } from "../../../shared/systems/names.ts";
 import { unlessRefused } from "../estimation/nested-fits.ts";
+import type { RunControl } from "../run.ts";
 import { equationTests } from "./equation-tests.ts";
 import type { Hypothesis } from "./hypotheses.ts";
 import type { Linearity } from "./linearity.ts";
@@ -17,11 +18,12 @@ export interface Testing {
   readonly model: Model;
   readonly goods: readonly string[];
   readonly fits: ModelFits;
-  /** Covariance of θ̂ (k × k) of the kind the Wald tests use. */
-  covarianceOf(estimation: Estimation, solution: Solution): number[][];
+  /** Covariance of θ̂ (k × k) of the kind the Wald tests use, of a model with what is imposed in it. */
+  covarianceOf(impose: readonly RestrictionName[], wide: FreeForm, fit: ModelFit): number[][] | RefusedFit;
   /** Whether that kind is the conventional one. */
   readonly conventional: boolean;
   readonly linearity: Linearity;
+  readonly control: RunControl;
 }
 
 type MaybeFit = ModelFit | RefusedFit;
@@ -36,8 +38,7 @@ export function testHypothesis(asked: Hypothesis, testing: Testing): MadeTest | 
     return { ...named, because: "could not be made", reason };
   }
   const degreesOfFreedom = wide.places.length - narrow.places.length;
-  const covariance =
-    "refused" in free ? free : unlessRefused(() => testing.covarianceOf(free.estimation, free.solution));
+  const covariance = "refused" in free ? free : testing.covarianceOf(given, wide, free);
   const likelihoodRatio = likelihoodRatioOf(free, restricted, degreesOfFreedom);
   return {
     ...named,
@@ -72,10 +73,10 @@ function waldOf({ wide, narrow }: Hypothesis, free: MaybeFit, covariance: number
   return waldTest(free.solution.free, ofFree, nestedForm(wide, narrow));
 }
 
-function scoreOf({ wide, narrow }: Hypothesis, restricted: MaybeFit, { fits }: Testing): ChiSquareStatistic {
+function scoreOf({ wide, narrow }: Hypothesis, restricted: MaybeFit, { fits, control }: Testing): ChiSquareStatistic {
   if ("refused" in restricted) return under(restricted);
   const restrictions = wide.places.length - narrow.places.length;
-  const test = unlessRefused(() => scoreTest(fits.estimation(wide), restricted.solution.theta, restrictions));
+  const test = unlessRefused(() => scoreTest(fits.estimation(wide), restricted.solution.theta, restrictions, control));
   return "refused" in test ? { absent: test.refused } : test;
 }
 

@@ -75,7 +75,22 @@ describe("wrong words", () => {
     [
       "system",
       "data: a\nform: aids\nstandard errors: robust",
-      ["standard errors has robust; only conventional is offered."],
+      ["standard errors cannot be robust: conventional, heteroskedastic, by cluster, or by bootstrap."],
+    ],
+    [
+      "system",
+      "data: a\nform: aids\nstandard errors: {bootstrap: rows, block: 4}",
+      ["block belongs to a bootstrap of blocks; one of rows has none."],
+    ],
+    [
+      "system",
+      "data: a\nform: aids\nstandard errors: {bootstrap: residuals, cluster: village}",
+      ["cluster belongs to a bootstrap of clusters; one of residuals has none."],
+    ],
+    [
+      "system",
+      "data: a\nform: aids\nstandard errors: {bootstrap: rows, replicates: 5}",
+      ["replicates is 5: it must be at least 20."],
     ],
     [
       "data",
