@@ -13,15 +13,10 @@ export function mapColumn(column: Float64Array, f: (value: number, row: number) 
   return mapped;
 }
 
-const copies = new WeakMap<Float64Array, Float64Array>();
-
-/** The column itself where it is on shared memory, else a copy that is: one for as long as the column lives. */
+/** The column itself where it is on shared memory, else a copy of its values as they are now. */
 export function onSharedMemory(column: Float64Array): Float64Array {
   if (column.buffer instanceof SharedArrayBuffer) return column;
-  const known = copies.get(column);
-  if (known) return known;
   const copy = newColumn(column.length);
   copy.set(column);
-  copies.set(column, copy);
   return copy;
 }

@@ -1,5 +1,6 @@
 import type { LocalColumns, LocalFiller, MomentForm, SystemSize } from "../../../shared/systems/demand-system.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
+import { newColumn } from "../columns/shared-memory.ts";
 import { Cancelled, QUIET, type RunControl } from "../run.ts";
 import { localResiduals } from "./local-residuals.ts";
 import type { MomentSource } from "./moment-source.ts";
@@ -64,7 +65,7 @@ export function sourceAt(
 /** The columns are filled in place: a source holds until the next θ. */
 function localRows(data: PreparedData, nearby: MomentsRequest, form: LocalForm, size: SystemSize) {
   const request = localRequest(form, form.local, size, nearby);
-  const columns = form.local.labels.map(() => new Float64Array(data.rows));
+  const columns = form.local.labels.map(() => newColumn(data.rows));
   let last: readonly number[] | undefined;
   return {
     key: request.key,

@@ -4,6 +4,7 @@ import { nearestWord } from "../../../shared/study/nearest-word.ts";
 import type { BaseColumn, LocalColumns, MomentForm, MomentTerm, SystemSize } from "../../../shared/systems/demand-system.ts";
 import type { PriceIndexName } from "../../../shared/systems/names.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
+import { mapColumn } from "../columns/shared-memory.ts";
 import { demographicColumn } from "../columns/seasonal-terms.ts";
 import { Refusal } from "../refusal.ts";
 import { type MomentSource, ordered, type TermPair, termOf } from "./moment-source.ts";
@@ -172,7 +173,7 @@ function valuesOf(
       return demographicColumn(data, request.demographics[column.index])!;
     case "price over total": {
       const logPrice = data.logPrices[column.good];
-      return data.logTotal.map((logTotal, t) => Math.exp(logPrice[t] - logTotal));
+      return mapColumn(data.logTotal, (logTotal, t) => Math.exp(logPrice[t] - logTotal));
     }
     case "deflated log total":
       return deflatedLogTotal(data, request.index);
