@@ -4,6 +4,7 @@ import type { SlutskyFinding } from "../../shared/schemas/slutsky.ts";
 import type { SystemFinding } from "../../shared/schemas/system.ts";
 import type { CellSource } from "../../shared/study/cell-source.ts";
 import { setKey } from "../../shared/study/edit.ts";
+import { withoutDraws } from "../../shared/study/without-draws.ts";
 
 /** The matrix and the two cells it rests on, sources and findings. */
 export interface SealedCells {
@@ -41,7 +42,7 @@ export function sealedContentOf(about: About, { matrix, system, data }: SealedCe
       data: data.cell.name,
     },
     slutsky: matrixOf(matrix.finding),
-    system: withoutRows(system.finding),
+    system: withoutDraws(withoutRows(system.finding)),
     accounting: accountingOf(data.finding),
     data: {
       meanTotal: data.finding.meanTotal,

@@ -97,12 +97,22 @@ function systemProblems(specification: SystemSpecification, context: Context): P
         tell(["demographics", i], ...(isText ? ([text] as [string]) : noColumn(specification.data, column, names))),
       );
     });
+    const cluster = clusterNamed(specification);
+    const all = [...upload.columns.map(({ name }) => name), ...Object.keys(data.derive ?? {})];
+    if (cluster !== undefined && !all.includes(cluster)) {
+      problems.push(tell(["standard errors", "cluster"], ...noColumn(specification.data, cluster, all)));
+    }
   }
   const goods = Object.keys(data.goods);
   if (specification.dropped !== undefined && !goods.includes(specification.dropped)) {
     problems.push(tell(["dropped"], ...noGood(specification.data, specification.dropped, goods)));
   }
   return problems;
+}
+
+/** The column of `cluster`, beside clustered standard errors or a bootstrap of clusters. */
+function clusterNamed({ "standard errors": errors }: SystemSpecification): string | undefined {
+  return typeof errors === "string" ? undefined : errors.cluster;
 }
 
 function noGood(owner: string, good: string, goods: readonly string[]): [string, string?] {

@@ -1,6 +1,7 @@
 import type { SystemFinding } from "../schemas/system.ts";
 import { EMPTY, estimateCell } from "./cells.ts";
 import { DECIMALS, printCount } from "./numbers.ts";
+import { standardErrorsNotes, standardErrorsPhrase } from "./standard-errors.ts";
 import type { LabelledTable, TableRow } from "./table.ts";
 
 type Coefficient = SystemFinding["coefficients"][number];
@@ -67,7 +68,8 @@ export function coefficientTable(finding: SystemFinding): LabelledTable {
     columns: finding.fitted.goods.map((label) => ({ label })),
     rows: coefficientRows(finding),
     notes: [
-      `Estimate over (standard error), ${finding.standardErrors}. ${printCount(finding.rows)} rows, ${finding.estimator}, prices and total in units of estimation.`,
+      `Estimate over (standard error), ${standardErrorsPhrase(finding)}. ${printCount(finding.rows)} rows, ${finding.estimator}, prices and total in units of estimation.`,
+      ...standardErrorsNotes(finding),
     ],
   };
 }

@@ -3,6 +3,7 @@ import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { DECIMALS, printCount, printFixed, printSize } from "../../../shared/tables/numbers.ts";
 import { withArticle } from "../../../shared/tables/slutsky-matrix.ts";
+import { standardErrorsPhrase } from "../../../shared/tables/standard-errors.ts";
 import { Estimate, Printed } from "../../components/number.tsx";
 import { Table } from "../../components/table.tsx";
 
@@ -56,13 +57,26 @@ export function FitView({ finding }: { finding: SystemFinding }) {
           Fit and convergence
         </h2>
         <dl className="type-table">
-          <Fact label="Log-likelihood">{number(finding.logLikelihood)}</Fact>
-          <Fact label="AIC, BIC">
-            {number(finding.aic)}, {number(finding.bic)}
+          <Fact label={finding.aic === undefined ? "Log-likelihood at these estimates" : "Log-likelihood"}>
+            {number(finding.logLikelihood)}
           </Fact>
+          {finding.aic !== undefined && finding.bic !== undefined && (
+            <Fact label="AIC, BIC">
+              {number(finding.aic)}, {number(finding.bic)}
+            </Fact>
+          )}
+          {finding.implicit && (
+            <Fact label="Real expenditure y">
+              {finding.implicit.realExpenditure === "exact" ? "implicit utility" : "by mean shares"}
+            </Fact>
+          )}
           <Fact label="System R², McElroy">{printFixed(finding.systemRSquared, DECIMALS.fit)}</Fact>
           <Fact label="Free coefficients">{printCount(finding.freeCoefficients)}</Fact>
           <Fact label="Rows">{printCount(finding.rows)}</Fact>
+          {finding.effectiveRows !== undefined && (
+            <Fact label="Rows of one weight that tell as much">{printFixed(finding.effectiveRows, 0)}</Fact>
+          )}
+          <Fact label="Standard errors">{capital(standardErrorsPhrase(finding))}</Fact>
           <Fact label="Equation dropped">{finding.dropped}</Fact>
           <Fact label="Iterations">{printCount(convergence.iterations)}</Fact>
           <Fact label="Gradient">

@@ -1,6 +1,7 @@
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { DECIMALS, printCount, printFixed } from "../../../shared/tables/numbers.ts";
+import { standardErrorsNotes, standardErrorsPhrase } from "../../../shared/tables/standard-errors.ts";
 
 /** What the parentheses are, by which estimator, whether it converged, and how well it fits. */
 export function SystemNote({ finding }: { finding: SystemFinding }) {
@@ -9,10 +10,11 @@ export function SystemNote({ finding }: { finding: SystemFinding }) {
   const rSquared = finding.rSquared.map((value) => printFixed(value, DECIMALS.fit)).join(", ");
   return (
     <p className="type-small mt-2 text-ink2">
-      Estimate over (standard error), {finding.standardErrors}; {printCount(rows)} rows
-      {weighted ? ", weighted" : ""}. {capital(finding.estimator)}, {iterations}, converged. Log-likelihood{" "}
+      Estimate over (standard error), {standardErrorsPhrase(finding)}; {printCount(rows)} rows
+      {weighted ? ", weighted" : ""}. {capital(finding.implicit?.method ?? finding.estimator)}, {iterations}, converged.{" "}
+      {finding.aic === undefined ? "Log-likelihood at these estimates" : "Log-likelihood"}{" "}
       {printFixed(finding.logLikelihood, DECIMALS.statistic)}; <i className="font-serif">R</i>² by equation {rSquared}.
-      Prices and expenditure in units of estimation.
+      Prices and expenditure in units of estimation. {standardErrorsNotes(finding).join(" ")}
     </p>
   );
 }

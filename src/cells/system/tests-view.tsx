@@ -1,6 +1,7 @@
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { DECIMALS, printCount, printFixed, printProbability } from "../../../shared/tables/numbers.ts";
+import { LIKELIHOOD_RATIOS_ASSUME } from "../../../shared/tables/standard-errors.ts";
 import { isRejected } from "../../../shared/tables/verdicts.ts";
 import { Table } from "../../components/table.tsx";
 
@@ -21,7 +22,11 @@ function exactInWords(test: Test): string {
 }
 
 /** Tests of the restrictions of theory, asymptotic and corrected for small samples. */
-export function TestsView({ tests, untested = [] }: Pick<SystemFinding, "tests" | "untested">) {
+export function TestsView({
+  tests,
+  untested = [],
+  standardErrors,
+}: Pick<SystemFinding, "tests" | "untested" | "standardErrors">) {
   const hasQuadratic = tests.some(({ restriction }) => restriction === "quadratic terms zero");
   return (
     <section aria-labelledby="tests" className="border-line border-t pt-4">
@@ -62,6 +67,7 @@ export function TestsView({ tests, untested = [] }: Pick<SystemFinding, "tests" 
           <p className="type-small mt-2 text-ink2">
             LR against χ²; the corrected ratio is Italianer’s (1985), since asymptotic tests reject too often in small
             samples. Laitinen’s (1978) is exact for homogeneity where the price index holds no current shares.
+            {standardErrors !== "conventional" && ` ${LIKELIHOOD_RATIOS_ASSUME}`}
           </p>
         </>
       )}

@@ -37,7 +37,7 @@ export function SystemOpen({ finding }: OpenProps<"system">) {
         <SystemNote finding={finding} />
       </div>
       {finding.engel.logTotal.length > 0 && <EngelView finding={finding} />}
-      <TestsView tests={finding.tests} untested={finding.untested} />
+      <TestsView tests={finding.tests} untested={finding.untested} standardErrors={finding.standardErrors} />
       <FitView finding={finding} />
     </div>
   );

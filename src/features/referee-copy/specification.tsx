@@ -4,6 +4,7 @@ import { capital, listWords } from "../../../shared/study/words.ts";
 import { SYSTEMS } from "../../../shared/systems/index.ts";
 import { DECIMALS, printCount, printFixed } from "../../../shared/tables/numbers.ts";
 import { withArticle } from "../../../shared/tables/slutsky-matrix.ts";
+import { standardErrorsPhrase } from "../../../shared/tables/standard-errors.ts";
 
 /** The specification in words, one line a question. */
 export function specificationLines({
@@ -22,7 +23,7 @@ export function specificationLines({
     ["Intercepts shift with", listWords(fitted.demographics) || "nothing"],
     ["Imposed", listWords(fitted.imposed) || "nothing"],
     ["Estimator", `${system.estimator}, converged in ${iterations}`],
-    ["Standard errors", system.standardErrors],
+    ["Standard errors", capital(standardErrorsPhrase(system))],
     ["Evaluated at", `${withArticle(slutsky.pointName)}, expenditure ${total} in the units uploaded`],
     ["Expenditure", "taken as exogenous"],
     ["Rows", `${printCount(system.rows)}${data.weighted ? ", weighted" : ""}`],
