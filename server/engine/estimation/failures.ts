@@ -59,10 +59,17 @@ const printShare = (share: number) => printQuantity(Math.abs(share) < ROUNDING ?
 
 /**
  * Each equation needs as many rows as it has coefficients before restrictions across equations, and
- * one more for every equation, or some combination of equations fits exactly and no likelihood exists.
+ * one more for every equation, or some combination of equations fits exactly and no likelihood exists. Where the
+ * form itself restricts across equations, `combined` is what a combination of them needs (`rowsNeeded`).
  */
-export function refuseTooFewRows(rows: number, free: number, equations: number, freeWithinEquations: number): void {
-  const needed = Math.ceil(freeWithinEquations / equations) + equations;
+export function refuseTooFewRows(
+  rows: number,
+  free: number,
+  equations: number,
+  freeWithinEquations: number,
+  combined = 0,
+): void {
+  const needed = Math.max(Math.ceil(freeWithinEquations / equations) + equations, combined);
   if (rows >= needed) return;
   throw new Refusal(
     `The data have ${rows} rows used; ${free} free coefficients in ${equations} equations need at least ${needed}.`,
