@@ -2,10 +2,17 @@ import { z } from "zod";
 import { INTERACTION_NAMES, PRICE_INDEX_NAMES, RESTRICTION_NAMES, SYSTEM_NAMES } from "../systems/names.ts";
 import { theoryChecks } from "./checks.ts";
 import { curvatureFinding, curvatureIssues, curvatureSpecification } from "./curvature.ts";
+import { easiIssues } from "./easi.ts";
 import { equationsExplained, expenditureReport, sampleIssues } from "./equations.ts";
 import { endogeneity, firstStepIssues, zerosFinding } from "./first-steps.ts";
 import { cellName, columnName, count, fingerprint, finite, goodName, matrix, vector } from "./primitives.ts";
-import { bootstrapFinding, checkStandardErrors, clustersFinding, STANDARD_ERROR_KINDS, standardErrorsSpecification } from "./standard-errors.ts";
+import {
+  bootstrapFinding,
+  checkStandardErrors,
+  clustersFinding,
+  STANDARD_ERROR_KINDS,
+  standardErrorsSpecification,
+} from "./standard-errors.ts";
 
 export { type StandardErrorsSpecification, standardErrorsSpecification } from "./standard-errors.ts";
 
@@ -66,6 +73,7 @@ export const systemSpecification = z
         message: `index belongs to la-aids; ${system.form} has none to choose`,
       });
     }
+    for (const { path, message } of easiIssues(system)) context.addIssue({ code: "custom", path, message });
     for (const { path, message } of sampleIssues(system)) context.addIssue({ code: "custom", path, message });
     for (const { path, message } of firstStepIssues(system)) context.addIssue({ code: "custom", path, message });
     for (const { path, message } of curvatureIssues(system)) context.addIssue({ code: "custom", path, message });
@@ -166,7 +174,9 @@ export const systemFinding = z.strictObject({
   expenditure: expenditureReport.optional(),
   weighted: z.boolean(),
   /** Where prices are not normalised: by what the estimates depend on the units they were uploaded in, if they do. */
-  unitsMatterBy: z.enum(["a fixed α₀", "Stone's index", "the lagged Stone index"]).optional(),
+  unitsMatterBy: z
+    .enum(["a fixed α₀", "Stone's index", "the lagged Stone index", "real expenditure at unit prices"])
+    .optional(),
   freeCoefficients: count,
   /** Of easi: what y stands for in the equations, and what the estimator's name means then. */
   implicit: z.strictObject({ realExpenditure: z.enum(["exact", "approximate"]), method: z.string() }).optional(),

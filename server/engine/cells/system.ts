@@ -5,6 +5,7 @@ import type { Point } from "../../../shared/systems/demand-system.ts";
 import { type FittedCoefficients, systemOf } from "../../../shared/systems/index.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { withTimeTerms } from "../columns/seasonal-terms.ts";
+import { easiSizeOf } from "../estimation/easi/specification.ts";
 import {
   accumulateMoments,
   estimateSystem,
@@ -54,8 +55,12 @@ export function runSystem(given: SystemSpecification, data: PreparedData, contro
 }
 
 /** AIDS with α₀ fixed and Stone's index are not invariant to units (Moschini 1995, American Journal of Agricultural Economics 77). */
-function unitsMatter({ form, index }: SystemSpecification, data: PreparedData): Pick<SystemFinding, "unitsMatterBy"> {
+function unitsMatter(specification: SystemSpecification, data: PreparedData): Pick<SystemFinding, "unitsMatterBy"> {
   if (data.finding.normalise === "mean") return {};
+  const { form, index } = specification;
+  // Straight Engel curves in y stay straight in other units, curved ones do not.
+  if (form === "easi" && easiSizeOf(specification).degree > 1)
+    return { unitsMatterBy: "real expenditure at unit prices" };
   if (form === "aids" || form === "quaids") return { unitsMatterBy: "a fixed α₀" };
   if (form !== "la-aids") return {};
   if (index === "lagged stone") return { unitsMatterBy: "the lagged Stone index" };

@@ -55,3 +55,11 @@ export function crossProduct(left: Columns, right: Columns): Columns {
   }
   return product;
 }
+
+export function transposed(matrix: Columns): Columns {
+  const result = zeros(matrix.columns, matrix.rows);
+  for (let j = 0; j < matrix.columns; j++) {
+    for (let i = 0; i < matrix.rows; i++) result.values[i * result.rows + j] = matrix.values[j * matrix.rows + i];
+  }
+  return result;
+}

@@ -14,6 +14,8 @@ import { systemForm } from "./coefficient-form.ts";
 import { coefficientNames, labelOfCoefficient } from "./coefficient-labels.ts";
 import { type CurvaturePoint, imposeCurvature } from "./curvature/impose.ts";
 import { durbinWatson } from "./durbin-watson.ts";
+import { exactFinding, fittedEasi } from "./easi/exact-finding.ts";
+import { isExactEasi } from "./easi/specification.ts";
 import { equationsExplainedBy } from "./equations-explained.ts";
 import type { Estimation } from "./estimation.ts";
 import { refuseConstantShares, refuseTooFewRows } from "./failures.ts";
@@ -24,8 +26,9 @@ import type { Solution } from "./minimise.ts";
 import type { Moments } from "./moments.ts";
 import { nestedFits, rememberFit } from "./nested-fits.ts";
 import { momentsRequest, sizeOf } from "./request.ts";
-import { solve, withinEquations } from "./solve.ts";
+import { meanResponses } from "./responses.ts";
 import { rowsNeeded } from "./rows-needed.ts";
+import { solve, withinEquations } from "./solve.ts";
 import { sampleOf, specifiedSystem } from "./specified-system.ts";
 import { covarianceOf } from "./weighting.ts";
 
@@ -59,6 +62,9 @@ export function estimateSystem(
   const within = systemForm(system, size, withinEquations(specification)).free;
   refuseTooFewRows(moments.rows, linear.form.free, linear.equations.length, within, neededByForm(system, size, linear));
   refuseConstantShares(linear);
+  if (isExactEasi(specification)) {
+    return exactFinding({ specification, data, size, names, dropped, estimation: linear }, control);
+  }
   const unbent = { estimation: linear, solution: solve(specification, system, size, linear, control) };
   const { estimation, solution, curvature } = imposeCurvature(
     specification,
@@ -93,6 +99,7 @@ export function estimateSystem(
         index: size.index.name,
         indexMeans: { shares: [...size.index.meanShares], prices: [...size.index.meanPrices] },
       }),
+      ...(specification.form === "easi" && { easi: fittedEasi(specification) }),
       goods: [...data.goods],
       ...(system.kind === "differences" && {
         meanShares: data.shares.map((share) => weightedMean(share, data.weights)),
@@ -115,6 +122,9 @@ export function estimateSystem(
     ...(equations && { equations }),
     weighted: moments.weighted,
     freeCoefficients: estimation.form.free,
+    ...(specification.form === "easi" && {
+      implicit: { realExpenditure: "approximate" as const, method: specification.estimator },
+    }),
     ...measures,
     convergence: { iterations, gradient, largestStep, condition },
     ...(durbin && { durbinWatson: durbin }),
@@ -123,6 +133,14 @@ export function estimateSystem(
     ...(curvature && { curvature }),
     ...firstStepFindings(fit, source, control),
   };
+}
+
+/** Rows that combinations of equations need whose coefficients the form itself shares between them (LES). */
+function neededByForm(system: DemandSystem, size: SystemSize, { form, equations, ...rest }: Estimation): number {
+  if (system.heldByForm.length === 0 || system.moments.local !== undefined) return 0;
+  const start = system.start(size, meanResponses(rest));
+  const free = form.expand.places.map((place) => start[place]);
+  return rowsNeeded(form, free, equations);
 }
 
 function placeOfDropped({ dropped }: SystemSpecification, goods: readonly string[]): number {

@@ -1,0 +1,90 @@
+import type { SystemFinding, SystemSpecification } from "../../../../shared/schemas/system.ts";
+import type { SystemSize } from "../../../../shared/systems/demand-system.ts";
+import { easi } from "../../../../shared/systems/easi.ts";
+import type { PreparedData } from "../../columns/prepared-data.ts";
+import type { RunControl } from "../../run.ts";
+import { durbinWatson } from "../durbin-watson.ts";
+import type { Estimation } from "../estimation.ts";
+import { leastSquares } from "../estimators.ts";
+import { fitMeasures } from "../fit-measures.ts";
+import type { Reduction } from "../moments.ts";
+import { meanResponses } from "../responses.ts";
+import { covarianceOf } from "../weighting.ts";
+import { exactInference } from "./exact-inference.ts";
+import { exactProblem, iterateExact } from "./exact-iteration.ts";
+import { ExactLikelihood } from "./exact-likelihood.ts";
+import { maximiseExact } from "./exact-maximum.ts";
+
+/** What the exact form has of a system finding that the estimators of linear equations make otherwise. */
+export type ExactEstimate = Pick<
+  SystemFinding,
+  | "implicit"
+  | "standardErrors"
+  | "clusters"
+  | "effectiveRows"
+  | "logLikelihood"
+  | "rSquared"
+  | "systemRSquared"
+  | "convergence"
+  | "durbinWatson"
+  | "residualCovariance"
+  | "tests"
+  | "untested"
+> & { readonly theta: number[]; readonly covariance: number[][] } & Partial<Pick<SystemFinding, "aic" | "bic">>;
+
+const METHODS = {
+  "least squares": "two-stage least squares, iterated on implicit utility",
+  "seemingly unrelated": "three-stage least squares, iterated on implicit utility",
+  "iterated seemingly unrelated": "iterated three-stage least squares, iterated on implicit utility",
+  "maximum likelihood": "full information maximum likelihood, with the Jacobian of implicit utility",
+} as const;
+
+/**
+ * EASI with implicit utility, from the approximate form's least squares. Instruments are the equations' own terms with
+ * the sample's mean shares in y. `estimation` holds the moments of the approximate form.
+ *
+ * Errors: those of `iterateExact` and `maximiseExact`; `Cancelled`.
+ */
+export function estimateExactEasi(
+  specification: SystemSpecification,
+  data: PreparedData,
+  size: SystemSize,
+  estimation: Estimation,
+  control: RunControl,
+  reduction?: Reduction,
+): ExactEstimate {
+  const theta = easi.start(size, meanResponses(estimation));
+  const start = estimation.form.expand.places.map((place) => theta[place]);
+  const approximate = leastSquares(estimation, true, start, control);
+  const problem = exactProblem(specification, data, size, estimation, control, reduction);
+  const stages = iterateExact(problem, approximate);
+  const likelihood = specification.estimator === "maximum likelihood";
+  const exact = likelihood ? maximiseExact(problem, stages) : stages;
+  const { solution, equations } = exact;
+  const { rSquared, systemRSquared } = fitMeasures(equations.estimation, solution);
+  const logLikelihood = new ExactLikelihood(problem).value(solution.free);
+  const free = estimation.form.free;
+  const { iterations, gradient, largestStep, condition } = solution;
+  const coefficients = estimation.form.coefficients(solution.free);
+  const durbin =
+    data.time &&
+    durbinWatson(
+      { ...equations.source, terms: equations.source.terms.slice(0, equations.source.equationTerms) },
+      data.time,
+      coefficients,
+    );
+  return {
+    theta: solution.theta,
+    ...exactInference(problem, exact),
+    implicit: { realExpenditure: "exact", method: METHODS[specification.estimator] },
+    logLikelihood,
+    // They speak of the likelihood's maximum.
+    ...(likelihood && { aic: -2 * logLikelihood + 2 * free, bic: -2 * logLikelihood + free * Math.log(data.rows) }),
+    rSquared,
+    systemRSquared,
+    convergence: { iterations, gradient, largestStep, condition },
+    ...(durbin && { durbinWatson: durbin }),
+    residualCovariance: covarianceOf(solution.residuals, data.rows),
+    tests: [],
+  };
+}
