@@ -1,6 +1,6 @@
 import { Cancelled, type RunControl } from "../run.ts";
 import { type CoefficientForm, expand } from "./coefficient-form.ts";
-import { type Columns, dot, pickColumns } from "./columns.ts";
+import { type Columns, dot, pickColumns, zeros } from "./columns.ts";
 import { conditionOf } from "./condition.ts";
 import type { Estimation } from "./estimation.ts";
 import { refuseNotConverged, refuseNotIdentified } from "./failures.ts";
@@ -145,6 +145,11 @@ export const LOG_TWO_PI_E = 1 + Math.log(2 * Math.PI);
 function evaluate(estimation: Estimation, criterion: Criterion, free: number[], control: RunControl): State {
   const { moments, form, equations } = estimation;
   const residuals = moments.local?.residuals(expand(form.expand, free), control) ?? residualFactor(moments, form, free);
+  if (moments.local !== undefined && !residuals.values.every(Number.isFinite)) {
+    // A trial so far off that an exponential of its terms overflows: no criterion is higher.
+    const nothing = zeros(equations.length, equations.length);
+    return { free, residuals, weight: nothing, weighted: nothing, value: Number.POSITIVE_INFINITY };
+  }
   const { weight, logDeterminant } =
     criterion.kind === "weighted"
       ? { weight: criterion.weight, logDeterminant: 0 }
