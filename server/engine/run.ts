@@ -22,6 +22,8 @@ export interface Task<Shared, Item, Result> {
 export interface Threads {
   /** All of them. */
   readonly count: number;
+  /** Multiplications below which dividing a computation costs more than it saves: some fifty milliseconds. */
+  readonly worthDividing: number;
   /** What `mapInOrder` of threads/map-in-order.ts does where there are several. */
   map<Shared, Item, Result>(
     task: Task<Shared, Item, Result>,

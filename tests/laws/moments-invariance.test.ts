@@ -98,7 +98,7 @@ describe.each(SYSTEMS_UNDER)("%s %j", (form, impose) => {
         },
         { name: `q${i}`, type: "number" as const, values: quantity(i).map((value) => value / priceUnits[i]) },
       ]);
-      columns.push({ name: "week", type: "number" as const, values: data.time! });
+      columns.push({ name: "week", type: "number" as const, values: Float64Array.from(data.time!) });
       const goods = Object.fromEntries(data.goods.map((good, i) => [good, { price: `p${i}`, quantity: `q${i}` }]));
       return prepareData(
         dataSpecification.parse({ kind: "data", upload: "rows", goods, time: "week", normalise: "mean" }),

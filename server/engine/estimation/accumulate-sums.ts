@@ -10,8 +10,6 @@ import type { Whitening } from "./whitening.ts";
 
 /** Rows summed by themselves: a few tens of milliseconds. What is summed with what depends on nothing else. */
 const CHUNK_ROWS = 64 * BLOCK_ROWS;
-/** Multiplications below which dividing the rows among threads would not pay: some fifty milliseconds. */
-const WORTH_DIVIDING = 1e8;
 /** Numbers that sums of chunks may take up at a time, 64 MB: they are added up in the order of the rows. */
 const MOST_NUMBERS = 8 * 2 ** 20;
 
@@ -36,11 +34,12 @@ export function accumulateSums(
   fraction: (rowsDone: number) => number,
 ): Float64Array {
   const size = plan.tiles * 16;
-  const divided = (control.threads?.count ?? 1) > 1 && (range.to - range.from) * size >= WORTH_DIVIDING;
-  const { threads: _, ...alone } = control;
+  const { threads, ...alone } = control;
+  const worthIt = threads !== undefined && (range.to - range.from) * size >= threads.worthDividing;
+  const divided = worthIt && threads.count > 1;
   const totals = new Float64Array(size);
   const lost = new Float64Array(size);
-  const together = divided ? Math.max(2 * control.threads!.count, Math.floor(MOST_NUMBERS / size)) : 1;
+  const together = divided ? Math.max(2 * threads.count, Math.floor(MOST_NUMBERS / size)) : 1;
   const chunks = chunksOf(range);
   const rows: Rows = { source: divided ? onSharedColumns(source) : source, whitening, terms, plan };
   for (let done = 0; done < chunks.length; done += together) {

@@ -27,6 +27,7 @@ interface Helper {
   readonly answers: MessagePort;
 }
 
+const WORTH_DIVIDING = 1e8;
 const MILLISECONDS_BETWEEN_LOOKS = 20;
 /** An item not finished for so long after everything else is done again here: its helper may be gone. */
 const PATIENCE_MILLISECONDS = 10_000;
@@ -36,7 +37,7 @@ const PATIENCE_MILLISECONDS = 10_000;
  * when first needed and reused; one that is still starting takes part when it is ready, nobody waits for it.
  * They end with the thread that started them and do not keep a process alive.
  */
-export function startThreads(count: number): Threads {
+export function startThreads(count: number, worthDividing: number = WORTH_DIVIDING): Threads {
   const helpers: Helper[] = [];
   let runs = 0;
 
@@ -52,6 +53,7 @@ export function startThreads(count: number): Threads {
 
   return {
     count,
+    worthDividing,
     map<Shared, Item, Result>(
       task: Task<Shared, Item, Result>,
       shared: Shared,
