@@ -1,6 +1,7 @@
 import type { DataFinding } from "../schemas/data.ts";
 import type { SlutskyFinding } from "../schemas/slutsky.ts";
 import type { SystemFinding } from "../schemas/system.ts";
+import { equationsSentences } from "./equations-sentence.ts";
 import { printCount, printQuantity, printSize } from "./numbers.ts";
 import { capital, countedRows, listed } from "./phrases.ts";
 import { withArticle } from "./slutsky-matrix.ts";
@@ -26,11 +27,14 @@ export function dataSentence({ accounting }: Pick<DataFinding, "accounting">): s
   return `${printCount(used)} of ${printCount(uploaded)} rows ${verb} used. Of the ${printCount(uploaded - used)} left out, ${listed(parts)}.`;
 }
 
-type ToldSystem = Pick<SystemFinding, "checks" | "tests" | "expenditureElasticities" | "rows" | "unitsMatterBy">;
+type ToldSystem = Pick<
+  SystemFinding,
+  "checks" | "tests" | "expenditureElasticities" | "rows" | "unitsMatterBy" | "equations" | "expenditure"
+>;
 
 /** Which goods are luxuries and necessities beyond doubt, then what theory is violated. */
 export function systemSentence(system: ToldSystem): string {
-  return [classesOfGoods(system), ...violations(system), ...ofUnits(system)].join(" ");
+  return [classesOfGoods(system), ...violations(system), ...ofUnits(system), ...equationsSentences(system)].join(" ");
 }
 
 function ofUnits({ unitsMatterBy }: ToldSystem): string[] {

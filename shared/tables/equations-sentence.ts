@@ -1,0 +1,62 @@
+import type { SystemFinding } from "../schemas/system.ts";
+import { printCount, printFixed } from "./numbers.ts";
+import { listed } from "./phrases.ts";
+
+type Told = Pick<SystemFinding, "rows" | "equations" | "expenditure">;
+
+/**
+ * What the equations explain and from how many periods, and where the linear expenditure system is not regular:
+ * nothing for a system that explains the shares of every row used.
+ */
+export function equationsSentences({ rows, equations, expenditure }: Told): string[] {
+  return [...(equations ? explained(rows, equations) : []), ...(expenditure ? regularity(rows, expenditure) : [])];
+}
+
+function explained(rows: number, { explains, leftOut, because }: NonNullable<Told["equations"]>): string[] {
+  const sentences: string[] = [];
+  if (explains === "expenditures") {
+    sentences.push(
+      "Errors stand on expenditures: the log-likelihood is one of expenditures and is not comparable with one of shares.",
+    );
+  }
+  if (explains === "changes of shares" || explains === "contributions to volume") {
+    const what = explains === "changes of shares" ? "changes of shares" : "each good's part in the change of volume";
+    sentences.push(
+      `The equations explain ${what} from one period to the next, so their log-likelihood is not comparable with one of shares.`,
+    );
+  }
+  if (explains === "contributions to volume") {
+    sentences.push("No level of shares is predicted: elasticities stand at observed shares.");
+  }
+  if (leftOut > 0) {
+    const [first, second] = because;
+    const one = first === "lagged shares" ? "no shares before it" : "no change from a period before it";
+    const reason =
+      second === undefined
+        ? `the first period has ${one}`
+        : `the first ${leftOut} periods in turn have no shares, or no change of shares, before them`;
+    sentences.push(`T is ${printCount(rows)} of ${printCount(rows + leftOut)} rows used: ${reason}.`);
+  }
+  return sentences;
+}
+
+function regularity(
+  rows: number,
+  { withoutSupernumerary, atBound, frisch }: NonNullable<Told["expenditure"]>,
+): string[] {
+  const sentences: string[] = [];
+  if (withoutSupernumerary.rows > 0) {
+    const { rows: without, weightedShare, firstRows } = withoutSupernumerary;
+    const which = firstRows.length > 0 ? `, first in row ${firstRows[0]}` : "";
+    sentences.push(
+      `In ${printCount(without)} of ${printCount(rows)} rows (${printFixed(100 * weightedShare, 1)} % by weight) committed expenditure takes all of the total${which}: utility is not defined there.`,
+    );
+  }
+  if (atBound.length > 0) {
+    const goods = atBound.map(({ good, estimate }) => `${good} (${printFixed(estimate, 4)})`);
+    const verb = atBound.length === 1 ? "is at or beyond its bound" : "are at or beyond their bounds";
+    sentences.push(`The marginal budget share of ${listed(goods)} ${verb} of 0 and 1.`);
+  }
+  if (frisch === undefined) sentences.push("At the point of the checks nothing is left beyond committed expenditure.");
+  return sentences;
+}
