@@ -131,11 +131,23 @@ function splitOfMore(monomial: number[], place: ReadonlyMap<string, number>): [n
   return undefined;
 }
 
-/** Rows with the same second base column want (nearly) the same columns: one rectangle each. */
+/** Plain columns, in no product, that are grouped from the start where there are very many (zeros in two steps). */
+const MANY_PLAIN = 48;
+const PLAIN_TOGETHER = 4 * TILE;
+
+/**
+ * Rows with the same second base column want (nearly) the same columns: one rectangle each. A plain column wants all
+ * those after it.
+ */
 function groupRows(terms: readonly TermPair[], wanted: ReadonlyMap<number, ReadonlySet<number>>): Group[] {
+  const inProducts = new Set(terms.flatMap((term) => (term[0] === 0 ? [] : [...term])));
+  const plain = terms.flatMap(([left, right], row) => (left === 0 && !inProducts.has(right) ? [row] : []));
+  const bundle = new Map(
+    plain.length < MANY_PLAIN ? [] : plain.map((row, at) => [row, Math.floor(at / PLAIN_TOGETHER)]),
+  );
   const groups = new Map<string, { rows: number[]; columns: Set<number> }>();
   for (const [row, columns] of wanted) {
-    const alike = terms[row].slice(1).join();
+    const alike = bundle.has(row) ? `plain ${bundle.get(row)}` : terms[row].slice(1).join();
     if (!groups.has(alike)) groups.set(alike, { rows: [], columns: new Set() });
     const group = groups.get(alike)!;
     group.rows.push(row);
