@@ -1,8 +1,9 @@
 import type { Matrix } from "../numerics/matrix.ts";
 import type { Point, SlopeDerivatives, Slopes } from "../systems/demand-system.ts";
-import type { FittedCoefficients } from "../systems/index.ts";
+import { type FittedCoefficients, SYSTEMS, systemOf } from "../systems/index.ts";
 import { evaluateAt } from "./evaluation.ts";
 import { type IndexResponse, withIndexWeights } from "./linear-index.ts";
+import { differencesAtShares } from "./observed-shares.ts";
 import { slutskyDerivatives, slutskyMatrix } from "./slutsky-matrix.ts";
 
 /**
@@ -59,6 +60,13 @@ export function responsesAt(
   };
 }
 
+/** The same without derivatives. */
+export function responsesValuesAt(fitted: FittedCoefficients, point: Point, options: ResponseOptions = {}): Responses {
+  const { system, size } = systemOf(fitted);
+  const held = system.slopes(fitted.theta, size, point);
+  return responsesFrom(fitted.form, held, point.prices.map(Math.log), options);
+}
+
 /** The same without derivatives, from slopes already evaluated at the point's log prices. */
 export function responsesFrom(
   form: FittedCoefficients["form"],
@@ -76,6 +84,7 @@ function chosen(
   logPrices: readonly number[],
   { observed, index = "held" }: ResponseOptions,
 ) {
+  if (observed !== undefined && SYSTEMS[form].kind === "differences") return differencesAtShares(held, observed);
   const adjusted = form === "la-aids" ? withIndexWeights(held, index, logPrices, observed) : held;
   if (observed === undefined) return adjusted;
   const { slopes, derivatives } = adjusted;

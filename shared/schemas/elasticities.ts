@@ -105,7 +105,9 @@ export const elasticitiesFinding = z.strictObject({
   shares: z.enum(["predicted", "observed"]),
   index: z.enum(["held", "exact"]),
   level: finite,
-  /** Estimate and standard error times a normal quantile, or the bootstrap's own percentiles. */
+  /** What the system's standard errors are, in words: "clustered by village, 212 clusters". */
+  standardErrors: z.string(),
+  /** Estimate and standard error times a normal quantile, or (at points) the bootstrap's own percentiles. */
   intervals: z.enum(["normal", "percentile"]),
   /** What parts the rows; absent of one point, and over all rows. */
   groupedBy: groupsSpecification.optional(),

@@ -71,7 +71,7 @@ function severalGroups(finding: ElasticitiesFinding): string {
   return `${first} ${widest(finding)}`;
 }
 
-/** The good whose expenditure elasticity differs most between groups, in standard errors of neither: by its size. */
+/** The good whose expenditure elasticity differs most between groups. */
 function widest({ goods, groups }: ElasticitiesFinding): string {
   const spans = goods.map((good, i) => {
     const ordered = groups.toSorted((a, b) => a.expenditure.values[i] - b.expenditure.values[i]);
@@ -80,7 +80,7 @@ function widest({ goods, groups }: ElasticitiesFinding): string {
   });
   const { good, low, high, i } = spans.toSorted((a, b) => b.span - a.span)[0];
   const value = (group: ElasticityGroup) => printQuantity(group.expenditure.values[i], "elasticity");
-  return `Expenditure elasticities differ most for ${good}: ${value(low)} (${low.name}) to ${value(high)} (${high.name}).`;
+  return `${good} differs most between them, ${value(low)} to ${value(high)}.`;
 }
 
 function giffenGoods({ classes }: ElasticityGroup): string[] {
@@ -100,11 +100,10 @@ export function elasticityNotes(finding: ElasticitiesFinding): string[] {
   return [errorsNote(finding), whereNote(finding), sharesNote(finding), ...cautions(finding)];
 }
 
-function errorsNote({ intervals, level }: ElasticitiesFinding): string {
-  const percent = printPercent(level, 0);
-  return intervals === "normal"
-    ? `Estimate over (standard error) by the delta method; intervals of ${percent}.`
-    : `Estimate over (standard error) by the delta method; intervals of ${percent} from the bootstrap's own percentiles.`;
+function errorsNote({ intervals, level, standardErrors }: ElasticitiesFinding): string {
+  const errors = `Estimate over (standard error) by the delta method, ${standardErrors}`;
+  const percentiles = intervals === "percentile" ? " by the bootstrap's own percentiles" : "";
+  return `${errors}; intervals of ${printPercent(level, 0)}${percentiles}.`;
 }
 
 function whereNote({ over, groupedBy, groups }: ElasticitiesFinding): string {

@@ -139,6 +139,7 @@ export function exampleFindings(): {
       shares: "predicted",
       index: "held",
       level: 0.95,
+      standardErrors: "conventional",
       intervals: "normal",
       groups: [
         {

@@ -8,7 +8,9 @@ import {
 } from "../../../shared/schemas/elasticities.ts";
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { capital } from "../../../shared/study/words.ts";
+import { SYSTEMS } from "../../../shared/systems/index.ts";
 import { withArticle } from "../../../shared/tables/slutsky-matrix.ts";
+import { standardErrorsPhrase } from "../../../shared/tables/standard-errors.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { Refusal } from "../refusal.ts";
 import { Cancelled, QUIET, type RunControl } from "../run.ts";
@@ -30,9 +32,11 @@ export function runElasticities(
   control: RunControl = QUIET,
 ): ElasticitiesFinding {
   const { fitted } = system;
-  const { groups: groupedBy, over, shares, index, level } = specification;
+  const { groups: groupedBy, over, index, level } = specification;
+  // A system in differences predicts no shares: observed ones stand in its formulas whatever is asked.
+  const shares = SYSTEMS[fitted.form].kind === "differences" ? ("observed" as const) : specification.shares;
   if (index === "exact" && fitted.index !== "stone") throw new Refusal([{ sentence: MOVES, key: ["index"] }]);
-  const { groups, derivativeRows } = evaluated(specification, system, data, control);
+  const { groups, derivativeRows } = evaluated({ ...specification, shares }, system, data, control);
   const found = groups.filter((group): group is ElasticityGroup => !("undefined" in group));
   const without = groups.filter((group) => "undefined" in group);
   if (found.length === 0) throw new Refusal(without.map((group) => refused(group, groupedBy !== undefined)));
@@ -46,7 +50,8 @@ export function runElasticities(
     shares,
     index,
     level,
-    intervals: "normal",
+    standardErrors: standardErrorsPhrase(system),
+    intervals: over === "means" && system.bootstrap?.draws ? "percentile" : "normal",
     ...(groupedBy && { groupedBy }),
     groups: found,
     checks: checksOf(system, found),

@@ -1,5 +1,11 @@
-import { classesByIntervals, type Interval, normalIntervals } from "../../../shared/economics/classes.ts";
-import { type Elasticities, elasticitiesOf } from "../../../shared/economics/elasticities.ts";
+import {
+  classesByIntervals,
+  type ElasticityIntervals,
+  type Interval,
+  normalIntervals,
+} from "../../../shared/economics/classes.ts";
+import { type Elasticities, type ElasticityValues, elasticitiesOf } from "../../../shared/economics/elasticities.ts";
+import { percentileInterval } from "../../../shared/economics/percentile.ts";
 import type { ResponseGradients, Responses } from "../../../shared/economics/responses.ts";
 import type { ElasticityGroup, EstimatesByPrice } from "../../../shared/schemas/elasticities.ts";
 import type { FittedCoefficients } from "../../../shared/systems/index.ts";
@@ -8,14 +14,18 @@ import { printQuantity } from "../../../shared/tables/numbers.ts";
 /** The elasticities of a group with intervals and classes: what is said of it beside who it is. */
 export type EvaluatedGroup = Omit<ElasticityGroup, "name" | "rows" | "weightShare" | "total" | "point" | "notPositive">;
 
-/** From responses with their derivatives to elasticities, standard errors, intervals at `level` and classes. */
+/**
+ * From responses with their derivatives to elasticities, standard errors, intervals at `level` and classes. The
+ * intervals are percentiles of the elasticities at every bootstrap draw where those are given.
+ */
 export function evaluatedGroup(
   fitted: FittedCoefficients,
   { responses, gradients }: { responses: Responses; gradients: ResponseGradients },
   level: number,
+  draws?: readonly ElasticityValues[],
 ): EvaluatedGroup {
   const elasticities = elasticitiesOf(responses, gradients, fitted.covariance);
-  const intervals = normalIntervals(elasticities, level);
+  const intervals = draws ? percentileIntervals(draws, level) : normalIntervals(elasticities, level);
   const { goods, net, gross } = classesByIntervals(intervals, fitted.goods, level);
   return {
     shares: elasticities.shares,
@@ -36,6 +46,29 @@ export function evaluatedGroup(
     })),
     net,
     gross,
+  };
+}
+
+function percentileIntervals(draws: readonly ElasticityValues[], level: number): ElasticityIntervals {
+  const goods = draws[0].expenditure.map((_, i) => i);
+  const ofMatrix = (which: "uncompensated" | "compensated") =>
+    goods.map((i) =>
+      goods.map((j) =>
+        percentileInterval(
+          draws.map((draw) => draw[which][i][j]),
+          level,
+        ),
+      ),
+    );
+  return {
+    expenditure: goods.map((i) =>
+      percentileInterval(
+        draws.map(({ expenditure }) => expenditure[i]),
+        level,
+      ),
+    ),
+    uncompensated: ofMatrix("uncompensated"),
+    compensated: ofMatrix("compensated"),
   };
 }
 

@@ -1,5 +1,7 @@
 import type { z } from "zod";
-import { responsesAt } from "../../../shared/economics/responses.ts";
+import { elasticityValues } from "../../../shared/economics/elasticities.ts";
+import { overDraws } from "../../../shared/economics/percentile.ts";
+import { responsesAt, responsesValuesAt } from "../../../shared/economics/responses.ts";
 import type {
   ElasticitiesSpecification,
   ElasticityGroup,
@@ -55,17 +57,21 @@ function evaluate(
   about: Pick<ElasticityGroup, "name" | "rows" | "weightShare" | "total">,
   point: Point,
   { shares, index, level }: Options,
-  { fitted }: SystemFinding,
+  { fitted, bootstrap }: SystemFinding,
   data: PreparedData,
   rows: Int32Array | undefined,
 ): GroupOrReason {
   const observed = shares === "observed" && data.shares.map((column) => meanOver(column, rows, data.weights));
+  const responseOptions = { index, ...(observed && { observed }) };
   try {
-    const at = responsesAt(fitted, point, { index, ...(observed && { observed }) });
+    const at = responsesAt(fitted, point, responseOptions);
     const reason = notPositive(at.responses.shares, fitted.goods, shares);
     if (reason !== undefined) return { ...about, undefined: reason };
+    const drawn =
+      bootstrap?.draws &&
+      overDraws(fitted, bootstrap.draws, (draw) => elasticityValues(responsesValuesAt(draw, point, responseOptions)));
     const named = { prices: [...point.prices], total: point.total, demographics: [...point.demographics] };
-    return { ...about, point: named, notPositive: [], ...evaluatedGroup(fitted, at, level) };
+    return { ...about, point: named, notPositive: [], ...evaluatedGroup(fitted, at, level, drawn) };
   } catch (error) {
     // What a system does not define at a point (LA-AIDS far from its base prices) says so itself.
     if (!(error instanceof RangeError)) throw error;

@@ -10,7 +10,7 @@ import { Cancelled, type RunControl } from "../run.ts";
 import { evaluatedGroup, notPositive } from "./elasticity-at.ts";
 import type { RowGroup } from "./elasticity-groups.ts";
 import { type GroupOrReason, meanOver, weightOver } from "./elasticity-points.ts";
-import { demographicColumns, pointOfRow } from "./points.ts";
+import { demographicColumns } from "./points.ts";
 
 type Options = Pick<ElasticitiesSpecification, "shares" | "index" | "level">;
 
@@ -78,17 +78,15 @@ function overGroup(
     const observed = shares === "observed" ? data.shares.map((column) => column[t]) : undefined;
     const rowOptions: ResponseOptions = { index, ...(observed && { observed }) };
     const weight = (data.weights ? data.weights[t] : 1) * Math.exp(data.logTotal[t]);
-    evaluator.at(
-      logPrices,
-      data.logTotal[t],
-      demographics.map((column) => column[t]),
-    );
+    const own = demographics.map((column) => column[t]);
+    evaluator.at(logPrices, data.logTotal[t], own);
     const responses = responsesFrom(fitted.form, heldBy(evaluator), logPrices, rowOptions);
     sums.add(responses, weight);
     for (const i of goods) if (!(responses.shares[i] > 0)) below[i]++;
     if (!withDerivatives) return;
     derivativeRows.used++;
-    const { slopes, derivatives } = slopesAt(fitted, pointOfRow(data, fitted.demographics, t), rowOptions);
+    const point = { prices: logPrices.map(Math.exp), total: Math.exp(data.logTotal[t]), demographics: own };
+    const { slopes, derivatives } = slopesAt(fitted, point, rowOptions);
     gradients.add(slopes, derivatives, weight);
   };
   rows.forEach((t, at) => {

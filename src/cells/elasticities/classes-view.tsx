@@ -2,7 +2,6 @@ import type { ElasticityGroup } from "../../../shared/schemas/elasticities.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { listed } from "../../../shared/tables/phrases.ts";
 import { Table } from "../../components/table.tsx";
-import { ClassWord } from "./shapes.tsx";
 
 type Pairs = ElasticityGroup["net"][number];
 
@@ -16,19 +15,18 @@ function respondsToIncome({ normal, incomeNeutral, giffen }: ElasticityGroup["cl
   return giffen === "yes" ? `${words}; a Giffen good` : words;
 }
 
-/** What each good of a group is, in words: by its expenditure elasticity, and with whom it stands how. */
+/** How each good of a group answers expenditure, and which others replace or accompany it, beyond doubt. */
 export function ClassesView({ group }: { group: ElasticityGroup }) {
   const goods = group.classes.map(({ good }) => good);
   return (
     <section aria-labelledby="classes" className="space-y-2 border-line border-t pt-4">
       <h2 id="classes" className="type-section">
-        Goods in words
+        Goods among each other
       </h2>
       <Table
-        caption="Classes of goods and of pairs"
+        caption="How the goods stand to each other"
         heads={[
           { key: "good", content: "Good" },
-          { key: "class", content: "Is", align: "left" },
           { key: "income", content: "With expenditure it", align: "left" },
           { key: "substitutes", content: "Net substitutes", align: "left" },
           { key: "complements", content: "Net complements", align: "left" },
@@ -37,7 +35,6 @@ export function ClassesView({ group }: { group: ElasticityGroup }) {
           key: one.good,
           head: capital(one.good),
           cells: [
-            <ClassWord key="class" kind={one.kind} />,
             respondsToIncome(one),
             namesOf(group.net[i], "substitutes", goods),
             namesOf(group.net[i], "complements", goods),

@@ -49,7 +49,7 @@ export function ElasticitiesForm(props: FormProps) {
       <IndexField {...own} context={context} />
       <TextField
         label="Level of confidence"
-        value={written.text("level") || (readOnly ? "0.95" : "")}
+        value={written.text("level") || "0.95"}
         numeric
         readOnly={readOnly}
         onCommit={(value) => written.write([["level"], value === "" ? undefined : asNumber(value)])}

@@ -56,8 +56,11 @@ export function PricesView({ finding, group, below }: PricesProps) {
           head: capital(good),
           cells: finding.goods.map((other, j) => (
             <span key={other} className="inline-flex items-baseline">
-              <PairMark pair={pairs[i][j]} />
-              <ElasticityEstimate one={entryOf(group[which], i, j)} below={below} />
+              <ElasticityEstimate
+                one={entryOf(group[which], i, j)}
+                below={below}
+                mark={<PairMark pair={pairs[i][j]} />}
+              />
             </span>
           )),
         }))}
