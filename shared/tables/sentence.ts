@@ -2,6 +2,7 @@ import type { DataFinding } from "../schemas/data.ts";
 import type { SlutskyFinding } from "../schemas/slutsky.ts";
 import type { SystemFinding } from "../schemas/system.ts";
 import { equationsSentences } from "./equations-sentence.ts";
+import { endogeneityHeadline } from "./first-steps-words.ts";
 import { printCount, printQuantity, printSize } from "./numbers.ts";
 import { capital, countedRows, listed } from "./phrases.ts";
 import { withArticle } from "./slutsky-matrix.ts";
@@ -29,12 +30,25 @@ export function dataSentence({ accounting }: Pick<DataFinding, "accounting">): s
 
 type ToldSystem = Pick<
   SystemFinding,
-  "checks" | "tests" | "expenditureElasticities" | "rows" | "unitsMatterBy" | "equations" | "expenditure"
+  | "checks"
+  | "tests"
+  | "expenditureElasticities"
+  | "rows"
+  | "unitsMatterBy"
+  | "equations"
+  | "expenditure"
+  | "endogeneity"
 >;
 
 /** Which goods are luxuries and necessities beyond doubt, then what theory is violated. */
 export function systemSentence(system: ToldSystem): string {
-  return [classesOfGoods(system), ...violations(system), ...ofUnits(system), ...equationsSentences(system)].join(" ");
+  return [
+    classesOfGoods(system),
+    ...violations(system),
+    ...ofUnits(system),
+    ...equationsSentences(system),
+    ...endogeneityHeadline(system),
+  ].join(" ");
 }
 
 function ofUnits({ unitsMatterBy }: ToldSystem): string[] {

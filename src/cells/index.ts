@@ -4,6 +4,7 @@ import { dataDescriptionTable } from "../../shared/tables/data-description.ts";
 import { eigenvalueTable } from "../../shared/tables/eigenvalues.ts";
 import { elasticityTables } from "../../shared/tables/elasticities.ts";
 import { equationsOf, equationTestsTable } from "../../shared/tables/equation-tests.ts";
+import { firstStepTables } from "../../shared/tables/first-steps.ts";
 import { revealedOf, revealedTable } from "../../shared/tables/revealed-preference.ts";
 import { rowAccountingTable } from "../../shared/tables/row-accounting.ts";
 import { compensatedTable, slutskyTable } from "../../shared/tables/slutsky-matrix.ts";
@@ -34,7 +35,7 @@ export const CELL_VIEWS: { readonly [K in CellKind]: CellView<K> } = {
     Form: SystemForm,
     Band: SystemBand,
     Open: SystemOpen,
-    tables: (finding) => [coefficientTable(finding)],
+    tables: (finding) => [coefficientTable(finding), ...firstStepTables(finding)],
   },
   tests: {
     Form: TestsForm,

@@ -7,10 +7,12 @@ import { Headline, OpenHead } from "../headline.tsx";
 import type { BandProps, OpenProps } from "../types.ts";
 import { stripOf } from "../verdicts.ts";
 import { CoefficientView } from "./coefficient-view.tsx";
+import { EndogeneityView } from "./endogeneity-view.tsx";
 import { EngelView } from "./engel-view.tsx";
 import { FitView } from "./fit-view.tsx";
 import { SystemNote } from "./note.tsx";
 import { TestsView } from "./tests-view.tsx";
+import { ZerosView } from "./zeros-view.tsx";
 
 /** A fitted system in its band: sentence, verdicts, coefficients with their Engel curves, note. */
 export function SystemBand({ finding }: BandProps<"system">) {
@@ -38,6 +40,8 @@ export function SystemOpen({ finding }: OpenProps<"system">) {
       </div>
       {finding.engel.logTotal.length > 0 && <EngelView finding={finding} />}
       <TestsView tests={finding.tests} untested={finding.untested} standardErrors={finding.standardErrors} />
+      {finding.endogeneity && <EndogeneityView endogeneity={finding.endogeneity} />}
+      {finding.zeros && <ZerosView zeros={finding.zeros} />}
       <FitView finding={finding} />
     </div>
   );
