@@ -105,6 +105,11 @@ function reestimate(
   control: RunControl,
 ): number[] {
   const system = specifiedSystem(specification, data);
+  if (system.layout(size).length !== coefficientLabels.length) {
+    throw new Refusal(
+      "In the rows drawn other goods have zeros than in the sample, so that other coefficients are estimated.",
+    );
+  }
   const form = systemForm(system, size, specification.impose);
   const estimation: Estimation = { moments, form, equations, coefficientLabels };
   const fit = { estimation, solution: solveNear(theta, specification, system, size, estimation, control) };
