@@ -8,6 +8,8 @@ export const equationsExplained = z.strictObject({
   leftOut: count,
   /** The lagged Stone index, changes from period to period, or both: why rows are left out. */
   because: z.array(z.enum(["lagged shares", "differences"])),
+  /** Rows of the equations whose period before them is further back in time than the nearest two periods are apart. */
+  gaps: count,
 });
 export type EquationsExplained = z.infer<typeof equationsExplained>;
 

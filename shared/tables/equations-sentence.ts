@@ -1,6 +1,6 @@
 import type { SystemFinding } from "../schemas/system.ts";
 import { printCount, printFixed } from "./numbers.ts";
-import { listed } from "./phrases.ts";
+import { countedRows, listed } from "./phrases.ts";
 
 type Told = Pick<SystemFinding, "rows" | "equations" | "expenditure">;
 
@@ -12,7 +12,7 @@ export function equationsSentences({ rows, equations, expenditure }: Told): stri
   return [...(equations ? explained(rows, equations) : []), ...(expenditure ? regularity(rows, expenditure) : [])];
 }
 
-function explained(rows: number, { explains, leftOut, because }: NonNullable<Told["equations"]>): string[] {
+function explained(rows: number, { explains, leftOut, because, gaps }: NonNullable<Told["equations"]>): string[] {
   const sentences: string[] = [];
   if (explains === "expenditures") {
     sentences.push(
@@ -36,6 +36,11 @@ function explained(rows: number, { explains, leftOut, because }: NonNullable<Tol
         ? `the first period has ${one}`
         : `the first ${leftOut} periods in turn have no shares, or no change of shares, before them`;
     sentences.push(`T is ${printCount(rows)} of ${printCount(rows + leftOut)} rows used: ${reason}.`);
+  }
+  if (gaps > 0) {
+    sentences.push(
+      `In ${printCount(gaps)} of ${countedRows(rows)} the period before is the last one in the data, further back than the others are.`,
+    );
   }
   return sentences;
 }

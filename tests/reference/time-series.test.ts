@@ -16,6 +16,8 @@ import { tunaWeeks } from "../support/tuna.ts";
  */
 const reference = JSON.parse(readFileSync(new URL("./fixtures/time-series.json", import.meta.url), "utf8"));
 const BRANDS = 7;
+/** Of the 337 steps from row to row, those of more than a week: counted in the file. */
+const GAPS = 9;
 const LINEAR = 1e-9;
 const NONLINEAR = 1e-8;
 
@@ -66,7 +68,7 @@ describe("LA-AIDS with the Stone index of the week before", () => {
   ])("%s", (name, impose) => {
     const finding = estimated({ form: "la-aids", index: "lagged stone", impose });
     expectSur(finding, reference.laggedStone[name], ["alpha", "gamma", "beta"]);
-    expect(finding.equations).toEqual({ explains: "shares", leftOut: 1, because: ["lagged shares"] });
+    expect(finding.equations).toEqual({ explains: "shares", leftOut: 1, because: ["lagged shares"], gaps: GAPS });
   });
 
   it("has the Durbin–Watson statistic of one equation by least squares", () => {
@@ -155,7 +157,7 @@ describe("the linear expenditure system", () => {
   it("with errors on expenditures", () => {
     const finding = estimated({ form: "les", errors: "expenditures" });
     expectLes(finding, reference.les.expenditures);
-    expect(finding.equations).toEqual({ explains: "expenditures", leftOut: 0, because: [] });
+    expect(finding.equations).toEqual({ explains: "expenditures", leftOut: 0, because: [], gaps: 0 });
   });
 
   it("with a demographic that shifts committed quantities: the trend, per hundred weeks in the reference", () => {

@@ -9,7 +9,7 @@ describe("what the equations explain", () => {
   });
 
   it("tells the periods that have none before them", () => {
-    const lagged = { explains: "shares" as const, leftOut: 1, because: ["lagged shares" as const] };
+    const lagged = { explains: "shares" as const, leftOut: 1, because: ["lagged shares" as const], gaps: 0 };
     expect(equationsSentences({ rows: 337, equations: lagged })).toEqual([
       "T is 337 of 338 rows used: the first period has no shares before it.",
     ]);
@@ -25,15 +25,21 @@ describe("what the equations explain", () => {
   });
 
   it("tells that likelihoods of expenditures and of changes are no likelihoods of shares", () => {
-    const expenditures = { explains: "expenditures" as const, leftOut: 0, because: [] };
+    const expenditures = { explains: "expenditures" as const, leftOut: 0, because: [], gaps: 0 };
     expect(equationsSentences({ rows: 338, equations: expenditures })).toEqual([
       "Errors stand on expenditures: the log-likelihood is one of expenditures and is not comparable with one of shares.",
     ]);
-    const rotterdam = { explains: "contributions to volume" as const, leftOut: 1, because: ["differences" as const] };
+    const rotterdam = {
+      explains: "contributions to volume" as const,
+      leftOut: 1,
+      because: ["differences" as const],
+      gaps: 24,
+    };
     expect(equationsSentences({ rows: 337, equations: rotterdam })).toEqual([
       "The equations explain each good's part in the change of volume from one period to the next, so their log-likelihood is not comparable with one of shares.",
       "No level of shares is predicted: elasticities stand at observed shares.",
       "T is 337 of 338 rows used: the first period has no change from a period before it.",
+      "In 24 of 337 rows the period before is the last one in the data, further back than the others are.",
     ]);
   });
 });

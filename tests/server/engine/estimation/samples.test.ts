@@ -82,7 +82,7 @@ describe("Rotterdam", () => {
     const [mean] = data.shares.map((share) => share.reduce((sum, value) => sum + value, 0) / 60);
     expect(fitted.meanShares![0]).toBeCloseTo(mean, 14);
     expect(rows).toBe(59);
-    expect(equations).toEqual({ explains: "contributions to volume", leftOut: 1, because: ["differences"] });
+    expect(equations).toEqual({ explains: "contributions to volume", leftOut: 1, because: ["differences"], gaps: 0 });
   });
 });
 
