@@ -30,6 +30,10 @@ estimator: maximum likelihood
 # test it before the paper goes out
 `;
 
+const LAWS = `# what the survey says of the laws imposed on base, and of what shifts its intercepts
+system: base
+`;
+
 const MATRIX = `system: base
 at: base point
 form: share
@@ -70,6 +74,7 @@ const DEMO_LEDE =
 const DEMO_CELLS: DemoStudy["cells"] = [
   { name: "survey", kind: "data", source: SURVEY },
   { name: "base", kind: "system", source: BASE },
+  { name: "laws", kind: "tests", source: LAWS },
   { name: "matrix", kind: "slutsky", source: MATRIX },
   { name: "ninetieth", kind: "slutsky", source: NINETIETH },
   { name: "fifths", kind: "elasticities", source: FIFTHS },

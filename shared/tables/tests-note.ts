@@ -14,6 +14,9 @@ export function testsNote(finding: TestsFinding, full = false): string[] {
       : []),
     ...laitinenNotes(made),
     ...givenNote(made),
+    ...(full
+      ? []
+      : finding.tests.flatMap((test) => (isMade(test) || test.because !== "nothing to test" ? [] : [test.reason]))),
   ];
 }
 

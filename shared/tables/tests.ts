@@ -139,10 +139,10 @@ const STATISTICS = [
 export function reasonsOf(test: MadeTest): string[] {
   const missing = STATISTICS.flatMap(([name, key]) => {
     const statistic = test[key];
-    return "absent" in statistic ? [[name, statistic.absent] as const] : [];
+    return "absent" in statistic ? [[name as string, statistic.absent] as const] : [];
   });
   const { laitinen } = test;
-  if (laitinen && "absent" in laitinen) missing.push(["Laitinen’s test" as never, laitinen.absent]);
+  if (laitinen && "absent" in laitinen) missing.push(["exact test", laitinen.absent]);
   const reasons = new Map<string, string[]>();
   for (const [name, reason] of missing) reasons.set(reason, [...(reasons.get(reason) ?? []), name]);
   return [...reasons].map(([reason, names]) => `No ${names.join(", ")}: ${reason}`);

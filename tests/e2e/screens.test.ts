@@ -52,7 +52,7 @@ const SCREENS: readonly Screen[] = [
     name: "workspace",
     path: () => `/studies/${studyId}`,
     ready: async (page) => {
-      for (const name of ["survey", "base", "matrix", "ninetieth", "fifths", "linear", "needs"]) {
+      for (const name of ["survey", "base", "laws", "matrix", "ninetieth", "fifths", "linear", "needs"]) {
         await untilSays(page, name, /^Current(?!.*Fetching)/);
       }
     },

@@ -51,7 +51,7 @@ export function TestsForm(props: FormProps) {
           )}
           <TextField
             label="Level"
-            value={written.text("level") || (readOnly ? "0.05" : "")}
+            value={written.text("level") || "0.05"}
             numeric
             readOnly={readOnly}
             onCommit={(value) => written.write([["level"], value === "" ? undefined : asNumber(value)])}

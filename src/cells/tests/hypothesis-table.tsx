@@ -7,6 +7,7 @@ import {
   isMade,
   isRobust,
   laitinenText,
+  levelText,
   testVerdict,
 } from "../../../shared/tables/tests.ts";
 import { Table } from "../../components/table.tsx";
@@ -27,6 +28,8 @@ function companion(test: AnyTest): string {
 export function HypothesisTable({ finding }: { finding: TestsFinding }) {
   const phone = usePhone();
   const robust = isRobust(finding);
+  // What there is nothing to test of is left to the note.
+  const told = finding.tests.filter((test) => isMade(test) || test.because !== "nothing to test");
   const verdict = (test: AnyTest) => <VerdictWord {...testVerdict(test, finding)} />;
   return (
     <Table
@@ -37,9 +40,9 @@ export function HypothesisTable({ finding }: { finding: TestsFinding }) {
         { key: "df", content: "d.f.", label: "degrees of freedom" },
         { key: "p", content: "p" },
         ...(robust ? [] : [{ key: "companion", content: "In small samples" }]),
-        ...(phone ? [] : [{ key: "verdict", content: "So it is", align: "left" as const }]),
+        ...(phone ? [] : [{ key: "verdict", content: `At ${levelText(finding.level)}`, align: "left" as const }]),
       ]}
-      lines={finding.tests.map((test, place) => {
+      lines={told.map((test, place) => {
         const main = isMade(test) ? (robust ? test.wald : test.likelihoodRatio) : undefined;
         const number = main && !("absent" in main) ? main : undefined;
         const name = capital(hypothesisText(test));

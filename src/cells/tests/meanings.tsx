@@ -1,7 +1,27 @@
 import type { TestsFinding } from "../../../shared/schemas/tests.ts";
 import { capital } from "../../../shared/study/words.ts";
-import { hypothesisText, isMade, reasonsOf, testMeaning, testVerdict } from "../../../shared/tables/tests.ts";
+import { printProbability } from "../../../shared/tables/numbers.ts";
+import {
+  type AnyTest,
+  decidingTest,
+  hypothesisText,
+  isMade,
+  reasonsOf,
+  testMeaning,
+  testVerdict,
+} from "../../../shared/tables/tests.ts";
 import { VerdictWord } from "./verdict.tsx";
+
+/** The test the verdict goes by, with its probability. */
+function Deciding({ test, finding }: { test: AnyTest; finding: TestsFinding }) {
+  const deciding = isMade(test) ? decidingTest(test, finding) : undefined;
+  if (!deciding) return null;
+  return (
+    <span className="type-smallest block text-ink2">
+      {deciding.by}, p {printProbability(deciding.p)}
+    </span>
+  );
+}
 
 /** What each test means, in words, and why what is missing is missing. */
 export function Meanings({ finding }: { finding: TestsFinding }) {
@@ -20,6 +40,7 @@ export function Meanings({ finding }: { finding: TestsFinding }) {
             <dt className="type-table">{capital(hypothesisText(test))}</dt>
             <dd className="type-table">
               <VerdictWord {...testVerdict(test, finding)} />
+              <Deciding test={test} finding={finding} />
             </dd>
             <dd className="type-table max-w-[62ch] text-pretty">
               {testMeaning(test, finding)}

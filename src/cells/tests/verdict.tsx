@@ -3,7 +3,7 @@ import { VerdictFigure, type VerdictShape } from "../../components/verdict-figur
 /** The figure of a verdict and its word, in a line of a table. */
 export function VerdictWord({ figure, word }: { figure: VerdictShape; word: string }) {
   return (
-    <span className="inline-flex items-center gap-2 whitespace-nowrap font-semibold">
+    <span className="flex items-center gap-2 whitespace-nowrap font-semibold">
       <VerdictFigure shape={figure} />
       {word}
     </span>

@@ -30,7 +30,6 @@ export function TestsOpen({ finding }: OpenProps<"tests">) {
       <OpenHead sentence={testsSentence(finding)}>
         {finding.tests.length > 0 && <CopyTable table={testsTable(finding)} />}
       </OpenHead>
-      {finding.tests.length > 0 && <HypothesisTable finding={finding} />}
       <Meanings finding={finding} />
       <StatisticsTable finding={finding} />
       {finding.tests.length > 0 && (

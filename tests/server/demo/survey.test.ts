@@ -153,6 +153,7 @@ describe("the cells", () => {
     expect(cells.map(({ name, kind, reads }) => [name, kind, reads])).toEqual([
       ["survey", "data", []],
       ["base", "system", ["survey"]],
+      ["laws", "tests", ["base"]],
       ["matrix", "slutsky", ["base"]],
       ["ninetieth", "slutsky", ["base"]],
       ["fifths", "elasticities", ["base"]],
