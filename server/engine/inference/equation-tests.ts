@@ -15,9 +15,11 @@ export function equationTests(
   fit: { readonly theta: readonly number[]; readonly covariance: readonly (readonly number[])[] },
   exact?: { readonly rows: number; readonly freedom: number },
 ): MadeTest["equations"] {
-  const blocks = system.blocks.filter(({ columns }) => columns === "goods");
-  if (blocks.length !== 1) return undefined;
   const layout = system.layout(size);
+  const blocks = system.blocks.filter(
+    ({ name, columns }) => columns.startsWith("goods") && layout.some(({ block }) => block === name),
+  );
+  if (blocks.length !== 1) return undefined;
   const scale = exact ? exact.rows / exact.freedom : 1;
   const tests = goods.map((good, i) => {
     const places = layout.flatMap((place, a) => (place.block === blocks[0].name && place.good === i ? [a] : []));

@@ -1,6 +1,6 @@
 import type { SystemSpecification } from "../../../shared/schemas/system.ts";
 import type { HypothesisName, UnmadeTest } from "../../../shared/schemas/tests.ts";
-import type { DemandSystem, FreeForm, SystemSize } from "../../../shared/systems/demand-system.ts";
+import type { BlockColumns, DemandSystem, FreeForm, SystemSize } from "../../../shared/systems/demand-system.ts";
 import type { RestrictionName } from "../../../shared/systems/names.ts";
 import { withoutCoefficients } from "./nested-form.ts";
 
@@ -90,18 +90,25 @@ function demographicTests(asked: Asked, wide: FreeForm): (Hypothesis | UnmadeTes
     const why = system.takesDemographics ? "as specified names no demographics" : "takes no demographics";
     return [nothing("demographics", `The ${system.longName} ${why}.`)];
   }
-  const blocks = new Set(system.blocks.flatMap(({ name, columns }) => (columns === "demographics" ? [name] : [])));
+  const columnsOf = new Map(system.blocks.map(({ name, columns }) => [name, columns]));
   const layout = system.layout(size);
   const test = (isTested: (group: string) => boolean): Pick<Hypothesis, "hypothesis" | "given" | "wide" | "narrow"> => {
-    const zero = layout.flatMap(({ block, column = 0 }, a) =>
-      blocks.has(block) && isTested(groups[column]) ? [a] : [],
-    );
+    const zero = layout.flatMap(({ block, column = 0 }, a) => {
+      const demographic = demographicOf(columnsOf.get(block)!, column, size.goods);
+      return demographic !== undefined && isTested(groups[demographic]) ? [a] : [];
+    });
     const narrow = withoutCoefficients(wide, new Set(zero));
     return { hypothesis: "demographics", given: maintained(asked), wide, narrow };
   };
   const each = [...new Set(groups)];
   const together = each.length > 1 ? [test(() => true)] : [];
   return [...together, ...each.map((column) => ({ ...test((group) => group === column), column }))];
+}
+
+/** Which demographic a column of a block belongs to, alone or times something else. */
+function demographicOf(columns: BlockColumns, column: number, goods: number): number | undefined {
+  if (columns === "demographics" || columns === "demographics by expenditure") return column;
+  return columns === "goods by demographics" ? Math.floor(column / goods) : undefined;
 }
 
 const ABSENT = {

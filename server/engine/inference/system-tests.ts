@@ -4,6 +4,7 @@ import type { FreeForm } from "../../../shared/systems/demand-system.ts";
 import type { RestrictionName } from "../../../shared/systems/names.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { coefficientNames, labelOfCoefficient } from "../estimation/coefficient-labels.ts";
+import { isExactEasi } from "../estimation/easi/specification.ts";
 import { momentsRequest } from "../estimation/index.ts";
 import { locatable, sourceAt } from "../estimation/local-moments.ts";
 import type { Moments } from "../estimation/moments.ts";
@@ -12,6 +13,7 @@ import { sizeOf } from "../estimation/request.ts";
 import { specifiedSystem } from "../estimation/specified-system.ts";
 import type { RunControl } from "../run.ts";
 import { covarianceOfEstimates } from "./covariance-of-estimates.ts";
+import { testExactEasi } from "./exact-easi-tests.ts";
 import { hypothesesOf } from "./hypotheses.ts";
 import { linearityOf } from "./linearity.ts";
 import { type Model, type ModelFit, ModelFits } from "./model-fits.ts";
@@ -60,7 +62,9 @@ export function systemTests(
   const asked = hypothesesOf(ordered, { system, size, specification });
   const tests = asked.map((hypothesis, place) => {
     control.progress({ step: `testing ${hypothesis.hypothesis}`, fraction: place / asked.length });
-    return "because" in hypothesis ? hypothesis : testHypothesis(hypothesis, testing);
+    if ("because" in hypothesis) return hypothesis;
+    if (isExactEasi(specification)) return testExactEasi(hypothesis, specification, data, model, control);
+    return testHypothesis(hypothesis, testing);
   });
   return { tests, covariance: specification["standard errors"], rows: moments.rows };
 }
