@@ -2,13 +2,20 @@ import { ESTIMATOR_NAMES } from "../../../shared/schemas/system.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
 import { listWords } from "../../../shared/study/words.ts";
 import { SYSTEMS } from "../../../shared/systems/index.ts";
-import { PRICE_INDEX_NAMES, RESTRICTION_NAMES, SYSTEM_NAMES, type SystemName } from "../../../shared/systems/names.ts";
+import { RESTRICTION_NAMES, SYSTEM_NAMES, type SystemName } from "../../../shared/systems/names.ts";
 import { CheckGroup } from "../form/choices.tsx";
-import { asChoices, ChoiceField, FormRow, TextField, Unreadable } from "../form/fields.tsx";
+import { asChoices, ChoiceField, FormRow, Unreadable } from "../form/fields.tsx";
 import { readWritten, type Written } from "../form/written.ts";
 import type { FormProps } from "../types.ts";
+import { CurvatureFields } from "./curvature-fields.tsx";
+import { ErrorFields } from "./error-fields.tsx";
+import { OWN_KEYS, OwnFields } from "./own-fields.tsx";
+import { StepFields } from "./step-fields.tsx";
+import { TimeFields } from "./time-fields.tsx";
 
 const FORMS = SYSTEM_NAMES.map((name) => ({ value: name, label: SYSTEMS[name].longName }));
+/** Forms whose curvature can be imposed at a point. */
+const CURVED: readonly string[] = ["la-aids", "aids", "quaids"];
 const isSystem = (word: string): word is SystemName => (SYSTEM_NAMES as readonly string[]).includes(word);
 
 const isMap = (value: unknown): value is Record<string, unknown> => typeof value === "object" && value !== null;
@@ -28,7 +35,13 @@ function offered({ cells, uploads }: FormProps["context"], dataName: string) {
     written.total,
   ]);
   const derived = isMap(written.derive) ? Object.keys(written.derive) : [];
-  return { goods: Object.keys(goods), columns: [...derived, ...numeric].filter((name) => !taken.has(name)) };
+  const names = upload?.columns.map((column) => column.name) ?? [];
+  return {
+    goods: Object.keys(goods),
+    columns: [...derived, ...numeric].filter((name) => !taken.has(name)),
+    // Any column may say which rows were sampled together; the data's own comes first.
+    all: [...new Set([...(typeof written.cluster === "string" ? [written.cluster] : []), ...names])],
+  };
 }
 
 /** A system cell as a form: form, restrictions, estimator and what shifts the intercepts. */
@@ -37,12 +50,16 @@ export function SystemForm(props: FormProps) {
   const written = readWritten("system", props);
   if (!written.readable) return <Unreadable />;
   const form = written.text("form");
-  const { goods, columns } = offered(context, written.text("data"));
+  const { goods, columns, all } = offered(context, written.text("data"));
   const data = context.cells.filter((cell) => cell.kind === "data").map((cell) => cell.name);
   const takesDemographics = !isSystem(form) || SYSTEMS[form].takesDemographics;
-  const chooseForm = (next: string) =>
-    // An index belongs to la-aids alone: it goes when the form does.
-    written.write([["form"], next], ...(next === "la-aids" ? [] : [[["index"], undefined] as const]));
+  const part = { written, readOnly };
+  const says = (key: string) => written.value(key) !== undefined;
+  const chooseForm = (next: string) => {
+    // What belongs to the last form alone goes when that does.
+    const leaving = (OWN_KEYS[form] ?? []).filter((key) => !(OWN_KEYS[next] ?? []).includes(key));
+    written.write([["form"], next], ...leaving.map((key) => [[key], undefined] as const));
+  };
   return (
     <div>
       <ChoiceField
@@ -53,16 +70,7 @@ export function SystemForm(props: FormProps) {
         onChange={(value) => written.write([["data"], value])}
       />
       <ChoiceField label="Form" value={form} choices={FORMS} readOnly={readOnly} onChange={chooseForm} />
-      {form === "la-aids" && (
-        <ChoiceField
-          label="Index"
-          value={written.text("index")}
-          choices={asChoices(PRICE_INDEX_NAMES)}
-          none="tornqvist"
-          readOnly={readOnly}
-          onChange={(value) => written.write([["index"], value || undefined])}
-        />
-      )}
+      <OwnFields form={form} {...part} />
       <Impose form={form} written={written} readOnly={readOnly} />
       <ChoiceField
         label="Estimator"
@@ -82,7 +90,6 @@ export function SystemForm(props: FormProps) {
           onChange={(values) => written.write([["demographics"], values.length > 0 ? values : undefined])}
         />
       )}
-      {form === "aids" && <AlphaNought written={written} readOnly={readOnly} />}
       <ChoiceField
         label="Dropped"
         value={written.text("dropped")}
@@ -91,6 +98,10 @@ export function SystemForm(props: FormProps) {
         readOnly={readOnly}
         onChange={(value) => written.write([["dropped"], value || undefined])}
       />
+      <ErrorFields {...part} columns={all} />
+      <TimeFields {...part} form={form} />
+      {(form !== "rotterdam" || says("instruments") || says("zeros")) && <StepFields {...part} columns={columns} />}
+      {(CURVED.includes(form) || says("curvature")) && <CurvatureFields {...part} />}
     </div>
   );
 }
@@ -116,22 +127,4 @@ function Impose({ form, written, readOnly }: { form: string; written: Written; r
       onChange={(values) => written.write([["impose"], values])}
     />
   );
-}
-
-function AlphaNought({ written, readOnly }: { written: Written; readOnly: boolean }) {
-  return (
-    <TextField
-      label="α₀, held fixed"
-      value={written.text("alpha0") || (readOnly ? "0" : "")}
-      numeric
-      readOnly={readOnly}
-      onCommit={(value) => written.write([["alpha0"], value === "" ? undefined : asNumber(value)])}
-    />
-  );
-}
-
-/** A number where one was typed; anything else is written as it is, for the text to mark. */
-function asNumber(text: string): number | string {
-  const number = Number(text.replace("\u2212", "-"));
-  return Number.isFinite(number) ? number : text;
 }

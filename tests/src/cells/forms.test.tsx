@@ -193,7 +193,7 @@ describe("the form of a system cell", () => {
     const { user, written } = open(SystemForm, "data: survey\nform: aids\n");
     await user.selectOptions(screen.getByRole("combobox", { name: "Form" }), "les");
     expect(screen.getByText("homogeneity and symmetry hold by the form itself")).toBeInTheDocument();
-    expect(screen.queryByRole("checkbox")).not.toBeInTheDocument();
+    expect(screen.queryByRole("checkbox", { name: "homogeneity" })).not.toBeInTheDocument();
     expect(written.source).toBe("data: survey\nform: les\n");
   });
 
