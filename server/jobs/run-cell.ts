@@ -48,7 +48,7 @@ function prepared({ data }: CellJob, db: Database, memory: WorkerMemory, control
   const table = memory.tables.get(data.uploadId) ?? loadTable(db, data.uploadId);
   memory.tables.set(data.uploadId, table, bytesOf(table));
   const fresh = runData(data.specification, table, control);
-  const columns = 2 * fresh.goods.length + fresh.numeric.size + 3;
+  const columns = 2 * fresh.goods.length + fresh.numeric.size + (fresh.labelled?.size ?? 0) / 2 + 3;
   memory.prepared.set(data.fingerprint, fresh, 8 * fresh.rows * columns);
   return fresh;
 }

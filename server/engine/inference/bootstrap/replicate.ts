@@ -130,5 +130,7 @@ function reestimateData(
   const request = momentsRequest(specification, data);
   const nearby = reduceRows(sourceOf(data, request), request.key, control);
   const { moments } = specifiedSystem(specification, data);
-  return reestimate({ ...work, data }, locatable(nearby, data, request, moments, size), control);
+  const theta = reestimate({ ...work, data }, locatable(nearby, data, request, moments, size), control);
+  if (theta.length === work.theta.length) return theta;
+  throw new Refusal("Among the drawn rows some good is bought by all, or by none, that is not among the rows used.");
 }

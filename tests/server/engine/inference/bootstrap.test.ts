@@ -1,6 +1,5 @@
 import { describe, expect, it } from "vitest";
 import { groupsOf } from "../../../../server/engine/columns/groups.ts";
-import { pickRows } from "../../../../server/engine/columns/pick-rows.ts";
 import type { PreparedData } from "../../../../server/engine/columns/prepared-data.ts";
 import { summarise } from "../../../../server/engine/inference/bootstrap/bootstrap.ts";
 import { draw, type Sampling } from "../../../../server/engine/inference/bootstrap/sampling.ts";
@@ -12,6 +11,7 @@ import { systemOf } from "../../../../shared/systems/index.ts";
 import type { SystemName } from "../../../../shared/systems/names.ts";
 import { estimated, largestDifference } from "../../../support/estimating.ts";
 import { type Simulation, simulateShares } from "../../../support/simulated-shares.ts";
+import { written } from "../../../support/written-rows.ts";
 
 const BOTH = ["homogeneity", "symmetry"] as const;
 const SEED = 20_240;
@@ -31,24 +31,6 @@ function sample(wanted: Wanted): PreparedData {
 function fitOf(data: PreparedData, specification: object, bootstrap?: object): SystemFinding {
   const errors = bootstrap && { "standard errors": { seed: SEED, replicates: 20, ...bootstrap } };
   return estimated(data, { impose: BOTH, demographics: [], ...specification, ...errors }) as SystemFinding;
-}
-
-/** The drawn rows as data of their own, each written out as often as it was drawn. */
-function written(data: PreparedData, rows: readonly number[]): PreparedData {
-  const order = Int32Array.from(rows);
-  const pick = (column: Float64Array) => pickRows(column, order);
-  const { time: _, ...timeless } = data;
-  const weights = data.weights && pick(data.weights);
-  const sum = weights?.reduce((total, weight) => total + weight, 0) ?? 1;
-  return {
-    ...timeless,
-    rows: order.length,
-    shares: data.shares.map(pick),
-    logPrices: data.logPrices.map(pick),
-    logTotal: pick(data.logTotal),
-    ...(weights && { weights: weights.map((weight) => (weight * order.length) / sum) }),
-    numeric: new Map([...data.numeric].map(([name, column]) => [name, pick(column)])),
-  };
 }
 
 const AIDS = { form: "aids" } as const;
