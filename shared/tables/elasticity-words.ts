@@ -80,13 +80,13 @@ function widest({ goods, groups }: ElasticitiesFinding): string {
   });
   const { good, low, high, i } = spans.toSorted((a, b) => b.span - a.span)[0];
   const value = (group: ElasticityGroup) => printQuantity(group.expenditure.values[i], "elasticity");
-  return `${good} differs most between them, ${value(low)} to ${value(high)}.`;
+  return `${capital(good)} varies most, its expenditure elasticity from ${value(low)} to ${value(high)}.`;
 }
 
 function giffenGoods({ classes }: ElasticityGroup): string[] {
   const goods = classes.filter(({ giffen }) => giffen === "yes").map(({ good }) => good);
   if (goods.length === 0) return [];
-  return [`${listed(goods)} ${goods.length === 1 ? "is a Giffen good" : "are Giffen goods"} there.`];
+  return [`${capital(listed(goods))} ${goods.length === 1 ? "is a Giffen good" : "are Giffen goods"} there.`];
 }
 
 function withoutAny({ without }: ElasticitiesFinding): string[] {

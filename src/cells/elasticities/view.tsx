@@ -11,6 +11,7 @@ import { stripOf } from "../verdicts.ts";
 import { ClassesView } from "./classes-view.tsx";
 import { GoodsView } from "./goods-view.tsx";
 import { ByGoodSwitch, GroupsView } from "./groups-view.tsx";
+import { IntervalFigure } from "./interval-figure.tsx";
 import { ElasticityNotes } from "./notes.tsx";
 import { type Below, BelowSwitch } from "./one-estimate.tsx";
 import { PricesView } from "./prices-view.tsx";
@@ -44,9 +45,15 @@ export function ElasticitiesBand({ finding }: BandProps<"elasticities">) {
 export function ElasticitiesOpen({ finding }: OpenProps<"elasticities">) {
   const [which, setWhich] = useState<ByGood>("expenditure");
   const [below, setBelow] = useState<Below>("errors");
-  const [chosen, setChosen] = useState(0);
+  const [wanted, setWanted] = useState(0);
   const several = finding.groups.length > 1;
-  const group = finding.groups[Math.min(chosen, finding.groups.length - 1)];
+  const chosen = Math.min(wanted, finding.groups.length - 1);
+  const group = finding.groups[chosen];
+  const figure = (
+    <div>
+      <IntervalFigure finding={finding} which={which} chosen={chosen} />
+    </div>
+  );
   return (
     <div className="space-y-6">
       <OpenHead sentence={elasticitiesSentence(finding)}>
@@ -54,10 +61,15 @@ export function ElasticitiesOpen({ finding }: OpenProps<"elasticities">) {
       </OpenHead>
       <VerdictStrip label={LABEL} verdicts={stripOf(verdictsOf(finding.checks, finding.tests, { detail: true }))} />
       <div className="flex flex-wrap items-baseline justify-between gap-x-8 gap-y-1">
-        {several && <ByGoodSwitch which={which} onChange={setWhich} />}
+        <ByGoodSwitch which={which} onChange={setWhich} />
         <BelowSwitch below={below} onChange={setBelow} />
       </div>
-      {several && <GroupsView finding={finding} which={which} below={below} chosen={chosen} onChoose={setChosen} />}
+      {several && (
+        <>
+          <GroupsView finding={finding} which={which} below={below} chosen={chosen} onChoose={setWanted} />
+          {figure}
+        </>
+      )}
       <section aria-labelledby="goods-of-group" className="space-y-2" aria-live="polite">
         <h2 id="goods-of-group" className="type-section">
           {capital(whereOf(finding, group.name))}
@@ -65,6 +77,7 @@ export function ElasticitiesOpen({ finding }: OpenProps<"elasticities">) {
         <GoodsView finding={finding} group={group} below={below} />
         {several && <CopyTable table={goodsTable(finding, group)} />}
       </section>
+      {!several && figure}
       <PricesView finding={finding} group={group} below={below} />
       <ClassesView group={group} />
       <ElasticityNotes finding={finding} />
