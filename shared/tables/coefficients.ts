@@ -12,7 +12,7 @@ const ROW_NAMES: Record<string, { label: string; symbol?: string }> = {
   constant: { label: "Constant", symbol: "b₀" },
   beta: { label: "ln x,", symbol: "β" },
   committed: { label: "Committed quantity", symbol: "c" },
-  marginal: { label: "Marginal share", symbol: "b" },
+  marginal: { label: "Marginal share" },
 };
 
 export interface CoefficientRow extends TableRow {
@@ -22,6 +22,7 @@ export interface CoefficientRow extends TableRow {
 /** Blocks with a row for each price, alone or times something else, and the matrix each of them is. */
 const PRICE_BLOCKS: Readonly<Record<string, string>> = {
   gamma: "Γ",
+  slutsky: "Π",
   price: "A",
   "price demographic": "A",
   "price expenditure": "B",
@@ -38,7 +39,7 @@ export function priceMatrices(rows: readonly CoefficientRow[]): string {
 
 function headOf(coefficient: Coefficient): { label: string; symbol?: string } {
   const { block, symbol, column } = coefficient;
-  if (column === undefined) return ROW_NAMES[block] ?? { label: block, symbol };
+  if (column === undefined) return { symbol, ...(ROW_NAMES[block] ?? { label: block }) };
   return isPriceBlock(block) ? { label: `ln p, ${column}` } : { label: column };
 }
 

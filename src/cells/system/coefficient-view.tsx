@@ -50,13 +50,36 @@ function Row({ row, goods }: { row: CoefficientRow; goods: readonly string[] }) 
   );
 }
 
-function Heads({ finding }: { finding: SystemFinding }) {
+/** Nothing where no level of shares is predicted. */
+function CurveHeads({ finding }: { finding: SystemFinding }) {
   const { goods } = finding.fitted;
   const { logTotal, shares } = finding.engel;
+  if (logTotal.length === 0) return null;
   const top = commonTop(shares);
   return (
+    <tr className="border-line border-b">
+      <td className="type-smallest sticky left-0 min-w-22 bg-recto pr-3 pb-1.5 align-bottom text-ink2">
+        Share against ln <i className="font-serif">x</i>, 0 to {printFixed(top, 2)}
+      </td>
+      {goods.map((good, i) => (
+        <td key={good} className="pr-[0.33em] pb-1 pl-2 align-bottom">
+          <EngelCurve logTotal={logTotal} shares={shares[i]} top={top} />
+          <span className="sr-only">
+            share of {good} from {printFixed(shares[i][0], 2)} to {printFixed(shares[i][shares[i].length - 1], 2)} as
+            expenditure rises
+          </span>
+        </td>
+      ))}
+    </tr>
+  );
+}
+
+function Heads({ finding }: { finding: SystemFinding }) {
+  const { goods } = finding.fitted;
+  const hasCurves = finding.engel.logTotal.length > 0;
+  return (
     <thead>
-      <tr>
+      <tr className={hasCurves ? "" : "border-line border-b"}>
         <th scope="col" className="type-small sticky left-0 bg-recto text-left align-bottom font-normal text-ink2">
           Share equation
         </th>
@@ -66,20 +89,7 @@ function Heads({ finding }: { finding: SystemFinding }) {
           </th>
         ))}
       </tr>
-      <tr className="border-line border-b">
-        <td className="type-smallest sticky left-0 min-w-22 bg-recto pr-3 pb-1.5 align-bottom text-ink2">
-          Share against ln <i className="font-serif">x</i>, 0 to {printFixed(top, 2)}
-        </td>
-        {goods.map((good, i) => (
-          <td key={good} className="pr-[0.33em] pb-1 pl-2 align-bottom">
-            <EngelCurve logTotal={logTotal} shares={shares[i]} top={top} />
-            <span className="sr-only">
-              share of {good} from {printFixed(shares[i][0], 2)} to {printFixed(shares[i][shares[i].length - 1], 2)} as
-              expenditure rises
-            </span>
-          </td>
-        ))}
-      </tr>
+      <CurveHeads finding={finding} />
     </thead>
   );
 }
