@@ -172,19 +172,25 @@ export interface LocalColumns {
   /** What a refusal calls each of them: "real expenditure squared over b(p)". */
   readonly labels: readonly string[];
   filler(theta: readonly number[], size: SystemSize): LocalFiller;
+  /**
+   * Terms that at θ are known combinations of others, none of them such a combination itself: their moments follow
+   * from those of the others, which are then far from collinear.
+   */
+  combinations?(theta: readonly number[], size: SystemSize): TermCombination[];
   readonly from: NearbyForm;
+}
+
+/** Z_term = Σ weight · Z_other. */
+export interface TermCombination {
+  readonly term: number;
+  readonly of: readonly (readonly [other: number, weight: number])[];
 }
 
 /** The local columns of a row at fixed θ: `at` overwrites `values` and allocates nothing. */
 export interface LocalFiller {
   readonly values: Float64Array;
   /** w are the observed shares (EASI's implicit utility holds them). */
-  at(
-    logPrices: ArrayLike<number>,
-    logTotal: number,
-    demographics: ArrayLike<number>,
-    shares: ArrayLike<number>,
-  ): void;
+  at(logPrices: ArrayLike<number>, logTotal: number, demographics: ArrayLike<number>, shares: ArrayLike<number>): void;
 }
 
 /**

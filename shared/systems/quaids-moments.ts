@@ -1,6 +1,14 @@
 import { aids } from "./aids.ts";
 import { leadingTerms } from "./almost-ideal.ts";
-import type { BaseColumn, LocalColumns, MomentEntry, MomentForm, MomentTerm, SystemSize } from "./demand-system.ts";
+import type {
+  BaseColumn,
+  LocalColumns,
+  MomentEntry,
+  MomentForm,
+  MomentTerm,
+  SystemSize,
+  TermCombination,
+} from "./demand-system.ts";
 import { quaidsParts, quaidsPlaces } from "./quaids-parts.ts";
 import { symmetricPart } from "./translog.ts";
 
@@ -13,7 +21,11 @@ import { symmetricPart } from "./translog.ts";
  *
  * so that shares and their derivatives are combinations of
  *
- *     Z = (1, z, ln p, m, q, {ln p_k ln p_l}, {z_s ln p_k}, r·{ln p_k, ln p_k ln p_l, z_s ln p_k}, q·{ln p_k})
+ *     Z = (1, z, ln p, m, q, s, r, {ln p_k ln p_l}, {z_s ln p_k}, r·{ln p_k, ln p_k ln p_l, z_s ln p_k}, q·{ln p_k})
+ *
+ * For small β m = ½ r b(p) is all but a combination of r, r ln p_k and r ln p_k ln p_l, more nearly than second
+ * moments can tell. So what is left, s = m − ½ r (1 + L + ½L²) with L = ln b(p), is a column of its own, formed
+ * without cancellation, and m is declared the combination of the others that it is.
  */
 export const quaidsMoments: MomentForm = {
   terms,
@@ -33,8 +45,14 @@ export const quaidsMoments: MomentForm = {
   },
   derivatives,
   local: {
-    labels: ["ln real expenditure", "the square of ln real expenditure over b(p)", "ln real expenditure over b(p)"],
+    labels: [
+      "ln real expenditure",
+      "the square of ln real expenditure over b(p)",
+      "ln real expenditure over b(p)",
+      "ln real expenditure less its expansion in b(p)",
+    ],
     filler,
+    combinations,
     from: {
       moments: aids.moments,
       layout: aids.layout,
@@ -48,11 +66,12 @@ export const quaidsMoments: MomentForm = {
 const REAL: BaseColumn = { kind: "local", index: 0 };
 const SQUARE: BaseColumn = { kind: "local", index: 1 };
 const RATIO: BaseColumn = { kind: "local", index: 2 };
+const REMAINDER: BaseColumn = { kind: "local", index: 3 };
 
 /** Where in Z a term stands. */
 function termPlaces({ goods: n, demographics: s }: SystemSize) {
   const pairs = (n * (n + 1)) / 2;
-  const products = 1 + s + n + 2;
+  const products = 1 + s + n + 4;
   const shifts = products + pairs;
   const ratios = shifts + s * n;
   const ratioProducts = ratios + n;
@@ -67,6 +86,8 @@ function termPlaces({ goods: n, demographics: s }: SystemSize) {
     logPrice: (k: number) => 1 + s + k,
     real: 1 + s + n,
     square: 1 + s + n + 1,
+    remainder: 1 + s + n + 2,
+    ratioAlone: 1 + s + n + 3,
     product: (k: number, l: number) => products + pair(k, l),
     shift: (d: number, k: number) => shifts + d * n + k,
     ratio: (k: number) => ratios + k,
@@ -94,6 +115,8 @@ function terms(size: SystemSize): MomentTerm[] {
     ...leadingTerms(size),
     column(REAL),
     column(SQUARE),
+    column(REMAINDER),
+    column(RATIO),
     ...pairs.map(product),
     ...shifts.map(product),
     ...goods.map((k) => product([price(k), RATIO])),
@@ -133,12 +156,27 @@ function derivatives(theta: readonly number[], size: SystemSize): MomentEntry[][
   return list;
 }
 
-/** m, m²/b and 2m/b of a row. */
+/** m = s + ½ r (1 + Σ β_k ln p_k + ½ Σ_k Σ_l β_k β_l ln p_k ln p_l). */
+function combinations(theta: readonly number[], size: SystemSize): TermCombination[] {
+  const { beta } = quaidsParts(theta, size);
+  const at = termPlaces(size);
+  const of: [number, number][] = [
+    [at.remainder, 1],
+    [at.ratioAlone, 0.5],
+  ];
+  beta.forEach((slope, k) => {
+    of.push([at.ratio(k), 0.5 * slope]);
+    for (let l = k; l < beta.length; l++) of.push([at.ratioProduct(k, l), (k === l ? 0.25 : 0.5) * slope * beta[l]]);
+  });
+  return [{ term: at.real, of }];
+}
+
+/** m, m²/b, 2m/b and the remainder of a row. */
 function filler(theta: readonly number[], size: SystemSize): ReturnType<LocalColumns["filler"]> {
   const { goods: n, demographics: s } = size;
   const { alpha, demographic, gamma, beta } = quaidsParts(theta, size);
   const symmetric = symmetricPart(gamma, n);
-  const values = new Float64Array(3);
+  const values = new Float64Array(4);
   return {
     values,
     at(logPrices, logTotal, demographics) {
@@ -156,6 +194,15 @@ function filler(theta: readonly number[], size: SystemSize): ReturnType<LocalCol
       values[0] = real;
       values[1] = real * overB;
       values[2] = 2 * overB;
+      values[3] = overB * cubicRemainder(logB);
     },
   };
+}
+
+/** e^L − 1 − L − ½L². */
+function cubicRemainder(log: number): number {
+  if (Math.abs(log) > 0.5) return Math.exp(log) - 1 - log - 0.5 * log * log;
+  let sum = 1;
+  for (let order = 16; order > 3; order--) sum = 1 + (log / order) * sum;
+  return ((log * log * log) / 6) * sum;
 }

@@ -10,6 +10,7 @@ const SYSTEMS_UNDER: [form: SystemName, impose: RestrictionName[]][] = [
   ["la-aids", ["homogeneity", "symmetry"]],
   ["aids", []],
   ["aids", ["homogeneity", "symmetry"]],
+  ["quaids", ["homogeneity", "symmetry"]],
   ["les", []],
 ];
 

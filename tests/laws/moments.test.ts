@@ -13,6 +13,10 @@ const CASES: [form: SystemName, impose: RestrictionName[], goods: number, demogr
   ["aids", ["homogeneity"], 3, 1, false],
   ["aids", ["homogeneity", "symmetry"], 4, 1, true],
   ["aids", ["homogeneity", "symmetry"], 2, 0, false],
+  ["quaids", [], 3, 1, false],
+  ["quaids", ["homogeneity"], 3, 0, true],
+  ["quaids", ["homogeneity", "symmetry"], 4, 1, true],
+  ["quaids", ["homogeneity", "symmetry"], 2, 0, false],
   ["les", [], 4, 0, true],
   ["les", [], 2, 0, false],
 ];
@@ -29,7 +33,7 @@ describe.each(["reflected", "summed"] as const)("moments (%s) against rows", (re
       impose,
       demographics,
       weighted,
-      alpha0: form === "aids" ? 0.3 : 0,
+      alpha0: form === "aids" || form === "quaids" ? 0.3 : 0,
     });
     const alpha0 = size.alpha0;
     const finding = estimated(data, { form, impose, alpha0, estimator: "maximum likelihood" }, reduction);

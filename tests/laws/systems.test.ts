@@ -1,6 +1,13 @@
 import { describe, expect, test } from "vitest";
 import { seededRandom } from "../../shared/numerics/random.ts";
-import type { BaseColumn, BlockColumns, MomentForm, MomentTerm, Point, SystemSize } from "../../shared/systems/demand-system.ts";
+import type {
+  BaseColumn,
+  BlockColumns,
+  MomentForm,
+  MomentTerm,
+  Point,
+  SystemSize,
+} from "../../shared/systems/demand-system.ts";
 import { SYSTEMS } from "../../shared/systems/index.ts";
 import { type InteractionName, SYSTEM_NAMES } from "../../shared/systems/names.ts";
 import { logPriceIndex } from "../../shared/systems/price-indices.ts";
@@ -134,6 +141,10 @@ describe.each(SYSTEM_NAMES)("%s", (name) => {
         const sparse = system.moments.derivatives(theta, size);
         expect(sparse.length).toBe(theta.length);
         const { local } = system.moments;
+        for (const { term, of } of local?.combinations?.(theta, size) ?? []) {
+          const combined = of.reduce((sum, [other, weight]) => sum + weight * z[other], 0);
+          expect(Math.abs(combined - z[term])).toBeLessThan(ROUNDING);
+        }
         for (let a = 0; a < theta.length; a++) {
           const dense = system.moments.coefficients(theta, size).map((row) => row.map(() => 0));
           for (const [good, term, value] of sparse[a]) dense[good][term] += value;

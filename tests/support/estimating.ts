@@ -1,8 +1,10 @@
 import type { PreparedData } from "../../server/engine/columns/prepared-data.ts";
 import { withTimeTerms } from "../../server/engine/columns/seasonal-terms.ts";
 import { estimateSystem } from "../../server/engine/estimation/estimate.ts";
+import { locatable } from "../../server/engine/estimation/local-moments.ts";
 import { type Reduction, reduceRows } from "../../server/engine/estimation/moments.ts";
-import { momentsRequest, sourceOf } from "../../server/engine/estimation/request.ts";
+import { momentsRequest, sizeOf, sourceOf } from "../../server/engine/estimation/request.ts";
+import { specifiedSystem } from "../../server/engine/estimation/specified-system.ts";
 import { QUIET } from "../../server/engine/run.ts";
 import { type SystemSpecification, systemSpecification } from "../../shared/schemas/system.ts";
 
@@ -19,7 +21,9 @@ export function systemOver(data: PreparedData, specification: object): SystemSpe
 export function estimated(data: PreparedData, specification: object, reduction?: Reduction) {
   const parsed = withTimeTerms(systemOver(data, specification), data);
   const request = momentsRequest(parsed, data);
-  return estimateSystem(parsed, data, reduceRows(sourceOf(data, request), request.key, QUIET, reduction), QUIET);
+  const moments = reduceRows(sourceOf(data, request), request.key, QUIET, reduction);
+  const { moments: form } = specifiedSystem(parsed, data);
+  return estimateSystem(parsed, data, locatable(moments, data, request, form, sizeOf(parsed, data), reduction), QUIET);
 }
 
 /** Largest |a − b|/(1 + |b|). */

@@ -1,4 +1,10 @@
-import type { LocalColumns, LocalFiller, MomentForm, SystemSize } from "../../../shared/systems/demand-system.ts";
+import type {
+  LocalColumns,
+  LocalFiller,
+  MomentForm,
+  SystemSize,
+  TermCombination,
+} from "../../../shared/systems/demand-system.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { newColumn } from "../columns/shared-memory.ts";
 import { Cancelled, QUIET, type RunControl } from "../run.ts";
@@ -75,9 +81,20 @@ function localRows(data: PreparedData, nearby: MomentsRequest, form: LocalForm, 
         fillColumns(data, nearby, form.local.filler(theta, size), columns, control);
         last = [...theta];
       }
-      return sourceOf(data, request, columns);
+      const combinations = form.local.combinations?.(theta, size) ?? [];
+      const source = sourceOf(data, request, columns);
+      // With participation every term stands beside its products with probabilities, which are not combined.
+      return request.firstSteps?.participation ? source : withCombinations(source, combinations);
     },
   };
+}
+
+/** Columns that only combinations hold are whitened by themselves: no other is whitened by them. */
+function withCombinations(source: MomentSource, combinations: readonly TermCombination[]): MomentSource {
+  const combined = new Set(combinations.map(({ term }) => term));
+  const used = new Set(source.terms.filter((_, term) => !combined.has(term)).flat());
+  const groups = source.columns.map((_, at) => (used.has(at + 1) ? (source.groups?.[at] ?? 0) : 2));
+  return { ...source, groups, combinations };
 }
 
 /** Rows between two looks at `cancelled()`. */

@@ -1,3 +1,5 @@
+import type { TermCombination } from "../../../shared/systems/demand-system.ts";
+
 /**
  * Rows as the estimators see them: base columns, terms made of them, and responses.
  *
@@ -17,6 +19,8 @@ export interface MomentSource {
   /** What a person calls each base column: "ln price of bread". */
   readonly columnLabels: readonly string[];
   readonly terms: readonly TermPair[];
+  /** Terms whose moments follow from those of others. */
+  readonly combinations?: readonly TermCombination[];
   readonly responses: readonly Float64Array[];
   readonly responseLabels: readonly string[];
   /** Scaled to sum to T; absent for equal weights. */

@@ -88,16 +88,17 @@ export function momentsOfFactor(
     rows: source.rows,
     weighted: source.weights !== undefined,
     responseLabels: source.responseLabels,
-    terms: multiply(parts.left, termMap(source.terms, terms, whitening)),
+    terms: multiply(parts.left, combine(termMap(source.terms, terms, whitening), source)),
     responses: shiftBack(parts.right, columnOf(parts.left, 0), whitening.shift.subarray(source.columns.length)),
     dependent,
   };
 }
 
 /** Every whitened term that a term of the list is made of; the constant first, products of three after those of two. */
-export function closure({ terms, groups }: Pick<MomentSource, "terms" | "groups">): TermPair[] {
+export function closure({ terms, groups, combinations = [] }: Pick<MomentSource, "terms" | "groups" | "combinations">) {
   const found = new Map<string, TermPair>();
-  for (const term of terms) {
+  for (const [at, term] of terms.entries()) {
+    if (combinations.some((combination) => combination.term === at)) continue;
     for (const product of productsOf(term, (place) => placesBelow(place, groups))) {
       found.set(product.join(), product);
     }
@@ -141,7 +142,7 @@ export function termMap(
     for (let a = 0; a <= j; a++) {
       for (let b = 0; b <= k; b++) {
         const at = place.get(ordered(a, b).join());
-        // Columns of another group take no part: their entry is zero.
+        // Columns of another group take no part, and those of combinations none at all.
         if (at !== undefined) column[at] += entry(a, j) * entry(b, k);
       }
     }
@@ -159,6 +160,18 @@ export function termMap(
       if (factor !== 0) spread(others, [...chosen, a], weight * factor, column);
     }
   }
+}
+
+/** Puts the columns of terms that are combinations of others in their places. */
+function combine(map: Columns, { combinations = [] }: Pick<MomentSource, "combinations">): Columns {
+  for (const { term, of } of combinations) {
+    const column = columnOf(map, term).fill(0);
+    for (const [other, weight] of of) {
+      const from = columnOf(map, other);
+      for (let r = 0; r < column.length; r++) column[r] += weight * from[r];
+    }
+  }
+  return map;
 }
 
 function splitColumns(matrix: Columns, left: number): { left: Columns; right: Columns } {

@@ -1,9 +1,10 @@
 import type { CoefficientPlace, DemandSystem, SystemSize } from "../../../shared/systems/demand-system.ts";
 import type { RestrictionName } from "../../../shared/systems/names.ts";
+import { Refusal } from "../refusal.ts";
 import type { RunControl } from "../run.ts";
 import { systemForm } from "./coefficient-form.ts";
 import type { Estimation } from "./estimation.ts";
-import { maximumLikelihood } from "./estimators.ts";
+import { leastSquares, maximumLikelihood } from "./estimators.ts";
 import type { Solution } from "./minimise.ts";
 import { meanResponses } from "./responses.ts";
 
@@ -12,7 +13,7 @@ import { meanResponses } from "./responses.ts";
  * likelihood of the form without such terms, which the moments at hand give without reading a row again
  * (after Blundell & Robin 1999, Journal of Applied Econometrics 14).
  *
- * Errors: those of the form without such terms, which the larger one would meet too; `Cancelled`.
+ * Errors: `Cancelled`.
  */
 export function startOf(
   system: DemandSystem,
@@ -23,7 +24,32 @@ export function startOf(
 ): number[] {
   const nearby = nearbyEstimation(system, size, impose, estimation);
   if (nearby === undefined) return system.start(size, meanResponses(estimation));
-  return system.moments.local!.from.embed(fitNearby(system, size, nearby, control).theta, size);
+  return system.moments.local!.from.embed(nearbyTheta(system, size, nearby, control), size);
+}
+
+/**
+ * Maximum likelihood; least squares, then a start without any fit, where the data allow none: the larger system may
+ * explain what the smaller one cannot, and refuses in its own words if it does not.
+ */
+function nearbyTheta(
+  system: DemandSystem,
+  size: SystemSize,
+  nearby: Estimation,
+  control: RunControl,
+): readonly number[] {
+  const theta = system.moments.local!.from.start(size, meanResponses(nearby));
+  const start = nearby.form.expand.places.map((place) => theta[place]);
+  for (const attempt of [
+    () => fitNearby(system, size, nearby, control),
+    () => leastSquares(nearby, true, start, control),
+  ]) {
+    try {
+      return attempt().theta;
+    } catch (error) {
+      if (!(error instanceof Refusal)) throw error;
+    }
+  }
+  return theta;
 }
 
 /**
