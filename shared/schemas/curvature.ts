@@ -18,6 +18,8 @@ export const curvatureFinding = z.strictObject({
   binds: z.boolean(),
   /** Log-likelihood with homogeneity and symmetry alone. */
   logLikelihoodWithout: finite,
+  /** By how much it is above that of the estimates. */
+  loss: finite,
 });
 
 interface Asked {

@@ -1,6 +1,7 @@
 import type { DataFinding } from "../schemas/data.ts";
 import type { SlutskyFinding } from "../schemas/slutsky.ts";
 import type { SystemFinding } from "../schemas/system.ts";
+import { curvatureSentences } from "./curvature-words.ts";
 import { equationsSentences } from "./equations-sentence.ts";
 import { endogeneityHeadline } from "./first-steps-words.ts";
 import { printCount, printQuantity, printSize } from "./numbers.ts";
@@ -38,6 +39,7 @@ type ToldSystem = Pick<
   | "equations"
   | "expenditure"
   | "endogeneity"
+  | "curvature"
 >;
 
 /** Which goods are luxuries and necessities beyond doubt, then what theory is violated. */
@@ -46,6 +48,7 @@ export function systemSentence(system: ToldSystem): string {
     classesOfGoods(system),
     ...violations(system),
     ...ofUnits(system),
+    ...curvatureSentences(system),
     ...equationsSentences(system),
     ...endogeneityHeadline(system),
   ].join(" ");

@@ -1,6 +1,7 @@
 import type { ReactNode } from "react";
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { capital } from "../../../shared/study/words.ts";
+import { curvatureFact } from "../../../shared/tables/curvature-words.ts";
 import { DECIMALS, printCount, printFixed, printSize } from "../../../shared/tables/numbers.ts";
 import { withArticle } from "../../../shared/tables/slutsky-matrix.ts";
 import { standardErrorsPhrase } from "../../../shared/tables/standard-errors.ts";
@@ -77,6 +78,7 @@ export function FitView({ finding }: { finding: SystemFinding }) {
             <Fact label="Rows of one weight that tell as much">{printFixed(finding.effectiveRows, 0)}</Fact>
           )}
           <Fact label="Standard errors">{capital(standardErrorsPhrase(finding))}</Fact>
+          {finding.curvature && <Fact label="Negativity imposed">{capital(curvatureFact(finding.curvature))}</Fact>}
           <Fact label="Equation dropped">{finding.dropped}</Fact>
           <Fact label="Iterations">{printCount(convergence.iterations)}</Fact>
           <Fact label="Gradient">

@@ -1,5 +1,6 @@
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { capital } from "../../../shared/study/words.ts";
+import { curvatureNotes } from "../../../shared/tables/curvature-words.ts";
 import { DECIMALS, printCount, printFixed } from "../../../shared/tables/numbers.ts";
 import { standardErrorsNotes, standardErrorsPhrase } from "../../../shared/tables/standard-errors.ts";
 
@@ -14,7 +15,8 @@ export function SystemNote({ finding }: { finding: SystemFinding }) {
       {weighted ? ", weighted" : ""}. {capital(finding.implicit?.method ?? finding.estimator)}, {iterations}, converged.{" "}
       {finding.aic === undefined ? "Log-likelihood at these estimates" : "Log-likelihood"}{" "}
       {printFixed(finding.logLikelihood, DECIMALS.statistic)}; <i className="font-serif">R</i>² by equation {rSquared}.
-      Prices and expenditure in units of estimation. {standardErrorsNotes(finding).join(" ")}
+      Prices and expenditure in units of estimation.{" "}
+      {[...standardErrorsNotes(finding), ...curvatureNotes(finding)].join(" ")}
     </p>
   );
 }

@@ -52,6 +52,8 @@ export function imposeCurvature(
     ...at,
   };
   const { rank, binds, ...curved } = fitCurved(task, control);
+  const logLikelihoodWithout = fitMeasures(fit.estimation, fit.solution).logLikelihood;
+  const { logLikelihood } = fitMeasures(curved.estimation, curved.solution);
   return {
     ...curved,
     curvature: {
@@ -59,7 +61,8 @@ export function imposeCurvature(
       asked,
       rank,
       binds,
-      logLikelihoodWithout: fitMeasures(fit.estimation, fit.solution).logLikelihood,
+      logLikelihoodWithout,
+      loss: logLikelihoodWithout - logLikelihood,
     },
   };
 }
