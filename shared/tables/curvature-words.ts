@@ -8,7 +8,7 @@ export function curvatureSentences({ curvature }: Pick<SystemFinding, "curvature
   const at = withArticle(curvature.pointName);
   if (!curvature.binds) return [`Negativity imposed at ${at} changes nothing: the estimates satisfy it there.`];
   // Estimators that do not maximise the likelihood need not lose any.
-  const loss = printFixed(curvature.loss, DECIMALS.statistic);
+  const loss = printFixed(curvature.loss, DECIMALS.fit);
   return [`Negativity is imposed at ${at}${curvature.loss > 0 ? `, which lowers the log-likelihood by ${loss}` : ""}.`];
 }
 
