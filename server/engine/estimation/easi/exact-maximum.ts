@@ -1,11 +1,11 @@
 import { Cancelled } from "../../run.ts";
 import { expand } from "../coefficient-form.ts";
-import { type Columns, zeros } from "../columns.ts";
+import { type Columns, multiply, transposed, zeros } from "../columns.ts";
 import { conditionOf } from "../condition.ts";
 import { refuseNotConverged } from "../failures.ts";
 import { residualFactor } from "../residuals.ts";
 import { weightOf } from "../three-stage.ts";
-import { semidefiniteCholesky, solveUpper, solveUpperTransposed } from "../triangle.ts";
+import { invertUpper, semidefiniteCholesky, solveUpper, solveUpperTransposed } from "../triangle.ts";
 import { exactCovariance } from "./exact-covariance.ts";
 import { type ExactProblem, type ExactSolution, equationsAt } from "./exact-iteration.ts";
 import { ExactLikelihood } from "./exact-likelihood.ts";
@@ -19,6 +19,8 @@ const TOLERANCE = 1e-10;
 const ROUNDING_STEP = 1e-8;
 const MOST_ITERATIONS = 200;
 const MOST_HALVINGS = 30;
+/** Steps that shrink by less than this ask for the second derivatives where they are. */
+const SLOWLY = 0.4;
 /** Of a standard error: central differences of the exact gradient leave some 1e-7 of the second derivatives. */
 const DIFFERENCE = 1e-3;
 
@@ -31,11 +33,12 @@ const DIFFERENCE = 1e-3;
 export function maximiseExact(problem: ExactProblem, from: ExactSolution): ExactMaximum {
   const { estimation, control } = problem;
   const likelihood = new ExactLikelihood(problem);
-  const scale = scaleOf(problem, from);
+  const { scale, information } = byStages(problem, from);
   let free = [...from.solution.free];
   let value = likelihood.value(free);
-  let curvature = informationAt(likelihood, free, scale, problem);
-  let settledAt = free;
+  // Of three stages first: nearly that of the likelihood, and no pass over the rows for every coefficient.
+  let curvature = information;
+  let settledAt: number[] | undefined;
   let largestStep = Number.POSITIVE_INFINITY;
   for (let iteration = 1; ; iteration++) {
     if (control.cancelled()) throw new Cancelled("cancelled while iterating");
@@ -47,7 +50,8 @@ export function maximiseExact(problem: ExactProblem, from: ExactSolution): Exact
     const condition = conditionOf(semidefiniteCholesky(curvature, 0).factor);
     if (largestStep <= TOLERANCE || (largestStep < ROUNDING_STEP && largestStep >= previous)) {
       free = moved(free, step, 1);
-      if (distance(free, settledAt, scale) > DIFFERENCE) curvature = informationAt(likelihood, free, scale, problem);
+      if (settledAt === undefined || distance(free, settledAt, scale) > DIFFERENCE)
+        curvature = informationAt(likelihood, free, scale, problem);
       return finished(problem, from, free, curvature, scale, {
         iterations: from.solution.iterations + iteration,
         gradient: largestGradient,
@@ -62,17 +66,26 @@ export function maximiseExact(problem: ExactProblem, from: ExactSolution): Exact
     free = next.free;
     value = next.value;
     control.progress({ step: "iterating", iteration, gradient: largestGradient, largestStep, logLikelihood: value });
-    if (largestStep > 0.1 * previous) {
+    if (largestStep > SLOWLY * previous) {
       curvature = informationAt(likelihood, free, scale, problem);
       settledAt = free;
     }
   }
 }
 
-/** Standard errors of φ by three stages: the units in which differences and steps are of one size. */
-function scaleOf(problem: ExactProblem, from: ExactSolution): number[] {
+/** Standard errors of φ by three stages, the units in which differences and steps are of one size; and V⁻¹ in them. */
+function byStages(problem: ExactProblem, from: ExactSolution): { scale: number[]; information: Columns } {
   const covariance = exactCovariance(problem, from);
-  return problem.estimation.form.expand.places.map((place) => Math.sqrt(covariance[place][place]));
+  const { places } = problem.estimation.form.expand;
+  const scale = places.map((place) => Math.sqrt(covariance[place][place]));
+  const correlations = zeros(places.length, places.length);
+  places.forEach((a, f) => {
+    places.forEach((b, g) => {
+      correlations.values[f * places.length + g] = covariance[a][b] / (scale[f] * scale[g]);
+    });
+  });
+  const inverse = invertUpper(semidefiniteCholesky(correlations, 0).factor);
+  return { scale, information: multiply(inverse, transposed(inverse)) };
 }
 
 /** −∂²/∂φ∂φ' in units of `scale`. */
