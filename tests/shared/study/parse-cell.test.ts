@@ -102,6 +102,27 @@ describe("wrong words", () => {
       "upload: u\ngoods: {a: {prise: p, quantity: q}, b: {price: p, quantity: q}}",
       ["prise is not a key of a: the nearest is price."],
     ],
+    [
+      "elasticities",
+      "system: b\nat: mean\ngroups: {of: urban}",
+      ["at is one point and groups are several: give one of them."],
+    ],
+    [
+      "elasticities",
+      "system: b\nat: {row: 3}\nover: rows",
+      ["at is one point, and over: rows goes over all rows or groups of them: give one of them."],
+    ],
+    [
+      "elasticities",
+      "system: b\nat: {x: quantile 0.9}\nshares: observed",
+      ["shares are observed in rows, and none at this point: give the base point, the mean or a row."],
+    ],
+    ["elasticities", "system: b\nlevel: 95", ["level is too long or too large: at most 0.999."]],
+    [
+      "elasticities",
+      "system: b\ngroups: {of: urban, quantile: 5}",
+      ["quantile is not a key of groups: the nearest is quantiles."],
+    ],
     ["data", "upload: u\ngoods: {a: {price: p, quantity: q}}", ["goods has 1 good; shares need at least 2."]],
     [
       "data",

@@ -102,6 +102,23 @@ describe("resolveCells", () => {
     ]);
   });
 
+  it("tells of elasticities: columns to group by, prices, and an index that cannot move", () => {
+    const of = (keys: string) => told("e", DATA, BASE, ["e", "elasticities", `system: base\n${keys}`]);
+    expect(of("groups: {of: village}")).toEqual([]);
+    expect(of("groups: {of: log_size, quantiles: 4}")).toEqual([]);
+    expect(of("groups: {of: total expenditure, quantiles: 5}\nover: rows")).toEqual([]);
+    expect(of("groups: {of: urbane}")).toEqual(["purchases.csv has no column urbane. The nearest is urban."]);
+    expect(of("groups: {of: village, quantiles: 5}")).toEqual(["village is a text column and has no quantiles."]);
+    expect(of("at: {prices: {grains: 2}, x: 5}")).toEqual([
+      "prices has 1 good, the system has 2 goods: dairy has no price.",
+    ]);
+    expect(of("index: exact")).toEqual([
+      "exact lets the weights of Stone's index in la-aids move; base is aids. Write held.",
+    ]);
+    const stone: Given = ["base", "system", "data: survey\nform: la-aids\nindex: stone"];
+    expect(told("e", DATA, stone, ["e", "elasticities", "system: base\nindex: exact"])).toEqual([]);
+  });
+
   it("tells twenty unknown columns at most, in no time", () => {
     const goods = Array.from({ length: 500 }, (_, i) => `  g${i}: {price: price${i}, quantity: quantity${i}}`).join(
       "\n",
