@@ -125,6 +125,9 @@ function extendedLocal(local: LocalColumns, extension: Extension, count: (size: 
   return {
     ...local,
     filler: (theta, size) => local.filler(theta.slice(0, count(size)), size),
+    ...(local.combinations && {
+      combinations: (theta, size) => local.combinations!(theta.slice(0, count(size)), size),
+    }),
     from: {
       ...from,
       moments: extendedMoments(from.moments, extension, nearby),

@@ -102,4 +102,17 @@ describe("endogenous expenditure", () => {
     expect(firstStage.f.statistic).toBeLessThan(10);
     expect(firstStage.f).toMatchObject({ numerator: 1, denominator: 200 - 5 });
   });
+
+  it("has larger errors by the bootstrap, which estimates the first stage again", () => {
+    const { data } = endogenousShares({ rows: 300, strength: 0.3 });
+    const common = { form: "la-aids", ...THEORY, instruments: ["earnings"] };
+    const asData = estimated(data, common);
+    const drawn = estimated(data, { ...common, "standard errors": { bootstrap: "rows", replicates: 60, seed: 2 } });
+    expect([asData, drawn].map(({ endogeneity }) => endogeneity!.firstStageIgnored)).toEqual([true, false]);
+    const errors = ({ coefficients }: typeof drawn) =>
+      coefficients.filter(({ block }) => block === "beta").map(({ standardError }) => standardError);
+    // The residual is ρ_i v beside noise of the same size, so that its own error weighs as much as the equations'.
+    expect(errors(drawn)[0] / errors(asData)[0]).toBeGreaterThan(1.15);
+    expect(drawn.fitted.theta).toEqual(asData.fitted.theta);
+  });
 });
