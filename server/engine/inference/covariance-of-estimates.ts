@@ -1,3 +1,4 @@
+import type { BootstrapSpecification } from "../../../shared/schemas/standard-errors.ts";
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { conventionalCovariance, leastSquaresCovariance } from "../estimation/covariance.ts";
 import type { RunControl } from "../run.ts";
@@ -31,16 +32,19 @@ export function covarianceOfEstimates(fitted: Fitted, control: RunControl): Cova
     const covariance = heteroskedasticCovariance(estimation, solution, fitted.source(), control);
     return { covariance, standardErrors: "heteroskedastic", ...effective };
   }
-  if ("bootstrap" in asked) {
-    const { work, clusters } = replicateWork(fitted, asked, control);
-    const summary = summarise(estimateReplicates(work, asked.replicates, control), work.sampling);
-    return { ...summary, standardErrors: "bootstrap", ...(clusters && { clusters }), ...effective };
-  }
+  if ("bootstrap" in asked) return { ...bootstrapOf(fitted, asked, control), ...effective };
   const source = fitted.source();
   const { codes, finding } = clustersOfRows(data, source, asked.cluster, ["standard errors", "cluster"]);
   const named = { ...codes, column: finding.column };
   const covariance = clusteredCovariance(estimation, solution, source, named, control);
   return { covariance, standardErrors: "clustered", clusters: finding, ...effective };
+}
+
+/** The covariance of bootstrap draws. Errors: as those of `covarianceOfEstimates`. */
+export function bootstrapOf(fitted: Fitted, asked: BootstrapSpecification, control: RunControl): CovarianceOfEstimates {
+  const { work, clusters } = replicateWork(fitted, asked, control);
+  const summary = summarise(estimateReplicates(work, asked.replicates, control), work.sampling);
+  return { ...summary, standardErrors: "bootstrap", ...(clusters && { clusters }) };
 }
 
 /** (Σh)²/Σh² (Kish 1965, Survey Sampling): as many rows of one weight as tell as much. */

@@ -1,13 +1,14 @@
 import type { SystemFinding } from "../../../../shared/schemas/system.ts";
-import { effectiveRows } from "../../inference/covariance-of-estimates.ts";
+import { bootstrapOf, effectiveRows } from "../../inference/covariance-of-estimates.ts";
 import { clustersOfRows } from "../../inference/row-groups.ts";
-import { Refusal } from "../../refusal.ts";
 import { exactCovariance, type Groups } from "./exact-covariance.ts";
 import type { ExactProblem, ExactSolution } from "./exact-iteration.ts";
 import type { ExactMaximum } from "./exact-maximum.ts";
 import { maximumCovariance } from "./maximum-covariance.ts";
 
-type Inference = Pick<SystemFinding, "standardErrors" | "clusters" | "effectiveRows"> & { covariance: number[][] };
+type Inference = Pick<SystemFinding, "standardErrors" | "clusters" | "bootstrap" | "effectiveRows"> & {
+  covariance: number[][];
+};
 
 /** The covariance of θ̂ that the specification asks for, and what the finding says of it. */
 export function exactInference(problem: ExactProblem, exact: ExactSolution | ExactMaximum): Inference {
@@ -24,9 +25,10 @@ export function exactInference(problem: ExactProblem, exact: ExactSolution | Exa
     return { covariance: covarianceBy(groups), standardErrors: "heteroskedastic", ...effective };
   }
   if ("bootstrap" in asked) {
-    const sentence =
-      "A bootstrap of easi with exact real expenditure is not offered: ask for heteroskedastic or clustered standard errors, or for approximate real expenditure.";
-    throw new Refusal([{ sentence, key: ["standard errors", "bootstrap"] }]);
+    const { size, estimation, control } = problem;
+    const source = () => exact.equations.source;
+    const fitted = { specification, data, size, estimation, solution: exact.solution, source };
+    return { ...bootstrapOf(fitted, asked, control), ...effective };
   }
   const { source } = exact.equations;
   const { codes, finding } = clustersOfRows(data, source, asked.cluster, ["standard errors", "cluster"]);

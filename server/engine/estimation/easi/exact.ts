@@ -1,19 +1,15 @@
 import type { SystemFinding, SystemSpecification } from "../../../../shared/schemas/system.ts";
 import type { SystemSize } from "../../../../shared/systems/demand-system.ts";
-import { easi } from "../../../../shared/systems/easi.ts";
 import type { PreparedData } from "../../columns/prepared-data.ts";
 import type { RunControl } from "../../run.ts";
 import { durbinWatson } from "../durbin-watson.ts";
 import type { Estimation } from "../estimation.ts";
-import { leastSquares } from "../estimators.ts";
 import { fitMeasures } from "../fit-measures.ts";
 import type { Reduction } from "../moments.ts";
-import { meanResponses } from "../responses.ts";
 import { covarianceOf } from "../weighting.ts";
 import { exactInference } from "./exact-inference.ts";
-import { exactProblem, iterateExact } from "./exact-iteration.ts";
 import { ExactLikelihood } from "./exact-likelihood.ts";
-import { maximiseExact } from "./exact-maximum.ts";
+import { solveExact } from "./solve-exact.ts";
 
 /** What the exact form has of a system finding that the estimators of linear equations make otherwise. */
 export type ExactEstimate = Pick<
@@ -21,6 +17,7 @@ export type ExactEstimate = Pick<
   | "implicit"
   | "standardErrors"
   | "clusters"
+  | "bootstrap"
   | "effectiveRows"
   | "logLikelihood"
   | "rSquared"
@@ -53,13 +50,8 @@ export function estimateExactEasi(
   control: RunControl,
   reduction?: Reduction,
 ): ExactEstimate {
-  const theta = easi.start(size, meanResponses(estimation));
-  const start = estimation.form.expand.places.map((place) => theta[place]);
-  const approximate = leastSquares(estimation, true, start, control);
-  const problem = exactProblem(specification, data, size, estimation, control, reduction);
-  const stages = iterateExact(problem, approximate);
+  const { problem, exact } = solveExact(specification, data, size, estimation, control, reduction);
   const likelihood = specification.estimator === "maximum likelihood";
-  const exact = likelihood ? maximiseExact(problem, stages) : stages;
   const { solution, equations } = exact;
   const { rSquared, systemRSquared } = fitMeasures(equations.estimation, solution);
   const logLikelihood = new ExactLikelihood(problem).value(solution.free);

@@ -2,7 +2,9 @@ import type { BootstrapSpecification, ClustersFinding } from "../../../../shared
 import type { SystemSpecification } from "../../../../shared/schemas/system.ts";
 import type { SystemSize } from "../../../../shared/systems/demand-system.ts";
 import type { PreparedData } from "../../columns/prepared-data.ts";
+import { demographicColumn } from "../../columns/seasonal-terms.ts";
 import type { CurvaturePoint } from "../../estimation/curvature/impose.ts";
+import { isExactEasi } from "../../estimation/easi/specification.ts";
 import type { Estimation } from "../../estimation/estimation.ts";
 import type { Solution } from "../../estimation/minimise.ts";
 import type { MomentSource } from "../../estimation/moment-source.ts";
@@ -48,8 +50,7 @@ export function replicateWork(
   const { sampling, drawable, clusters } = drawn(fitted, asked, control);
   const work: ReplicateWork = {
     specification,
-    // Besides, only a system in differences looks at the data again, and they have one row a period.
-    data: drawable.kind === "data" || specification.differences ? data : withoutColumns(data),
+    data: whatIsLookedAt(drawable, specification, data),
     size,
     equations: estimation.equations,
     coefficientLabels: estimation.coefficientLabels,
@@ -69,8 +70,8 @@ function drawn(
   const source = rowsOf();
   const units = source.rows;
   const whole = wholeWay(specification, estimation);
-  const reduction = planReduction(source, control);
-  const rows: Drawable = whole ? { kind: "data" } : { kind: "rows", source, reduction };
+  if (whole && source.dataRows) throw withoutPeriodBefore(whole);
+  const rows: Drawable = whole ? { kind: "data" } : { kind: "rows", source, reduction: planReduction(source, control) };
   switch (of) {
     case "rows":
       return { sampling: { of, seed, units }, drawable: rows };
@@ -83,7 +84,7 @@ function drawn(
     case "residuals": {
       if (whole) throw notOfResiduals(whole);
       const coefficients = estimation.form.coefficients(solution.free);
-      const residuals = residualSource(source, reduction, coefficients);
+      const residuals = residualSource(source, planReduction(source, control), coefficients);
       const runningWeights = source.weights && runningSums(source.weights);
       const sampling = { of, seed, units, ...(runningWeights && { runningWeights }) };
       return { sampling, drawable: { kind: "residuals", residuals } };
@@ -100,14 +101,16 @@ function drawn(
       const { starts, order } = together;
       const drawable: Drawable = whole
         ? { kind: "data", starts, order }
-        : { kind: "rows", source: together.source, reduction, starts };
+        : { kind: "rows", source: together.source, reduction: planReduction(source, control), starts };
       return { sampling, drawable, clusters: finding };
     }
   }
 }
 
 /** What makes a replicate go the whole way from the rows, if anything does. */
-function wholeWay({ instruments, zeros }: SystemSpecification, { moments }: Estimation): string | undefined {
+function wholeWay(specification: SystemSpecification, { moments }: Estimation): string | undefined {
+  const { instruments, zeros } = specification;
+  if (isExactEasi(specification)) return "implicit utility holds the shares of its row";
   if (instruments !== undefined) return "its first stage explains total expenditure";
   if (zeros !== undefined) return "its first step explains who buys at all";
   return moments.local && "terms of this system move with its coefficients";
@@ -115,6 +118,11 @@ function wholeWay({ instruments, zeros }: SystemSpecification, { moments }: Esti
 
 function notOfResiduals(because: string): Refusal {
   const sentence = `A bootstrap of residuals holds everything but the shares fixed, and ${because}: draw rows or clusters instead.`;
+  return new Refusal([{ sentence, key: ["standard errors", "bootstrap"] }]);
+}
+
+function withoutPeriodBefore(because: string): Refusal {
+  const sentence = `Rows drawn again have no period before them, which these equations need, and ${because}: ask for conventional, heteroskedastic or clustered standard errors.`;
   return new Refusal([{ sentence, key: ["standard errors", "bootstrap"] }]);
 }
 
@@ -128,6 +136,14 @@ function orderOfTime(data: PreparedData, { dataRows }: MomentSource): Int32Array
   if (dataRows === undefined) return timeOrder(data);
   const { time } = data;
   return Int32Array.from(dataRows.keys()).sort((one, two) => time![dataRows[one]] - time![dataRows[two]]);
+}
+
+/** The whole way looks at every column; besides, only a system in differences looks at the data again. */
+function whatIsLookedAt(drawable: Drawable, specification: SystemSpecification, data: PreparedData): PreparedData {
+  if (drawable.kind !== "data") return specification.differences ? data : withoutColumns(data);
+  // Seasons and trend count from the sample's first period, which need not be drawn.
+  const shifts = specification.demographics.map((name) => [name, demographicColumn(data, name)!] as const);
+  return { ...data, numeric: new Map([...data.numeric, ...shifts]) };
 }
 
 function runningSums(weights: Float64Array): Float64Array {

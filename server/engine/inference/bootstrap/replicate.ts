@@ -3,6 +3,8 @@ import type { SystemSize } from "../../../../shared/systems/demand-system.ts";
 import type { PreparedData } from "../../columns/prepared-data.ts";
 import { systemForm } from "../../estimation/coefficient-form.ts";
 import { type CurvaturePoint, imposeCurvature } from "../../estimation/curvature/impose.ts";
+import { solveExact } from "../../estimation/easi/solve-exact.ts";
+import { isExactEasi } from "../../estimation/easi/specification.ts";
 import type { Estimation } from "../../estimation/estimation.ts";
 import { locatable } from "../../estimation/local-moments.ts";
 import type { MomentSource } from "../../estimation/moment-source.ts";
@@ -129,8 +131,20 @@ function reestimateData(
   const { specification, size } = work;
   const request = momentsRequest(specification, data);
   const nearby = reduceRows(sourceOf(data, request), request.key, control);
-  const { moments } = specifiedSystem(specification, data);
-  const theta = reestimate({ ...work, data }, locatable(nearby, data, request, moments, size), control);
+  const theta = isExactEasi(specification)
+    ? exactTheta(work, data, nearby, control)
+    : reestimate({ ...work, data }, locatable(nearby, data, request, momentsForm(work, data), size), control);
   if (theta.length === work.theta.length) return theta;
   throw new Refusal("Among the drawn rows some good is bought by all, or by none, that is not among the rows used.");
+}
+
+const momentsForm = ({ specification }: ReplicateWork, data: PreparedData) =>
+  specifiedSystem(specification, data).moments;
+
+/** θ* of EASI with implicit utility, from the moments of its approximate form. */
+function exactTheta(work: ReplicateWork, data: PreparedData, moments: Moments, control: RunControl): number[] {
+  const { specification, size, equations, coefficientLabels } = work;
+  const form = systemForm(specifiedSystem(specification, data), size, specification.impose);
+  const estimation: Estimation = { moments, form, equations, coefficientLabels };
+  return solveExact(specification, data, size, estimation, control).exact.solution.theta;
 }

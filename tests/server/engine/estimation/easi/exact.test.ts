@@ -1,4 +1,5 @@
 import { describe, expect, it } from "vitest";
+import { draw } from "../../../../../server/engine/inference/bootstrap/sampling.ts";
 import { seededRandom } from "../../../../../shared/numerics/random.ts";
 import { ESTIMATOR_NAMES } from "../../../../../shared/schemas/system.ts";
 import type { EasiSize } from "../../../../../shared/systems/demand-system.ts";
@@ -7,6 +8,7 @@ import { INTERACTION_NAMES, type RestrictionName } from "../../../../../shared/s
 import { easiRowByRow } from "../../../../support/easi-row-by-row.ts";
 import { estimated, largestDifference } from "../../../../support/estimating.ts";
 import { simulateEasi } from "../../../../support/simulated-easi.ts";
+import { written } from "../../../../support/written-rows.ts";
 
 const BOTH: RestrictionName[] = ["homogeneity", "symmetry"];
 const PLAIN: EasiSize = { degree: 3, interactions: [] };
@@ -129,11 +131,16 @@ describe("the exact form", () => {
     expect(Math.abs(totals.heteroskedastic / count - 1)).toBeLessThan(3 * Math.sqrt(2 / rounds));
   });
 
-  it("refuses a bootstrap", () => {
+  it("bootstraps rows, each replicate the estimate of its rows written out, and no residuals", () => {
     const { data } = simulateEasi({ goods: 3, rows: 120, random: seededRandom(10), noise: 0.03, easi: PLAIN });
     const asked = { form: "easi", ...PLAIN, estimator: "least squares", impose: BOTH };
-    expect(() => estimated(data, { ...asked, "standard errors": { bootstrap: "rows" } })).toThrow(
-      "A bootstrap of easi with exact real expenditure is not offered",
+    const bootstrap = { bootstrap: "rows", replicates: 20, seed: 6 };
+    const found = estimated(data, { ...asked, "standard errors": bootstrap });
+    const rows = [...draw({ of: "rows", seed: 6, units: 120 }, 4)];
+    const slow = estimated(written(data, rows), asked).fitted.theta;
+    expect(largestDifference(found.bootstrap!.draws![3], slow)).toBeLessThan(1e-7);
+    expect(() => estimated(data, { ...asked, "standard errors": { bootstrap: "residuals" } })).toThrow(
+      /holds everything but the shares fixed/,
     );
   });
 });
