@@ -6,6 +6,7 @@ import type {
   TermCombination,
 } from "../../../shared/systems/demand-system.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
+import { demographicColumn } from "../columns/seasonal-terms.ts";
 import { newColumn } from "../columns/shared-memory.ts";
 import { Cancelled, QUIET, type RunControl } from "../run.ts";
 import { localResiduals } from "./local-residuals.ts";
@@ -107,7 +108,7 @@ function fillColumns(
   columns: readonly Float64Array[],
   control: RunControl,
 ): void {
-  const shifts = demographics.map((name) => data.numeric.get(name)!);
+  const shifts = demographics.map((name) => demographicColumn(data, name)!);
   const logPrices = new Float64Array(data.goods.length);
   const shares = new Float64Array(data.goods.length);
   const z = new Float64Array(shifts.length);
