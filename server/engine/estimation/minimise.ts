@@ -94,7 +94,7 @@ export function minimise(
     const largestGradient =
       gradient.reduce((most, value) => Math.max(most, Math.abs(value)), 0) / estimation.moments.rows;
     // A step that shrinks by a third each time is slow, not stalled.
-    const stalled = previous < 1e-6 && largestStep > 0.9 * previous && Math.abs(slope) < 1e-12 * sizeOf(weighted);
+    const stalled = previous < 1e-6 && largestStep > 0.9 * previous && Math.abs(slope) < 1e-18 * sizeOf(weighted);
     if (largestStep <= tolerance || stalled) {
       if (factor.dependent.length > 0) refuseNotIdentified(estimation, factor);
       const free = state.free.map((value, f) => value + step[f]);

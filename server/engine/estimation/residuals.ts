@@ -51,20 +51,51 @@ function subtractMultiple(target: Float64Array, factor: number, matrix: Columns,
  */
 export function weightBlocks(stacked: Columns, height: number, weight: Columns): Columns {
   const result = zeros(stacked.rows, stacked.columns);
-  const { rows: equations, values } = weight;
+  const sources = Array.from({ length: weight.rows }, (_, j) => sourcesOf(weight, j));
   for (let column = 0; column < stacked.columns; column++) {
     const base = column * stacked.rows;
-    for (let j = 0; j < equations; j++) {
-      const target = base + j * height;
-      for (let i = 0; i < equations; i++) {
-        const factor = values[j * equations + i];
-        if (factor === 0) continue;
-        const from = base + i * height;
-        for (let r = 0; r < height; r++) result.values[target + r] += factor * stacked.values[from + r];
+    sources.forEach(({ places, factors }, j) => {
+      for (let k = 0; k < places.length; k += 4) {
+        addFour(result.values, base + j * height, stacked.values, base, height, places, factors, k);
       }
-    }
+    });
   }
   return result;
+}
+
+/** The equations that column j of V takes in, and with what factor; zeros fill up to a multiple of four. */
+function sourcesOf({ rows, values }: Columns, j: number): { places: number[]; factors: number[] } {
+  const places = Array.from({ length: rows }, (_, i) => i).filter((i) => values[j * rows + i] !== 0);
+  const factors = places.map((i) => values[j * rows + i]);
+  while (places.length % 4 !== 0) {
+    places.push(places[0]);
+    factors.push(0);
+  }
+  return { places, factors };
+}
+
+/** Four blocks at a time: the target is read and written a quarter as often. */
+function addFour(
+  result: Float64Array,
+  target: number,
+  from: Float64Array,
+  base: number,
+  height: number,
+  places: readonly number[],
+  factors: readonly number[],
+  k: number,
+): void {
+  const s0 = base + places[k] * height;
+  const s1 = base + places[k + 1] * height;
+  const s2 = base + places[k + 2] * height;
+  const s3 = base + places[k + 3] * height;
+  const f0 = factors[k];
+  const f1 = factors[k + 1];
+  const f2 = factors[k + 2];
+  const f3 = factors[k + 3];
+  for (let r = 0; r < height; r++) {
+    result[target + r] += f0 * from[s0 + r] + f1 * from[s1 + r] + f2 * from[s2 + r] + f3 * from[s3 + r];
+  }
 }
 
 /** A matrix of g columns of r as one column of r·g: the residuals beside their derivatives. */
