@@ -27,7 +27,8 @@ function companion(test: AnyTest): string {
 /** Each hypothesis with its main statistic, its small-sample companion and what follows. */
 export function HypothesisTable({ finding }: { finding: TestsFinding }) {
   const phone = usePhone();
-  const robust = isRobust(finding);
+  // Wald's leads where it alone is valid, and where it alone was made.
+  const robust = isRobust(finding) || finding.tests.filter(isMade).every((test) => "absent" in test.likelihoodRatio);
   // What there is nothing to test of is left to the note.
   const told = finding.tests.filter((test) => isMade(test) || test.because !== "nothing to test");
   const verdict = (test: AnyTest) => <VerdictWord {...testVerdict(test, finding)} />;

@@ -65,6 +65,14 @@ describe("tests in their band", () => {
     expect(screen.getByText(/clustered by village/)).toBeInTheDocument();
   });
 
+  it("lead with Wald where no likelihood ratio could be made", () => {
+    const absent = { absent: "Of this form hypotheses are tested by Wald." };
+    const alone = { ...homogeneity, likelihoodRatio: absent, score: absent, corrected: absent, laitinen: absent };
+    render(<Band finding={finding({ tests: [alone] })} />);
+    expect(screen.getByRole("columnheader", { name: "Wald" })).toBeInTheDocument();
+    expect(screen.getByRole("row", { name: /^Homogeneity/ })).toHaveTextContent(/12\.930\.005rejected/);
+  });
+
   it("of data alone show revealed preference with its cautions", () => {
     render(<Band finding={finding({ tests: [], covariance: undefined, revealed })} />);
     expect(screen.getByText(/31 of 338 rows contradict one another/)).toBeInTheDocument();
