@@ -1,5 +1,6 @@
 import type { SystemSize } from "../../../../shared/systems/demand-system.ts";
 import { type EasiParts, easiParts } from "../../../../shared/systems/easi-layout.ts";
+import { printFixed } from "../../../../shared/tables/numbers.ts";
 import type { PreparedData } from "../../columns/prepared-data.ts";
 import { demographicColumn } from "../../columns/seasonal-terms.ts";
 import { Refusal } from "../../refusal.ts";
@@ -79,7 +80,7 @@ export class EasiRows {
 
   #refuse(row: number, bend: number): never {
     const number = this.#data.rowNumbers[row];
-    const sentence = `Implicit utility is not defined in row ${number}: 1 − ½ p'Bp is ${bend.toPrecision(3)} there where more than 0 is needed. Leave out the interaction of prices with expenditure, or the row.`;
+    const sentence = `Implicit utility is not defined in row ${number}: 1 − ½ p'Bp is ${printFixed(bend, 2)} there where more than 0 is needed. Leave out the interaction of prices with expenditure, or the row.`;
     throw new Refusal([{ sentence, key: ["interactions"], row: number }]);
   }
 }

@@ -1,12 +1,18 @@
 import { describe, expect, it } from "vitest";
+import { systemForm } from "../../../../../server/engine/estimation/coefficient-form.ts";
+import { estimateExactEasi } from "../../../../../server/engine/estimation/easi/exact.ts";
+import { EasiRows } from "../../../../../server/engine/estimation/easi/exact-rows.ts";
+import { accumulateMoments, momentsRequest } from "../../../../../server/engine/estimation/index.ts";
+import type { Reduction } from "../../../../../server/engine/estimation/moments.ts";
 import { draw } from "../../../../../server/engine/inference/bootstrap/sampling.ts";
+import { QUIET } from "../../../../../server/engine/run.ts";
 import { seededRandom } from "../../../../../shared/numerics/random.ts";
 import { ESTIMATOR_NAMES } from "../../../../../shared/schemas/system.ts";
 import type { EasiSize } from "../../../../../shared/systems/demand-system.ts";
 import { easi } from "../../../../../shared/systems/easi.ts";
 import { INTERACTION_NAMES, type RestrictionName } from "../../../../../shared/systems/names.ts";
 import { easiRowByRow } from "../../../../support/easi-row-by-row.ts";
-import { estimated, largestDifference } from "../../../../support/estimating.ts";
+import { estimated, largestDifference, systemOver } from "../../../../support/estimating.ts";
 import { simulateEasi } from "../../../../support/simulated-easi.ts";
 import { written } from "../../../../support/written-rows.ts";
 
@@ -141,6 +147,37 @@ describe("the exact form", () => {
     expect(largestDifference(found.bootstrap!.draws![3], slow)).toBeLessThan(1e-7);
     expect(() => estimated(data, { ...asked, "standard errors": { bootstrap: "residuals" } })).toThrow(
       /holds everything but the shares fixed/,
+    );
+  });
+
+  it("is the same from the sums of rows as from the rows reflected", () => {
+    const simulation = { goods: 3, rows: 250, random: seededRandom(10), noise: 0.03, easi: FULL, demographics: 1 };
+    const { data, size } = simulateEasi(simulation);
+    const specification = systemOver(data, { form: "easi", ...FULL, impose: BOTH, estimator: "maximum likelihood" });
+    const estimation = {
+      moments: accumulateMoments(data, momentsRequest(specification, data), QUIET),
+      form: systemForm(easi, size, BOTH),
+      equations: [0, 1],
+      coefficientLabels: easi.layout(size).map(({ block }) => block),
+    };
+    const by = (reduction: Reduction) => estimateExactEasi(specification, data, size, estimation, QUIET, reduction);
+    const [summed, reflected] = [by("summed"), by("reflected")];
+    expect(largestDifference(summed.theta, reflected.theta)).toBeLessThan(1e-9);
+    expect(largestDifference(summed.covariance.flat(), reflected.covariance.flat())).toBeLessThan(1e-7);
+  });
+
+  it("refuses a row whose implicit utility is undefined, with its number and what is wrong", () => {
+    const tilted: EasiSize = { degree: 1, interactions: ["prices with expenditure"] };
+    const { data, size } = simulateEasi({ goods: 2, rows: 20, random: seededRandom(11), noise: 0.01, easi: tilted });
+    data.logPrices[0][6] = 2;
+    data.logPrices[1][6] = -2;
+    // ½ p'Bp = ½ · 0.3 · 4² > 1
+    const theta = easi.layout(size).map(({ block, good, column }) => {
+      if (block === "price expenditure") return good === column ? 0.3 : -0.3;
+      return block === "constant" ? 0.5 : 0;
+    });
+    expect(() => new EasiRows(data, []).realExpenditure(theta, size, QUIET)).toThrow(
+      "Implicit utility is not defined in row 7: 1 − ½ p'Bp is −1.40 there where more than 0 is needed.",
     );
   });
 });
