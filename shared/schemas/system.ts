@@ -14,7 +14,7 @@ import {
   standardErrorsSpecification,
 } from "./standard-errors.ts";
 
-export { type StandardErrorsSpecification, standardErrorsSpecification } from "./standard-errors.ts";
+export { standardErrorsSpecification } from "./standard-errors.ts";
 
 export const ESTIMATOR_NAMES = [
   "least squares",

@@ -1,5 +1,6 @@
 import { describe, expect, it } from "vitest";
 import { coefficientTable } from "../../../shared/tables/coefficients.ts";
+import { covarianceCsv } from "../../../shared/tables/covariance.ts";
 import { standardErrorsNotes, standardErrorsPhrase } from "../../../shared/tables/standard-errors.ts";
 import { exampleFindings } from "../../support/findings.ts";
 
@@ -26,6 +27,16 @@ describe("what standard errors are called", () => {
   ])("%s", (phrase, finding) => {
     expect(standardErrorsPhrase(finding).replaceAll("\u2009", ",")).toBe(phrase);
     expect(coefficientTable(finding).notes[0]).toContain(standardErrorsPhrase(finding));
+  });
+});
+
+describe("the file of the coefficients", () => {
+  it("has the ends of the percentile intervals of a bootstrap", () => {
+    const [head, first] = covarianceCsv({ ...bootstrapped, bootstrap: drawn }).split("\r\n");
+    const at = head.split(",").indexOf("2.5 percentile");
+    expect(head.split(",").slice(at - 1, at + 2)).toEqual(["standard error", "2.5 percentile", "97.5 percentile"]);
+    expect(first.split(",").slice(at, at + 2)).toEqual(["0", "1"]);
+    expect(covarianceCsv(system)).not.toContain("percentile");
   });
 });
 
