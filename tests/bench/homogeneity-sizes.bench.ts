@@ -3,7 +3,7 @@ import { EXACT_SIZES, rejectionRates } from "../support/homogeneity-sizes.ts";
 import { fastest, say } from "./timing.ts";
 
 /** Rejections of a true homogeneity in Laitinen's four systems; large ones take longer, and are farther from 5 %. */
-const REPLICATES: Readonly<Record<number, number>> = { 5: 4000, 8: 2000, 11: 500, 14: 250 };
+const REPLICATES: Readonly<Record<number, number>> = { 5: 4000, 8: 1000, 11: 300, 14: 100 };
 
 for (const sizes of EXACT_SIZES) {
   const replicates = REPLICATES[sizes.goods];

@@ -107,6 +107,21 @@ describe("runTests", () => {
   });
 });
 
+describe("exogeneity", () => {
+  it("is tested as the system's own finding has it, with a score besides", () => {
+    const specification = specificationOf("system", `${LINEAR}\ninstruments: [week]`);
+    const finding = runSystem(specification, data);
+    const asked = specificationOf("tests", "system: base\nof: [exogeneity, homogeneity]");
+    const [homogeneity, exogeneity] = made(runTests(asked, data, { specification, finding }));
+    const own = finding.endogeneity!.exogeneity;
+    expect(exogeneity).toMatchObject({ degreesOfFreedom: 6, given: ["homogeneity", "symmetry"] });
+    expect(exogeneity.wald).toMatchObject({ statistic: expect.closeTo(own.wald!.statistic, 6) });
+    expect(exogeneity.likelihoodRatio).toMatchObject({ statistic: expect.closeTo(own.likelihoodRatio!.statistic, 6) });
+    expect(exogeneity.score).toHaveProperty("statistic");
+    expect(homogeneity.laitinen).toMatchObject({ approximate: true, because: expect.stringContaining("first stage") });
+  });
+});
+
 describe("seasonal terms", () => {
   it("are tested as one thing", () => {
     const finding = testsOf(
