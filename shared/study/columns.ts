@@ -89,14 +89,12 @@ function systemProblems(specification: SystemSpecification, context: Context): P
     const numeric = upload.columns.filter(({ type }) => type === "number").map(({ name }) => name);
     const names = [...numeric, ...Object.keys(data.derive ?? {})];
     const known = new Set(names);
-    specification.demographics.forEach((column, i) => {
-      if (known.has(column) || problems.length >= MOST_TOLD) return;
+    for (const [path, column] of numbersNamed(specification)) {
+      if (known.has(column) || problems.length >= MOST_TOLD) continue;
       const isText = upload.columns.some(({ name, type }) => name === column && type === "text");
-      const text = `${column} of ${specification.data} is a text column; demographics need numbers: derive one, such as ${column} == "…".`;
-      problems.push(
-        tell(["demographics", i], ...(isText ? ([text] as [string]) : noColumn(specification.data, column, names))),
-      );
-    });
+      const text = `${column} of ${specification.data} is a text column; ${path[0]} need numbers: derive one, such as ${column} == "…".`;
+      problems.push(tell(path, ...(isText ? ([text] as [string]) : noColumn(specification.data, column, names))));
+    }
     const cluster = clusterNamed(specification);
     const all = [...upload.columns.map(({ name }) => name), ...Object.keys(data.derive ?? {})];
     if (cluster !== undefined && !all.includes(cluster)) {
@@ -108,6 +106,16 @@ function systemProblems(specification: SystemSpecification, context: Context): P
     problems.push(tell(["dropped"], ...noGood(specification.data, specification.dropped, goods)));
   }
   return problems;
+}
+
+/** The columns of numbers a system names, each with its place. */
+function numbersNamed({ demographics, instruments = [], zeros }: SystemSpecification): [KeyPath, string][] {
+  const participation = zeros === undefined || zeros === "two-step" ? [] : zeros["two-step"];
+  return [
+    ...demographics.map((column, i): [KeyPath, string] => [["demographics", i], column]),
+    ...instruments.map((column, i): [KeyPath, string] => [["instruments", i], column]),
+    ...participation.map((column, i): [KeyPath, string] => [["zeros", "two-step", i], column]),
+  ];
 }
 
 /** The column of `cluster`, beside clustered standard errors or a bootstrap of clusters. */

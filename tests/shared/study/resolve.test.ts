@@ -61,6 +61,18 @@ describe("resolveCells", () => {
     ]);
   });
 
+  it("finds instruments and the columns of two steps that the data lack", () => {
+    expect(told("s", DATA, ["s", "system", "data: survey\nform: aids\ninstruments: [urbn]"])[0]).toMatch(
+      /survey has no column urbn/,
+    );
+    expect(told("s", DATA, ["s", "system", "data: survey\nform: aids\nzeros: {two-step: [urban, siz]}"])).toEqual([
+      expect.stringMatching(/survey has no column siz/),
+    ]);
+    expect(told("s", DATA, ["s", "system", "data: survey\nform: aids\ninstruments: [village]"])[0]).toMatch(
+      /instruments need numbers/,
+    );
+  });
+
   it("tells a text column where numbers are needed", () => {
     expect(told("s", DATA, ["s", "system", "data: survey\nform: aids\ndemographics: [village]"])[0]).toMatch(
       /^village of survey is a text column/,

@@ -79,6 +79,8 @@ function waldOf({ data, solution, covariance, own }: ExtendedFit): { statistic: 
 /** 2(ln L − ln L₀), both by maximum likelihood from the same rows; absent where either has none. */
 function likelihoodRatioOf(fit: ExtendedFit, control: RunControl): { statistic: number; pValue: number } | undefined {
   const { data, system, size, estimation, solution, own, specification } = fit;
+  // With curvature imposed the fit without the residual would be one of another kind.
+  if (specification.curvature !== undefined) return undefined;
   const zero = new Set(data.goods.map((_, a) => own + a));
   const restricted = constrainedForm(system, size, withoutCoefficients(estimation.form.expand, zero));
   const start = restricted.expand.places.map((place) => solution.theta[place]);

@@ -37,8 +37,12 @@ export interface Extension {
 export function extendedSystem(system: DemandSystem, extension: Extension): DemandSystem {
   const { block, goods } = extension;
   const more = goods.map((good): CoefficientPlace => ({ block: block.name, good }));
+  const own = (theta: readonly number[], size: SystemSize) => theta.slice(0, system.layout(size).length);
   return {
     ...system,
+    // At a point the system is itself: what the first steps add is nought there.
+    evaluator: (theta, size) => system.evaluator(own(theta, size), size),
+    slopes: (theta, size, point) => system.slopes(own(theta, size), size, point),
     blocks: [...system.blocks, { ...block, columns: "one" }],
     layout: (size) => [...system.layout(size), ...more],
     free: (size, impose) => extendedForm(system.free(size, impose), extension),
