@@ -17,7 +17,7 @@ beforeAll(async () => {
 });
 
 describe("runSystem", () => {
-  it.each(["la-aids", "aids", "les"])("gives a finding of %s that its schema takes as it is", (form) => {
+  it.each(["la-aids", "aids", "quaids", "les"])("gives a finding of %s that its schema takes as it is", (form) => {
     const finding = runSystem(specificationOf("system", `data: weeks\nform: ${form}\nimpose: [homogeneity]`), data);
     expect(systemFinding.parse(JSON.parse(JSON.stringify(finding)))).toEqual(finding);
   });
@@ -68,6 +68,7 @@ describe("runSystem", () => {
     expect(les.checks.negativity.largest).toBeCloseTo(eigenvalues[0].value, 8);
     expect(les.unitsMatterBy).toBeUndefined();
     expect(found("form: aids").unitsMatterBy).toBe("a fixed α₀");
+    expect(found("form: quaids").unitsMatterBy).toBe("a fixed α₀");
     expect(found("form: la-aids\nindex: stone").unitsMatterBy).toBe("Stone's index");
     expect(found("form: la-aids").unitsMatterBy).toBeUndefined();
     expect(runSystem(AIDS, data)).not.toHaveProperty("unitsMatterBy");
