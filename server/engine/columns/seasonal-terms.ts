@@ -107,8 +107,7 @@ const known = new WeakMap<PreparedData, Map<string, Float64Array>>();
  *     season s of P    1 where ((t − 1) mod P) + 1 = s, less its mean; the last season has none of its own
  *     season sine k of P, cosine k of P    sin 2πkt/P, cos 2πkt/P, less their means
  *
- * Undefined where there is no such column. Months and quarters are those of the calendar; days and weeks written as
- * dates count by their rank among those of the file, so that one absent from it moves the seasons after it.
+ * Undefined where there is no such column. Quarters, months, weeks and days are those of the calendar (`timeValues`).
  */
 export function demographicColumn(data: PreparedData, name: string): Float64Array | undefined {
   const column = data.numeric.get(name);
