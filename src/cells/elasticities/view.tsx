@@ -51,6 +51,11 @@ export function ElasticitiesOpen({ finding }: OpenProps<"elasticities">) {
   const group = finding.groups[chosen];
   const figure = (
     <div>
+      {!several && (
+        <div className="mb-2">
+          <ByGoodSwitch which={which} onChange={setWhich} />
+        </div>
+      )}
       <IntervalFigure finding={finding} which={which} chosen={chosen} />
     </div>
   );
@@ -60,8 +65,8 @@ export function ElasticitiesOpen({ finding }: OpenProps<"elasticities">) {
         <CopyTable table={several ? groupsTable(finding, which) : goodsTable(finding, group)} />
       </OpenHead>
       <VerdictStrip label={LABEL} verdicts={stripOf(verdictsOf(finding.checks, finding.tests, { detail: true }))} />
-      <div className="flex flex-wrap items-baseline justify-between gap-x-8 gap-y-1">
-        <ByGoodSwitch which={which} onChange={setWhich} />
+      <div className="flex flex-wrap items-baseline gap-x-8 gap-y-1 min-[600px]:*:last:ml-auto">
+        {several && <ByGoodSwitch which={which} onChange={setWhich} />}
         <BelowSwitch below={below} onChange={setBelow} />
       </div>
       {several && (
