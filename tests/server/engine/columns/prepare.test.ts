@@ -143,9 +143,9 @@ describe("shares, prices and totals", () => {
     expect(prepare({ cluster: "month" }).clusters?.labels).toEqual(["1", "2"]);
   });
 
-  test("dates written year first are time by their rank, months and quarters by the calendar", () => {
+  test("dates written year first are time by the calendar where all are written alike, by their rank elsewhere", () => {
     const timeOf = (extra: string[]) => [...(prepare({ time: "extra" }, { extra }).time ?? [])];
-    expect(timeOf(["2030-01-05", "2029-12-31", "2029-11-02", "2029-12-31"])).toEqual([3, 2, 1, 2]);
+    expect(timeOf(["2030-01-05", "2029-12-31", "2029-11-02", "2029-12-31"])).toEqual([21919, 21914, 21855, 21914]);
     expect(timeOf(["2030-01", "2029-12", "2029-10", "2029-12"])).toEqual([24361, 24360, 24358, 24360]);
     expect(timeOf(["2030-Q1", "2029-Q4", "2029-Q2", "2029-Q4"])).toEqual([8121, 8120, 8118, 8120]);
     expect(timeOf(["2030-01", "2029-Q4", "2029-12-31", "2029"])).toEqual([4, 3, 2, 1]);
