@@ -71,7 +71,9 @@ export interface ReductionPlan {
 
 export function planReduction(source: MomentSource, control: RunControl): ReductionPlan {
   const responses: TermPair[] = source.responses.map((_, i) => [0, source.columns.length + 1 + i]);
-  return { ...whiteningOf(source, control), whitened: [...closure(source), ...responses] };
+  const combined = new Set(source.combinations?.map(({ term }) => term));
+  const terms = source.terms.filter((_, term) => !combined.has(term));
+  return { ...whiteningOf(source, control), whitened: [...closure({ ...source, terms }), ...responses] };
 }
 
 /** The moments whose factor in the whitened columns of a plan is given (r × columns of the plan). */
@@ -95,10 +97,9 @@ export function momentsOfFactor(
 }
 
 /** Every whitened term that a term of the list is made of; the constant first, products of three after those of two. */
-export function closure({ terms, groups, combinations = [] }: Pick<MomentSource, "terms" | "groups" | "combinations">) {
+export function closure({ terms, groups }: Pick<MomentSource, "terms" | "groups">): TermPair[] {
   const found = new Map<string, TermPair>();
-  for (const [at, term] of terms.entries()) {
-    if (combinations.some((combination) => combination.term === at)) continue;
+  for (const term of terms) {
     for (const product of productsOf(term, (place) => placesBelow(place, groups))) {
       found.set(product.join(), product);
     }

@@ -74,7 +74,7 @@ const hasQuadraticTerms = (system: DemandSystem) => system.blocks.some(({ name }
  * Maximum likelihood of the form that the system contains and that is estimated first (the almost ideal system in
  * the quadratic one), under what the specification imposes.
  */
-export function fitWithoutLocal(
+function fitWithoutLocal(
   estimation: Estimation,
   system: DemandSystem,
   size: SystemSize,

@@ -1,4 +1,6 @@
+import { Matrix, pseudoInverse } from "ml-matrix";
 import { describe, expect, it } from "vitest";
+import { runSystem } from "../../../../server/engine/cells/system.ts";
 import { accumulateSums, momentMatrix } from "../../../../server/engine/estimation/accumulate-sums.ts";
 import { accumulateMoments, estimateSystem, momentsRequest } from "../../../../server/engine/estimation/index.ts";
 import { locatable, sourceAt } from "../../../../server/engine/estimation/local-moments.ts";
@@ -11,7 +13,7 @@ import { seededRandom } from "../../../../shared/numerics/random.ts";
 import type { RestrictionName } from "../../../../shared/systems/names.ts";
 import { quaids } from "../../../../shared/systems/quaids.ts";
 import { thetaOf } from "../../../laws/random-systems.ts";
-import { estimated, systemOver } from "../../../support/estimating.ts";
+import { estimated, largestDifference, systemOver } from "../../../support/estimating.ts";
 import { simulateShares } from "../../../support/simulated-shares.ts";
 
 const BOTH: RestrictionName[] = ["homogeneity", "symmetry"];
@@ -132,6 +134,54 @@ describe("while it iterates", () => {
       const control: RunControl = { ...QUIET, cancelled: () => left-- <= 0 };
       expect(() => estimateSystem(specification, data, moments(), control)).toThrow(Cancelled);
     }
+  });
+});
+
+it("says that a fixed α₀ makes units matter, where prices are not normalised", () => {
+  const at = (normalise: "mean" | "none") =>
+    runSystem(specification, { ...data, finding: { ...data.finding, normalise } }).unitsMatterBy;
+  expect(at("mean")).toBeUndefined();
+  expect(at("none")).toBe("a fixed α₀");
+});
+
+describe("robust standard errors", () => {
+  it("are the sandwich of scores formed row by row from the evaluator's own derivatives", () => {
+    const { fitted, residualCovariance } = estimated(data, {
+      form: "quaids",
+      impose: BOTH,
+      "standard errors": "heteroskedastic",
+    });
+    const conventional = estimated(data, { form: "quaids", impose: BOTH });
+    const free = quaids.free(size, BOTH);
+    const inverse = pseudoInverse(new Matrix(residualCovariance));
+    const information = Matrix.zeros(free.places.length, free.places.length);
+    const meat = information.clone();
+    for (let t = 0; t < data.rows; t++) {
+      const row = (columns: readonly Float64Array[]) => columns.map((column) => column[t]);
+      const prices = row(data.logPrices).map(Math.exp);
+      const point = { prices, total: Math.exp(data.logTotal[t]), demographics: row([...data.numeric.values()]) };
+      const slopes = new Matrix(quaids.slopeDerivatives(fitted.theta, size, point).shares).mmul(
+        new Matrix(free.matrix),
+      );
+      const { shares } = quaids.slopes(fitted.theta, size, point);
+      const error = Matrix.columnVector(data.shares.map((share, i) => share[t] - shares[i]));
+      const weighted = slopes.transpose().mmul(inverse).mul(data.weights![t]);
+      const score = weighted.mmul(error);
+      meat.add(score.mmul(score.transpose()));
+      information.add(weighted.mmul(slopes));
+    }
+    const half = new Matrix(free.matrix).mmul(pseudoInverse(information));
+    const expected = half
+      .mmul(meat)
+      .mmul(half.transpose())
+      .mul(data.rows / (data.rows - 1));
+    const plain = new Matrix(free.matrix).mmul(pseudoInverse(information)).mmul(new Matrix(free.matrix).transpose());
+    expect(largestDifference(conventional.fitted.covariance.flat(), plain.to1DArray())).toBeLessThan(1e-9);
+    expect(largestDifference(fitted.covariance.flat(), expected.to1DArray())).toBeLessThan(1e-9);
+    const scale = Math.max(...expected.to1DArray());
+    fitted.covariance.flat().forEach((value, k) => {
+      expect(Math.abs(value - expected.to1DArray()[k])).toBeLessThan(1e-7 * scale);
+    });
   });
 });
 
