@@ -7,7 +7,7 @@ import { BLOCK_ROWS, termBlock } from "../estimation/term-block.ts";
 import { planTiles, type TilePlan } from "../estimation/tile-plan.ts";
 import { Cancelled, type RunControl } from "../run.ts";
 import type { ClusteredRows } from "./clustered-rows.ts";
-import type { ScoreStructure } from "./score-structure.ts";
+import type { Combination, ScoreStructure } from "./score-structure.ts";
 
 /**
  * The second moments of every cluster's rows: all that scores by cluster, and draws of clusters, need of the rows.
@@ -113,7 +113,7 @@ function liftedResiduals(
   return lifted;
 }
 
-function contracted({ mixes, sums, scores }: ScoreStructure, products: Columns, map: Columns): Float64Array {
+function contracted({ weighting, mixes, sums, scores }: ScoreStructure, products: Columns, map: Columns): Float64Array {
   const terms = zeros(map.columns, products.columns);
   for (let i = 0; i < products.columns; i++) {
     const from = columnOf(products, i);
@@ -126,15 +126,21 @@ function contracted({ mixes, sums, scores }: ScoreStructure, products: Columns, 
     }
   }
   const score = new Float64Array(scores.length);
-  const mixed = mixes.map((mix) => {
+  const combined = (columns: readonly Float64Array[], parts: Combination) => {
     const column = new Float64Array(map.columns);
-    mix.forEach((factor, i) => {
-      if (factor === 0) return;
-      const own = columnOf(terms, i);
-      for (let z = 0; z < column.length; z++) column[z] += factor * own[z];
-    });
+    for (const [i, factor] of parts) {
+      for (let z = 0; z < column.length; z++) column[z] += factor * columns[i][z];
+    }
     return column;
-  });
+  };
+  const residuals = weighting.map((_, i) => columnOf(terms, i));
+  const weighted = weighting.map((row) =>
+    combined(
+      residuals,
+      row.map((factor, i) => [i, factor] as const),
+    ),
+  );
+  const mixed = mixes.map((mix) => combined(weighted, mix));
   scores.forEach((pairs, f) => {
     for (const [mix, sum] of pairs) for (const [z, factor] of sums[sum]) score[f] += factor * mixed[mix][z];
   });

@@ -23,18 +23,24 @@ export function rowScores(source: MomentSource, structure: ScoreStructure): RowS
   const residuals = equations.map((_, place) => columnAt(formed.length + place));
   const mixed = mixes.map(() => new Float64Array(BLOCK_ROWS));
   const summed = sums.map(() => new Float64Array(BLOCK_ROWS));
-  const mixOf = mixes.map((mix): Combination => Array.from(mix, (factor, i) => [i, factor] as const));
-  const explained = coefficients.map((row): Combination => row.map((factor, term) => [term, -factor] as const));
+  const weighted = equations.map(() => new Float64Array(BLOCK_ROWS));
+  const weightingOf = structure.weighting.map((row): Combination => row.map((factor, i) => [i, factor] as const));
+  const lessExplained = coefficients.map(
+    (row): Combination => row.flatMap((factor, term) => (factor === 0 ? [] : [[term, -factor] as const])),
+  );
   const scores = new Float64Array(structure.scores.length * BLOCK_ROWS);
   return {
     scores,
     fill(from, rows) {
       fill(from, rows);
       residuals.forEach((column, i) => {
-        addCombination(column, terms, explained[i], rows);
+        addCombination(column, terms, lessExplained[i], rows);
+      });
+      weighted.forEach((column, i) => {
+        addCombination(column.fill(0), residuals, weightingOf[i], rows);
       });
       mixed.forEach((column, at) => {
-        addCombination(column.fill(0), residuals, mixOf[at], rows);
+        addCombination(column.fill(0), weighted, mixes[at], rows);
       });
       summed.forEach((column, at) => {
         addCombination(column.fill(0), terms, sums[at], rows);
@@ -49,8 +55,18 @@ export function rowScores(source: MomentSource, structure: ScoreStructure): RowS
 }
 
 function addCombination(target: Float64Array, columns: readonly Float64Array[], parts: Combination, rows: number) {
-  for (const [place, factor] of parts) {
-    if (factor === 0) continue;
+  // Four columns at a time: the target is read and written a quarter as often.
+  let at = 0;
+  for (; at + 3 < parts.length; at += 4) {
+    const [p0, f0] = parts[at];
+    const [p1, f1] = parts[at + 1];
+    const [p2, f2] = parts[at + 2];
+    const [p3, f3] = parts[at + 3];
+    const [c0, c1, c2, c3] = [columns[p0], columns[p1], columns[p2], columns[p3]];
+    for (let t = 0; t < rows; t++) target[t] += f0 * c0[t] + f1 * c1[t] + f2 * c2[t] + f3 * c3[t];
+  }
+  for (; at < parts.length; at++) {
+    const [place, factor] = parts[at];
     const column = columns[place];
     for (let t = 0; t < rows; t++) target[t] += factor * column[t];
   }

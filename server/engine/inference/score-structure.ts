@@ -13,8 +13,10 @@ export interface ScoreStructure {
   readonly equations: readonly number[];
   /** C of those equations, g × |Z|. */
   readonly coefficients: readonly (readonly number[])[];
-  /** Combinations of the g residuals. */
-  readonly mixes: readonly Float64Array[];
+  /** −Ω, g × g. */
+  readonly weighting: readonly (readonly number[])[];
+  /** Combinations of the g weighted residuals −Ωe. */
+  readonly mixes: readonly Combination[];
   /** Combinations of the terms. */
   readonly sums: readonly Combination[];
   /** For each free coefficient the pairs (mix, sum) whose products add up to its score. */
@@ -30,7 +32,7 @@ export function scoreStructure(
 ): ScoreStructure {
   const placeOf = new Map(equations.map((equation, place) => [equation, place]));
   const coefficients = form.coefficients(free);
-  const mixes = new Numbered<Float64Array>();
+  const mixes = new Numbered<Combination>();
   const sums = new Numbered<Combination>();
   const scores = form.derivatives(free).map((entries) => {
     const byTerm = new Map<number, Float64Array>();
@@ -45,7 +47,8 @@ export function scoreStructure(
   return {
     equations,
     coefficients: equations.map((equation) => coefficients[equation]),
-    mixes: mixes.list.map((mix) => Float64Array.from(omega, (row) => -row.reduce((sum, w, i) => sum + w * mix[i], 0))),
+    weighting: omega.map((row) => row.map((value) => -value)),
+    mixes: mixes.list,
     sums: sums.list,
     scores,
   };
@@ -54,14 +57,16 @@ export function scoreStructure(
 /** Terms met with the same direction over the equations go together. */
 function pairsOf(
   byTerm: ReadonlyMap<number, Float64Array>,
-  mixes: Numbered<Float64Array>,
+  mixes: Numbered<Combination>,
   sums: Numbered<Combination>,
 ): [number, number][] {
   const byMix = new Map<number, [number, number][]>();
   for (const [term, values] of byTerm) {
     const head = values.find((value) => value !== 0);
     if (head === undefined) continue;
-    const mix = mixes.place(values.map((value) => value / head));
+    const mix = mixes.place(
+      Array.from(values, (value, i) => [i, value / head] as const).filter(([, part]) => part !== 0),
+    );
     if (!byMix.has(mix)) byMix.set(mix, []);
     byMix.get(mix)!.push([term, head]);
   }
@@ -69,7 +74,7 @@ function pairsOf(
 }
 
 /** Different values in the order met, each once. */
-class Numbered<T extends { join(): string } | Combination> {
+class Numbered<T extends Combination> {
   readonly list: T[] = [];
   private readonly places = new Map<string, number>();
 
