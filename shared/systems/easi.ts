@@ -27,7 +27,7 @@ import { requirePoint, slopesByEvaluator } from "./evaluation.ts";
  * Real expenditure is measured at unit prices, so with Engel curves of a degree above one the estimates depend on
  * which prices are one: the means of the sample when data are normalised.
  *
- * Lewbel & Pendakur (2009, American Economic Review 99, 827–863), equations (6) to (10).
+ * Lewbel & Pendakur (2009, American Economic Review 99, 827–863).
  */
 export const easi: DemandSystem = {
   name: "easi",

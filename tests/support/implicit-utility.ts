@@ -3,7 +3,7 @@ import { easiLayout } from "../../shared/systems/easi-layout.ts";
 
 /**
  * Implicit utility of EASI from its definition, y = (ln x − p'w + ½ p'A(z)p)/(1 − ½ p'Bp) with p in logs and any
- * shares w (Lewbel & Pendakur 2009, equation 8), read off the layout coefficient by coefficient.
+ * shares w (Lewbel & Pendakur 2009), read off the layout coefficient by coefficient.
  */
 export function implicitUtility(theta: readonly number[], size: SystemSize, point: Point, shares: readonly number[]) {
   const logs = point.prices.map(Math.log);

@@ -69,7 +69,7 @@ export function equationsAt(problem: ExactProblem, form: Estimation["form"], the
 
 /**
  * The exact form by least squares with instruments, y at the coefficients of the last round until they settle
- * (Lewbel & Pendakur 2009, section II.B, who call it iterated linear three-stage least squares). The words of
+ * (after Lewbel & Pendakur 2009, whose iterated linear three-stage least squares it is). The words of
  * `estimator` mean
  *
  *     least squares                  two-stage least squares, all equations weighing alike

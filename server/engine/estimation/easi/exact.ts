@@ -11,6 +11,10 @@ import { exactInference } from "./exact-inference.ts";
 import { ExactLikelihood } from "./exact-likelihood.ts";
 import { solveExact } from "./solve-exact.ts";
 
+const RESTRICTION_TESTS = ["homogeneity", "symmetry given homogeneity"] as const;
+const UNTESTED =
+  "Likelihood ratios would need the exact form's maximum under every restriction: a tests cell has Wald's test.";
+
 /** What the exact form has of a system finding that the estimators of linear equations make otherwise. */
 export type ExactEstimate = Pick<
   SystemFinding,
@@ -78,5 +82,6 @@ export function estimateExactEasi(
     ...(durbin && { durbinWatson: durbin }),
     residualCovariance: covarianceOf(solution.residuals, data.rows),
     tests: [],
+    untested: RESTRICTION_TESTS.map((restriction) => ({ restriction, reason: UNTESTED })),
   };
 }
