@@ -3,12 +3,19 @@ import type { DemandSystem, EasiSize, SystemSize } from "./demand-system.ts";
 import { easi } from "./easi.ts";
 import { laAids } from "./la-aids.ts";
 import { les } from "./les.ts";
+import type { PriceIndexName, RestrictionName, SystemName } from "./names.ts";
 import { quaids } from "./quaids.ts";
 import { rotterdam } from "./rotterdam.ts";
-import type { PriceIndexName, RestrictionName, SystemName } from "./names.ts";
 
 /** Every demand system by its name; a record over the names, so none can be forgotten. */
-export const SYSTEMS: Readonly<Record<SystemName, DemandSystem>> = { "la-aids": laAids, aids, quaids, les, easi, rotterdam };
+export const SYSTEMS: Readonly<Record<SystemName, DemandSystem>> = {
+  "la-aids": laAids,
+  aids,
+  quaids,
+  les,
+  easi,
+  rotterdam,
+};
 
 /** What a fitted system says of itself: the part of a finding that evaluation needs. */
 export interface FittedCoefficients {

@@ -1,20 +1,34 @@
 import type { Problem } from "../../../shared/schemas/problem.ts";
 import type { SystemSpecification } from "../../../shared/schemas/system.ts";
 import { nearestWord } from "../../../shared/study/nearest-word.ts";
-import type { BaseColumn, LocalColumns, MomentForm, MomentTerm, SystemSize } from "../../../shared/systems/demand-system.ts";
+import type {
+  BaseColumn,
+  LocalColumns,
+  MomentForm,
+  MomentTerm,
+  SystemSize,
+} from "../../../shared/systems/demand-system.ts";
 import type { PriceIndexName } from "../../../shared/systems/names.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
-import { mapColumn } from "../columns/shared-memory.ts";
 import { demographicColumn } from "../columns/seasonal-terms.ts";
+import { mapColumn } from "../columns/shared-memory.ts";
 import { Refusal } from "../refusal.ts";
-import { type MomentSource, ordered, type TermPair, termOf } from "./moment-source.ts";
+import { deflatedLogTotal } from "./deflated-total.ts";
 import { realExpenditureByMeans } from "./easi/real-expenditure.ts";
 import { easiSizeOf } from "./easi/specification.ts";
-import { deflatedLogTotal } from "./deflated-total.ts";
 import { type FirstSteps, firstStepsOf } from "./first-steps/asked.ts";
 import { withFirstStepColumns } from "./first-steps/extend-source.ts";
+import { type MomentSource, ordered, type TermPair, termOf } from "./moment-source.ts";
 import { DEFAULT_INDEX, priceIndexFor } from "./price-index.ts";
-import { arranged, arrangedWeights, arrangementOf, logVolume, responseLabel, responsesOf, type SampleRequest } from "./sample.ts";
+import {
+  arranged,
+  arrangedWeights,
+  arrangementOf,
+  logVolume,
+  responseLabel,
+  responsesOf,
+  type SampleRequest,
+} from "./sample.ts";
 import { needsPeriods, sampleOf, specifiedSystem } from "./specified-system.ts";
 import { requirePeriods } from "./time-order.ts";
 
@@ -61,7 +75,9 @@ export function momentsRequest(specification: SystemSpecification, data: Prepare
     const sentence = `The ${system.longName} takes no demographics, and ${demographics.length} are named.`;
     throw new Refusal([{ sentence, key: ["demographics"] }]);
   }
-  const problems = demographics.filter((name) => !demographicColumn(data, name)).map((name) => noDemographic(name, data));
+  const problems = demographics
+    .filter((name) => !demographicColumn(data, name))
+    .map((name) => noDemographic(name, data));
   if (problems.length > 0) throw new Refusal(problems);
   const form = system.moments.local?.from.moments ?? system.moments;
   const terms = form.terms(sizeOf(specification, data));
@@ -71,7 +87,14 @@ export function momentsRequest(specification: SystemSpecification, data: Prepare
   const sample = sampleOf(specification);
   const firstSteps = firstStepsOf(specification);
   const key = JSON.stringify({ terms, demographics, index, sample, firstSteps });
-  return { key, terms, demographics, ...(index && { index }), ...(sample && { sample }), ...(firstSteps && { firstSteps }) };
+  return {
+    key,
+    terms,
+    demographics,
+    ...(index && { index }),
+    ...(sample && { sample }),
+    ...(firstSteps && { firstSteps }),
+  };
 }
 
 function noDemographic(name: string, data: PreparedData): Problem {
