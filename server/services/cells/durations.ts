@@ -1,6 +1,7 @@
 import type { CellSpecification } from "../../../shared/schemas/cell.ts";
 import type { SystemSpecification } from "../../../shared/schemas/system.ts";
 import { SYSTEMS } from "../../../shared/systems/index.ts";
+import { easiSizeOf, isExactEasi } from "../../engine/estimation/easi/specification.ts";
 
 /** How much there is to do: products of terms over rows, and of coefficients over iterations. */
 export interface Work {
@@ -14,6 +15,10 @@ const FIRST_SPEED = 600_000;
 const SHORTEST_TIMED_MS = 200;
 /** What checking a row costs for each pair of goods, in products of terms. */
 const CHECK_COST = 50;
+/** Readings of all rows by a form whose terms move with its coefficients, its tests included. */
+const MOVING_PASSES = 30;
+/** The fit, and those its tests compare it with: a replicate is one of them. */
+const FITS_IN_ALL = 3;
 /** Passes over coefficients and terms that the fit, its covariance and its tests come to together. */
 const PASSES = 40;
 const SHORTEST_MS = 100;
@@ -36,11 +41,32 @@ export class Durations {
   }
 }
 
-/** Sums of products of terms over the rows, then iterations over the coefficients, for the system and its tests. */
-function amountOf({ form, demographics }: SystemSpecification, { rows, goods }: Work): number {
-  const system = SYSTEMS[form];
-  const size = { goods, demographics: demographics.length, alpha0: 0 };
+/**
+ * Sums of products of terms over the rows, then iterations over the coefficients, for the system and its tests; the
+ * rows again in every iteration where the terms move with the coefficients, and all of it in every replicate.
+ */
+function amountOf(specification: SystemSpecification, { rows, goods }: Work): number {
+  const system = SYSTEMS[specification.form];
+  const size = {
+    goods,
+    demographics: specification.demographics.length + timeTerms(specification),
+    alpha0: 0,
+    easi: easiSizeOf(specification),
+  };
   const terms = system.moments.terms(size).length + goods;
-  const coefficients = system.layout(size).length;
-  return rows * (terms ** 2 / 2 + CHECK_COST * goods ** 2) + PASSES * coefficients ** 2 * terms;
+  const onePass = (rows * terms ** 2) / 2;
+  const solving = PASSES * system.layout(size).length ** 2 * terms;
+  const moves = system.moments.local !== undefined || isExactEasi(specification);
+  const fit = (moves ? MOVING_PASSES : 1) * onePass + solving;
+  return rows * CHECK_COST * goods ** 2 + fit + replicates(specification) * (fit / FITS_IN_ALL);
+}
+
+/** Shifts of the intercepts that a trend and a season come to. */
+function timeTerms({ trend, season }: SystemSpecification): number {
+  const round = season === undefined ? 0 : Math.min(2 * (season.harmonics ?? season.period), season.period - 1);
+  return round + (trend ? 1 : 0);
+}
+
+function replicates({ "standard errors": errors }: SystemSpecification): number {
+  return typeof errors === "object" && "bootstrap" in errors ? errors.replicates : 0;
 }
