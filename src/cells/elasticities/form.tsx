@@ -1,8 +1,10 @@
 import { TOTAL_EXPENDITURE } from "../../../shared/schemas/elasticities.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
+import { CellField } from "../form/cell-field.tsx";
 import { RadioGroup } from "../form/choices.tsx";
-import { asChoices, ChoiceField, TextField, Unreadable } from "../form/fields.tsx";
-import { asNumber, dataBelow, PointField } from "../form/point-fields.tsx";
+import { asChoices, ChoiceField, Unreadable } from "../form/fields.tsx";
+import { NumberField } from "../form/number-field.tsx";
+import { dataBelow, PointField } from "../form/point-fields.tsx";
 import { readWritten, type Written } from "../form/written.ts";
 import type { FormProps } from "../types.ts";
 import { groupColumns, isOf, newQuestion, questionOf } from "./question.ts";
@@ -12,19 +14,12 @@ export function ElasticitiesForm(props: FormProps) {
   const { context, readOnly } = props;
   const written = readWritten("elasticities", props);
   if (!written.readable) return <Unreadable />;
-  const systems = context.cells.filter((cell) => cell.kind === "system").map((cell) => cell.name);
   const question = questionOf(written);
   const columns = groupColumns(context, dataBelow(context, written.text("system")));
   const own = { written, readOnly };
   return (
     <div>
-      <ChoiceField
-        label="System"
-        value={written.text("system")}
-        choices={asChoices(systems)}
-        readOnly={readOnly}
-        onChange={(value) => written.write([["system"], value])}
-      />
+      <CellField kind="system" {...own} context={context} />
       <RadioGroup
         legend="Of"
         value={question}
@@ -47,13 +42,7 @@ export function ElasticitiesForm(props: FormProps) {
         ]}
       />
       <IndexField {...own} context={context} />
-      <TextField
-        label="Level of confidence"
-        value={written.text("level") || "0.95"}
-        numeric
-        readOnly={readOnly}
-        onCommit={(value) => written.write([["level"], value === "" ? undefined : asNumber(value)])}
-      />
+      <NumberField label="Level of confidence" path={["level"]} {...own} otherwise="0.95" />
     </div>
   );
 }
@@ -73,13 +62,7 @@ function GroupFields({ written, readOnly, columns }: OwnProps & { columns: reado
         readOnly={readOnly}
         onChange={(value) => written.write([["groups", "of"], value])}
       />
-      <TextField
-        label="Quantiles"
-        value={written.text("groups", "quantiles")}
-        numeric
-        readOnly={readOnly}
-        onCommit={(value) => written.write([["groups", "quantiles"], value === "" ? undefined : asNumber(value)])}
-      />
+      <NumberField label="Quantiles" path={["groups", "quantiles"]} written={written} readOnly={readOnly} />
       <p className="text-[0.78125rem]/[1.0625rem] text-ink2">
         Five for fifths of equal weight; empty for a group a value.
       </p>

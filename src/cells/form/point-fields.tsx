@@ -2,6 +2,7 @@ import { parseCell } from "../../../shared/study/parse-cell.ts";
 import type { FormProps } from "../types.ts";
 import { RadioGroup } from "./choices.tsx";
 import { TextField } from "./fields.tsx";
+import { NumberField } from "./number-field.tsx";
 import { newPoint, type PointChoice, pointChoice } from "./point-choice.ts";
 import type { Written } from "./written.ts";
 
@@ -13,12 +14,6 @@ export function dataBelow({ cells }: FormProps["context"], systemName: string): 
   };
   return source("data", source("system", systemName).data);
 }
-
-/** A number where one was typed; anything else is written as it is, for the text to mark. */
-export const asNumber = (text: string): number | string => {
-  const number = Number(text);
-  return text !== "" && Number.isFinite(number) ? number : text;
-};
 
 interface PointProps {
   readonly written: Written;
@@ -37,36 +32,20 @@ function PointFields({ choice, written, readOnly }: PointProps & { choice: Point
       />
     );
   }
-  if (choice === "row") {
-    return (
-      <TextField
-        label="Row"
-        value={written.text("at", "row")}
-        numeric
-        readOnly={readOnly}
-        onCommit={(value) => written.write([["at", "row"], asNumber(value)])}
-      />
-    );
-  }
+  if (choice === "row") return <NumberField label="Row" path={["at", "row"]} {...{ written, readOnly }} required />;
   return (
     <>
       {Object.keys(written.map("at", "prices")).map((good) => (
-        <TextField
+        <NumberField
           key={good}
           label={`Price, ${good}`}
-          value={written.text("at", "prices", good)}
-          numeric
+          path={["at", "prices", good]}
+          written={written}
           readOnly={readOnly}
-          onCommit={(value) => written.write([["at", "prices", good], asNumber(value)])}
+          required
         />
       ))}
-      <TextField
-        label="Expenditure"
-        value={written.text("at", "x")}
-        numeric
-        readOnly={readOnly}
-        onCommit={(value) => written.write([["at", "x"], asNumber(value)])}
-      />
+      <NumberField label="Expenditure" path={["at", "x"]} written={written} readOnly={readOnly} required />
       <p className="text-[0.78125rem]/[1.0625rem] text-ink2">In the units uploaded.</p>
     </>
   );

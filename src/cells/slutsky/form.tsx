@@ -1,5 +1,6 @@
+import { CellField } from "../form/cell-field.tsx";
 import { RadioGroup } from "../form/choices.tsx";
-import { asChoices, ChoiceField, Unreadable } from "../form/fields.tsx";
+import { Unreadable } from "../form/fields.tsx";
 import { PointField } from "../form/point-fields.tsx";
 import { readWritten } from "../form/written.ts";
 import type { FormProps } from "../types.ts";
@@ -9,16 +10,9 @@ export function SlutskyForm(props: FormProps) {
   const { context, readOnly } = props;
   const written = readWritten("slutsky", props);
   if (!written.readable) return <Unreadable />;
-  const systems = context.cells.filter((cell) => cell.kind === "system").map((cell) => cell.name);
   return (
     <div>
-      <ChoiceField
-        label="System"
-        value={written.text("system")}
-        choices={asChoices(systems)}
-        readOnly={readOnly}
-        onChange={(value) => written.write([["system"], value])}
-      />
+      <CellField kind="system" written={written} readOnly={readOnly} context={context} />
       <PointField written={written} readOnly={readOnly} context={context} otherwise="base point" />
       <RadioGroup
         legend="Entries"

@@ -1,6 +1,5 @@
 import { RadioGroup } from "../form/choices.tsx";
-import { TextField } from "../form/fields.tsx";
-import { asNumber } from "../form/point-fields.tsx";
+import { NumberField } from "../form/number-field.tsx";
 import { type PartProps, Section } from "./section.tsx";
 
 /** Where negativity is imposed, and with which rank. */
@@ -27,24 +26,24 @@ export function CurvatureFields({ written, readOnly }: PartProps) {
             value: "row",
             label: "a row",
             below: (
-              <TextField
+              <NumberField
                 label="Row"
-                value={written.text("curvature", "at", "row")}
-                numeric
+                path={["curvature", "at", "row"]}
+                written={written}
                 readOnly={readOnly}
-                onCommit={(value) => written.write([["curvature", "at", "row"], asNumber(value)])}
+                required
               />
             ),
           },
         ]}
       />
       {chosen !== "nowhere" && (
-        <TextField
+        <NumberField
           label="Rank there"
-          value={written.text("curvature", "rank") || (readOnly ? "the highest" : "")}
-          numeric
+          path={["curvature", "rank"]}
+          written={written}
           readOnly={readOnly}
-          onCommit={(value) => written.write([["curvature", "rank"], value === "" ? undefined : asNumber(value)])}
+          otherwise={readOnly ? "the highest" : ""}
         />
       )}
     </Section>

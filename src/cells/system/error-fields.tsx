@@ -1,7 +1,7 @@
 import { BOOTSTRAP_NAMES } from "../../../shared/schemas/standard-errors.ts";
 import { RadioGroup } from "../form/choices.tsx";
-import { asChoices, ChoiceField, TextField } from "../form/fields.tsx";
-import { asNumber } from "../form/point-fields.tsx";
+import { asChoices, ChoiceField } from "../form/fields.tsx";
+import { NumberField } from "../form/number-field.tsx";
 import type { PartProps } from "./section.tsx";
 
 const KEY = "standard errors";
@@ -56,12 +56,12 @@ export function ErrorFields({ written, readOnly, columns }: PartProps & { column
 function BootstrapFields({ written, readOnly, columns }: PartProps & { columns: readonly string[] }) {
   const of = written.text(KEY, "bootstrap");
   const number = (key: "replicates" | "seed" | "block", label: string, otherwise: string) => (
-    <TextField
+    <NumberField
       label={label}
-      value={written.text(KEY, key) || (readOnly ? otherwise : "")}
-      numeric
+      path={[KEY, key]}
+      written={written}
       readOnly={readOnly}
-      onCommit={(value) => written.write([[KEY, key], value === "" ? undefined : asNumber(value)])}
+      otherwise={readOnly ? otherwise : ""}
     />
   );
   const choose = (value: string) =>

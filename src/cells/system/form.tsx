@@ -3,6 +3,7 @@ import { parseCell } from "../../../shared/study/parse-cell.ts";
 import { listWords } from "../../../shared/study/words.ts";
 import { SYSTEMS } from "../../../shared/systems/index.ts";
 import { RESTRICTION_NAMES, SYSTEM_NAMES, type SystemName } from "../../../shared/systems/names.ts";
+import { CellField } from "../form/cell-field.tsx";
 import { CheckGroup } from "../form/choices.tsx";
 import { asChoices, ChoiceField, FormRow, Unreadable } from "../form/fields.tsx";
 import { readWritten, type Written } from "../form/written.ts";
@@ -51,7 +52,6 @@ export function SystemForm(props: FormProps) {
   if (!written.readable) return <Unreadable />;
   const form = written.text("form");
   const { goods, columns, all } = offered(context, written.text("data"));
-  const data = context.cells.filter((cell) => cell.kind === "data").map((cell) => cell.name);
   const takesDemographics = !isSystem(form) || SYSTEMS[form].takesDemographics;
   const part = { written, readOnly };
   const says = (key: string) => written.value(key) !== undefined;
@@ -62,13 +62,7 @@ export function SystemForm(props: FormProps) {
   };
   return (
     <div>
-      <ChoiceField
-        label="Data"
-        value={written.text("data")}
-        choices={asChoices(data)}
-        readOnly={readOnly}
-        onChange={(value) => written.write([["data"], value])}
-      />
+      <CellField kind="data" {...part} context={context} />
       <ChoiceField label="Form" value={form} choices={FORMS} readOnly={readOnly} onChange={chooseForm} />
       <OwnFields form={form} {...part} />
       <Impose form={form} written={written} readOnly={readOnly} />

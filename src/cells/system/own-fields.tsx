@@ -1,7 +1,7 @@
 import { INTERACTION_NAMES, PRICE_INDEX_NAMES } from "../../../shared/systems/names.ts";
 import { CheckGroup, RadioGroup } from "../form/choices.tsx";
-import { asChoices, ChoiceField, TextField } from "../form/fields.tsx";
-import { asNumber } from "../form/point-fields.tsx";
+import { asChoices, ChoiceField } from "../form/fields.tsx";
+import { NumberField } from "../form/number-field.tsx";
 import type { PartProps } from "./section.tsx";
 
 /** Keys that belong to one form alone: a change of form takes them away. */
@@ -36,12 +36,12 @@ function IndexField({ written, readOnly }: PartProps) {
 
 function AlphaNought({ written, readOnly }: PartProps) {
   return (
-    <TextField
+    <NumberField
       label="α₀, held fixed"
-      value={written.text("alpha0") || (readOnly ? "0" : "")}
-      numeric
+      path={["alpha0"]}
+      written={written}
       readOnly={readOnly}
-      onCommit={(value) => written.write([["alpha0"], value === "" ? undefined : asNumber(value.replace("−", "-"))])}
+      otherwise={readOnly ? "0" : ""}
     />
   );
 }
@@ -64,12 +64,12 @@ function ErrorsField({ written, readOnly }: PartProps) {
 function EasiFields({ written, readOnly }: PartProps) {
   return (
     <>
-      <TextField
+      <NumberField
         label="Degree"
-        value={written.text("degree") || (readOnly ? "3" : "")}
-        numeric
+        path={["degree"]}
+        written={written}
         readOnly={readOnly}
-        onCommit={(value) => written.write([["degree"], value === "" ? undefined : asNumber(value)])}
+        otherwise={readOnly ? "3" : ""}
       />
       <CheckGroup
         legend="Interactions"

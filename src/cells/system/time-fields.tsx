@@ -1,6 +1,6 @@
 import { CheckGroup } from "../form/choices.tsx";
 import { TextField } from "../form/fields.tsx";
-import { asNumber } from "../form/point-fields.tsx";
+import { asNumber, NumberField } from "../form/number-field.tsx";
 import { type PartProps, Section } from "./section.tsx";
 
 const KEYS = ["differences", "season", "trend"] as const;
@@ -32,13 +32,7 @@ export function TimeFields({ form, written, readOnly }: PartProps & { form: stri
         }
       />
       {period !== "" && (
-        <TextField
-          label="Harmonics"
-          value={written.text("season", "harmonics")}
-          numeric
-          readOnly={readOnly}
-          onCommit={(value) => written.write([["season", "harmonics"], value === "" ? undefined : asNumber(value)])}
-        />
+        <NumberField label="Harmonics" path={["season", "harmonics"]} written={written} readOnly={readOnly} />
       )}
       {period !== "" && !readOnly && (
         <p className="text-[0.78125rem]/[1.0625rem] text-ink2">

@@ -1,6 +1,8 @@
 import { HYPOTHESIS_NAMES } from "../../../shared/schemas/tests.ts";
+import { CellField, namesOf } from "../form/cell-field.tsx";
 import { CheckGroup, RadioGroup } from "../form/choices.tsx";
-import { asChoices, ChoiceField, TextField, Unreadable } from "../form/fields.tsx";
+import { asChoices, Unreadable } from "../form/fields.tsx";
+import { NumberField } from "../form/number-field.tsx";
 import { readWritten } from "../form/written.ts";
 import type { FormProps } from "../types.ts";
 
@@ -9,21 +11,14 @@ export function TestsForm(props: FormProps) {
   const { context, readOnly } = props;
   const written = readWritten("tests", props);
   if (!written.readable) return <Unreadable />;
-  const named = (kind: "system" | "data") => context.cells.filter((cell) => cell.kind === kind).map(({ name }) => name);
   const reads = written.value("data") !== undefined && written.value("system") === undefined ? "data" : "system";
   const choose = (next: string) => {
     if (next === reads) return;
     const [from, to] = next === "data" ? (["system", "data"] as const) : (["data", "system"] as const);
-    written.write([[from], undefined], [["of"], undefined], [[to], named(to).at(-1) ?? ""]);
+    written.write([[from], undefined], [["of"], undefined], [[to], namesOf(context, to).at(-1) ?? ""]);
   };
-  const field = (kind: "system" | "data", label: string) => (
-    <ChoiceField
-      label={label}
-      value={written.text(kind)}
-      choices={asChoices(named(kind))}
-      readOnly={readOnly}
-      onChange={(value) => written.write([[kind], value])}
-    />
+  const field = (kind: "system" | "data") => (
+    <CellField kind={kind} written={written} readOnly={readOnly} context={context} />
   );
   return (
     <div>
@@ -33,8 +28,8 @@ export function TestsForm(props: FormProps) {
         readOnly={readOnly}
         onChange={choose}
         choices={[
-          { value: "system", label: "a system’s restrictions", below: field("system", "System") },
-          { value: "data", label: "choices alone, without a model", below: field("data", "Data") },
+          { value: "system", label: "a system’s restrictions", below: field("system") },
+          { value: "data", label: "choices alone, without a model", below: field("data") },
         ]}
       />
       {reads === "system" && (
@@ -49,21 +44,9 @@ export function TestsForm(props: FormProps) {
           {written.list("of").length === 0 && (
             <p className="type-small pb-1 text-ink2">All that the system admits, while none is chosen.</p>
           )}
-          <TextField
-            label="Level"
-            value={written.text("level") || "0.05"}
-            numeric
-            readOnly={readOnly}
-            onCommit={(value) => written.write([["level"], value === "" ? undefined : asNumber(value)])}
-          />
+          <NumberField label="Level" path={["level"]} written={written} readOnly={readOnly} otherwise="0.05" />
         </>
       )}
     </div>
   );
-}
-
-/** A number where one was typed; anything else is written as it is, for the text to mark. */
-function asNumber(text: string): number | string {
-  const number = Number(text);
-  return Number.isFinite(number) ? number : text;
 }
