@@ -10,34 +10,39 @@ export interface Work {
 }
 
 /** Until an estimation has been timed here: products a millisecond on an ordinary machine, on the slow side. */
-const FIRST_SPEED = 600_000;
+const FIRST_SPEED = 100_000;
 /** Shorter ones say more about a program still warming up than about its speed. */
 const SHORTEST_TIMED_MS = 200;
 /** What checking a row costs for each pair of goods, in products of terms. */
 const CHECK_COST = 50;
 /** Readings of all rows by a form whose terms move with its coefficients, its tests included. */
-const MOVING_PASSES = 30;
-/** The fit, and those its tests compare it with: a replicate is one of them. */
-const FITS_IN_ALL = 3;
+const MOVING_PASSES = 8;
+/** What a replicate takes of one reading of the rows, and of the passes over the coefficients: it starts near its end. */
+const REPLICATE_OF_ROWS = 0.1;
+const REPLICATE_OF_PASSES = 0.3;
 /** Passes over coefficients and terms that the fit, its covariance and its tests come to together. */
 const PASSES = 40;
 const SHORTEST_MS = 100;
-/** How much the latest estimation counts against those before it. */
-const NEWEST = 0.5;
+/** Time over which earlier estimations lose half their say: many short ones do not outweigh a long one. */
+const MEMORY_MS = 10_000;
+/** Of how long an estimation what is first assumed counts. */
+const FIRST_MS = 100;
 
 /** How long estimations take, from what there is to do and how fast the last ones went. */
 export class Durations {
-  #speed = FIRST_SPEED;
+  #amount = FIRST_SPEED * FIRST_MS;
+  #time = FIRST_MS;
 
   about(specification: SystemSpecification, work: Work): number {
-    return Math.max(SHORTEST_MS, Math.round(amountOf(specification, work) / this.#speed));
+    return Math.max(SHORTEST_MS, Math.round(amountOf(specification, work) * (this.#time / this.#amount)));
   }
 
   /** Remembers how long a system took. */
   learn(specification: CellSpecification, work: Work, tookMs: number): void {
     if (specification.kind !== "system" || tookMs < SHORTEST_TIMED_MS) return;
-    const speed = amountOf(specification, work) / tookMs;
-    this.#speed = this.#speed === FIRST_SPEED ? speed : NEWEST * speed + (1 - NEWEST) * this.#speed;
+    const kept = MEMORY_MS / (MEMORY_MS + tookMs);
+    this.#amount = kept * this.#amount + amountOf(specification, work);
+    this.#time = kept * this.#time + tookMs;
   }
 }
 
@@ -58,7 +63,8 @@ function amountOf(specification: SystemSpecification, { rows, goods }: Work): nu
   const solving = PASSES * system.layout(size).length ** 2 * terms;
   const moves = system.moments.local !== undefined || isExactEasi(specification);
   const fit = (moves ? MOVING_PASSES : 1) * onePass + solving;
-  return rows * CHECK_COST * goods ** 2 + fit + replicates(specification) * (fit / FITS_IN_ALL);
+  const replicate = REPLICATE_OF_ROWS * onePass + REPLICATE_OF_PASSES * solving;
+  return rows * CHECK_COST * goods ** 2 + fit + replicates(specification) * replicate;
 }
 
 /** Shifts of the intercepts that a trend and a season come to. */

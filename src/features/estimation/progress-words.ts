@@ -2,11 +2,18 @@ import type { Progress } from "../../../shared/schemas/status.ts";
 import { printCount, printFixed, printSize } from "../../../shared/tables/numbers.ts";
 import { elapsedClock } from "../../lib/dates.ts";
 
-/** How far an estimation is: "iteration 7, log-likelihood 42,061.3, gradient 0.02; 0:14 of about 0:20". */
+/** What is counted: iterations of the fit, or so many of a whole that is known, "estimating replicates, 77 of 500". */
+function counted({ step, iteration, fraction }: Progress): string {
+  if (iteration === undefined) return step;
+  if (step === "iterating" || !fraction) return `iteration ${printCount(iteration)}`;
+  return `${step}, ${printCount(iteration)} of ${printCount(Math.round(iteration / fraction))}`;
+}
+
+/** How far an estimation is: "iteration 7, log-likelihood 42,061.3, gradient 0.020; 0:14 of about 0:20". */
 export function progressInWords(progress: Progress): string {
-  const { step, iteration, logLikelihood, gradient, fraction, elapsedMs, aboutMs } = progress;
+  const { iteration, logLikelihood, gradient, fraction, elapsedMs, aboutMs } = progress;
   const parts = [
-    iteration === undefined ? step : `iteration ${printCount(iteration)}`,
+    counted(progress),
     logLikelihood !== undefined && `log-likelihood ${printFixed(logLikelihood, 1)}`,
     gradient !== undefined && `gradient ${printSize(gradient)}`,
     iteration === undefined && fraction !== undefined && `${Math.floor(fraction * 100)}\u2009%`,

@@ -28,4 +28,14 @@ describe("how long an estimation takes", () => {
     expect(drawn(1000)).toBeGreaterThan(1.8 * drawn(500));
     expect(drawn(500)).toBeGreaterThan(10 * about({}));
   });
+
+  it("learns from how long the last ones took, and not from how short ones warm up", () => {
+    const durations = new Durations();
+    const long = asked({ form: "quaids" });
+    for (let time = 0; time < 5; time++) durations.learn(long, WORK, 30_000);
+    expect(durations.about(long, WORK)).toBeGreaterThan(25_000);
+    expect(durations.about(long, WORK)).toBeLessThan(31_000);
+    for (let time = 0; time < 5; time++) durations.learn(asked({ form: "les" }), { rows: 30, goods: 3 }, 300);
+    expect(durations.about(long, WORK)).toBeLessThan(40_000);
+  });
 });
