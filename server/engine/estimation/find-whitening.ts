@@ -2,7 +2,7 @@ import type { RunControl } from "../run.ts";
 import { accumulateSums, momentMatrix } from "./accumulate-sums.ts";
 import { type Columns, multiply, zeros } from "./columns.ts";
 import type { MomentSource, TermPair } from "./moment-source.ts";
-import { planTiles } from "./tile-plan.ts";
+import { planTiles } from "./monomial-plan.ts";
 import { semidefiniteCholesky, solveUpper } from "./triangle.ts";
 import type { DependentColumn, Whitening } from "./whitening.ts";
 

@@ -3,8 +3,8 @@ import { accumulateSums, momentMatrix } from "./accumulate-sums.ts";
 import { type Columns, zeros } from "./columns.ts";
 import { triangularFactor } from "./householder.ts";
 import type { MomentSource, TermPair } from "./moment-source.ts";
+import { planTiles } from "./monomial-plan.ts";
 import { BLOCK_ROWS, termBlock } from "./term-block.ts";
-import { planTiles } from "./tile-plan.ts";
 import { semidefiniteCholesky } from "./triangle.ts";
 import type { Whitening } from "./whitening.ts";
 

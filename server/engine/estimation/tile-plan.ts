@@ -1,5 +1,3 @@
-import { ordered, type TermPair, termOf } from "./moment-source.ts";
-
 /** Tiles are squares of this many block columns. */
 export const TILE = 4;
 
@@ -16,170 +14,30 @@ export interface TilePlan {
   readonly placeOf: Int32Array;
 }
 
-/**
- * The moment of two terms is a monomial in the base columns, and many pairs of terms share one:
- * (ln p₁ ln p₂)(ln p₃ ln p₄) is also (ln p₁ ln p₃)(ln p₂ ln p₄). Each monomial is accumulated once,
- * which for the products of the exact AIDS is a bit more than half of the pairs.
- *
- * Responses are base columns of their own, multiplied with everything: give them as terms [0, place].
- */
-export function planTiles(terms: readonly TermPair[]): TilePlan {
-  const key = terms.join(" ");
-  const plan = plans.get(key) ?? newPlan(terms);
-  // The oldest goes: a study has few sets of terms, and an iteration asks for the same again and again.
-  if (!plans.has(key) && plans.size >= MOST_PLANS) plans.delete(plans.keys().next().value!);
-  plans.set(key, plan);
-  return plan;
-}
+/** Each column on the left times each on the right: four against four. */
+export type Tile = readonly [left: readonly number[], right: readonly number[]];
 
-const plans = new Map<string, TilePlan>();
-const MOST_PLANS = 12;
-
-function newPlan(terms: readonly TermPair[]): TilePlan {
-  const columns = terms.length;
-  const place = new Map(terms.map((term, at) => [term.join(), at]));
-  const chosen = new Map<string, readonly [row: number, column: number]>();
-  const wanted = new Map<number, Set<number>>();
-  for (let i = 0; i < columns; i++) {
-    for (let j = i; j < columns; j++) {
-      const monomial = monomialOf(terms[i], terms[j]);
-      const key = monomial.join();
-      if (chosen.has(key)) continue;
-      const [row, column] = splitOf(monomial, place) ?? [i, j];
-      chosen.set(key, [row, column]);
-      if (!wanted.has(row)) wanted.set(row, new Set());
-      wanted.get(row)!.add(column);
-    }
-  }
-  const { left, right, placeOfPair } = tilesOf(mergeGroups(groupRows(terms, wanted)));
+/** One tile after the other; of a pair of columns that stands in several the last counts. */
+export function layTiles(columns: number, tiles: readonly Tile[]): TilePlan {
   const placeOf = new Int32Array(columns * columns);
-  for (let i = 0; i < columns; i++) {
-    for (let j = i; j < columns; j++) {
-      const [row, column] = chosen.get(monomialOf(terms[i], terms[j]).join())!;
-      placeOf[i * columns + j] = placeOfPair.get(row * columns + column) ?? placeOfPair.get(column * columns + row)!;
-    }
-  }
-  return { columns, tiles: left.length / TILE, left: Int32Array.from(left), right: Int32Array.from(right), placeOf };
-
-  function tilesOf(groups: readonly Group[]) {
-    const leftColumns: number[] = [];
-    const rightColumns: number[] = [];
-    const places = new Map<number, number>();
-    for (const group of groups) {
-      for (const rows of fours(group.rows)) {
-        for (const others of fours(group.columns)) {
-          const base = leftColumns.length * TILE;
-          leftColumns.push(...rows);
-          rightColumns.push(...others);
-          rows.forEach((row, r) => {
-            others.forEach((column, c) => {
-              places.set(row * columns + column, base + r * TILE + c);
-            });
-          });
-        }
-      }
-    }
-    return { left: leftColumns, right: rightColumns, placeOfPair: places };
-  }
-}
-
-interface Group {
-  readonly rows: number[];
-  readonly columns: number[];
-}
-
-function monomialOf(left: TermPair, right: TermPair): number[] {
-  const factors = [...left, ...right].filter((place) => place !== 0).sort((a, b) => a - b);
-  while (factors.length < 4) factors.unshift(0);
-  return factors;
-}
-
-/** The first split of a monomial into two terms: neighbours first, so that equal rows want equal columns. */
-function splitOf(monomial: number[], place: ReadonlyMap<string, number>): [number, number] | undefined {
-  if (monomial.length > 4) return splitOfMore(monomial, place);
-  const [a, b, c, d] = monomial;
-  for (const [one, two] of [
-    [ordered(a, b), ordered(c, d)],
-    [ordered(a, c), ordered(b, d)],
-    [ordered(a, d), ordered(b, c)],
-  ]) {
-    const first = place.get(one.join());
-    const second = place.get(two.join());
-    if (first === undefined || second === undefined) continue;
-    return one[1] <= two[1] ? [first, second] : [second, first];
-  }
-  return undefined;
-}
-
-/**
- * The same where there are more than four factors: the first two with none, the last, or any of the others
- * first, so that (ln p₁ ln p₂)(ln p₃ ln p₄ r) stands in the row of ln p₁ ln p₂.
- */
-function splitOfMore(monomial: number[], place: ReadonlyMap<string, number>): [number, number] | undefined {
-  const last = 1 << (monomial.length - 1);
-  const liked = [3, 3 | last, 3 | (last >> 1)];
-  const all = Array.from({ length: 2 * last }, (_, subset) => subset);
-  for (const subset of [...liked, ...all]) {
-    const parts: [number[], number[]] = [[], []];
-    monomial.forEach((factor, at) => {
-      parts[(subset >> at) & 1].push(factor);
+  tiles.forEach(([left, right], tile) => {
+    left.forEach((row, r) => {
+      right.forEach((column, c) => {
+        placeOf[row * columns + column] = (tile * TILE + r) * TILE + c;
+      });
     });
-    const row = place.get(termOf(parts[1]).join());
-    const column = place.get(termOf(parts[0]).join());
-    if (row !== undefined && column !== undefined) return [row, column];
-  }
-  return undefined;
-}
-
-/** Plain columns, in no product, that are grouped from the start where there are very many (zeros in two steps). */
-const MANY_PLAIN = 48;
-const PLAIN_TOGETHER = 4 * TILE;
-
-/**
- * Rows with the same second base column want (nearly) the same columns: one rectangle each. A plain column wants all
- * those after it.
- */
-function groupRows(terms: readonly TermPair[], wanted: ReadonlyMap<number, ReadonlySet<number>>): Group[] {
-  const inProducts = new Set(terms.flatMap((term) => (term[0] === 0 ? [] : [...term])));
-  const plain = terms.flatMap(([left, right], row) => (left === 0 && !inProducts.has(right) ? [row] : []));
-  const bundle = new Map(
-    plain.length < MANY_PLAIN ? [] : plain.map((row, at) => [row, Math.floor(at / PLAIN_TOGETHER)]),
-  );
-  const groups = new Map<string, { rows: number[]; columns: Set<number> }>();
-  for (const [row, columns] of wanted) {
-    const alike = bundle.has(row) ? `plain ${bundle.get(row)}` : terms[row].slice(1).join();
-    if (!groups.has(alike)) groups.set(alike, { rows: [], columns: new Set() });
-    const group = groups.get(alike)!;
-    group.rows.push(row);
-    for (const column of columns) group.columns.add(column);
-  }
-  return [...groups.values()].map((group) => ({ rows: group.rows, columns: [...group.columns].sort((a, b) => a - b) }));
-}
-
-/** Merges rectangles while that saves whole tiles. */
-function mergeGroups(groups: Group[]): Group[] {
-  const cost = (group: Group) => Math.ceil(group.rows.length / TILE) * Math.ceil(group.columns.length / TILE);
-  let list = groups;
-  for (;;) {
-    let best: { saving: number; i: number; j: number; merged: Group } | undefined;
-    for (let i = 0; i < list.length; i++) {
-      for (let j = i + 1; j < list.length; j++) {
-        const merged: Group = {
-          rows: [...list[i].rows, ...list[j].rows],
-          columns: [...new Set([...list[i].columns, ...list[j].columns])].sort((a, b) => a - b),
-        };
-        const saving = cost(list[i]) + cost(list[j]) - cost(merged);
-        if (saving > (best?.saving ?? 0)) best = { saving, i, j, merged };
-      }
-    }
-    if (best === undefined) return list;
-    const { i, j, merged } = best;
-    list = [...list.filter((_, at) => at !== i && at !== j), merged];
-  }
+  });
+  return {
+    columns,
+    tiles: tiles.length,
+    left: Int32Array.from(tiles.flatMap(([left]) => left)),
+    right: Int32Array.from(tiles.flatMap(([, right]) => right)),
+    placeOf,
+  };
 }
 
 /** In fours, the last filled up by repeating its last entry. */
-function fours(list: readonly number[]): number[][] {
+export function fours(list: readonly number[]): number[][] {
   const groups: number[][] = [];
   for (let at = 0; at < list.length; at += TILE) {
     const group = list.slice(at, at + TILE);
@@ -191,42 +49,16 @@ function fours(list: readonly number[]): number[][] {
 
 /** The plan of all products of `columns` unrelated columns, each pair once. */
 export function densePlan(columns: number): TilePlan {
-  const left: number[] = [];
-  const right: number[] = [];
-  const placeOf = new Int32Array(columns * columns);
   const groups = fours(Array.from({ length: columns }, (_, column) => column));
-  groups.forEach((rows, at) => {
-    for (const others of groups.slice(at)) {
-      const base = left.length * TILE;
-      rows.forEach((row, r) => {
-        others.forEach((column, c) => {
-          placeOf[row * columns + column] = base + r * TILE + c;
-        });
-      });
-      left.push(...rows);
-      right.push(...others);
-    }
-  });
-  return { columns, tiles: left.length / TILE, left: Int32Array.from(left), right: Int32Array.from(right), placeOf };
+  return layTiles(
+    columns,
+    groups.flatMap((left, at) => groups.slice(at).map((right): Tile => [left, right])),
+  );
 }
 
 /** The plan of products with the columns from `first` on only, with all columns before them and each other. */
 export function responsePlan(first: number, columns: number): TilePlan {
-  const left: number[] = [];
-  const right: number[] = [];
-  const placeOf = new Int32Array(columns * columns);
   const all = Array.from({ length: columns }, (_, column) => column);
-  for (const others of fours(all.slice(first))) {
-    for (const rows of fours(all)) {
-      const base = left.length * TILE;
-      rows.forEach((row, r) => {
-        others.forEach((column, c) => {
-          placeOf[row * columns + column] = base + r * TILE + c;
-        });
-      });
-      left.push(...rows);
-      right.push(...others);
-    }
-  }
-  return { columns, tiles: left.length / TILE, left: Int32Array.from(left), right: Int32Array.from(right), placeOf };
+  const tiles = fours(all.slice(first)).flatMap((right) => fours(all).map((left): Tile => [left, right]));
+  return layTiles(columns, tiles);
 }

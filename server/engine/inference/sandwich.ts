@@ -4,7 +4,7 @@ import type { Estimation } from "../estimation/estimation.ts";
 import type { Solution } from "../estimation/minimise.ts";
 import type { MomentSource } from "../estimation/moment-source.ts";
 import { planReduction } from "../estimation/moments.ts";
-import { planTiles } from "../estimation/tile-plan.ts";
+import { planTiles } from "../estimation/monomial-plan.ts";
 import type { RunControl } from "../run.ts";
 import {
   bytesOfClusterMoments,

@@ -3,7 +3,8 @@ import { accumulateSums, momentMatrix } from "../../../../server/engine/estimati
 import { whiteningOf } from "../../../../server/engine/estimation/find-whitening.ts";
 import type { MomentSource, TermPair } from "../../../../server/engine/estimation/moment-source.ts";
 import { reduceRows } from "../../../../server/engine/estimation/moments.ts";
-import { densePlan, planTiles } from "../../../../server/engine/estimation/tile-plan.ts";
+import { planTiles } from "../../../../server/engine/estimation/monomial-plan.ts";
+import { densePlan } from "../../../../server/engine/estimation/tile-plan.ts";
 import { QUIET } from "../../../../server/engine/run.ts";
 import { seededRandom } from "../../../../shared/numerics/random.ts";
 

@@ -5,8 +5,8 @@ import { accumulateSums, momentMatrix } from "../../../../server/engine/estimati
 import { accumulateMoments, estimateSystem, momentsRequest } from "../../../../server/engine/estimation/index.ts";
 import { locatable, sourceAt } from "../../../../server/engine/estimation/local-moments.ts";
 import { planReduction } from "../../../../server/engine/estimation/moments.ts";
+import { planTiles } from "../../../../server/engine/estimation/monomial-plan.ts";
 import { termBlock } from "../../../../server/engine/estimation/term-block.ts";
-import { planTiles } from "../../../../server/engine/estimation/tile-plan.ts";
 import { Refusal } from "../../../../server/engine/refusal.ts";
 import { Cancelled, QUIET, type RunControl } from "../../../../server/engine/run.ts";
 import { seededRandom } from "../../../../shared/numerics/random.ts";
