@@ -33,11 +33,12 @@ const DIFFERENCE = 1e-3;
 export function maximiseExact(problem: ExactProblem, from: ExactSolution): ExactMaximum {
   const { estimation, control } = problem;
   const likelihood = new ExactLikelihood(problem);
-  const { scale, information } = byStages(problem, from);
+  const metric = byStages(problem, from);
+  const { scale } = metric;
   let free = [...from.solution.free];
   let value = likelihood.value(free);
   // Of three stages first: nearly that of the likelihood, and no pass over the rows for every coefficient.
-  let curvature = information;
+  let curvature = multiply(metric.inverse, transposed(metric.inverse));
   let settledAt: number[] | undefined;
   let largestStep = Number.POSITIVE_INFINITY;
   for (let iteration = 1; ; iteration++) {
@@ -51,7 +52,7 @@ export function maximiseExact(problem: ExactProblem, from: ExactSolution): Exact
     if (largestStep <= TOLERANCE || (largestStep < ROUNDING_STEP && largestStep >= previous)) {
       free = moved(free, step, 1);
       if (settledAt === undefined || distance(free, settledAt, scale) > DIFFERENCE)
-        curvature = informationAt(likelihood, free, scale, problem);
+        curvature = informationAt(likelihood, free, metric, problem);
       return finished(problem, from, free, curvature, scale, {
         iterations: from.solution.iterations + iteration,
         gradient: largestGradient,
@@ -67,14 +68,20 @@ export function maximiseExact(problem: ExactProblem, from: ExactSolution): Exact
     value = next.value;
     control.progress({ step: "iterating", iteration, gradient: largestGradient, largestStep, logLikelihood: value });
     if (largestStep > SLOWLY * previous) {
-      curvature = informationAt(likelihood, free, scale, problem);
+      curvature = informationAt(likelihood, free, metric, problem);
       settledAt = free;
     }
   }
 }
 
-/** Standard errors of φ by three stages, the units in which differences and steps are of one size; and V⁻¹ in them. */
-function byStages(problem: ExactProblem, from: ExactSolution): { scale: number[]; information: Columns } {
+/** What three stages say of φ: standard errors, the units of steps; R with R'R the correlations, and R⁻¹. */
+interface Metric {
+  readonly scale: readonly number[];
+  readonly root: Columns;
+  readonly inverse: Columns;
+}
+
+function byStages(problem: ExactProblem, from: ExactSolution): Metric {
   const covariance = exactCovariance(problem, from);
   const { places } = problem.estimation.form.expand;
   const scale = places.map((place) => Math.sqrt(covariance[place][place]));
@@ -84,31 +91,37 @@ function byStages(problem: ExactProblem, from: ExactSolution): { scale: number[]
       correlations.values[f * places.length + g] = covariance[a][b] / (scale[f] * scale[g]);
     });
   });
-  const inverse = invertUpper(semidefiniteCholesky(correlations, 0).factor);
-  return { scale, information: multiply(inverse, transposed(inverse)) };
+  const root = semidefiniteCholesky(correlations, 0).factor;
+  return { scale, root, inverse: invertUpper(root) };
 }
 
-/** −∂²/∂φ∂φ' in units of `scale`. */
+/**
+ * −∂²/∂φ∂φ' in units of `scale`. Differences go along uncorrelated directions of one standard error each, the rows of
+ * R: along single coefficients that are nearly collinear the likelihood falls too steeply for them to be accurate.
+ */
 function informationAt(
   likelihood: ExactLikelihood,
   free: readonly number[],
-  scale: readonly number[],
+  { scale, root, inverse }: Metric,
   { control }: ExactProblem,
 ): Columns {
   const size = free.length;
+  const along = (f: number, g: number) => root.values[g * size + f];
   const information = zeros(size, size);
   for (let f = 0; f < size; f++) {
     if (control.cancelled()) throw new Cancelled("cancelled while forming second derivatives");
     control.progress({ step: "forming second derivatives", fraction: f / size });
-    const at = (by: number) => likelihood.gradient(free.map((each, g) => (g === f ? each + by * scale[f] : each)));
+    const at = (by: number) => likelihood.gradient(free.map((each, g) => each + by * along(f, g) * scale[g]));
     const [up, down] = [at(DIFFERENCE), at(-DIFFERENCE)];
+    const change = down.map((each, g) => ((each - up[g]) * scale[g]) / (2 * DIFFERENCE));
     for (let g = 0; g < size; g++) {
-      const entry = ((down[g] - up[g]) * scale[g]) / (2 * DIFFERENCE);
+      let entry = 0;
+      for (let h = g; h < size; h++) entry += along(g, h) * change[h];
       information.values[f * size + g] += entry / 2;
       information.values[g * size + f] += entry / 2;
     }
   }
-  return information;
+  return multiply(inverse, multiply(information, transposed(inverse)));
 }
 
 /** H⁻¹ g; where the likelihood is not concave, along the gradient in units of standard errors. */
