@@ -1,7 +1,7 @@
 import { symmetricEigen, withPositiveLargest } from "../numerics/eigen.ts";
 import { LargestEigenvalue } from "../numerics/largest-eigenvalue.ts";
 import { type FittedCoefficients, systemOf } from "../systems/index.ts";
-import { statesNegativity, TOLERANCE } from "./checks.ts";
+import { lawStatus, statesNegativity, TOLERANCE } from "./checks.ts";
 import { overGoods, projectSymmetricPart } from "./null-direction.ts";
 
 /** Checks one row after another; every answer is about the row last given to `evaluate`. */
@@ -14,6 +14,11 @@ export interface RowChecker {
   evaluate(logPrices: ArrayLike<number>, logTotal: number, demographics: ArrayLike<number>): void;
   /** In a system in differences: stands at a row's own observed shares. */
   evaluateAtShares?(shares: ArrayLike<number>): void;
+  /**
+   * Whether the system is defined there: predicts shares and, where it has a cost function that may end before they
+   * do (QUAIDS), has utility. Where it is not, the answers below mean nothing.
+   */
+  isDefined(): boolean;
   lowestShare(): number;
   highestShare(): number;
   /** Predicted shares within [0, 1]. */
@@ -33,12 +38,14 @@ export interface RowChecker {
 export function createRowChecker(fitted: Omit<FittedCoefficients, "covariance">): RowChecker {
   const { system, size } = systemOf(fitted);
   const n = size.goods;
-  const { shares, total, prices, at, atShares } = system.evaluator(fitted.theta, size);
+  const { shares, total, prices, at, atShares, hasUtility } = system.evaluator(fitted.theta, size);
   const matrix = new Float64Array(n * n);
   const projected = new Float64Array((n - 1) * (n - 1));
   const scratch = new Float64Array(n);
   const solver = new LargestEigenvalue(n - 1);
   const stated = statesNegativity(fitted);
+  const hasCost = (["homogeneity", "symmetry"] as const).every((law) => lawStatus(fitted, law) !== "free");
+  const needsUtility = hasCost ? hasUtility : undefined;
 
   /** k_ij = μ_ij − w_i δ_ij + (w_i + μ_i) w_j, then the null direction set aside. */
   const projectMatrix = () => {
@@ -62,6 +69,7 @@ export function createRowChecker(fitted: Omit<FittedCoefficients, "covariance">)
     shares,
     evaluate: at,
     ...(atShares && { evaluateAtShares: atShares }),
+    isDefined: () => !Number.isNaN(shares[0]) && (needsUtility?.() ?? true),
     lowestShare,
     highestShare,
     monotonicityHolds: () => lowestShare() >= 0 && highestShare() <= 1,

@@ -1,6 +1,10 @@
 import { z } from "zod";
 import { count, finite } from "./primitives.ts";
 
+/** Rows used in which a fitted system is not defined: how many, their share of the weight, and why, as a clause. */
+export const undefinedRows = z.strictObject({ rows: count, weightedShare: finite, reason: z.string() });
+export type UndefinedRows = z.infer<typeof undefinedRows>;
+
 /** The five laws at a point and, where counted, over all rows used (methods 3.1). */
 export const theoryChecks = z.strictObject({
   /** "base point", "mean", "row 12", "quantile 0.9 of expenditure", "a point of one's own". */
@@ -20,11 +24,15 @@ export const theoryChecks = z.strictObject({
     holds: z.boolean().optional(),
   }),
   monotonicity: z.strictObject({ holds: z.boolean(), lowest: finite, highest: finite }),
+  /** Breaks are counted where the system is defined; shares of rows that hold are of all rows' weight. */
   sample: z
     .strictObject({
       rows: count,
+      /** Absent where the system is defined in every row. */
+      undefined: undefinedRows.optional(),
       negativity: z.strictObject({ breaks: count, weightedShareThatHolds: finite }).optional(),
       monotonicity: z.strictObject({ breaks: count, weightedShareThatHolds: finite }),
+      /** Rows where the system is not defined are none of them regular. */
       regular: z.strictObject({ breaks: count, weightedShareThatHolds: finite }).optional(),
     })
     .optional(),

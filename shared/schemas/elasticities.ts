@@ -1,6 +1,6 @@
 import { z } from "zod";
 import { PRICE_INDEX_NAMES, SYSTEM_NAMES } from "../systems/names.ts";
-import { theoryChecks } from "./checks.ts";
+import { theoryChecks, undefinedRows } from "./checks.ts";
 import { cellName, columnName, count, fingerprint, finite, goodName, matrix, vector } from "./primitives.ts";
 import { pointSpecification } from "./slutsky.ts";
 import { namedPoint, restrictionTest } from "./system.ts";
@@ -87,6 +87,8 @@ export const elasticityGroup = z.strictObject({
   classes: z.array(classOfGood),
   net: z.array(z.array(pair)),
   gross: z.array(z.array(pair)),
+  /** Over rows: those of the group in which the system predicts no shares; they are in none of the sums. */
+  notDefined: undefinedRows.optional(),
   /** Over rows: how many rows have a share that is not positive, by good. */
   notPositive: z.array(z.strictObject({ good: goodName, rows: count })),
 });

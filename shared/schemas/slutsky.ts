@@ -1,5 +1,5 @@
 import { z } from "zod";
-import { theoryChecks } from "./checks.ts";
+import { theoryChecks, undefinedRows } from "./checks.ts";
 import { cellName, count, fingerprint, finite, goodName, matrix, vector } from "./primitives.ts";
 import { fittedSystem, namedPoint, restrictionTest } from "./system.ts";
 
@@ -57,22 +57,27 @@ export const matrixAtPoint = z.strictObject({
 });
 export type MatrixAtPoint = z.infer<typeof matrixAtPoint>;
 
-/** A row of the upload where a law breaks. Never part of a referee copy. */
+/** A row of the upload where a law breaks or the system is not defined. Never part of a referee copy. */
 export const brokenRow = z.strictObject({
   row: count,
   total: finite,
   largestEigenvalue: finite.optional(),
   goods: z.array(goodName),
-  lowestShare: finite,
-  highestShare: finite,
+  /** Absent where there are no shares. */
+  lowestShare: finite.optional(),
+  highestShare: finite.optional(),
+  /** Why the system is not defined there, as a clause; then no law is judged. */
+  notDefined: z.string().optional(),
   breaks: z.array(z.enum(["negativity", "monotonicity"])),
 });
 
 export const negativityOverSample = z.strictObject({
   rows: count,
-  /** Equal bins of the largest eigenvalue, weighted shares of rows. */
+  /** Rows without an eigenvalue, since the system is not defined there; they are in none of the bins. */
+  undefined: undefinedRows.optional(),
+  /** Equal bins of the largest eigenvalue, weighted shares of all rows. */
   histogram: z.strictObject({ edges: vector, shares: vector }),
-  /** By tenth of total expenditure: weighted share of rows that hold. */
+  /** By tenth of total expenditure: weighted share of rows that hold; those where the system is not defined do not. */
   byTenth: vector,
   /** Rows that break in the richest tenth. */
   breaksInRichestTenth: count,

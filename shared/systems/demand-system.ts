@@ -89,6 +89,9 @@ export interface Slopes {
 /**
  * A system at fixed θ, evaluated again and again without allocating: `at` overwrites the arrays it
  * carries. What a million rows are checked with; `slopes` is one call of it.
+ *
+ * Where the system predicts no shares at a point, `at` throws nothing and leaves NaN in every share: not defined
+ * here (`notDefined` of the system says why, in words). Its slopes are then of no meaning.
  */
 export interface Evaluator {
   /** w_i, n. */
@@ -98,6 +101,11 @@ export interface Evaluator {
   /** μ_ij, n × n row by row. */
   readonly prices: Float64Array;
   at(logPrices: ArrayLike<number>, logTotal: number, demographics: ArrayLike<number>): void;
+  /**
+   * Systems whose shares go on where utility has ended (QUAIDS): whether there is utility where `at` stands. Of
+   * meaning only where the system has a cost function, that is under homogeneity and symmetry.
+   */
+  hasUtility?(): boolean;
   /** Systems in differences: stands at these observed shares, since none are predicted. */
   atShares?(shares: ArrayLike<number>): void;
 }
@@ -273,6 +281,11 @@ export interface DemandSystem {
    */
   free(size: SystemSize, impose: readonly RestrictionName[]): FreeForm;
   evaluator(theta: readonly number[], size: SystemSize): Evaluator;
+  /**
+   * Why there are points at which the system is not defined, as a clause: what its evaluator answers with NaN or
+   * without utility, and `slopes` (where there are no shares) with a `RangeError`. Absent where there are none.
+   */
+  readonly notDefined?: string;
   slopes(theta: readonly number[], size: SystemSize, point: Point): Slopes;
   slopeDerivatives(theta: readonly number[], size: SystemSize, point: Point): SlopeDerivatives;
   /**

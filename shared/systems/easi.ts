@@ -6,6 +6,8 @@ import { easiMoments } from "./easi-moments.ts";
 import { type EasiPoint, easiPoint } from "./easi-point.ts";
 import { requirePoint, slopesByEvaluator } from "./evaluation.ts";
 
+const NO_UTILITY = "no utility near it costs that much while cost rises with utility";
+
 /**
  * Exact affine Stone index system (EASI) with polynomial Engel curves.
  *
@@ -18,7 +20,8 @@ import { requirePoint, slopesByEvaluator } from "./evaluation.ts";
  *
  *     μ_i = v_i/F_u,   v_i = m_u,i + (B p)_i,   μ_ij = A_ij(z) + B_ij u − μ_i s_j,   s = w under symmetry
  *
- * where k_ij = A_ij + B_ij u − w_i δ_ij + w_i w_j. Where there is no such u, shares are refused and utility is NaN.
+ * where k_ij = A_ij + B_ij u − w_i δ_ij + w_i w_j. Where there is no such u, nothing is defined: shares and utility are
+ * NaN and the slopes are refused.
  *
  * **Without symmetry** the share equations stand as they are and y is the same expression, in which p'Ap and p'Bp see
  * the symmetric parts only: then y is a deflated expenditure that the equations define and no utility, s ≠ w, and
@@ -40,7 +43,8 @@ export const easi: DemandSystem = {
   layout: easiLayout,
   free: easiFreeForm,
   evaluator: easiEvaluator,
-  slopes: (theta, size, point) => slopesByEvaluator(easiEvaluator(theta, size), size, point),
+  notDefined: NO_UTILITY,
+  slopes: (theta, size, point) => slopesByEvaluator(easiEvaluator(theta, size), size, point, refuse),
   slopeDerivatives: (theta, size, point) => {
     requirePoint(size, point);
     const logPrices = point.prices.map(Math.log);
@@ -96,14 +100,13 @@ export const easi: DemandSystem = {
 function solvedAt(theta: readonly number[], size: SystemSize, point: Point, logPrices: readonly number[]): EasiPoint {
   const at = easiPoint(theta, size);
   at.at(logPrices, Math.log(point.total), point.demographics);
-  requireUtility(at.utility, Math.log(point.total));
+  if (Number.isNaN(at.utility)) refuse(point);
   return at;
 }
 
-function requireUtility(utility: number, logTotal: number): void {
-  if (Number.isFinite(utility)) return;
+function refuse({ total }: Point): never {
   throw new RangeError(
-    `the exact affine Stone index system is not defined at ln x = ${logTotal.toPrecision(4)} and these prices: no utility near it costs that much while cost rises with utility; a lower degree or fewer interactions bend the Engel curves less`,
+    `the exact affine Stone index system is not defined at ln x = ${Math.log(total).toPrecision(4)} and these prices: ${NO_UTILITY}; a lower degree or fewer interactions bend the Engel curves less`,
   );
 }
 
@@ -120,7 +123,6 @@ function easiEvaluator(theta: readonly number[], size: SystemSize): Evaluator {
     prices,
     at(logPrices, logTotal, demographics) {
       point.at(logPrices, logTotal, demographics);
-      requireUtility(point.utility, logTotal);
       for (let i = 0; i < n; i++) {
         const slope = tilts[i] / point.rise;
         total[i] = slope;

@@ -23,10 +23,19 @@ export function requireTheta(theta: readonly number[], coefficients: number): vo
   }
 }
 
-/** `slopes` of a system that has an evaluator: one call of it, copied into rows of numbers. */
-export function slopesByEvaluator(evaluator: Evaluator, size: SystemSize, point: Point): Slopes {
+/**
+ * `slopes` of a system that has an evaluator: one call of it, copied into rows of numbers. `refuse` speaks where the
+ * system predicts no shares.
+ */
+export function slopesByEvaluator(
+  evaluator: Evaluator,
+  size: SystemSize,
+  point: Point,
+  refuse?: (point: Point) => never,
+): Slopes {
   requirePoint(size, point);
   evaluator.at(point.prices.map(Math.log), Math.log(point.total), point.demographics);
+  if (refuse !== undefined && Number.isNaN(evaluator.shares[0])) refuse(point);
   const n = size.goods;
   return {
     shares: Array.from(evaluator.shares),

@@ -57,3 +57,8 @@ export function systemOf(fitted: Omit<FittedCoefficients, "covariance">): { syst
   };
   return { system, size };
 }
+
+/** Why a system is not defined in some places, as a clause; of one that names no such places, that its formula has no value. */
+export function whyNotDefined(form: SystemName): string {
+  return SYSTEMS[form].notDefined ?? "its formula has no value there";
+}

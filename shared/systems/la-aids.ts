@@ -66,7 +66,10 @@ function linearEvaluator(theta: readonly number[], size: SystemSize): Evaluator 
         numerator -= (own * levels[i] + fixed[i]) * deviation;
         denominator += own * beta[i] * deviation;
       }
-      if (!(denominator > 0)) refuseUndefined(denominator);
+      if (!(denominator > 0)) {
+        shares.fill(Number.NaN);
+        return;
+      }
       const real = numerator / denominator;
       for (let i = 0; i < n; i++) shares[i] = levels[i] + beta[i] * real;
       for (let i = 0; i < n; i++) {
@@ -76,7 +79,12 @@ function linearEvaluator(theta: readonly number[], size: SystemSize): Evaluator 
   };
 }
 
-function refuseUndefined(denominator: number): never {
+const NO_INDEX = "1 + a Σ β_k d_k is not above 0, d_k being the log price of good k from its base";
+
+function refuseAt(theta: readonly number[], size: SystemSize, { prices }: Point): never {
+  const { beta } = partsOf(theta, size);
+  const { own, base } = pointIndex(size);
+  const denominator = prices.reduce((sum, price, k) => sum + own * beta[k] * (Math.log(price) - base[k]), 1);
   const below = Math.abs(denominator).toFixed(3);
   throw new RangeError(
     `the linear approximate system predicts no shares at these prices: 1 + a Σ β_k d_k must be above 0 and is ${below} below it, d_k being the log price of good k from its base (normalise: mean keeps them small)`,
@@ -151,7 +159,7 @@ function linearDerivatives(theta: readonly number[], size: SystemSize, point: Po
  *     m = (ln x − a Σ_k A_k d_k − b Σ_k w̄_k d_k) / (1 + a Σ_k β_k d_k),   A_k = α_k(z) + Σ_j γ_kj ln p_j
  *
  * Where prices are at their means d = 0 and m = ln x: the base point of normalised data. The shares are
- * not defined where 1 + a Σ β_k d_k ≤ 0, and refused there: no prices near a sample do that, but p = 1 may be
+ * not defined where 1 + a Σ β_k d_k ≤ 0: NaN, and the slopes refused there. No prices near a sample do that, but p = 1 may be
  * far from one whose prices are not normalised.
  *
  * **Slopes** hold the index's weights fixed and take them to be the predicted shares at the point
@@ -170,7 +178,9 @@ export const laAids: DemandSystem = {
   layout: almostIdealLayout,
   free: almostIdealFreeForm,
   evaluator: linearEvaluator,
-  slopes: (theta, size, point) => slopesByEvaluator(linearEvaluator(theta, size), size, point),
+  notDefined: NO_INDEX,
+  slopes: (theta, size, point) =>
+    slopesByEvaluator(linearEvaluator(theta, size), size, point, (at) => refuseAt(theta, size, at)),
   slopeDerivatives: linearDerivatives,
   sharesNear,
   explainPriceSlope: (theta, size, point, i, j) => {

@@ -15,6 +15,8 @@ import { quaidsParts, quaidsPlaces } from "./quaids-parts.ts";
 import { quaidsAt } from "./quaids-point.ts";
 import { symmetricPart } from "./translog.ts";
 
+const NO_UTILITY = "its shares go on there, yet 1 + λ(p) y is not above 0 and no utility belongs to them";
+
 const goodsOf = ({ goods }: SystemSize) => Array.from({ length: goods }, (_, good) => good);
 
 /**
@@ -23,6 +25,8 @@ const goodsOf = ({ goods }: SystemSize) => Array.from({ length: goods }, (_, goo
  *     w_i = α_i(z) + Σ_j γ_ij ln p_j + β_i m + (λ_i/b(p)) m²,   m = ln x − ln a(p)
  *     ln a(p) = α₀ + Σ_k α_k(z) ln p_k + ½ Σ_k Σ_j γ_kj ln p_k ln p_j,   b(p) = Π p_k^β_k,   Σλ_i = 0
  *     μ_i = β_i + 2λ_i m/b,   μ_ij = γ_ij − μ_i π_j − λ_i β_j m²/b,   π_j = α_j(z) + ½ Σ_k (γ_jk + γ_kj) ln p_k
+ *
+ * Shares are defined everywhere; utility where 1 + λ(p) y > 0, with λ(p) = Σ λ_k ln p_k and y = m/b(p).
  *
  * α₀ is fixed. λ = 0 is the almost ideal system. Banks, Blundell & Lewbel (1997, Review of Economics and
  * Statistics 79, 527–539), equations (7) to (10).
@@ -42,6 +46,7 @@ export const quaids: DemandSystem = {
     return freeForm(places.count, [...almostIdealDependences(size, impose), addingUp]);
   },
   evaluator: quaidsEvaluator,
+  notDefined: NO_UTILITY,
   slopes: (theta, size, point) => slopesByEvaluator(quaidsEvaluator(theta, size), size, point),
   slopeDerivatives: quaidsDerivatives,
   explainPriceSlope: (theta, size, point, i, j) => {
@@ -97,14 +102,18 @@ function quaidsEvaluator(theta: readonly number[], size: SystemSize): Evaluator 
   const prices = new Float64Array(n * n);
   const intercepts = new Float64Array(n);
   const indexSlopes = new Float64Array(n);
+  /** 1 + λ(p) y. */
+  let slack = Number.NaN;
   return {
     shares,
     total,
     prices,
+    hasUtility: () => slack > 0,
     at(logPrices, logTotal, demographics) {
       interceptsAt(parts, demographics, intercepts);
       let real = logTotal - size.alpha0;
       let logDeflator = 0;
+      let bend = 0;
       for (let j = 0; j < n; j++) {
         let slope = intercepts[j];
         for (let k = 0; k < n; k++) slope += symmetric[j * n + k] * logPrices[k];
@@ -112,9 +121,11 @@ function quaidsEvaluator(theta: readonly number[], size: SystemSize): Evaluator 
         // Σ α_k ln p_k + ½ ln p'Γ ln p = ½ Σ (α_k + π_k) ln p_k
         real -= 0.5 * (intercepts[j] + slope) * logPrices[j];
         logDeflator += beta[j] * logPrices[j];
+        bend += lambda[j] * logPrices[j];
       }
       const inUnits = real * Math.exp(-logDeflator);
       const square = real * inUnits;
+      slack = 1 + bend * inUnits;
       for (let i = 0; i < n; i++) {
         let share = intercepts[i] + beta[i] * real + lambda[i] * square;
         total[i] = beta[i] + 2 * lambda[i] * inUnits;

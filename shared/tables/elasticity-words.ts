@@ -1,6 +1,6 @@
 import type { ClassOfGood, ElasticitiesFinding, ElasticityGroup } from "../schemas/elasticities.ts";
 import { printCount, printPercent, printQuantity } from "./numbers.ts";
-import { capital, countedRows, listed } from "./phrases.ts";
+import { capital, countedRows, listed, undefinedSentence } from "./phrases.ts";
 import { withArticle } from "./slutsky-matrix.ts";
 
 /** Groups of fewer rows than these are named: their mean point is the mean of few. */
@@ -24,7 +24,7 @@ export function elasticitiesSentence(finding: ElasticitiesFinding): string {
   const { groups } = finding;
   const told = groups.length === 1 ? oneGroup(finding, groups[0]) : severalGroups(finding);
   const giffen = groups.length === 1 ? giffenGoods(groups[0]) : [];
-  return [told, ...giffen, ...withoutAny(finding)].join(" ");
+  return [told, ...giffen, ...notDefined(finding), ...withoutAny(finding)].join(" ");
 }
 
 function oneGroup(finding: ElasticitiesFinding, group: ElasticityGroup): string {
@@ -89,6 +89,13 @@ function giffenGoods({ classes }: ElasticityGroup): string[] {
   return [`${capital(listed(goods))} ${goods.length === 1 ? "is a Giffen good" : "are Giffen goods"} there.`];
 }
 
+/** Rows without predicted shares, of all groups together. */
+function notDefined({ groups }: ElasticitiesFinding): string[] {
+  const without = groups.reduce((sum, group) => sum + (group.notDefined?.rows ?? 0), 0);
+  const rows = groups.reduce((sum, group) => sum + (group.rows ?? 0), 0);
+  return undefinedSentence(without > 0 ? { rows: without } : undefined, rows);
+}
+
 function withoutAny({ without }: ElasticitiesFinding): string[] {
   if (without.length === 0) return [];
   const names = without.map(({ name }) => name);
@@ -135,12 +142,20 @@ function cautions({ groups, without, derivativeRows }: ElasticitiesFinding): str
   const below = groups.flatMap(({ name, notPositive }) =>
     notPositive.map(({ good, rows }) => `${good} in ${countedRows(rows)} of ${name}`),
   );
+  const nowhere = groups.flatMap(({ name, notDefined }) =>
+    notDefined
+      ? [
+          `The system is not defined in ${countedRows(notDefined.rows)} of ${name}, which are left out: ${notDefined.reason}.`,
+        ]
+      : [],
+  );
   const sampled = derivativeRows && [
     `The derivatives behind the standard errors are taken at ${printCount(derivativeRows.used)} of ${printCount(derivativeRows.of)} rows, evenly spread; the estimates go over all of them.`,
   ];
   return [
     ...(few.length > 0 ? [fewNote] : []),
     ...(below.length > 0 ? [`A share is not positive: ${listed(below)}.`] : []),
+    ...nowhere,
     ...(sampled ?? []),
     ...without.map(({ name, undefined: reason }) => `${capital(name)}: ${reason}`),
   ];

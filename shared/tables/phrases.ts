@@ -11,6 +11,12 @@ export function countedRows(count: number): string {
   return `${printCount(count)} ${count === 1 ? "row" : "rows"}`;
 }
 
+/** "The system is not defined in 3 of 338 rows."; nothing where it is defined in all. */
+export function undefinedSentence(without: { readonly rows: number } | undefined, of: number): string[] {
+  if (without === undefined) return [];
+  return [`The system is not defined in ${printCount(without.rows)} of ${countedRows(of)}.`];
+}
+
 export function capital(text: string): string {
   return text.slice(0, 1).toUpperCase() + text.slice(1);
 }

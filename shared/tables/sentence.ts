@@ -5,7 +5,7 @@ import { curvatureSentences } from "./curvature-words.ts";
 import { equationsSentences } from "./equations-sentence.ts";
 import { endogeneityHeadline } from "./first-steps-words.ts";
 import { printCount, printQuantity, printSize } from "./numbers.ts";
-import { capital, countedRows, listed } from "./phrases.ts";
+import { capital, countedRows, listed, undefinedSentence } from "./phrases.ts";
 import { withArticle } from "./slutsky-matrix.ts";
 import { isRejected, testOf } from "./verdicts.ts";
 
@@ -47,6 +47,7 @@ export function systemSentence(system: ToldSystem): string {
   return [
     classesOfGoods(system),
     ...violations(system),
+    ...undefinedSentence(system.checks.sample?.undefined, system.checks.sample?.rows ?? 0),
     ...ofUnits(system),
     ...curvatureSentences(system),
     ...equationsSentences(system),
@@ -136,7 +137,8 @@ export function slutskySentence({ at: { checks }, pointName, sample }: ToldMatri
       ? `The matrix is ${symmetric} and negative semidefinite at ${at}.`
       : `The matrix is ${symmetric} and not negative semidefinite at ${at}: the largest eigenvalue is ${estimate(negativity)}.`;
   const monotone = checks.monotonicity.holds ? [] : [`A predicted share leaves the range from 0 to 1 at ${at}.`];
-  return [first, ...monotone, ...whereItBreaks(sample)].join(" ");
+  const undefinedRows = undefinedSentence(checks.sample?.undefined, checks.sample?.rows ?? 0);
+  return [first, ...monotone, ...whereItBreaks(sample), ...undefinedRows].join(" ");
 }
 
 function whereItBreaks(sample: ToldMatrix["sample"]): string[] {

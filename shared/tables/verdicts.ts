@@ -110,30 +110,36 @@ function negativity({ negativity: law, sample, pointName }: TheoryChecks, detail
   const error = law.standardError === undefined ? "" : ` (${printQuantity(law.standardError, "entry")})`;
   const largest = `largest ${printQuantity(law.largest, "entry")}${error}`;
   if (!law.holds) return { ...named, figure: "breaks", word: "breaks", note: largest };
-  return { ...named, ...overSample(pointName, sample?.negativity, sample?.rows, largest, detail) };
+  return { ...named, ...overSample(pointName, sample?.negativity, sample, largest, detail) };
 }
 
 function monotonicity({ monotonicity: law, sample, pointName }: TheoryChecks, detail: boolean): Verdict {
   const named = { law: "Monotonicity" } as const;
   const range = `shares ${printQuantity(law.lowest, "deviation")} to ${printQuantity(law.highest, "deviation")}`;
   if (!law.holds) return { ...named, figure: "breaks", word: "breaks", note: range };
-  return { ...named, ...overSample(pointName, sample?.monotonicity, sample?.rows, range, detail) };
+  return { ...named, ...overSample(pointName, sample?.monotonicity, sample, range, detail) };
 }
 
 /** A law that holds at the point: everywhere, or not. */
 function overSample(
   pointName: string,
   counts: { readonly breaks: number; readonly weightedShareThatHolds: number } | undefined,
-  rows: number | undefined,
+  sample: TheoryChecks["sample"],
   otherwise: string,
   detail: boolean,
 ): Pick<Verdict, "figure" | "word" | "note"> {
-  if (!counts || rows === undefined) return { figure: "holds here", word: atPoint(pointName), note: otherwise };
-  if (counts.breaks === 0) return { figure: "holds", word: "holds", note: `in all ${printCount(rows)} rows` };
-  const broken = 1 - counts.weightedShareThatHolds;
+  if (!counts || sample === undefined) return { figure: "holds here", word: atPoint(pointName), note: otherwise };
+  const { rows, undefined: without } = sample;
+  const nowhere = without && `not defined in ${printCount(without.rows)}`;
+  if (counts.breaks === 0) {
+    if (nowhere) return { figure: "holds here", word: atPoint(pointName), note: `${nowhere} of ${countedRows(rows)}` };
+    return { figure: "holds", word: "holds", note: `in all ${printCount(rows)} rows` };
+  }
+  const broken = 1 - counts.weightedShareThatHolds - (without?.weightedShare ?? 0);
   const isWeighted = Math.abs(broken - counts.breaks / rows) > 1e-9;
   const share = detail ? `, ${printPercent(broken)}${isWeighted ? " by weight" : ""}` : "";
-  return { figure: "holds here", word: atPoint(pointName), note: `breaks in ${countedRows(counts.breaks)}${share}` };
+  const breaks = `breaks in ${countedRows(counts.breaks)}${share}`;
+  return { figure: "holds here", word: atPoint(pointName), note: [breaks, ...(nowhere ? [nowhere] : [])].join("; ") };
 }
 
 /** Short enough to stand beside its figure: "at base point", "at the mean", "at this point". */

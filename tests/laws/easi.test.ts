@@ -119,6 +119,9 @@ describe("where cost falls with utility", () => {
     expect(cost.utility(theta, size, point)).toBeNaN();
     expect(cost.logCost(theta, size, 0.3, prices, [])).toBeNaN();
     expect(() => easi.slopes(theta, size, point)).toThrow("not defined at ln x = 0.4055");
+    const evaluator = easi.evaluator(theta, size);
+    evaluator.at(prices.map(Math.log), Math.log(1.5), []);
+    expect([...evaluator.shares]).toEqual([Number.NaN, Number.NaN]);
     expect(cost.utility(theta, size, { ...point, prices: [1, 1] })).toBe(Math.log(1.5));
   });
 

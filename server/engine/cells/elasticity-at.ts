@@ -12,7 +12,10 @@ import type { FittedCoefficients } from "../../../shared/systems/index.ts";
 import { printQuantity } from "../../../shared/tables/numbers.ts";
 
 /** The elasticities of a group with intervals and classes: what is said of it beside who it is. */
-export type EvaluatedGroup = Omit<ElasticityGroup, "name" | "rows" | "weightShare" | "total" | "point" | "notPositive">;
+export type EvaluatedGroup = Omit<
+  ElasticityGroup,
+  "name" | "rows" | "weightShare" | "total" | "point" | "notPositive" | "notDefined"
+>;
 
 /**
  * From responses with their derivatives to elasticities, standard errors, intervals at `level` and classes. The

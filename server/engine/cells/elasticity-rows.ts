@@ -3,9 +3,8 @@ import { type ResponseOptions, responsesFrom, slopesAt } from "../../../shared/e
 import type { ElasticitiesSpecification } from "../../../shared/schemas/elasticities.ts";
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import type { Evaluator, Slopes } from "../../../shared/systems/demand-system.ts";
-import { systemOf } from "../../../shared/systems/index.ts";
+import { systemOf, whyNotDefined } from "../../../shared/systems/index.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
-import { Refusal } from "../refusal.ts";
 import { Cancelled, type RunControl } from "../run.ts";
 import { evaluatedGroup, notPositive } from "./elasticity-at.ts";
 import type { RowGroup } from "./elasticity-groups.ts";
@@ -28,7 +27,7 @@ export interface DerivativeRows {
 
 /**
  * Elasticities over the rows of each group, each row weighted by what it spends on the good (`AggregateResponses`).
- * The estimates go over every row. The derivatives behind the standard errors cost n²k products a row and go over
+ * The estimates go over every row in which shares are predicted; the others are counted. The derivatives behind the standard errors cost n²k products a row and go over
  * every row too, up to a budget; beyond it over every m-th row of the group, which moves a standard error by about
  * 1/√rows of itself, and the finding says so.
  */
@@ -73,6 +72,7 @@ function overGroup(
   const sums = new AggregateResponses(goods.length);
   const gradients = new AggregateGradients(goods.length, fitted.theta.length);
   const below = goods.map(() => 0);
+  const without = { rows: 0, weight: 0 };
   const add = (t: number, withDerivatives: boolean) => {
     const logPrices = data.logPrices.map((column) => column[t]);
     const observed = shares === "observed" ? data.shares.map((column) => column[t]) : undefined;
@@ -80,6 +80,11 @@ function overGroup(
     const weight = (data.weights ? data.weights[t] : 1) * Math.exp(data.logTotal[t]);
     const own = demographics.map((column) => column[t]);
     evaluator.at(logPrices, data.logTotal[t], own);
+    if (Number.isNaN(evaluator.shares[0])) {
+      without.rows++;
+      without.weight += data.weights ? data.weights[t] : 1;
+      return;
+    }
     const responses = responsesFrom(fitted.form, heldBy(evaluator), logPrices, rowOptions);
     sums.add(responses, weight);
     for (const i of goods) if (!(responses.shares[i] > 0)) below[i]++;
@@ -91,13 +96,7 @@ function overGroup(
   };
   rows.forEach((t, at) => {
     passed();
-    try {
-      add(t, at % every === every >> 1);
-    } catch (error) {
-      // What a system does not define at a row (LA-AIDS far from its base prices) says so itself, without the row.
-      if (!(error instanceof RangeError)) throw error;
-      throw new Refusal([{ sentence: `Row ${data.rowNumbers[t]}: ${error.message}.`, row: data.rowNumbers[t] }]);
-    }
+    add(t, at % every === every >> 1);
   });
   const about = {
     name,
@@ -105,11 +104,22 @@ function overGroup(
     weightShare: weightOver(rows, data.weights) / weightOver(undefined, data.weights, data.rows),
     total: meanOver(data.logTotal.map(Math.exp), rows, data.weights) * data.totalScale,
   };
+  const notDefined = whyNotDefined(fitted.form);
+  if (without.rows === rows.length) {
+    return { ...about, undefined: `The system is not defined in any of the rows: ${notDefined}.` };
+  }
   const responses = sums.result();
   const reason = notPositive(responses.shares, fitted.goods, shares);
   if (reason !== undefined) return { ...about, undefined: reason };
   return {
     ...about,
+    ...(without.rows > 0 && {
+      notDefined: {
+        rows: without.rows,
+        weightedShare: without.weight / weightOver(rows, data.weights),
+        reason: notDefined,
+      },
+    }),
     notPositive: goods.flatMap((i) => (below[i] > 0 ? [{ good: fitted.goods[i], rows: below[i] }] : [])),
     ...evaluatedGroup(fitted, { responses, gradients: gradients.result() }, level),
   };

@@ -21,7 +21,7 @@ export function runSlutsky(
   const { priceScale, totalScale } = data;
   const { point, pointName } = pointOf(specification.at, system, data);
   const options = { priceScale, totalScale, pointName };
-  const at = refusingRanges(() => matrixAt(fitted, point, options));
+  const at = refusingRanges(() => matrixAt(fitted, point, options), pointName);
   const { sample, brokenRows } = negativityOverRows(fitted, data, control);
   return slutskyFinding.parse({
     kind: "slutsky",

@@ -35,8 +35,12 @@ export function runSystem(given: SystemSpecification, data: PreparedData, contro
   const mean = meanPoint(data, fitted.demographics);
   // What is not normalised is nowhere near p = x = 1: then the head of the finding stands at the sample mean.
   const [point, pointName] = data.finding.normalise === "mean" ? [base, "base point"] : [mean, "mean"];
+  const at = refusingRanges(
+    () => ({ ...elasticitiesAt(fitted, point), checks: theoryChecksAt(fitted, point, pointName) }),
+    pointName,
+  );
   return refusingRanges(() => {
-    const { expenditure, expenditureErrors } = elasticitiesAt(fitted, point);
+    const { expenditure, expenditureErrors, checks } = at;
     const expenditureOfLes = expenditureReport(fitted, data, point);
     return systemFinding.parse({
       ...estimate,
@@ -49,7 +53,7 @@ export function runSystem(given: SystemSpecification, data: PreparedData, contro
         standardError: expenditureErrors[i],
       })),
       engel: engelCurves(fitted, data, mean),
-      checks: { ...theoryChecksAt(fitted, point, pointName), sample: checkSample(fitted, data, control) },
+      checks: { ...checks, sample: checkSample(fitted, data, control) },
     });
   });
 }
@@ -75,22 +79,30 @@ export function momentsOf(data: PreparedData, request: MomentsRequest, control: 
   MOMENTS.set(data, kept);
   const moments = kept.get(request.key) ?? accumulateMoments(data, request, control);
   kept.set(request.key, moments);
-  // An object of its own for each run: what an estimation keeps with its moments would let the last digits of
-  // the next one's tests depend on which came first.
-  return { ...moments };
+  return moments;
 }
 
 const CURVE_POINTS = 25;
 
 /**
- * Predicted shares against ln x at mean prices and demographics, from the 1st to the 99th percentile of ln x; none
- * in a system in differences.
+ * Predicted shares against ln x at mean prices and demographics, from the 1st to the 99th percentile of ln x, where the
+ * system is defined; none in a system in differences.
  */
 function engelCurves(fitted: FittedCoefficients, data: PreparedData, mean: Point): SystemFinding["engel"] {
   const { system, size } = systemOf(fitted);
   if (system.kind === "differences") return { logTotal: [], shares: fitted.goods.map(() => []) };
   const [low, high] = weightedQuantiles(data.logTotal, [0.01, 0.99], data.weights);
   const logTotal = Array.from({ length: CURVE_POINTS }, (_, i) => low + ((high - low) * i) / (CURVE_POINTS - 1));
-  const curves = logTotal.map((log) => system.slopes(fitted.theta, size, { ...mean, total: Math.exp(log) }).shares);
-  return { logTotal, shares: fitted.goods.map((_, i) => curves.map((shares) => shares[i])) };
+  const evaluator = system.evaluator(fitted.theta, size);
+  const logPrices = mean.prices.map(Math.log);
+  const curves = logTotal.flatMap((log) => {
+    evaluator.at(logPrices, log, mean.demographics);
+    return Number.isNaN(evaluator.shares[0]) ? [] : [{ log, shares: Array.from(evaluator.shares) }];
+  });
+  // One point is no curve.
+  if (curves.length < 2) return { logTotal: [], shares: fitted.goods.map(() => []) };
+  return {
+    logTotal: curves.map(({ log }) => log),
+    shares: fitted.goods.map((_, i) => curves.map(({ shares }) => shares[i])),
+  };
 }

@@ -8,12 +8,23 @@ type BrokenRow = SlutskyFinding["brokenRows"][number];
 const FIRST = 5;
 
 function also(row: BrokenRow): string {
+  if (row.notDefined !== undefined) return `not defined: ${row.notDefined}`;
   if (!row.breaks.includes("monotonicity")) return "";
-  const which = row.lowestShare < 0 ? "a share below 0" : "a share above 1";
+  const which = (row.lowestShare ?? 0) < 0 ? "a share below 0" : "a share above 1";
   return row.breaks.includes("negativity") ? `monotonicity breaks, ${which}` : `monotonicity only, ${which}`;
 }
 
-/** The rows of the upload where a law breaks, worst first. */
+function eigenvalueOf({ largestEigenvalue, notDefined }: BrokenRow): string {
+  if (largestEigenvalue !== undefined) return printFixed(largestEigenvalue, DECIMALS.entry);
+  return notDefined === undefined ? "not stated" : "";
+}
+
+function sharesOf({ lowestShare, highestShare }: BrokenRow): string {
+  if (lowestShare === undefined || highestShare === undefined) return "none";
+  return `${printFixed(lowestShare, 3)}, ${printFixed(highestShare, 3)}`;
+}
+
+/** The rows of the upload where the system is not defined or a law breaks, worst first. */
 export function BrokenRows({ rows, total }: { rows: readonly BrokenRow[]; total: number }) {
   const [all, setAll] = useState(false);
   const shown = all ? rows : rows.slice(0, FIRST);
@@ -44,9 +55,9 @@ export function BrokenRows({ rows, total }: { rows: readonly BrokenRow[]; total:
           head: printCount(row.row),
           cells: [
             printFixed(row.total, DECIMALS.money),
-            row.largestEigenvalue === undefined ? "not stated" : printFixed(row.largestEigenvalue, DECIMALS.entry),
+            eigenvalueOf(row),
             listWords(row.goods),
-            `${printFixed(row.lowestShare, 3)}, ${printFixed(row.highestShare, 3)}`,
+            sharesOf(row),
             also(row),
           ],
         }))}

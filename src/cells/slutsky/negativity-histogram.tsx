@@ -55,13 +55,14 @@ function BreakWords({ sample, listed, x, room, holds }: BreakWordsProps) {
   const ticks = listed === sample.breaks ? "each a tick" : listed > 0 ? `${printCount(listed)} ticked` : "";
   const rows = `${printCount(sample.breaks)} of ${printCount(sample.rows)} rows`;
   const lines = room < 220 ? [rows, ticks] : [[rows, ticks].filter(Boolean).join(", ")];
+  if (sample.undefined) lines.push(`${printCount(sample.undefined.rows)} not defined, in no bar`);
   return (
     <g>
       <text x={x - 14} y="58" textAnchor="end" fontWeight="600" fill="var(--ink)">
         {printPercent(holds)} hold
       </text>
       <text x={x + 12} y="58" fontWeight="600" fill="var(--ink)" {...CLEAR}>
-        {printPercent(1 - holds)} break
+        {printPercent(1 - holds - (sample.undefined?.weightedShare ?? 0))} break
       </text>
       {lines.map((line, index) => (
         <text key={line} x={x + 12} y={75 + 16 * index} fill="var(--ink2)" {...CLEAR}>
@@ -90,7 +91,7 @@ export function NegativityHistogram({ sample, brokenRows, holds }: HistogramProp
   const nought = scale.at(0);
   const { ticks, decimals } = roundTicks(scale.from, scale.to, width < 420 ? 4 : 6);
   const listed = brokenRows.filter((row) => row.breaks.includes("negativity")).length;
-  const label = `Histogram of the largest eigenvalue over ${printCount(sample.rows)} rows: ${printPercent(holds)} hold, ${printCount(sample.breaks)} break`;
+  const label = `Histogram of the largest eigenvalue over ${printCount(sample.rows)} rows: ${printPercent(holds)} hold, ${printCount(sample.breaks)} break${sample.undefined ? `, ${printCount(sample.undefined.rows)} not defined` : ""}`;
   return (
     <div ref={ref}>
       <svg

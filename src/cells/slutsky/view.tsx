@@ -46,7 +46,8 @@ export function SlutskyBand({ finding }: BandProps<"slutsky">) {
 /** The matrix in full: every entry's reading, eigenvalues, negativity over the sample, and where it breaks. */
 export function SlutskyOpen({ finding }: OpenProps<"slutsky">) {
   const sample = finding.at.checks.sample;
-  const broken = sample?.regular?.breaks ?? sample?.monotonicity.breaks ?? 0;
+  const monotone = (sample?.monotonicity.breaks ?? 0) + (sample?.undefined?.rows ?? 0);
+  const broken = sample?.regular?.breaks ?? monotone;
   return (
     <div className="space-y-6">
       <OpenHead sentence={slutskySentence(finding)}>
