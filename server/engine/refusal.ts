@@ -14,3 +14,20 @@ export class Refusal extends Error {
     this.problems = list;
   }
 }
+
+/** Why something was refused, where what asked for it goes on without. */
+export interface Refused {
+  readonly refused: string;
+}
+
+/** What `find` returns or, where it is refused, what `otherwise` makes of that: the reason. Other errors go on. */
+export function unlessRefused<T>(find: () => T): T | Refused;
+export function unlessRefused<T, U>(find: () => T, otherwise: (refusal: Refusal) => U): T | U;
+export function unlessRefused<T, U>(find: () => T, otherwise?: (refusal: Refusal) => U): T | U | Refused {
+  try {
+    return find();
+  } catch (error) {
+    if (!(error instanceof Refusal)) throw error;
+    return otherwise ? otherwise(error) : { refused: error.message };
+  }
+}

@@ -9,10 +9,9 @@ import {
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { withTimeTerms } from "../columns/seasonal-terms.ts";
 import { momentsRequest } from "../estimation/index.ts";
-import { unlessRefused } from "../estimation/nested-fits.ts";
 import { type Purchases, revealedPreference } from "../inference/revealed-preference.ts";
 import { systemTests } from "../inference/system-tests.ts";
-import { Refusal } from "../refusal.ts";
+import { Refusal, unlessRefused } from "../refusal.ts";
 import { QUIET, type RunControl } from "../run.ts";
 import { momentsOf } from "./system.ts";
 

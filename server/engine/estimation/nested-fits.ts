@@ -2,7 +2,7 @@ import type { SystemSpecification } from "../../../shared/schemas/system.ts";
 import type { DemandSystem, SystemSize } from "../../../shared/systems/demand-system.ts";
 import type { RestrictionName } from "../../../shared/systems/names.ts";
 import type { NestedFits, RefusedFit } from "../inference/restriction-tests.ts";
-import { Refusal } from "../refusal.ts";
+import { unlessRefused } from "../refusal.ts";
 import type { RunControl } from "../run.ts";
 import { expand, systemForm } from "./coefficient-form.ts";
 import type { Estimation } from "./estimation.ts";
@@ -10,6 +10,7 @@ import { maximumLikelihood } from "./estimators.ts";
 import { fitMeasures } from "./fit-measures.ts";
 import { minimise, type Solution } from "./minimise.ts";
 import type { Moments } from "./moments.ts";
+import { meanResponses } from "./responses.ts";
 import { fitNearby, nearbyEstimation } from "./start.ts";
 
 /**
@@ -23,8 +24,13 @@ interface Likelihood {
   readonly freeCoefficients: number;
 }
 
-/** Likelihoods already found from the same moments, or why the data allow no such fit. */
-const known = new WeakMap<Moments, Map<string, Likelihood | RefusedFit>>();
+type Fit = Likelihood & { readonly theta: readonly number[] };
+
+/**
+ * Fits already made of the same terms, or why the data allow none. None depends on the specification that asked for
+ * it first, so that no test can tell what was estimated before it.
+ */
+const known = new WeakMap<object, Map<string, Fit | RefusedFit>>();
 
 const NESTED: Readonly<Record<Exclude<keyof NestedFits, "quadratic">, readonly RestrictionName[]>> = {
   unrestricted: [],
@@ -33,9 +39,10 @@ const NESTED: Readonly<Record<Exclude<keyof NestedFits, "quadratic">, readonly R
 };
 
 /**
- * Maximum likelihood of the system unrestricted, homogeneous, and homogeneous and symmetric, all from
- * the moments at hand; likelihoods only, kept for the next specification that asks. The last good is
- * dropped, whichever the specification drops: no likelihood depends on it.
+ * Maximum likelihood of the system homogeneous and symmetric, homogeneous, and unrestricted, each from the one
+ * before and all from the moments at hand; kept for the next specification that asks. The last good is dropped,
+ * whichever the specification drops: no likelihood depends on it. Where every iteration reads the rows they start
+ * from θ of the specification instead, and are kept no longer than it.
  */
 export function nestedFits(
   estimation: Estimation,
@@ -45,21 +52,28 @@ export function nestedFits(
   theta: readonly number[],
   control: RunControl,
 ): NestedFits {
+  const { moments } = estimation;
   const equations = allButLast(estimation);
-  const under = (impose: readonly RestrictionName[]) =>
-    remembered(estimation.moments, keyOf(specification, impose), () => {
+  const under = (impose: readonly RestrictionName[], near: readonly number[] | undefined) =>
+    remembered(moments, keyOf(specification, impose), () => {
       const form = systemForm(system, size, impose);
-      const start = form.expand.places.map((place) => theta[place]);
       const nested: Estimation = { ...estimation, equations, form };
-      const solution = fromNearby(nested, start, control, FOR_LIKELIHOOD);
-      return { logLikelihood: fitMeasures(nested, solution).logLikelihood, freeCoefficients: form.free };
+      const from = near ?? system.start(size, meanResponses(nested));
+      const start = form.expand.places.map((place) => from[place]);
+      const solution = near
+        ? fromNearby(nested, start, control, FOR_LIKELIHOOD)
+        : maximumLikelihood(nested, true, start, "newton", control);
+      return fitOf(nested, solution);
     });
-  const own = under(specification.impose);
+  const near = moments.local && theta;
+  const own = hasQuadraticTerms(system) ? under(specification.impose, near) : undefined;
+  const symmetry = size.goods > 2 ? under(NESTED.symmetry, near) : undefined;
+  const homogeneity = under(NESTED.homogeneity, near ?? thetaOf(symmetry));
   return {
-    unrestricted: under(NESTED.unrestricted),
-    homogeneity: under(NESTED.homogeneity),
-    ...(size.goods > 2 && { symmetry: under(NESTED.symmetry) }),
-    ...(hasQuadraticTerms(system) && {
+    unrestricted: under(NESTED.unrestricted, near ?? thetaOf(homogeneity)),
+    homogeneity,
+    ...(symmetry && { symmetry }),
+    ...(own && {
       quadratic: {
         wide: own,
         narrow: unlessRefused(() => fitWithoutLocal(estimation, system, size, specification, control)),
@@ -67,6 +81,13 @@ export function nestedFits(
     }),
   };
 }
+
+function fitOf(estimation: Estimation, solution: Solution): Fit {
+  const { logLikelihood } = fitMeasures(estimation, solution);
+  return { logLikelihood, freeCoefficients: estimation.form.free, theta: solution.theta };
+}
+
+const thetaOf = (fit: Fit | RefusedFit | undefined) => (fit && "theta" in fit ? fit.theta : undefined);
 
 const hasQuadraticTerms = (system: DemandSystem) => system.blocks.some(({ name }) => name === "lambda");
 
@@ -87,13 +108,13 @@ function fitWithoutLocal(
   return { logLikelihood, freeCoefficients: nearby.form.free };
 }
 
-/** Keeps the likelihood of a fit by maximum likelihood, so that the tests need not find it again. */
-export function rememberFit(estimation: Estimation, specification: SystemSpecification, logLikelihood: number): void {
-  if (estimation.equations.join() !== allButLast(estimation).join()) return;
-  remembered(estimation.moments, keyOf(specification, specification.impose), () => ({
-    logLikelihood,
-    freeCoefficients: estimation.form.free,
-  }));
+/** Keeps a fit of the specification for its tests, where `nestedFits` would make it the same way. */
+export function rememberFit(estimation: Estimation, specification: SystemSpecification, solution: Solution): void {
+  const { moments, equations } = estimation;
+  if (specification.estimator !== "maximum likelihood" || equations.join() !== allButLast(estimation).join()) return;
+  const key = keyOf(specification, specification.impose);
+  if (moments.local === undefined && key !== keyOf(specification, NESTED.symmetry)) return;
+  remembered(moments, key, () => fitOf(estimation, solution));
 }
 
 function allButLast({ moments }: Estimation): number[] {
@@ -115,29 +136,20 @@ export function fromNearby(
   // Moments that move with θ are kept where the fit nearby ended, all but its last step.
   const from = local ? local.kept(expand(form, start)) : undefined;
   const free = from ? form.places.map((place) => from[place]) : start;
-  try {
-    return minimise(nested, { kind: "likelihood", step: "newton" }, free, control, local ? tolerance : undefined);
-  } catch (error) {
-    if (error instanceof Refusal) return maximumLikelihood(nested, true, start, "newton", control);
-    throw error;
-  }
+  return unlessRefused(
+    () => minimise(nested, { kind: "likelihood", step: "newton" }, free, control, local ? tolerance : undefined),
+    () => maximumLikelihood(nested, true, start, "newton", control),
+  );
 }
 
-function remembered(moments: Moments, key: string, find: () => Likelihood): Likelihood | RefusedFit {
-  if (!known.has(moments)) known.set(moments, new Map());
-  const fits = known.get(moments)!;
-  if (!fits.has(key)) fits.set(key, unlessRefused(find));
-  return fits.get(key)!;
-}
-
-/** A wider model may not be identified where the one asked for is: then there is no test but a reason, and no failure. */
-export function unlessRefused<T>(find: () => T): T | RefusedFit {
-  try {
-    return find();
-  } catch (error) {
-    if (error instanceof Refusal) return { refused: error.message };
-    throw error;
-  }
+function remembered({ local, terms }: Moments, key: string, find: () => Fit): Fit | RefusedFit {
+  const of = local ?? terms;
+  const fits = known.get(of) ?? new Map<string, Fit | RefusedFit>();
+  known.set(of, fits);
+  // A wider model may not be identified where the one asked for is: then there is no test but a reason, and no failure.
+  const fit = fits.get(key) ?? unlessRefused(find);
+  fits.set(key, fit);
+  return fit;
 }
 
 function keyOf({ form, alpha0 }: SystemSpecification, impose: readonly string[]): string {

@@ -1,6 +1,6 @@
 import type { SystemSpecification } from "../../../shared/schemas/system.ts";
 import type { DemandSystem, SystemSize } from "../../../shared/systems/demand-system.ts";
-import { Refusal } from "../refusal.ts";
+import { unlessRefused } from "../refusal.ts";
 import type { RunControl } from "../run.ts";
 import { systemForm } from "./coefficient-form.ts";
 import type { Estimation } from "./estimation.ts";
@@ -26,31 +26,31 @@ export function solve(
   control: RunControl,
 ): Solution {
   const theta = startOf(system, size, specification.impose, estimation, control);
-  if (estimation.moments.local !== undefined) {
+  if (estimation.moments.local !== undefined && maximisesLikelihood(specification)) {
     // Every iteration reads the rows: from the maximum of the form estimated first it goes straight on.
     const step = specification.estimator === "iterated seemingly unrelated" ? "update" : "newton";
-    const straight = straightToLikelihood(theta, specification, estimation, step, control);
+    const straight = unlessRefused(
+      () => straightToLikelihood(theta, estimation, step, control),
+      () => undefined,
+    );
     if (straight !== undefined) return straight;
   }
   return solveFrom(theta, specification, system, size, estimation, control);
 }
 
-/** Absent where the estimator does not maximise the likelihood, or where the straight way fails. */
+/** Iterated seemingly unrelated regressions end where maximum likelihood does. */
+function maximisesLikelihood({ estimator }: SystemSpecification): boolean {
+  return estimator === "iterated seemingly unrelated" || estimator === "maximum likelihood";
+}
+
 function straightToLikelihood(
   theta: readonly number[],
-  { estimator }: SystemSpecification,
   estimation: Estimation,
   step: "newton" | "update",
   control: RunControl,
-): Solution | undefined {
-  if (estimator === "least squares" || estimator === "seemingly unrelated") return undefined;
-  try {
-    const start = estimation.form.expand.places.map((place) => theta[place]);
-    return minimise(estimation, { kind: "likelihood", step }, start, control);
-  } catch (error) {
-    if (error instanceof Refusal) return undefined;
-    throw error;
-  }
+): Solution {
+  const start = estimation.form.expand.places.map((place) => theta[place]);
+  return minimise(estimation, { kind: "likelihood", step }, start, control);
 }
 
 function solveFrom(
@@ -80,8 +80,8 @@ function solveFrom(
 }
 
 /**
- * The same estimator from a solution nearby, θ: straight to the likelihood (iterated seemingly unrelated
- * regressions end at the same solution as maximum likelihood), and the long way only where that fails.
+ * The same estimator from a solution nearby, θ: straight to the likelihood where the estimator maximises it, and the
+ * long way only where that fails.
  */
 export function solveNear(
   theta: readonly number[],
@@ -91,15 +91,11 @@ export function solveNear(
   estimation: Estimation,
   control: RunControl,
 ): Solution {
-  const { estimator } = specification;
-  try {
-    if (estimator === "least squares" || estimator === "seemingly unrelated") {
-      return solveFrom(theta, specification, system, size, estimation, control);
-    }
-    const start = estimation.form.expand.places.map((place) => theta[place]);
-    return minimise(estimation, { kind: "likelihood", step: "newton" }, start, control);
-  } catch (error) {
-    if (error instanceof Refusal) return solve(specification, system, size, estimation, control);
-    throw error;
-  }
+  return unlessRefused(
+    () =>
+      maximisesLikelihood(specification)
+        ? straightToLikelihood(theta, estimation, "newton", control)
+        : solveFrom(theta, specification, system, size, estimation, control),
+    () => solve(specification, system, size, estimation, control),
+  );
 }

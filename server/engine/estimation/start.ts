@@ -1,6 +1,6 @@
 import type { CoefficientPlace, DemandSystem, SystemSize } from "../../../shared/systems/demand-system.ts";
 import type { RestrictionName } from "../../../shared/systems/names.ts";
-import { Refusal } from "../refusal.ts";
+import { unlessRefused } from "../refusal.ts";
 import type { RunControl } from "../run.ts";
 import { systemForm } from "./coefficient-form.ts";
 import type { Estimation } from "./estimation.ts";
@@ -39,17 +39,14 @@ function nearbyTheta(
 ): readonly number[] {
   const theta = system.moments.local!.from.start(size, meanResponses(nearby));
   const start = nearby.form.expand.places.map((place) => theta[place]);
-  for (const attempt of [
-    () => fitNearby(system, size, nearby, control),
-    () => leastSquares(nearby, true, start, control),
-  ]) {
-    try {
-      return attempt().theta;
-    } catch (error) {
-      if (!(error instanceof Refusal)) throw error;
-    }
-  }
-  return theta;
+  return unlessRefused(
+    () => fitNearby(system, size, nearby, control).theta,
+    () =>
+      unlessRefused(
+        () => leastSquares(nearby, true, start, control).theta,
+        () => theta,
+      ),
+  );
 }
 
 /**

@@ -3,7 +3,7 @@ import type { MadeTest } from "../../../shared/schemas/tests.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { constrainedForm } from "../estimation/coefficient-form.ts";
 import { estimateExactEasi } from "../estimation/easi/exact.ts";
-import { Refusal } from "../refusal.ts";
+import { unlessRefused } from "../refusal.ts";
 import type { RunControl } from "../run.ts";
 import type { Hypothesis } from "./hypotheses.ts";
 import type { Model } from "./model-fits.ts";
@@ -26,29 +26,22 @@ export function testExactEasi(
 ): MadeTest {
   const equations = Array.from({ length: size.goods - 1 }, (_, equation) => equation);
   const form = constrainedForm(system, size, wide);
-  const wald = (): MadeTest["wald"] => {
-    try {
-      const { theta, covariance } = estimateExactEasi(
-        specification,
-        data,
-        size,
-        { moments, form, equations, coefficientLabels },
-        control,
-      );
+  const wald = unlessRefused(
+    () => {
+      const estimation = { moments, form, equations, coefficientLabels };
+      const { theta, covariance } = estimateExactEasi(specification, data, size, estimation, control);
       const free = wide.places.map((place) => theta[place]);
       const ofFree = wide.places.map((a) => wide.places.map((b) => covariance[a][b]));
       return waldTest(free, ofFree, nestedForm(wide, narrow));
-    } catch (error) {
-      if (error instanceof Refusal) return { absent: `Without the restriction there is no fit: ${error.message}` };
-      throw error;
-    }
-  };
+    },
+    ({ message }) => ({ absent: `Without the restriction there is no fit: ${message}` }),
+  );
   return {
     hypothesis,
     ...(column !== undefined && { column }),
     given: [...given],
     degreesOfFreedom: wide.places.length - narrow.places.length,
-    wald: wald(),
+    wald,
     likelihoodRatio: { absent: ABSENT },
     score: { absent: ABSENT },
     corrected: { absent: ABSENT },

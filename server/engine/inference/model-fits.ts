@@ -4,7 +4,8 @@ import type { Estimation } from "../estimation/estimation.ts";
 import { fitMeasures } from "../estimation/fit-measures.ts";
 import type { Solution } from "../estimation/minimise.ts";
 import type { Moments } from "../estimation/moments.ts";
-import { fromNearby, unlessRefused } from "../estimation/nested-fits.ts";
+import { fromNearby } from "../estimation/nested-fits.ts";
+import { unlessRefused } from "../refusal.ts";
 import type { RunControl } from "../run.ts";
 import type { RefusedFit } from "./restriction-tests.ts";
 

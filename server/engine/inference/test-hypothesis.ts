@@ -2,7 +2,7 @@ import { chiSquareTail } from "../../../shared/numerics/distributions.ts";
 import type { ChiSquareStatistic, MadeTest, UnmadeTest } from "../../../shared/schemas/tests.ts";
 import type { FreeForm } from "../../../shared/systems/demand-system.ts";
 import type { RestrictionName } from "../../../shared/systems/names.ts";
-import { unlessRefused } from "../estimation/nested-fits.ts";
+import { unlessRefused } from "../refusal.ts";
 import type { RunControl } from "../run.ts";
 import { equationTests } from "./equation-tests.ts";
 import type { Hypothesis } from "./hypotheses.ts";

@@ -40,6 +40,14 @@ export function columnFactor(
   return triangle;
 }
 
+/** R of the constant and the regressors alone: without the response that stands last. */
+export function ofRegressors(triangle: Columns): Columns {
+  const size = triangle.columns - 1;
+  const upper = zeros(size, size);
+  for (let j = 0; j < size; j++) upper.values.set(columnOf(triangle, j).subarray(0, size), j * size);
+  return upper;
+}
+
 /** A column whose part orthogonal to those before it is below this, relative to its deviations, is dependent on them. */
 const DEPENDENT = 1e-10;
 /** Deviations below this, relative to the mean, are rounding: the column is constant. */

@@ -5,7 +5,7 @@ import type { SystemSpecification } from "../../../../shared/schemas/system.ts";
 import type { DemandSystem, SystemSize } from "../../../../shared/systems/demand-system.ts";
 import type { PreparedData } from "../../columns/prepared-data.ts";
 import { withoutCoefficients } from "../../inference/nested-form.ts";
-import { Refusal } from "../../refusal.ts";
+import { unlessRefused } from "../../refusal.ts";
 import type { RunControl } from "../../run.ts";
 import { constrainedForm } from "../coefficient-form.ts";
 import type { Estimation } from "../estimation.ts";
@@ -85,18 +85,18 @@ function likelihoodRatioOf(fit: ExtendedFit, control: RunControl): { statistic: 
   const restricted = constrainedForm(system, size, withoutCoefficients(estimation.form.expand, zero));
   const start = restricted.expand.places.map((place) => solution.theta[place]);
   const likely = { kind: "likelihood", step: "newton" } as const;
-  try {
-    const isMaximum = specification.estimator === "maximum likelihood";
-    const wide = isMaximum ? solution : minimise(estimation, likely, solution.free, control);
-    const narrow = { ...estimation, form: restricted };
-    const difference =
-      fitMeasures(estimation, wide).logLikelihood -
-      fitMeasures(narrow, minimise(narrow, likely, start, control)).logLikelihood;
-    // A difference below zero is rounding of two equal likelihoods.
-    const statistic = Math.max(0, 2 * difference);
-    return { statistic, pValue: chiSquareTail(statistic, data.goods.length - 1) };
-  } catch (error) {
-    if (error instanceof Refusal) return undefined;
-    throw error;
-  }
+  return unlessRefused(
+    () => {
+      const isMaximum = specification.estimator === "maximum likelihood";
+      const wide = isMaximum ? solution : minimise(estimation, likely, solution.free, control);
+      const narrow = { ...estimation, form: restricted };
+      const difference =
+        fitMeasures(estimation, wide).logLikelihood -
+        fitMeasures(narrow, minimise(narrow, likely, start, control)).logLikelihood;
+      // A difference below zero is rounding of two equal likelihoods.
+      const statistic = Math.max(0, 2 * difference);
+      return { statistic, pValue: chiSquareTail(statistic, data.goods.length - 1) };
+    },
+    () => undefined,
+  );
 }

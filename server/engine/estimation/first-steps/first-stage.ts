@@ -4,7 +4,7 @@ import type { PreparedData } from "../../columns/prepared-data.ts";
 import { Refusal } from "../../refusal.ts";
 import { type Columns, columnOf } from "../columns.ts";
 import { invertUpper, solveUpper } from "../triangle.ts";
-import { columnFactor, dependentRegressor, type Regressor } from "./column-factor.ts";
+import { columnFactor, dependentRegressor, ofRegressors, type Regressor } from "./column-factor.ts";
 import { namedColumns } from "./named-columns.ts";
 
 /** The regression of ln x on what explains it. */
@@ -79,7 +79,7 @@ function regress(data: PreparedData, { instruments, demographics }: FirstStageCo
   refuseDependent(triangle, regressors, excluded.length);
   const estimates = columnOf(triangle, count).slice(0, count);
   const projected = estimates.slice();
-  const upper = leading(triangle, count);
+  const upper = ofRegressors(triangle);
   solveUpper(upper, estimates);
   const left = triangle.values[count * triangle.rows + count];
   const squares = left * left;
@@ -128,12 +128,6 @@ function refuseDependent(triangle: Columns, regressors: readonly Regressor[], in
       ? `The instrument ${label} is an exact linear combination of ${others}: it brings nothing of its own.`
       : `The first stage is singular: ${label} is an exact linear combination of the regressors before it.`,
   );
-}
-
-function leading(triangle: Columns, size: number): Columns {
-  const values = new Float64Array(size * size);
-  for (let j = 0; j < size; j++) values.set(columnOf(triangle, j).subarray(0, size), j * size);
-  return { rows: size, columns: size, values };
 }
 
 function rowSquares({ rows, columns, values }: Columns, row: number): number {

@@ -1,8 +1,8 @@
 import { normalDensity, normalProbability } from "../../../../shared/numerics/normal-tail.ts";
 import type { PreparedData } from "../../columns/prepared-data.ts";
 import { Refusal } from "../../refusal.ts";
-import { type Columns, columnOf, zeros } from "../columns.ts";
-import { columnFactor, dependentRegressor, type Regressor } from "./column-factor.ts";
+import type { Columns } from "../columns.ts";
+import { columnFactor, dependentRegressor, ofRegressors, type Regressor } from "./column-factor.ts";
 import { namedColumns } from "./named-columns.ts";
 import { type Probit, probit } from "./probit.ts";
 
@@ -123,9 +123,7 @@ function factorOf(data: PreparedData, regressors: readonly Regressor[]): Columns
         : `The regressor ${label} of the probits is an exact linear combination of the constant and those before it.`,
     );
   }
-  const upper = zeros(size, size);
-  for (let j = 0; j < size; j++) upper.values.set(columnOf(triangle, j).subarray(0, size), j * size);
-  return upper;
+  return ofRegressors(triangle);
 }
 
 function weightOf(shares: Float64Array, weights: Float64Array | undefined): number {

@@ -12,7 +12,7 @@ import { type Moments, type ReductionPlan, reduceRows } from "../../estimation/m
 import { momentsRequest, sourceOf } from "../../estimation/request.ts";
 import { solveNear } from "../../estimation/solve.ts";
 import { specifiedSystem } from "../../estimation/specified-system.ts";
-import { Refusal } from "../../refusal.ts";
+import { Refusal, type Refused, unlessRefused } from "../../refusal.ts";
 import type { RunControl } from "../../run.ts";
 import { task } from "../../threads/map-in-order.ts";
 import type { ClusterMoments } from "../cluster-moments.ts";
@@ -50,27 +50,18 @@ export interface ReplicateWork {
 }
 
 /** θ* of a replicate, or why it has none. */
-export type Replicate = { readonly theta: number[] } | { readonly refused: string };
+export type Replicate = { readonly theta: number[] } | Refused;
 
 export const replicateTask = task(
   import.meta.url,
   "replicateTask",
   (work: ReplicateWork, replicate: number, control: RunControl): Replicate =>
-    attempt(() => {
-      if (work.drawable.kind === "data") return reestimateData(work, work.drawable, replicate, control);
-      return reestimate(work, drawnMoments(work, work.drawable, replicate, control), control);
+    // One replicate's failure is none of the others'.
+    unlessRefused(() => {
+      if (work.drawable.kind === "data") return { theta: reestimateData(work, work.drawable, replicate, control) };
+      return { theta: reestimate(work, drawnMoments(work, work.drawable, replicate, control), control) };
     }),
 );
-
-/** What `find` returns, or the sentence it is refused with: one replicate's failure is none of the others'. */
-function attempt(find: () => number[]): Replicate {
-  try {
-    return { theta: find() };
-  } catch (error) {
-    if (error instanceof Refusal) return { refused: error.message };
-    throw error;
-  }
-}
 
 /** The moments of replicate number `replicate`. */
 function drawnMoments(
