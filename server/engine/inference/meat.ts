@@ -22,7 +22,9 @@ class OuterProducts {
     multiplyAccumulate(scores, BLOCK_ROWS, count, this.plan, this.sums);
   }
 
+  /** Errors: `RangeError` for a score that is no number, which a covariance would take for no variance. */
   matrix(): Columns {
+    if (!this.sums.every(Number.isFinite)) throw new RangeError("a score is not a finite number");
     return this.plan.columns === 0 ? zeros(0, 0) : momentMatrix(this.plan, this.sums);
   }
 }
