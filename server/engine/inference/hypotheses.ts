@@ -116,6 +116,13 @@ const ABSENT = {
   exogeneity: "names no instruments, so that nothing can tell whether its total expenditure is exogenous",
 } as const;
 
+function absence({ system, size }: Asked, hypothesis: keyof typeof ABSENT): string {
+  const degree = hypothesis === "quadratic terms" ? (size.easi?.degree ?? 1) : 1;
+  return degree > 1
+    ? `Quadratic terms are those of the quadratic almost ideal system; powers of real expenditure up to ${degree} in the ${system.longName} are not tested here.`
+    : `The ${system.longName} as specified ${ABSENT[hypothesis]}.`;
+}
+
 /** Whether a block of coefficients is nought. */
 function blockTest(
   asked: Asked,
@@ -125,6 +132,6 @@ function blockTest(
 ): Hypothesis | UnmadeTest {
   const layout = asked.system.layout(asked.size);
   const zero = new Set(layout.flatMap((place, a) => (place.block === block ? [a] : [])));
-  if (zero.size === 0) return nothing(hypothesis, `The ${asked.system.longName} as specified ${ABSENT[hypothesis]}.`);
+  if (zero.size === 0) return nothing(hypothesis, absence(asked, hypothesis));
   return { hypothesis, given: maintained(asked), wide, narrow: withoutCoefficients(wide, zero) };
 }
