@@ -49,11 +49,12 @@ export function constrainedForm(
   size: SystemSize,
   form: FreeForm,
 ): CoefficientForm {
+  const links = linksOf(form);
   return {
     free: form.places.length,
     expand: form,
     coefficients: (free) => system.moments.coefficients(expand(form, free), size),
-    derivatives: (free) => throughRestrictions(system.moments.derivatives(expand(form, free), size), form),
+    derivatives: (free) => throughRestrictions(system.moments.derivatives(expand(form, free), size), form, links),
   };
 }
 
@@ -88,16 +89,24 @@ export function linearForm(
 
 export function throughRestrictions(
   byCoefficient: readonly (readonly Entry[])[],
-  { matrix, places }: Pick<FreeForm, "matrix" | "places">,
+  form: Pick<FreeForm, "matrix" | "places">,
+  links: Links = linksOf(form),
 ): Entry[][] {
-  const byFree: Entry[][] = places.map(() => []);
+  const byFree: Entry[][] = form.places.map(() => []);
   byCoefficient.forEach((entries, a) => {
-    matrix[a].forEach((weight, f) => {
-      if (weight === 0) return;
-      for (const [equation, term, value] of entries) byFree[f].push([equation, term, weight * value]);
-    });
+    for (const [f, weight] of links[a]) {
+      if (weight === 1) for (const entry of entries) byFree[f].push(entry);
+      else for (const [equation, term, value] of entries) byFree[f].push([equation, term, weight * value]);
+    }
   });
   return byFree;
+}
+
+/** By coefficient of θ the free ones it depends on, each with its weight. */
+type Links = readonly (readonly (readonly [free: number, weight: number])[])[];
+
+function linksOf({ matrix }: Pick<FreeForm, "matrix">): Links {
+  return matrix.map((row) => row.flatMap((weight, f) => (weight === 0 ? [] : [[f, weight] as const])));
 }
 
 function unrestricted(count: number): FreeForm {

@@ -1,5 +1,6 @@
-import { type Columns, columnOf, crossProduct, dot, multiply, zeros } from "./columns.ts";
+import { type Columns, columnOf, crossProduct, multiply, zeros } from "./columns.ts";
 import type { Estimation } from "./estimation.ts";
+import { gram } from "./gram.ts";
 import { triangularFactor } from "./householder.ts";
 import type { Solution } from "./minimise.ts";
 import { weightBlocks } from "./residuals.ts";
@@ -31,7 +32,7 @@ export function leastSquaresCovariance(estimation: Estimation, solution: Solutio
   }
   const spread = weightBlocks(solution.jacobian, height, root);
   const inverse = inverseRoot(solution);
-  const inner = multiply(crossProduct(spread, spread), inverse);
+  const inner = multiply(gram(spread), inverse);
   const middle = semidefiniteCholesky(crossProduct(inverse, inner), 0).factor;
   return outerSquare(multiply(multiply(restrictionMatrix(estimation), inverse), transpose(middle)));
 }
@@ -76,15 +77,8 @@ function restrictionMatrix({ form }: Estimation): Columns {
 
 /** H H', exactly symmetric. */
 function outerSquare(half: Columns): number[][] {
-  const rows = transpose(half);
-  const square = Array.from({ length: half.rows }, () => new Array<number>(half.rows).fill(0));
-  for (let a = 0; a < half.rows; a++) {
-    for (let b = 0; b <= a; b++) {
-      square[a][b] = dot(columnOf(rows, a), columnOf(rows, b));
-      square[b][a] = square[a][b];
-    }
-  }
-  return square;
+  const square = gram(transpose(half));
+  return Array.from({ length: half.rows }, (_, a) => Array.from(columnOf(square, a)));
 }
 
 function transpose(matrix: Columns): Columns {

@@ -85,9 +85,7 @@ export function estimateSystem(
   const fit = { specification, data, system, size, estimation, solution, covariance, own };
   const { iterations, gradient, largestStep, condition } = solution;
   const measures = fitMeasures(estimation, solution);
-  if (specification.estimator === "maximum likelihood") {
-    rememberFit(linear, specification, curvature?.logLikelihoodWithout ?? measures.logLikelihood);
-  }
+  rememberFit(linear, specification, unbent.solution);
   const equations = equationsExplainedBy(sampleOf(specification), data, moments.rows);
   const durbin = durbinWatsonOf(specification, data, system, size, estimation, solution);
   return {

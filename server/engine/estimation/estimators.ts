@@ -1,4 +1,6 @@
 import type { RunControl } from "../run.ts";
+import { approach } from "./approach.ts";
+import type { Criterion } from "./criterion.ts";
 import type { Estimation } from "./estimation.ts";
 import { minimise, type Solution } from "./minimise.ts";
 import { equalWeights, residualCovariance } from "./weighting.ts";
@@ -50,7 +52,9 @@ export function maximumLikelihood(
   control: RunControl,
 ): Solution {
   const weight = equalWeights(estimation.equations.length, addsUp);
-  const first = minimise(estimation, { kind: "weighted", weight }, start, control, STARTING);
+  const squares: Criterion = { kind: "weighted", weight };
+  const near = approach(estimation, squares, start, control, STARTING);
+  const first = near.reached ? near : minimise(estimation, squares, start, control, STARTING);
   const solution = minimise(estimation, { kind: "likelihood", step }, first.free, control);
   return { ...solution, iterations: solution.iterations + first.iterations };
 }

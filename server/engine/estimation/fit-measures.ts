@@ -1,6 +1,7 @@
 import { columnOf, dot, pickColumns } from "./columns.ts";
+import { LOG_TWO_PI_E } from "./criterion.ts";
 import type { Estimation } from "./estimation.ts";
-import { LOG_TWO_PI_E, type Solution } from "./minimise.ts";
+import type { Solution } from "./minimise.ts";
 import { asOneColumn, weightBlocks } from "./residuals.ts";
 import { centredResponses } from "./responses.ts";
 import { residualCovariance } from "./weighting.ts";

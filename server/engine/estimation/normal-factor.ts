@@ -1,8 +1,6 @@
-import { momentMatrix } from "./accumulate-sums.ts";
 import { type Columns, columnOf, dot, zeros } from "./columns.ts";
+import { gram } from "./gram.ts";
 import { reduceToTriangle } from "./householder.ts";
-import { multiplyAccumulate } from "./multiply-accumulate.ts";
-import { densePlan, type TilePlan } from "./tile-plan.ts";
 import { semidefiniteCholesky, solveUpperTransposed } from "./triangle.ts";
 
 /** R of J D⁻¹ = QR with D the lengths of J's columns, and Q'b. */
@@ -22,47 +20,46 @@ const SQUARED_PIVOT = 1e-8;
 /** A column whose part orthogonal to those before it is below this, relative to itself, is not identified. */
 const DEPENDENT = 1e-10;
 
-const plans = new Map<number, TilePlan>();
-
 /**
  * Factors J (rows × F) beside b for least squares. Where J is well conditioned the products are summed
  * and factored by Cholesky, a few times faster; where it is not, by Householder reflections of J itself.
  * Iterations recompute b, so that either ends at the same solution.
  */
 export function normalFactor(jacobian: Columns, right: Columns): NormalFactor {
-  const free = jacobian.columns;
-  const lengths = Float64Array.from(
-    { length: free },
-    (_, f) => Math.sqrt(dot(columnOf(jacobian, f), columnOf(jacobian, f))) || 1,
+  const projections = Float64Array.from({ length: jacobian.columns }, (_, f) =>
+    dot(columnOf(jacobian, f), right.values),
   );
-  const scaled = zeros(jacobian.rows, free + 1);
-  for (let f = 0; f < free; f++) {
-    const from = columnOf(jacobian, f);
-    const target = columnOf(scaled, f);
-    for (let r = 0; r < target.length; r++) target[r] = from[r] / lengths[f];
-  }
-  scaled.values.set(right.values, free * jacobian.rows);
-  return bySums(scaled, lengths) ?? byReflections(scaled, lengths);
+  return factorOfProducts(gram(jacobian), projections) ?? byReflections(jacobian, right);
 }
 
-function bySums(scaled: Columns, lengths: Float64Array): NormalFactor | undefined {
-  const free = lengths.length;
-  if (!plans.has(free)) plans.set(free, densePlan(free + 1));
-  const plan = plans.get(free)!;
-  const sums = new Float64Array(plan.tiles * 16);
-  multiplyAccumulate(scaled.values, scaled.rows, scaled.rows, plan, sums);
-  const products = momentMatrix(plan, sums);
-  const inner = zeros(free, free);
-  for (let f = 0; f < free; f++) inner.values.set(columnOf(products, f).subarray(0, free), f * free);
-  const { factor, dependent, smallestPivot } = semidefiniteCholesky(inner, SQUARED_PIVOT);
+/** The factor from J'J (its upper triangle) and J'b; undefined where squares have lost too many digits. */
+export function factorOfProducts(products: Columns, projections: Float64Array): NormalFactor | undefined {
+  const free = products.columns;
+  const lengths = Float64Array.from({ length: free }, (_, f) => Math.sqrt(products.values[f * free + f]) || 1);
+  const scaled = zeros(free, free);
+  for (let f = 0; f < free; f++) {
+    for (let h = 0; h <= f; h++) {
+      scaled.values[f * free + h] = products.values[f * free + h] / (lengths[f] * lengths[h]);
+    }
+  }
+  const { factor, dependent, smallestPivot } = semidefiniteCholesky(scaled, SQUARED_PIVOT);
   if (dependent.length > 0 || smallestPivot < SQUARED_PIVOT) return undefined;
-  const projected = columnOf(products, free).slice(0, free);
+  const projected = projections.map((value, f) => value / lengths[f]);
   solveUpperTransposed(factor, projected);
   return { lengths, triangle: factor, projected, dependent: [] };
 }
 
-function byReflections(scaled: Columns, lengths: Float64Array): NormalFactor {
-  const free = lengths.length;
+function byReflections(jacobian: Columns, right: Columns): NormalFactor {
+  const free = jacobian.columns;
+  const lengths = new Float64Array(free);
+  const scaled = zeros(jacobian.rows, free + 1);
+  for (let f = 0; f < free; f++) {
+    const from = columnOf(jacobian, f);
+    lengths[f] = Math.sqrt(dot(from, from)) || 1;
+    const target = columnOf(scaled, f);
+    for (let r = 0; r < target.length; r++) target[r] = from[r] / lengths[f];
+  }
+  scaled.values.set(right.values, free * jacobian.rows);
   reduceToTriangle(scaled, free);
   const triangle = zeros(free, free);
   const projected = new Float64Array(free);

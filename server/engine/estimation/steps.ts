@@ -1,4 +1,5 @@
-import { type Columns, columnOf, crossProduct, dot, zeros } from "./columns.ts";
+import { type Columns, columnOf, zeros } from "./columns.ts";
+import { gram } from "./gram.ts";
 import { reduceToTriangle } from "./householder.ts";
 import type { NormalFactor } from "./normal-factor.ts";
 import { semidefiniteCholesky, solveUpper, solveUpperTransposed } from "./triangle.ts";
@@ -35,24 +36,21 @@ export function dampedStep({ triangle, projected, lengths }: NormalFactor, dampi
  *
  *     Ĵ'Ĵ − (1/2T) Σ_{ab} B_ab B_ab',   B_ab,f = ê_a'Ĵ_f,b + ê_b'Ĵ_f,a
  *
- * which makes convergence quadratic where residuals are linear, also when T is small. Undefined where
- * that matrix is not positive definite: then Gauss–Newton.
+ * which makes convergence quadratic where residuals are linear, also when T is small. `derivatives` are B,
+ * F × ½g(g+1). Undefined where that matrix is not positive definite: then Gauss–Newton.
  */
-export function likelihoodStep(
-  factor: NormalFactor,
-  jacobian: Columns,
-  residuals: Columns,
-  rows: number,
-): Float64Array | undefined {
+export function likelihoodStep(factor: NormalFactor, derivatives: Columns, rows: number): Float64Array | undefined {
   const { triangle, projected, lengths } = factor;
   const free = lengths.length;
-  const cross = covarianceDerivatives(jacobian, residuals, lengths);
-  for (let pair = 0; pair < cross.columns; pair++) solveUpperTransposed(triangle, columnOf(cross, pair));
-  const transposed = zeros(cross.columns, free);
-  for (let pair = 0; pair < cross.columns; pair++) {
-    for (let f = 0; f < free; f++) transposed.values[f * cross.columns + pair] = cross.values[pair * free + f];
+  const turned = zeros(derivatives.columns, free);
+  const scaled = new Float64Array(free);
+  for (let pair = 0; pair < derivatives.columns; pair++) {
+    const column = columnOf(derivatives, pair);
+    for (let f = 0; f < free; f++) scaled[f] = column[f] / lengths[f];
+    solveUpperTransposed(triangle, scaled);
+    for (let f = 0; f < free; f++) turned.values[f * turned.rows + pair] = scaled[f];
   }
-  const hessian = crossProduct(transposed, transposed);
+  const hessian = gram(turned);
   for (let k = 0; k < hessian.values.length; k++) hessian.values[k] /= -2 * rows;
   for (let f = 0; f < free; f++) hessian.values[f * free + f] += 1;
   const { factor: root, dependent } = semidefiniteCholesky(hessian, 1e-6);
@@ -62,25 +60,4 @@ export function likelihoodStep(
   solveUpper(root, step);
   solveUpper(triangle, step);
   return step.map((value, f) => value / lengths[f]);
-}
-
-/** B, F × ½g(g+1): pairs a < b weighted by √2, as each stands for two entries of a symmetric matrix. */
-function covarianceDerivatives(jacobian: Columns, residuals: Columns, lengths: Float64Array): Columns {
-  const free = lengths.length;
-  const equations = residuals.columns;
-  const height = residuals.rows;
-  const result = zeros(free, (equations * (equations + 1)) / 2);
-  for (let f = 0; f < free; f++) {
-    const column = columnOf(jacobian, f);
-    const block = (b: number) => column.subarray(b * height, (b + 1) * height);
-    let pair = 0;
-    for (let a = 0; a < equations; a++) {
-      for (let b = a; b < equations; b++) {
-        const sum = dot(columnOf(residuals, a), block(b)) + dot(columnOf(residuals, b), block(a));
-        result.values[pair * free + f] = (sum * (a === b ? 1 : Math.SQRT2)) / lengths[f];
-        pair++;
-      }
-    }
-  }
-  return result;
 }

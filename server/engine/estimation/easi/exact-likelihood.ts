@@ -1,7 +1,7 @@
 import type { Entry } from "../coefficient-form.ts";
 import { expand } from "../coefficient-form.ts";
 import { type Columns, multiply, transposed, zeros } from "../columns.ts";
-import { LOG_TWO_PI_E } from "../minimise.ts";
+import { LOG_TWO_PI_E } from "../criterion.ts";
 import { residualCovariance } from "../weighting.ts";
 import type { ExactProblem } from "./exact-iteration.ts";
 import type { RealExpenditure } from "./exact-rows.ts";
