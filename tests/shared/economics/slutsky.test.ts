@@ -10,6 +10,7 @@ import { type MatrixAtPoint, matrixAtPoint } from "../../../shared/schemas/sluts
 import { type FittedSystem, fittedSystem } from "../../../shared/schemas/system.ts";
 import { randomCase } from "../../laws/random-systems.ts";
 import { exactly, fittedFrom } from "../../support/fitted.ts";
+import { ownTime } from "../../support/own-time.ts";
 
 const GOODS = ["grains", "dairy", "sweet drinks"];
 /** α, Γ and β of an almost ideal system whose base point is easy by hand. */
@@ -229,13 +230,15 @@ test("the row checker is fast", () => {
   );
   const checker = createRowChecker(fitted);
   const logPrices = new Float64Array(n);
-  const begun = performance.now();
   let held = 0;
-  for (let row = 0; row < 100_000; row++) {
-    for (let j = 0; j < n; j++) logPrices[j] = random.uniform() - 0.5;
-    checker.evaluate(logPrices, 0, []);
-    if (checker.largestEigenvalue() <= 1e-8) held++;
-  }
-  expect(held).toBe(100_000);
-  expect(performance.now() - begun).toBeLessThan(5000);
+  const check = () => {
+    for (let row = 0; row < 100_000; row++) {
+      for (let j = 0; j < n; j++) logPrices[j] = random.uniform() - 0.5;
+      checker.evaluate(logPrices, 0, []);
+      if (checker.largestEigenvalue() <= 1e-8) held++;
+    }
+  };
+  expect(ownTime(check, 1)).toBeLessThan(5000);
+  // Once to warm up, once timed.
+  expect(held).toBe(200_000);
 });
