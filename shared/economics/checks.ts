@@ -28,7 +28,13 @@ export interface LawsAtPoint {
   /** max|k_ij − k_ji|. */
   symmetry: { size: number; holds: boolean; status: LawStatus };
   /** Stated only under homogeneity: without it ½(K + K') is indefinite by construction. */
-  negativity: { stated: boolean; largest?: number; standardError?: number; holds?: boolean };
+  negativity: {
+    stated: boolean;
+    largest?: number;
+    standardError?: number;
+    interval?: [number, number];
+    holds?: boolean;
+  };
   monotonicity: { holds: boolean; lowest: number; highest: number };
 }
 

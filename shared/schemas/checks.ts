@@ -21,6 +21,8 @@ export const theoryChecks = z.strictObject({
     stated: z.boolean(),
     largest: finite.optional(),
     standardError: finite.optional(),
+    /** 95 % percentile interval of the largest, where the system was bootstrapped. */
+    interval: z.tuple([finite, finite]).optional(),
     holds: z.boolean().optional(),
   }),
   monotonicity: z.strictObject({ holds: z.boolean(), lowest: finite, highest: finite }),

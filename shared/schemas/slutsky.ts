@@ -29,13 +29,29 @@ export type SlutskySpecification = z.infer<typeof slutskySpecification>;
 export const eigenvalue = z.strictObject({
   value: finite,
   standardError: finite,
+  /** 95 % percentile interval of the eigenvalue of this rank, where the system was bootstrapped. */
+  interval: z.tuple([finite, finite]).optional(),
   /** Unit eigenvector, n. */
   vector,
   /** Largest entries in words: "sweet drinks against grains". */
   direction: z.string(),
 });
 
-/** What the matrix, its errors, eigenvalues and checks are at one point: pure function of fitted system and point. */
+const matrixInterval = z.strictObject({ low: matrix, high: matrix });
+
+/** 95 % percentile intervals of the bootstrap's draws, n × n. */
+export const matrixIntervals = z.strictObject({
+  /** Draws at which the system is defined at the point. */
+  draws: count,
+  share: matrixInterval,
+  quantity: matrixInterval,
+  compensated: matrixInterval,
+});
+
+/**
+ * What the matrix, its errors, eigenvalues and checks are at one point: pure function of fitted system and point, but
+ * for the intervals of a bootstrap, which need its draws.
+ */
 export const matrixAtPoint = z.strictObject({
   /** Predicted shares, n. */
   shares: vector,
@@ -53,6 +69,8 @@ export const matrixAtPoint = z.strictObject({
   compensatedErrors: matrix,
   /** The n − 1 eigenvalues of ½(K + K') with the null direction set aside, largest first; absent without homogeneity. */
   eigenvalues: z.array(eigenvalue),
+  /** Where the system was bootstrapped. */
+  intervals: matrixIntervals.optional(),
   checks: theoryChecks,
 });
 export type MatrixAtPoint = z.infer<typeof matrixAtPoint>;

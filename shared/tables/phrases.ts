@@ -1,4 +1,4 @@
-import { printCount } from "./numbers.ts";
+import { printCount, printFixed, THIN_SPACE } from "./numbers.ts";
 
 /** "a", "a and b", "a, b and c". */
 export function listed(words: readonly string[]): string {
@@ -15,6 +15,11 @@ export function countedRows(count: number): string {
 export function undefinedSentence(without: { readonly rows: number } | undefined, of: number): string[] {
   if (without === undefined) return [];
   return [`The system is not defined in ${printCount(without.rows)} of ${countedRows(of)}.`];
+}
+
+/** "95 % interval −0.0140 to −0.0021". */
+export function intervalInWords([low, high]: readonly [number, number], decimals: number): string {
+  return `95${THIN_SPACE}% interval ${printFixed(low, decimals)} to ${printFixed(high, decimals)}`;
 }
 
 export function capital(text: string): string {

@@ -11,6 +11,8 @@ export type MatrixFinding = Pick<SlutskyFinding, "at" | "fitted" | "pointName">;
 export interface MatrixInForm {
   readonly entries: number[][];
   readonly errors: number[][];
+  /** Ends of the bootstrap's 95 % percentile intervals, where there was one. */
+  readonly intervals?: { readonly low: number[][]; readonly high: number[][] };
   readonly decimals: number;
   /** Entries print divided by ten to this. */
   readonly exponent: number;
@@ -22,12 +24,21 @@ export interface MatrixInForm {
 export function matrixInForm(finding: MatrixFinding, form: MatrixForm): MatrixInForm {
   const { at } = finding;
   if (form === "share") {
-    return { entries: at.share, errors: at.shareErrors, decimals: DECIMALS.entry, exponent: 0, name: "share form" };
+    const intervals = at.intervals?.share;
+    return {
+      entries: at.share,
+      errors: at.shareErrors,
+      ...(intervals && { intervals }),
+      decimals: DECIMALS.entry,
+      exponent: 0,
+      name: "share form",
+    };
   }
   const digits = digitsForAll(at.quantity.flat());
   const power = digits.exponent === 0 ? "" : `, × ${printPowerOfTen(digits.exponent)}`;
   const name = `quantity form in units uploaded${power}`;
-  return { entries: at.quantity, errors: at.quantityErrors, ...digits, name };
+  const intervals = at.intervals?.quantity;
+  return { entries: at.quantity, errors: at.quantityErrors, ...(intervals && { intervals }), ...digits, name };
 }
 
 /** An entry as printed in its matrix. */

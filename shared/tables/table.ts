@@ -10,6 +10,8 @@ export type TableCell =
       readonly printed: string;
       readonly standardError: number;
       readonly printedError: string;
+      /** "−0.014 to 0.002", where a bootstrap gives one. */
+      readonly printedInterval?: string;
     };
 
 export interface TableColumn {

@@ -1,8 +1,8 @@
 import type { TheoryChecks } from "../schemas/checks.ts";
 import type { SlutskyFinding } from "../schemas/slutsky.ts";
 import type { RestrictionTest, SystemFinding } from "../schemas/system.ts";
-import { printCount, printPercent, printProbability, printQuantity, printSize } from "./numbers.ts";
-import { countedRows } from "./phrases.ts";
+import { DECIMALS, printCount, printPercent, printProbability, printQuantity, printSize } from "./numbers.ts";
+import { countedRows, intervalInWords } from "./phrases.ts";
 
 export const VERDICT_FIGURES = ["holds", "imposed", "holds here", "breaks", "not stated"] as const;
 
@@ -108,7 +108,8 @@ function negativity({ negativity: law, sample, pointName }: TheoryChecks, detail
     return { ...named, figure: "not stated", word: "not stated", note: "needs homogeneity" };
   }
   const error = law.standardError === undefined ? "" : ` (${printQuantity(law.standardError, "entry")})`;
-  const largest = `largest ${printQuantity(law.largest, "entry")}${error}`;
+  const interval = law.interval ? `, ${intervalInWords(law.interval, DECIMALS.entry)}` : "";
+  const largest = `largest ${printQuantity(law.largest, "entry")}${error}${interval}`;
   if (!law.holds) return { ...named, figure: "breaks", word: "breaks", note: largest };
   return { ...named, ...overSample(pointName, sample?.negativity, sample, largest, detail) };
 }

@@ -31,14 +31,25 @@ export function ErrorBelow({ error }: { error: string }) {
   );
 }
 
-/** An estimate over its standard error, right-aligned. */
-export function Estimate({ value, error }: { value: string; error: string }) {
+interface EstimateProps {
+  readonly value: string;
+  readonly error: string;
+  /** Stands in the place of the error: "−0.014 to 0.002". */
+  readonly interval?: string | undefined;
+}
+
+/** An estimate over its standard error, or over its interval, right-aligned. */
+export function Estimate({ value, error, interval }: EstimateProps) {
   return (
     <span className="inline-block text-right tabular-nums">
       <span className="block">
         <Printed text={value} />
       </span>
-      <ErrorBelow error={error} />
+      {interval === undefined ? (
+        <ErrorBelow error={error} />
+      ) : (
+        <span className="block whitespace-nowrap text-[0.78125rem]/[0.9375rem] text-ink2">{interval}</span>
+      )}
     </span>
   );
 }

@@ -1,6 +1,9 @@
+import { type DrawnIntervals, drawnIntervals, withDrawnLargest } from "../../../shared/economics/drawn-intervals.ts";
 import { matrixAt } from "../../../shared/economics/slutsky.ts";
+import { quantityFactors } from "../../../shared/economics/slutsky-matrix.ts";
 import { type SlutskyFinding, type SlutskySpecification, slutskyFinding } from "../../../shared/schemas/slutsky.ts";
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
+import type { Matrix, Point } from "../../../shared/systems/demand-system.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { QUIET, type RunControl } from "../run.ts";
 import { refusingRanges } from "./refusing.ts";
@@ -22,6 +25,8 @@ export function runSlutsky(
   const { point, pointName } = pointOf(specification.at, system, data);
   const options = { priceScale, totalScale, pointName };
   const at = refusingRanges(() => matrixAt(fitted, point, options), pointName);
+  const drawn = system.bootstrap?.draws && drawnIntervals(fitted, system.bootstrap.draws, point);
+  const checks = withDrawnLargest(at.checks, drawn);
   const { sample, brokenRows } = negativityOverRows(fitted, data, control);
   return slutskyFinding.parse({
     kind: "slutsky",
@@ -32,9 +37,24 @@ export function runSlutsky(
     point,
     priceScale,
     totalScale,
-    at: { ...at, checks: { ...at.checks, ...(system.checks.sample && { sample: system.checks.sample }) } },
+    at: {
+      ...at,
+      ...(drawn && {
+        eigenvalues: at.eigenvalues.map((one, r) => ({ ...one, interval: drawn.eigenvalues[r] })),
+        intervals: intervalsOf(drawn, point, data),
+      }),
+      checks: { ...checks, ...(system.checks.sample && { sample: system.checks.sample }) },
+    },
     tests: system.tests,
     ...(sample && { sample }),
     brokenRows,
   });
+}
+
+/** The quantity form is x/(p_i p_j) times the share form, and so are the ends of its intervals. */
+function intervalsOf({ draws, share, compensated }: DrawnIntervals, point: Point, data: PreparedData) {
+  const prices = point.prices.map((price, i) => price * data.priceScale[i]);
+  const factors = quantityFactors(prices, point.total * data.totalScale);
+  const inQuantities = (ends: Matrix) => ends.map((row, i) => row.map((end, j) => end * factors[i][j]));
+  return { draws, share, quantity: { low: inQuantities(share.low), high: inQuantities(share.high) }, compensated };
 }

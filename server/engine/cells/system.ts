@@ -1,4 +1,5 @@
 import { theoryChecksAt } from "../../../shared/economics/checks.ts";
+import { drawnIntervals, withDrawnLargest } from "../../../shared/economics/drawn-intervals.ts";
 import { elasticitiesAt } from "../../../shared/economics/elasticities.ts";
 import { type SystemFinding, type SystemSpecification, systemFinding } from "../../../shared/schemas/system.ts";
 import type { Point } from "../../../shared/systems/demand-system.ts";
@@ -39,8 +40,10 @@ export function runSystem(given: SystemSpecification, data: PreparedData, contro
     () => ({ ...elasticitiesAt(fitted, point), checks: theoryChecksAt(fitted, point, pointName) }),
     pointName,
   );
+  const draws = estimate.bootstrap?.draws;
+  const lawsHere = withDrawnLargest(at.checks, draws && drawnIntervals(fitted, draws, point));
   return refusingRanges(() => {
-    const { expenditure, expenditureErrors, checks } = at;
+    const { expenditure, expenditureErrors } = at;
     const expenditureOfLes = expenditureReport(fitted, data, point);
     return systemFinding.parse({
       ...estimate,
@@ -53,7 +56,7 @@ export function runSystem(given: SystemSpecification, data: PreparedData, contro
         standardError: expenditureErrors[i],
       })),
       engel: engelCurves(fitted, data, mean),
-      checks: { ...checks, sample: checkSample(fitted, data, control) },
+      checks: { ...lawsHere, sample: checkSample(fitted, data, control) },
     });
   });
 }

@@ -8,6 +8,7 @@ import { linearScale, roundTicks } from "../../components/chart-scale.ts";
 import { useChartWidth } from "../../components/chart-width.ts";
 import { Estimate } from "../../components/number.tsx";
 import { eigenvalueRange, type PlacedEigenvalue, placeEigenvalues } from "./eigenvalue-layout.ts";
+import { intervalOfEigenvalue } from "./intervals.ts";
 
 const LANE = 36;
 const TOP = 22;
@@ -87,11 +88,15 @@ function EigenvalueNumbers({ eigenvalues }: Pick<MatrixAtPoint, "eigenvalues">) 
       heads={[
         { key: "direction", content: "Direction of prices" },
         { key: "value", content: "Eigenvalue" },
+        { key: "interval", content: "Interval" },
       ]}
       lines={eigenvalues.map((eigenvalue, index) => ({
         key: String(index),
         head: eigenvalue.direction,
-        cells: [<Estimate key="value" value={print(eigenvalue.value)} error={print(eigenvalue.standardError)} />],
+        cells: [
+          <Estimate key="value" value={print(eigenvalue.value)} error={print(eigenvalue.standardError)} />,
+          intervalOfEigenvalue(eigenvalue).map(print).join(" to "),
+        ],
       }))}
     />
   );

@@ -1,3 +1,5 @@
+import { type Interval, intervalOfEigenvalue } from "./intervals.ts";
+
 /** An eigenvalue placed on its axis: interval and label, in a lane where no label meets another. */
 export interface PlacedEigenvalue {
   readonly index: number;
@@ -9,12 +11,12 @@ export interface PlacedEigenvalue {
   readonly label: number;
 }
 
-const NORMAL_975 = 1.959963984540054;
 const GAP = 10;
 
 interface Measured {
   readonly value: number;
   readonly standardError: number;
+  readonly interval?: Interval | undefined;
 }
 
 /** Gives each eigenvalue the first lane in which its label and bar are clear of those before it. */
@@ -27,9 +29,8 @@ export function placeEigenvalues(
   const ends: number[] = [];
   const order = eigenvalues.map((_, index) => index).sort((a, b) => eigenvalues[a].value - eigenvalues[b].value);
   return order.map((index) => {
-    const { value, standardError } = eigenvalues[index];
-    const from = at(value - NORMAL_975 * standardError);
-    const to = at(value + NORMAL_975 * standardError);
+    const { value } = eigenvalues[index];
+    const [from, to] = intervalOfEigenvalue(eigenvalues[index]).map(at);
     const label = Math.min(width - labelWidth / 2, Math.max(labelWidth / 2, at(value)));
     const left = Math.min(from, label - labelWidth / 2);
     const right = Math.max(to, label + labelWidth / 2);
@@ -42,8 +43,8 @@ export function placeEigenvalues(
 
 /** The least and greatest value the axis must show: every interval, and nought with room beyond it. */
 export function eigenvalueRange(eigenvalues: readonly Measured[]): [from: number, to: number] {
-  const lows = eigenvalues.map(({ value, standardError }) => value - NORMAL_975 * standardError);
-  const highs = eigenvalues.map(({ value, standardError }) => value + NORMAL_975 * standardError);
+  const lows = eigenvalues.map((one) => Math.min(one.value, intervalOfEigenvalue(one)[0]));
+  const highs = eigenvalues.map((one) => Math.max(one.value, intervalOfEigenvalue(one)[1]));
   const low = Math.min(0, ...lows);
   const high = Math.max(0, ...highs);
   const span = high - low || 1;

@@ -1,15 +1,13 @@
 import type { ReactNode } from "react";
 import type { SlutskyFinding } from "../../../shared/schemas/slutsky.ts";
 import { capital } from "../../../shared/study/words.ts";
-import { DECIMALS, printFixed, printSize, THIN_SPACE } from "../../../shared/tables/numbers.ts";
+import { DECIMALS, printCount, printFixed, printSize, THIN_SPACE } from "../../../shared/tables/numbers.ts";
 import { matrixInForm, printEntry } from "../../../shared/tables/slutsky-matrix.ts";
 import { EntryFormula, QuantityFormula } from "./entry-formula.tsx";
+import type { Interval } from "./intervals.ts";
 import type { Place } from "./moves.ts";
 import type { ShownMatrix } from "./shown-matrix.ts";
 import { printSum } from "./sums.ts";
-
-/** 97.5 % point of the normal distribution, for 95 % intervals. */
-const NORMAL_975 = 1.959963984540054;
 
 export type PanelFinding = Pick<SlutskyFinding, "at" | "fitted" | "point" | "pointName" | "priceScale" | "totalScale">;
 
@@ -22,9 +20,9 @@ interface EntryPanelProps {
 }
 
 /** What an entry makes of two goods; the interval decides, not the point. */
-export function entryWord(entry: number, error: number, own: boolean): string {
+export function entryWord(entry: number, [low, high]: Interval, own: boolean): string {
   if (own) return "Own price";
-  if (Math.abs(entry) <= NORMAL_975 * error) return "Undecided";
+  if (low <= 0 && high >= 0) return "Undecided";
   return entry > 0 ? "Net substitutes" : "Net complements";
 }
 
@@ -102,14 +100,16 @@ export function EntryPanel(props: EntryPanelProps) {
   const { goods, full } = shown;
   const entry = shown.entries[i][j];
   const error = shown.errors[i][j];
-  const interval = `95${THIN_SPACE}% interval ${full(entry - NORMAL_975 * error)} to ${full(entry + NORMAL_975 * error)}`;
+  const [low, high] = shown.intervalAt(i, j);
+  const drawn = finding.at.intervals ? `, percentiles of ${printCount(finding.at.intervals.draws)} draws` : "";
+  const interval = `95${THIN_SPACE}% interval ${full(low)} to ${full(high)}${drawn}`;
   return (
     <section aria-label="Entry pointed at" className={brief ? "border-accent border-t-2 pt-2.5" : ""}>
       <p className="type-small text-ink2">
         Row {goods[i]}, column {goods[j]}
       </p>
       <div role="status">
-        <h2 className="type-section">{capital(entryWord(entry, error, i === j))}</h2>
+        <h2 className="type-section">{capital(entryWord(entry, [low, high], i === j))}</h2>
         <p className="type-entry max-[599px]:text-[1.75rem]/[2.25rem]">
           {full(entry)} <span className="text-[0.6em] text-ink2">({full(error)})</span>
         </p>

@@ -1,5 +1,6 @@
 import type { SlutskyFinding } from "../../../shared/schemas/slutsky.ts";
 import { DECIMALS, printFixed, printPercent, THIN_SPACE } from "../../../shared/tables/numbers.ts";
+import { intervalInWords } from "../../../shared/tables/phrases.ts";
 import { EigenvalueAxis } from "./eigenvalue-axis.tsx";
 import { NegativityHistogram } from "./negativity-histogram.tsx";
 import { axisFloor, Tenths } from "./tenths.tsx";
@@ -9,9 +10,11 @@ const print = (value: number) => printFixed(value, DECIMALS.entry);
 /** What the largest eigenvalue says, in a sentence. */
 function largestInWords({ eigenvalues, checks }: SlutskyFinding["at"]): string {
   const [largest] = eigenvalues;
-  const room = largest.value < -2 * largest.standardError ? "Negativity holds with room to spare" : "Negativity holds";
+  const isClear = largest.interval ? largest.interval[1] < 0 : largest.value < -2 * largest.standardError;
+  const room = isClear ? "Negativity holds with room to spare" : "Negativity holds";
+  const ends = largest.interval ? `, ${intervalInWords(largest.interval, DECIMALS.entry)}` : "";
   const verdict = checks.negativity.holds ? room : "Negativity breaks";
-  return `Share form, symmetrised, with 95${THIN_SPACE}% intervals. The largest is ${print(largest.value)} (${print(largest.standardError)}): ${largest.direction}. ${verdict}.`;
+  return `Share form, symmetrised, with 95${THIN_SPACE}% ${largest.interval ? "percentile intervals of the bootstrap" : "intervals"}. The largest is ${print(largest.value)} (${print(largest.standardError)})${ends}: ${largest.direction}. ${verdict}.`;
 }
 
 export function Eigenvalues({ finding }: { finding: Pick<SlutskyFinding, "at"> }) {

@@ -2,9 +2,11 @@ import { printFixed, printPowerOfTen } from "../../../shared/tables/numbers.ts";
 import {
   type MatrixFinding,
   type MatrixForm,
+  type MatrixInForm,
   matrixInForm,
   printEntry,
 } from "../../../shared/tables/slutsky-matrix.ts";
+import { normalInterval } from "./intervals.ts";
 import { scaleSteps } from "./scale.ts";
 
 /** How the matrix's field is set: with errors, without, small for many goods, or in thousandths on a phone. */
@@ -29,10 +31,17 @@ export interface ShownMatrix {
   /** As the cell has room for it. */
   readonly short: (value: number) => string;
   readonly errors: readonly (readonly number[])[];
+  /** The 95 % interval of an entry: the bootstrap's percentiles where there are some, else by the normal distribution. */
+  readonly intervalAt: (i: number, j: number) => readonly [low: number, high: number];
   readonly steps: readonly number[];
   /** What the short numbers are in: "thousandths". */
   readonly unit: string;
   readonly name: string;
+}
+
+function intervalOf({ entries, errors, intervals }: MatrixInForm, i: number, j: number): readonly [number, number] {
+  if (intervals) return [intervals.low[i][j], intervals.high[i][j]];
+  return normalInterval(entries[i][j], errors[i][j]);
 }
 
 /** Three digits of the largest entry, for cells with room for no more. */
@@ -51,6 +60,7 @@ export function shownMatrix(finding: MatrixFinding, form: MatrixForm, setting: M
     goods: finding.fitted.goods,
     entries: shown.entries,
     errors: shown.errors,
+    intervalAt: (i: number, j: number) => intervalOf(shown, i, j),
     steps: scaleSteps(form, shown.entries),
     name: shown.name,
     full,

@@ -7,8 +7,9 @@ import {
   isPriceBlock,
   priceMatrices,
 } from "../../../shared/tables/coefficients.ts";
-import { printFixed } from "../../../shared/tables/numbers.ts";
+import { printFixed, THIN_SPACE } from "../../../shared/tables/numbers.ts";
 import { Estimate } from "../../components/number.tsx";
+import { SwitchWords } from "../../components/switch-words.tsx";
 import { TableScroller } from "../../components/table-scroller.tsx";
 import { commonTop, EngelCurve } from "./engel-curve.tsx";
 
@@ -35,7 +36,14 @@ function RowLabel({ row }: { row: CoefficientRow }) {
   );
 }
 
-function Row({ row, goods }: { row: CoefficientRow; goods: readonly string[] }) {
+interface RowProps {
+  readonly row: CoefficientRow;
+  readonly goods: readonly string[];
+  /** Intervals under the estimates instead of standard errors. */
+  readonly intervals: boolean;
+}
+
+function Row({ row, goods, intervals }: RowProps) {
   return (
     <tr>
       <th scope="row" className="sticky left-0 min-w-22 bg-recto py-0.5 pr-3 text-left font-normal">
@@ -43,7 +51,13 @@ function Row({ row, goods }: { row: CoefficientRow; goods: readonly string[] }) 
       </th>
       {row.cells.map((cell, index) => (
         <td key={goods[index]} className="py-0.5 pr-[0.33em] pl-3 text-right align-top">
-          {cell.kind === "estimate" && <Estimate value={cell.printed} error={cell.printedError} />}
+          {cell.kind === "estimate" && (
+            <Estimate
+              value={cell.printed}
+              error={cell.printedError}
+              interval={intervals ? cell.printedInterval : undefined}
+            />
+          )}
         </td>
       ))}
     </tr>
@@ -94,29 +108,51 @@ function Heads({ finding }: { finding: SystemFinding }) {
   );
 }
 
+const UNDER = [
+  { value: "errors", word: "Standard errors" },
+  { value: "intervals", word: `95${THIN_SPACE}% intervals` },
+] as const;
+
 /** Coefficients as a paper prints them; the price terms, n × n of them, wait folded. */
 export function CoefficientView({ finding }: { finding: SystemFinding }) {
   const [unfolded, setUnfolded] = useState(false);
+  const [intervals, setIntervals] = useState(false);
   const id = useId();
   const { goods } = finding.fitted;
   const rows = coefficientRows(finding);
   const priceRows = rows.filter((row) => isPriceBlock(row.block));
   const others = rows.filter((row) => !isPriceBlock(row.block));
+  const under = intervals ? `95${THIN_SPACE}% interval` : "standard error";
   return (
     <div>
+      {finding.bootstrap && (
+        <div className="type-small mb-1.5 flex flex-wrap items-baseline justify-between gap-x-4 text-ink2">
+          <span>
+            {intervals
+              ? `Estimate over 95${THIN_SPACE}% interval, percentiles of the bootstrap’s draws`
+              : "Estimate over (standard error)"}
+          </span>
+          <SwitchWords
+            label="Under the estimates"
+            words={UNDER}
+            value={intervals ? "intervals" : "errors"}
+            onChange={(value) => setIntervals(value === "intervals")}
+          />
+        </div>
+      )}
       <TableScroller label="Coefficients of the share equations">
         <table className={`type-table w-full ${priceRows.length === 0 ? "border-line border-b" : ""}`}>
-          <caption className="sr-only">Coefficients of the share equations, estimate over standard error</caption>
+          <caption className="sr-only">Coefficients of the share equations, estimate over {under}</caption>
           <Heads finding={finding} />
           <tbody>
             {others.map((row) => (
-              <Row key={row.block + row.label} row={row} goods={goods} />
+              <Row key={row.block + row.label} row={row} goods={goods} intervals={intervals} />
             ))}
           </tbody>
           {unfolded && (
             <tbody id={id}>
               {priceRows.map((row) => (
-                <Row key={row.block + row.label} row={row} goods={goods} />
+                <Row key={row.block + row.label} row={row} goods={goods} intervals={intervals} />
               ))}
             </tbody>
           )}

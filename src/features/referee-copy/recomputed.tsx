@@ -52,7 +52,7 @@ function Differences({ verification, content }: { verification: Verification; co
   );
 }
 
-function Found({ verification }: { verification: Verification }) {
+function Found({ verification, content }: { verification: Verification; content: SealedContent }) {
   const good = agrees(verification);
   const took = durationInWords(verification.tookMs);
   const where = `Matrix, standard errors, eigenvalues and checks were computed again on your machine in ${took}, from the coefficients below, and set against the sealed ones.`;
@@ -67,6 +67,8 @@ function Found({ verification }: { verification: Verification }) {
       </h2>
       <p className="max-w-[47rem] text-[0.9375rem]/[1.375rem] text-ink2">
         {where}
+        {content.slutsky.at.intervals &&
+          " The intervals of the bootstrap rest on draws that are not sealed; they stand here as they were sealed."}
         {!good &&
           " What does not agree was changed after it was sealed, or was never computed from these coefficients."}
       </p>
@@ -96,7 +98,7 @@ export function Recomputed({ result, content, onAgain }: RecomputedProps) {
         )}
         {result.state === "done" && (
           <div className="min-w-0 flex-1 basis-72">
-            <Found verification={result.verification} />
+            <Found verification={result.verification} content={content} />
           </div>
         )}
         <div className="flex items-center gap-5 print:hidden">
