@@ -1,5 +1,6 @@
 import type { SystemFinding } from "../schemas/system.ts";
 import { EMPTY, estimateCell } from "./cells.ts";
+import { equationsNotes } from "./equations-sentence.ts";
 import { DECIMALS, printCount } from "./numbers.ts";
 import { standardErrorsNotes, standardErrorsPhrase } from "./standard-errors.ts";
 import type { LabelledTable, TableRow } from "./table.ts";
@@ -11,6 +12,7 @@ const ROW_NAMES: Record<string, { label: string; symbol?: string }> = {
   alpha: { label: "Constant", symbol: "α" },
   constant: { label: "Constant", symbol: "b₀" },
   beta: { label: "ln x,", symbol: "β" },
+  lambda: { label: "(ln x)²,", symbol: "λ" },
   committed: { label: "Committed quantity", symbol: "c" },
   marginal: { label: "Marginal share" },
 };
@@ -70,6 +72,7 @@ export function coefficientTable(finding: SystemFinding): LabelledTable {
     rows: coefficientRows(finding),
     notes: [
       `Estimate over (standard error), ${standardErrorsPhrase(finding)}. ${printCount(finding.rows)} rows, ${finding.estimator}, prices and total in units of estimation.`,
+      ...equationsNotes(finding),
       ...standardErrorsNotes(finding),
     ],
   };

@@ -4,12 +4,14 @@ import { countedRows, listed } from "./phrases.ts";
 
 type Told = Pick<SystemFinding, "rows" | "equations" | "expenditure">;
 
-/**
- * What the equations explain and from how many periods, and where the linear expenditure system is not regular:
- * nothing for a system that explains the shares of every row used.
- */
-export function equationsSentences({ rows, equations, expenditure }: Told): string[] {
-  return [...(equations ? explained(rows, equations) : []), ...(expenditure ? regularity(rows, expenditure) : [])];
+/** Where the linear expenditure system is not regular: for the head of a finding. */
+export function equationsSentences({ rows, expenditure }: Omit<Told, "equations">): string[] {
+  return expenditure ? regularity(rows, expenditure) : [];
+}
+
+/** What the equations explain and from how many periods: for its note. Nothing where they explain every row's shares. */
+export function equationsNotes({ rows, equations }: Omit<Told, "expenditure">): string[] {
+  return equations ? explained(rows, equations) : [];
 }
 
 function explained(rows: number, { explains, leftOut, because, gaps }: NonNullable<Told["equations"]>): string[] {

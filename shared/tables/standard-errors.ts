@@ -15,6 +15,7 @@ export const LIKELIHOOD_RATIOS_ASSUME =
 export function standardErrorsPhrase({ standardErrors, clusters, bootstrap }: Errors): string {
   const grouped = clusters && `by ${clusters.column}, ${printCount(clusters.count)} clusters`;
   if (standardErrors === "clustered") return `clustered ${grouped}`;
+  if (standardErrors === "heteroskedastic") return "robust to heteroskedasticity";
   if (bootstrap === undefined) return standardErrors;
   const of = bootstrap.of === "blocks" ? `blocks of ${bootstrap.block} periods` : bootstrap.of;
   const drawn = grouped ? `${of} ${grouped}` : of;

@@ -64,8 +64,10 @@ export function CheckGroup({ legend, values, choices, onChange, readOnly, mono =
     onChange(all.map((choice) => choice.value).filter((word) => next.has(word)));
   };
   return (
-    <fieldset className="grid grid-cols-[minmax(5.5rem,7.25rem)_minmax(0,1fr)] items-baseline gap-x-3 py-1">
-      <legend className="float-left w-full text-[0.875rem]/[1.25rem] text-ink2">{legend}</legend>
+    <fieldset className="grid grid-cols-[minmax(5.5rem,7.25rem)_minmax(0,1fr)] items-start gap-x-3 py-1">
+      <legend className="float-left w-full pt-0.5 text-[0.875rem]/[1.25rem] text-ink2 max-[599px]:pt-3">
+        {legend}
+      </legend>
       <div className="flex flex-wrap gap-x-4">
         {all.length === 0 && <span className="text-[0.875rem]/[1.25rem] text-ink2">none to choose</span>}
         {all.map((choice) => (

@@ -1,9 +1,17 @@
-import { RadioGroup } from "../form/choices.tsx";
+import { ChoiceField } from "../form/fields.tsx";
 import { NumberField } from "../form/number-field.tsx";
 import { type PartProps, Section } from "./section.tsx";
 
+const PLACES = [
+  { value: "nowhere", label: "no point" },
+  { value: "base point", label: "the base point" },
+  { value: "mean", label: "the sample mean" },
+  { value: "row", label: "a row of the data" },
+];
+
 /** Where negativity is imposed, and with which rank. */
-export function CurvatureFields({ written, readOnly }: PartProps) {
+export function CurvatureFields(part: PartProps) {
+  const { written, readOnly } = part;
   const at = written.value("curvature", "at");
   const isRow = typeof at === "object" && at !== null;
   const chosen = written.value("curvature") === undefined ? "nowhere" : isRow ? "row" : String(at ?? "base point");
@@ -12,39 +20,19 @@ export function CurvatureFields({ written, readOnly }: PartProps) {
     else written.write([["curvature", "at"], next === "row" ? { row: 1 } : next]);
   };
   return (
-    <Section title="Negativity imposed" keys={["curvature"]} written={written} readOnly={readOnly}>
-      <RadioGroup
-        legend="At"
-        value={chosen}
-        readOnly={readOnly}
-        onChange={choose}
-        choices={[
-          { value: "nowhere", label: "no point" },
-          { value: "base point", label: "the base point" },
-          { value: "mean", label: "the mean" },
-          {
-            value: "row",
-            label: "a row",
-            below: (
-              <NumberField
-                label="Row"
-                path={["curvature", "at", "row"]}
-                written={written}
-                readOnly={readOnly}
-                required
-              />
-            ),
-          },
-        ]}
-      />
+    <Section title="Negativity imposed" keys={["curvature"]} {...part}>
+      <ChoiceField label="Imposed at" value={chosen} choices={PLACES} readOnly={readOnly} onChange={choose} />
+      {chosen === "row" && <NumberField label="Row" path={["curvature", "at", "row"]} required {...part} />}
       {chosen !== "nowhere" && (
         <NumberField
           label="Rank there"
           path={["curvature", "rank"]}
-          written={written}
-          readOnly={readOnly}
           otherwise={readOnly ? "the highest" : ""}
+          {...part}
         />
+      )}
+      {chosen !== "nowhere" && !readOnly && written.text("curvature", "rank") === "" && (
+        <p className="type-small pb-1 text-ink2">Left empty, one less than there are goods.</p>
       )}
     </Section>
   );

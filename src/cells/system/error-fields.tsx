@@ -1,19 +1,28 @@
-import { BOOTSTRAP_NAMES } from "../../../shared/schemas/standard-errors.ts";
-import { RadioGroup } from "../form/choices.tsx";
 import { asChoices, ChoiceField } from "../form/fields.tsx";
 import { NumberField } from "../form/number-field.tsx";
 import type { PartProps } from "./section.tsx";
 
 const KEY = "standard errors";
 
+const KINDS = [
+  { value: "conventional", label: "conventional" },
+  { value: "heteroskedastic", label: "robust to heteroskedasticity" },
+  { value: "cluster", label: "clustered" },
+  { value: "bootstrap", label: "by bootstrap" },
+];
+
+const DRAWN = [
+  { value: "rows", label: "rows" },
+  { value: "clusters", label: "clusters of rows" },
+  { value: "residuals", label: "residuals" },
+  { value: "blocks", label: "blocks of periods" },
+];
+
 /** How standard errors are computed, and what each way asks besides. */
-export function ErrorFields({ written, readOnly, columns }: PartProps & { columns: readonly string[] }) {
-  const kind =
-    written.value(KEY, "bootstrap") !== undefined
-      ? "bootstrap"
-      : written.value(KEY, "cluster") !== undefined
-        ? "cluster"
-        : written.text(KEY) || "conventional";
+export function ErrorFields({ columns, ...part }: PartProps & { columns: readonly string[] }) {
+  const { written, readOnly } = part;
+  const says = (key: string) => written.value(KEY, key) !== undefined;
+  const kind = says("bootstrap") ? "bootstrap" : says("cluster") ? "cluster" : written.text(KEY) || "conventional";
   const choose = (next: string) => {
     if (next === "conventional") written.write([[KEY], undefined]);
     else if (next === "cluster") written.write([[KEY], { cluster: columns[0] ?? "" }]);
@@ -21,49 +30,26 @@ export function ErrorFields({ written, readOnly, columns }: PartProps & { column
     else written.write([[KEY], next]);
   };
   return (
-    <RadioGroup
-      legend="Standard errors"
-      value={kind}
-      readOnly={readOnly}
-      onChange={choose}
-      choices={[
-        { value: "conventional", label: "conventional" },
-        { value: "heteroskedastic", label: "robust to heteroskedasticity" },
-        {
-          value: "cluster",
-          label: "by cluster",
-          below: (
-            <ChoiceField
-              label="Cluster"
-              value={written.text(KEY, "cluster")}
-              choices={asChoices(columns)}
-              mono
-              readOnly={readOnly}
-              onChange={(value) => written.write([[KEY, "cluster"], value])}
-            />
-          ),
-        },
-        {
-          value: "bootstrap",
-          label: "by bootstrap",
-          below: <BootstrapFields written={written} readOnly={readOnly} columns={columns} />,
-        },
-      ]}
-    />
+    <>
+      <ChoiceField label="Standard errors" value={kind} choices={KINDS} readOnly={readOnly} onChange={choose} />
+      {kind === "cluster" && (
+        <ChoiceField
+          label="Cluster"
+          value={written.text(KEY, "cluster")}
+          choices={asChoices(columns)}
+          mono
+          readOnly={readOnly}
+          onChange={(value) => written.write([[KEY, "cluster"], value])}
+        />
+      )}
+      {kind === "bootstrap" && <BootstrapFields columns={columns} {...part} />}
+    </>
   );
 }
 
-function BootstrapFields({ written, readOnly, columns }: PartProps & { columns: readonly string[] }) {
+function BootstrapFields({ columns, ...part }: PartProps & { columns: readonly string[] }) {
+  const { written, readOnly } = part;
   const of = written.text(KEY, "bootstrap");
-  const number = (key: "replicates" | "seed" | "block", label: string, otherwise: string) => (
-    <NumberField
-      label={label}
-      path={[KEY, key]}
-      written={written}
-      readOnly={readOnly}
-      otherwise={readOnly ? otherwise : ""}
-    />
-  );
   const choose = (value: string) =>
     written.write(
       [[KEY, "bootstrap"], value],
@@ -72,7 +58,7 @@ function BootstrapFields({ written, readOnly, columns }: PartProps & { columns: 
     );
   return (
     <>
-      <ChoiceField label="Of" value={of} choices={asChoices(BOOTSTRAP_NAMES)} readOnly={readOnly} onChange={choose} />
+      <ChoiceField label="Drawn again" value={of} choices={DRAWN} readOnly={readOnly} onChange={choose} />
       {of === "clusters" && (
         <ChoiceField
           label="Cluster"
@@ -84,9 +70,21 @@ function BootstrapFields({ written, readOnly, columns }: PartProps & { columns: 
           onChange={(value) => written.write([[KEY, "cluster"], value || undefined])}
         />
       )}
-      {of === "blocks" && number("block", "Block, periods", "by the number of rows")}
-      {number("replicates", "Replicates", "500")}
-      {number("seed", "Seed", "1")}
+      {of === "blocks" && (
+        <>
+          <NumberField
+            label="Block, periods"
+            path={[KEY, "block"]}
+            otherwise={readOnly ? "by the number of rows" : ""}
+            {...part}
+          />
+          {!readOnly && written.text(KEY, "block") === "" && (
+            <p className="type-small pb-1 text-ink2">Left empty, the number of rows decides.</p>
+          )}
+        </>
+      )}
+      <NumberField label="Replicates" path={[KEY, "replicates"]} otherwise="500" {...part} />
+      <NumberField label="Seed" path={[KEY, "seed"]} otherwise="1" {...part} />
     </>
   );
 }

@@ -5,6 +5,7 @@ import { SYSTEMS } from "../../../shared/systems/index.ts";
 import { RESTRICTION_NAMES, SYSTEM_NAMES, type SystemName } from "../../../shared/systems/names.ts";
 import { CellField } from "../form/cell-field.tsx";
 import { CheckGroup } from "../form/choices.tsx";
+import { DefaultField } from "../form/default-field.tsx";
 import { asChoices, ChoiceField, FormRow, Unreadable } from "../form/fields.tsx";
 import { readWritten, type Written } from "../form/written.ts";
 import type { FormProps } from "../types.ts";
@@ -65,15 +66,6 @@ export function SystemForm(props: FormProps) {
       <CellField kind="data" {...part} context={context} />
       <ChoiceField label="Form" value={form} choices={FORMS} readOnly={readOnly} onChange={chooseForm} />
       <OwnFields form={form} {...part} />
-      <Impose form={form} written={written} readOnly={readOnly} />
-      <ChoiceField
-        label="Estimator"
-        value={written.text("estimator")}
-        choices={asChoices(ESTIMATOR_NAMES)}
-        none="maximum likelihood"
-        readOnly={readOnly}
-        onChange={(value) => written.write([["estimator"], value || undefined])}
-      />
       {takesDemographics && (
         <CheckGroup
           legend="Demographics"
@@ -84,6 +76,15 @@ export function SystemForm(props: FormProps) {
           onChange={(values) => written.write([["demographics"], values.length > 0 ? values : undefined])}
         />
       )}
+      <Impose form={form} {...part} />
+      <DefaultField
+        label="Estimator"
+        path={["estimator"]}
+        otherwise="maximum likelihood"
+        choices={asChoices(ESTIMATOR_NAMES)}
+        {...part}
+      />
+      <ErrorFields {...part} columns={all} />
       <ChoiceField
         label="Dropped"
         value={written.text("dropped")}
@@ -92,7 +93,6 @@ export function SystemForm(props: FormProps) {
         readOnly={readOnly}
         onChange={(value) => written.write([["dropped"], value || undefined])}
       />
-      <ErrorFields {...part} columns={all} />
       <TimeFields {...part} form={form} />
       {(form !== "rotterdam" || says("instruments") || says("zeros")) && <StepFields {...part} columns={columns} />}
       {(CURVED.includes(form) || says("curvature")) && <CurvatureFields {...part} />}

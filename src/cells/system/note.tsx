@@ -1,6 +1,7 @@
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { curvatureNotes } from "../../../shared/tables/curvature-words.ts";
+import { equationsNotes } from "../../../shared/tables/equations-sentence.ts";
 import { DECIMALS, printCount, printFixed } from "../../../shared/tables/numbers.ts";
 import { standardErrorsNotes, standardErrorsPhrase } from "../../../shared/tables/standard-errors.ts";
 
@@ -16,7 +17,7 @@ export function SystemNote({ finding }: { finding: SystemFinding }) {
       {finding.aic === undefined ? "Log-likelihood at these estimates" : "Log-likelihood"}{" "}
       {printFixed(finding.logLikelihood, DECIMALS.statistic)}; <i className="font-serif">R</i>² by equation {rSquared}.
       Prices and expenditure in units of estimation.{" "}
-      {[...standardErrorsNotes(finding), ...curvatureNotes(finding)].join(" ")}
+      {[...equationsNotes(finding), ...standardErrorsNotes(finding), ...curvatureNotes(finding)].join(" ")}
     </p>
   );
 }

@@ -1,6 +1,7 @@
-import { INTERACTION_NAMES, PRICE_INDEX_NAMES } from "../../../shared/systems/names.ts";
-import { CheckGroup, RadioGroup } from "../form/choices.tsx";
-import { asChoices, ChoiceField } from "../form/fields.tsx";
+import { INTERACTION_NAMES, PRICE_INDEX_NAMES, type PriceIndexName } from "../../../shared/systems/names.ts";
+import { CheckGroup } from "../form/choices.tsx";
+import { DefaultField } from "../form/default-field.tsx";
+import { asChoices } from "../form/fields.tsx";
 import { NumberField } from "../form/number-field.tsx";
 import type { PartProps } from "./section.tsx";
 
@@ -13,81 +14,50 @@ export const OWN_KEYS: Readonly<Record<string, readonly string[]>> = {
   easi: ["degree", "interactions", "real expenditure"],
 };
 
+const INDICES: Readonly<Record<PriceIndexName, string>> = {
+  tornqvist: "Törnqvist",
+  stone: "Stone",
+  laspeyres: "Laspeyres",
+  paasche: "Paasche",
+  "lagged stone": "Stone, lagged shares",
+};
+
 /** What only the chosen form asks: its index, constant, errors, Engel curves. */
-export function OwnFields({ form, written, readOnly }: PartProps & { form: string }) {
-  if (form === "la-aids") return <IndexField written={written} readOnly={readOnly} />;
-  if (form === "aids" || form === "quaids") return <AlphaNought written={written} readOnly={readOnly} />;
-  if (form === "les") return <ErrorsField written={written} readOnly={readOnly} />;
-  return form === "easi" ? <EasiFields written={written} readOnly={readOnly} /> : null;
+export function OwnFields({ form, ...part }: PartProps & { form: string }) {
+  if (form === "la-aids") {
+    const choices = PRICE_INDEX_NAMES.map((value) => ({ value, label: INDICES[value] }));
+    return <DefaultField label="Index" path={["index"]} otherwise="tornqvist" choices={choices} {...part} />;
+  }
+  if (form === "aids" || form === "quaids") {
+    return <NumberField label="α₀, held fixed" path={["alpha0"]} otherwise="0" {...part} />;
+  }
+  if (form === "les") {
+    const choices = [
+      { value: "shares", label: "of shares" },
+      { value: "expenditures", label: "of expenditures" },
+    ];
+    return <DefaultField label="Errors" path={["errors"]} otherwise="shares" choices={choices} {...part} />;
+  }
+  return form === "easi" ? <EasiFields {...part} /> : null;
 }
 
-function IndexField({ written, readOnly }: PartProps) {
-  return (
-    <ChoiceField
-      label="Index"
-      value={written.text("index")}
-      choices={asChoices(PRICE_INDEX_NAMES)}
-      none="tornqvist"
-      readOnly={readOnly}
-      onChange={(value) => written.write([["index"], value || undefined])}
-    />
-  );
-}
+const REAL = [
+  { value: "exact", label: "exact, implicit utility" },
+  { value: "approximate", label: "approximate, by mean shares" },
+];
 
-function AlphaNought({ written, readOnly }: PartProps) {
-  return (
-    <NumberField
-      label="α₀, held fixed"
-      path={["alpha0"]}
-      written={written}
-      readOnly={readOnly}
-      otherwise={readOnly ? "0" : ""}
-    />
-  );
-}
-
-function ErrorsField({ written, readOnly }: PartProps) {
-  return (
-    <RadioGroup
-      legend="Errors stand on"
-      value={written.text("errors") || "shares"}
-      readOnly={readOnly}
-      onChange={(value) => written.write([["errors"], value === "shares" ? undefined : value])}
-      choices={[
-        { value: "shares", label: "shares of the budget" },
-        { value: "expenditures", label: "expenditures" },
-      ]}
-    />
-  );
-}
-
-function EasiFields({ written, readOnly }: PartProps) {
+function EasiFields(part: PartProps) {
   return (
     <>
-      <NumberField
-        label="Degree"
-        path={["degree"]}
-        written={written}
-        readOnly={readOnly}
-        otherwise={readOnly ? "3" : ""}
-      />
+      <NumberField label="Degree" path={["degree"]} otherwise="3" {...part} />
       <CheckGroup
         legend="Interactions"
-        values={written.list("interactions")}
+        values={part.written.list("interactions")}
         choices={asChoices(INTERACTION_NAMES)}
-        readOnly={readOnly}
-        onChange={(values) => written.write([["interactions"], values.length > 0 ? values : undefined])}
+        readOnly={part.readOnly}
+        onChange={(values) => part.written.write([["interactions"], values.length > 0 ? values : undefined])}
       />
-      <RadioGroup
-        legend="Real expenditure"
-        value={written.text("real expenditure") || "exact"}
-        readOnly={readOnly}
-        onChange={(value) => written.write([["real expenditure"], value === "exact" ? undefined : value])}
-        choices={[
-          { value: "exact", label: "exact, the implicit utility" },
-          { value: "approximate", label: "approximate, deflated by mean shares" },
-        ]}
-      />
+      <DefaultField label="Real expenditure" path={["real expenditure"]} otherwise="exact" choices={REAL} {...part} />
     </>
   );
 }

@@ -35,8 +35,8 @@ export function TimeFields({ form, written, readOnly }: PartProps & { form: stri
         <NumberField label="Harmonics" path={["season", "harmonics"]} written={written} readOnly={readOnly} />
       )}
       {period !== "" && !readOnly && (
-        <p className="text-[0.78125rem]/[1.0625rem] text-ink2">
-          Pairs of sine and cosine; empty for a dummy for every period of the season but one.
+        <p className="type-small pb-1 text-ink2">
+          Harmonics are pairs of sine and cosine. Left empty, every period of the season but one has a dummy.
         </p>
       )}
     </Section>

@@ -1,16 +1,17 @@
 import { describe, expect, it } from "vitest";
-import { equationsSentences } from "../../../shared/tables/equations-sentence.ts";
+import { equationsNotes, equationsSentences } from "../../../shared/tables/equations-sentence.ts";
 
 const REGULAR = { withoutSupernumerary: { rows: 0, weightedShare: 0, firstRows: [] }, atBound: [] };
 
 describe("what the equations explain", () => {
   it("is nothing to say of the shares of every row", () => {
+    expect(equationsNotes({ rows: 338 })).toEqual([]);
     expect(equationsSentences({ rows: 338 })).toEqual([]);
   });
 
   it("tells the periods that have none before them", () => {
     const lagged = { explains: "shares" as const, leftOut: 1, because: ["lagged shares" as const], gaps: 0 };
-    expect(equationsSentences({ rows: 337, equations: lagged })).toEqual([
+    expect(equationsNotes({ rows: 337, equations: lagged })).toEqual([
       "T is 337 of 338 rows used: the first period has no shares before it.",
     ]);
     const both = {
@@ -19,14 +20,14 @@ describe("what the equations explain", () => {
       leftOut: 2,
       because: ["lagged shares" as const, "differences" as const],
     };
-    expect(equationsSentences({ rows: 336, equations: both }).at(-1)).toBe(
+    expect(equationsNotes({ rows: 336, equations: both }).at(-1)).toBe(
       "T is 336 of 338 rows used: the first 2 periods in turn have no shares, or no change of shares, before them.",
     );
   });
 
   it("tells that likelihoods of expenditures and of changes are no likelihoods of shares", () => {
     const expenditures = { explains: "expenditures" as const, leftOut: 0, because: [], gaps: 0 };
-    expect(equationsSentences({ rows: 338, equations: expenditures })).toEqual([
+    expect(equationsNotes({ rows: 338, equations: expenditures })).toEqual([
       "Errors stand on expenditures: the log-likelihood is one of expenditures and is not comparable with one of shares.",
     ]);
     const rotterdam = {
@@ -35,7 +36,7 @@ describe("what the equations explain", () => {
       because: ["differences" as const],
       gaps: 24,
     };
-    expect(equationsSentences({ rows: 337, equations: rotterdam })).toEqual([
+    expect(equationsNotes({ rows: 337, equations: rotterdam })).toEqual([
       "The equations explain each good's part in the change of volume from one period to the next, so their log-likelihood is not comparable with one of shares.",
       "No level of shares is predicted: elasticities stand at observed shares.",
       "T is 337 of 338 rows used: the first period has no change from a period before it.",

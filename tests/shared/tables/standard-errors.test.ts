@@ -13,7 +13,7 @@ const bootstrapped = { ...system, standardErrors: "bootstrap" } as const;
 describe("what standard errors are called", () => {
   it.each([
     ["conventional", system],
-    ["heteroskedastic", { ...system, standardErrors: "heteroskedastic" } as const],
+    ["robust to heteroskedasticity", { ...system, standardErrors: "heteroskedastic" } as const],
     ["clustered by village, 1,200 clusters", { ...system, standardErrors: "clustered", clusters: village } as const],
     ["bootstrap of rows, 500 replicates, seed 7", { ...bootstrapped, bootstrap: drawn }],
     [

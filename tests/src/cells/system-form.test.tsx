@@ -67,15 +67,16 @@ const BASE = "data: survey # the only one\nform: aids\nimpose: [homogeneity, sym
 describe("the form of a system cell", () => {
   it("writes standard errors by cluster and by bootstrap, and takes them away again", async () => {
     const { user, written, specification } = open(BASE);
-    await user.click(screen.getByRole("radio", { name: "by cluster" }));
+    const errors = screen.getByRole("combobox", { name: "Standard errors" });
+    await user.selectOptions(errors, "clustered");
     expect(specification()["standard errors"]).toEqual({ cluster: "village" });
-    await user.click(screen.getByRole("radio", { name: "by bootstrap" }));
-    await user.selectOptions(screen.getByRole("combobox", { name: "Of" }), "blocks");
+    await user.selectOptions(errors, "by bootstrap");
+    await user.selectOptions(screen.getByRole("combobox", { name: "Drawn again" }), "blocks");
     await user.type(screen.getByRole("textbox", { name: "Block, periods" }), "8{Enter}");
     expect(specification()["standard errors"]).toEqual({ bootstrap: "blocks", replicates: 500, seed: 1, block: 8 });
-    await user.selectOptions(screen.getByRole("combobox", { name: "Of" }), "clusters");
+    await user.selectOptions(screen.getByRole("combobox", { name: "Drawn again" }), "clusters");
     expect(specification()["standard errors"]).toEqual({ bootstrap: "clusters", replicates: 500, seed: 1 });
-    await user.click(screen.getByRole("radio", { name: "conventional" }));
+    await user.selectOptions(errors, "conventional");
     expect(written.source).toBe(BASE);
   });
 
@@ -87,17 +88,18 @@ describe("the form of a system cell", () => {
     await user.type(screen.getByRole("textbox", { name: "Harmonics" }), "2{Enter}");
     expect(specification()).toMatchObject({ trend: true, season: { period: 52, harmonics: 2 } });
     await user.click(screen.getByText("Negativity imposed"));
-    await user.click(screen.getByRole("radio", { name: "a row" }));
+    const imposed = screen.getByRole("combobox", { name: "Imposed at" });
+    await user.selectOptions(imposed, "a row of the data");
     await user.clear(screen.getByRole("textbox", { name: "Row" }));
     await user.type(screen.getByRole("textbox", { name: "Row" }), "12{Enter}");
     expect(specification()).toMatchObject({ curvature: { at: { row: 12 } } });
-    await user.click(screen.getByText("Endogenous expenditure, zeros"));
+    await user.click(screen.getByText("Endogenous expenditure and zeros"));
     const instruments = screen.getByRole("group", { name: "Instruments" });
     await user.click(within(instruments).getByRole("checkbox", { name: "rooms" }));
     expect(specification()).toMatchObject({ instruments: ["rooms"] });
     await user.click(within(instruments).getByRole("checkbox", { name: "rooms" }));
-    await user.click(screen.getByRole("radio", { name: "no point" }));
-    await user.click(screen.getByRole("radio", { name: "in two steps, whether and then how much" }));
+    await user.selectOptions(imposed, "no point");
+    await user.selectOptions(screen.getByRole("combobox", { name: "Goods not bought" }), "in two steps");
     expect(specification()).toMatchObject({ zeros: "two-step" });
     await user.click(
       within(screen.getByRole("group", { name: "Whether, by" })).getByRole("checkbox", { name: "rooms" }),
@@ -108,9 +110,12 @@ describe("the form of a system cell", () => {
 
   it("offers what the form alone has, and takes it away with the form", async () => {
     const { user, specification } = open("data: survey\nform: easi\n");
-    await user.type(screen.getByRole("textbox", { name: "Degree" }), "2{Enter}");
+    const degree = screen.getByRole("textbox", { name: "Degree" });
+    expect(degree).toHaveValue("3");
+    await user.clear(degree);
+    await user.type(degree, "2{Enter}");
     await user.click(screen.getByRole("checkbox", { name: "prices with expenditure" }));
-    await user.click(screen.getByRole("radio", { name: "approximate, deflated by mean shares" }));
+    await user.selectOptions(screen.getByRole("combobox", { name: "Real expenditure" }), "approximate");
     expect(specification()).toMatchObject({
       degree: 2,
       interactions: ["prices with expenditure"],
@@ -118,12 +123,34 @@ describe("the form of a system cell", () => {
     });
     await user.selectOptions(screen.getByRole("combobox", { name: "Form" }), "les");
     expect(specification()).not.toHaveProperty("degree");
-    await user.click(screen.getByRole("radio", { name: "expenditures" }));
+    await user.selectOptions(screen.getByRole("combobox", { name: "Errors" }), "expenditures");
     expect(specification()).toMatchObject({ form: "les", errors: "expenditures" });
     await user.selectOptions(screen.getByRole("combobox", { name: "Form" }), "quaids");
     expect(specification()).not.toHaveProperty("errors");
-    await user.type(screen.getByRole("textbox", { name: "α₀, held fixed" }), "0.5{Enter}");
+    const alpha = screen.getByRole("textbox", { name: "α₀, held fixed" });
+    await user.clear(alpha);
+    await user.type(alpha, "0.5{Enter}");
     expect(specification()).toMatchObject({ form: "quaids", alpha0: 0.5 });
+  });
+
+  it("keeps a part open when its last key goes, and says what a folded one holds", async () => {
+    const { user } = open(`${BASE}trend: true\n`);
+    const part = screen.getByText("Over time").closest("details");
+    expect(part).toHaveAttribute("open");
+    await user.click(screen.getByRole("checkbox", { name: "a linear trend" }));
+    expect(part).toHaveAttribute("open");
+    await user.click(screen.getByRole("checkbox", { name: "a linear trend" }));
+    await user.click(screen.getByText("Over time"));
+    expect(part).not.toHaveAttribute("open");
+    expect(screen.getByText(": trend")).toBeInTheDocument();
+  });
+
+  it("leaves out keys that say what holds anyway", async () => {
+    const { user, written } = open("data: survey\nform: la-aids\nindex: stone\n");
+    await user.selectOptions(screen.getByRole("combobox", { name: "Index" }), "Törnqvist");
+    await user.selectOptions(screen.getByRole("combobox", { name: "Estimator" }), "least squares");
+    await user.selectOptions(screen.getByRole("combobox", { name: "Estimator" }), "maximum likelihood");
+    expect(written.source).toBe("data: survey\nform: la-aids\n");
   });
 
   it("shows a reader what is written, and nothing of what is not", () => {
