@@ -1,34 +1,56 @@
 import { describe, expect, it } from "vitest";
-import { coverageOf, RECOVERED, recover } from "../support/recovery.ts";
+import { coverages, coversAsItSays, NOMINAL } from "../support/coverage.ts";
+import { derivedIntervals } from "../support/recovered-economics.ts";
+import { coefficientIntervals, drawSample, estimateOf, RECOVERED, type RecoveredSystem } from "../support/recovery.ts";
+import type { ErrorKind } from "../support/simulated-errors.ts";
 
 /**
- * 95 % intervals cover the coefficients that data were made from within Monte Carlo error (three standard errors of
- * the simulated coverage). A small version of tests/bench/recovery.bench.ts.
+ * 95 % intervals cover the coefficients that data were made from, and what is derived from them, within what chance
+ * allows (tests/support/coverage.ts). A small version of tests/bench/recovery.bench.ts.
  */
-const within = ({ covered, monteCarloError }: ReturnType<typeof coverageOf>) =>
-  Math.abs(covered - 0.95) / (monteCarloError / 1.96);
+const SAMPLES: Readonly<Record<RecoveredSystem, number>> = {
+  "la-aids": 40,
+  aids: 40,
+  quaids: 20,
+  les: 40,
+  rotterdam: 40,
+  easi: 15,
+  "cubic easi": 10,
+};
 
 describe("conventional errors of independent rows", () => {
-  it.each(RECOVERED)("%s", (form) => {
-    const samples = { easi: 12, quaids: 20 }[form as string] ?? 40;
-    expect(within(coverageOf(samples, (sample) => recover(form, "conventional", 250, 1000 + sample)))).toBeLessThan(3);
+  it.each(RECOVERED)("%s: coefficients, elasticities, the Slutsky matrix, the compensating variation", (system) => {
+    const found = coverages(SAMPLES[system], (sample) => {
+      const drawn = drawSample(system, { rows: 250, seed: 1000 + sample });
+      const estimate = estimateOf(drawn, "conventional");
+      return { coefficients: coefficientIntervals(drawn, estimate), ...derivedIntervals(drawn, estimate) };
+    });
+    for (const coverage of Object.values(found)) expect(coverage).toSatisfy(coversAsItSays);
   });
 });
 
-describe("rows in villages", () => {
-  const cover = (errors: Parameters<typeof recover>[1], samples: number) =>
-    coverageOf(samples, (sample) => recover("aids", errors, 600, 2000 + sample));
+describe("errors that vary with a price", () => {
+  const cover = (errors: ErrorKind, ...asked: string[]) =>
+    coverages(120, (sample) => {
+      const drawn = drawSample("aids", { errors, rows: 500, seed: 3000 + sample });
+      return Object.fromEntries(
+        asked.map((kind) => {
+          const found = estimateOf(drawn, kind);
+          // Where the errors vary with p_1, those of γ_i1 are what conventional errors get wrong.
+          const first = (_: unknown, a: number) =>
+            found.coefficients[a].block === "gamma" && found.coefficients[a].column === drawn.data.goods[0];
+          return [kind, coefficientIntervals(drawn, found).filter(first)];
+        }),
+      );
+    });
 
-  it("conventional errors cover too rarely", () => {
-    const { covered, monteCarloError } = cover("conventional in villages", 30);
-    expect(covered + 1.5 * monteCarloError).toBeLessThan(0.95);
+  it("conventional intervals cover too rarely, heteroskedastic ones as they say", () => {
+    const { conventional, heteroskedastic } = cover("heteroskedastic", "conventional", "heteroskedastic");
+    expect(conventional.covered + conventional.bound).toBeLessThan(NOMINAL);
+    expect(heteroskedastic).toSatisfy(coversAsItSays);
   });
 
-  it("clustered errors cover", () => {
-    expect(within(cover("clustered", 40))).toBeLessThan(3);
-  });
-
-  it("so do those of a bootstrap of clusters", () => {
-    expect(within(cover("bootstrap", 15))).toBeLessThan(3);
+  it("heteroskedastic ones also where errors do not vary", () => {
+    expect(cover("independent", "heteroskedastic").heteroskedastic).toSatisfy(coversAsItSays);
   });
 });

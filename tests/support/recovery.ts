@@ -1,115 +1,93 @@
 import type { PreparedData } from "../../server/engine/columns/prepared-data.ts";
-import { normalQuantile } from "../../shared/numerics/normal.ts";
 import { seededRandom } from "../../shared/numerics/random.ts";
+import type { EasiSize } from "../../shared/systems/demand-system.ts";
+import type { SystemName } from "../../shared/systems/names.ts";
+import { type Interval, normalInterval } from "./coverage.ts";
 import { estimated } from "./estimating.ts";
 import { simulateEasi } from "./simulated-easi.ts";
+import { type ErrorKind, madeRows } from "./simulated-errors.ts";
+import { simulateRotterdam } from "./simulated-rotterdam.ts";
 import { simulateShares } from "./simulated-shares.ts";
 
-/** A simulated sample with what was put into it, and what estimation found: one number a coefficient each. */
-export interface Recovered {
-  readonly truth: readonly number[];
-  readonly estimates: readonly number[];
-  readonly standardErrors: readonly number[];
-}
-
-export interface Coverage {
-  readonly samples: number;
-  readonly intervals: number;
-  /** Of all intervals, those that cover the truth. */
-  readonly covered: number;
-  /** Half width of the 95 % Monte Carlo interval around 0.95, from how coverage varies between samples. */
-  readonly monteCarloError: number;
-}
-
-/**
- * How often 95 % intervals (estimate ± 1.96 standard errors) cover the truth over repeated samples. Coefficients of
- * one sample are dependent, so the Monte Carlo error comes from the spread of whole samples' coverage. Coefficients
- * without an error (fixed by restrictions) are left out.
- */
-export function coverageOf(samples: number, draw: (sample: number) => Recovered): Coverage {
-  const critical = normalQuantile(0.975);
-  const shares: number[] = [];
-  let intervals = 0;
-  for (let sample = 0; sample < samples; sample++) {
-    const { truth, estimates, standardErrors } = draw(sample);
-    const counted = truth.map((_, a) => a).filter((a) => standardErrors[a] > 1e-7);
-    const inside = counted.filter((a) => Math.abs(estimates[a] - truth[a]) <= critical * standardErrors[a]);
-    intervals += counted.length;
-    shares.push(inside.length / counted.length);
-  }
-  const covered = shares.reduce((sum, share) => sum + share, 0) / samples;
-  const variance = shares.reduce((sum, share) => sum + (share - covered) ** 2, 0) / (samples - 1);
-  return { samples, intervals, covered, monteCarloError: critical * Math.sqrt(variance / samples) };
-}
-
-/** Systems with data of their own making; the index of LA-AIDS is Laspeyres', which holds no shares of the rows. */
-export const RECOVERED = ["la-aids", "aids", "quaids", "les", "easi"] as const;
+/** Systems with data of their own making. */
+export const RECOVERED = ["la-aids", "aids", "quaids", "les", "rotterdam", "easi", "cubic easi"] as const;
 export type RecoveredSystem = (typeof RECOVERED)[number];
 
-/** "conventional": independent errors. The others: rows in villages that share prices and an error. */
-export type ErrorsUnder = "conventional" | "conventional in villages" | "clustered" | "bootstrap";
+export interface SampleDesign {
+  readonly errors?: ErrorKind;
+  readonly rows: number;
+  readonly seed: number;
+  readonly rowsOfACluster?: number;
+}
 
-const ROWS_OF_A_VILLAGE = 4;
+/** Rows of a system at coefficients of their own, θ, and the specification that estimates it under symmetry. */
+export interface Sample {
+  readonly data: PreparedData;
+  readonly theta: readonly number[];
+  readonly specification: { readonly form: SystemName } & Record<string, unknown>;
+}
 
-/** One sample of a system at coefficients of its own, estimated by maximum likelihood under symmetry. */
-export function recover(form: RecoveredSystem, errors: ErrorsUnder, rows: number, seed: number): Recovered {
+const BOTH = ["homogeneity", "symmetry"] as const;
+const GOODS = 3;
+
+const EASI: Readonly<Record<string, EasiSize>> = {
+  easi: { degree: 1, interactions: [] },
+  "cubic easi": { degree: 3, interactions: ["prices with expenditure"] },
+};
+
+/** The index of LA-AIDS is Laspeyres', which holds no shares of its row: Stone's makes a regressor of the errors. */
+export function drawSample(system: RecoveredSystem, design: SampleDesign): Sample {
+  const { errors: kind = "independent", rows, seed, rowsOfACluster } = design;
   const random = seededRandom(seed);
-  const impose = form === "les" ? [] : (["homogeneity", "symmetry"] as const);
-  const inVillages = errors !== "conventional";
-  const shape = { goods: 3, rows, random, noise: 0.02, impose };
-  const made =
-    form === "easi"
-      ? simulateEasi({ ...shape, easi: { degree: 1, interactions: [] } })
-      : simulateShares({
-          ...shape,
-          form,
-          index: "laspeyres",
-          ...(inVillages && { logPrices: villagePrices(3, rows, () => 0.25 * random.normal()) }),
-        });
-  const data = inVillages ? withVillageErrors(made.data, () => 0.03 * random.normal()) : made.data;
-  const standardErrors = {
-    conventional: "conventional",
-    "conventional in villages": "conventional",
-    clustered: { cluster: "village" },
-    bootstrap: { bootstrap: "clusters", cluster: "village", replicates: 60, seed },
-  }[errors];
-  const { coefficients } = estimated(data, {
-    form,
-    impose,
-    demographics: [],
-    ...(form === "la-aids" && { index: "laspeyres" }),
-    ...(form === "easi" && { degree: 1 }),
-    "standard errors": standardErrors,
+  // Errors of contributions to volume build up in the shares, so that they must be small for shares to stay positive.
+  const scale = system === "rotterdam" ? { noise: 0.0005, prices: 0.06 } : { noise: 0.025, prices: 0.25 };
+  const made = madeRows({
+    goods: GOODS,
+    rows,
+    random,
+    errors: kind,
+    ...scale,
+    ...(rowsOfACluster && { rowsOfACluster }),
   });
-  return {
-    truth: made.theta,
-    estimates: coefficients.map(({ estimate }) => estimate),
-    standardErrors: coefficients.map(({ standardError }) => standardError),
-  };
-}
-
-function villagePrices(goods: number, rows: number, draw: () => number): Float64Array[] {
-  return Array.from({ length: goods }, () => {
-    const column = new Float64Array(rows);
-    for (let t = 0; t < rows; t++) column[t] = t % ROWS_OF_A_VILLAGE === 0 ? draw() : column[t - 1];
-    return column;
+  const { logPrices, errors, cluster } = made;
+  const inColumns = (data: PreparedData): PreparedData => ({
+    ...data,
+    numeric: new Map([["cluster", cluster]]),
+    time: Float64Array.from(cluster.keys()),
   });
-}
-
-/** The same error in every row of a village, adding to nothing over goods. */
-function withVillageErrors(data: PreparedData, draw: () => number): PreparedData {
-  const village = Float64Array.from({ length: data.rows }, (_, t) => Math.floor(t / ROWS_OF_A_VILLAGE));
-  const shares = data.shares.map((share) => share.slice());
-  let errors: number[] = [];
-  for (let t = 0; t < data.rows; t++) {
-    if (t % ROWS_OF_A_VILLAGE === 0) {
-      const drawn = shares.map(draw);
-      const mean = drawn.reduce((sum, value) => sum + value, 0) / drawn.length;
-      errors = drawn.map((value) => value - mean);
-    }
-    shares.forEach((share, i) => {
-      share[t] += errors[i];
-    });
+  if (system === "rotterdam") {
+    const { data, theta } = simulateRotterdam(logPrices, errors, random);
+    return { data: inColumns(data), theta, specification: { form: system, impose: BOTH } };
   }
-  return { ...data, shares, numeric: new Map([["village", village]]) };
+  const shape = { goods: GOODS, rows, random, noise: 0, logPrices };
+  const easi = EASI[system];
+  if (easi !== undefined) {
+    const { data, theta } = simulateEasi({ ...shape, errors, easi });
+    return { data: inColumns(data), theta, specification: { form: "easi", impose: BOTH, ...easi } };
+  }
+  const form = system as "aids" | "la-aids" | "quaids" | "les";
+  const impose = form === "les" ? [] : BOTH;
+  const { data, theta } = simulateShares({ ...shape, form, impose, index: "laspeyres" });
+  const shares = data.shares.map((share, i) => share.map((value, t) => value + errors[i][t]));
+  const index = form === "la-aids" && { index: "laspeyres" };
+  return { data: inColumns({ ...data, shares }), theta, specification: { form, impose, ...index } };
+}
+
+/** The sample's own estimates, by maximum likelihood. */
+export function estimateOf({ data, specification }: Sample, standardErrors: unknown) {
+  return estimated(data, { ...specification, demographics: [], "standard errors": standardErrors });
+}
+export type Estimated = ReturnType<typeof estimateOf>;
+
+/**
+ * Intervals of the coefficients: percentile where there are draws, else normal. Percentile intervals of 39 draws cover as
+ * often as those of more, 1 − 2k/(B + 1) with the k-th draw from either end, here the outermost: more draws steady
+ * their ends (Davison & Hinkley 1997, Bootstrap Methods and their Application, section 2.5 and 4.2.5).
+ */
+export function coefficientIntervals({ theta }: Pick<Sample, "theta">, found: Estimated): Interval[] {
+  return found.coefficients.map(({ estimate, standardError }, a) => {
+    if (found.bootstrap === undefined) return normalInterval(theta[a], estimate, standardError);
+    const [low, high] = found.bootstrap.intervals[a];
+    return { truth: theta[a], low, high };
+  });
 }

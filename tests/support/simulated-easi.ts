@@ -14,6 +14,10 @@ export interface EasiSimulation {
   readonly impose?: readonly RestrictionName[];
   readonly demographics?: number;
   readonly weighted?: boolean;
+  /** Columns of log prices, in place of independent normals. */
+  readonly logPrices?: readonly Float64Array[];
+  /** Columns that sum to zero over goods, in place of independent normals. */
+  readonly errors?: readonly Float64Array[];
 }
 
 /**
@@ -41,7 +45,7 @@ export function simulateEasi(simulation: EasiSimulation): {
       theta[a] += row[f] * value;
     });
   });
-  const logPrices = Array.from({ length: n }, () => normals(0.25));
+  const logPrices = [...(simulation.logPrices ?? Array.from({ length: n }, () => normals(0.25)))];
   const utility = normals(0.5);
   const shifts = Array.from({ length: s }, () => normals(1));
   const shares = logPrices.map(() => new Float64Array(rows));
@@ -52,7 +56,7 @@ export function simulateEasi(simulation: EasiSimulation): {
     const z = shifts.map((column) => column[t]);
     const logCost = easi.cost.logCost(theta, size, utility[t], prices, z);
     const predicted = easi.slopes(theta, size, { prices, total: Math.exp(logCost), demographics: z }).shares;
-    const errors = predicted.map(() => noise * random.normal());
+    const errors = predicted.map((_, i) => simulation.errors?.[i][t] ?? noise * random.normal());
     const mean = errors.reduce((sum, error) => sum + error, 0) / n;
     logTotal[t] = logCost;
     predicted.forEach((share, i) => {
