@@ -1,6 +1,7 @@
 import { zeros } from "../numerics/matrix.ts";
 import { leadingTerms, partsOf, placesOf } from "./almost-ideal.ts";
-import type { Matrix, MomentForm, MomentTerm, SystemSize } from "./demand-system.ts";
+import type { Matrix, SystemSize } from "./demand-system.ts";
+import type { MomentForm, MomentTerm } from "./moment-form.ts";
 
 /**
  * The exact AIDS as w = C(θ) Z: ln P is linear in ln p_k, in the products ln p_k ln p_l and in z_s ln p_k, so

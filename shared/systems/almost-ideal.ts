@@ -1,6 +1,7 @@
-import type { CoefficientBlock, CoefficientPlace, FreeForm, MomentTerm, SystemSize } from "./demand-system.ts";
+import type { CoefficientBlock, CoefficientPlace, FreeForm, SystemSize } from "./demand-system.ts";
 import { requireTheta } from "./evaluation.ts";
 import { type Dependence, freeForm, remainder } from "./free-form.ts";
+import type { MomentTerm } from "./moment-form.ts";
 import type { RestrictionName } from "./names.ts";
 
 /**

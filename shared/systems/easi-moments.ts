@@ -1,7 +1,8 @@
 import { leadingTerms } from "./almost-ideal.ts";
-import type { BaseColumn, MomentForm, MomentTerm, SystemSize } from "./demand-system.ts";
+import type { SystemSize } from "./demand-system.ts";
 import { easiPlaces } from "./easi-layout.ts";
 import { requireTheta } from "./evaluation.ts";
+import type { BaseColumn, MomentForm, MomentTerm } from "./moment-form.ts";
 
 type Entry = [good: number, term: number, value: number];
 

@@ -1,5 +1,6 @@
-import type { BaseColumn, MomentForm, MomentTerm, SystemSize } from "./demand-system.ts";
+import type { SystemSize } from "./demand-system.ts";
 import { lesParts, lesPlaces } from "./les-parts.ts";
+import type { BaseColumn, MomentForm, MomentTerm } from "./moment-form.ts";
 
 type Entry = [good: number, term: number, value: number];
 

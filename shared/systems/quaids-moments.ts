@@ -1,14 +1,7 @@
 import { aids } from "./aids.ts";
 import { leadingTerms } from "./almost-ideal.ts";
-import type {
-  BaseColumn,
-  LocalColumns,
-  MomentEntry,
-  MomentForm,
-  MomentTerm,
-  SystemSize,
-  TermCombination,
-} from "./demand-system.ts";
+import type { SystemSize } from "./demand-system.ts";
+import type { BaseColumn, LocalColumns, MomentEntry, MomentForm, MomentTerm, TermCombination } from "./moment-form.ts";
 import { quaidsParts, quaidsPlaces } from "./quaids-parts.ts";
 import { symmetricPart } from "./translog.ts";
 

@@ -1,6 +1,6 @@
 import { leadingTerms } from "./almost-ideal.ts";
-import type { MomentForm } from "./demand-system.ts";
 import { requireTheta } from "./evaluation.ts";
+import type { MomentForm } from "./moment-form.ts";
 import { rotterdamPlaces } from "./rotterdam-places.ts";
 
 type Entry = [good: number, term: number, value: number];

@@ -1,14 +1,8 @@
 import { describe, expect, test } from "vitest";
 import { seededRandom } from "../../shared/numerics/random.ts";
-import type {
-  BaseColumn,
-  BlockColumns,
-  MomentForm,
-  MomentTerm,
-  Point,
-  SystemSize,
-} from "../../shared/systems/demand-system.ts";
+import type { BlockColumns, Point, SystemSize } from "../../shared/systems/demand-system.ts";
 import { SYSTEMS } from "../../shared/systems/index.ts";
+import type { BaseColumn, MomentForm, MomentTerm } from "../../shared/systems/moment-form.ts";
 import { type InteractionName, SYSTEM_NAMES } from "../../shared/systems/names.ts";
 import { logPriceIndex } from "../../shared/systems/price-indices.ts";
 import { implicitUtility } from "../support/implicit-utility.ts";

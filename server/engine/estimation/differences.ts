@@ -1,6 +1,7 @@
 import type { SystemSpecification } from "../../../shared/schemas/system.ts";
 import { placesOf } from "../../../shared/systems/almost-ideal.ts";
-import type { DemandSystem, FreeForm, MomentForm, SystemSize } from "../../../shared/systems/demand-system.ts";
+import type { DemandSystem, FreeForm, SystemSize } from "../../../shared/systems/demand-system.ts";
+import type { MomentForm } from "../../../shared/systems/moment-form.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { demographicColumn } from "../columns/seasonal-terms.ts";
 import { weightedMean } from "../columns/weighted.ts";

@@ -1,10 +1,5 @@
-import type {
-  LocalColumns,
-  LocalFiller,
-  MomentForm,
-  SystemSize,
-  TermCombination,
-} from "../../../shared/systems/demand-system.ts";
+import type { SystemSize } from "../../../shared/systems/demand-system.ts";
+import type { LocalColumns, LocalFiller, MomentForm, TermCombination } from "../../../shared/systems/moment-form.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { demographicColumn } from "../columns/seasonal-terms.ts";
 import { newColumn } from "../columns/shared-memory.ts";

@@ -1,4 +1,4 @@
-import type { TermCombination } from "../../../shared/systems/demand-system.ts";
+import type { TermCombination } from "../../../shared/systems/moment-form.ts";
 
 /**
  * Rows as the estimators see them: base columns, terms made of them, and responses.

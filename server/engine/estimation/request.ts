@@ -1,13 +1,8 @@
 import type { Problem } from "../../../shared/schemas/problem.ts";
 import type { SystemSpecification } from "../../../shared/schemas/system.ts";
 import { nearestWord } from "../../../shared/study/nearest-word.ts";
-import type {
-  BaseColumn,
-  LocalColumns,
-  MomentForm,
-  MomentTerm,
-  SystemSize,
-} from "../../../shared/systems/demand-system.ts";
+import type { SystemSize } from "../../../shared/systems/demand-system.ts";
+import type { BaseColumn, LocalColumns, MomentForm, MomentTerm } from "../../../shared/systems/moment-form.ts";
 import type { PriceIndexName } from "../../../shared/systems/names.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { demographicColumn } from "../columns/seasonal-terms.ts";

@@ -1,6 +1,7 @@
 import type { SystemSpecification } from "../../../shared/schemas/system.ts";
-import type { DemandSystem, MomentForm } from "../../../shared/systems/demand-system.ts";
+import type { DemandSystem } from "../../../shared/systems/demand-system.ts";
 import { SYSTEMS } from "../../../shared/systems/index.ts";
+import type { MomentForm } from "../../../shared/systems/moment-form.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { systemInDifferences } from "./differences.ts";
 import { withFirstSteps } from "./first-steps/extensions.ts";

@@ -1,6 +1,7 @@
-import type { BaseColumn, MomentTerm, SystemSize } from "../../../../shared/systems/demand-system.ts";
+import type { SystemSize } from "../../../../shared/systems/demand-system.ts";
 import { easiPlaces } from "../../../../shared/systems/easi-layout.ts";
 import { easiMoments } from "../../../../shared/systems/easi-moments.ts";
+import type { BaseColumn, MomentTerm } from "../../../../shared/systems/moment-form.ts";
 import type { PreparedData } from "../../columns/prepared-data.ts";
 import { demographicColumn } from "../../columns/seasonal-terms.ts";
 import { type MomentSource, ordered, type TermPair } from "../moment-source.ts";

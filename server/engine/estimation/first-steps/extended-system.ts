@@ -3,12 +3,10 @@ import type {
   CoefficientPlace,
   DemandSystem,
   FreeForm,
-  LocalColumns,
   Matrix,
-  MomentEntry,
-  MomentForm,
   SystemSize,
 } from "../../../../shared/systems/demand-system.ts";
+import type { LocalColumns, MomentEntry, MomentForm } from "../../../../shared/systems/moment-form.ts";
 
 /** Coefficients and terms that stand in the share equations beside C(θ)Z, never in the price index. */
 export interface Extension {
