@@ -1,9 +1,9 @@
 import type { SystemFinding } from "../schemas/system.ts";
 import { EMPTY, estimateCell } from "./cells.ts";
 import { equationsNotes } from "./equations-sentence.ts";
-import { DECIMALS, printCount } from "./numbers.ts";
+import { DECIMALS, printCount, printFixed } from "./numbers.ts";
 import { standardErrorsNotes, standardErrorsPhrase } from "./standard-errors.ts";
-import type { LabelledTable, TableRow } from "./table.ts";
+import type { LabelledTable, TableCell, TableRow } from "./table.ts";
 
 type Coefficient = SystemFinding["coefficients"][number];
 
@@ -46,7 +46,10 @@ function headOf(coefficient: Coefficient): { label: string; symbol?: string } {
 }
 
 /** One row for each block and column, one cell for each good, in the order the blocks come. */
-export function coefficientRows(finding: Pick<SystemFinding, "coefficients" | "fitted">): CoefficientRow[] {
+export function coefficientRows(
+  finding: Pick<SystemFinding, "coefficients" | "fitted" | "bootstrap">,
+): CoefficientRow[] {
+  const intervals = new Map(finding.coefficients.map((one, index) => [one, finding.bootstrap?.intervals[index]]));
   const rows = new Map<string, Coefficient[]>();
   for (const coefficient of finding.coefficients) {
     const key = JSON.stringify([coefficient.block, coefficient.column]);
@@ -57,9 +60,15 @@ export function coefficientRows(finding: Pick<SystemFinding, "coefficients" | "f
     block: coefficients[0].block,
     cells: finding.fitted.goods.map((good) => {
       const found = coefficients.find((coefficient) => coefficient.good === good);
-      return found ? estimateCell(found.estimate, found.standardError, DECIMALS.coefficient) : EMPTY;
+      return found ? coefficientCell(found, intervals.get(found)) : EMPTY;
     }),
   }));
+}
+
+function coefficientCell({ estimate, standardError }: Coefficient, interval?: readonly [number, number]): TableCell {
+  const cell = estimateCell(estimate, standardError, DECIMALS.coefficient);
+  if (interval === undefined || cell.kind !== "estimate") return cell;
+  return { ...cell, printedInterval: interval.map((end) => printFixed(end, DECIMALS.coefficient)).join(" to ") };
 }
 
 /** Coefficients of all share equations, a column each, as a paper prints them. */

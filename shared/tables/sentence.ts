@@ -4,9 +4,10 @@ import type { SystemFinding } from "../schemas/system.ts";
 import { curvatureSentences } from "./curvature-words.ts";
 import { equationsSentences } from "./equations-sentence.ts";
 import { endogeneityHeadline } from "./first-steps-words.ts";
-import { printCount, printQuantity, printSize } from "./numbers.ts";
-import { capital, countedRows, listed, undefinedSentence } from "./phrases.ts";
+import { DECIMALS, printCount, printQuantity, printSize } from "./numbers.ts";
+import { capital, countedRows, intervalInWords, listed, undefinedSentence } from "./phrases.ts";
 import { withArticle } from "./slutsky-matrix.ts";
+import { unequalWeightsSentence } from "./standard-errors.ts";
 import { isRejected, testOf } from "./verdicts.ts";
 
 const LEFT_OUT: Readonly<Record<DataFinding["accounting"]["leftOut"][number]["reason"], readonly [string, string]>> = {
@@ -40,6 +41,7 @@ type ToldSystem = Pick<
   | "expenditure"
   | "endogeneity"
   | "curvature"
+  | "effectiveRows"
 >;
 
 /** Which goods are luxuries and necessities beyond doubt, then what theory is violated. */
@@ -48,6 +50,7 @@ export function systemSentence(system: ToldSystem): string {
     classesOfGoods(system),
     ...violations(system),
     ...undefinedSentence(system.checks.sample?.undefined, system.checks.sample?.rows ?? 0),
+    ...unequalWeightsSentence(system),
     ...ofUnits(system),
     ...curvatureSentences(system),
     ...equationsSentences(system),
@@ -119,9 +122,10 @@ function negativitySentence({ negativity, sample, pointName }: ToldSystem["check
   return breaks > 0 ? [`Negativity breaks in ${printCount(breaks)} of ${countedRows(rows)}.`] : [];
 }
 
-function estimate({ largest = 0, standardError }: { largest?: number; standardError?: number }): string {
+function estimate({ largest = 0, standardError, interval }: ToldSystem["checks"]["negativity"]): string {
   const error = standardError === undefined ? "" : ` (${printQuantity(standardError, "entry")})`;
-  return `${printQuantity(largest, "entry")}${error}`;
+  const ends = interval === undefined ? "" : `, ${intervalInWords(interval, DECIMALS.entry)}`;
+  return `${printQuantity(largest, "entry")}${error}${ends}`;
 }
 
 type ToldMatrix = Pick<SlutskyFinding, "at" | "pointName" | "sample">;

@@ -26,9 +26,7 @@ export function standardErrorsPhrase({ standardErrors, clusters, bootstrap }: Er
 export function standardErrorsNotes(finding: Errors): string[] {
   const { bootstrap, effectiveRows, rows, standardErrors, tests } = finding;
   return [
-    ...(effectiveRows === undefined
-      ? []
-      : [`The weights make ${printCount(rows)} rows tell as much as ${printFixed(effectiveRows, 0)} of one weight.`]),
+    ...(effectiveRows === undefined ? [] : [weightsSentence(rows, effectiveRows)]),
     ...fewClusters(finding),
     ...(bootstrap?.of === "residuals"
       ? ["Residuals are drawn again; prices, total expenditure and the price index are held as observed."]
@@ -36,6 +34,19 @@ export function standardErrorsNotes(finding: Errors): string[] {
     ...failures(bootstrap),
     ...(standardErrors !== "conventional" && tests.length > 0 ? [LIKELIHOOD_RATIOS_ASSUME] : []),
   ];
+}
+
+function weightsSentence(rows: number, effectiveRows: number): string {
+  return `The weights make ${printCount(rows)} rows tell as much as ${printFixed(effectiveRows, 0)} of one weight.`;
+}
+
+/** Effective rows below this part of all rows are said at the head: then a few weights of enormous size decide. */
+const FEW_EFFECTIVE = 0.1;
+
+/** For the head of a finding: nothing where the weights are near enough to one another. */
+export function unequalWeightsSentence({ rows, effectiveRows }: Pick<Errors, "rows" | "effectiveRows">): string[] {
+  if (effectiveRows === undefined || effectiveRows >= FEW_EFFECTIVE * rows) return [];
+  return [weightsSentence(rows, effectiveRows)];
 }
 
 function fewClusters({ clusters, freeCoefficients, standardErrors }: Errors): string[] {
