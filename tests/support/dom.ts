@@ -1,6 +1,9 @@
 import "@testing-library/jest-dom/vitest";
-import { cleanup } from "@testing-library/react";
+import { cleanup, configure } from "@testing-library/react";
 import { afterEach } from "vitest";
+
+// What is awaited comes at once on a machine at rest; on a busy one it may take longer, and is no less right.
+configure({ asyncUtilTimeout: 15_000 });
 
 /** Each test has a page of its own. */
 afterEach(cleanup);
