@@ -49,13 +49,14 @@ export function isRobust({ covariance }: Context): boolean {
 }
 
 /**
- * Wald's where the covariance is robust. Otherwise Laitinen's F where there is one; the likelihood ratio, corrected
- * where that changes the answer; failing that whichever there is.
+ * Wald's where the covariance is robust, and none where there is no Wald test: the others trust equal spread. Otherwise
+ * Laitinen's F where there is one; the likelihood ratio, corrected where that changes the answer; failing that
+ * whichever there is.
  */
 export function decidingTest(test: MadeTest, context: Context): Deciding | undefined {
   const { laitinen } = test;
   const [wald, ratio, corrected, score] = [test.wald, test.likelihoodRatio, test.corrected, test.score].map(pOf);
-  if (isRobust(context) && wald !== undefined) return { by: "Wald", p: wald };
+  if (isRobust(context)) return wald === undefined ? undefined : { by: "Wald", p: wald };
   if (laitinen && !("absent" in laitinen)) return { by: "Laitinen’s F", p: laitinen.pValue };
   if (ratio !== undefined) {
     const differs = corrected !== undefined && corrected < context.level !== ratio < context.level;

@@ -70,6 +70,14 @@ describe("what a verdict goes by", () => {
     expect(testsNote(finding([berndtWood], clustered)).join(" ")).toContain("clustered by village");
   });
 
+  it("nothing where errors are clustered in too few clusters for Wald's", () => {
+    const few = { ...berndtWood, wald: { absent: "The covariance of the estimates has rank 1 where 3 are needed." } };
+    expect(rejects(few, clustered)).toBeUndefined();
+    expect(testVerdict(few, clustered).word).toBe("not tested");
+    expect(testMeaning(few, clustered)).toContain("has rank 1");
+    expect(testsSentence(finding([few], { ...clustered, revealed: undefined }))).not.toContain("reject");
+  });
+
   it("what is left where fits were refused, and nothing where nothing is", () => {
     const absent = { absent: "The moments are singular." };
     const narrow = { ...symmetry, wald: absent, likelihoodRatio: absent, corrected: absent };
