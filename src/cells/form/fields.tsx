@@ -52,7 +52,7 @@ export function ChoiceControl({
   const known = choices.find((choice) => choice.value === value);
   if (readOnly) {
     return (
-      <span className={mono ? MONO : "text-[0.875rem]/[1.25rem]"}>
+      <span className={mono && value !== "" ? MONO : "text-[0.875rem]/[1.25rem]"}>
         {known?.chosen ?? known?.label ?? (value || none || "not chosen")}
       </span>
     );

@@ -1,36 +1,7 @@
 import { type ReactNode, useId, useState } from "react";
 import type { SealedContent } from "../../../shared/schemas/referee-copy.ts";
-import { capital, listWords } from "../../../shared/study/words.ts";
-import { SYSTEMS } from "../../../shared/systems/index.ts";
-import { DECIMALS, printCount, printFixed } from "../../../shared/tables/numbers.ts";
-import { withArticle } from "../../../shared/tables/slutsky-matrix.ts";
-import { standardErrorsPhrase } from "../../../shared/tables/standard-errors.ts";
-
-/** The specification in words, one line a question. */
-export function specificationLines({
-  system,
-  slutsky,
-  program,
-  data,
-}: SealedContent): [question: string, answer: string][] {
-  const { fitted, convergence } = system;
-  const form = `${capital(SYSTEMS[fitted.form].longName)}, ${printCount(fitted.goods.length)} goods`;
-  const iterations = convergence.iterations === 1 ? "1 iteration" : `${convergence.iterations} iterations`;
-  const total = printFixed(slutsky.point.total * slutsky.totalScale, DECIMALS.money);
-  const lines: [string, string | undefined][] = [
-    ["Form", form],
-    ["Price index", fitted.index],
-    ["Intercepts shift with", listWords(fitted.demographics) || "nothing"],
-    ["Imposed", listWords(fitted.imposed) || "nothing"],
-    ["Estimator", `${system.estimator}, converged in ${iterations}`],
-    ["Standard errors", capital(standardErrorsPhrase(system))],
-    ["Evaluated at", `${withArticle(slutsky.pointName)}, expenditure ${total} in the units uploaded`],
-    ["Expenditure", "taken as exogenous"],
-    ["Rows", `${printCount(system.rows)}${data.weighted ? ", weighted" : ""}`],
-    ["Program", program],
-  ];
-  return lines.filter((line): line is [string, string] => line[1] !== undefined);
-}
+import { printCount } from "../../../shared/tables/numbers.ts";
+import { specificationLines } from "./specification-lines.ts";
 
 /** What was asked: in words, and as the text the study itself has. */
 export function Specification({ content, coefficients }: { content: SealedContent; coefficients: ReactNode }) {
