@@ -10,6 +10,7 @@ import { linearityOf } from "../inference/linearity.ts";
 import { type NestedFits, restrictionTests } from "../inference/restriction-tests.ts";
 import { Refusal } from "../refusal.ts";
 import type { RunControl } from "../run.ts";
+import { advising } from "./advice.ts";
 import { systemForm } from "./coefficient-form.ts";
 import { coefficientNames, labelOfCoefficient } from "./coefficient-labels.ts";
 import { type CurvaturePoint, imposeCurvature } from "./curvature/impose.ts";
@@ -65,7 +66,10 @@ export function estimateSystem(
   if (isExactEasi(specification)) {
     return exactFinding({ specification, data, size, names, dropped, estimation: linear }, control);
   }
-  const unbent = { estimation: linear, solution: solve(specification, system, size, linear, control) };
+  const unbent = {
+    estimation: linear,
+    solution: advising(specification, data, () => solve(specification, system, size, linear, control)),
+  };
   const { estimation, solution, curvature } = imposeCurvature(
     specification,
     system,

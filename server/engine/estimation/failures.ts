@@ -6,15 +6,31 @@ import type { NormalFactor } from "./normal-factor.ts";
 import { centredResponses, meanResponses } from "./responses.ts";
 import type { DependentColumn } from "./whitening.ts";
 
+/** An iteration that did not end; `ranOut` says that it was still lowering its criterion when its iterations were used up. */
+export class NotConverged extends Refusal {
+  override name = "NotConverged";
+  readonly condition: number;
+  readonly ranOut: boolean;
+
+  constructor(sentence: string, condition: number, ranOut: boolean) {
+    super(sentence);
+    this.condition = condition;
+    this.ranOut = ranOut;
+  }
+}
+
 export function refuseNotConverged(
   iterations: number,
   gradient: number,
   largestStep: number,
   condition: number,
+  ranOut = false,
 ): never {
-  throw new Refusal(
+  throw new NotConverged(
     `The estimation did not converge: after ${iterations} iterations the largest gradient per observation is ${printSize(gradient)}, ` +
       `the largest step ${printSize(largestStep)} where 10⁻¹⁰ was wanted, and the condition number ${printSize(condition)}.`,
+    condition,
+    ranOut,
   );
 }
 

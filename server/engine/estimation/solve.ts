@@ -1,10 +1,11 @@
 import type { SystemSpecification } from "../../../shared/schemas/system.ts";
 import type { DemandSystem, SystemSize } from "../../../shared/systems/demand-system.ts";
-import { unlessRefused } from "../refusal.ts";
+import { type Refusal, unlessRefused } from "../refusal.ts";
 import type { RunControl } from "../run.ts";
 import { systemForm } from "./coefficient-form.ts";
 import type { Estimation } from "./estimation.ts";
 import { leastSquares, maximumLikelihood, seeminglyUnrelated } from "./estimators.ts";
+import { NotConverged } from "./failures.ts";
 import { minimise, type Solution } from "./minimise.ts";
 import { startOf } from "./start.ts";
 
@@ -31,11 +32,22 @@ export function solve(
     const step = specification.estimator === "iterated seemingly unrelated" ? "update" : "newton";
     const straight = unlessRefused(
       () => straightToLikelihood(theta, estimation, step, control),
-      () => undefined,
+      (refusal) => {
+        if (isCreeping(refusal)) throw refusal;
+        return undefined;
+      },
     );
     if (straight !== undefined) return straight;
   }
   return solveFrom(theta, specification, system, size, estimation, control);
+}
+
+/** Of derivatives scaled to unit length; where prices are normalised it is about ten. */
+const ILL_CONDITIONED = 100;
+
+/** Still going down a long valley when its iterations were used up: least squares first would lead into the same valley. */
+function isCreeping(refusal: Refusal): boolean {
+  return refusal instanceof NotConverged && refusal.ranOut && refusal.condition > ILL_CONDITIONED;
 }
 
 /** Iterated seemingly unrelated regressions end where maximum likelihood does. */
