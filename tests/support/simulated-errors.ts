@@ -4,8 +4,7 @@ import type { Random } from "../../shared/numerics/random.ts";
  * How the errors of the equations are made. "in clusters": rows that share prices share a part of their error.
  * "autocorrelated": errors and log prices follow an autoregression, rows being periods.
  */
-export const ERROR_KINDS = ["independent", "heteroskedastic", "in clusters", "autocorrelated"] as const;
-export type ErrorKind = (typeof ERROR_KINDS)[number];
+export type ErrorKind = "independent" | "heteroskedastic" | "in clusters" | "autocorrelated";
 
 export interface Design {
   readonly goods: number;
