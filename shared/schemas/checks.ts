@@ -3,7 +3,6 @@ import { count, finite } from "./primitives.ts";
 
 /** Rows used in which a fitted system is not defined: how many, their share of the weight, and why, as a clause. */
 export const undefinedRows = z.strictObject({ rows: count, weightedShare: finite, reason: z.string() });
-export type UndefinedRows = z.infer<typeof undefinedRows>;
 
 /** The five laws at a point and, where counted, over all rows used (methods 3.1). */
 export const theoryChecks = z.strictObject({
