@@ -11,9 +11,10 @@ type Asked = Pick<SystemSpecification, "form" | "index" | "errors" | "difference
 
 /** Which rows and responses a specification asks for; absent where they are the shares at every row used. */
 export function sampleOf({ form, index, errors, differences }: Asked): SampleRequest | undefined {
+  const ofChanges = SYSTEMS[form].kind === "differences";
   const sample: SampleRequest = {
-    responses: errors === "expenditures" ? "expenditures" : form === "rotterdam" ? "contributions to volume" : "shares",
-    differences: form === "rotterdam" || differences === true,
+    responses: errors === "expenditures" ? "expenditures" : ofChanges ? "contributions to volume" : "shares",
+    differences: ofChanges || differences === true,
     lagged: form === "la-aids" && index === "lagged stone",
   };
   const plain = sample.responses === "shares" && !sample.differences && !sample.lagged;
@@ -22,7 +23,8 @@ export function sampleOf({ form, index, errors, differences }: Asked): SampleReq
 
 /** What in a specification needs one row a period in the order of time, and under which key it was asked for. */
 export function needsPeriods({ form, index, differences }: Asked): { what: string; key: string[] } | undefined {
-  if (form === "rotterdam") return { what: "The Rotterdam system", key: ["form"] };
+  const { kind, longName } = SYSTEMS[form];
+  if (kind === "differences") return { what: `The ${longName}`, key: ["form"] };
   if (differences) return { what: "A system in differences", key: ["differences"] };
   return index === "lagged stone" ? { what: "The lagged Stone index", key: ["index"] } : undefined;
 }

@@ -1,6 +1,6 @@
 import { type Matrix, zeros } from "../../../../shared/numerics/matrix.ts";
 import type { Point, SystemSize } from "../../../../shared/systems/demand-system.ts";
-import type { CurvedForm, CurvedParts } from "./curved-parts.ts";
+import { type CurvedForm, type CurvedParts, isQuadratic } from "./curved-parts.ts";
 import { type Deflation, deflation } from "./deflation.ts";
 import { entriesOfTriangle, factorOf } from "./negative-matrix.ts";
 
@@ -30,7 +30,8 @@ export interface CurvatureMap {
 export function curvatureMap(form: CurvedForm, size: SystemSize, point: Point, rank: number): CurvatureMap {
   const { goods: n, demographics: s } = size;
   const entries = entriesOfTriangle(n, rank).length;
-  const blocks = (n - 1) * (1 + s + 1 + (form === "quaids" ? 1 : 0));
+  const quadratic = isQuadratic(form);
+  const blocks = (n - 1) * (1 + s + 1 + (quadratic ? 1 : 0));
   const free = blocks + entries;
   const partsOf = (values: readonly number[], sum: number): CurvedParts => {
     let next = 0;
@@ -42,7 +43,7 @@ export function curvatureMap(form: CurvedForm, size: SystemSize, point: Point, r
     const shares = column(sum);
     const byDemographic = Array.from({ length: s }, () => column(0));
     const beta = column(0);
-    const lambda = form === "quaids" ? column(0) : new Array<number>(n).fill(0);
+    const lambda = quadratic ? column(0) : new Array<number>(n).fill(0);
     return {
       shares,
       demographic: Array.from({ length: n }, (_, i) => byDemographic.map((shifts) => shifts[i])),
@@ -60,7 +61,7 @@ export function curvatureMap(form: CurvedForm, size: SystemSize, point: Point, r
     ...parts.demographic.flat(),
     ...gamma.flat(),
     ...parts.beta,
-    ...(form === "quaids" ? parts.lambda : []),
+    ...(quadratic ? parts.lambda : []),
   ];
   return {
     free,

@@ -1,4 +1,5 @@
 import type { Matrix } from "../../../../shared/numerics/matrix.ts";
+import { SYSTEMS } from "../../../../shared/systems/index.ts";
 
 /** What θ is made of, all n goods; also the shape of a direction in it. */
 export interface CurvedParts {
@@ -10,3 +11,6 @@ export interface CurvedParts {
 }
 
 export type CurvedForm = "la-aids" | "aids" | "quaids";
+
+/** Whether θ ends with the λ of quadratic Engel curves. */
+export const isQuadratic = (form: CurvedForm): boolean => SYSTEMS[form].blocks.some(({ name }) => name === "lambda");

@@ -1,5 +1,6 @@
 import type { SystemSpecification } from "../../../../shared/schemas/system.ts";
 import type { DemandSystem, Point, SystemSize } from "../../../../shared/systems/demand-system.ts";
+import { quaidsPlaces } from "../../../../shared/systems/quaids-parts.ts";
 import { Refusal } from "../../refusal.ts";
 import type { RunControl } from "../../run.ts";
 import { constrainedForm } from "../coefficient-form.ts";
@@ -11,7 +12,7 @@ import { asOneColumn, weightBlocks } from "../residuals.ts";
 import { residualCovariance } from "../weighting.ts";
 import { bentForm, restAfter } from "./bent-form.ts";
 import { type CurvatureMap, curvatureMap } from "./curvature-map.ts";
-import type { CurvedForm } from "./curved-parts.ts";
+import { type CurvedForm, isQuadratic } from "./curved-parts.ts";
 import { compensatedResponses, entriesOfTriangle, nearestTriangle, rankOf } from "./negative-matrix.ts";
 import { steepestColumn } from "./steepest-column.ts";
 
@@ -85,33 +86,30 @@ function mapAt({ form, size, point }: CurvedTask, rank: number): CurvatureMap {
   return curvatureMap(form, size, point, rank);
 }
 
-/** w*, α_is, β and λ of all goods but the last: what stands before L in φ. */
-function beforeTriangle({ form, system, size, point }: CurvedTask, theta: readonly number[]): number[] {
-  const { goods: n, demographics: s } = size;
-  const shares = system.slopes(theta, size, point).shares;
-  const beta = n + n * s + n * n;
-  const butLast = Array.from({ length: n - 1 }, (_, i) => i);
+/** Places in θ of α, α_is, β and λ of all goods but the last, in the order in which they stand in φ before L. */
+function placesBeforeTriangle({ form, size }: CurvedTask): number[] {
+  const { alpha, demographic, beta, lambda } = quaidsPlaces(size);
+  const butLast = Array.from({ length: size.goods - 1 }, (_, i) => i);
   return [
-    ...butLast.map((i) => shares[i]),
-    ...Array.from({ length: s }, (_, k) => butLast.map((i) => theta[n + i * s + k])).flat(),
-    ...butLast.map((i) => theta[beta + i]),
-    ...(form === "quaids" ? butLast.map((i) => theta[beta + n + i]) : []),
+    ...butLast.map(alpha),
+    ...Array.from({ length: size.demographics }, (_, k) => butLast.map((i) => demographic(i, k))).flat(),
+    ...butLast.map(beta),
+    ...(isQuadratic(form) ? butLast.map(lambda) : []),
   ];
 }
 
+/** w* in place of α, then α_is, β and λ as they are: φ before L. */
+function beforeTriangle(task: CurvedTask, theta: readonly number[]): number[] {
+  const { system, size, point } = task;
+  const { shares } = system.slopes(theta, size, point);
+  return placesBeforeTriangle(task).map((place, f) => (f < size.goods - 1 ? shares[f] : theta[place]));
+}
+
 /** The place in θ that each free coefficient speaks of most nearly, for refusals that name it. */
-function placesOf({ form, size }: CurvedTask, rank: number): number[] {
-  const { goods: n, demographics: s } = size;
-  const gamma = n + n * s;
-  const beta = gamma + n * n;
-  const butLast = Array.from({ length: n - 1 }, (_, i) => i);
-  return [
-    ...butLast,
-    ...Array.from({ length: s }, (_, k) => butLast.map((i) => n + i * s + k)).flat(),
-    ...butLast.map((i) => beta + i),
-    ...(form === "quaids" ? butLast.map((i) => beta + n + i) : []),
-    ...entriesOfTriangle(n, rank).map(([row, column]) => gamma + row * n + column),
-  ];
+function placesOf(task: CurvedTask, rank: number): number[] {
+  const { gamma } = quaidsPlaces(task.size);
+  const entries = entriesOfTriangle(task.size.goods, rank);
+  return [...placesBeforeTriangle(task), ...entries.map(([row, column]) => gamma(row, column))];
 }
 
 function refit(task: CurvedTask, rank: number, start: readonly number[], control: RunControl): Fit {
