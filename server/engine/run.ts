@@ -40,3 +40,12 @@ export class Cancelled extends Error {
 }
 
 export const QUIET: RunControl = { progress() {}, cancelled: () => false };
+
+/** Throws `Cancelled` once someone has cancelled: for loops that may take seconds. */
+export type Poll = () => void;
+
+export function polling(control: RunControl, doing: string): Poll {
+  return () => {
+    if (control.cancelled()) throw new Cancelled(`cancelled while ${doing}`);
+  };
+}

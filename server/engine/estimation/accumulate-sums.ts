@@ -85,8 +85,8 @@ export const sumChunk = task(
   },
 );
 
-/** What the sums need of a source: its columns, where other threads see them too. */
-function onSharedColumns({ rows, columns, responses, weights }: MomentSource): MomentSource {
+/** What a pass over the rows needs of a source: its columns, where other threads see them too. */
+export function onSharedColumns({ rows, columns, responses, weights }: MomentSource): MomentSource {
   return {
     rows,
     columns: columns.map(onSharedMemory),

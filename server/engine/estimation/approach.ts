@@ -1,4 +1,4 @@
-import { Cancelled, type RunControl } from "../run.ts";
+import { type Poll, polling, type RunControl } from "../run.ts";
 import { type Columns, dot } from "./columns.ts";
 import {
   covarianceDerivatives,
@@ -41,19 +41,20 @@ export function approach(
 ): Approach {
   const { moments, form, equations } = estimation;
   if (moments.local !== undefined) return { free: [...start], iterations: 0, reached: false };
-  const products = gram(moments.terms);
+  const poll = polling(control, "iterating");
+  const products = gram(moments.terms, poll);
   let state = evaluate(estimation, criterion, [...start], control);
   const { say } = iterationProgress(estimation, criterion, control);
   let previous = Number.POSITIVE_INFINITY;
   for (let iteration = 1; ; iteration++) {
-    if (control.cancelled()) throw new Cancelled("cancelled while iterating");
+    poll();
     const derivatives = sparseDerivatives(form.derivatives(state.free), equations, moments.terms.columns);
     const residuals = residualProducts(state.weighted, moments.terms);
     const gradient = gradientOf(derivatives, residuals, state.weight);
-    const factor = factorOfProducts(normalProducts(derivatives, products, state.weight), gradient);
+    const factor = factorOfProducts(normalProducts(derivatives, products, state.weight, poll), gradient, poll);
     const leave = { free: state.free, iterations: iteration - 1, reached: false };
     if (factor === undefined) return leave;
-    const step = chooseStep(estimation, criterion, state, factor, derivatives, residuals);
+    const step = chooseStep(estimation, criterion, state, factor, derivatives, residuals, poll);
     const size = relativeStep(form, state.free, step);
     if (size <= tolerance) {
       return { free: state.free.map((value, f) => value + step[f]), iterations: iteration, reached: true };
@@ -75,9 +76,10 @@ function chooseStep(
   factor: NormalFactor,
   derivatives: SparseDerivatives,
   residuals: Columns,
+  poll: Poll,
 ): Float64Array {
   const newton = wantsNewton(criterion, estimation)
-    ? likelihoodStep(factor, covarianceDerivatives(derivatives, residuals, weight), estimation.moments.rows)
+    ? likelihoodStep(factor, covarianceDerivatives(derivatives, residuals, weight), estimation.moments.rows, poll)
     : undefined;
   return newton ?? gaussNewtonStep(factor);
 }

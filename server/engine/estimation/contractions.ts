@@ -1,5 +1,6 @@
+import type { Poll } from "../run.ts";
 import type { Entry } from "./coefficient-form.ts";
-import { type Columns, crossProduct, multiply, transposed, zeros } from "./columns.ts";
+import { type Columns, columnOf, crossProduct, multiply, transposed, zeros } from "./columns.ts";
 
 /**
  * ∂C/∂φ of the equations estimated without its noughts: those of φ_f stand from `starts[f]` to before
@@ -95,32 +96,57 @@ export function covarianceDerivatives(derivatives: SparseDerivatives, residuals:
  * A_fh = Σ v_fit (V V')_ij (Z'Z)_ts v_hjs. `products` is Z'Z. Squares of terms instead of derivatives: where terms
  * nearly cancel in these it has fewer digits than `normalFactor`. Upper triangle only.
  */
-export function normalProducts(derivatives: SparseDerivatives, products: Columns, weight: Columns): Columns {
+export function normalProducts(
+  derivatives: SparseDerivatives,
+  products: Columns,
+  weight: Columns,
+  poll: Poll,
+): Columns {
   const { starts, places, values } = derivatives;
   const free = starts.length - 1;
+  const spread = zeros(products.rows, weight.columns);
   const spreadOf = spreader(derivatives, products, multiply(weight, transposed(weight)));
   const result = zeros(free, free);
   for (let f = 0; f < free; f++) {
-    const spread = spreadOf(f);
+    poll();
+    spreadOf(f, spread.values.fill(0));
     for (let h = 0; h <= f; h++) {
       let sum = 0;
-      for (let at = starts[h]; at < starts[h + 1]; at++) sum += values[at] * spread[places[at]];
+      for (let at = starts[h]; at < starts[h + 1]; at++) sum += values[at] * spread.values[places[at]];
       result.values[f * free + h] = sum;
     }
   }
   return result;
 }
 
-/** (Z'Z) v_f' (V V'), |Z| × g: the metric first for a few terms in many equations, the terms first for many in a few. */
-function spreader(derivatives: SparseDerivatives, products: Columns, metric: Columns): (f: number) => Float64Array {
-  const { equations: g, terms, starts, places, values } = derivatives;
-  const spread = new Float64Array(g * terms);
+/** Ĵ itself: (r·g) × F, the equations' blocks one under another. */
+export function weightedJacobian(derivatives: SparseDerivatives, terms: Columns, weight: Columns, poll: Poll): Columns {
+  const jacobian = zeros(terms.rows * weight.columns, derivatives.starts.length - 1);
+  const spreadOf = spreader(derivatives, terms, weight);
+  for (let f = 0; f < jacobian.columns; f++) {
+    poll();
+    const column = columnOf(jacobian, f);
+    spreadOf(f, column);
+    for (let r = 0; r < column.length; r++) column[r] = -column[r];
+  }
+  return jacobian;
+}
+
+/**
+ * Adds X v_f' M to noughts, its columns one under another, for X with a column a term and M with a row an equation:
+ * M first for a few terms in many equations, X first for many in a few.
+ */
+function spreader(
+  { equations: g, terms, starts, places, values }: SparseDerivatives,
+  x: Columns,
+  metric: Columns,
+): (f: number, target: Float64Array) => void {
+  const height = x.rows;
   const factors = new Float64Array(g);
-  const alone = new Float64Array(g * terms);
+  const alone = new Float64Array(g * height);
   const taken = new Uint8Array(g);
-  return (f) => {
+  return (f, target) => {
     const [begin, end] = [starts[f], starts[f + 1]];
-    spread.fill(0);
     taken.fill(0);
     let runs = 0;
     for (let at = begin; at < end; at++) {
@@ -132,23 +158,25 @@ function spreader(derivatives: SparseDerivatives, products: Columns, metric: Col
         const term = places[at] % terms;
         factors.fill(0);
         for (; at < end && places[at] % terms === term; at++) {
-          const row = ((places[at] - term) / terms) * g;
-          for (let j = 0; j < g; j++) factors[j] += metric.values[row + j] * values[at];
+          const equation = (places[at] - term) / terms;
+          for (let j = 0; j < g; j++) factors[j] += metric.values[j * g + equation] * values[at];
         }
-        for (let j = 0; j < g; j++) addMultiple(spread, j * terms, factors[j], products.values, term * terms, terms);
+        for (let j = 0; j < g; j++) addMultiple(target, j * height, factors[j], x.values, term * height, height);
       }
-      return spread;
+      return;
     }
     alone.fill(0);
     for (let at = begin; at < end; at++) {
       const term = places[at] % terms;
-      addMultiple(alone, places[at] - term, values[at], products.values, term * terms, terms);
+      const equation = (places[at] - term) / terms;
+      addMultiple(alone, equation * height, values[at], x.values, term * height, height);
     }
     for (let i = 0; i < g; i++) {
       if (taken[i] === 0) continue;
-      for (let j = 0; j < g; j++) addMultiple(spread, j * terms, metric.values[i * g + j], alone, i * terms, terms);
+      for (let j = 0; j < g; j++) {
+        addMultiple(target, j * height, metric.values[j * g + i], alone, i * height, height);
+      }
     }
-    return spread;
   };
 }
 
@@ -161,5 +189,6 @@ function addMultiple(
   from: number,
   length: number,
 ): void {
+  if (factor === 0) return;
   for (let k = 0; k < length; k++) target[to + k] += factor * source[from + k];
 }

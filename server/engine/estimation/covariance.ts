@@ -1,3 +1,4 @@
+import type { Poll } from "../run.ts";
 import { type Columns, columnOf, crossProduct, multiply, zeros } from "./columns.ts";
 import type { Estimation } from "./estimation.ts";
 import { gram } from "./gram.ts";
@@ -10,8 +11,10 @@ import { invertUpper, semidefiniteCholesky } from "./triangle.ts";
  * Conventional covariance of θ̂ (k × k, singular by the restrictions): S A⁻¹S' with A = Ĵ'Ĵ, the
  * derivatives weighted by the Σ̂⁻¹ the estimator used. Right where the estimator is efficient.
  */
-export function conventionalCovariance(estimation: Estimation, solution: Solution): number[][] {
-  return outerSquare(multiply(restrictionMatrix(estimation), inverseRoot(solution)));
+export function conventionalCovariance(estimation: Estimation, solution: Solution, poll?: Poll): number[][] {
+  const inverse = inverseRoot(solution);
+  poll?.();
+  return outerSquare(multiply(restrictionMatrix(estimation), inverse), poll);
 }
 
 /**
@@ -19,7 +22,7 @@ export function conventionalCovariance(estimation: Estimation, solution: Solutio
  * B = Ĵ'(Ω̂ ⊗ I)Ĵ and Ω̂ the residual covariance (divisor T) in the estimator's own metric. Equation by
  * equation it is the textbook σ̂²_i(X'X)⁻¹ with σ̂²_ij (X'X)⁻¹ between equations.
  */
-export function leastSquaresCovariance(estimation: Estimation, solution: Solution): number[][] {
+export function leastSquaresCovariance(estimation: Estimation, solution: Solution, poll?: Poll): number[][] {
   const { moments, equations } = estimation;
   const height = moments.terms.rows;
   const weighted = weightBlocks(chosenResiduals(solution, equations), height, solution.weight);
@@ -32,9 +35,9 @@ export function leastSquaresCovariance(estimation: Estimation, solution: Solutio
   }
   const spread = weightBlocks(solution.jacobian, height, root);
   const inverse = inverseRoot(solution);
-  const inner = multiply(gram(spread), inverse);
-  const middle = semidefiniteCholesky(crossProduct(inverse, inner), 0).factor;
-  return outerSquare(multiply(multiply(restrictionMatrix(estimation), inverse), transpose(middle)));
+  const inner = multiply(gram(spread, poll), inverse);
+  const middle = semidefiniteCholesky(crossProduct(inverse, inner), 0, poll).factor;
+  return outerSquare(multiply(multiply(restrictionMatrix(estimation), inverse), transpose(middle)), poll);
 }
 
 /**
@@ -76,8 +79,8 @@ function restrictionMatrix({ form }: Estimation): Columns {
 }
 
 /** H H', exactly symmetric. */
-function outerSquare(half: Columns): number[][] {
-  const square = gram(transpose(half));
+function outerSquare(half: Columns, poll?: Poll): number[][] {
+  const square = gram(transpose(half), poll);
   return Array.from({ length: half.rows }, (_, a) => Array.from(columnOf(square, a)));
 }
 

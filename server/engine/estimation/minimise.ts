@@ -1,9 +1,9 @@
-import { Cancelled, type RunControl } from "../run.ts";
+import { Cancelled, type Poll, polling, type RunControl } from "../run.ts";
 import { approach } from "./approach.ts";
 import { expand } from "./coefficient-form.ts";
 import { type Columns, dot } from "./columns.ts";
 import { conditionOf } from "./condition.ts";
-import { covarianceDerivatives, residualProducts, sparseDerivatives } from "./contractions.ts";
+import { covarianceDerivatives, residualProducts, sparseDerivatives, weightedJacobian } from "./contractions.ts";
 import { type Criterion, evaluate, type State, wantsNewton, weightedResiduals } from "./criterion.ts";
 import type { Estimation } from "./estimation.ts";
 import { refuseNotConverged, refuseNotIdentified } from "./failures.ts";
@@ -11,7 +11,7 @@ import { iterationProgress, largestGradient } from "./iteration-progress.ts";
 import { relativeStep, search } from "./line-search.ts";
 import type { Moments } from "./moments.ts";
 import { type NormalFactor, normalFactor } from "./normal-factor.ts";
-import { asOneColumn, residualFactor, residualJacobian, weightBlocks } from "./residuals.ts";
+import { asOneColumn, residualFactor, residualJacobian } from "./residuals.ts";
 import { dampedStep, gaussNewtonStep, likelihoodStep } from "./steps.ts";
 
 export interface Solution {
@@ -74,7 +74,7 @@ export function minimise(
     if (iteration === 1 && factor.dependent.length > 0 && estimation.moments.dependent.length > 0) {
       refuseNotIdentified(estimation, factor);
     }
-    const step = chooseStep(criterion, estimation, state, linear);
+    const step = chooseStep(criterion, estimation, state, linear, polling(control, "iterating"));
     const slope = dot(gradient, step);
     const previous = largestStep;
     largestStep = relativeStep(estimation.form, state.free, step);
@@ -122,14 +122,15 @@ function linearise(estimation: Estimation, state: State, control: RunControl) {
     local === undefined
       ? state.weighted
       : weightedResiduals(residualFactor(moments, form, state.free), equations, state.weight);
-  const unweighted = residualJacobian(moments, form, state.free, equations);
-  const jacobian = weightBlocks(unweighted, moments.terms.rows, state.weight);
+  const poll = polling(control, "iterating");
+  const derivatives = sparseDerivatives(form.derivatives(state.free), equations, moments.terms.columns);
+  const jacobian = weightedJacobian(derivatives, moments.terms, state.weight, poll);
   const residuals = asOneColumn(weighted);
-  const factor = normalFactor(jacobian, residuals);
+  const factor = normalFactor(jacobian, residuals, poll);
   const gradient = Float64Array.from({ length: form.free }, (_, f) =>
     dot(jacobian.values.subarray(f * jacobian.rows, (f + 1) * jacobian.rows), residuals.values),
   );
-  return { moments, jacobian, factor, gradient, weighted };
+  return { moments, derivatives, jacobian, factor, gradient, weighted };
 }
 
 /** E after the last step. Where terms move with θ, to the first order of a step that is as small as rounding. */
@@ -158,13 +159,12 @@ function residualsAfter(
 function chooseStep(
   criterion: Criterion,
   estimation: Estimation,
-  { weight, free }: State,
-  { moments, factor, weighted }: ReturnType<typeof linearise>,
+  { weight }: State,
+  { moments, derivatives, factor, weighted }: ReturnType<typeof linearise>,
+  poll: Poll,
 ): Float64Array {
   if (factor.dependent.length > 0) return dampedStep(factor, 1e-8);
   if (!wantsNewton(criterion, estimation)) return gaussNewtonStep(factor);
-  const { form, equations } = estimation;
-  const derivatives = sparseDerivatives(form.derivatives(free), equations, moments.terms.columns);
   const cross = covarianceDerivatives(derivatives, residualProducts(weighted, moments.terms), weight);
-  return likelihoodStep(factor, cross, moments.rows) ?? gaussNewtonStep(factor);
+  return likelihoodStep(factor, cross, moments.rows, poll) ?? gaussNewtonStep(factor);
 }

@@ -1,3 +1,4 @@
+import type { Poll } from "../run.ts";
 import { type Columns, columnOf, dot, zeros } from "./columns.ts";
 import { gram } from "./gram.ts";
 import { reduceToTriangle } from "./householder.ts";
@@ -25,15 +26,15 @@ const DEPENDENT = 1e-10;
  * and factored by Cholesky, a few times faster; where it is not, by Householder reflections of J itself.
  * Iterations recompute b, so that either ends at the same solution.
  */
-export function normalFactor(jacobian: Columns, right: Columns): NormalFactor {
+export function normalFactor(jacobian: Columns, right: Columns, poll?: Poll): NormalFactor {
   const projections = Float64Array.from({ length: jacobian.columns }, (_, f) =>
     dot(columnOf(jacobian, f), right.values),
   );
-  return factorOfProducts(gram(jacobian), projections) ?? byReflections(jacobian, right);
+  return factorOfProducts(gram(jacobian, poll), projections, poll) ?? byReflections(jacobian, right);
 }
 
 /** The factor from J'J (its upper triangle) and J'b; undefined where squares have lost too many digits. */
-export function factorOfProducts(products: Columns, projections: Float64Array): NormalFactor | undefined {
+export function factorOfProducts(products: Columns, projections: Float64Array, poll?: Poll): NormalFactor | undefined {
   const free = products.columns;
   const lengths = Float64Array.from({ length: free }, (_, f) => Math.sqrt(products.values[f * free + f]) || 1);
   const scaled = zeros(free, free);
@@ -42,7 +43,7 @@ export function factorOfProducts(products: Columns, projections: Float64Array): 
       scaled.values[f * free + h] = products.values[f * free + h] / (lengths[f] * lengths[h]);
     }
   }
-  const { factor, dependent, smallestPivot } = semidefiniteCholesky(scaled, SQUARED_PIVOT);
+  const { factor, dependent, smallestPivot } = semidefiniteCholesky(scaled, SQUARED_PIVOT, poll);
   if (dependent.length > 0 || smallestPivot < SQUARED_PIVOT) return undefined;
   const projected = projections.map((value, f) => value / lengths[f]);
   solveUpperTransposed(factor, projected);

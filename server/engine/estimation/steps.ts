@@ -1,3 +1,4 @@
+import type { Poll } from "../run.ts";
 import { type Columns, columnOf, zeros } from "./columns.ts";
 import { gram } from "./gram.ts";
 import { reduceToTriangle } from "./householder.ts";
@@ -39,21 +40,27 @@ export function dampedStep({ triangle, projected, lengths }: NormalFactor, dampi
  * which makes convergence quadratic where residuals are linear, also when T is small. `derivatives` are B,
  * F × ½g(g+1). Undefined where that matrix is not positive definite: then Gauss–Newton.
  */
-export function likelihoodStep(factor: NormalFactor, derivatives: Columns, rows: number): Float64Array | undefined {
+export function likelihoodStep(
+  factor: NormalFactor,
+  derivatives: Columns,
+  rows: number,
+  poll: Poll,
+): Float64Array | undefined {
   const { triangle, projected, lengths } = factor;
   const free = lengths.length;
   const turned = zeros(derivatives.columns, free);
   const scaled = new Float64Array(free);
   for (let pair = 0; pair < derivatives.columns; pair++) {
+    poll();
     const column = columnOf(derivatives, pair);
     for (let f = 0; f < free; f++) scaled[f] = column[f] / lengths[f];
     solveUpperTransposed(triangle, scaled);
     for (let f = 0; f < free; f++) turned.values[f * turned.rows + pair] = scaled[f];
   }
-  const hessian = gram(turned);
+  const hessian = gram(turned, poll);
   for (let k = 0; k < hessian.values.length; k++) hessian.values[k] /= -2 * rows;
   for (let f = 0; f < free; f++) hessian.values[f * free + f] += 1;
-  const { factor: root, dependent } = semidefiniteCholesky(hessian, 1e-6);
+  const { factor: root, dependent } = semidefiniteCholesky(hessian, 1e-6, poll);
   if (dependent.length > 0) return undefined;
   const step = projected.map((value) => -value);
   solveUpperTransposed(root, step);

@@ -1,4 +1,7 @@
+import type { Poll } from "../run.ts";
 import { type Columns, zeros } from "./columns.ts";
+
+const COLUMNS_BETWEEN_POLLS = 64;
 
 /** Solves R y = b in place, R upper triangular (its first `size` rows and columns). */
 export function solveUpper(upper: Columns, right: Float64Array, size: number = upper.columns): void {
@@ -37,6 +40,7 @@ export function invertUpper(upper: Columns): Columns {
 export function semidefiniteCholesky(
   matrix: Columns,
   tolerance: number,
+  poll: Poll = () => {},
 ): { factor: Columns; dependent: number[]; smallestPivot: number } {
   const size = matrix.columns;
   const factor = zeros(size, size);
@@ -44,6 +48,7 @@ export function semidefiniteCholesky(
   const dependent: number[] = [];
   let smallestPivot = 1;
   for (let j = 0; j < size; j++) {
+    if (j % COLUMNS_BETWEEN_POLLS === 0) poll();
     const column = j * size;
     const diagonal = matrix.values[column + j];
     let pivot = diagonal;

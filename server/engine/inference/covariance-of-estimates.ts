@@ -1,7 +1,7 @@
 import type { BootstrapSpecification } from "../../../shared/schemas/standard-errors.ts";
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { conventionalCovariance, leastSquaresCovariance } from "../estimation/covariance.ts";
-import type { RunControl } from "../run.ts";
+import { polling, type RunControl } from "../run.ts";
 import { estimateReplicates, summarise } from "./bootstrap/bootstrap.ts";
 import { type Fitted, replicateWork } from "./bootstrap/of-system.ts";
 import { clustersOfRows } from "./row-groups.ts";
@@ -25,7 +25,11 @@ export function covarianceOfEstimates(fitted: Fitted, control: RunControl): Cova
   const effective = data.weights && { effectiveRows: effectiveRows(data.weights) };
   if (asked === "conventional") {
     const least = specification.estimator === "least squares";
-    const covariance = (least ? leastSquaresCovariance : conventionalCovariance)(estimation, solution);
+    const covariance = (least ? leastSquaresCovariance : conventionalCovariance)(
+      estimation,
+      solution,
+      polling(control, "forming the covariance"),
+    );
     return { covariance, standardErrors: "conventional", ...effective };
   }
   if (asked === "heteroskedastic") {
