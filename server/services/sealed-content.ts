@@ -66,9 +66,10 @@ function withoutFileName(cell: CellSource): CellSource {
 }
 
 function matrixOf(finding: SlutskyFinding): SealedContent["slutsky"] {
-  const { kind, dataFingerprint, fitted, form, pointName, point, priceScale, totalScale, at, tests, sample } = finding;
+  const { kind, dataFingerprint, fitted, form, pointName, point, priceScale, totalScale, at, tests, caveats, sample } =
+    finding;
   const sealed = { kind, dataFingerprint, fitted, form, pointName, point, priceScale, totalScale, at, tests };
-  return sample === undefined ? sealed : { ...sealed, sample };
+  return { ...sealed, ...(caveats && { caveats }), ...(sample && { sample }) };
 }
 
 function accountingOf({ accounting }: DataFinding): SealedContent["accounting"] {

@@ -1,5 +1,6 @@
 import { z } from "zod";
 import { PRICE_INDEX_NAMES, SYSTEM_NAMES } from "../systems/names.ts";
+import { caveats } from "./caveats.ts";
 import { theoryChecks, undefinedRows } from "./checks.ts";
 import { cellName, columnName, count, fingerprint, finite, goodName, matrix, vector } from "./primitives.ts";
 import { pointSpecification } from "./slutsky.ts";
@@ -118,6 +119,7 @@ export const elasticitiesFinding = z.strictObject({
   checks: theoryChecks,
   tests: z.array(restrictionTest),
   without: z.array(undefinedGroup),
+  caveats,
   /** Over rows: how many of them the standard errors' derivatives were taken at, where not at all. */
   derivativeRows: z.strictObject({ used: count, of: count }).optional(),
 });

@@ -1,4 +1,5 @@
 import { z } from "zod";
+import { caveats } from "./caveats.ts";
 import { theoryChecks, undefinedRows } from "./checks.ts";
 import { cellName, count, fingerprint, finite, goodName, matrix, vector } from "./primitives.ts";
 import { fittedSystem, namedPoint, restrictionTest } from "./system.ts";
@@ -117,6 +118,7 @@ export const slutskyFinding = z.strictObject({
   totalScale: finite,
   at: matrixAtPoint,
   tests: z.array(restrictionTest),
+  caveats,
   sample: negativityOverSample.optional(),
   brokenRows: z.array(brokenRow).max(500),
 });

@@ -1,4 +1,5 @@
 import type { ClassOfGood, ElasticitiesFinding, ElasticityGroup } from "../schemas/elasticities.ts";
+import { caveatSentences } from "./caveat-words.ts";
 import { printCount, printPercent, printQuantity } from "./numbers.ts";
 import { capital, countedRows, listed, undefinedSentence } from "./phrases.ts";
 import { withArticle } from "./slutsky-matrix.ts";
@@ -24,7 +25,7 @@ export function elasticitiesSentence(finding: ElasticitiesFinding): string {
   const { groups } = finding;
   const told = groups.length === 1 ? oneGroup(finding, groups[0]) : severalGroups(finding);
   const giffen = groups.length === 1 ? giffenGoods(groups[0]) : [];
-  return [told, ...giffen, ...notDefined(finding), ...withoutAny(finding)].join(" ");
+  return [told, ...giffen, ...notDefined(finding), ...withoutAny(finding), ...caveatSentences(finding)].join(" ");
 }
 
 function oneGroup(finding: ElasticitiesFinding, group: ElasticityGroup): string {

@@ -1,6 +1,7 @@
 import type { DataFinding } from "../schemas/data.ts";
 import type { SlutskyFinding } from "../schemas/slutsky.ts";
 import type { SystemFinding } from "../schemas/system.ts";
+import { caveatSentences } from "./caveat-words.ts";
 import { curvatureSentences } from "./curvature-words.ts";
 import { equationsSentences } from "./equations-sentence.ts";
 import { endogeneityHeadline } from "./first-steps-words.ts";
@@ -128,10 +129,10 @@ function estimate({ largest = 0, standardError, interval }: ToldSystem["checks"]
   return `${printQuantity(largest, "entry")}${error}${ends}`;
 }
 
-type ToldMatrix = Pick<SlutskyFinding, "at" | "pointName" | "sample">;
+type ToldMatrix = Pick<SlutskyFinding, "at" | "pointName" | "sample" | "caveats">;
 
 /** What the matrix is at its point, then where it breaks. */
-export function slutskySentence({ at: { checks }, pointName, sample }: ToldMatrix): string {
+export function slutskySentence({ at: { checks }, pointName, sample, caveats }: ToldMatrix): string {
   const at = withArticle(pointName);
   const { symmetry, negativity } = checks;
   const symmetric = symmetry.holds ? "symmetric" : `not symmetric, by up to ${printSize(symmetry.size)},`;
@@ -142,7 +143,7 @@ export function slutskySentence({ at: { checks }, pointName, sample }: ToldMatri
       : `The matrix is ${symmetric} and not negative semidefinite at ${at}: the largest eigenvalue is ${estimate(negativity)}.`;
   const monotone = checks.monotonicity.holds ? [] : [`A predicted share leaves the range from 0 to 1 at ${at}.`];
   const undefinedRows = undefinedSentence(checks.sample?.undefined, checks.sample?.rows ?? 0);
-  return [first, ...monotone, ...whereItBreaks(sample), ...undefinedRows].join(" ");
+  return [first, ...monotone, ...whereItBreaks(sample), ...undefinedRows, ...caveatSentences({ caveats })].join(" ");
 }
 
 function whereItBreaks(sample: ToldMatrix["sample"]): string[] {

@@ -14,6 +14,7 @@ import { standardErrorsPhrase } from "../../../shared/tables/standard-errors.ts"
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { Refusal } from "../refusal.ts";
 import { Cancelled, QUIET, type RunControl } from "../run.ts";
+import { caveatsOf } from "./caveats-of.ts";
 import { type RowGroup, rowGroups } from "./elasticity-groups.ts";
 import { atGroupMean, atOnePoint, type GroupOrReason } from "./elasticity-points.ts";
 import { overRows } from "./elasticity-rows.ts";
@@ -56,6 +57,7 @@ export function runElasticities(
     groups: found,
     checks: checksOf(system, found),
     tests: system.tests,
+    ...caveatsOf(system),
     without,
     ...(derivativeRows && derivativeRows.used < derivativeRows.of && { derivativeRows }),
   });

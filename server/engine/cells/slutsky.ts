@@ -6,6 +6,7 @@ import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import type { Matrix, Point } from "../../../shared/systems/demand-system.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { QUIET, type RunControl } from "../run.ts";
+import { caveatsOf } from "./caveats-of.ts";
 import { refusingRanges } from "./refusing.ts";
 import { pointOf } from "./slutsky-point.ts";
 import { negativityOverRows } from "./slutsky-sample.ts";
@@ -46,6 +47,7 @@ export function runSlutsky(
       checks: { ...checks, ...(system.checks.sample && { sample: system.checks.sample }) },
     },
     tests: system.tests,
+    ...caveatsOf(system),
     ...(sample && { sample }),
     brokenRows,
   });

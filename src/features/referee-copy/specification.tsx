@@ -1,5 +1,6 @@
 import { type ReactNode, useId, useState } from "react";
 import type { SealedContent } from "../../../shared/schemas/referee-copy.ts";
+import { caveatSentences } from "../../../shared/tables/caveat-words.ts";
 import { printCount } from "../../../shared/tables/numbers.ts";
 import { specificationLines } from "./specification-lines.ts";
 
@@ -31,6 +32,7 @@ export function Specification({ content, coefficients }: { content: SealedConten
           </div>
         ))}
       </dl>
+      {content.slutsky.caveats && <p className="type-small mt-1">{caveatSentences(content.slutsky).join(" ")}</p>}
       <p className="mt-1 flex gap-4 print:hidden">
         {word("coefficients", `Coefficients, ${printCount(content.system.coefficients.length)} of them`)}
         {word("text", "As text")}

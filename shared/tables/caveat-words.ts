@@ -1,0 +1,13 @@
+import type { Caveats } from "../schemas/caveats.ts";
+
+const WORDS: Readonly<Record<NonNullable<Caveats>[number], string>> = {
+  "latent shares":
+    "Goods not bought take two steps: what stands here is of the latent shares, not of what is expected to be bought.",
+  "first step as given": "The standard errors take the probits of the first step as data.",
+  "first stage as given": "The standard errors take the first stage of total expenditure as data.",
+};
+
+/** What a reader has to know of the system beneath, a sentence each. */
+export function caveatSentences({ caveats = [] }: { readonly caveats?: Caveats }): string[] {
+  return caveats.map((caveat) => WORDS[caveat]);
+}
