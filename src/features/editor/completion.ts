@@ -1,4 +1,9 @@
-import type { Completion, CompletionContext, CompletionResult } from "@codemirror/autocomplete";
+import {
+  type Completion,
+  type CompletionContext,
+  type CompletionResult,
+  startCompletion,
+} from "@codemirror/autocomplete";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { readDocument } from "../../../shared/study/document.ts";
 import { keyEdit } from "../../../shared/study/edit.ts";
@@ -53,7 +58,23 @@ function values(subject: EditorSubject, where: WhereInYaml, text: string): Compl
   const word = wordsAt(subject, where.path).find(({ key }) => key === where.key);
   if (!word) return [];
   const plain = word.values.map((value) => ({ label: value, type: "word" }));
-  return [...plain, ...named(subject, word, text)];
+  const maps = word.named || word.list ? [] : word.keys.filter(({ needed }) => needed).map(openedMap);
+  return [...plain, ...maps, ...named(subject, word, text)];
+}
+
+/** A value that is a map, begun at a key it needs: "{cluster: }" with the caret before the brace. */
+function openedMap({ key, says }: KeyWord): Completion {
+  return {
+    label: `{${key}: }`,
+    detail: says,
+    type: "key",
+    apply: (view, _completion, from, to) => {
+      const insert = `{${key}: }`;
+      const caret = { anchor: from + insert.length - 1 };
+      view.dispatch({ changes: { from, to, insert }, selection: caret, userEvent: "input.complete" });
+      startCompletion(view);
+    },
+  };
 }
 
 function named({ cellsNow, uploads, name, kind }: EditorSubject, word: KeyWord, text: string): Completion[] {

@@ -67,6 +67,13 @@ describe("completion", () => {
   it("offers the words a key may have, in a list too", () => {
     expect(offered("system", "form: |")).toEqual(expect.arrayContaining(["la-aids", "aids", "les"]));
     expect(offered("system", "impose: [homogeneity, |")).toEqual(["homogeneity", "symmetry"]);
+    expect(offered("system", "standard errors: |")).toEqual([
+      "conventional",
+      "heteroskedastic",
+      "{cluster: }",
+      "{bootstrap: }",
+    ]);
+    expect(offered("system", "season: |")).toEqual(["{period: }"]);
   });
 
   it("offers names of cells of the right kind, uploads and columns", () => {
