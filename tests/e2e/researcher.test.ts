@@ -191,10 +191,14 @@ it("chooses the estimator in the form, and both write one text", async () => {
   await band.getByRole("button", { name: "Form", exact: true }).click();
   expect(await band.getByRole("checkbox", { name: "homogeneity" }).isChecked()).toBe(true);
   expect(await band.getByRole("checkbox", { name: "symmetry" }).isChecked()).toBe(true);
-  await band.getByLabel("Estimator").selectOption({ value: "maximum likelihood" });
+  await band.getByLabel("Estimator").selectOption({ value: "least squares" });
   const text = await textIn(await openText(page, "base"));
   expect(text).toContain("impose: [homogeneity, symmetry]");
-  expect(text).toContain("estimator: maximum likelihood");
+  expect(text).toContain("estimator: least squares");
+  // What holds without being said is not written.
+  await band.getByRole("button", { name: "Form", exact: true }).click();
+  await band.getByLabel("Estimator").selectOption({ value: "maximum likelihood" });
+  expect(await textIn(await openText(page, "base"))).not.toContain("estimator:");
 });
 
 it("estimates, and the log-likelihood is that of a general optimiser", async () => {
