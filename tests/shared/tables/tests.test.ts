@@ -14,26 +14,8 @@ import { testsNote } from "../../../shared/tables/tests-note.ts";
 import { testsSentence } from "../../../shared/tables/tests-sentence.ts";
 import { tableText } from "../../../shared/tables/text.ts";
 import { exampleFindings } from "../../support/findings.ts";
+import { berndtWoodHomogeneity } from "../../support/made-tests.ts";
 
-/** Berndt & Wood's homogeneity test: asymptotic tests reject, Laitinen's exact one does not. */
-const berndtWood: MadeTest = {
-  hypothesis: "homogeneity",
-  given: [],
-  degreesOfFreedom: 3,
-  wald: { statistic: 12.86497026, pValue: 0.004938 },
-  likelihoodRatio: { statistic: 10.37876481, pValue: 0.015606 },
-  score: { statistic: 8.49397885, pValue: 0.036833 },
-  corrected: { statistic: 7.680285956, pValue: 0.0531027 },
-  laitinen: {
-    tSquared: 10.29197621,
-    f: 3.087592862,
-    numerator: 3,
-    denominator: 18,
-    pValue: 0.05338436,
-    approximate: false,
-    because: "the laspeyres index holds no current shares",
-  },
-};
 const symmetry: MadeTest = {
   hypothesis: "symmetry",
   given: ["homogeneity"],
@@ -55,23 +37,26 @@ const clustered = { level: 0.05, covariance: { cluster: "village" } } as const;
 
 describe("what a verdict goes by", () => {
   it("Laitinen's F where there is one, whatever the others say", () => {
-    expect(decidingTest(berndtWood, plain)).toEqual({ by: "Laitinen’s F", p: 0.05338436 });
-    expect(testVerdict(berndtWood, plain)).toEqual({ figure: "holds here", word: "not rejected" });
+    expect(decidingTest(berndtWoodHomogeneity, plain)).toEqual({ by: "Laitinen’s F", p: 0.05338436 });
+    expect(testVerdict(berndtWoodHomogeneity, plain)).toEqual({ figure: "holds here", word: "not rejected" });
   });
 
   it("else the likelihood ratio, corrected where that changes the answer", () => {
-    const { laitinen: _, ...without } = berndtWood;
+    const { laitinen: _, ...without } = berndtWoodHomogeneity;
     expect(decidingTest(without, plain)).toEqual({ by: "corrected LR", p: 0.0531027 });
     expect(decidingTest(symmetry, plain)).toEqual({ by: "LR", p: 0.0049949 });
   });
 
   it("Wald's alone where errors are clustered", () => {
-    expect(decidingTest(berndtWood, clustered)).toEqual({ by: "Wald", p: 0.004938 });
-    expect(testsNote(finding([berndtWood], clustered)).join(" ")).toContain("clustered by village");
+    expect(decidingTest(berndtWoodHomogeneity, clustered)).toEqual({ by: "Wald", p: 0.004938 });
+    expect(testsNote(finding([berndtWoodHomogeneity], clustered)).join(" ")).toContain("clustered by village");
   });
 
   it("nothing where errors are clustered in too few clusters for Wald's", () => {
-    const few = { ...berndtWood, wald: { absent: "The covariance of the estimates has rank 1 where 3 are needed." } };
+    const few = {
+      ...berndtWoodHomogeneity,
+      wald: { absent: "The covariance of the estimates has rank 1 where 3 are needed." },
+    };
     expect(rejects(few, clustered)).toBeUndefined();
     expect(testVerdict(few, clustered).word).toBe("not tested");
     expect(testMeaning(few, clustered)).toContain("has rank 1");
@@ -89,14 +74,14 @@ describe("what a verdict goes by", () => {
   });
 
   it("the level that was asked for", () => {
-    expect(testVerdict(berndtWood, { ...plain, level: 0.1 }).word).toBe("rejected");
+    expect(testVerdict(berndtWoodHomogeneity, { ...plain, level: 0.1 }).word).toBe("rejected");
     expect([levelText(0.05), levelText(0.1), levelText(0.001)]).toEqual(["5 per cent", "10 per cent", "0.1 per cent"]);
   });
 });
 
 describe("what tests mean", () => {
   it("never that a hypothesis holds", () => {
-    expect(testMeaning(berndtWood, plain)).toBe(
+    expect(testMeaning(berndtWoodHomogeneity, plain)).toBe(
       "The data do not reject homogeneity at 5 per cent; that is no proof that it holds. The plain likelihood ratio rejects: asymptotic tests reject too often in small samples.",
     );
     expect(testMeaning(symmetry, plain)).toBe("The data reject symmetry given homogeneity at 5 per cent.");
@@ -117,7 +102,7 @@ describe("what tests mean", () => {
   });
 
   it("in the head: what is rejected, what is not", () => {
-    expect(testsSentence(finding([berndtWood, symmetry]))).toBe(
+    expect(testsSentence(finding([berndtWoodHomogeneity, symmetry]))).toBe(
       "The data reject symmetry given homogeneity at 5 per cent. They do not reject homogeneity; that is no proof of it.",
     );
     const both = { ...symmetry, hypothesis: "homogeneity and symmetry" as const };
@@ -130,7 +115,7 @@ describe("what tests mean", () => {
 });
 
 describe("the table to copy", () => {
-  const table = testsTable(finding([berndtWood, symmetry, unmade]));
+  const table = testsTable(finding([berndtWoodHomogeneity, symmetry, unmade]));
 
   it("has every statistic with its probability, and a reason for what is missing", () => {
     const [, head, first, second, third] = tableText(table).split("\n");

@@ -2,13 +2,13 @@ import { render, screen, within } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
 import { useState } from "react";
 import { describe, expect, it } from "vitest";
-import type { Upload } from "../../../shared/schemas/resources.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
 import { DataForm } from "../../../src/cells/data/form.tsx";
 import { SlutskyForm } from "../../../src/cells/slutsky/form.tsx";
 import { SystemForm } from "../../../src/cells/system/form.tsx";
 import type { FormProps } from "../../../src/cells/types.ts";
+import { exampleUpload } from "../../support/example-upload.ts";
 
 const DATA = `upload: purchases.csv # the survey of 2031
 goods:
@@ -42,24 +42,7 @@ const names = [
   "e_dairy",
   "q_dairy",
 ];
-const upload: Upload = {
-  id: "u",
-  name: "purchases.csv",
-  bytes: 1,
-  rows: 100,
-  sha256: "",
-  separator: ",",
-  decimalComma: false,
-  uploadedAt: "2032-03-01T09:00:00.000Z",
-  uploadedBy: "Ilse Marchetti",
-  columns: names.map((name) => ({
-    name,
-    type: name === "village" ? "text" : "number",
-    missing: 0,
-    distinct: 50,
-    zeros: name.startsWith("q_") ? 3 : 0,
-  })),
-};
+const upload = exampleUpload(names);
 const cell = (name: string, kind: string, source: string): CellSource => ({
   id: name,
   name,

@@ -2,10 +2,10 @@ import { render, screen, within } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
 import { useState } from "react";
 import { describe, expect, it } from "vitest";
-import type { Upload } from "../../../shared/schemas/resources.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
 import { SystemForm } from "../../../src/cells/system/form.tsx";
+import { exampleUpload } from "../../support/example-upload.ts";
 
 const DATA = `upload: purchases.csv
 goods:
@@ -15,24 +15,7 @@ cluster: village
 time: week
 `;
 const columns = ["village", "week", "rooms", "members", "p_grains", "e_grains", "p_dairy", "e_dairy"];
-const upload: Upload = {
-  id: "u",
-  name: "purchases.csv",
-  bytes: 1,
-  rows: 100,
-  sha256: "",
-  separator: ",",
-  decimalComma: false,
-  uploadedAt: "2032-03-01T09:00:00.000Z",
-  uploadedBy: "Ilse Marchetti",
-  columns: columns.map((name) => ({
-    name,
-    type: name === "village" ? "text" : "number",
-    missing: 0,
-    distinct: 50,
-    zeros: 0,
-  })),
-};
+const upload = exampleUpload(columns);
 const survey: CellSource = { id: "survey", name: "survey", kind: "data", order: "a", source: DATA };
 
 function Page({ written, readOnly }: { written: { source: string }; readOnly: boolean }) {
