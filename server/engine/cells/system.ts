@@ -13,6 +13,7 @@ import {
   type Moments,
   type MomentsRequest,
   momentsRequest,
+  requireRows,
 } from "../estimation/index.ts";
 import { QUIET, type RunControl } from "../run.ts";
 import { curvaturePoint } from "./curvature-point.ts";
@@ -29,6 +30,7 @@ import { weightedQuantiles } from "./weighted.ts";
  */
 export function runSystem(given: SystemSpecification, data: PreparedData, control: RunControl = QUIET): SystemFinding {
   const specification = withTimeTerms(given, data);
+  requireRows(specification, data);
   const moments = momentsOf(data, momentsRequest(specification, data), control);
   const estimate = estimateSystem(specification, data, moments, control, curvaturePoint(specification, data));
   const { fitted } = estimate;

@@ -73,6 +73,11 @@ export function refuseConstantShares({ moments, equations }: Pick<Estimation, "m
 const lengthOf = (column: Float64Array) => Math.sqrt(dot(column, column));
 const printShare = (share: number) => printQuantity(Math.abs(share) < ROUNDING ? 0 : share, "share");
 
+/** As many as each equation has coefficients before restrictions across equations, and one for every equation. */
+export function rowsForEquations(freeWithinEquations: number, equations: number): number {
+  return Math.ceil(freeWithinEquations / equations) + equations;
+}
+
 /**
  * Each equation needs as many rows as it has coefficients before restrictions across equations, and
  * one more for every equation, or some combination of equations fits exactly and no likelihood exists. Where the
@@ -85,7 +90,7 @@ export function refuseTooFewRows(
   freeWithinEquations: number,
   combined = 0,
 ): void {
-  const needed = Math.max(Math.ceil(freeWithinEquations / equations) + equations, combined);
+  const needed = Math.max(rowsForEquations(freeWithinEquations, equations), combined);
   if (rows >= needed) return;
   throw new Refusal(
     `The data have ${rows} rows used; ${free} free coefficients in ${equations} equations need at least ${needed}.`,

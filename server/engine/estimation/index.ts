@@ -2,3 +2,4 @@ export { accumulateMoments } from "./accumulate.ts";
 export { estimateSystem } from "./estimate.ts";
 export type { Moments } from "./moments.ts";
 export { type MomentsRequest, momentsRequest } from "./request.ts";
+export { requireRows } from "./require-rows.ts";
