@@ -14,7 +14,7 @@ import { invertUpper, semidefiniteCholesky } from "./triangle.ts";
 export function conventionalCovariance(estimation: Estimation, solution: Solution, poll?: Poll): number[][] {
   const inverse = inverseRoot(solution);
   poll?.();
-  return outerSquare(multiply(restrictionMatrix(estimation), inverse), poll);
+  return outerSquare(estimation, inverse, poll);
 }
 
 /**
@@ -37,7 +37,7 @@ export function leastSquaresCovariance(estimation: Estimation, solution: Solutio
   const inverse = inverseRoot(solution);
   const inner = multiply(gram(spread, poll), inverse);
   const middle = semidefiniteCholesky(crossProduct(inverse, inner), 0, poll).factor;
-  return outerSquare(multiply(multiply(restrictionMatrix(estimation), inverse), transpose(middle)), poll);
+  return outerSquare(estimation, multiply(inverse, transpose(middle)), poll);
 }
 
 /**
@@ -56,7 +56,7 @@ export function sandwichCovariance(
   for (let k = 0; k < inner.values.length; k++) inner.values[k] *= groups / (groups - 1);
   // In the metric of A every direction counts alike: what falls below this is rounding of a meat of low rank.
   const middle = semidefiniteCholesky(inner, 1e-14).factor;
-  return outerSquare(multiply(multiply(restrictionMatrix(estimation), inverse), transpose(middle)));
+  return outerSquare(estimation, multiply(inverse, transpose(middle)));
 }
 
 /** D⁻¹R⁻¹: A⁻¹ is this times its transpose. */
@@ -69,19 +69,16 @@ function inverseRoot({ factor }: Solution): Columns {
   return inverse;
 }
 
-function restrictionMatrix({ form }: Estimation): Columns {
-  const rows = form.expand.matrix.length;
-  const matrix = zeros(rows, form.free);
-  for (let f = 0; f < form.free; f++) {
-    for (let a = 0; a < rows; a++) matrix.values[f * rows + a] = form.expand.matrix[a][f];
-  }
-  return matrix;
-}
-
-/** H H', exactly symmetric. */
-function outerSquare(half: Columns, poll?: Poll): number[][] {
-  const square = gram(transpose(half), poll);
-  return Array.from({ length: half.rows }, (_, a) => Array.from(columnOf(square, a)));
+/** S H H'S' of the restrictions θ = S φ + s, exactly symmetric. */
+function outerSquare({ form }: Estimation, half: Columns, poll?: Poll): number[][] {
+  const { matrix } = form.expand;
+  // S' stands on the right, where its many noughts are skipped.
+  const restrictions = zeros(form.free, matrix.length);
+  matrix.forEach((row, a) => {
+    columnOf(restrictions, a).set(row);
+  });
+  const square = gram(multiply(transpose(half), restrictions), poll);
+  return matrix.map((_, a) => Array.from(columnOf(square, a)));
 }
 
 function transpose(matrix: Columns): Columns {
