@@ -40,7 +40,9 @@ export function simulateShares(simulation: Simulation): { data: PreparedData; th
   const theta = free.offset.slice();
   const size = form === "les" ? 0.3 : 0.03;
   free.places.forEach((place, f) => {
-    const value = start[place] + (form === "les" && place >= n * (1 + base.demographics) ? 0.02 : size / n) * (random.uniform() + 0.1);
+    const value =
+      start[place] +
+      (form === "les" && place >= n * (1 + base.demographics) ? 0.02 : size / n) * (random.uniform() + 0.1);
     free.matrix.forEach((row, a) => {
       theta[a] += row[f] * value;
     });

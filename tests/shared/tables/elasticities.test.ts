@@ -87,7 +87,9 @@ describe("the tables", () => {
     const latex = tableLatex(goodsTable(finding, finding.groups[0]));
     expect(latex).toContain("grains & 0.5000 & 0.700 & $-$0.500 & $-$0.150 & necessity");
     expect(latex).toContain("(0.010)");
-    expect(tableCsv(priceTable(finding, finding.groups[0], "uncompensated"))).toContain("grains,estimate,-0.5,0.01,-0.2");
+    expect(tableCsv(priceTable(finding, finding.groups[0], "uncompensated"))).toContain(
+      "grains,estimate,-0.5,0.01,-0.2",
+    );
     const groups = groupsTable(sampleElasticities(3), "expenditure");
     expect(groups.title).toBe("Expenditure elasticities by total expenditure, aids");
     expect(groups.rows.map(({ label }) => label)).toEqual(["lowest third", "second third", "highest third"]);
