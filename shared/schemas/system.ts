@@ -108,6 +108,8 @@ export const restrictionTest = z.strictObject({
   pValue: finite,
   /** Italianer's (1985) small-sample corrected likelihood ratio. */
   corrected: z.strictObject({ statistic: finite, pValue: finite }),
+  /** Set where the cell asks for other standard errors: these ratios hold under conventional ones, and decide nothing. */
+  assumes: z.literal("conventional errors").optional(),
   /** Laitinen's (1978) exact test: homogeneity of an otherwise unrestricted linear system. */
   exact: z
     .strictObject({

@@ -9,7 +9,7 @@ import { DECIMALS, printCount, printQuantity, printSize } from "./numbers.ts";
 import { capital, countedRows, intervalInWords, listed, undefinedSentence } from "./phrases.ts";
 import { withArticle } from "./slutsky-matrix.ts";
 import { unequalWeightsSentence } from "./standard-errors.ts";
-import { isRejected, testOf } from "./verdicts.ts";
+import { decides, isRejected, testOf } from "./verdicts.ts";
 
 const LEFT_OUT: Readonly<Record<DataFinding["accounting"]["leftOut"][number]["reason"], readonly [string, string]>> = {
   keep: ["falls to keep", "fall to keep"],
@@ -105,7 +105,7 @@ function violations({ checks, tests, rows }: ToldSystem): string[] {
   }
   if (free.length > 0) sentences.push(`${capital(listed(free))} ${free.length === 1 ? "is" : "are"} rejected.`);
   if (homogeneity.status === "free") {
-    const isAccepted = homogeneity.test && !isRejected(homogeneity.test);
+    const isAccepted = homogeneity.test && decides(homogeneity.test) && !isRejected(homogeneity.test);
     const accepted = "Homogeneity is not rejected. It is not imposed either, so negativity cannot be stated.";
     sentences.push(isAccepted ? accepted : "Without homogeneity, negativity cannot be stated.");
   } else sentences.push(...negativitySentence(checks, rows));

@@ -62,7 +62,12 @@ export function deciding(test: RestrictionTest): {
 }
 
 export function isRejected(test: RestrictionTest | undefined): boolean {
-  return test !== undefined && deciding(test).p < REJECTED_BELOW;
+  return test !== undefined && decides(test) && deciding(test).p < REJECTED_BELOW;
+}
+
+/** A ratio that assumes other errors than the cell asks for decides nothing; Wald's of a tests cell does. */
+export function decides(test: RestrictionTest): boolean {
+  return test.assumes === undefined;
 }
 
 function addingUp({ addingUp: { size, holds } }: TheoryChecks, detail: boolean): Verdict {
@@ -82,6 +87,7 @@ function restricted(
     return { law, figure: "imposed", word: "imposed", note: test ? testNote(test, detail, "test") : untested };
   }
   if (!test) return { law, figure: "not stated", word: "not tested", note: `off by ${printSize(size)}` };
+  if (!decides(test)) return { law, figure: "not stated", word: "not tested", note: testNote(test, detail, "test") };
   const rejected = isRejected(test);
   return {
     law,
@@ -93,6 +99,7 @@ function restricted(
 
 /** "test p 0.286", "LR 6.2 on 5, p 0.286", "Laitinen p 0.072". */
 function testNote(test: RestrictionTest, detail: boolean, short: string): string {
+  if (!decides(test)) return "Wald by a tests cell";
   const { kind, p } = deciding(test);
   const probability = `p ${printProbability(p)}`;
   if (kind === "exact") return `Laitinen ${probability}`;

@@ -186,5 +186,9 @@ function testsOf(
     equations: estimation.equations.length,
     ...(!("absent" in linearity) && { linear: { exact: linearity.exact } }),
   });
-  return { tests, ...(untested.length > 0 && { untested }) };
+  const isConventional = specification["standard errors"] === "conventional";
+  return {
+    tests: isConventional ? tests : tests.map((test) => ({ ...test, assumes: "conventional errors" })),
+    ...(untested.length > 0 && { untested }),
+  };
 }

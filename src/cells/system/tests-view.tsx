@@ -2,7 +2,7 @@ import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { DECIMALS, printCount, printFixed, printProbability } from "../../../shared/tables/numbers.ts";
 import { LIKELIHOOD_RATIOS_ASSUME } from "../../../shared/tables/standard-errors.ts";
-import { isRejected } from "../../../shared/tables/verdicts.ts";
+import { decides, isRejected } from "../../../shared/tables/verdicts.ts";
 import { Table } from "../../components/table.tsx";
 
 type Test = SystemFinding["tests"][number];
@@ -11,6 +11,7 @@ const statistic = (value: number) => printFixed(value, DECIMALS.statistic);
 
 /** What a test of a restriction says: the same as its verdict. */
 function meaning(test: Test): string {
+  if (!decides(test)) return "no verdict: it assumes conventional errors";
   return isRejected(test) ? "rejected at 5 per cent" : "not rejected at 5 per cent";
 }
 

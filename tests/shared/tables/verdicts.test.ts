@@ -51,6 +51,20 @@ const lines = (...given: Parameters<typeof verdictsOf>) =>
   verdictsOf(...given).map(({ law, figure, word, note }) => `${law} | ${figure} | ${word} | ${note}`);
 
 describe("verdictsOf", () => {
+  it("gives none by likelihood ratios that assume other errors than the cell asks for", () => {
+    const assuming = [homogeneity, rejected].map((one) => ({ ...one, assumes: "conventional errors" as const }));
+    expect(lines(checks, assuming).slice(1, 3)).toEqual([
+      "Homogeneity | imposed | imposed | Wald by a tests cell",
+      "Symmetry | imposed | imposed | Wald by a tests cell",
+    ]);
+    expect(lines(unbound, assuming).slice(1, 3)).toEqual([
+      "Homogeneity | not stated | not tested | Wald by a tests cell",
+      "Symmetry | not stated | not tested | Wald by a tests cell",
+    ]);
+    const told = { checks: unbound, tests: assuming, expenditureElasticities: [], rows: 4812 };
+    expect(systemSentence(told)).not.toMatch(/reject/);
+  });
+
   it("says of a system with theory imposed what the band shows", () => {
     expect(lines(checks, [homogeneity, symmetry])).toEqual([
       "Adding-up | holds | holds | by construction",
