@@ -242,6 +242,13 @@ export class Conductor {
   }
 
   #publishSoon(): void {
-    this.#report ??= setTimeout(() => this.#publish(), MILLISECONDS_BETWEEN_REPORTS);
+    this.#report ??= setTimeout(() => {
+      try {
+        this.#publish();
+      } catch (error) {
+        // Outside any request, what is thrown here would end the program.
+        this.#parts.report(error);
+      }
+    }, MILLISECONDS_BETWEEN_REPORTS);
   }
 }
