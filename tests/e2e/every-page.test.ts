@@ -1,49 +1,119 @@
 import { mkdirSync } from "node:fs";
 import { fileURLToPath } from "node:url";
 import { AxeBuilder } from "@axe-core/playwright";
-import type { Browser, Page } from "playwright-core";
-import { afterAll, beforeAll, expect, it } from "vitest";
+import type { Browser, BrowserContext, Page } from "playwright-core";
+import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import type { StudyStatus } from "../../shared/schemas/status.ts";
+import { choose, fromApi, untilSays } from "./study-page.ts";
 import { demoStudyId, ILSE, openBrowser, Product, signIn } from "./support.ts";
 import { watch } from "./watch.ts";
 
 /** Whoever sees badly, hears the page or has a small one: every page, in both themes and at three widths. */
+const THEMES = ["light", "dark"] as const;
 const WIDTHS = [1440, 720, 390] as const;
+const TELEPHONE = 390;
+/** The law's rules, the size of targets among them, and the practice beyond. */
+const RULES = ["wcag2a", "wcag2aa", "wcag21a", "wcag21aa", "wcag22aa", "best-practice"];
 /** Where pictures of the pages are left to be looked at; no part of the repository. */
 const PICTURES = fileURLToPath(new URL("../artefacts/", import.meta.url));
+/** A page whose findings are computed in the browser, on a machine that may have more to do. */
+const PATIENCE = 60_000;
+
+type Theme = (typeof THEMES)[number];
+
+interface Place {
+  readonly name: string;
+  readonly path: () => string;
+  /** Waits until the page is there in full. */
+  readonly ready: (page: Page) => Promise<unknown>;
+  readonly signedIn: boolean;
+  /** Answers that are refused because that is what the page is about. */
+  readonly refused?: RegExp;
+}
 
 let product: Product;
 let browser: Browser;
-let page: Page;
-let addresses: Record<string, string>;
-let watched: ReturnType<typeof watch>;
+let state: Awaited<ReturnType<BrowserContext["storageState"]>>;
+let studyId: string;
+const ids = new Map<string, string>();
+const tokens = new Map<string, string>();
+
+const heading = (name: string | RegExp) => (page: Page) => page.getByRole("heading", { name }).first().waitFor();
+const cell = (name: string) => () => `/studies/${studyId}/cells/${ids.get(name)}`;
+const copy = (name: string) => () => `/referee/${tokens.get(name)}`;
+
+const PLACES: readonly Place[] = [
+  {
+    name: "sign-in",
+    path: () => "/sign-in",
+    ready: (page) => page.getByRole("region", { name: "The demo study" }).waitFor(),
+    signedIn: false,
+  },
+  { name: "create-account", path: () => "/create-account", ready: heading("Create an account"), signedIn: false },
+  {
+    name: "studies",
+    path: () => "/",
+    ready: (page) => page.getByRole("link", { name: /^Food demand in Velmark/ }).waitFor(),
+    signedIn: true,
+  },
+  {
+    name: "study",
+    path: () => `/studies/${studyId}`,
+    ready: async (page) => {
+      for (const name of ids.keys()) await untilSays(page, name, /^Current(?!.*Fetching)/, PATIENCE);
+    },
+    signedIn: true,
+  },
+  { name: "data-cell", path: cell("survey"), ready: heading("Row accounting"), signedIn: true },
+  { name: "system-cell", path: cell("base"), ready: heading("Fit and convergence"), signedIn: true },
+  { name: "tests-cell", path: cell("laws"), ready: heading("All statistics"), signedIn: true },
+  {
+    name: "slutsky-cell",
+    path: cell("matrix"),
+    ready: (page) => page.getByRole("region", { name: "Entry pointed at" }).waitFor(),
+    signedIn: true,
+  },
+  {
+    name: "elasticities-cell",
+    path: cell("fifths"),
+    ready: (page) => page.locator("#price-elasticities").waitFor(),
+    signedIn: true,
+  },
+  { name: "referee-copy", path: copy("with authors"), ready: heading(/^Largest difference/), signedIn: false },
+  { name: "blinded-copy", path: copy("without authors"), ready: heading(/^Largest difference/), signedIn: false },
+  {
+    name: "no-copy",
+    path: () => "/referee/nothing",
+    ready: heading("This link opens nothing"),
+    signedIn: false,
+    refused: /404.*\/api\/referee\/nothing/,
+  },
+  {
+    name: "nowhere",
+    path: () => "/not/an/address",
+    ready: (page) => page.locator("h1").first().waitFor(),
+    signedIn: true,
+  },
+];
 
 beforeAll(async () => {
+  mkdirSync(PICTURES, { recursive: true });
   product = await Product.start();
   browser = await openBrowser();
-  page = await signIn(browser, product, ILSE);
-  const studyId = await demoStudyId(page);
-  watched = watch(page, product.origin);
-  mkdirSync(PICTURES, { recursive: true });
-  const status = await page.request.get(`/api/studies/${studyId}/status`);
-  const { cells } = (await status.json()) as { cells: { cellId: string; name: string }[] };
-  const idOf = (name: string) => cells.find((one) => one.name === name)?.cellId;
-  const cell = (name: string) => `/studies/${studyId}/cells/${idOf(name)}`;
-  const sealed = await page.request.post(`/api/studies/${studyId}/referee-copies`, {
-    data: { cellId: idOf("matrix"), note: "The matrix of Table 4", withholdAuthors: true },
-    headers: { origin: product.origin },
-  });
-  const { token } = (await sealed.json()) as { token: string };
-  addresses = {
-    studies: "/",
-    study: `/studies/${studyId}`,
-    data: cell("survey"),
-    system: cell("base"),
-    matrix: cell("matrix"),
-    door: "/sign-in",
-    "create an account": "/create-account",
-    "referee copy": `/referee/${token}`,
-    nowhere: "/not/an/address",
-  };
+  const ilse = await signIn(browser, product, ILSE);
+  studyId = await demoStudyId(ilse);
+  const { cells } = await fromApi<StudyStatus>(ilse, `/api/studies/${studyId}/status`);
+  for (const { name, cellId } of cells) ids.set(name, cellId);
+  for (const withholdAuthors of [false, true]) {
+    const sealed = await ilse.request.post(`/api/studies/${studyId}/referee-copies`, {
+      data: { cellId: ids.get("matrix"), note: "The matrix of table 4.", withholdAuthors },
+      headers: { origin: product.origin },
+    });
+    const { token } = (await sealed.json()) as { token: string };
+    tokens.set(withholdAuthors ? "without authors" : "with authors", token);
+  }
+  state = await ilse.context().storageState();
+  await ilse.context().close();
 });
 
 afterAll(async () => {
@@ -51,46 +121,83 @@ afterAll(async () => {
   await product?.remove();
 });
 
-/** The page at an address once nothing moves on it and no finding is still on its way. */
-async function settledAt(address: string): Promise<void> {
-  await page.goto(address);
-  await page.locator("h1").first().waitFor();
+async function openPage(theme: Theme, width: number, signedIn: boolean): Promise<Page> {
+  const context = await browser.newContext({
+    baseURL: product.origin,
+    viewport: { width, height: 1000 },
+    colorScheme: theme,
+    reducedMotion: "reduce",
+    ...(signedIn && { storageState: state }),
+  });
+  context.setDefaultTimeout(PATIENCE);
+  return context.newPage();
+}
+
+/** Gives an open page a width; the narrowest is a telephone's and pointed at with a finger. */
+async function resizer(page: Page): Promise<(width: number) => Promise<void>> {
+  const device = await page.context().newCDPSession(page);
+  return async (width) => {
+    await device.send("Emulation.setTouchEmulationEnabled", { enabled: width === TELEPHONE });
+    await page.setViewportSize({ width, height: width === TELEPHONE ? 844 : 1000 });
+  };
+}
+
+/** Waits until nothing moves and no finding is still on its way. */
+async function settled(page: Page): Promise<void> {
   await page.getByText("Fetching").first().waitFor({ state: "hidden" });
+  await page.evaluate(() => document.fonts.ready);
   await page.waitForFunction(() => document.getAnimations().every(({ playState }) => playState !== "running"));
 }
 
-async function faultsOf(where: string): Promise<string[]> {
-  const { violations } = await new AxeBuilder({ page }).analyze();
-  return violations.map(({ id, help, nodes }) => `${where}: ${id}, ${help}: ${nodes[0].html.slice(0, 200)}`);
+async function faultsOf(page: Page) {
+  const { violations } = await new AxeBuilder({ page }).withTags(RULES).analyze();
+  return violations.flatMap(({ id, help, nodes }) =>
+    nodes.map(({ html, any }) => ({ id, help, html: html.slice(0, 300), why: any[0]?.message })),
+  );
 }
 
-it.each(["light", "dark"] as const)("has no fault that a machine can find, in the %s theme", async (theme) => {
-  const faults: string[] = [];
-  await page.emulateMedia({ colorScheme: theme, reducedMotion: "reduce" });
-  for (const width of WIDTHS) {
-    await page.setViewportSize({ width, height: 1000 });
-    for (const [name, address] of Object.entries(addresses)) {
-      await settledAt(address);
-      expect(await page.locator("html").getAttribute("data-theme")).toBe(theme);
-      faults.push(...(await faultsOf(`${name}, ${width}`)));
-      const aside = await page.evaluate(() => document.documentElement.scrollWidth - innerWidth);
-      if (aside > 0) faults.push(`${name}, ${width}: the page scrolls ${aside} pixels sideways`);
-      await page.screenshot({ path: `${PICTURES}${name}, ${width}, ${theme}.png`, fullPage: true });
-    }
-  }
-  expect([...faults, ...watched.takeFaults()]).toEqual([]);
-  expect(watched.outside).toEqual([]);
-});
+describe.each(THEMES)("in the %s theme", (theme) => {
+  // From wide to narrow in one theme and back in the other, so that each end is also where a page begins.
+  const widths = theme === "light" ? WIDTHS : WIDTHS.toReversed();
 
-it("has none in what is laid over a study either", async () => {
-  await page.setViewportSize({ width: 1440, height: 1000 });
-  await settledAt(addresses.study);
-  for (const entry of ["People", "Uploads", "Referee copies", "Settings", "Delete the study"]) {
-    await page.getByRole("button", { name: "More", exact: true }).click();
-    await page.getByRole("menuitem", { name: entry }).click();
-    await page.getByRole("dialog").waitFor();
-    expect(await faultsOf(entry)).toEqual([]);
-    await page.keyboard.press("Escape");
-    await page.getByRole("dialog").waitFor({ state: "hidden" });
-  }
+  it.each(PLACES)("$name has no fault that a machine can find, at any width", async (place) => {
+    const page = await openPage(theme, widths[0], place.signedIn);
+    const watched = watch(page, product.origin);
+    const resize = await resizer(page);
+    await resize(widths[0]);
+    await page.goto(place.path());
+    await place.ready(page);
+    for (const width of widths) {
+      await resize(width);
+      await settled(page);
+      expect(await page.locator("html").getAttribute("data-theme")).toBe(theme);
+      expect(await page.evaluate(() => matchMedia("(pointer: coarse)").matches)).toBe(width === TELEPHONE);
+      await page.screenshot({ path: `${PICTURES}${place.name}-${theme}-${width}.png`, fullPage: true });
+      expect.soft(await faultsOf(page), `${width} pixels`).toEqual([]);
+      const [wide, inner] = await page.evaluate(() => [document.documentElement.scrollWidth, innerWidth]);
+      expect.soft(wide, `the document's width at ${width} pixels`).toBeLessThanOrEqual(inner);
+    }
+    expect.soft(watched.takeFaults().filter((fault) => !place.refused?.test(fault))).toEqual([]);
+    expect.soft(watched.outside).toEqual([]);
+    await page.context().close();
+  });
+
+  it("has none in what is laid over a study either", async () => {
+    const page = await openPage(theme, 1440, true);
+    const watched = watch(page, product.origin);
+    await page.goto(`/studies/${studyId}`);
+    await page.getByRole("heading", { level: 1 }).waitFor();
+    await settled(page);
+    for (const entry of ["People", "Uploads", "Referee copies", "Settings", "Delete the study"]) {
+      await choose(page, entry);
+      await page.getByRole("dialog").waitFor();
+      await settled(page);
+      await page.screenshot({ path: `${PICTURES}${entry.toLowerCase().replaceAll(" ", "-")}-${theme}.png` });
+      expect.soft(await faultsOf(page), entry).toEqual([]);
+      await page.keyboard.press("Escape");
+      await page.getByRole("dialog").waitFor({ state: "hidden" });
+    }
+    expect.soft(watched.takeFaults()).toEqual([]);
+    await page.context().close();
+  });
 });
