@@ -180,7 +180,12 @@ describe("the worker threads", () => {
     await parsed("wide");
     const mapped = Array.from({ length: goods }, (_, i) => `  g${i}: {price: p${i}, quantity: q${i}}`).join("\n");
     const wide = specification("data", `upload: wide.csv\ngoods:\n${mapped}\n`);
-    const long = { ...job("wide", system), data: { fingerprint: "w", specification: wide, uploadId: "wide" } };
+    // So many replicates that it is never done before it is stopped, on whatever machine.
+    const endless = specification(
+      "system",
+      "data: weeks\nform: aids\nstandard errors: {bootstrap: rows, replicates: 10000}\n",
+    );
+    const long = { ...job("wide", endless), data: { fingerprint: "w", specification: wide, uploadId: "wide" } };
     const single = createPool({ databasePath: open.path, threads: 1 });
     const stopper = new AbortController();
     let isFound = false;
