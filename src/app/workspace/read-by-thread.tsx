@@ -34,7 +34,7 @@ export function ReadByThread({ studyId, standing, cells }: ReadByThreadProps) {
         viewBox="-60 0 60 120"
         width="60"
         height="120"
-        className="absolute top-0 right-0"
+        className="absolute top-0 left-[calc(var(--thread)-60px)]"
         fill="none"
       >
         <path d="M-18 36H0" stroke="var(--ink)" strokeWidth="1.15" />
