@@ -29,6 +29,8 @@ export function BrokenRows({ rows, total }: { rows: readonly BrokenRow[]; total:
   const [all, setAll] = useState(false);
   const shown = all ? rows : rows.slice(0, FIRST);
   const more = rows.length > FIRST;
+  // Said of all rows, shown or not, so that no column comes or goes with the switch.
+  const hasAlso = rows.some((row) => also(row) !== "");
   return (
     <>
       <div className="flex items-baseline justify-between gap-4">
@@ -48,7 +50,7 @@ export function BrokenRows({ rows, total }: { rows: readonly BrokenRow[]; total:
           { key: "eigenvalue", content: "Largest eigenvalue" },
           { key: "goods", content: "Goods that break it", align: "left" },
           { key: "shares", content: "Lowest and highest share" },
-          { key: "also", content: "Also", align: "left" },
+          ...(hasAlso ? [{ key: "also", content: "Also", align: "left" } as const] : []),
         ]}
         lines={shown.map((row) => ({
           key: String(row.row),
@@ -58,7 +60,7 @@ export function BrokenRows({ rows, total }: { rows: readonly BrokenRow[]; total:
             eigenvalueOf(row),
             listWords(row.goods),
             sharesOf(row),
-            also(row),
+            ...(hasAlso ? [also(row)] : []),
           ],
         }))}
       />
