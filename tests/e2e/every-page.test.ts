@@ -65,7 +65,17 @@ const PLACES: readonly Place[] = [
     signedIn: true,
   },
   { name: "data-cell", path: cell("survey"), ready: heading("Row accounting"), signedIn: true },
-  { name: "system-cell", path: cell("base"), ready: heading("Fit and convergence"), signedIn: true },
+  {
+    name: "system-cell",
+    path: cell("base"),
+    ready: async (page) => {
+      await heading("Fit and convergence")(page);
+      // The figure is drawn when it comes near the window.
+      await page.getByRole("heading", { name: "Engel curves" }).scrollIntoViewIfNeeded();
+      await page.locator(".js-plotly-plot .ytick text").first().waitFor();
+    },
+    signedIn: true,
+  },
   { name: "tests-cell", path: cell("laws"), ready: heading("All statistics"), signedIn: true },
   {
     name: "slutsky-cell",
@@ -142,6 +152,15 @@ async function resizer(page: Page): Promise<(width: number) => Promise<void>> {
   };
 }
 
+/** Shows what an opened cell keeps shut on a narrow screen, and what any page keeps for whoever asks. */
+async function unfold(page: Page): Promise<void> {
+  const form = page.getByRole("button", { name: "Form", exact: true, pressed: false });
+  if ((await page.locator(".opened-band").count()) > 0 && (await form.count()) > 0) await form.click();
+  await page.evaluate(() => {
+    for (const details of document.querySelectorAll("details")) details.open = true;
+  });
+}
+
 /** Waits until nothing moves and no finding is still on its way. */
 async function settled(page: Page): Promise<void> {
   await page.getByText("Fetching").first().waitFor({ state: "hidden" });
@@ -169,6 +188,7 @@ describe.each(THEMES)("in the %s theme", (theme) => {
     await place.ready(page);
     for (const width of widths) {
       await resize(width);
+      if (width !== widths[0]) await unfold(page);
       await settled(page);
       expect(await page.locator("html").getAttribute("data-theme")).toBe(theme);
       expect(await page.evaluate(() => matchMedia("(pointer: coarse)").matches)).toBe(width === TELEPHONE);
