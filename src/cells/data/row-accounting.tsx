@@ -2,6 +2,7 @@ import type { RowAccounting } from "../../../shared/schemas/data.ts";
 import { printCount } from "../../../shared/tables/numbers.ts";
 import { rowAccountingTable } from "../../../shared/tables/row-accounting.ts";
 import { AccountTable } from "../../components/table-account.tsx";
+import { TableScroller } from "../../components/table-scroller.tsx";
 import { CopyTable } from "../copy-table.tsx";
 import { RowStrip } from "./row-strip.tsx";
 
@@ -22,10 +23,10 @@ function Where({ reason, uploaded }: { reason: RowAccounting["leftOut"][number];
       {reason.rows.length > NAMED ? (
         <details className="type-small">
           <summary className="word list-none">{rowsInWords(reason.rows, reason.count)}</summary>
-          <p className="max-h-40 overflow-y-auto">
+          <TableScroller label="Rows left out" className="max-h-40 overflow-y-auto">
             {reason.rows.map(printCount).join(", ")}
             {reason.rows.length < reason.count && `, and ${printCount(reason.count - reason.rows.length)} more`}
-          </p>
+          </TableScroller>
         </details>
       ) : (
         <span className="type-small text-ink2">{rowsInWords(reason.rows, reason.count)}</span>

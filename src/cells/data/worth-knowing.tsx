@@ -1,6 +1,7 @@
 import type { DataFinding } from "../../../shared/schemas/data.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { printCount } from "../../../shared/tables/numbers.ts";
+import { TableScroller } from "../../components/table-scroller.tsx";
 
 type Flag = DataFinding["flags"][number];
 
@@ -14,7 +15,9 @@ function Note({ flag }: { flag: Flag }) {
           <summary className="word list-none">
             {printCount(flag.rows.length)} {flag.rows.length === 1 ? "row" : "rows"}
           </summary>
-          <p className="max-h-40 overflow-y-auto text-ink2">{flag.rows.map(printCount).join(", ")}</p>
+          <TableScroller label="Rows" className="max-h-40 overflow-y-auto text-ink2">
+            {flag.rows.map(printCount).join(", ")}
+          </TableScroller>
         </details>
       )}
     </div>
