@@ -29,6 +29,8 @@ export const cellFindings = sqliteTable(
     fingerprint: text("fingerprint").notNull(),
     source: text("source").notNull(),
     userId: text("user_id"),
+    /** SHA-256 of the upload it rested on. */
+    uploadSha256: text("upload_sha256"),
     at: integer("at", { mode: "timestamp_ms" }).notNull(),
   },
   (table) => [primaryKey({ columns: [table.studyId, table.cellId] }), index("cell_findings_study").on(table.studyId)],

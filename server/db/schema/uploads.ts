@@ -8,13 +8,23 @@ export const uploads = sqliteTable(
     studyId: text("study_id")
       .notNull()
       .references(() => studies.id, { onDelete: "cascade" }),
-    /** Unique in its study: a second upload of the same name is told apart by a number. */
+    /** By which cells name it; its versions share it. */
     name: text("name").notNull(),
+    /** 1 for the first file of the name; 0 while it is still coming in. */
+    version: integer("version").notNull().default(1),
+    /** What the file of this version was called, when otherwise. */
+    fileName: text("file_name"),
     bytes: integer("bytes").notNull(),
     /** "receiving" until every byte is stored and parsed; such rows are removed at start. */
     state: text("state", { enum: ["receiving", "ready"] }).notNull(),
     sha256: text("sha256"),
     rows: integer("rows"),
+    format: text("format", { enum: ["csv", "parquet", "xlsx"] })
+      .notNull()
+      .default("csv"),
+    /** The sheet that was read, and the names of all (JSON), of a workbook. */
+    sheet: text("sheet"),
+    sheets: text("sheets"),
     separator: text("separator"),
     decimalComma: integer("decimal_comma", { mode: "boolean" }),
     uploadedBy: text("uploaded_by").notNull(),
