@@ -49,7 +49,7 @@ export function createStudyService({ db, access, cells, closePerson }: Collabora
 
     create(actor: Actor, wanted: { title: string; lede: string }): Promise<StudyView> {
       const now = new Date();
-      const study: StudyRow = { id: randomUUID(), ...wanted, createdAt: now, changedAt: now };
+      const study: StudyRow = { id: randomUUID(), ...wanted, createdAt: now, changedAt: now, deletedAt: null };
       db.transaction((tx) => {
         insertStudy(tx, study);
         insertPerson(tx, study.id, actor.id, "owner", now);

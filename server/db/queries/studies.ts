@@ -5,7 +5,7 @@ import { studies, studyMembers } from "../schema/studies.ts";
 
 export type StudyRow = typeof studies.$inferSelect;
 
-export function insertStudy(db: Database, row: StudyRow): void {
+export function insertStudy(db: Database, row: typeof studies.$inferInsert): void {
   db.insert(studies).values(row).run();
 }
 
