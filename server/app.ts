@@ -5,7 +5,7 @@ import type { Installation } from "../shared/schemas/resources.ts";
 import type { Config } from "./config.ts";
 import { authenticationRoutes } from "./http/authentication.ts";
 import { answerErrors, nothingHere } from "./http/errors.ts";
-import { limitRefereeReads, limitUploads } from "./http/limits.ts";
+import { limitRefereeReads, limitRemarks, limitUploads } from "./http/limits.ts";
 import { logRequests } from "./http/log.ts";
 import { ownPagesOnly } from "./http/origin.ts";
 import { neverKept, protectPages } from "./http/security.ts";
@@ -14,6 +14,7 @@ import { cellRoutes } from "./routes/cells.ts";
 import { doorRoutes } from "./routes/door.ts";
 import { peopleRoutes } from "./routes/people.ts";
 import { refereeCopyRoutes } from "./routes/referee-copies.ts";
+import { remarkRoutes } from "./routes/remarks.ts";
 import { studyRoutes } from "./routes/studies.ts";
 import { uploadRoutes } from "./routes/uploads.ts";
 import type { Authentication } from "./services/authentication.ts";
@@ -28,6 +29,9 @@ export interface AppDependencies {
   /** What answers everything that is not the API: the built pages, or Vite in development. */
   readonly pages: RequestHandler;
 }
+
+/** More than anyone writes by hand. */
+const REMARKS_PER_MINUTE = 30;
 
 /** The web application over its collaborators; opens nothing and listens to nothing itself. */
 export function createApp({ config, auth, services, installation, logger, pages }: AppDependencies): Express {
@@ -48,12 +52,13 @@ export function createApp({ config, auth, services, installation, logger, pages 
 
 function apiRoutes({ config, services, installation }: Pick<AppDependencies, "config" | "services" | "installation">) {
   const router = express.Router();
-  const { studies, people, uploads, cells, refereeCopies, access } = services;
+  const { studies, people, uploads, cells, refereeCopies, remarks, access } = services;
   router.use(doorRoutes({ installation }));
   router.use(studyRoutes({ studies }));
   router.use(peopleRoutes({ people }));
   router.use(uploadRoutes({ uploads, limit: limitUploads(config.limits.uploadsPerHour) }));
   router.use(cellRoutes({ cells, access }));
+  router.use(remarkRoutes({ remarks, limit: limitRemarks(REMARKS_PER_MINUTE) }));
   router.use(refereeCopyRoutes({ refereeCopies, limit: limitRefereeReads(config.limits.refereeReadsPerMinute) }));
   return router;
 }

@@ -123,6 +123,7 @@ function live({ open, auth, pool, logger, origins }: LiveParts): Live {
     changed(studyId) {
       services.studies.touched(studyId);
       cells.changed(studyId);
+      void services.remarks.cellsChanged(studyId).catch(report);
     },
     // Whoever joins a study that nobody had open is told where its cells stand.
     opened: (studyId) =>
@@ -138,6 +139,7 @@ function live({ open, auth, pool, logger, origins }: LiveParts): Live {
     cells,
     sourcesOf: sync.sourcesOf,
     closePerson: sync.closePerson,
+    remarksChanged: sync.remarksChanged,
     parseUpload: (uploadId, signal) => pool.parseUpload(uploadId, () => {}, signal),
     program: `Tangency ${VERSION}`,
   });

@@ -41,6 +41,15 @@ export function limitUploads(perHour: number): RequestHandler {
   });
 }
 
+/** Writing remarks and replies, by the account. */
+export function limitRemarks(perMinute: number): RequestHandler {
+  return limit("remarks", {
+    windowMs: MINUTE,
+    limit: perMinute,
+    keyGenerator: (request, response) => response.locals.account?.id ?? ipKeyGenerator(request.ip ?? ""),
+  });
+}
+
 export function limitRefereeReads(perMinute: number): RequestHandler {
   return limit("referee links opened from here", { windowMs: MINUTE, limit: perMinute });
 }

@@ -20,6 +20,8 @@ const places = z.object({
   uploadId: identifier.optional(),
   cellId: identifier.optional(),
   copyId: identifier.optional(),
+  remarkId: identifier.optional(),
+  replyId: identifier.optional(),
 });
 
 /** An identifier of the path, checked. */

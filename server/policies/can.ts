@@ -26,10 +26,18 @@ const ALLOWED = {
   "finding.read": ["owner", "coauthor", "reader"],
   "estimation.start": ["owner", "coauthor"],
   "estimation.cancel": ["owner", "coauthor"],
+  "remark.read": ["owner", "coauthor", "reader"],
+  "remark.write": ["owner", "coauthor", "reader"],
+  "remark.edit": [],
+  "remark.settle": ["owner", "coauthor"],
+  "remark.withdraw": ["owner"],
   "referee copy.read": ["owner"],
   "referee copy.seal": ["owner"],
   "referee copy.revoke": ["owner"],
 } as const satisfies Record<string, readonly Role[]>;
+
+/** What anyone of the study may do besides with what they made themselves. */
+const ALLOWED_WITH_OWN: readonly string[] = ["remark.edit", "remark.settle", "remark.withdraw"] satisfies Action[];
 
 export type Action = keyof typeof ALLOWED;
 
@@ -44,9 +52,11 @@ export interface Membership {
   roleOf(userId: string): Role | undefined;
 }
 
-export function can(actor: Actor | undefined, action: Action, study: Membership): boolean {
+/** `madeBy`: the account whose thing it is, where what one made oneself counts. */
+export function can(actor: Actor | undefined, action: Action, study: Membership, madeBy?: string): boolean {
   const role = actor === undefined ? undefined : study.roleOf(actor.id);
-  return role !== undefined && rolesThatMay(action).includes(role);
+  if (role === undefined) return false;
+  return rolesThatMay(action).includes(role) || (ALLOWED_WITH_OWN.includes(action) && madeBy === actor?.id);
 }
 
 export function rolesThatMay(action: Action): readonly Role[] {

@@ -6,7 +6,7 @@ import { type Action, type Actor, can, rolesThatMay } from "../policies/can.ts";
 
 export interface Access {
   /** The actor's role in the study; throws 404 to someone who is no member, 403 to one who may not. */
-  allow(actor: Actor, action: Action, studyId: string): Role;
+  allow(actor: Actor, action: Action, studyId: string, madeBy?: string): Role;
   roleOf(userId: string, studyId: string): Role | undefined;
 }
 
@@ -14,11 +14,14 @@ export function createAccess(db: Database): Access {
   const roleOf = (userId: string, studyId: string) => roleIn(db, studyId, userId);
   return {
     roleOf,
-    allow(actor, action, studyId) {
+    allow(actor, action, studyId, madeBy) {
       const role = roleOf(actor.id, studyId);
       if (role === undefined) throw noSuchStudy();
-      if (can(actor, action, { roleOf: () => role })) return role;
-      throw forbidden(`This takes the ${rolesThatMay(action).join(" or ")} of the study, and you are its ${role}.`);
+      if (can(actor, action, { roleOf: () => role }, madeBy)) return role;
+      const roles = rolesThatMay(action);
+      // Nobody but whoever made it may, or someone of these roles.
+      const wanted = roles.length === 0 ? "whoever wrote it" : `the ${roles.join(" or ")} of the study`;
+      throw forbidden(`This takes ${wanted}, and you are its ${role}.`);
     },
   };
 }

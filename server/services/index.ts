@@ -3,6 +3,7 @@ import { type Access, createAccess } from "./access.ts";
 import { createPeopleService, type PeopleService } from "./people.ts";
 import type { Cells, ClosePerson, ParseUpload, SourcesOf } from "./ports.ts";
 import { createRefereeCopyService, type RefereeCopyService } from "./referee-copies.ts";
+import { createRemarkService, type RemarkService } from "./remarks.ts";
 import { createStudyService, type StudyService } from "./studies.ts";
 import { createUploadService, type UploadService } from "./uploads.ts";
 
@@ -13,6 +14,7 @@ export interface Services {
   readonly people: PeopleService;
   readonly uploads: UploadService;
   readonly refereeCopies: RefereeCopyService;
+  readonly remarks: RemarkService;
   /** Someone has signed out: their open sockets close. */
   readonly signedOut: (userId: string) => void;
 }
@@ -22,11 +24,20 @@ interface Collaborators {
   readonly cells: Cells;
   readonly sourcesOf: SourcesOf;
   readonly closePerson: ClosePerson;
+  readonly remarksChanged: (studyId: string) => void;
   readonly parseUpload: ParseUpload;
   readonly program: string;
 }
 
-export function createServices({ db, cells, sourcesOf, closePerson, parseUpload, program }: Collaborators): Services {
+export function createServices({
+  db,
+  cells,
+  sourcesOf,
+  closePerson,
+  remarksChanged,
+  parseUpload,
+  program,
+}: Collaborators): Services {
   const access = createAccess(db);
   return {
     access,
@@ -34,6 +45,7 @@ export function createServices({ db, cells, sourcesOf, closePerson, parseUpload,
     studies: createStudyService({ db, access, cells, closePerson }),
     people: createPeopleService({ db, access, closePerson }),
     uploads: createUploadService({ db, access, parseUpload, sourcesOf, cells }),
+    remarks: createRemarkService({ db, access, sourcesOf, remarksChanged }),
     refereeCopies: createRefereeCopyService({ db, access, cells, sourcesOf, program }),
     signedOut: (userId) => closePerson(userId),
   };

@@ -93,6 +93,9 @@ export function createSyncServer(needs: SyncServerNeeds) {
     /** Sends the status to everyone in the study, and to whoever joins later. */
     publish: (studyId: string, status: StudyStatus): void => rooms.loaded(studyId)?.publish(status),
 
+    /** Tells everyone in the study that its remarks are others now. */
+    remarksChanged: (studyId: string): void => rooms.loaded(studyId)?.tellRemarks(),
+
     /** A change made by the program; kept when it is on disk and sent to everyone. */
     edit: (studyId: string, change: (doc: Doc) => void): Promise<void> => rooms.open(studyId).edit(change),
 

@@ -65,6 +65,11 @@ export function storedThrough(writes: number): Uint8Array {
   });
 }
 
+/** "The study's remarks are others now": the type says it all. */
+export function remarksChanged(): Uint8Array {
+  return encoding.encode((encoder) => encoding.writeVarUint(encoder, MESSAGE.remarks));
+}
+
 export function jsonMessage(type: typeof MESSAGE.status | typeof MESSAGE.people, value: unknown): Uint8Array {
   return encoding.encode((encoder) => {
     encoding.writeVarUint(encoder, type);

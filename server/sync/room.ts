@@ -5,7 +5,7 @@ import type { CellSource } from "../../shared/study/cell-source.ts";
 import { Connection, type Link } from "./connection.ts";
 import { readCells } from "./document.ts";
 import type { Limits } from "./limits.ts";
-import { answerWith, askFor, jsonMessage, presenceOf, updateOf } from "./messages.ts";
+import { answerWith, askFor, jsonMessage, presenceOf, remarksChanged, updateOf } from "./messages.ts";
 import { colourOf, peopleIn } from "./people.ts";
 import { Presence } from "./presence.ts";
 import { malformed, SyncRefused } from "./refused.ts";
@@ -143,6 +143,10 @@ export class Room {
   publish(status: unknown): void {
     this.#status = jsonMessage(MESSAGE.status, status);
     this.#broadcast(this.#status);
+  }
+
+  tellRemarks(): void {
+    this.#broadcast(remarksChanged());
   }
 
   idle(): Promise<void> {

@@ -3,7 +3,7 @@ import { count, identifier } from "./primitives.ts";
 import { role } from "./resources.ts";
 
 /** First integer of every message on the socket; 0 and 1 are y-websocket's own. See server/sync/PROTOCOL.md. */
-export const MESSAGE = { sync: 0, presence: 1, stored: 4, status: 5, people: 6 } as const;
+export const MESSAGE = { sync: 0, presence: 1, stored: 4, status: 5, people: 6, remarks: 7 } as const;
 
 /** Second integer of a sync message. */
 export const SYNC = { ask: 0, answer: 1, update: 2 } as const;

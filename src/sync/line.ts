@@ -83,6 +83,7 @@ function listen(provider: WebsocketProvider, { snapshot, ledger, awareness, ackn
     const status = studyStatus.safeParse(readJson(decoder));
     if (status.success) snapshot.set({ status: status.data });
   });
+  on(MESSAGE.remarks, () => snapshot.set({ remarksTold: snapshot.get().remarksTold + 1 }));
   on(MESSAGE.people, (decoder) => {
     const present = peoplePresent.safeParse(readJson(decoder));
     if (!present.success) return;

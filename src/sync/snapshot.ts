@@ -29,6 +29,8 @@ export interface StudySnapshot {
   readonly you?: PresentPerson;
   /** Everyone with the study open, readers included. */
   readonly people: readonly PresentPerson[];
+  /** How often the server has said that the remarks are others now. */
+  readonly remarksTold: number;
   /** Where the others are. */
   readonly whereabouts: readonly Whereabouts[];
 }
@@ -41,6 +43,7 @@ export function emptySnapshot(readOnly: boolean): StudySnapshot {
     loaded: false,
     cells: [],
     people: [],
+    remarksTold: 0,
     whereabouts: [],
   };
 }

@@ -54,6 +54,7 @@ export async function startApplication({ limits, secure = false, log }: Options 
     cells,
     sourcesOf: cells.sourcesOf,
     closePerson: sockets.closePerson,
+    remarksChanged: sockets.remarksChanged,
     parseUpload: parser.parse,
     program: "Tangency test",
   });

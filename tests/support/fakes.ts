@@ -74,8 +74,11 @@ export class FakeCells implements Cells {
 /** A fake of the sockets: writes down whose are closed, and where. */
 export class FakeSockets {
   readonly closed: string[] = [];
+  /** Studies whose people were told of other remarks. */
+  readonly remarked: string[] = [];
   readonly closePerson = (userId: string, studyId = "everywhere"): void =>
     void this.closed.push(`${userId} ${studyId}`);
+  readonly remarksChanged = (studyId: string): void => void this.remarked.push(studyId);
 }
 
 /** A fake of the worker: takes every file for one column of numbers, or refuses it when told to. */

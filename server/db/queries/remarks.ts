@@ -44,7 +44,8 @@ export function findReply(db: Database, remarkId: string, replyId: string): Repl
 }
 
 export function countReplies(db: Database, remarkId: string): number {
-  return db.$count(remarkReplies, eq(remarkReplies.remarkId, remarkId));
+  const counts = sql<number>`count(*)`;
+  return db.select({ counts }).from(remarkReplies).where(eq(remarkReplies.remarkId, remarkId)).get()?.counts ?? 0;
 }
 
 /** How much is written about a study: remarks and replies together, and their characters. */

@@ -7,5 +7,6 @@ export * from "./invitations.ts";
 export * from "./journal.ts";
 export * from "./mail.ts";
 export * from "./referee-copies.ts";
+export * from "./remarks.ts";
 export * from "./studies.ts";
 export * from "./uploads.ts";
