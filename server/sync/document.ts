@@ -7,19 +7,21 @@ export const CELLS = "cells";
 
 /** The cells in the order they stand in; an entry that is no cell is left out. */
 export function readCells(doc: Y.Doc): CellSource[] {
-  const cells: CellSource[] = [];
-  doc.getMap(CELLS).forEach((cell, id) => {
-    if (!(cell instanceof Y.Map)) return;
-    const source = cell.get("source");
-    cells.push({
-      id,
-      name: word(cell, "name"),
-      kind: word(cell, "kind"),
-      order: word(cell, "order"),
-      source: source instanceof Y.Text ? source.toString() : "",
-    });
-  });
-  return cells.sort(inOrder);
+  const ids = [...doc.getMap(CELLS).keys()];
+  return ids.flatMap((id) => readCell(doc, id) ?? []).sort(inOrder);
+}
+
+export function readCell(doc: Y.Doc, id: string): CellSource | undefined {
+  const cell = doc.getMap(CELLS).get(id);
+  if (!(cell instanceof Y.Map)) return undefined;
+  const source = cell.get("source");
+  return {
+    id,
+    name: word(cell, "name"),
+    kind: word(cell, "kind"),
+    order: word(cell, "order"),
+    source: source instanceof Y.Text ? source.toString() : "",
+  };
 }
 
 function word(cell: Y.Map<unknown>, key: string): string {

@@ -1,8 +1,16 @@
 import * as Y from "yjs";
 import { CLOSE } from "../../shared/schemas/sync.ts";
+import type { CellEdit } from "../../shared/study/cell-edit.ts";
+import { CellEdits } from "./cell-edits.ts";
 import type { Limits } from "./limits.ts";
 import { malformed, SyncRefused } from "./refused.ts";
 import { checkNew } from "./shape.ts";
+
+/** What is new in a change: the least update, and what it does to which cells. */
+export interface Fresh {
+  readonly update: Uint8Array;
+  readonly edits: readonly CellEdit[];
+}
 
 /**
  * A scratch copy of a study's document on which a write is tried before it is stored. It runs ahead of
@@ -10,15 +18,17 @@ import { checkNew } from "./shape.ts";
  */
 export class TrialDocument {
   readonly #doc = new Y.Doc();
+  readonly #edits: CellEdits;
   readonly #limits: Limits;
 
   constructor(stored: Uint8Array, limits: Limits) {
     this.#limits = limits;
     Y.applyUpdate(this.#doc, stored);
+    this.#edits = new CellEdits(this.#doc);
   }
 
-  /** What is new in the change, as the least update; nothing when nothing is. Throws `SyncRefused`. */
-  attempt(change: (doc: Y.Doc) => void): Uint8Array | undefined {
+  /** Nothing when nothing is new in the change. Throws `SyncRefused`. */
+  attempt(change: (doc: Y.Doc) => void): Fresh | undefined {
     const pieces: Uint8Array[] = [];
     const keep = (update: Uint8Array) => pieces.push(update);
     this.#doc.on("update", keep);
@@ -30,7 +40,7 @@ export class TrialDocument {
       if (pieces.length === 0) return undefined;
       const fresh = pieces.length === 1 ? pieces[0] : Y.mergeUpdates(pieces);
       checkNew(this.#doc, fresh, this.#limits);
-      return fresh;
+      return { update: fresh, edits: this.#edits.take() };
     } finally {
       this.#doc.off("update", keep);
     }

@@ -2,7 +2,7 @@ import type * as Y from "yjs";
 import { CLOSE } from "../../shared/schemas/sync.ts";
 import type { Limits } from "./limits.ts";
 import { SyncRefused, tooLarge } from "./refused.ts";
-import { TrialDocument } from "./trial.ts";
+import { type Fresh, TrialDocument } from "./trial.ts";
 import type { DocumentUpdates, NewUpdate } from "./updates.ts";
 
 /** A change waiting to be stored, and who is to be told how it went. */
@@ -18,7 +18,7 @@ export interface Write {
 
 interface Tried {
   readonly write: Write;
-  readonly fresh: Uint8Array | undefined;
+  readonly fresh: Fresh | undefined;
 }
 
 /**
@@ -117,11 +117,11 @@ export class Writes {
     return tried;
   }
 
-  #attempt(write: Write): Uint8Array | undefined {
+  #attempt(write: Write): Fresh | undefined {
     const fresh = this.#trial.attempt(write.change);
-    if (fresh !== undefined && this.#bytes + fresh.length > this.#limits.document) {
+    if (fresh !== undefined && this.#bytes + fresh.update.length > this.#limits.document) {
       this.compact();
-      if (this.#bytes + fresh.length > this.#limits.document) {
+      if (this.#bytes + fresh.update.length > this.#limits.document) {
         throw tooLarge(`The study has ${this.#bytes} bytes; at most ${this.#limits.document}.`);
       }
     }
@@ -129,9 +129,7 @@ export class Writes {
   }
 
   async #storeAll(tried: Tried[]): Promise<void> {
-    const rows = tried.flatMap(({ write, fresh }) =>
-      fresh === undefined ? [] : [{ update: fresh, userId: write.userId }],
-    );
+    const rows = tried.flatMap(({ write, fresh }) => (fresh === undefined ? [] : [{ ...fresh, userId: write.userId }]));
     try {
       await this.#append(rows);
     } catch (error) {
@@ -143,7 +141,7 @@ export class Writes {
     }
     for (const row of rows) this.#bytes += row.update.length;
     this.#rows += rows.length;
-    for (const { write, fresh } of tried) this.#tell(write, fresh);
+    for (const { write, fresh } of tried) this.#tell(write, fresh?.update);
     if (this.#spoilt) this.#resetTrial();
   }
 
@@ -161,7 +159,9 @@ export class Writes {
       this.#updates.appendAll(this.#studyId, rows);
       return;
     }
-    for (const { update, userId } of rows) await this.#updates.append(this.#studyId, update, userId);
+    for (const { update, userId, edits } of rows) {
+      await this.#updates.append(this.#studyId, update, userId, edits);
+    }
   }
 
   #resetTrial(): void {

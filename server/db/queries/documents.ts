@@ -14,8 +14,14 @@ export function loadUpdates(db: Database, studyId: string): Uint8Array[] {
 }
 
 /** On disk when this returns. `userId` is null when the program itself made the update. */
-export function appendUpdate(db: Database, studyId: string, update: Uint8Array, userId: string | null): void {
+export function appendUpdate(
+  db: Database,
+  studyId: string,
+  update: Uint8Array,
+  userId: string | null,
+  at = new Date(),
+): void {
   db.insert(documentUpdates)
-    .values({ studyId, update: Buffer.from(update), userId, at: new Date() })
+    .values({ studyId, update: Buffer.from(update), userId, at })
     .run();
 }
