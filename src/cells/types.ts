@@ -24,13 +24,18 @@ export interface OpenProps<K extends CellKind> extends BandProps<K> {
   readonly form?: FormProps;
 }
 
-/** What a kind of cell shows. Views take findings as props and fetch nothing. */
+type Loaded<T> = () => Promise<T>;
+
+/**
+ * What a kind of cell shows, each part loaded when it is first needed: whoever opens a study reads its findings, and
+ * need not wait for forms, opened cells and copying. Views take findings as props and fetch nothing.
+ */
 export interface CellView<K extends CellKind> {
-  readonly Form: ComponentType<FormProps>;
-  readonly Band: ComponentType<BandProps<K>>;
-  readonly Open: ComponentType<OpenProps<K>>;
+  readonly Form: Loaded<ComponentType<FormProps>>;
+  readonly Band: Loaded<ComponentType<BandProps<K>>>;
+  readonly Open: Loaded<ComponentType<OpenProps<K>>>;
   /** What stands on the source page of the opened cell below its form: how each check is made. */
-  readonly Aside?: ComponentType<{ finding: FindingOf<K> }>;
+  readonly Aside?: Loaded<ComponentType<{ finding: FindingOf<K> }>>;
   /** The finding's tables, the one to copy first: for *Copy table* on the state line. */
-  readonly tables: (finding: FindingOf<K>) => LabelledTable[];
+  readonly tables: Loaded<(finding: FindingOf<K>) => LabelledTable[]>;
 }

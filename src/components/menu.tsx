@@ -1,53 +1,38 @@
-import { DropdownMenu as Primitive } from "radix-ui";
-import type { ReactNode } from "react";
+import { lazy, Suspense, useState } from "react";
+import type { Asked, MenuProps } from "./menu-entries.ts";
 
-export interface MenuEntry {
-  readonly key: string;
-  readonly words: ReactNode;
-  readonly onSelect: () => void;
-  readonly disabled?: boolean;
-  /** One of several of which one is in use. */
-  readonly inUse?: boolean;
-}
+const load = () => import("./opened-menu.tsx");
+const OpenedMenu = lazy(load);
+const expect = () => void load().catch(() => {});
 
-interface MenuProps {
-  /** The word that opens it. */
-  readonly trigger: ReactNode;
-  readonly className?: string;
-  readonly label?: string;
-  /** Groups are parted by a hairline. */
-  readonly groups: readonly (readonly MenuEntry[])[];
-  readonly align?: "start" | "end";
-}
-
-/** A list of words that opens from a word. */
-export function Menu({ trigger, className = "word", label, groups, align = "end" }: MenuProps) {
-  const filled = groups.filter((entries) => entries.length > 0);
-  return (
-    <Primitive.Root modal={false}>
-      <Primitive.Trigger className={className} aria-label={label}>
-        {trigger}
-      </Primitive.Trigger>
-      <Primitive.Portal>
-        <Primitive.Content align={align} sideOffset={6} collisionPadding={8} className="popover menu" loop>
-          {filled.map((entries, index) => (
-            <Primitive.Group key={index} className={index > 0 ? "border-rule border-t" : ""}>
-              {entries.map((entry) => (
-                <Primitive.Item
-                  key={entry.key}
-                  disabled={entry.disabled}
-                  onSelect={entry.onSelect}
-                  className="menu-entry"
-                  aria-current={entry.inUse || undefined}
-                >
-                  {entry.words}
-                  {entry.inUse && <span className="type-small pl-4 text-current">in use</span>}
-                </Primitive.Item>
-              ))}
-            </Primitive.Group>
-          ))}
-        </Primitive.Content>
-      </Primitive.Portal>
-    </Primitive.Root>
+/** A list of words that opens from a word. The list is loaded when it is first asked for; the word is there at once. */
+export function Menu(props: MenuProps) {
+  const { trigger, className = "word", label } = props;
+  const [asked, setAsked] = useState<Asked>();
+  const word = (
+    <button
+      type="button"
+      className={className}
+      aria-label={label}
+      aria-haspopup="menu"
+      aria-expanded={asked !== undefined}
+      onPointerEnter={expect}
+      onFocus={expect}
+      onClick={({ detail }) => setAsked(detail === 0 ? "keyboard" : "pointer")}
+      onKeyDown={(event) => {
+        if (event.key !== "ArrowDown") return;
+        event.preventDefault();
+        setAsked("keyboard");
+      }}
+    >
+      {trigger}
+    </button>
+  );
+  return asked ? (
+    <Suspense fallback={word}>
+      <OpenedMenu {...props} asked={asked} />
+    </Suspense>
+  ) : (
+    word
   );
 }

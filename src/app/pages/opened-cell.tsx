@@ -1,16 +1,12 @@
-import { useEffect, useId, useState } from "react";
+import { lazy, Suspense, useEffect, useId, useState } from "react";
 import { useNavigate, useParams } from "react-router-dom";
-import type { Upload } from "../../../shared/schemas/resources.ts";
-import type { CellSource } from "../../../shared/study/cell-source.ts";
-import { parseCell } from "../../../shared/study/parse-cell.ts";
 import { LinkButton, LinkWord } from "../../components/button.tsx";
 import { presentPeople, typists } from "../../features/presence/present.ts";
 import { usePageTitle } from "../../lib/page-title.ts";
 import { pages } from "../../lib/paths.ts";
 import { useStudyPart } from "../../sync/index.ts";
 import { BandSource, type SourcePage } from "../workspace/band-source.tsx";
-import { ColumnList } from "../workspace/column-list.tsx";
-import { demographicsOn } from "../workspace/column-uses.ts";
+import { afterFirstFinding } from "../workspace/first-finding.ts";
 import { type OpenStudy, useOpenStudy } from "../workspace/open-study.ts";
 import { FindingAside, OpenedFinding } from "../workspace/opened-finding.tsx";
 import { ReadByThread } from "../workspace/read-by-thread.tsx";
@@ -21,6 +17,8 @@ import { useOneColumn } from "../workspace/use-source-pages.ts";
 import { useStandings } from "../workspace/use-standings.ts";
 import { useStudyActions } from "../workspace/use-study-actions.ts";
 
+const UploadColumns = lazy(() => afterFirstFinding(() => import("../workspace/upload-columns.tsx")));
+
 /** One cell in full: its source on the left page, everything found on the right. */
 export default function OpenedCellPage() {
   const { cellId = "" } = useParams();
@@ -28,7 +26,6 @@ export default function OpenedCellPage() {
   const { study, connection, readOnly } = open;
   const { standings, cells, uploads } = useStandings(open);
   const standing = standings.find(({ cell }) => cell.id === cellId);
-  const upload = standing && uploadOf(standing.cell, uploads);
   const [dialog, setDialog] = useState<StudyDialog>();
   const [renaming, setRenaming] = useState(false);
   const oneColumn = useOneColumn();
@@ -67,7 +64,7 @@ export default function OpenedCellPage() {
                     onPage={(next) => setPage(oneColumn && next === page ? "closed" : next)}
                     headingId={headingId}
                     renaming={renaming}
-                    onRename={(name) => actions.rename(standing.cell, name)}
+                    onRename={(name) => void actions.rename(standing.cell, name)}
                     onRenamed={() => setRenaming(false)}
                     onLeave={() => document.getElementById(headingId)?.focus()}
                     actions={{
@@ -81,12 +78,10 @@ export default function OpenedCellPage() {
                     typing={typing.length > 0 && <TypingHere people={typing} className="mt-4 block" />}
                     title
                   />
-                  {upload && (
-                    <ColumnList
-                      upload={upload}
-                      source={standing.cell.source}
-                      demographics={demographicsOn(standing.cell.name, cells)}
-                    />
+                  {standing.kind === "data" && (
+                    <Suspense>
+                      <UploadColumns cell={standing.cell} cells={cells} uploads={uploads} />
+                    </Suspense>
                   )}
                   <FindingAside studyId={study.id} fingerprint={standing.fingerprint} />
                 </div>
@@ -106,13 +101,6 @@ export default function OpenedCellPage() {
       <StudyDialogs {...open} standings={standings} open={dialog} onClose={() => setDialog(undefined)} />
     </>
   );
-}
-
-/** The upload a data cell names. */
-function uploadOf({ kind, source }: CellSource, uploads: readonly Upload[]): Upload | undefined {
-  if (kind !== "data") return undefined;
-  const { upload } = parseCell("data", source).written;
-  return uploads.find(({ name }) => name === upload);
 }
 
 /** Tells the others that this person has the cell open. */

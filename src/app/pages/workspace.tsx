@@ -1,9 +1,11 @@
-import { useState } from "react";
+import { useEffect, useState } from "react";
+import type { CellKind } from "../../../shared/schemas/cell.ts";
 import { Fault } from "../../components/field.tsx";
 import { sentenceOf } from "../../lib/api.ts";
 import { usePageTitle } from "../../lib/page-title.ts";
 import { pages } from "../../lib/paths.ts";
 import { BringUpToDate } from "../workspace/bring-up-to-date.tsx";
+import { expectOpening } from "../workspace/finding-view.tsx";
 import { Ledger } from "../workspace/ledger.tsx";
 import { useOpenStudy } from "../workspace/open-study.ts";
 import { StudyBar, type StudyDialog } from "../workspace/study-bar.tsx";
@@ -19,7 +21,11 @@ export default function WorkspacePage() {
   const { standings, cells, uploads, error, isKnown } = useStandings(open);
   const [dialog, setDialog] = useState<StudyDialog>();
   const oneColumn = useOneColumn();
+  const kinds = [...new Set(standings.flatMap(({ kind }) => kind ?? []))].join(" ");
   usePageTitle(open.study.title);
+  useEffect(() => {
+    expectOpening(kinds ? (kinds.split(" ") as CellKind[]) : []);
+  }, [kinds]);
   const bring = open.readOnly ? undefined : <BringUpToDate studyId={open.study.id} standings={standings} />;
   return (
     <>

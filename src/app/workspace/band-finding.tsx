@@ -1,4 +1,4 @@
-import type { ReactNode } from "react";
+import { lazy, type ReactNode, Suspense, useEffect } from "react";
 import { LinkWord, Word } from "../../components/button.tsx";
 import { Fault } from "../../components/field.tsx";
 import { ProgressLine } from "../../features/estimation/progress-line.tsx";
@@ -6,11 +6,13 @@ import { useFinding } from "../../features/findings/api/get-finding.ts";
 import { sentenceOf } from "../../lib/api.ts";
 import { pages } from "../../lib/paths.ts";
 import { CopyWord } from "./copy-word.tsx";
-import { FindingBand, viewOf } from "./finding-view.tsx";
+import { expectBand, FindingBand, OnItsWay, useTables } from "./finding-view.tsx";
+import { firstFindingShown } from "./first-finding.ts";
 import { ProblemList } from "./problem-list.tsx";
 import type { Standing } from "./standing.ts";
 import { StateLine } from "./state-line.tsx";
-import { Unanswered } from "./unanswered.tsx";
+
+const Unanswered = lazy(() => import("./unanswered.tsx"));
 
 interface BandFindingProps {
   readonly studyId: string;
@@ -24,7 +26,13 @@ interface BandFindingProps {
 export function BandFinding({ studyId, standing, beside, onChange }: BandFindingProps) {
   const { fingerprint, cell, status, kind } = standing;
   const { data, error, refetch } = useFinding(studyId, fingerprint);
-  const table = data && kind ? viewOf(data.finding.kind).tables(data.finding)[0] : undefined;
+  const table = useTables(data?.finding)?.[0];
+  useEffect(() => {
+    if (kind && fingerprint) expectBand(kind);
+  }, [kind, fingerprint]);
+  useEffect(() => {
+    if (error) firstFindingShown();
+  }, [error]);
   const actions = fingerprint && data && (
     <>
       <LinkWord to={pages.cell(studyId, cell.id)}>
@@ -45,10 +53,14 @@ export function BandFinding({ studyId, standing, beside, onChange }: BandFinding
               <Word onClick={() => void refetch()}>Ask again</Word>
             </>
           )}
-          {!data && !error && <p className="type-small text-ink3">Fetching the finding</p>}
+          {!data && !error && <OnItsWay />}
         </div>
       ) : (
-        <Otherwise studyId={studyId} standing={standing} onChange={onChange} />
+        !standing.isUnread && (
+          <Suspense>
+            <Otherwise studyId={studyId} standing={standing} onChange={onChange} />
+          </Suspense>
+        )
       )}
     </>
   );

@@ -1,15 +1,18 @@
+import { lazy, Suspense } from "react";
 import type { Upload } from "../../../shared/schemas/resources.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { SwitchWords } from "../../components/switch-words.tsx";
 import type { StudyConnection } from "../../sync/index.ts";
 import { type CellActions, CellMenu } from "./cell-menu.tsx";
 import { CellName } from "./cell-name.tsx";
-import { lacksUpload, sourceInALine } from "./cell-words.ts";
 import { CellForm } from "./finding-view.tsx";
-import { FirstUpload } from "./first-upload.tsx";
+import { afterFirstFinding } from "./first-finding.ts";
 import { SourceFoot } from "./source-foot.tsx";
 import { SourceText } from "./source-text.tsx";
 import type { Standing } from "./standing.ts";
+
+const FirstUpload = lazy(() => import("./first-upload.tsx"));
+const SourceLine = lazy(() => afterFirstFinding(() => import("./source-line.tsx")));
 
 /** Which page of the source is open; a strip shows neither until asked. */
 export type SourcePage = "form" | "text" | "closed";
@@ -68,7 +71,11 @@ export function BandSource(props: BandSourceProps) {
       {title && <h2 className="sr-only">Source</h2>}
       <div className="no-print">
         {page === "closed" ? (
-          <p className="type-source truncate text-ink2">{sourceInALine(cell.kind, cell.source)}</p>
+          <p className="type-source truncate text-ink2">
+            <Suspense fallback={cell.source.split("\n", 1)[0] || " "}>
+              <SourceLine cell={cell} />
+            </Suspense>
+          </p>
         ) : (
           <Source {...props} />
         )}
@@ -95,8 +102,12 @@ function Source({ studyId, connection, standing, cells, uploads, readOnly, page,
       />
     );
   }
-  if (lacksUpload(cell) && !readOnly) {
-    return <FirstUpload studyId={studyId} uploads={uploads} onChange={onChange} />;
+  if (standing.waitsForFile && !readOnly) {
+    return (
+      <Suspense>
+        <FirstUpload studyId={studyId} uploads={uploads} onChange={onChange} />
+      </Suspense>
+    );
   }
   return (
     <CellForm kind={kind} source={cell.source} onChange={onChange} readOnly={readOnly} context={{ cells, uploads }} />

@@ -1,4 +1,5 @@
-import { Menu, type MenuEntry } from "../../components/menu.tsx";
+import { Menu } from "../../components/menu.tsx";
+import type { MenuEntry } from "../../components/menu-entries.ts";
 
 export interface CellActions {
   readonly rename: () => void;

@@ -1,7 +1,7 @@
 import { type KeyboardEvent, useId, useState } from "react";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { Fault } from "../../components/field.tsx";
-import { nameFault } from "./rename.ts";
+import { nameFault } from "./name-fault.ts";
 
 interface CellNameProps {
   readonly cell: CellSource;

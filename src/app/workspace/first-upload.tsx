@@ -11,7 +11,7 @@ interface FirstUploadProps {
 }
 
 /** A data cell without an upload: a file is chosen, and what its columns may mean is written down as a beginning. */
-export function FirstUpload({ studyId, uploads, onChange }: FirstUploadProps) {
+export default function FirstUpload({ studyId, uploads, onChange }: FirstUploadProps) {
   const take = (upload: Upload) => onChange(suggestData(upload.name, upload.columns));
   return (
     <div>

@@ -54,9 +54,11 @@ export function HeadBand({ study, standings, readOnly, action }: HeadBandProps) 
         <div className="flex flex-wrap items-center justify-between gap-x-6 gap-y-3 pt-3">
           <p className="type-small flex flex-wrap items-baseline gap-x-5 gap-y-1 text-ink2">
             <span className="wide-only">{counted(standings.length, "cell")}</span>
-            {stateCounts(standings.map(({ state }) => state)).map(({ state, words }) => (
-              <StateWords key={state} state={state} words={words} />
-            ))}
+            {stateCounts(standings.flatMap(({ state, isUnread }) => (isUnread ? [] : [state]))).map(
+              ({ state, words }) => (
+                <StateWords key={state} state={state} words={words} />
+              ),
+            )}
             {study.sealedAt && <span>Last sealed {whenInWords(study.sealedAt)}</span>}
           </p>
           {action}

@@ -87,7 +87,7 @@ export function Ledger(props: LedgerProps) {
               page={source.pageOf(standing.cell)}
               onPage={(page) => source.choose(standing.cell.id, page)}
               renaming={renaming === standing.cell.id}
-              onRename={(name) => actions.rename(standing.cell, name)}
+              onRename={(name) => void actions.rename(standing.cell, name)}
               onRenamed={() => setRenaming(undefined)}
               actions={{
                 rename: () => setRenaming(standing.cell.id),
@@ -102,7 +102,9 @@ export function Ledger(props: LedgerProps) {
             {removal?.after === standing.cell.id && removed}
           </Fragment>
         ))}
-        {!readOnly && <AddCellBand onAdd={(kind) => setTimeout(focusBand, 60, actions.add(kind))} />}
+        {!readOnly && (
+          <AddCellBand onAdd={(kind) => void actions.add(kind).then((added) => setTimeout(focusBand, 60, added))} />
+        )}
         {places.width > 0 && (
           <Thread
             stops={stops}

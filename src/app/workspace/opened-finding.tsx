@@ -1,15 +1,18 @@
+import { lazy, Suspense, useEffect } from "react";
 import type { Upload } from "../../../shared/schemas/resources.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { Fault } from "../../components/field.tsx";
 import { ProgressLine } from "../../features/estimation/progress-line.tsx";
 import { useFinding } from "../../features/findings/api/get-finding.ts";
 import { sentenceOf } from "../../lib/api.ts";
-import { FindingOpen, viewOf } from "./finding-view.tsx";
+import { AsideOf, FindingOpen } from "./finding-view.tsx";
+import { firstFindingShown } from "./first-finding.ts";
 import type { OpenStudy } from "./open-study.ts";
 import { ProblemList } from "./problem-list.tsx";
 import type { Standing } from "./standing.ts";
 import { StateLine } from "./state-line.tsx";
-import { Unanswered } from "./unanswered.tsx";
+
+const Unanswered = lazy(() => import("./unanswered.tsx"));
 
 interface OpenedFindingProps extends OpenStudy {
   readonly standing: Standing;
@@ -21,6 +24,9 @@ interface OpenedFindingProps extends OpenStudy {
 export function OpenedFinding({ study, connection, readOnly, standing, cells, uploads }: OpenedFindingProps) {
   const { cell, fingerprint, status, state, progress } = standing;
   const { data, error } = useFinding(study.id, fingerprint);
+  useEffect(() => {
+    if (error || (!fingerprint && !standing.isUnread)) firstFindingShown();
+  }, [error, fingerprint, standing.isUnread]);
   const onChange = readOnly ? undefined : (next: string) => connection.replaceSource(cell.id, next);
   const form = {
     source: cell.source,
@@ -38,8 +44,10 @@ export function OpenedFinding({ study, connection, readOnly, standing, cells, up
       {state === "estimating" && progress && (
         <ProgressLine studyId={study.id} cellId={cell.id} name={cell.name} progress={progress} readOnly={readOnly} />
       )}
-      {(state === "draft" || state === "out of date") && (
-        <Unanswered studyId={study.id} standing={standing} onChange={onChange} />
+      {!standing.isUnread && (state === "draft" || state === "out of date") && (
+        <Suspense>
+          <Unanswered studyId={study.id} standing={standing} onChange={onChange} />
+        </Suspense>
       )}
     </>
   );
@@ -48,10 +56,5 @@ export function OpenedFinding({ study, connection, readOnly, standing, cells, up
 /** What a kind says of its finding on the source page: how each check is made. */
 export function FindingAside({ studyId, fingerprint }: { studyId: string; fingerprint: string | undefined }) {
   const { data } = useFinding(studyId, fingerprint);
-  const Aside = data && viewOf(data.finding.kind).Aside;
-  return Aside ? (
-    <div className="mt-6">
-      <Aside finding={data.finding} />
-    </div>
-  ) : null;
+  return data ? <AsideOf finding={data.finding} /> : null;
 }

@@ -2,9 +2,10 @@ import { lazy, Suspense, useMemo } from "react";
 import type { Upload } from "../../../shared/schemas/resources.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import type { StudyConnection } from "../../sync/index.ts";
+import { afterFirstFinding } from "./first-finding.ts";
 import type { Standing } from "./standing.ts";
 
-const SourceEditor = lazy(() => import("../../features/editor/source-editor.tsx"));
+const SourceEditor = lazy(() => afterFirstFinding(() => import("../../features/editor/source-editor.tsx")));
 
 interface SourceTextProps {
   readonly connection: StudyConnection;

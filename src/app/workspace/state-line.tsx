@@ -30,8 +30,14 @@ export function StateLine({ standing, beside, actions }: StateLineProps) {
   return (
     <div className="flex flex-wrap items-baseline justify-between gap-x-6 gap-y-1 pb-3">
       <p className="type-small flex min-w-0 flex-wrap items-baseline gap-x-2.5" aria-live="polite">
-        <StateWords state={standing.state} words={capital(standing.state)} />
-        <span className="text-ink2 tabular-nums">{stateDetail(standing)}</span>
+        {standing.isUnread ? (
+          <span className="text-ink2">Reading the cell</span>
+        ) : (
+          <>
+            <StateWords state={standing.state} words={capital(standing.state)} />
+            <span className="text-ink2 tabular-nums">{stateDetail(standing)}</span>
+          </>
+        )}
         {beside}
       </p>
       {actions && <div className="no-print type-small flex flex-wrap items-baseline gap-x-5">{actions}</div>}

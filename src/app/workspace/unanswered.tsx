@@ -6,7 +6,6 @@ import { Fault } from "../../components/field.tsx";
 import { useStartEstimation } from "../../features/estimation/api/start-estimation.ts";
 import { sentenceOf } from "../../lib/api.ts";
 import { aboutInWords, whenInWords } from "../../lib/dates.ts";
-import { lacksUpload } from "./cell-words.ts";
 import { KeptFinding } from "./kept-finding.tsx";
 import type { Standing } from "./standing.ts";
 
@@ -30,7 +29,7 @@ function calledLast(standing: Standing): string {
 }
 
 /** In the finding's place while there is none: what would find one, and the last one, kept under its own source. */
-export function Unanswered({ studyId, standing, onChange }: UnansweredProps) {
+export default function Unanswered({ studyId, standing, onChange }: UnansweredProps) {
   const [looking, setLooking] = useState(false);
   const { cell, last, aboutMs } = standing;
   const called = calledLast(standing);
@@ -44,7 +43,7 @@ export function Unanswered({ studyId, standing, onChange }: UnansweredProps) {
           {whenInWords(last.at)}, is kept under its own.
         </p>
       )}
-      {lacksUpload(cell) && (
+      {standing.waitsForFile && (
         <p className="type-finding max-w-[40rem]">
           A file comes first: a row for each household or period, with what was paid and bought of each good, any two of
           price, quantity and expenditure.

@@ -1,15 +1,13 @@
 import { useQueryClient } from "@tanstack/react-query";
-import { useCallback, useEffect, useMemo, useState } from "react";
-import type { CellSource } from "../../../shared/study/cell-source.ts";
-import { fingerprintCells } from "../../../shared/study/fingerprints.ts";
-import { inOrder } from "../../../shared/study/order.ts";
-import { parseCell, type StudyCell } from "../../../shared/study/parse-cell.ts";
-import { resolveParsed } from "../../../shared/study/resolve.ts";
+import { useEffect, useMemo, useState } from "react";
 import { useStatus } from "../../features/findings/api/get-status.ts";
 import { useUploads } from "../../features/uploads/api/list-uploads.ts";
 import { useStudyPart } from "../../sync/index.ts";
+import { firstFindingShown } from "./first-finding.ts";
 import type { OpenStudy } from "./open-study.ts";
-import { isSameStanding, type Standing, standingsOf } from "./standing.ts";
+import { isSameStanding, type Standing } from "./standing.ts";
+import { standingsTold } from "./told.ts";
+import { useReading } from "./use-reading.ts";
 
 const NONE: never[] = [];
 
@@ -17,37 +15,27 @@ const NONE: never[] = [];
 export function useStandings({ study, connection }: Pick<OpenStudy, "study" | "connection">) {
   const cells = useStudyPart(connection, "cells");
   const told = useStudyPart(connection, "status");
-  const { data: first } = useStatus(study.id);
+  const { data: first, isError: failed } = useStatus(study.id);
   const { data: uploads, error } = useUploads(study.id);
   const status = told ?? first;
   useUploadsOfOthers(study.id, cells, uploads);
-  const parse = useParsed();
+  const asTold = useMemo(() => standingsTold(cells, status), [cells, status]);
+  const reading = useReading(failed || (status !== undefined && asTold.some(({ isUnread }) => isUnread)));
   const resolved = useMemo(
-    () => (uploads ? resolveParsed(inOrder(cells).map(parse), uploads) : NONE),
-    [cells, uploads, parse],
+    () => (reading && uploads ? reading.resolveHere(cells, uploads) : undefined),
+    [reading, cells, uploads],
   );
   const standings = useUnchanged(
     useMemo(
-      () => standingsOf(cells, resolved, fingerprintCells(resolved, uploads ?? NONE), status),
-      [cells, resolved, uploads, status],
+      () => (reading && resolved ? reading.readStandings(cells, resolved, uploads ?? NONE, status) : asTold),
+      [reading, cells, resolved, uploads, status, asTold],
     ),
   );
+  useEffect(() => {
+    // With nothing to wait for, what can wait need not.
+    if (status && standings.every(({ fingerprint, isUnread }) => !fingerprint && !isUnread)) firstFindingShown();
+  }, [status, standings]);
   return { standings, cells, uploads: uploads ?? NONE, error, isKnown: uploads !== undefined && status !== undefined };
-}
-
-/** Reads a cell's text once for as long as it stays as it is: whoever types changes one text of many. */
-function useParsed(): (cell: CellSource) => StudyCell {
-  const [known] = useState(() => new WeakMap<CellSource, StudyCell>());
-  return useCallback(
-    (cell) => {
-      const before = known.get(cell);
-      if (before) return before;
-      const read = { ...cell, parsed: parseCell(cell.kind, cell.source) };
-      known.set(cell, read);
-      return read;
-    },
-    [known],
-  );
 }
 
 /** Standings that say what they said before are the same objects as before. */

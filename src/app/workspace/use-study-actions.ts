@@ -3,8 +3,7 @@ import type { CellKind } from "../../../shared/schemas/cell.ts";
 import type { Upload } from "../../../shared/schemas/resources.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import type { StudyConnection } from "../../sync/index.ts";
-import { freshName, freshSource } from "./cell-words.ts";
-import { sourcesAfterRenaming } from "./rename.ts";
+import { loadReading } from "./use-reading.ts";
 
 /** What a person does to the cells of a study as a whole. Each acts on the cells as they are when it is done. */
 export function useStudyActions(connection: StudyConnection, uploads: readonly Upload[]) {
@@ -13,11 +12,18 @@ export function useStudyActions(connection: StudyConnection, uploads: readonly U
     const placeOf = (cellId: string) => cells().findIndex(({ id }) => id === cellId);
     return {
       /** Returns the new cell's id. */
-      add: (kind: CellKind): string =>
-        connection.addCell({ name: freshName(kind, cells()), kind, source: freshSource(kind, cells(), uploads) }),
+      add: async (kind: CellKind): Promise<string> => {
+        const { freshName, freshSource } = await loadReading();
+        return connection.addCell({
+          name: freshName(kind, cells()),
+          kind,
+          source: freshSource(kind, cells(), uploads),
+        });
+      },
 
       /** Those that read the cell go on reading it, by its new name. */
-      rename: (cell: CellSource, name: string): void => {
+      rename: async (cell: CellSource, name: string): Promise<void> => {
+        const { sourcesAfterRenaming } = await loadReading();
         const sources = sourcesAfterRenaming(cell.name, name, cells());
         connection.renameCell(cell.id, name);
         for (const [id, source] of sources) connection.replaceSource(id, source);

@@ -1,22 +1,12 @@
 import { dataDescriptionTable } from "../../../shared/tables/data-description.ts";
 import { dataSentence } from "../../../shared/tables/sentence.ts";
 import { CopyTable } from "../copy-table.tsx";
-import { Headline, OpenHead } from "../headline.tsx";
-import type { BandProps, OpenProps } from "../types.ts";
+import { OpenHead } from "../headline.tsx";
+import type { OpenProps } from "../types.ts";
 import { Description } from "./description.tsx";
 import { GoodsTable } from "./goods-table.tsx";
 import { RowAccountingView } from "./row-accounting.tsx";
 import { WorthKnowing } from "./worth-knowing.tsx";
-
-/** A data cell in its band: how many rows are used, and shares and prices described. */
-export function DataBand({ finding }: BandProps<"data">) {
-  return (
-    <div className="space-y-3">
-      <Headline sentence={dataSentence(finding)} />
-      <Description finding={finding} />
-    </div>
-  );
-}
 
 /** A data cell in full: goods and their columns, what became of every row, what is worth knowing. */
 export function DataOpen({ finding, form }: OpenProps<"data">) {

@@ -5,8 +5,8 @@ import { capital } from "../../../shared/tables/phrases.ts";
 import { verdictsOf } from "../../../shared/tables/verdicts.ts";
 import { VerdictStrip } from "../../components/verdict-strip.tsx";
 import { CopyTable } from "../copy-table.tsx";
-import { Headline, OpenHead } from "../headline.tsx";
-import type { BandProps, OpenProps } from "../types.ts";
+import { OpenHead } from "../headline.tsx";
+import type { OpenProps } from "../types.ts";
 import { stripOf } from "../verdicts.ts";
 import { ClassesView } from "./classes-view.tsx";
 import { GoodsView } from "./goods-view.tsx";
@@ -17,29 +17,6 @@ import { type Below, BelowSwitch } from "./one-estimate.tsx";
 import { PricesView } from "./prices-view.tsx";
 
 const LABEL = "What theory says of the system";
-
-/** Elasticities in their band: sentence, verdicts, one table, conventions. */
-export function ElasticitiesBand({ finding }: BandProps<"elasticities">) {
-  const [which, setWhich] = useState<ByGood>("expenditure");
-  const [first] = finding.groups;
-  return (
-    <div className="space-y-3">
-      <Headline sentence={elasticitiesSentence(finding)} />
-      <VerdictStrip label={LABEL} verdicts={stripOf(verdictsOf(finding.checks, finding.tests))} />
-      {finding.groups.length === 1 ? (
-        <GoodsView finding={finding} group={first} below="errors" />
-      ) : (
-        <div>
-          <div className="mb-1 flex justify-end">
-            <ByGoodSwitch which={which} onChange={setWhich} />
-          </div>
-          <GroupsView finding={finding} which={which} below="errors" />
-        </div>
-      )}
-      <ElasticityNotes finding={finding} />
-    </div>
-  );
-}
 
 /** Elasticities in full: groups compared, then one group's goods, price elasticities and classes. */
 export function ElasticitiesOpen({ finding }: OpenProps<"elasticities">) {

@@ -3,8 +3,8 @@ import { systemSentence } from "../../../shared/tables/sentence.ts";
 import { systemVerdicts } from "../../../shared/tables/verdicts.ts";
 import { VerdictStrip } from "../../components/verdict-strip.tsx";
 import { CopyTable } from "../copy-table.tsx";
-import { Headline, OpenHead } from "../headline.tsx";
-import type { BandProps, OpenProps } from "../types.ts";
+import { OpenHead } from "../headline.tsx";
+import type { OpenProps } from "../types.ts";
 import { stripOf } from "../verdicts.ts";
 import { CoefficientView } from "./coefficient-view.tsx";
 import { EndogeneityView } from "./endogeneity-view.tsx";
@@ -13,18 +13,6 @@ import { FitView } from "./fit-view.tsx";
 import { SystemNote } from "./note.tsx";
 import { TestsView } from "./tests-view.tsx";
 import { ZerosView } from "./zeros-view.tsx";
-
-/** A fitted system in its band: sentence, verdicts, coefficients with their Engel curves, note. */
-export function SystemBand({ finding }: BandProps<"system">) {
-  return (
-    <div className="space-y-3">
-      <Headline sentence={systemSentence(finding)} />
-      <VerdictStrip label="What theory says of the system" verdicts={stripOf(systemVerdicts(finding))} />
-      <CoefficientView finding={finding} />
-      <SystemNote finding={finding} />
-    </div>
-  );
-}
 
 /** A fitted system in full: the same, with the tests of the theory and the fit. */
 export function SystemOpen({ finding }: OpenProps<"system">) {

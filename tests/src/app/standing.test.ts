@@ -5,9 +5,11 @@ import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { fingerprintCells } from "../../../shared/study/fingerprints.ts";
 import { resolveCells } from "../../../shared/study/resolve.ts";
 import { freshName, freshSource, sourceInALine } from "../../../src/app/workspace/cell-words.ts";
+import { nameFault } from "../../../src/app/workspace/name-fault.ts";
 import { mended } from "../../../src/app/workspace/problem-list.tsx";
-import { nameFault, sourcesAfterRenaming } from "../../../src/app/workspace/rename.ts";
-import { type Standing, standingsOf, waitingToBeAsked } from "../../../src/app/workspace/standing.ts";
+import { standingsOf } from "../../../src/app/workspace/reading.ts";
+import { sourcesAfterRenaming } from "../../../src/app/workspace/rename.ts";
+import { type Standing, waitingToBeAsked } from "../../../src/app/workspace/standing.ts";
 import { stateDetail } from "../../../src/app/workspace/state-line.tsx";
 import { studyCells, upload } from "../study-sources.ts";
 

@@ -2,10 +2,10 @@ import { render, screen, within } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
 import { describe, expect, it } from "vitest";
 import { printFixed } from "../../../shared/tables/numbers.ts";
-import { CELL_VIEWS } from "../../../src/cells/index.ts";
 import { Recomputed } from "../../../src/features/referee-copy/recomputed.tsx";
 import { verifyCopy } from "../../../src/workers/verify-copy.ts";
 import { sampleCopy, sampleSlutsky, sampleSystem } from "../../support/sample-findings.ts";
+import { CELL_PARTS } from "../cell-parts.ts";
 
 const plain = sampleSlutsky();
 /** Intervals no normal distribution gives: from the estimate itself to one above it. */
@@ -24,7 +24,7 @@ const matrix = {
 };
 
 describe("a matrix of a bootstrapped system", () => {
-  const { Open, Band } = CELL_VIEWS.slutsky;
+  const { Open, Band } = CELL_PARTS.slutsky;
 
   it("reads an entry with the percentiles of the draws, which decide its word", () => {
     render(<Open finding={matrix} />);
@@ -47,7 +47,7 @@ describe("a matrix of a bootstrapped system", () => {
 });
 
 describe("coefficients of a bootstrapped system", () => {
-  const { Band } = CELL_VIEWS.system;
+  const { Band } = CELL_PARTS.system;
   const system = sampleSystem();
   const intervals = system.coefficients.map(({ estimate }): [number, number] => [estimate - 0.5, estimate + 0.25]);
   const bootstrap = { of: "rows", replicates: 480, failed: 0, seed: 1, intervals } as const;
@@ -87,7 +87,7 @@ describe("rows where the system is not defined", () => {
   };
 
   it("are listed with the reason, counted beside the histogram, and said at the head", () => {
-    render(<CELL_VIEWS.slutsky.Open finding={finding} />);
+    render(<CELL_PARTS.slutsky.Open finding={finding} />);
     const broken = screen.getByRole("group", { name: "Rows where a law breaks" });
     expect(within(broken).getAllByRole("row")[1]).toHaveTextContent(`not defined: ${reason}`);
     expect(screen.getByText(/The system is not defined in 3 of 900 rows\./)).toBeInTheDocument();

@@ -1,10 +1,10 @@
 import { render, screen } from "@testing-library/react";
 import { expect, it } from "vitest";
-import { CELL_VIEWS } from "../../../src/cells/index.ts";
 import { sampleSystem } from "../../support/sample-findings.ts";
+import { CELL_PARTS } from "../cell-parts.ts";
 
 it("shows a system in differences without curves of shares, of which it predicts none", () => {
-  const { Open } = CELL_VIEWS.system;
+  const { Open } = CELL_PARTS.system;
   const sample = sampleSystem();
   const finding = {
     ...sample,

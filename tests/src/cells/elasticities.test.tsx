@@ -5,10 +5,10 @@ import { describe, expect, it } from "vitest";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
 import { ElasticitiesForm } from "../../../src/cells/elasticities/form.tsx";
-import { CELL_VIEWS } from "../../../src/cells/index.ts";
 import { sampleElasticities } from "../../support/sample-elasticities.ts";
+import { CELL_PARTS } from "../cell-parts.ts";
 
-const { Band, Open } = CELL_VIEWS.elasticities;
+const { Band, Open } = CELL_PARTS.elasticities;
 const rowsOf = (table: HTMLElement) =>
   within(table)
     .getAllByRole("row")

@@ -4,8 +4,8 @@ import type { Endogeneity, ZerosFinding } from "../../../shared/schemas/first-st
 import { systemFinding } from "../../../shared/schemas/system.ts";
 import { systemSentence } from "../../../shared/tables/sentence.ts";
 import { tableText } from "../../../shared/tables/text.ts";
-import { CELL_VIEWS } from "../../../src/cells/index.ts";
 import { sampleSystem } from "../../support/sample-findings.ts";
+import { CELL_PARTS } from "../cell-parts.ts";
 
 const GOODS = ["grains", "dairy", "produce", "meat & fish", "sweet drinks", "other food"];
 const RHO = [0.0074, 0.0013, 0.0081, -0.0086, -0.0001, -0.0081];
@@ -48,7 +48,7 @@ const zeros: ZerosFinding = {
   firstStepIgnored: true,
 };
 
-const { Open, tables } = CELL_VIEWS.system;
+const { Open, tables } = CELL_PARTS.system;
 
 describe("endogenous expenditure in an open system cell", () => {
   it("shows the first stage with its F, the residual by good, and what the test means", () => {

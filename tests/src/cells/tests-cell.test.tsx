@@ -3,12 +3,12 @@ import userEvent from "@testing-library/user-event";
 import { useState } from "react";
 import { describe, expect, it } from "vitest";
 import type { MadeTest, TestsFinding } from "../../../shared/schemas/tests.ts";
-import { CELL_VIEWS } from "../../../src/cells/index.ts";
 import { TestsForm } from "../../../src/cells/tests/form.tsx";
 import { exampleFindings } from "../../support/findings.ts";
 import { berndtWoodHomogeneity } from "../../support/made-tests.ts";
+import { CELL_PARTS } from "../cell-parts.ts";
 
-const { Band, Open, tables } = CELL_VIEWS.tests;
+const { Band, Open, tables } = CELL_PARTS.tests;
 
 const homogeneity: MadeTest = {
   ...berndtWoodHomogeneity,

@@ -2,8 +2,8 @@ import { render, screen, within } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
 import { describe, expect, it } from "vitest";
 import { printCount, printFixed, printPercent } from "../../../shared/tables/numbers.ts";
-import { CELL_VIEWS } from "../../../src/cells/index.ts";
 import { sampleData, sampleFitted, sampleSlutsky, sampleSystem } from "../../support/sample-findings.ts";
+import { CELL_PARTS } from "../cell-parts.ts";
 
 const verdicts = () =>
   within(screen.getByRole("list", { name: /What theory says/ }))
@@ -11,7 +11,7 @@ const verdicts = () =>
     .map((item) => item.textContent);
 
 describe("a slutsky cell", () => {
-  const { Band, Open, Aside } = CELL_VIEWS.slutsky;
+  const { Band, Open, Aside } = CELL_PARTS.slutsky;
   const finding = sampleSlutsky();
 
   it("says in its band what the matrix is, at which point, and where it breaks", () => {
@@ -90,7 +90,7 @@ describe("a slutsky cell", () => {
 });
 
 describe("a system cell", () => {
-  const { Band, Open, tables } = CELL_VIEWS.system;
+  const { Band, Open, tables } = CELL_PARTS.system;
   const finding = sampleSystem();
 
   it("shows coefficients with price terms folded, and unfolds them", async () => {
@@ -123,7 +123,7 @@ describe("a system cell", () => {
 });
 
 describe("a data cell", () => {
-  const { Band, Open } = CELL_VIEWS.data;
+  const { Band, Open } = CELL_PARTS.data;
   const finding = sampleData();
 
   it("says how many rows are used and describes every good", () => {

@@ -71,7 +71,8 @@ describe("controls", () => {
     );
     screen.getByRole("button", { name: "More for base" }).focus();
     await user.keyboard("{Enter}");
-    expect(screen.getByRole("menuitem", { name: "Move down" })).toHaveAttribute("aria-disabled", "true");
+    expect(await screen.findByRole("menuitem", { name: "Move down" })).toHaveAttribute("aria-disabled", "true");
+    await vi.waitFor(() => expect(screen.getByRole("menuitem", { name: "Rename" })).toHaveFocus());
     await user.keyboard("{Enter}");
     expect(onSelect).toHaveBeenCalledOnce();
   });

@@ -1,0 +1,20 @@
+import type { Upload } from "../../../shared/schemas/resources.ts";
+import type { CellSource } from "../../../shared/study/cell-source.ts";
+import { parseCell } from "../../../shared/study/parse-cell.ts";
+import { ColumnList } from "./column-list.tsx";
+import { demographicsOn } from "./column-uses.ts";
+
+interface UploadColumnsProps {
+  readonly cell: CellSource;
+  readonly cells: readonly CellSource[];
+  readonly uploads: readonly Upload[];
+}
+
+/** The columns of the upload a data cell names, and what the cell and the systems on it use them for. */
+export default function UploadColumns({ cell, cells, uploads }: UploadColumnsProps) {
+  const { upload: name } = parseCell("data", cell.source).written;
+  const upload = uploads.find((one) => one.name === name);
+  return upload ? (
+    <ColumnList upload={upload} source={cell.source} demographics={demographicsOn(cell.name, cells)} />
+  ) : null;
+}

@@ -1,0 +1,21 @@
+import { DataBand } from "../../src/cells/data/band.tsx";
+import { DataOpen } from "../../src/cells/data/view.tsx";
+import { ElasticitiesBand } from "../../src/cells/elasticities/band.tsx";
+import { ElasticitiesOpen } from "../../src/cells/elasticities/view.tsx";
+import { SlutskyBand } from "../../src/cells/slutsky/band.tsx";
+import { HowChecked } from "../../src/cells/slutsky/how-checked.tsx";
+import { SlutskyOpen } from "../../src/cells/slutsky/view.tsx";
+import { SystemBand } from "../../src/cells/system/band.tsx";
+import { SystemOpen } from "../../src/cells/system/view.tsx";
+import { CELL_TABLES } from "../../src/cells/tables.ts";
+import { TestsBand } from "../../src/cells/tests/band.tsx";
+import { TestsOpen } from "../../src/cells/tests/view.tsx";
+
+/** The parts of each kind that show a finding, here without loading them one by one. */
+export const CELL_PARTS = {
+  data: { Band: DataBand, Open: DataOpen, tables: CELL_TABLES.data },
+  system: { Band: SystemBand, Open: SystemOpen, tables: CELL_TABLES.system },
+  tests: { Band: TestsBand, Open: TestsOpen, tables: CELL_TABLES.tests },
+  elasticities: { Band: ElasticitiesBand, Open: ElasticitiesOpen, tables: CELL_TABLES.elasticities },
+  slutsky: { Band: SlutskyBand, Open: SlutskyOpen, Aside: HowChecked, tables: CELL_TABLES.slutsky },
+};
