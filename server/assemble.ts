@@ -14,11 +14,14 @@ import { createLogger } from "./http/log.ts";
 import { pages } from "./http/pages.ts";
 import { sessionOf } from "./http/session.ts";
 import { createPool, type JobPool } from "./jobs/pool.ts";
+import { localPostBox } from "./mail/post-box.ts";
+import { mailServer } from "./mail/smtp.ts";
 import { ROOT, VERSION } from "./root.ts";
 import { createAccess } from "./services/access.ts";
 import { type Authentication, createAuthentication } from "./services/authentication.ts";
 import { createCellService } from "./services/cells.ts";
 import { createServices, type Services } from "./services/index.ts";
+import { createMailService, type MailService } from "./services/mail.ts";
 import { lockFolder } from "./storage/lock.ts";
 import { keptSecret } from "./storage/secret.ts";
 import { addCell, createSyncServer, type SyncServer, storedUpdates } from "./sync/index.ts";
@@ -34,6 +37,7 @@ export interface Running {
 interface LiveParts {
   readonly open: OpenDatabase;
   readonly auth: Authentication;
+  readonly mail: MailService;
   readonly pool: JobPool;
   readonly logger: Logger;
   readonly origins: readonly string[];
@@ -61,20 +65,29 @@ export async function assemble(config: Config, say: (line: string) => void): Pro
   const open = openDatabase(join(dataFolder, "tangency.sqlite"));
   const logger = createLogger(config.logLevel);
   const { db } = open;
+  const secret = config.secret ?? keptSecret(dataFolder);
+  const mail = createMailService({
+    db,
+    mailer: config.smtp === undefined ? localPostBox : mailServer(config.smtp),
+    secret,
+    report: (error) => logger.error({ err: error }, "unforeseen"),
+  });
   const auth = createAuthentication({
     db,
     url: config.url,
     trustedOrigins: config.trustedOrigins,
     secure: config.secure,
-    secret: config.secret ?? keptSecret(dataFolder),
+    secret,
   });
   const pool = createPool({
     databasePath: open.path,
     threads: config.threads,
     threadsEach: threadsOfOneComputation(config),
   });
-  const { services, sync, stopCells } = live({ open, auth, pool, logger, origins: config.trustedOrigins });
+  const { services, sync, stopCells } = live({ open, auth, mail, pool, logger, origins: config.trustedOrigins });
   services.uploads.removeUnfinished();
+  mail.removeOld();
+  mail.start();
 
   const demo = isDemo(db, config.demo);
   if (demo) await makeDemo({ open, auth, services, sync, say });
@@ -99,6 +112,7 @@ export async function assemble(config: Config, say: (line: string) => void): Pro
       await sync.close();
       stopCells();
       await pool.close();
+      await mail.close();
       server.closeAllConnections();
       await quiet;
       open.close();
@@ -108,7 +122,7 @@ export async function assemble(config: Config, say: (line: string) => void): Pro
 }
 
 /** The parts that call one another: cells read the document, and the document tells the cells of edits. */
-function live({ open, auth, pool, logger, origins }: LiveParts): Live {
+function live({ open, auth, mail, pool, logger, origins }: LiveParts): Live {
   const { db } = open;
   const access = createAccess(db);
   const report = (error: unknown) => logger.error({ err: error }, "unforeseen");
@@ -136,6 +150,7 @@ function live({ open, auth, pool, logger, origins }: LiveParts): Live {
   const cells = createCellService({ db, pool, sourcesOf: sync.sourcesOf, publish: sync.publish, report });
   const services = createServices({
     db,
+    mail,
     cells,
     sourcesOf: sync.sourcesOf,
     closePerson: sync.closePerson,

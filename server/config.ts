@@ -23,6 +23,18 @@ const environment = z.object({
   TANGENCY_DATA: z.string().min(1).default("data"),
   TANGENCY_DEMO: flag.optional(),
   TANGENCY_SECRET: z.string().min(32, "has at least 32 characters").optional(),
+  /** Signed in under one of these addresses, parted by commas, one administers the installation. */
+  TANGENCY_ADMINISTRATORS: z
+    .string()
+    .transform((list) => list.split(",").map((address) => address.trim().toLowerCase()))
+    .pipe(z.array(z.email("holds something that is not an e-mail address")))
+    .optional(),
+  /** The mail server. Without one, messages stay in a local post box that administrators read. */
+  TANGENCY_SMTP_URL: z
+    .url({ protocol: /^smtps?$/, hostname: z.regexes.hostname, error: "is an address beginning smtp:// or smtps://" })
+    .optional(),
+  /** Whom messages come from, for instance "Tangency <tangency@institute.example>". */
+  TANGENCY_MAIL_FROM: z.string().min(3).max(200).optional(),
   /** How many proxies stand in front and may be believed about the address of the client. */
   TANGENCY_PROXIES: z.coerce.number({ error: "is a whole number" }).int("is a whole number").min(0).default(0),
   TANGENCY_THREADS: z.coerce.number({ error: "is a whole number" }).int().positive().optional(),
@@ -30,6 +42,7 @@ const environment = z.object({
   TANGENCY_SIGN_INS_PER_MINUTE: wholeNumber(30),
   TANGENCY_UPLOADS_PER_HOUR: wholeNumber(120),
   TANGENCY_REFEREE_READS_PER_MINUTE: wholeNumber(120),
+  TANGENCY_MAILS_PER_HOUR: wholeNumber(60),
   TANGENCY_DEVELOPMENT: flag.default(false),
 });
 
@@ -44,6 +57,10 @@ export interface Config {
   /** What the environment says; undefined leaves it to whether the database is new. */
   readonly demo: boolean | undefined;
   readonly secret: string | undefined;
+  /** In small letters. */
+  readonly administrators: readonly string[];
+  /** Undefined: messages stay in the local post box. */
+  readonly smtp: { readonly url: string; readonly from: string } | undefined;
   readonly proxies: number;
   readonly threads: number | undefined;
   readonly logLevel: z.infer<typeof environment>["TANGENCY_LOG"];
@@ -55,7 +72,12 @@ export interface Limits {
   readonly signInsPerMinute: number;
   readonly uploadsPerHour: number;
   readonly refereeReadsPerMinute: number;
+  /** That one address or person may cause. */
+  readonly mailsPerHour: number;
 }
+
+/** Settings whose value is never printed: it may hold a passphrase. */
+const SECRETS: readonly string[] = ["TANGENCY_SECRET", "TANGENCY_SMTP_URL"];
 
 const MOST_THREADS_EACH = 8;
 
@@ -71,7 +93,7 @@ export function readConfig(env: Record<string, string | undefined>): Config {
   if (!parsed.success) {
     const faults = parsed.error.issues.map((issue) => {
       const name = String(issue.path[0]);
-      return `${name} ${issue.message}${name === "TANGENCY_SECRET" ? "" : `, and is "${given[name]}"`}`;
+      return `${name} ${issue.message}${SECRETS.includes(name) ? "" : `, and is "${given[name]}"`}`;
     });
     throw new Error(`The environment does not fit: ${faults.join("; ")}.`);
   }
@@ -86,6 +108,14 @@ export function readConfig(env: Record<string, string | undefined>): Config {
     dataFolder: values.TANGENCY_DATA,
     demo: values.TANGENCY_DEMO,
     secret: values.TANGENCY_SECRET,
+    administrators: values.TANGENCY_ADMINISTRATORS ?? [],
+    smtp:
+      values.TANGENCY_SMTP_URL === undefined
+        ? undefined
+        : {
+            url: values.TANGENCY_SMTP_URL,
+            from: values.TANGENCY_MAIL_FROM ?? `Tangency <tangency@${new URL(url).hostname}>`,
+          },
     proxies: values.TANGENCY_PROXIES,
     threads: values.TANGENCY_THREADS,
     logLevel: values.TANGENCY_LOG,
@@ -93,6 +123,7 @@ export function readConfig(env: Record<string, string | undefined>): Config {
       signInsPerMinute: values.TANGENCY_SIGN_INS_PER_MINUTE,
       uploadsPerHour: values.TANGENCY_UPLOADS_PER_HOUR,
       refereeReadsPerMinute: values.TANGENCY_REFEREE_READS_PER_MINUTE,
+      mailsPerHour: values.TANGENCY_MAILS_PER_HOUR,
     },
     development: values.TANGENCY_DEVELOPMENT,
   };

@@ -20,6 +20,8 @@ const ALLOWED = {
   "people.add": ["owner"],
   "people.change": ["owner"],
   "people.remove": ["owner"],
+  "journal.read": ["owner", "coauthor", "reader"],
+  "journal.read all": ["owner"],
   "upload.read": ["owner", "coauthor", "reader"],
   "upload.add": ["owner", "coauthor"],
   "upload.remove": ["owner", "coauthor"],

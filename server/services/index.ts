@@ -1,5 +1,7 @@
 import type { Database } from "../db/client.ts";
 import { type Access, createAccess } from "./access.ts";
+import { createJournalService, type JournalService } from "./journal.ts";
+import type { MailService } from "./mail.ts";
 import { createPeopleService, type PeopleService } from "./people.ts";
 import type { Cells, ClosePerson, ParseUpload, SourcesOf } from "./ports.ts";
 import { createRefereeCopyService, type RefereeCopyService } from "./referee-copies.ts";
@@ -9,6 +11,8 @@ import { createUploadService, type UploadService } from "./uploads.ts";
 
 export interface Services {
   readonly access: Access;
+  readonly mail: MailService;
+  readonly journal: JournalService;
   readonly cells: Cells;
   readonly studies: StudyService;
   readonly people: PeopleService;
@@ -21,6 +25,7 @@ export interface Services {
 
 interface Collaborators {
   readonly db: Database;
+  readonly mail: MailService;
   readonly cells: Cells;
   readonly sourcesOf: SourcesOf;
   readonly closePerson: ClosePerson;
@@ -31,6 +36,7 @@ interface Collaborators {
 
 export function createServices({
   db,
+  mail,
   cells,
   sourcesOf,
   closePerson,
@@ -39,14 +45,18 @@ export function createServices({
   program,
 }: Collaborators): Services {
   const access = createAccess(db);
+  const journal = createJournalService({ db, access });
+  const { record } = journal;
   return {
     access,
+    mail,
+    journal,
     cells,
     studies: createStudyService({ db, access, cells, closePerson }),
     people: createPeopleService({ db, access, closePerson }),
-    uploads: createUploadService({ db, access, parseUpload, sourcesOf, cells }),
+    uploads: createUploadService({ db, access, parseUpload, sourcesOf, cells, record }),
     remarks: createRemarkService({ db, access, sourcesOf, remarksChanged }),
-    refereeCopies: createRefereeCopyService({ db, access, cells, sourcesOf, program }),
+    refereeCopies: createRefereeCopyService({ db, access, cells, sourcesOf, program, record }),
     signedOut: (userId) => closePerson(userId),
   };
 }

@@ -20,6 +20,7 @@ import { findStudy } from "../db/queries/studies.ts";
 import { conflict, notFound } from "../errors.ts";
 import type { Actor } from "../policies/can.ts";
 import { type Access, noSuchStudy } from "./access.ts";
+import type { RecordInJournal } from "./journal.ts";
 import type { Cells, SourcesOf } from "./ports.ts";
 import { type SealedCells, sealedContentOf } from "./sealed-content.ts";
 
@@ -32,6 +33,7 @@ interface Collaborators {
   readonly sourcesOf: SourcesOf;
   /** Name and version, for the copy to say what sealed it. */
   readonly program: string;
+  readonly record: RecordInJournal;
 }
 
 interface Wanted {
@@ -42,7 +44,7 @@ interface Wanted {
 
 export type RefereeCopyService = ReturnType<typeof createRefereeCopyService>;
 
-export function createRefereeCopyService({ db, access, cells, sourcesOf, program }: Collaborators) {
+export function createRefereeCopyService({ db, access, cells, sourcesOf, program, record }: Collaborators) {
   /** The current finding of a cell with its source; throws when the cell has another state. */
   async function current<K extends CellKind>(studyId: string, status: CellStatus, kind: K) {
     if (status.kind !== kind) throw conflict(`${status.name} is a ${status.kind} cell; a ${kind} cell is needed here.`);
@@ -99,12 +101,17 @@ export function createRefereeCopyService({ db, access, cells, sourcesOf, program
         revokedAt: null,
         lastOpenedAt: null,
       });
+      record({ studyId, actor, action: "referee copy sealed", subject: sealed.matrix.cell.name });
       return { copy: copyOf(studyId, id), token };
     },
 
     revoke(actor: Actor, studyId: string, copyId: string): RefereeCopySummaryRow {
       access.allow(actor, "referee copy.revoke", studyId);
-      if (copyOf(studyId, copyId).revokedAt === null) changeRefereeCopy(db, copyId, { revokedAt: new Date() });
+      const { revokedAt, cellName } = copyOf(studyId, copyId);
+      if (revokedAt === null) {
+        changeRefereeCopy(db, copyId, { revokedAt: new Date() });
+        record({ studyId, actor, action: "referee copy revoked", subject: cellName });
+      }
       return copyOf(studyId, copyId);
     },
 

@@ -19,6 +19,7 @@ import { conflict, invalid, notFound, refused, tooLarge } from "../errors.ts";
 import type { Actor } from "../policies/can.ts";
 import { inPieces } from "../storage/pieces.ts";
 import type { Access } from "./access.ts";
+import type { RecordInJournal } from "./journal.ts";
 import type { Cells, ParseUpload, SourcesOf } from "./ports.ts";
 import { cellsNamingUpload, freeName, inMegabytes, LARGEST_UPLOAD, plainName } from "./upload-names.ts";
 
@@ -32,11 +33,12 @@ interface Collaborators {
   readonly parseUpload: ParseUpload;
   readonly sourcesOf: SourcesOf;
   readonly cells: Pick<Cells, "changed">;
+  readonly record: RecordInJournal;
 }
 
 export type UploadService = ReturnType<typeof createUploadService>;
 
-export function createUploadService({ db, access, parseUpload, sourcesOf, cells }: Collaborators) {
+export function createUploadService({ db, access, parseUpload, sourcesOf, cells, record }: Collaborators) {
   async function storePieces(uploadId: string, stream: AsyncIterable<Uint8Array>): Promise<void> {
     const hash = createHash("sha256");
     let position = 0;
@@ -101,6 +103,7 @@ export function createUploadService({ db, access, parseUpload, sourcesOf, cells 
       }
       const upload = findUpload(db, studyId, uploadId);
       if (upload === undefined) throw notFound("The study was removed while the file was read.");
+      record({ studyId, actor: { id: upload.uploadedBy }, action: "upload added", subject: upload.name });
       cells.changed(studyId);
       return describe(db, upload);
     },
@@ -118,6 +121,7 @@ export function createUploadService({ db, access, parseUpload, sourcesOf, cells 
         throw conflict(`${upload.name} stays: ${which} ${named.join(", ")} ${verb} it.`);
       }
       deleteUpload(db, uploadId);
+      record({ studyId, actor, action: "upload removed", subject: upload.name });
       cells.changed(studyId);
     },
 

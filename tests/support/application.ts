@@ -4,8 +4,10 @@ import { createApp } from "../../server/app.ts";
 import type { Limits } from "../../server/config.ts";
 import { openDatabase } from "../../server/db/client.ts";
 import { createLogger } from "../../server/http/log.ts";
+import { localPostBox } from "../../server/mail/post-box.ts";
 import { createAuthentication } from "../../server/services/authentication.ts";
 import { createServices } from "../../server/services/index.ts";
+import { createMailService } from "../../server/services/mail.ts";
 import { FakeCells, FakeParser, FakeSockets } from "./fakes.ts";
 import { temporaryFolder } from "./temporary.ts";
 
@@ -49,8 +51,17 @@ export async function startApplication({ limits, secure = false, log }: Options 
   const cells = new FakeCells();
   const sockets = new FakeSockets();
   const parser = new FakeParser(open);
+  const mail = createMailService({
+    db: open.db,
+    mailer: localPostBox,
+    secret: "x".repeat(40),
+    report: (error) => {
+      throw error;
+    },
+  });
   const services = createServices({
     db: open.db,
+    mail,
     cells,
     sourcesOf: cells.sourcesOf,
     closePerson: sockets.closePerson,
@@ -64,7 +75,13 @@ export async function startApplication({ limits, secure = false, log }: Options 
       secure,
       proxies: 0,
       development: false,
-      limits: { signInsPerMinute: 1000, uploadsPerHour: 1000, refereeReadsPerMinute: 1000, ...limits },
+      limits: {
+        signInsPerMinute: 1000,
+        uploadsPerHour: 1000,
+        refereeReadsPerMinute: 1000,
+        mailsPerHour: 1000,
+        ...limits,
+      },
     },
     auth,
     services,
