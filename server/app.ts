@@ -11,7 +11,9 @@ import { ownPagesOnly } from "./http/origin.ts";
 import { neverKept, protectPages } from "./http/security.ts";
 import { readSession } from "./http/session.ts";
 import { cellRoutes } from "./routes/cells.ts";
+import { checkpointRoutes } from "./routes/checkpoints.ts";
 import { doorRoutes } from "./routes/door.ts";
+import { historyRoutes } from "./routes/history.ts";
 import { peopleRoutes } from "./routes/people.ts";
 import { refereeCopyRoutes } from "./routes/referee-copies.ts";
 import { remarkRoutes } from "./routes/remarks.ts";
@@ -52,13 +54,15 @@ export function createApp({ config, auth, services, installation, logger, pages 
 
 function apiRoutes({ config, services, installation }: Pick<AppDependencies, "config" | "services" | "installation">) {
   const router = express.Router();
-  const { studies, people, uploads, cells, refereeCopies, remarks, access } = services;
+  const { studies, people, uploads, cells, refereeCopies, remarks, access, history, checkpoints } = services;
   router.use(doorRoutes({ installation }));
   router.use(studyRoutes({ studies }));
   router.use(peopleRoutes({ people }));
   router.use(uploadRoutes({ uploads, limit: limitUploads(config.limits.uploadsPerHour) }));
   router.use(cellRoutes({ cells, access }));
   router.use(remarkRoutes({ remarks, limit: limitRemarks(REMARKS_PER_MINUTE) }));
+  router.use(historyRoutes({ history }));
+  router.use(checkpointRoutes({ checkpoints }));
   router.use(refereeCopyRoutes({ refereeCopies, limit: limitRefereeReads(config.limits.refereeReadsPerMinute) }));
   return router;
 }

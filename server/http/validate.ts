@@ -20,6 +20,7 @@ const places = z.object({
   uploadId: identifier.optional(),
   cellId: identifier.optional(),
   copyId: identifier.optional(),
+  checkpointId: identifier.optional(),
   remarkId: identifier.optional(),
   replyId: identifier.optional(),
 });

@@ -1,5 +1,7 @@
 import type { Database } from "../db/client.ts";
 import { type Access, createAccess } from "./access.ts";
+import { type CheckpointService, createCheckpointService } from "./checkpoints.ts";
+import { createHistoryService, type HistoryService } from "./history.ts";
 import { createJournalService, type JournalService } from "./journal.ts";
 import type { MailService } from "./mail.ts";
 import { createPeopleService, type PeopleService } from "./people.ts";
@@ -18,6 +20,8 @@ export interface Services {
   readonly people: PeopleService;
   readonly uploads: UploadService;
   readonly refereeCopies: RefereeCopyService;
+  readonly history: HistoryService;
+  readonly checkpoints: CheckpointService;
   readonly remarks: RemarkService;
   /** Someone has signed out: their open sockets close. */
   readonly signedOut: (userId: string) => void;
@@ -56,6 +60,8 @@ export function createServices({
     people: createPeopleService({ db, access, closePerson }),
     uploads: createUploadService({ db, access, parseUpload, sourcesOf, cells, record }),
     remarks: createRemarkService({ db, access, sourcesOf, remarksChanged }),
+    history: createHistoryService({ db, access, sourcesOf }),
+    checkpoints: createCheckpointService({ db, access, sourcesOf }),
     refereeCopies: createRefereeCopyService({ db, access, cells, sourcesOf, program, record }),
     signedOut: (userId) => closePerson(userId),
   };
