@@ -29,17 +29,17 @@ export function easiRowByRow(data: PreparedData, size: SystemSize, free: FreeFor
     round = roundAt(expanded(phi));
     const target = Matrix.sub(round.responses, round.regressors.mmul(Matrix.columnVector(free.offset)));
     const projected = round.projected.mmul(restriction);
-    const q = round.weighted(projected);
-    const next = new QrDecomposition(q.transpose().mmul(round.regressors.mmul(restriction)))
-      .solve(q.transpose().mmul(target))
-      .to1DArray();
-    const moved = next.reduce((most, value, f) => Math.max(most, Math.abs(value - phi[f])), 0);
+    // Ẑ'(W ⊗ I)(w − Zφ) = 0 without a square: Z − Ẑ is orthogonal to the instruments, and so to Ẑ.
+    const root = new CholeskyDecomposition(weight).lowerTriangularMatrix.transpose();
+    const next = new QrDecomposition(round.times(root, projected)).solve(round.times(root, target)).to1DArray();
+    const largest = next.reduce((most, value) => Math.max(most, Math.abs(value)), 1);
+    const moved = next.reduce((most, value, f) => Math.max(most, Math.abs(value - phi[f]) / largest), 0);
     phi = next;
-    if (weighting === "by residuals") weight = inverse(residualCovariance(expanded(phi)));
-    if (moved < 1e-12 || (moved < 1e-9 && moved >= last)) break;
+    if (weighting === "by residuals") weight = symmetric(inverse(residualCovariance(expanded(phi))));
+    if (moved < 1e-12 || (moved < 1e-8 && moved >= last)) break;
     last = moved;
   }
-  const q = round!.weighted(round!.projected.mmul(restriction));
+  const q = round!.times(weight, round!.projected.mmul(restriction));
   const jacobian = Matrix.zeros(data.rows * kept.length, phi.length);
   phi.forEach((_, f) => {
     const step = 1e-4;
@@ -72,8 +72,8 @@ export function easiRowByRow(data: PreparedData, size: SystemSize, free: FreeFor
     /** Terms of every equation by θ, rows times equations × k; and those projected on the instruments. */
     readonly regressors: Matrix;
     readonly projected: Matrix;
-    /** Σ⁻¹ applied to the equations of every row. */
-    weighted(matrix: Matrix): Matrix;
+    /** A matrix applied to the equations of every row. */
+    times(left: Matrix, matrix: Matrix): Matrix;
   }
 
   function pointOf(t: number) {
@@ -129,11 +129,11 @@ export function easiRowByRow(data: PreparedData, size: SystemSize, free: FreeFor
       responses: Matrix.columnVector(own.flatMap((_, t) => kept.map((i) => data.shares[i][t] * root(t)))),
       regressors: stack((t, a) => own[t][a]),
       projected: stack((t, a) => projectedTerms.get(t, a)),
-      weighted(matrix) {
+      times(left, matrix) {
         const result = Matrix.zeros(matrix.rows, matrix.columns);
         for (let t = 0; t < data.rows; t++) {
           const block = matrix.subMatrix(t * kept.length, (t + 1) * kept.length - 1, 0, matrix.columns - 1);
-          result.setSubMatrix(weight.mmul(block), t * kept.length, 0);
+          result.setSubMatrix(left.mmul(block), t * kept.length, 0);
         }
         return result;
       },
@@ -158,6 +158,8 @@ export function easiRowByRow(data: PreparedData, size: SystemSize, free: FreeFor
     return e.transpose().mmul(e).div(data.rows);
   }
 }
+
+const symmetric = (matrix: Matrix) => Matrix.add(matrix, matrix.transpose()).div(2);
 
 function chunks(values: readonly number[], length: number): number[][] {
   return Array.from({ length: values.length / length }, (_, t) => values.slice(t * length, (t + 1) * length));

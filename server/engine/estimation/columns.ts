@@ -12,6 +12,12 @@ export function zeros(rows: number, columns: number): Columns {
   return { rows, columns, values: new Float64Array(rows * columns) };
 }
 
+export function identity(size: number): Columns {
+  const matrix = zeros(size, size);
+  for (let i = 0; i < size; i++) matrix.values[i * size + i] = 1;
+  return matrix;
+}
+
 export function columnOf(matrix: Columns, column: number): Float64Array {
   return matrix.values.subarray(column * matrix.rows, (column + 1) * matrix.rows);
 }

@@ -1,4 +1,4 @@
-import type { Columns } from "./columns.ts";
+import { type Columns, columnOf } from "./columns.ts";
 import { solveUpper, solveUpperTransposed } from "./triangle.ts";
 
 const SWEEPS = 40;
@@ -19,6 +19,17 @@ export function conditionOf(triangle: Columns): number {
     return solved;
   });
   return Math.sqrt(largest * smallest);
+}
+
+/** The same with every column scaled to unit length. */
+export function scaledCondition(triangle: Columns): number {
+  const scaled: Columns = { ...triangle, values: triangle.values.slice() };
+  for (let j = 0; j < scaled.columns; j++) {
+    const column = columnOf(scaled, j);
+    const length = Math.hypot(...column) || 1;
+    for (let i = 0; i < column.length; i++) column[i] /= length;
+  }
+  return conditionOf(scaled);
 }
 
 function power(size: number, apply: (vector: Float64Array) => Float64Array): number {

@@ -1,6 +1,6 @@
 import type { RunControl } from "../run.ts";
 import { accumulateSums, momentMatrix } from "./accumulate-sums.ts";
-import { type Columns, multiply, zeros } from "./columns.ts";
+import { type Columns, identity, multiply, zeros } from "./columns.ts";
 import type { MomentSource, TermPair } from "./moment-source.ts";
 import { planTiles } from "./monomial-plan.ts";
 import { semidefiniteCholesky, solveUpper } from "./triangle.ts";
@@ -118,10 +118,4 @@ function partners(triangle: Columns, j: number, length: number): number[] {
     for (let k = 0; k <= i; k++) squares += triangle.values[i * size + k] ** 2;
     return Math.abs(combination[place]) * Math.sqrt(squares) > 1e-6 * length;
   });
-}
-
-function identity(size: number): Columns {
-  const matrix = zeros(size, size);
-  for (let i = 0; i < size; i++) matrix.values[i * size + i] = 1;
-  return matrix;
 }

@@ -1,4 +1,8 @@
+import type { Poll } from "../run.ts";
 import { type Columns, zeros } from "./columns.ts";
+
+/** Multiplications between two polls: some ten milliseconds. */
+const WORK_BETWEEN_POLLS = 1e7;
 
 /**
  * Householder triangular factor (Householder 1958, Journal of the ACM 5): A = QR by reflections, one
@@ -6,9 +10,15 @@ import { type Columns, zeros } from "./columns.ts";
  * others only carried along, so that they end as Q'b. Signs make the diagonal of R non-negative.
  * Cost 2 r c² floating-point operations.
  */
-export function reduceToTriangle(matrix: Columns, pivots: number = matrix.columns): void {
+export function reduceToTriangle(matrix: Columns, pivots: number = matrix.columns, poll: Poll = () => {}): void {
   const { rows, columns, values } = matrix;
+  let work = 0;
   for (let pivot = 0; pivot < Math.min(pivots, rows); pivot++) {
+    work += 2 * (rows - pivot) * (columns - pivot);
+    if (work > WORK_BETWEEN_POLLS) {
+      poll();
+      work = 0;
+    }
     const offset = pivot * rows;
     let squares = 0;
     for (let i = pivot + 1; i < rows; i++) squares += values[offset + i] * values[offset + i];
@@ -51,9 +61,9 @@ function reflect(
 }
 
 /** The triangular factor R of `matrix`, min(r, c) × c; the matrix itself is left as it was. */
-export function triangularFactor(matrix: Columns): Columns {
+export function triangularFactor(matrix: Columns, poll?: Poll): Columns {
   const copy: Columns = { ...matrix, values: matrix.values.slice() };
-  reduceToTriangle(copy);
+  reduceToTriangle(copy, copy.columns, poll);
   const height = Math.min(matrix.rows, matrix.columns);
   const factor = zeros(height, matrix.columns);
   for (let j = 0; j < matrix.columns; j++) {

@@ -1,4 +1,4 @@
-import type { RunControl } from "../run.ts";
+import type { Poll, RunControl } from "../run.ts";
 import { type Columns, columnOf, zeros } from "./columns.ts";
 import type { Estimation } from "./estimation.ts";
 import { refuseNotConverged } from "./failures.ts";
@@ -20,7 +20,7 @@ export interface Instrumented {
 }
 
 /** Equations beside their instruments, columns of the factor that their terms are columns of; the first the constant. */
-export function instrument(estimation: Estimation, instruments: readonly Float64Array[]): Instrumented {
+export function instrument(estimation: Estimation, instruments: readonly Float64Array[], poll?: Poll): Instrumented {
   const { terms, responses } = estimation.moments;
   const count = instruments.length;
   const height = terms.rows;
@@ -29,7 +29,7 @@ export function instrument(estimation: Estimation, instruments: readonly Float64
   columns.forEach((column, place) => {
     stacked.values.set(column, place * stacked.rows);
   });
-  reduceToTriangle(stacked, count);
+  reduceToTriangle(stacked, count, poll);
   const top = (from: number, width: number): Columns => {
     const part = zeros(count, width);
     for (let j = 0; j < width; j++) part.values.set(columnOf(stacked, from + j).subarray(0, count), j * count);
@@ -94,8 +94,8 @@ export function weightOf({ moments, equations }: Estimation, { residuals }: Pick
 
 const TOLERANCE = 1e-10;
 const MOST_ROUNDS = 500;
-/** A step this small that no longer shrinks is rounding. */
-const ROUNDING_STEP = 1e-8;
+/** A step of what rounds solve for this small that no longer shrinks is rounding. */
+const ROUNDING_STEP = 1e-12;
 
 /** What the next round estimates, at the solution of the last: equations that move with θ, a Σ̂ that follows residuals. */
 export interface Round {
@@ -104,7 +104,8 @@ export interface Round {
 }
 
 /**
- * Repeats rounds until |Δθ| ≤ 1e-10 (1 + |θ|), or until rounding allows no smaller step.
+ * Repeats rounds until |Δθ| ≤ 1e-10 (1 + |θ|), or until rounding allows no smaller step of what the rounds solve for.
+ * Where that is θ in other coordinates, `thetaOf` says what θ is.
  *
  * Errors: no convergence after 500 rounds; those of a round; `Cancelled`.
  */
@@ -112,16 +113,18 @@ export function untilSettled(
   first: Solution,
   next: (last: Solution) => Round,
   control: RunControl,
+  thetaOf: (solution: Solution) => readonly number[] = ({ theta }) => theta,
 ): { solution: Solution; last: Round } {
   let solution = first;
-  let largestStep = Number.POSITIVE_INFINITY;
+  let solved = Number.POSITIVE_INFINITY;
   for (let rounds = 1; ; rounds++) {
     const last = next(solution);
     const moved = atWeight(last.equations, last.weight, solution.free, control);
-    const previous = largestStep;
-    largestStep = largestChange(solution.theta, moved.theta);
+    const previous = solved;
+    solved = largestChange(solution.theta, moved.theta);
+    const largestStep = largestChange(thetaOf(solution), thetaOf(moved));
     solution = { ...moved, iterations: first.iterations + rounds, largestStep };
-    if (largestStep <= TOLERANCE || (largestStep < ROUNDING_STEP && largestStep >= previous)) return { solution, last };
+    if (largestStep <= TOLERANCE || (solved < ROUNDING_STEP && solved >= previous)) return { solution, last };
     if (rounds >= MOST_ROUNDS) refuseNotConverged(rounds, solution.gradient, largestStep, solution.condition);
     control.progress({ step: "iterating", iteration: solution.iterations, largestStep });
   }

@@ -1,7 +1,7 @@
 import { type Columns, columnOf, crossProduct, dot, multiply, pickColumns, transposed, zeros } from "../columns.ts";
 import { reduceToTriangle, triangularFactor } from "../householder.ts";
 import { asOneColumn, weightBlocks } from "../residuals.ts";
-import { semidefiniteCholesky, solveUpper } from "../triangle.ts";
+import { semidefiniteCholesky, solveUpper, solveUpperTransposed } from "../triangle.ts";
 import type { ExactEquations, ExactProblem, ExactSolution } from "./exact-iteration.ts";
 import { RowDerivatives } from "./row-derivatives.ts";
 import { entriesOf, loadEntries, termValue, timesSymmetric } from "./row-terms.ts";
@@ -14,16 +14,20 @@ import { entriesOf, loadEntries, termValue, timesSymmetric } from "./row-terms.t
  *
  * W the weight the estimator used and Ω the residual covariance, divided by T (conventional), or B = Σ_t Q_t e_t e_t'Q_t'
  * over rows or clusters times G/(G − 1). Leaving ∂y/∂φ out of A, as the last linear step does, would be wrong by
- * as much as the price effects move y. Hansen (1982, Econometrica 50), theorem 3.1.
+ * as much as the price effects move y. Hansen (1982, Econometrica 50), theorem 3.1. All of it is in the coordinates in
+ * which the equations are well conditioned: A is as it is squared.
  */
 export function exactCovariance(problem: ExactProblem, exact: ExactSolution, groups?: Groups): number[][] {
-  const { solution, equations } = exact;
-  const { bread, meat } = breadAndMeat(problem, exact, groups);
-  const root =
-    meat === undefined ? triangularFactor(conventionalSpread(exact)) : semidefiniteCholesky(meat, 1e-14).factor;
-  const { matrix } = equations.estimation.form.expand;
-  const half = solveSquare(bread, transposed(root));
-  const restriction = zeros(matrix.length, solution.free.length);
+  const { bread, spread } = breadAndSpread(problem, exact, groups);
+  const half = solveSquare(bread, transposed(spread));
+  for (let f = 0; f < half.columns; f++) solveUpper(exact.equations.turned.root, columnOf(half, f));
+  return covarianceOfAll(problem, half);
+}
+
+/** S H H'S' for H H' the covariance of the free coefficients. */
+export function covarianceOfAll({ estimation }: ExactProblem, half: Columns): number[][] {
+  const { matrix } = estimation.form.expand;
+  const restriction = zeros(matrix.length, half.rows);
   matrix.forEach((row, a) => {
     row.forEach((weight, f) => {
       restriction.values[f * matrix.length + a] = weight;
@@ -31,6 +35,24 @@ export function exactCovariance(problem: ExactProblem, exact: ExactSolution, gro
   });
   const rows = transposed(multiply(restriction, half));
   return matrix.map((_, a) => matrix.map((__, b) => dot(columnOf(rows, a), columnOf(rows, b))));
+}
+
+/**
+ * K, F × F upper triangular, with (K'K)⁻¹ the conventional covariance of the free coefficients.
+ */
+export function rootOfInformation(problem: ExactProblem, exact: ExactSolution): Columns {
+  const { bread, spread } = breadAndSpread(problem, exact);
+  // R'⁻¹ A by columns, in the coordinates of the equations; then in those of φ.
+  for (let f = 0; f < bread.columns; f++) solveUpperTransposed(spread, columnOf(bread, f));
+  return triangularFactor(multiply(bread, exact.equations.turned.root));
+}
+
+/** A, and the triangular root of B. */
+function breadAndSpread(problem: ExactProblem, exact: ExactSolution, groups?: Groups) {
+  const { bread, meat } = breadAndMeat(problem, exact, groups);
+  const spread =
+    meat === undefined ? triangularFactor(conventionalSpread(exact)) : semidefiniteCholesky(meat, 1e-14).factor;
+  return { bread, spread };
 }
 
 /** Rows or clusters whose scores are independent: the group of each row. */
@@ -58,19 +80,21 @@ function conventionalSpread({ equations, solution }: ExactSolution): Columns {
 
 function breadAndMeat(problem: ExactProblem, { equations, solution }: ExactSolution, groups: Groups | undefined) {
   const { rows, size, control } = problem;
+  const { turned } = equations;
   const { form, equations: kept } = equations.estimation;
   const free = solution.free.length;
   const bread = crossProduct(solution.jacobian, solution.jacobian);
   const meat = groups && zeros(free, free);
   const scores = groups && Array.from({ length: groups.count }, () => new Float64Array(free));
-  const derivatives = new RowDerivatives(solution.theta, size, form.expand, rows, equations.real);
+  const derivatives = new RowDerivatives(solution.theta, size, problem.estimation.form.expand, rows, equations.real);
   const projections = projectedTerms(equations);
   const weight = multiply(solution.weight, transposed(solution.weight)).values;
-  const entries = entriesOf(form.derivatives(solution.free), kept);
-  const coefficients = form.coefficients(solution.free);
+  const entries = entriesOf(turned.form.derivatives(turned.form.expand.offset), kept);
+  const coefficients = form.coefficients(turned.turn(solution.free));
   const picked = new Float64Array(kept.length);
   const scaled = new Float64Array(kept.length);
   const loaded = new Float64Array(free);
+  const byTurned = new Float64Array(free);
   for (let t = 0; t < rows.count; t++) {
     if (t % 4096 === 0) control.progress({ step: "forming scores", fraction: t / rows.count });
     rows.read(t);
@@ -80,8 +104,10 @@ function breadAndMeat(problem: ExactProblem, { equations, solution }: ExactSolut
     pick(derivatives.tilts, kept, picked);
     timesSymmetric(weight, picked, scaled);
     loadEntries(entries, projections.projected, scaled, loaded);
+    byTurned.set(derivatives.byFree);
+    solveUpperTransposed(turned.root, byTurned);
     for (let g = 0; g < free; g++) {
-      const by = h * derivatives.byFree[g];
+      const by = h * byTurned[g];
       if (by === 0) continue;
       const column = columnOf(bread, g);
       for (let f = 0; f < free; f++) column[f] += loaded[f] * by;

@@ -1,21 +1,30 @@
 import { Cancelled } from "../../run.ts";
 import { expand } from "../coefficient-form.ts";
-import { type Columns, multiply, transposed, zeros } from "../columns.ts";
-import { conditionOf } from "../condition.ts";
+import { type Columns, columnOf, identity, multiply, zeros } from "../columns.ts";
+import { scaledCondition } from "../condition.ts";
 import { refuseNotConverged } from "../failures.ts";
 import { residualFactor } from "../residuals.ts";
 import { weightOf } from "../three-stage.ts";
 import { invertUpper, semidefiniteCholesky, solveUpper, solveUpperTransposed } from "../triangle.ts";
-import { exactCovariance } from "./exact-covariance.ts";
+import { rootOfInformation } from "./exact-covariance.ts";
 import { type ExactProblem, type ExactSolution, equationsAt } from "./exact-iteration.ts";
 import { ExactLikelihood } from "./exact-likelihood.ts";
 
-/** A maximum with the curvature there: the observed information −∂²/∂φ∂φ' of the concentrated likelihood, F × F. */
+/** A maximum with the curvature there. */
 export interface ExactMaximum extends ExactSolution {
-  readonly information: Columns;
+  readonly information: Information;
+}
+
+/** −∂²/∂φ∂φ' of the concentrated likelihood as K'H K. */
+export interface Information {
+  /** K, F × F upper triangular: that of three stages is K'K. */
+  readonly root: Columns;
+  /** H, F × F: no more than the difference between the two estimators away from the identity. */
+  readonly inRoot: Columns;
 }
 
 const TOLERANCE = 1e-10;
+/** Of a standard error: a step this small that no longer shrinks is rounding of the gradient, a sum over rows. */
 const ROUNDING_STEP = 1e-8;
 const MOST_ITERATIONS = 200;
 const MOST_HALVINGS = 30;
@@ -26,108 +35,100 @@ const DIFFERENCE = 1e-3;
 
 /**
  * Full information maximum likelihood from a three-stage estimate: Newton's method on the concentrated likelihood with
- * exact gradients and their central differences for the second derivatives, taken anew where steps shrink slowly.
+ * exact gradients and their central differences for the second derivatives, taken anew where steps shrink slowly. Steps
+ * and curvature are in the metric K of three stages, so that nearly collinear prices cost neither of them digits.
  *
  * Errors: no convergence; a likelihood that is not concave at the start; `Cancelled`.
  */
 export function maximiseExact(problem: ExactProblem, from: ExactSolution): ExactMaximum {
   const { estimation, control } = problem;
   const likelihood = new ExactLikelihood(problem);
-  const metric = byStages(problem, from);
-  const { scale } = metric;
+  const root = rootOfInformation(problem, from);
   let free = [...from.solution.free];
   let value = likelihood.value(free);
   // Of three stages first: nearly that of the likelihood, and no pass over the rows for every coefficient.
-  let curvature = multiply(metric.inverse, transposed(metric.inverse));
+  let inRoot = identity(free.length);
   let settledAt: number[] | undefined;
-  let largestStep = Number.POSITIVE_INFINITY;
+  let errors = Number.POSITIVE_INFINITY;
   for (let iteration = 1; ; iteration++) {
     if (control.cancelled()) throw new Cancelled("cancelled while iterating");
     const gradient = likelihood.gradient(free);
-    const step = newtonStep(curvature, gradient, scale);
-    const previous = largestStep;
-    largestStep = changeOf(estimation.form.expand, free, step);
+    const step = newtonStep({ root, inRoot }, gradient);
+    const previous = errors;
+    errors = errorsOf(root, step);
+    const largestStep = changeOf(estimation.form.expand, free, step);
     const largestGradient = gradient.reduce((most, each) => Math.max(most, Math.abs(each)), 0) / problem.rows.count;
-    const condition = conditionOf(semidefiniteCholesky(curvature, 0).factor);
-    if (largestStep <= TOLERANCE || (largestStep < ROUNDING_STEP && largestStep >= previous)) {
+    if (largestStep <= TOLERANCE || (errors < ROUNDING_STEP && errors >= previous)) {
       free = moved(free, step, 1);
-      if (settledAt === undefined || distance(free, settledAt, scale) > DIFFERENCE)
-        curvature = informationAt(likelihood, free, metric, problem);
-      return finished(problem, from, free, curvature, scale, {
-        iterations: from.solution.iterations + iteration,
-        gradient: largestGradient,
-        largestStep,
-        condition,
-      });
+      if (settledAt === undefined || distance(root, free, settledAt) > DIFFERENCE) {
+        inRoot = informationAt(likelihood, free, root, problem);
+      }
+      return finished(
+        problem,
+        from,
+        free,
+        { root, inRoot },
+        {
+          iterations: from.solution.iterations + iteration,
+          gradient: largestGradient,
+          largestStep,
+          condition: conditionAt({ root, inRoot }),
+        },
+      );
     }
     const next = uphill(likelihood, free, step, value);
     if (next === undefined || iteration >= MOST_ITERATIONS) {
-      refuseNotConverged(iteration, largestGradient, largestStep, condition);
+      refuseNotConverged(iteration, largestGradient, largestStep, conditionAt({ root, inRoot }));
     }
     free = next.free;
     value = next.value;
     control.progress({ step: "iterating", iteration, gradient: largestGradient, largestStep, logLikelihood: value });
-    if (largestStep > SLOWLY * previous) {
-      curvature = informationAt(likelihood, free, metric, problem);
+    if (errors > SLOWLY * previous) {
+      inRoot = informationAt(likelihood, free, root, problem);
       settledAt = free;
     }
   }
 }
 
-/** What three stages say of φ: standard errors, the units of steps; R with R'R the correlations, and R⁻¹. */
-interface Metric {
-  readonly scale: readonly number[];
-  readonly root: Columns;
-  readonly inverse: Columns;
-}
-
-function byStages(problem: ExactProblem, from: ExactSolution): Metric {
-  const covariance = exactCovariance(problem, from);
-  const { places } = problem.estimation.form.expand;
-  const scale = places.map((place) => Math.sqrt(covariance[place][place]));
-  const correlations = zeros(places.length, places.length);
-  places.forEach((a, f) => {
-    places.forEach((b, g) => {
-      correlations.values[f * places.length + g] = covariance[a][b] / (scale[f] * scale[g]);
-    });
-  });
-  const root = semidefiniteCholesky(correlations, 0).factor;
-  return { scale, root, inverse: invertUpper(root) };
+/** Of the root of −∂²/∂φ∂φ', columns scaled to unit length. */
+function conditionAt({ root, inRoot }: Information): number {
+  return scaledCondition(multiply(semidefiniteCholesky(inRoot, 0).factor, root));
 }
 
 /**
- * −∂²/∂φ∂φ' in units of `scale`. Differences go along uncorrelated directions of one standard error each, the rows of
- * R: along single coefficients that are nearly collinear the likelihood falls too steeply for them to be accurate.
+ * H of −∂²/∂φ∂φ' = K'H K. Differences go along uncorrelated directions of one standard error each, the columns of
+ * K⁻¹: along single coefficients that are nearly collinear the likelihood falls too steeply for them to be accurate.
  */
 function informationAt(
   likelihood: ExactLikelihood,
   free: readonly number[],
-  { scale, root, inverse }: Metric,
+  root: Columns,
   { control }: ExactProblem,
 ): Columns {
   const size = free.length;
-  const along = (f: number, g: number) => root.values[g * size + f];
-  const information = zeros(size, size);
+  const directions = invertUpper(root);
+  const inRoot = zeros(size, size);
   for (let f = 0; f < size; f++) {
     if (control.cancelled()) throw new Cancelled("cancelled while forming second derivatives");
     control.progress({ step: "forming second derivatives", fraction: f / size });
-    const at = (by: number) => likelihood.gradient(free.map((each, g) => each + by * along(f, g) * scale[g]));
+    const direction = columnOf(directions, f);
+    const at = (by: number) => likelihood.gradient(free.map((each, g) => each + by * direction[g]));
     const [up, down] = [at(DIFFERENCE), at(-DIFFERENCE)];
-    const change = down.map((each, g) => ((each - up[g]) * scale[g]) / (2 * DIFFERENCE));
+    const change = down.map((each, g) => (each - up[g]) / (2 * DIFFERENCE));
+    solveUpperTransposed(root, change);
     for (let g = 0; g < size; g++) {
-      let entry = 0;
-      for (let h = g; h < size; h++) entry += along(g, h) * change[h];
-      information.values[f * size + g] += entry / 2;
-      information.values[g * size + f] += entry / 2;
+      inRoot.values[f * size + g] += change[g] / 2;
+      inRoot.values[g * size + f] += change[g] / 2;
     }
   }
-  return multiply(inverse, multiply(information, transposed(inverse)));
+  return inRoot;
 }
 
-/** H⁻¹ g; where the likelihood is not concave, along the gradient in units of standard errors. */
-function newtonStep(information: Columns, gradient: Float64Array, scale: readonly number[]): number[] {
-  const step = gradient.map((each, f) => each * scale[f]);
-  const { factor, dependent } = semidefiniteCholesky(information, 1e-12);
+/** (K'H K)⁻¹ g; where the likelihood is not concave, along the gradient in units of standard errors. */
+function newtonStep({ root, inRoot }: Information, gradient: Float64Array): number[] {
+  const step = gradient.slice();
+  solveUpperTransposed(root, step);
+  const { factor, dependent } = semidefiniteCholesky(inRoot, 1e-12);
   if (dependent.length === 0) {
     solveUpperTransposed(factor, step);
     solveUpper(factor, step);
@@ -135,7 +136,8 @@ function newtonStep(information: Columns, gradient: Float64Array, scale: readonl
     const length = Math.hypot(...step) || 1;
     for (let f = 0; f < step.length; f++) step[f] /= Math.max(1, length);
   }
-  return Array.from(step, (each, f) => each * scale[f]);
+  solveUpper(root, step);
+  return [...step];
 }
 
 function uphill(likelihood: ExactLikelihood, free: readonly number[], step: readonly number[], value: number) {
@@ -151,8 +153,17 @@ function uphill(likelihood: ExactLikelihood, free: readonly number[], step: read
 const moved = (free: readonly number[], step: readonly number[], by: number) =>
   free.map((each, f) => each + by * step[f]);
 
-const distance = (one: readonly number[], other: readonly number[], scale: readonly number[]) =>
-  one.reduce((most, each, f) => Math.max(most, Math.abs(each - other[f]) / scale[f]), 0);
+/** Largest part of a step in uncorrelated directions of one standard error each. */
+function errorsOf(root: Columns, step: readonly number[]): number {
+  const along = multiply(root, { rows: step.length, columns: 1, values: Float64Array.from(step) }).values;
+  return along.reduce((most, each) => Math.max(most, Math.abs(each)), 0);
+}
+
+const distance = (root: Columns, one: readonly number[], other: readonly number[]) =>
+  errorsOf(
+    root,
+    one.map((each, f) => each - other[f]),
+  );
 
 function changeOf(form: Parameters<typeof expand>[0], free: readonly number[], step: readonly number[]): number {
   const from = expand(form, free);
@@ -164,22 +175,15 @@ function finished(
   problem: ExactProblem,
   from: ExactSolution,
   free: number[],
-  curvature: Columns,
-  scale: readonly number[],
+  information: Information,
   convergence: { iterations: number; gradient: number; largestStep: number; condition: number },
 ): ExactMaximum {
-  const { form } = problem.estimation;
-  const theta = expand(form.expand, free);
-  const equations = equationsAt(problem, form, theta);
-  const residuals = residualFactor(equations.estimation.moments, form, free);
-  const weight = weightOf(equations.estimation, { residuals });
-  const information = zeros(free.length, free.length);
-  for (let f = 0; f < free.length; f++) {
-    for (let g = 0; g < free.length; g++) {
-      information.values[f * free.length + g] = curvature.values[f * free.length + g] / (scale[f] * scale[g]);
-    }
-  }
+  const theta = expand(problem.estimation.form.expand, free);
+  const { turned } = from.equations;
+  const equations = equationsAt(problem, turned, theta);
   const { moments } = equations.estimation;
+  const residuals = residualFactor(moments, turned.form, turned.turn(free));
+  const weight = weightOf(equations.estimation, { residuals });
   return {
     solution: { ...from.solution, ...convergence, moments, free, theta, residuals, weight },
     equations,

@@ -18,12 +18,14 @@ export interface ExactSource extends MomentSource {
 /**
  * The rows with y at some θ: terms of the share equations first, then those of the instruments that are not among
  * them. Instruments are the same terms with the mean shares in y for the current ones (Lewbel & Pendakur 2009).
+ * `prices` stand for the log prices where they are whitened.
  */
 export function exactSource(
   data: PreparedData,
   demographics: readonly string[],
   size: SystemSize,
   { implicit, instrument }: Pick<RealExpenditure, "implicit" | "instrument">,
+  prices: readonly Float64Array[] = data.logPrices,
 ): ExactSource {
   const n = size.goods;
   const s = demographics.length;
@@ -53,7 +55,7 @@ export function exactSource(
   return {
     rows: data.rows,
     columns: [
-      ...data.logPrices,
+      ...prices,
       ...demographics.map((name) => demographicColumn(data, name)!),
       ...powers(implicit),
       ...powers(instrument),

@@ -61,14 +61,11 @@ export function estimateExactEasi(
   const logLikelihood = new ExactLikelihood(problem).value(solution.free);
   const free = estimation.form.free;
   const { iterations, gradient, largestStep, condition } = solution;
-  const coefficients = estimation.form.coefficients(solution.free);
+  const { source, turned } = equations;
+  const coefficients = turned.form.coefficients(turned.turn(solution.free));
   const durbin =
     data.time &&
-    durbinWatson(
-      { ...equations.source, terms: equations.source.terms.slice(0, equations.source.equationTerms) },
-      data.time,
-      coefficients,
-    );
+    durbinWatson({ ...source, terms: source.terms.slice(0, source.equationTerms) }, data.time, coefficients);
   return {
     theta: solution.theta,
     ...exactInference(problem, exact),

@@ -1,7 +1,7 @@
 import { Refusal } from "../../refusal.ts";
-import { type Columns, columnOf, dot, multiply, transposed, zeros } from "../columns.ts";
-import { invertUpper, semidefiniteCholesky } from "../triangle.ts";
-import type { Groups } from "./exact-covariance.ts";
+import { type Columns, columnOf, multiply, transposed, zeros } from "../columns.ts";
+import { invertUpper, semidefiniteCholesky, solveUpper } from "../triangle.ts";
+import { covarianceOfAll, type Groups } from "./exact-covariance.ts";
 import type { ExactProblem } from "./exact-iteration.ts";
 import { ExactLikelihood } from "./exact-likelihood.ts";
 import type { ExactMaximum } from "./exact-maximum.ts";
@@ -13,46 +13,21 @@ import type { ExactMaximum } from "./exact-maximum.ts";
  * Errors: a likelihood with no maximum there.
  */
 export function maximumCovariance(problem: ExactProblem, maximum: ExactMaximum, groups?: Groups): number[][] {
-  const lengths = Array.from(
-    { length: maximum.information.columns },
-    (_, f) => Math.sqrt(Math.max(0, columnOf(maximum.information, f)[f])) || 1,
-  );
-  const scaled: Columns = {
-    ...maximum.information,
-    values: maximum.information.values.map(
-      (value, at) => value / (lengths[at % lengths.length] * lengths[Math.floor(at / lengths.length)]),
-    ),
-  };
-  const { factor, dependent } = semidefiniteCholesky(scaled, 1e-12);
+  const { root, inRoot } = maximum.information;
+  const { factor, dependent } = semidefiniteCholesky(inRoot, 1e-12);
   if (dependent.length > 0) {
     const names = dependent.map((f) => problem.estimation.coefficientLabels[problem.estimation.form.expand.places[f]]);
     throw new Refusal(
       `The likelihood has no maximum where the iteration ended: it does not bend down in ${names.join(", ")}.`,
     );
   }
-  const inverse = invertUpper(factor);
-  for (let f = 0; f < inverse.columns; f++) {
-    const column = columnOf(inverse, f);
-    for (let g = 0; g < column.length; g++) column[g] /= lengths[g];
-  }
-  if (groups === undefined) return expanded(problem, inverse);
+  const half = invertUpper(factor);
+  for (let f = 0; f < half.columns; f++) solveUpper(root, columnOf(half, f));
+  if (groups === undefined) return covarianceOfAll(problem, half);
   const meat = meatOf(problem, maximum, groups);
-  const inner = multiply(transposed(inverse), multiply(meat, inverse));
-  const root = semidefiniteCholesky(inner, 1e-14).factor;
-  return expanded(problem, multiply(inverse, transposed(root)));
-}
-
-/** S H H'S'. */
-function expanded({ estimation }: ExactProblem, half: Columns): number[][] {
-  const { matrix } = estimation.form.expand;
-  const restriction = zeros(matrix.length, half.rows);
-  matrix.forEach((row, a) => {
-    row.forEach((weight, f) => {
-      restriction.values[f * matrix.length + a] = weight;
-    });
-  });
-  const rows = transposed(multiply(restriction, half));
-  return matrix.map((_, a) => matrix.map((__, b) => dot(columnOf(rows, a), columnOf(rows, b))));
+  const inner = multiply(transposed(half), multiply(meat, half));
+  const spread = semidefiniteCholesky(inner, 1e-14).factor;
+  return covarianceOfAll(problem, multiply(half, transposed(spread)));
 }
 
 /**
