@@ -1,6 +1,7 @@
 import { useQueryClient } from "@tanstack/react-query";
 import { useNavigate } from "react-router-dom";
 import { useSignOut } from "../features/accounts/api/sign-out.ts";
+import { forgetDrafts } from "../features/remarks/drafts.ts";
 import { pages } from "../lib/paths.ts";
 
 /** Signs out: the session ends, and this browser forgets what it knew and the account's documents. */
@@ -16,6 +17,7 @@ export function useLeave(accountId: string | undefined) {
         client.clear();
         // Loaded when it is needed: the list of studies has no other use for it.
         const { forgetAccount } = await import("../sync/index.ts");
+        if (accountId !== undefined) forgetDrafts(accountId);
         if (accountId !== undefined) await forgetAccount(accountId).catch(() => []);
       },
     });

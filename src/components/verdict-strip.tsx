@@ -1,4 +1,4 @@
-import type { ReactNode } from "react";
+import { AnchorMark } from "./anchor-mark.tsx";
 import { Printed } from "./number.tsx";
 import { VerdictFigure, type VerdictShape } from "./verdict-figure.tsx";
 
@@ -10,8 +10,6 @@ export interface StripVerdict {
   readonly word: string;
   /** The number, or the reason, below the word. */
   readonly below: string;
-  /** A letter that leads to a remark. */
-  readonly mark?: ReactNode;
 }
 
 /** Five columns on a wide page, three and two on a narrower one, rows on a phone. */
@@ -33,7 +31,7 @@ function Item({ verdict }: { verdict: StripVerdict }) {
       </div>
       <div className="type-smallest pr-1 text-ink2">
         <Printed text={verdict.below} />
-        {verdict.mark}
+        <AnchorMark of={`verdict ${verdict.law}`} />
       </div>
     </li>
   );

@@ -28,6 +28,12 @@ export const api = {
   estimation: (studyId: string, cellId: string) => `${study(studyId)}/cells/${part(cellId)}/estimation`,
   estimations: (studyId: string) => `${study(studyId)}/estimations`,
   finding: (studyId: string, fingerprint: string) => `${study(studyId)}/findings/${part(fingerprint)}`,
+  remarks: (studyId: string) => `${study(studyId)}/remarks`,
+  remark: (studyId: string, remarkId: string) => `${study(studyId)}/remarks/${part(remarkId)}`,
+  remarkSettled: (studyId: string, remarkId: string) => `${study(studyId)}/remarks/${part(remarkId)}/settled`,
+  replies: (studyId: string, remarkId: string) => `${study(studyId)}/remarks/${part(remarkId)}/replies`,
+  reply: (studyId: string, remarkId: string, replyId: string) =>
+    `${study(studyId)}/remarks/${part(remarkId)}/replies/${part(replyId)}`,
   refereeCopies: (studyId: string) => `${study(studyId)}/referee-copies`,
   refereeCopy: (studyId: string, copyId: string) => `${study(studyId)}/referee-copies/${part(copyId)}`,
 } as const;

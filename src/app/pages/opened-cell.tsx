@@ -2,6 +2,10 @@ import { lazy, Suspense, useEffect, useId, useState } from "react";
 import { useNavigate, useParams } from "react-router-dom";
 import { LinkButton, LinkWord } from "../../components/button.tsx";
 import { presentPeople, typists } from "../../features/presence/present.ts";
+import { KeyMarks } from "../../features/remarks/key-marks.tsx";
+import { RemarkNews } from "../../features/remarks/remark-news.tsx";
+import { useRemarkSetting } from "../../features/remarks/remark-setting.ts";
+import { Remarked } from "../../features/remarks/remarked.tsx";
 import { usePageTitle } from "../../lib/page-title.ts";
 import { pages } from "../../lib/paths.ts";
 import { useStudyPart } from "../../sync/index.ts";
@@ -32,6 +36,7 @@ export default function OpenedCellPage() {
   const [page, setPage] = useState<SourcePage>(oneColumn ? "closed" : standing?.kind === "system" ? "text" : "form");
   const actions = useStudyActions(connection, uploads);
   const typing = useTypingIn(cellId, connection);
+  const remarking = useRemarkSetting(study.id, open.me, connection);
   const headingId = useId();
   const navigate = useNavigate();
   usePageTitle(standing?.cell.name, study.title);
@@ -49,45 +54,49 @@ export default function OpenedCellPage() {
       <main>
         {standing ? (
           <div className="desk">
+            <RemarkNews studyId={study.id} me={open.me} connection={connection} />
             <div className={`ledger opened opened-${standing.kind ?? "none"}`}>
               <div className="band opened-band">
                 <ReadByThread studyId={study.id} standing={standing} cells={cells} />
-                <div className="verso">
-                  <BandSource
-                    studyId={study.id}
-                    connection={connection}
-                    standing={standing}
-                    cells={cells}
-                    uploads={uploads}
-                    readOnly={readOnly}
-                    page={page}
-                    onPage={(next) => setPage(oneColumn && next === page ? "closed" : next)}
-                    headingId={headingId}
-                    renaming={renaming}
-                    onRename={(name) => void actions.rename(standing.cell, name)}
-                    onRenamed={() => setRenaming(false)}
-                    onLeave={() => document.getElementById(headingId)?.focus()}
-                    actions={{
-                      rename: () => setRenaming(true),
-                      ...(standing.kind === "data" && { uploads: () => setDialog("uploads") }),
-                      remove: () => {
-                        actions.remove(cellId);
-                        void navigate(pages.study(study.id));
-                      },
-                    }}
-                    typing={typing.length > 0 && <TypingHere people={typing} className="mt-4 block" />}
-                    title
-                  />
-                  {standing.kind === "data" && (
-                    <Suspense>
-                      <UploadColumns cell={standing.cell} cells={cells} uploads={uploads} />
-                    </Suspense>
-                  )}
-                  <FindingAside studyId={study.id} fingerprint={standing.fingerprint} />
-                </div>
-                <div className="recto">
-                  <OpenedFinding {...open} standing={standing} cells={cells} uploads={uploads} />
-                </div>
+                <Remarked setting={remarking} cell={standing.cell} opened>
+                  <div className="verso">
+                    <BandSource
+                      studyId={study.id}
+                      connection={connection}
+                      standing={standing}
+                      cells={cells}
+                      uploads={uploads}
+                      readOnly={readOnly}
+                      page={page}
+                      onPage={(next) => setPage(oneColumn && next === page ? "closed" : next)}
+                      headingId={headingId}
+                      renaming={renaming}
+                      onRename={(name) => void actions.rename(standing.cell, name)}
+                      onRenamed={() => setRenaming(false)}
+                      onLeave={() => document.getElementById(headingId)?.focus()}
+                      actions={{
+                        rename: () => setRenaming(true),
+                        ...(standing.kind === "data" && { uploads: () => setDialog("uploads") }),
+                        remove: () => {
+                          actions.remove(cellId);
+                          void navigate(pages.study(study.id));
+                        },
+                      }}
+                      typing={typing.length > 0 && <TypingHere people={typing} className="mt-4 block" />}
+                      title
+                    />
+                    <KeyMarks />
+                    {standing.kind === "data" && (
+                      <Suspense>
+                        <UploadColumns cell={standing.cell} cells={cells} uploads={uploads} />
+                      </Suspense>
+                    )}
+                    <FindingAside studyId={study.id} fingerprint={standing.fingerprint} />
+                  </div>
+                  <div className="recto">
+                    <OpenedFinding {...open} standing={standing} cells={cells} uploads={uploads} />
+                  </div>
+                </Remarked>
               </div>
             </div>
           </div>

@@ -45,6 +45,7 @@ export default function WorkspacePage() {
           uploads={uploads}
           headAction={oneColumn && bring}
           onUploads={() => setDialog("uploads")}
+          onRemarks={() => setDialog("remarks")}
         />
       </main>
       <StudyDialogs {...open} standings={standings} open={dialog} onClose={() => setDialog(undefined)} />

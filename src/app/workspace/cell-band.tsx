@@ -1,5 +1,8 @@
 import { memo, useId } from "react";
 import type { Present } from "../../features/presence/present.ts";
+import { KeyMarks } from "../../features/remarks/key-marks.tsx";
+import type { RemarkSetting } from "../../features/remarks/remark-setting.ts";
+import { Remarked } from "../../features/remarks/remarked.tsx";
 import { bandId, focusBand } from "./addresses.ts";
 import { BandFinding } from "./band-finding.tsx";
 import { BandSource, type BandSourceProps } from "./band-source.tsx";
@@ -8,11 +11,12 @@ import { useHeldHeight } from "./use-held-height.ts";
 
 export interface CellBandProps extends Omit<BandSourceProps, "headingId" | "onLeave" | "typing" | "title"> {
   readonly typing: readonly Present[];
+  readonly remarking: RemarkSetting;
   readonly onFocus: (cellId: string) => void;
 }
 
 /** A cell of the study: what is asked on the left page, what was found on the right. */
-export const CellBand = memo(function CellBand({ typing, onFocus, ...source }: CellBandProps) {
+export const CellBand = memo(function CellBand({ typing, remarking, onFocus, ...source }: CellBandProps) {
   const headingId = useId();
   const { standing, studyId, connection, readOnly } = source;
   const { cell } = standing;
@@ -26,22 +30,25 @@ export const CellBand = memo(function CellBand({ typing, onFocus, ...source }: C
       className="band"
       onFocus={() => onFocus(cell.id)}
     >
-      <div className="verso">
-        <BandSource
-          {...source}
-          headingId={headingId}
-          onLeave={() => focusBand(cell.id)}
-          typing={typing.length > 0 && <TypingHere people={typing} className="wide-only mt-4 block" />}
-        />
-      </div>
-      <div className="recto" ref={held}>
-        <BandFinding
-          studyId={studyId}
-          standing={standing}
-          onChange={onChange}
-          beside={<TypingHere people={typing} className="narrow-only" />}
-        />
-      </div>
+      <Remarked setting={remarking} cell={cell}>
+        <div className="verso">
+          <BandSource
+            {...source}
+            headingId={headingId}
+            onLeave={() => focusBand(cell.id)}
+            typing={typing.length > 0 && <TypingHere people={typing} className="wide-only mt-4 block" />}
+          />
+          <KeyMarks />
+        </div>
+        <div className="recto" ref={held}>
+          <BandFinding
+            studyId={studyId}
+            standing={standing}
+            onChange={onChange}
+            beside={<TypingHere people={typing} className="narrow-only" />}
+          />
+        </div>
+      </Remarked>
       {typing.length > 0 && (
         <div aria-hidden="true" className="band-edge" style={{ background: `var(--who-${typing[0].colour.letter})` }} />
       )}

@@ -16,10 +16,12 @@ interface HeadBandProps {
   readonly readOnly: boolean;
   /** On one column, what the top bar has no room for. */
   readonly action?: ReactNode;
+  /** More of how the study stands. */
+  readonly children?: ReactNode;
 }
 
 /** The study's own band: title and people on the left, what it asks and how it stands on the right. */
-export function HeadBand({ study, standings, readOnly, action }: HeadBandProps) {
+export function HeadBand({ study, standings, readOnly, action, children }: HeadBandProps) {
   const change = useChangeStudy(study.id);
   return (
     <div className="band head-band">
@@ -59,6 +61,7 @@ export function HeadBand({ study, standings, readOnly, action }: HeadBandProps) 
                 <StateWords key={state} state={state} words={words} />
               ),
             )}
+            {children}
             {study.sealedAt && <span>Last sealed {whenInWords(study.sealedAt)}</span>}
           </p>
           {action}

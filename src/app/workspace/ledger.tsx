@@ -4,10 +4,13 @@ import type { Upload } from "../../../shared/schemas/resources.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { Thread } from "../../components/thread.tsx";
 import { type Present, presentPeople, typists } from "../../features/presence/present.ts";
+import { OpenRemarks } from "../../features/remarks/open-remarks.tsx";
+import { RemarkNews } from "../../features/remarks/remark-news.tsx";
+import { useRemarkSetting } from "../../features/remarks/remark-setting.ts";
 import { pages } from "../../lib/paths.ts";
 import { useStudyPart } from "../../sync/index.ts";
 import { AddCellBand } from "./add-cell-band.tsx";
-import { addressOf, focusBand } from "./addresses.ts";
+import { addressOf, beginRemark, focusBand } from "./addresses.ts";
 import { CellBand } from "./cell-band.tsx";
 import { HeadBand } from "./head-band.tsx";
 import type { OpenStudy } from "./open-study.ts";
@@ -26,19 +29,21 @@ interface LedgerProps extends OpenStudy {
   readonly uploads: readonly Upload[];
   readonly headAction?: React.ReactNode;
   readonly onUploads: () => void;
+  readonly onRemarks: () => void;
 }
 
 const NOBODY: readonly Present[] = [];
 
 /** The study as an open ledger: its own band, a band for each cell, the thread beside them, a last band to add. */
 export function Ledger(props: LedgerProps) {
-  const { study, connection, readOnly, standings, cells, uploads, headAction, onUploads } = props;
+  const { study, connection, readOnly, standings, cells, uploads, headAction, onUploads, onRemarks } = props;
   const ledger = useRef<HTMLDivElement>(null);
   const [focused, setFocused] = useState<string>();
   const [renaming, setRenaming] = useState<string>();
   const source = useSourcePages();
   const actions = useStudyActions(connection, uploads);
   const { removal, ...removing } = useRemoval(connection);
+  const remarking = useRemarkSetting(study.id, props.me, connection);
   const typing = useTypists(connection);
   const ids = cells.map(({ id }) => id);
   const places = usePlaces(ledger, ids);
@@ -57,6 +62,7 @@ export function Ledger(props: LedgerProps) {
     move,
     open: () => focused !== undefined && navigate(pages.cell(study.id, focused)),
     swap: () => focusedCell && source.swap(focusedCell),
+    remark: () => focused !== undefined && beginRemark(focused),
     leave: () => focused !== undefined && focusBand(focused),
     undo: () => connection.undo.undo(),
   });
@@ -68,12 +74,15 @@ export function Ledger(props: LedgerProps) {
   const stops = stopsOf(standings, places.y);
   return (
     <div className="desk">
+      <RemarkNews studyId={study.id} me={props.me} connection={connection} />
       <div className="ledger" ref={ledger}>
         <div className="pages-end" aria-hidden="true">
           <div className="verso" />
           <div className="recto" />
         </div>
-        <HeadBand study={study} standings={standings} readOnly={readOnly} action={headAction} />
+        <HeadBand study={study} standings={standings} readOnly={readOnly} action={headAction}>
+          <OpenRemarks studyId={study.id} onRemarks={onRemarks} />
+        </HeadBand>
         {removal?.after === null && removed}
         {standings.map((standing, place) => (
           <Fragment key={standing.cell.id}>
@@ -96,6 +105,7 @@ export function Ledger(props: LedgerProps) {
                 ...(place < standings.length - 1 && { moveDown: () => actions.move(standing.cell.id, 1) }),
                 ...(standing.kind === "data" && { uploads: onUploads }),
               }}
+              remarking={remarking}
               typing={typing.get(standing.cell.id) ?? NOBODY}
               onFocus={focus}
             />

@@ -11,7 +11,7 @@ import { useStudyPart } from "../../sync/index.ts";
 import { useLeave } from "../use-leave.ts";
 import type { OpenStudy } from "./open-study.ts";
 
-export type StudyDialog = "people" | "uploads" | "referee copies" | "settings" | "delete";
+export type StudyDialog = "people" | "uploads" | "remarks" | "referee copies" | "settings" | "delete";
 
 interface StudyBarProps extends OpenStudy {
   readonly crumbs: readonly Crumb[];
@@ -46,6 +46,7 @@ export function StudyBar({ study, me, connection, readOnly, crumbs, onDialog, ch
             { key: "studies", words: "Studies", onSelect: () => void navigate(pages.studies) },
             entry("people", "People"),
             entry("uploads", "Uploads"),
+            entry("remarks", "Remarks"),
             ...(isOwner ? [entry("referee copies", "Referee copies")] : []),
           ],
           [entry("settings", "Settings"), { key: "leave", words: "Sign out", onSelect: leave }],

@@ -7,6 +7,7 @@ import type { StudyDialog } from "./study-bar.tsx";
 
 const PeopleDialog = lazy(() => import("../../features/people/people-dialog.tsx"));
 const UploadsDialog = lazy(() => import("../../features/uploads/uploads-dialog.tsx"));
+const StudyRemarks = lazy(() => import("./study-remarks.tsx"));
 const RefereeCopiesDialog = lazy(() => import("../../features/referee-copies/referee-copies-dialog.tsx"));
 const DeleteStudyDialog = lazy(() => import("../../features/studies/delete-study-dialog.tsx"));
 const SettingsDialog = lazy(() => import("../settings-dialog.tsx"));
@@ -22,7 +23,15 @@ export function StudyDialogs(props: StudyDialogsProps) {
   return <Suspense>{props.open && <Opened {...props} open={props.open} />}</Suspense>;
 }
 
-function Opened({ study, me, readOnly, standings, open, onClose }: StudyDialogsProps & { open: StudyDialog }) {
+function Opened({
+  study,
+  me,
+  connection,
+  readOnly,
+  standings,
+  open,
+  onClose,
+}: StudyDialogsProps & { open: StudyDialog }) {
   const navigate = useNavigate();
   const toStudies = () => void navigate(pages.studies);
   switch (open) {
@@ -38,6 +47,8 @@ function Opened({ study, me, readOnly, standings, open, onClose }: StudyDialogsP
       );
     case "uploads":
       return <UploadsDialog studyId={study.id} onClose={onClose} readOnly={readOnly} />;
+    case "remarks":
+      return <StudyRemarks study={study} me={me} connection={connection} onClose={onClose} />;
     case "referee copies":
       return <RefereeCopiesDialog studyId={study.id} matrices={sealable(standings)} onClose={onClose} />;
     case "settings":

@@ -5,6 +5,8 @@ interface BandKeys {
   readonly move: (by: 1 | -1) => void;
   readonly open: () => void;
   readonly swap: () => void;
+  /** Begins a remark on the band in focus. */
+  readonly remark: () => void;
   /** From a field back to its band. */
   readonly leave: () => void;
   readonly undo: () => void;
@@ -33,7 +35,9 @@ export function useBandKeys(keys: BandKeys): void {
         return keys.open();
       }
       if (!letterKeysAct()) return;
-      const act = { j: () => keys.move(1), k: () => keys.move(-1), t: keys.swap }[event.key.toLowerCase()];
+      const act = { j: () => keys.move(1), k: () => keys.move(-1), t: keys.swap, r: keys.remark }[
+        event.key.toLowerCase()
+      ];
       if (!act) return;
       event.preventDefault();
       act();

@@ -1,3 +1,5 @@
+import { capital } from "../../../shared/study/words.ts";
+import { AnchorMark } from "../../components/anchor-mark.tsx";
 import { ErrorBelow } from "../../components/number.tsx";
 import type { Place } from "./moves.ts";
 import { isDeep, scaleToken } from "./scale.ts";
@@ -17,7 +19,7 @@ const CENTRED: Record<MatrixSetting, string> = {
 };
 
 /** The accent ring with a recto ring inside it; the mirror's the same, dashed. */
-const RING = "relative z-1 outline-[2.5px] outline-accent -outline-offset-1 shadow-[inset_0_0_0_3.5px_var(--recto)]";
+const RING = "z-1 outline-[2.5px] outline-accent -outline-offset-1 shadow-[inset_0_0_0_3.5px_var(--recto)]";
 
 function entryLabel(shown: ShownMatrix, i: number, j: number): string {
   const value = shown.full(shown.entries[i][j]);
@@ -56,7 +58,7 @@ export function MatrixEntry({ shown, setting, pointed, onPoint, place }: EntryPr
       data-mirror={isMirror || undefined}
       data-step={token}
       style={{ backgroundColor: `var(--${token})` }}
-      className={`${SIZES[setting]} ${CENTRED[setting]} tabular-nums print:border print:border-rule2 print:bg-transparent! ${ink} ${ring}`}
+      className={`relative ${SIZES[setting]} ${CENTRED[setting]} tabular-nums print:border print:border-rule2 print:bg-transparent! ${ink} ${ring}`}
     >
       {shown.short(shown.entries[i][j])}
       {setting === "errors" && (
@@ -64,6 +66,9 @@ export function MatrixEntry({ shown, setting, pointed, onPoint, place }: EntryPr
           <ErrorBelow error={shown.full(shown.errors[i][j])} />
         </span>
       )}
+      <span className="matrix-mark">
+        <AnchorMark of={`entry ${capital(shown.goods[i])}, ${capital(shown.goods[j])}`} />
+      </span>
     </td>
   );
 }

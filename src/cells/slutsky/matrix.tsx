@@ -1,5 +1,6 @@
 import { type KeyboardEvent, useEffect, useRef } from "react";
 import { capital } from "../../../shared/study/words.ts";
+import { AnchorMark } from "../../components/anchor-mark.tsx";
 import { MatrixEntry } from "./matrix-entry.tsx";
 import { moveBy, type Place } from "./moves.ts";
 import type { MatrixSetting, ShownMatrix } from "./shown-matrix.ts";
@@ -109,6 +110,7 @@ export function MatrixField({ shown, setting, label, pointed, onPoint, sums }: M
                 }`}
               >
                 {capital(good)}
+                <AnchorMark of={`row ${capital(good)}`} />
               </th>
               {shown.goods.map((column, j) => (
                 <MatrixEntry

@@ -8,6 +8,7 @@ import {
   priceMatrices,
 } from "../../../shared/tables/coefficients.ts";
 import { printFixed, THIN_SPACE } from "../../../shared/tables/numbers.ts";
+import { AnchorMark } from "../../components/anchor-mark.tsx";
 import { Estimate } from "../../components/number.tsx";
 import { SwitchWords } from "../../components/switch-words.tsx";
 import { TableScroller } from "../../components/table-scroller.tsx";
@@ -36,6 +37,9 @@ function RowLabel({ row }: { row: CoefficientRow }) {
   );
 }
 
+/** The row's name in letters only, as a remark on it has it. */
+const rowName = ({ label, symbol }: CoefficientRow) => [label, symbol].filter(Boolean).join(" ");
+
 interface RowProps {
   readonly row: CoefficientRow;
   readonly goods: readonly string[];
@@ -48,6 +52,7 @@ function Row({ row, goods, intervals }: RowProps) {
     <tr>
       <th scope="row" className="sticky left-0 min-w-22 bg-recto py-0.5 pr-3 text-left font-normal">
         <RowLabel row={row} />
+        <AnchorMark of={`row ${rowName(row)}`} />
       </th>
       {row.cells.map((cell, index) => (
         <td key={goods[index]} className="py-0.5 pr-[0.33em] pl-3 text-right align-top">
@@ -58,6 +63,7 @@ function Row({ row, goods, intervals }: RowProps) {
               interval={intervals ? cell.printedInterval : undefined}
             />
           )}
+          <AnchorMark of={`entry ${rowName(row)}, ${capital(goods[index])}`} />
         </td>
       ))}
     </tr>

@@ -85,6 +85,7 @@ async function open(
   const asked = answering({
     "GET /api/studies/s/status": statusWith(),
     "GET /api/studies/s/uploads": [upload],
+    "GET /api/studies/s/remarks": [],
     [`GET /api/studies/s/findings/${found.get("b")}`]: { finding: sampleSystem(), foundAt: at, tookMs: 1600 },
     [`GET /api/studies/s/findings/${found.get("m")}`]: { finding: sampleSlutsky(), foundAt: at, tookMs: 40 },
     ...answers,

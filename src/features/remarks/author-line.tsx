@@ -1,0 +1,43 @@
+import type { RemarkReply } from "../../../shared/schemas/remarks.ts";
+import { whenInWords } from "../../lib/dates.ts";
+import type { PersonColour } from "../../sync/index.ts";
+
+interface AuthorLineProps {
+  readonly author: RemarkReply["author"];
+  readonly colour: PersonColour | undefined;
+  readonly writtenAt: string;
+  readonly editedAt?: string;
+  readonly full?: boolean;
+  readonly children?: React.ReactNode;
+}
+
+/** Who, underlined in their colour while they are here, and when. */
+export function AuthorLine({ author, colour, writtenAt, editedAt, full = false, children }: AuthorLineProps) {
+  const first = author.name.trim().split(/\s+/)[0] ?? author.name;
+  return (
+    <p className="remark-author">
+      {children}
+      <b
+        className="remark-name"
+        title={author.name}
+        style={{
+          borderBottomColor: colour ? `var(--who-${colour.letter})` : "var(--rule2)",
+          borderBottomStyle: colour?.dashed ? "dashed" : "solid",
+        }}
+      >
+        {full || author.name.startsWith("someone") ? author.name : first}
+      </b>{" "}
+      <time dateTime={writtenAt} title={exactly(writtenAt)} className="text-ink2">
+        {whenInWords(writtenAt)}
+      </time>
+      {editedAt && (
+        <span className="text-ink3" title={exactly(editedAt)}>
+          , edited {whenInWords(editedAt)}
+        </span>
+      )}
+    </p>
+  );
+}
+
+const exactly = (instant: string) =>
+  new Date(instant).toLocaleString("en-GB", { dateStyle: "long", timeStyle: "short" });
