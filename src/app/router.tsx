@@ -1,8 +1,14 @@
 import type { QueryClient } from "@tanstack/react-query";
+import { lazy } from "react";
 import { createBrowserRouter, type RouteObject } from "react-router-dom";
 import { someoneSignedIn } from "./doorkeeper.ts";
 import { PageFault } from "./page-fault.tsx";
 import { Waiting } from "./waiting.tsx";
+import { afterFirstFinding } from "./workspace/first-finding.ts";
+
+/** What stands on the live document may come after what can be read without it. */
+const Workspace = lazy(() => afterFirstFinding(() => import("./pages/workspace.tsx")));
+const OpenedCell = lazy(() => afterFirstFinding(() => import("./pages/opened-cell.tsx")));
 
 /** A page loaded when it is first gone to. */
 const page = (load: () => Promise<{ default: React.ComponentType }>) => async () => ({
@@ -28,8 +34,8 @@ export function routes(client: QueryClient): RouteObject[] {
               path: "/studies/:studyId",
               lazy: page(() => import("./pages/study.tsx")),
               children: [
-                { index: true, lazy: page(() => import("./pages/workspace.tsx")) },
-                { path: "cells/:cellId", lazy: page(() => import("./pages/opened-cell.tsx")) },
+                { index: true, Component: Workspace },
+                { path: "cells/:cellId", Component: OpenedCell },
               ],
             },
           ],

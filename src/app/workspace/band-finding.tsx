@@ -1,4 +1,4 @@
-import { lazy, type ReactNode, Suspense, useEffect } from "react";
+import { lazy, type ReactNode, Suspense, useEffect, useState } from "react";
 import { LinkWord, Word } from "../../components/button.tsx";
 import { Fault } from "../../components/field.tsx";
 import { ProgressLine } from "../../features/estimation/progress-line.tsx";
@@ -7,7 +7,7 @@ import { sentenceOf } from "../../lib/api.ts";
 import { pages } from "../../lib/paths.ts";
 import { CopyWord } from "./copy-word.tsx";
 import { expectBand, FindingBand, OnItsWay, useTables } from "./finding-view.tsx";
-import { firstFindingShown } from "./first-finding.ts";
+import { firstFindingShown, hasBeenSeen, nowSeen } from "./first-finding.ts";
 import { ProblemList } from "./problem-list.tsx";
 import type { Standing } from "./standing.ts";
 import { StateLine } from "./state-line.tsx";
@@ -26,6 +26,7 @@ interface BandFindingProps {
 export function BandFinding({ studyId, standing, beside, onChange }: BandFindingProps) {
   const { fingerprint, cell, status, kind } = standing;
   const { data, error, refetch } = useFinding(studyId, fingerprint);
+  const arrives = useArrival(data && fingerprint);
   const table = useTables(data?.finding)?.[0];
   useEffect(() => {
     if (kind && fingerprint) expectBand(kind);
@@ -45,7 +46,7 @@ export function BandFinding({ studyId, standing, beside, onChange }: BandFinding
     <>
       <StateLine standing={standing} beside={beside} actions={actions} />
       {fingerprint ? (
-        <div className="arrives" key={fingerprint}>
+        <div className={arrives ? "arrives" : ""} key={fingerprint}>
           {data && <FindingBand finding={data.finding} status={status} />}
           {error && (
             <>
@@ -64,6 +65,20 @@ export function BandFinding({ studyId, standing, beside, onChange }: BandFinding
       )}
     </>
   );
+}
+
+/** Whether a finding is new to the page and may fade in; what has been read already stays where it is. */
+function useArrival(fingerprint: string | undefined): boolean {
+  const [first, setFirst] = useState(fingerprint);
+  const [isNew, setIsNew] = useState(fingerprint === undefined || !hasBeenSeen(fingerprint));
+  if (fingerprint !== undefined && fingerprint !== first) {
+    setFirst(fingerprint);
+    setIsNew(!hasBeenSeen(fingerprint));
+  }
+  useEffect(() => {
+    if (fingerprint) nowSeen(fingerprint);
+  }, [fingerprint]);
+  return isNew;
 }
 
 function Otherwise({ studyId, standing, onChange }: Omit<BandFindingProps, "beside">) {

@@ -1,6 +1,5 @@
 import { useState } from "react";
 import type { LabelledTable } from "../../../shared/tables/table.ts";
-import { copyTable } from "../../cells/copy-table.tsx";
 import { Word } from "../../components/button.tsx";
 
 /** *Copy table*: pastes into a spreadsheet; LaTeX and CSV are in the opened cell. */
@@ -8,6 +7,7 @@ export function CopyWord({ table, name }: { table: LabelledTable; name: string }
   const [said, setSaid] = useState<string>();
   const copy = async () => {
     try {
+      const { copyTable } = await import("../../cells/copy-table.tsx");
       await copyTable(table, "table");
       setSaid("Copied");
     } catch {

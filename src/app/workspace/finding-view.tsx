@@ -13,10 +13,13 @@ function viewOf(kind: CellKind): CellView<CellKind> {
 
 const part = <P extends object>(load: () => Promise<ComponentType<P>>) => lazy(async () => ({ default: await load() }));
 
+/** The kind of the first finding on the page; the others' views come after it. */
+let first: CellKind | undefined;
+
 function partsOf(kind: CellKind) {
   const { Band, Open, Form, Aside } = viewOf(kind);
   return {
-    Band: part(Band),
+    Band: part(() => (kind === first ? Band() : afterFirstFinding(Band))),
     Open: part(Open),
     Form: part(() => afterFirstFinding(Form)),
     ...(Aside && { Aside: part(Aside) }),
@@ -28,7 +31,11 @@ const PARTS = Object.fromEntries(
 ) as Readonly<Record<CellKind, ReturnType<typeof partsOf>>>;
 
 /** Begins to load what shows a kind's finding, while the finding itself is on its way. */
-export const expectBand = (kind: CellKind): void => void viewOf(kind).Band().catch(leaveItToTheView);
+export function expectBand(kind: CellKind): void {
+  first ??= kind;
+  const { Band } = viewOf(kind);
+  void (kind === first ? Band() : afterFirstFinding(Band)).catch(leaveItToTheView);
+}
 
 /** Loads what opening and copying cells of these kinds will need. */
 export function expectOpening(kinds: readonly CellKind[]): void {

@@ -13,3 +13,9 @@ if (typeof document !== "undefined") {
     document.addEventListener(type, firstFindingShown, { once: true, capture: true });
   }
 }
+
+const seen = new Set<string>();
+
+/** Whether a finding has been on the page before: one that was is there at once, and does not arrive again. */
+export const hasBeenSeen = (fingerprint: string): boolean => seen.has(fingerprint);
+export const nowSeen = (fingerprint: string): void => void seen.add(fingerprint);

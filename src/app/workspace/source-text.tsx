@@ -34,12 +34,21 @@ export function SourceText({ connection, standing, cells, uploads, readOnly, onL
     }),
     [kind, cell.name, names, connection, uploads, problems, lastSource],
   );
+  const steps = useMemo(
+    () => ({
+      manager: connection.undo,
+      undo: () => connection.undoStep(cell.id),
+      redo: () => connection.redoStep(cell.id),
+    }),
+    [connection, cell.id],
+  );
   if (!text) return null;
   return (
     <Suspense fallback={<pre className="type-source whitespace-pre-wrap">{cell.source || " "}</pre>}>
       <SourceEditor
         text={text}
         awareness={connection.awareness}
+        steps={steps}
         label={`Source of ${cell.name}`}
         readOnly={readOnly}
         subject={subject}

@@ -19,7 +19,7 @@ export function useRemoval(connection: StudyConnection) {
     note: (cell: CellSource, after: string | null) =>
       setRemoval({ cell, after, depth: connection.undo.undoStack.length }),
     undo: () => {
-      connection.undo.undo();
+      connection.undoStep();
       setRemoval(undefined);
     },
     dismiss: () => setRemoval(undefined),

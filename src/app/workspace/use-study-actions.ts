@@ -25,8 +25,10 @@ export function useStudyActions(connection: StudyConnection, uploads: readonly U
       rename: async (cell: CellSource, name: string): Promise<void> => {
         const { sourcesAfterRenaming } = await loadReading();
         const sources = sourcesAfterRenaming(cell.name, name, cells());
-        connection.renameCell(cell.id, name);
-        for (const [id, source] of sources) connection.replaceSource(id, source);
+        connection.atOnce("renaming", () => {
+          connection.renameCell(cell.id, name);
+          for (const [id, source] of sources) connection.replaceSource(id, source);
+        });
       },
 
       move: (cellId: string, by: 1 | -1): void => {
