@@ -5,6 +5,7 @@ import { insertPerson } from "../db/queries/people.ts";
 import { countStudies, deleteStudy, findStudy, insertStudy } from "../db/queries/studies.ts";
 import type { Services } from "../services/index.ts";
 import { DEMO_PEOPLE } from "./people.ts";
+import { seedDemoRemarks } from "./remarks.ts";
 
 export interface DemoStudy {
   readonly title: string;
@@ -46,6 +47,9 @@ export async function seedDemoStudy(demo: DemoStudy, ids: readonly string[], nee
   await services.uploads.finish(STUDY, uploadId, new AbortController().signal);
   await write(STUDY, demo.cells);
   services.cells.changed(STUDY);
+  const { cells } = await services.cells.status(STUDY);
+  const named = cells.map(({ cellId, name }) => ({ id: cellId, name }));
+  seedDemoRemarks(db, STUDY, named, ids);
   await services.cells.bringUpToDate(STUDY, owner.id);
   await untilSettled(services, say);
 }

@@ -9,7 +9,10 @@ const DEMO: DemoStudy = {
   title: "Levy on sweet drinks",
   lede: "Household purchases",
   upload: { name: "purchases.csv", csv: "p1\n1\n2\n" },
-  cells: [{ name: "survey", kind: "data", source: "upload: purchases.csv" }],
+  cells: [
+    { name: "survey", kind: "data", source: "upload: purchases.csv" },
+    { name: "base", kind: "system", source: "data: survey" },
+  ],
 };
 
 let application: Application;
@@ -42,12 +45,15 @@ test("a new installation is a demo, unless the environment says otherwise", () =
 });
 
 test("its three people sign in, each in their role, to one study with its upload and cells", async () => {
-  expect(await seed()).toEqual(["Making the demo study: reading purchases.csv.", "  survey: found"]);
+  expect(await seed()).toEqual(["Making the demo study: reading purchases.csv.", "  survey: found", "  base: found"]);
   for (const { email, passphrase } of demoSignIns()) expect(await signIn(email, passphrase)).toBe(200);
   const people = application.services.people.list({ id: ownerId() }, "demo");
   expect(people.map(({ email, role }) => ({ email, role }))).toEqual(
     demoSignIns().map(({ email, role }) => ({ email, role })),
   );
+  const [remark] = await application.services.remarks.list({ id: ownerId() }, "demo");
+  expect(remark).toMatchObject({ cellName: "base", author: { name: "Tomás Adeyemi" } });
+  expect(remark.replies.map(({ author }) => author.name)).toEqual(["Ilse Marchetti"]);
   expect(application.services.uploads.list({ id: ownerId() }, "demo")).toHaveLength(1);
   expect(application.cells.calls).toContain(`bring up to date demo ${ownerId()}`);
 });
