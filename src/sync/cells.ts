@@ -60,6 +60,26 @@ export function removeCell(doc: Y.Doc, cellId: string): void {
   cellsOf(doc).delete(cellId);
 }
 
+/**
+ * Turns the study's cells into those given: what is there is changed and not replaced, what is not there any more comes back
+ * under its id, what is not among them goes.
+ */
+export function returnToCells(doc: Y.Doc, wanted: readonly CellSource[]): void {
+  const stay = new Set(wanted.map(({ id }) => id));
+  for (const id of [...cellsOf(doc).keys()]) if (!stay.has(id)) removeCell(doc, id);
+  for (const { id, name, kind, order, source } of wanted) {
+    const entry = entryOf(doc, id) ?? new Y.Map<unknown>();
+    if (entry.doc === null) {
+      entry.set("source", new Y.Text(source));
+      cellsOf(doc).set(id, entry);
+    }
+    for (const [key, value] of Object.entries({ name, kind, order })) {
+      if (entry.get(key) !== value) entry.set(key, value);
+    }
+    replaceSource(doc, id, source);
+  }
+}
+
 /** Turns a text into another, touching only what differs, so that others' edits elsewhere in it stay. */
 export function replaceSource(doc: Y.Doc, cellId: string, next: string): void {
   const source = sourceOf(doc, cellId);

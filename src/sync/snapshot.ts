@@ -1,6 +1,7 @@
 import type { StudyStatus } from "../../shared/schemas/status.ts";
 import type { PresentPerson } from "../../shared/schemas/sync.ts";
 import type { CellSource } from "../../shared/study/cell-source.ts";
+import type { Undone } from "./own-edits.ts";
 import type { Whereabouts } from "./people.ts";
 
 export type ConnectionState =
@@ -33,6 +34,8 @@ export interface StudySnapshot {
   readonly remarksTold: number;
   /** Where the others are. */
   readonly whereabouts: readonly Whereabouts[];
+  /** What undoing or redoing last came to. */
+  readonly undone?: Undone;
 }
 
 export function emptySnapshot(readOnly: boolean): StudySnapshot {

@@ -3,10 +3,21 @@ import type { WebsocketProvider } from "y-websocket";
 import * as Y from "yjs";
 import type { Account, Role } from "../../shared/schemas/resources.ts";
 import type { CellSource } from "../../shared/study/cell-source.ts";
-import { addCell, cellsOf, listCells, moveCell, removeCell, renameCell, replaceSource, sourceOf } from "./cells.ts";
+import {
+  addCell,
+  cellsOf,
+  listCells,
+  moveCell,
+  removeCell,
+  renameCell,
+  replaceSource,
+  returnToCells,
+  sourceOf,
+} from "./cells.ts";
 import { EditLedger } from "./edit-ledger.ts";
 import { type Keeping, keepInBrowser } from "./keeping.ts";
 import { openLine } from "./line.ts";
+import { type Doing, OwnEdits } from "./own-edits.ts";
 import { whereabouts } from "./people.ts";
 import { emptySnapshot, Observed, type StudySnapshot } from "./snapshot.ts";
 
@@ -25,8 +36,9 @@ export class StudyConnection {
   readonly studyId: string;
   readonly doc = new Y.Doc();
   readonly awareness = new Awareness(this.doc);
-  /** Undoes this person's own changes only. */
+  /** This person's own steps in this window; others' are never among them. */
   readonly undo: Y.UndoManager;
+  readonly #own: OwnEdits;
   readonly #ledger = new EditLedger();
   readonly #observed: Observed<StudySnapshot>;
   readonly #keeping: Keeping | null;
@@ -38,10 +50,15 @@ export class StudyConnection {
     const reads = role === "reader";
     this.studyId = studyId;
     this.#observed = new Observed(emptySnapshot(reads));
-    this.undo = new Y.UndoManager(cellsOf(this.doc), { trackedOrigins: new Set([this]) });
+    this.#own = new OwnEdits(this.doc, this);
+    this.undo = this.#own.manager;
     // Before line and keeping listen, so that an edit is counted before it is sent or kept.
     this.doc.on("update", (_update: Uint8Array, origin: unknown) => this.#updated(origin));
-    cellsOf(this.doc).observeDeep(() => this.#observed.set({ cells: listCells(this.doc, this.snapshot().cells) }));
+    cellsOf(this.doc).observeDeep(() => {
+      const cells = listCells(this.doc, this.snapshot().cells);
+      this.#own.noteNames(cells);
+      this.#observed.set({ cells });
+    });
     const keeping =
       options.keeping === undefined ? (doc: Y.Doc) => keepInBrowser(account.id, studyId, doc) : options.keeping;
     this.#keeping = reads || keeping === null ? null : keeping(this.doc);
@@ -69,20 +86,20 @@ export class StudyConnection {
 
   /** Adds a cell after the one named, first (null) or last; returns its id. */
   addCell(cell: Pick<CellSource, "name" | "kind" | "source">, after?: string | null): string {
-    return this.#change(() => addCell(this.doc, cell, after));
+    return this.#change("adding", () => addCell(this.doc, cell, after));
   }
 
   renameCell(cellId: string, name: string): void {
-    this.#change(() => renameCell(this.doc, cellId, name));
+    this.#change("renaming", () => renameCell(this.doc, cellId, name));
   }
 
   /** Puts a cell after another, or first. */
   moveCell(cellId: string, after: string | null): void {
-    this.#change(() => moveCell(this.doc, cellId, after));
+    this.#change("moving", () => moveCell(this.doc, cellId, after));
   }
 
   removeCell(cellId: string): void {
-    this.#change(() => removeCell(this.doc, cellId));
+    this.#change("removing", () => removeCell(this.doc, cellId));
   }
 
   /** The live text of a cell's source, for the editor. */
@@ -92,7 +109,26 @@ export class StudyConnection {
 
   /** Turns a cell's source into another text as one change. */
   replaceSource(cellId: string, next: string): void {
-    this.#change(() => replaceSource(this.doc, cellId, next));
+    this.#change("changing", () => replaceSource(this.doc, cellId, next));
+  }
+
+  /** Several changes as one step. */
+  atOnce<T>(doing: Doing, change: () => T): T {
+    return this.#change(doing, change);
+  }
+
+  /** Turns the study into a state it was in, as one step; cells keep their ids. `name` is what the state is called. */
+  returnTo(cells: readonly CellSource[], name: string): void {
+    this.#change("returning to", () => returnToCells(this.doc, cells), name);
+  }
+
+  /** Undoes this person's last step, in the whole study or in one cell, and says so. */
+  undoStep(cellId?: string): void {
+    if (!this.snapshot().readOnly) this.#observed.set({ undone: this.#own.undo(cellId) });
+  }
+
+  redoStep(cellId?: string): void {
+    if (!this.snapshot().readOnly) this.#observed.set({ undone: this.#own.redo(cellId) });
   }
 
   /** Tells the others which cell this person is in. */
@@ -113,7 +149,7 @@ export class StudyConnection {
     listenToWindow("remove", "beforeunload", warnOnLeaving);
     listenToWindow("remove", "offline", this.#networkLost);
     listenToWindow("remove", "online", this.#networkBack);
-    this.undo.destroy();
+    this.#own.destroy();
     this.#line.destroy();
     await this.#keeping?.close();
     this.awareness.destroy();
@@ -165,12 +201,9 @@ export class StudyConnection {
   }
 
   /** Each is one step of undoing, apart from the typing before and after it. */
-  #change<T>(change: () => T): T {
+  #change<T>(doing: Doing, change: () => T, object?: string): T {
     if (this.snapshot().readOnly) throw new Error("A reader cannot change the study.");
-    this.undo.stopCapturing();
-    const result = this.doc.transact(change, this);
-    this.undo.stopCapturing();
-    return result;
+    return this.#own.step(doing, change, object);
   }
 
   /** The browser knows at once, the socket only after half a minute. Asking goes on: the server may be on this machine. */

@@ -19,11 +19,19 @@ export interface EditorNeeds {
   readonly parent: HTMLElement;
   readonly text: Y.Text;
   readonly awareness: Awareness;
+  /** The person's steps, of which the editor undoes and redoes those in this text; without it, it keeps steps of its own. */
+  readonly steps?: EditorSteps;
   readonly label: string;
   readonly readOnly: boolean;
   readonly subject: EditorSubject;
   /** Escape, once nothing else in the editor wants it. */
   readonly onLeave: () => void;
+}
+
+export interface EditorSteps {
+  readonly manager: Y.UndoManager;
+  readonly undo: () => void;
+  readonly redo: () => void;
 }
 
 export interface Editor {
@@ -35,8 +43,14 @@ function reading(readOnly: boolean): Extension {
   return readOnly ? [EditorState.readOnly.of(true), EditorView.editable.of(false)] : [];
 }
 
+/** The manager as the editor's keys reach it: typing becomes a step of the study's, its way back stays within the text. */
+function within({ manager, undo, redo }: EditorSteps): Y.UndoManager {
+  return Object.assign(Object.create(manager) as Y.UndoManager, { undo, redo });
+}
+
 /** An editor on a live text: one for as long as the cell's text is shown. */
-export function createEditor({ parent, text, awareness, label, readOnly, subject, onLeave }: EditorNeeds): Editor {
+export function createEditor(needs: EditorNeeds): Editor {
+  const { parent, text, awareness, label, readOnly, subject, onLeave, steps } = needs;
   const told = new Compartment();
   const leave = {
     key: "Escape",
@@ -70,7 +84,7 @@ export function createEditor({ parent, text, awareness, label, readOnly, subject
         sourceMarks,
         editorTheme,
         reading(readOnly),
-        yCollab(text, withFirstNames(awareness)),
+        yCollab(text, withFirstNames(awareness), steps && { undoManager: within(steps) }),
         EditorView.focusChangeEffect.of((_, focusing) => {
           if (!focusing && awareness.getLocalState()) awareness.setLocalStateField("cursor", null);
           return null;

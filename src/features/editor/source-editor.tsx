@@ -1,12 +1,13 @@
 import { useEffect, useRef } from "react";
 import type { Awareness } from "y-protocols/awareness";
 import type * as Y from "yjs";
-import { createEditor, type Editor } from "./create-editor.ts";
+import { createEditor, type Editor, type EditorSteps } from "./create-editor.ts";
 import type { EditorSubject } from "./editor-subject.ts";
 
 interface SourceEditorProps {
   readonly text: Y.Text;
   readonly awareness: Awareness;
+  readonly steps?: EditorSteps;
   readonly label: string;
   readonly readOnly: boolean;
   readonly subject: EditorSubject;
@@ -14,7 +15,8 @@ interface SourceEditorProps {
 }
 
 /** A cell's source, edited live with everyone who has it open. */
-export default function SourceEditor({ text, awareness, label, readOnly, subject, onLeave }: SourceEditorProps) {
+export default function SourceEditor(props: SourceEditorProps) {
+  const { text, awareness, steps, label, readOnly, subject, onLeave } = props;
   const parent = useRef<HTMLDivElement>(null);
   const editor = useRef<Editor>(undefined);
   const latest = useRef({ subject, onLeave });
@@ -25,6 +27,7 @@ export default function SourceEditor({ text, awareness, label, readOnly, subject
       parent: parent.current,
       text,
       awareness,
+      steps,
       label,
       readOnly,
       subject: latest.current.subject,
@@ -35,7 +38,7 @@ export default function SourceEditor({ text, awareness, label, readOnly, subject
       editor.current = undefined;
       made.destroy();
     };
-  }, [text, awareness, label, readOnly]);
+  }, [text, awareness, steps, label, readOnly]);
   useEffect(() => editor.current?.setSubject(subject), [subject]);
   return <div ref={parent} className="source-editor" />;
 }
