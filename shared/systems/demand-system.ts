@@ -2,6 +2,7 @@ import type { Matrix } from "../numerics/matrix.ts";
 import type { CoefficientBlock, CoefficientPlace, FreeForm, SystemSize } from "./coefficient-layout.ts";
 import type { MomentForm } from "./moment-form.ts";
 import type { RestrictionName, SystemName } from "./names.ts";
+import type { StraightCoordinates } from "./straight-coordinates.ts";
 
 export type {
   BlockColumns,
@@ -152,6 +153,8 @@ export interface DemandSystem {
   readonly expenditureMoments?: MomentForm;
   /** Why there is no share function, in a system in differences. */
   readonly shareFunction?: { readonly absent: string };
+  /** Coordinates for an estimator whose iteration in the coefficients does not end. */
+  readonly straight?: (size: SystemSize) => StraightCoordinates;
   /** Where iteration starts: θ (k) that satisfies every restriction, from the mean shares (n). */
   start(size: SystemSize, meanShares: readonly number[]): number[];
   /** Absent with a reason where there is none (LA-AIDS): welfare refuses it and names the exact system. */

@@ -12,6 +12,7 @@ import { requirePoint, slopesByEvaluator } from "./evaluation.ts";
 import { freeForm, remainder } from "./free-form.ts";
 import { lesExpenditureMoments, lesShareMoments } from "./les-moments.ts";
 import { committedAt, lesParts, lesPlaces } from "./les-parts.ts";
+import { lesStraight } from "./les-straight.ts";
 
 function expenditureEvaluator(theta: readonly number[], size: SystemSize): Evaluator {
   const n = size.goods;
@@ -152,6 +153,7 @@ export const les: DemandSystem = {
     ];
   },
   moments: lesShareMoments,
+  straight: lesStraight,
   expenditureMoments: lesExpenditureMoments,
   /** Nothing committed: shares that do not move. */
   start: (size, meanShares) => [...new Array<number>(size.goods * (1 + size.demographics)).fill(0), ...meanShares],

@@ -24,10 +24,10 @@ export function rowByRow(
   data: PreparedData,
   size: SystemSize,
   dropped = data.goods.length - 1,
+  start: readonly number[] = SYSTEMS[form].start(size, data.shares.map(meanOf)),
 ): RowByRow {
   const free = SYSTEMS[form].free(size, impose);
   const kept = data.goods.map((_, i) => i).filter((i) => i !== dropped);
-  const start = SYSTEMS[form].start(size, data.shares.map(meanOf));
   let phi = free.places.map((place) => start[place]);
   let covariance = Matrix.eye(kept.length);
   let last = Number.POSITIVE_INFINITY;

@@ -7,6 +7,7 @@ import type { Estimation } from "./estimation.ts";
 import { leastSquares, maximumLikelihood, seeminglyUnrelated } from "./estimators.ts";
 import { NotConverged } from "./failures.ts";
 import { minimise, type Solution } from "./minimise.ts";
+import { solveStraight } from "./solve-straight.ts";
 import { startOf } from "./start.ts";
 
 /** The restrictions that act within equations only. */
@@ -39,7 +40,15 @@ export function solve(
     );
     if (straight !== undefined) return straight;
   }
-  return solveFrom(theta, specification, system, size, estimation, control);
+  return unlessRefused(
+    () => solveFrom(theta, specification, system, size, estimation, control),
+    (refusal) => {
+      const straight =
+        refusal instanceof NotConverged && solveStraight(theta, specification, system, size, estimation, control);
+      if (!straight) throw refusal;
+      return straight;
+    },
+  );
 }
 
 /** Of derivatives scaled to unit length; where prices are normalised it is about ten. */

@@ -4,13 +4,14 @@ import { type CoefficientForm, type Expansion, expand, throughRestrictions } fro
 import type { CurvatureMap } from "./curvature-map.ts";
 
 /**
- * Share equations whose curvature holds at a point: the first k coefficients follow from the map, those that stand
- * after them (a control function's) from their own linear restrictions. `at` is where S of the expansion is formed.
+ * Share equations whose curvature holds at a point, or in bent coordinates: the first k coefficients follow from the
+ * map, those that stand after them (a control function's) from their own linear restrictions. `at` is where S of the
+ * expansion is formed.
  */
 export function bentForm(
   system: DemandSystem,
   size: SystemSize,
-  map: CurvatureMap,
+  map: Omit<CurvatureMap, "triangle">,
   places: readonly number[],
   rest: FreeForm,
   at: readonly number[],
