@@ -4,16 +4,30 @@ import type { Logger } from "pino";
 import type { Installation } from "../shared/schemas/resources.ts";
 import type { Config } from "./config.ts";
 import { authenticationRoutes } from "./http/authentication.ts";
+import { enterBy } from "./http/enter.ts";
 import { answerErrors, nothingHere } from "./http/errors.ts";
-import { limitRefereeReads, limitRemarks, limitUploads } from "./http/limits.ts";
+import {
+  limitLinks,
+  limitMail,
+  limitPassphrases,
+  limitRefereeReads,
+  limitRemarks,
+  limitUploads,
+} from "./http/limits.ts";
 import { logRequests } from "./http/log.ts";
 import { ownPagesOnly } from "./http/origin.ts";
 import { neverKept, protectPages } from "./http/security.ts";
 import { readSession } from "./http/session.ts";
+import { accountRoutes } from "./routes/accounts.ts";
+import { administrationRoutes } from "./routes/administration.ts";
 import { cellRoutes } from "./routes/cells.ts";
 import { checkpointRoutes } from "./routes/checkpoints.ts";
+import { deletedStudyRoutes } from "./routes/deleted-studies.ts";
 import { doorRoutes } from "./routes/door.ts";
 import { historyRoutes } from "./routes/history.ts";
+import { invitationRoutes } from "./routes/invitations.ts";
+import { journalRoutes } from "./routes/journal.ts";
+import { ownAccountRoutes } from "./routes/own-account.ts";
 import { peopleRoutes } from "./routes/people.ts";
 import { refereeCopyRoutes } from "./routes/referee-copies.ts";
 import { remarkRoutes } from "./routes/remarks.ts";
@@ -45,19 +59,64 @@ export function createApp({ config, auth, services, installation, logger, pages 
   app.use(protectPages(config));
   app.use(compression());
   app.use("/api", neverKept, ownPagesOnly(config.trustedOrigins), express.json({ limit: "256kb" }));
-  app.use("/api/auth", authenticationRoutes({ auth, limits: config.limits, signedOut: services.signedOut }));
-  app.use("/api", readSession(auth), apiRoutes({ config, services, installation }), nothingHere);
+  const { limits } = config;
+  const { locked, passphraseChanged } = services.accountEvents;
+  // One count for every way to have a message sent.
+  const mailLimits = limitMail(limits.mailsPerHour);
+  app.use(
+    "/api/auth",
+    authenticationRoutes({
+      auth,
+      limits,
+      limitMail: mailLimits,
+      locked,
+      async passphraseChanged(account) {
+        await services.ownAccount.endOtherSessions(account, account.sessionId);
+        passphraseChanged(account);
+      },
+    }),
+  );
+  app.use("/api", readSession(auth));
+  app.use("/api", peopleApi({ auth, config, services, installation, mailLimits }));
+  app.use("/api", apiRoutes({ config, services }), nothingHere);
   app.use(pages);
   app.use(answerErrors);
   return app;
 }
 
-function apiRoutes({ config, services, installation }: Pick<AppDependencies, "config" | "services" | "installation">) {
+type PeopleApi = Pick<AppDependencies, "auth" | "config" | "services" | "installation"> & {
+  readonly mailLimits: RequestHandler[];
+};
+
+/** Who comes in, who is in a study, whose the installation is. */
+function peopleApi({ auth, config, services, installation, mailLimits }: PeopleApi) {
   const router = express.Router();
-  const { studies, people, uploads, cells, refereeCopies, remarks, access, history, checkpoints } = services;
-  router.use(doorRoutes({ installation }));
-  router.use(studyRoutes({ studies }));
+  const { people, accounts, ownAccount, invitations, administration, journal } = services;
+  const enter = enterBy(auth);
+  const limit = limitLinks(config.limits.signInsPerMinute);
+  router.use(doorRoutes({ installation, administration }));
+  router.use(accountRoutes({ accounts, enter, limitMail: mailLimits, limit }));
+  router.use(
+    ownAccountRoutes({
+      ownAccount,
+      accounts,
+      invitations,
+      limitMail: mailLimits,
+      limitPassphrases: limitPassphrases(),
+    }),
+  );
   router.use(peopleRoutes({ people }));
+  router.use(invitationRoutes({ invitations, enter, limitMail: mailLimits, limit }));
+  router.use(journalRoutes({ journal }));
+  router.use(administrationRoutes({ administration }));
+  return router;
+}
+
+function apiRoutes({ config, services }: Pick<AppDependencies, "config" | "services">) {
+  const router = express.Router();
+  const { studies, uploads, cells, refereeCopies, remarks, access, history, checkpoints } = services;
+  router.use(studyRoutes({ studies }));
+  router.use(deletedStudyRoutes({ studies }));
   router.use(uploadRoutes({ uploads, limit: limitUploads(config.limits.uploadsPerHour) }));
   router.use(cellRoutes({ cells, access }));
   router.use(remarkRoutes({ remarks, limit: limitRemarks(REMARKS_PER_MINUTE) }));

@@ -6,7 +6,7 @@ import type { Installation } from "../shared/schemas/resources.ts";
 import { createApp } from "./app.ts";
 import { type Config, threadsOfOneComputation } from "./config.ts";
 import { type OpenDatabase, openDatabase } from "./db/client.ts";
-import { closeDemoAccounts, demoSignIns, isDemo, openDemoAccounts } from "./demo/accounts.ts";
+import { closeDemoAccounts, DEMO_ADMINISTRATOR, demoSignIns, isDemo, openDemoAccounts } from "./demo/accounts.ts";
 import { demoStudy } from "./demo/cells.ts";
 import { needsDemoStudy, seedDemoStudy } from "./demo/seed.ts";
 import { developmentPages } from "./http/development.ts";
@@ -18,9 +18,11 @@ import { localPostBox } from "./mail/post-box.ts";
 import { mailServer } from "./mail/smtp.ts";
 import { ROOT, VERSION } from "./root.ts";
 import { createAccess } from "./services/access.ts";
+import { type AccountEvents, createAccountEvents } from "./services/account-events.ts";
 import { type Authentication, createAuthentication } from "./services/authentication.ts";
 import { createCellService } from "./services/cells.ts";
 import { createServices, type Services } from "./services/index.ts";
+import { createJournalService, type JournalService } from "./services/journal.ts";
 import { createMailService, type MailService } from "./services/mail.ts";
 import { lockFolder } from "./storage/lock.ts";
 import { keptSecret } from "./storage/secret.ts";
@@ -37,7 +39,11 @@ export interface Running {
 interface LiveParts {
   readonly open: OpenDatabase;
   readonly auth: Authentication;
+  readonly accountEvents: AccountEvents;
   readonly mail: MailService;
+  readonly journal: JournalService;
+  readonly url: string;
+  readonly administrators: () => readonly string[];
   readonly pool: JobPool;
   readonly logger: Logger;
   readonly origins: readonly string[];
@@ -72,28 +78,51 @@ export async function assemble(config: Config, say: (line: string) => void): Pro
     secret,
     report: (error) => logger.error({ err: error }, "unforeseen"),
   });
+  const journal = createJournalService({ db, access: createAccess(db) });
+  const accountEvents = createAccountEvents({ db, mail, record: journal.record, url: config.url });
+  const administrators = [...config.administrators];
   const auth = createAuthentication({
     db,
     url: config.url,
     trustedOrigins: config.trustedOrigins,
     secure: config.secure,
     secret,
+    events: accountEvents,
+    sessionEnded: (sessionId) => sync.closeSession(sessionId),
   });
   const pool = createPool({
     databasePath: open.path,
     threads: config.threads,
     threadsEach: threadsOfOneComputation(config),
   });
-  const { services, sync, stopCells } = live({ open, auth, mail, pool, logger, origins: config.trustedOrigins });
+  const { services, sync, stopCells } = live({
+    open,
+    auth,
+    accountEvents,
+    mail,
+    journal,
+    url: config.url,
+    administrators: () => administrators,
+    pool,
+    logger,
+    origins: config.trustedOrigins,
+  });
   services.uploads.removeUnfinished();
-  mail.removeOld();
   mail.start();
+  const stopKeepingHouse = keepHouse(services, (error) => logger.error({ err: error }, "unforeseen"));
 
   const demo = isDemo(db, config.demo);
   if (demo) await makeDemo({ open, auth, services, sync, say });
   else closeDemoAccounts(db);
+  if (demo) administrators.push(DEMO_ADMINISTRATOR);
+  else if (mail.kind === "post box") sayWhereMailGoes(config.administrators, services, say);
 
-  const installation = { name: "Tangency", version: VERSION, demo: demo ? demoSignIns() : [] };
+  const installation: Installation = {
+    name: "Tangency",
+    version: VERSION,
+    mail: mail.kind,
+    demo: demo ? demoSignIns() : [],
+  };
   const server = createServer();
   server.requestTimeout = LONGEST_REQUEST;
   const page = config.development ? await developmentPages(ROOT, server) : pages(join(ROOT, "dist", "client"));
@@ -109,6 +138,7 @@ export async function assemble(config: Config, say: (line: string) => void): Pro
     async close() {
       const quiet = new Promise((done) => server.close(done));
       server.closeIdleConnections();
+      stopKeepingHouse();
       await sync.close();
       stopCells();
       await pool.close();
@@ -122,14 +152,16 @@ export async function assemble(config: Config, say: (line: string) => void): Pro
 }
 
 /** The parts that call one another: cells read the document, and the document tells the cells of edits. */
-function live({ open, auth, mail, pool, logger, origins }: LiveParts): Live {
+function live({ open, auth, pool, logger, origins, ...people }: LiveParts): Live {
   const { db } = open;
   const access = createAccess(db);
   const report = (error: unknown) => logger.error({ err: error }, "unforeseen");
   const sync = createSyncServer({
     async authenticate(request) {
       const session = await sessionOf(auth, request.headers);
-      return session && { id: session.account.id, name: session.account.name, expiresAt: session.expiresAt };
+      if (session === undefined) return undefined;
+      const { id, name, sessionId } = session.account;
+      return { id, name, sessionId, expiresAt: session.expiresAt };
     },
     roleOf: (userId, studyId) => access.roleOf(userId, studyId),
     origins,
@@ -150,15 +182,46 @@ function live({ open, auth, mail, pool, logger, origins }: LiveParts): Live {
   const cells = createCellService({ db, pool, sourcesOf: sync.sourcesOf, publish: sync.publish, report });
   const services = createServices({
     db,
-    mail,
+    auth,
+    ...people,
     cells,
     sourcesOf: sync.sourcesOf,
     closePerson: sync.closePerson,
     remarksChanged: sync.remarksChanged,
-    parseUpload: (uploadId, signal) => pool.parseUpload(uploadId, () => {}, signal),
+    parseUpload: (uploadId, signal, sheet) => pool.parseUpload(uploadId, () => {}, signal, sheet),
+    lookAtRows: (look, signal) => pool.look(look, signal),
     program: `Tangency ${VERSION}`,
   });
   return { services, sync, stopCells: cells.close };
+}
+
+/** Without a mail server the first administrator could not be sent a link: whoever runs the program is told it. */
+function sayWhereMailGoes(administrators: readonly string[], services: Services, say: (line: string) => void): void {
+  say("No mail server is set (TANGENCY_SMTP_URL): messages stay in the local post box, which administrators read.");
+  for (const email of administrators) {
+    const link = services.accounts.firstLink(email);
+    if (link !== undefined) say(`${email} administers and has no account yet; it is made, within a day, at ${link}`);
+  }
+}
+
+const DAY = 24 * 3_600_000;
+
+/** What is due to go goes at start and daily: deleted studies, old messages, links that have run out. */
+function keepHouse(services: Services, report: (error: unknown) => void): () => void {
+  const keep = () => {
+    try {
+      services.studies.purgeDeleted();
+      services.mail.removeOld();
+      services.invitations.removeOld();
+      services.accounts.removeOldLinks();
+    } catch (error) {
+      report(error);
+    }
+  };
+  keep();
+  const daily = setInterval(keep, DAY);
+  daily.unref();
+  return () => clearInterval(daily);
 }
 
 async function makeDemo({ open, auth, services, sync, say }: DemoParts): Promise<void> {

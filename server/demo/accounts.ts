@@ -12,6 +12,9 @@ export function isDemo(db: Database, wanted: boolean | undefined): boolean {
   return wanted ?? (countAccounts(db) === 0 || hasPassphrase(db, DEMO_PEOPLE[0].email));
 }
 
+/** Who owns the demo study administers the demo, and reads its post box. */
+export const DEMO_ADMINISTRATOR: string = DEMO_PEOPLE[0].email;
+
 /** Their ids, in the order of `DEMO_PEOPLE`. */
 export async function openDemoAccounts(auth: Authentication, db: Database): Promise<string[]> {
   const ids: string[] = [];

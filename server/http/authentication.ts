@@ -1,40 +1,26 @@
 import { toNodeHandler } from "better-auth/node";
-import { type Response as Answer, type Request, Router } from "express";
-import { z } from "zod";
+import { type Response as Answer, type Request, type RequestHandler, Router } from "express";
+import { addressAsked, changedPassphrase, resetPassphrase, signIn } from "../../shared/schemas/accounts.ts";
 import type { Limits } from "../config.ts";
-import { foreignOrigin, ServiceError } from "../errors.ts";
-import { type Authentication, LONGEST_PASSPHRASE, SHORTEST_PASSPHRASE } from "../services/authentication.ts";
+import { foreignOrigin, notSignedIn, ServiceError } from "../errors.ts";
+import type { Authentication } from "../services/authentication.ts";
 import { presentError } from "./errors.ts";
-import { limitFailedSignIns, limitSignIns } from "./limits.ts";
-import { sessionOf } from "./session.ts";
+import { limitFailedSignIns, limitPassphrases, limitSignIns } from "./limits.ts";
+import { type SignedIn, sessionOf } from "./session.ts";
 import { validate } from "./validate.ts";
-
-const email = z.email("is not an e-mail address").trim().max(254, "has more than 254 characters");
-
-const passphrase = z.string("a passphrase is needed").superRefine((words, context) => {
-  const length = words.length;
-  if (length >= SHORTEST_PASSPHRASE && length <= LONGEST_PASSPHRASE) return;
-  const bound =
-    length < SHORTEST_PASSPHRASE ? `needs at least ${SHORTEST_PASSPHRASE}` : `may have ${LONGEST_PASSPHRASE}`;
-  context.addIssue({ code: "custom", message: `the passphrase has ${length} characters and ${bound}` });
-});
-
-const newAccount = z.object({
-  name: z.string("a name is needed").trim().min(1, "a name is needed").max(100, "has more than 100 characters"),
-  email,
-  password: passphrase,
-});
-const signIn = z.object({ email, password: z.string("a passphrase is needed").max(LONGEST_PASSPHRASE) });
 
 interface Settings {
   readonly auth: Authentication;
   readonly limits: Limits;
-  /** Told after someone has signed out. */
-  readonly signedOut: (userId: string) => void;
+  readonly limitMail: RequestHandler[];
+  /** Told when an address has had too many wrong passphrases. */
+  readonly locked: (email: string) => void;
+  /** Told after someone has changed their passphrase; every other session of theirs ends. */
+  readonly passphraseChanged: (account: SignedIn) => Promise<void>;
 }
 
-/** The four doors of the authentication package that this program opens, with its refusals in our words. */
-export function authenticationRoutes({ auth, limits, signedOut }: Settings): Router {
+/** The doors of the authentication package that this program opens, with its refusals in our words. */
+export function authenticationRoutes({ auth, limits, limitMail, locked, passphraseChanged }: Settings): Router {
   const router = Router();
   const pass = toNodeHandler(async (request: globalThis.Request) => inOurWords(await auth.handler(request)));
   const forward = (request: Request, response: Answer) => {
@@ -43,27 +29,37 @@ export function authenticationRoutes({ auth, limits, signedOut }: Settings): Rou
   };
   const bySignIns = limitSignIns(limits.signInsPerMinute);
 
-  router.post("/sign-up/email", bySignIns, (request, response) => {
-    request.body = validate(newAccount, request.body);
-    return forward(request, response);
-  });
-  router.post("/sign-in/email", bySignIns, limitFailedSignIns(), (request, response) => {
+  router.post("/sign-in/email", bySignIns, limitFailedSignIns(locked), (request, response) => {
     request.body = validate(signIn, request.body);
     return forward(request, response);
   });
-  router.post("/sign-out", async (request, response) => {
-    const session = await sessionOf(auth, request.headers);
-    await forward(request, response);
-    if (session !== undefined && response.statusCode < 400) signedOut(session.account.id);
-  });
+  router.post("/sign-out", forward);
   router.get("/get-session", forward);
+
+  // The same answer whether an account has the address or not.
+  router.post("/request-password-reset", ...limitMail, async (request, response) => {
+    const { email } = validate(addressAsked, request.body);
+    await auth.api.requestPasswordReset({ body: { email } });
+    response.status(202).end();
+  });
+  router.post("/reset-password", bySignIns, (request, response) => {
+    request.body = validate(resetPassphrase, request.body);
+    return forward(request, response);
+  });
+  router.post("/change-password", limitPassphrases(), async (request, response) => {
+    const session = await sessionOf(auth, request.headers);
+    if (session === undefined) throw notSignedIn();
+    request.body = validate(changedPassphrase, request.body);
+    await forward(request, response);
+    if (response.statusCode < 400) await passphraseChanged(session.account);
+  });
   return router;
 }
 
 const SENTENCES: Record<string, string> = {
   INVALID_EMAIL_OR_PASSWORD: "This address and this passphrase do not belong together.",
-  USER_ALREADY_EXISTS: "There is an account with this address already: sign in with it.",
-  USER_ALREADY_EXISTS_USE_ANOTHER_EMAIL: "There is an account with this address already: sign in with it.",
+  INVALID_PASSWORD: "This is not the passphrase you have now.",
+  INVALID_TOKEN: "This link has been used or has run out. Ask for another.",
 };
 
 async function inOurWords(response: Response): Promise<Response> {

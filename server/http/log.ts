@@ -9,7 +9,7 @@ export function createLogger(level: string, destination?: NodeJS.WritableStream)
 
 /**
  * One line a request, with an id of its own. What is named here is all that is written: no header,
- * no query, no address of a client, no body, and of a referee's link only that it was one.
+ * no query, no address of a client, no body, and of a link only that it was one.
  */
 export function logRequests(logger: Logger): RequestHandler {
   return pinoHttp({
@@ -39,7 +39,11 @@ export function logRequests(logger: Logger): RequestHandler {
   }) as RequestHandler;
 }
 
-/** The path without its query, and without a referee's token; addresses are routed whatever their capitals. */
+/** Before the secret of a link, in the addresses of pages and of the API. */
+const SECRET =
+  /(\/(?:referee|invitations?|create-account|confirm-address|reset-passphrase|account-links|address-links)\/)[^/\s]+/gi;
+
+/** The path without its query, and without the secret of a link; addresses are routed whatever their capitals. */
 export function withoutSecrets(text: string): string {
-  return text.replace(/\?\S*/g, "").replace(/(\/referee\/)[^/\s]+/gi, "$1…");
+  return text.replace(/\?\S*/g, "").replace(SECRET, "$1…");
 }

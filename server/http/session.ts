@@ -4,8 +4,15 @@ import type { Account } from "../../shared/schemas/resources.ts";
 import { notSignedIn } from "../errors.ts";
 import type { Authentication } from "../services/authentication.ts";
 
+/** Whoever is signed in, by which session. */
+export interface SignedIn extends Account {
+  /** Someone has read a message sent to the address. */
+  readonly emailVerified: boolean;
+  readonly sessionId: string;
+}
+
 export interface Session {
-  readonly account: Account;
+  readonly account: SignedIn;
   readonly expiresAt: Date;
 }
 
@@ -18,7 +25,8 @@ export async function sessionOf(
   const found = await auth.api.getSession({ headers: fromNodeHeaders(headers) });
   if (found === null) return undefined;
   const { user, session } = found;
-  return { account: { id: user.id, name: user.name, email: user.email }, expiresAt: session.expiresAt };
+  const { id, name, email, emailVerified } = user;
+  return { account: { id, name, email, emailVerified, sessionId: session.id }, expiresAt: session.expiresAt };
 }
 
 export function readSession(auth: Authentication): RequestHandler {
@@ -29,8 +37,8 @@ export function readSession(auth: Authentication): RequestHandler {
 }
 
 /** The account the request comes from, or a 401. */
-export function signedIn(response: Response): Account {
-  const account = response.locals.account as Account | undefined;
+export function signedIn(response: Response): SignedIn {
+  const account = response.locals.account as SignedIn | undefined;
   if (account === undefined) throw notSignedIn();
   return account;
 }

@@ -20,6 +20,9 @@ const places = z.object({
   uploadId: identifier.optional(),
   cellId: identifier.optional(),
   copyId: identifier.optional(),
+  sessionId: identifier.optional(),
+  invitationId: identifier.optional(),
+  mailId: identifier.optional(),
   checkpointId: identifier.optional(),
   remarkId: identifier.optional(),
   replyId: identifier.optional(),
@@ -30,4 +33,9 @@ export function place(params: unknown, name: keyof z.infer<typeof places>): stri
   const value = validate(places, params)[name];
   if (value === undefined) throw invalid(`${name} is missing from the address`);
   return value;
+}
+
+/** The secret part of a link's address; whatever it is, it is looked up by its hash. */
+export function secretOf(params: { readonly token?: unknown }): string {
+  return String(params.token ?? "");
 }

@@ -8,6 +8,9 @@ const ALLOWED = {
   "study.read": ["owner", "coauthor", "reader"],
   "study.change": ["owner", "coauthor"],
   "study.delete": ["owner"],
+  "study.bring back": ["owner"],
+  "study.purge": ["owner"],
+  "study.put away": ["owner", "coauthor", "reader"],
   "document.read": ["owner", "coauthor", "reader"],
   "document.write": ["owner", "coauthor"],
   "history.read": ["owner", "coauthor", "reader"],
@@ -17,9 +20,10 @@ const ALLOWED = {
   "checkpoint.return": ["owner", "coauthor"],
   "checkpoint.remove": ["owner"],
   "people.read": ["owner", "coauthor", "reader"],
-  "people.add": ["owner"],
+  "people.invite": ["owner"],
   "people.change": ["owner"],
   "people.remove": ["owner"],
+  "people.hand over": ["owner"],
   "journal.read": ["owner", "coauthor", "reader"],
   "journal.read all": ["owner"],
   "upload.read": ["owner", "coauthor", "reader"],
@@ -47,6 +51,22 @@ export const ACTIONS = Object.keys(ALLOWED) as Action[];
 
 export interface Actor {
   readonly id: string;
+}
+
+/**
+ * What whoever administers the installation may do, and nobody else. It opens no study: an administrator who is in
+ * none reads none.
+ */
+const ADMINISTRATION = ["mail.read", "mail.try again", "account.read", "installation journal.read"] as const;
+
+export type AdministrationAction = (typeof ADMINISTRATION)[number];
+
+export interface Standing {
+  readonly isAdministrator: boolean;
+}
+
+export function canAdminister(standing: Standing | undefined, action: AdministrationAction): boolean {
+  return standing?.isAdministrator === true && ADMINISTRATION.includes(action);
 }
 
 /** As much of a study as a decision needs: who is in it, as what. */

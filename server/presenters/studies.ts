@@ -2,7 +2,7 @@ import type { Person, StudySummary } from "../../shared/schemas/resources.ts";
 import type { PersonRow } from "../services/people.ts";
 import type { StudyView } from "../services/studies.ts";
 
-export function presentStudy({ study, role, people, cells, sealedAt }: StudyView): StudySummary {
+export function presentStudy({ study, role, people, cells, sealedAt, isPutAway }: StudyView): StudySummary {
   return {
     id: study.id,
     title: study.title,
@@ -11,6 +11,7 @@ export function presentStudy({ study, role, people, cells, sealedAt }: StudyView
     people: people.map(presentPerson),
     changedAt: study.changedAt.toISOString(),
     cells: cells.map(({ name, state, reads }) => ({ name, state, reads: [...reads] })),
+    ...(isPutAway && { isPutAway }),
     ...(sealedAt !== undefined && { sealedAt: sealedAt.toISOString() }),
   };
 }

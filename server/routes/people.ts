@@ -1,5 +1,5 @@
 import { Router } from "express";
-import { changedPerson, newPerson } from "../../shared/schemas/resources.ts";
+import { changedPerson, handedOver } from "../../shared/schemas/resources.ts";
 import { signedIn } from "../http/session.ts";
 import { place, validate } from "../http/validate.ts";
 import { presentPerson } from "../presenters/studies.ts";
@@ -14,13 +14,6 @@ export function peopleRoutes({ people }: { readonly people: PeopleService }): Ro
     response.json(people.list(actor, studyId).map(presentPerson));
   });
 
-  router.post("/studies/:studyId/people", (request, response) => {
-    const actor = signedIn(response);
-    const studyId = place(request.params, "studyId");
-    const wanted = validate(newPerson, request.body);
-    response.status(201).json(presentPerson(people.add(actor, studyId, wanted)));
-  });
-
   router.patch("/studies/:studyId/people/:userId", (request, response) => {
     const actor = signedIn(response);
     const studyId = place(request.params, "studyId");
@@ -33,6 +26,13 @@ export function peopleRoutes({ people }: { readonly people: PeopleService }): Ro
     const actor = signedIn(response);
     people.remove(actor, place(request.params, "studyId"), place(request.params, "userId"));
     response.status(204).end();
+  });
+
+  router.post("/studies/:studyId/owner", (request, response) => {
+    const actor = signedIn(response);
+    const studyId = place(request.params, "studyId");
+    const { userId } = validate(handedOver, request.body);
+    response.json(people.handOver(actor, studyId, userId).map(presentPerson));
   });
 
   return router;

@@ -32,6 +32,16 @@ export function studyRoutes({ studies }: { readonly studies: StudyService }): Ro
     response.json(presentStudy(await studies.change(actor, studyId, change)));
   });
 
+  router.post("/studies/:studyId/put-away", (request, response) => {
+    studies.putAway(signedIn(response), place(request.params, "studyId"), true);
+    response.status(204).end();
+  });
+
+  router.delete("/studies/:studyId/put-away", (request, response) => {
+    studies.putAway(signedIn(response), place(request.params, "studyId"), false);
+    response.status(204).end();
+  });
+
   router.delete("/studies/:studyId", (request, response) => {
     const actor = signedIn(response);
     studies.delete(actor, place(request.params, "studyId"));

@@ -1,11 +1,10 @@
 import { betterAuth } from "better-auth";
 import { drizzleAdapter } from "better-auth/adapters/drizzle";
+import { LONGEST_PASSPHRASE, SHORTEST_PASSPHRASE } from "../../shared/schemas/accounts.ts";
 import type { Database } from "../db/client.ts";
 import { findAccountByEmail } from "../db/queries/accounts.ts";
 import * as schema from "../db/schema/auth.ts";
-
-export const SHORTEST_PASSPHRASE = 10;
-export const LONGEST_PASSPHRASE = 128;
+import type { AccountEvents } from "./account-events.ts";
 
 interface Settings {
   readonly db: Database;
@@ -14,10 +13,15 @@ interface Settings {
   /** Cookies only over TLS. */
   readonly secure: boolean;
   readonly secret: string;
+  readonly events: Pick<AccountEvents, "resetAsked" | "passphraseReset">;
+  /** Told of every session that ends before its time, by whatever it was ended. */
+  readonly sessionEnded: (sessionId: string) => void;
 }
 
+const HOUR = 3600;
+
 /** Accounts, passphrases (scrypt, which is hard in memory) and sessions, by the package that keeps them. */
-export function createAuthentication({ db, url, trustedOrigins, secure, secret }: Settings) {
+export function createAuthentication({ db, url, trustedOrigins, secure, secret, ...told }: Settings) {
   return betterAuth({
     appName: "Tangency",
     baseURL: url,
@@ -27,11 +31,19 @@ export function createAuthentication({ db, url, trustedOrigins, secure, secret }
     database: drizzleAdapter(db, { provider: "sqlite", schema }),
     emailAndPassword: {
       enabled: true,
-      autoSignIn: true,
+      // Accounts are made by `services/accounts.ts`, once their address is known to be theirs.
+      disableSignUp: true,
+      resetPasswordTokenExpiresIn: HOUR,
+      revokeSessionsOnPasswordReset: true,
+      sendResetPassword: async ({ user, token }) => told.events.resetAsked(user, token),
+      onPasswordReset: async ({ user }) => told.events.passphraseReset(user),
       minPasswordLength: SHORTEST_PASSPHRASE,
       maxPasswordLength: LONGEST_PASSPHRASE,
     },
-    session: { expiresIn: 30 * 24 * 3600, updateAge: 24 * 3600 },
+    // Of a link that was sent, its hash is kept.
+    verification: { storeIdentifier: "hashed" },
+    session: { expiresIn: 30 * 24 * HOUR, updateAge: 24 * HOUR },
+    databaseHooks: { session: { delete: { after: async ({ id }) => told.sessionEnded(id) } } },
     // The routes count requests themselves, by address and by account.
     rateLimit: { enabled: false },
     // It would write e-mail addresses into the log.

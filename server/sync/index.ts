@@ -28,7 +28,7 @@ export interface SyncServerNeeds extends Door {
 
 const REASONS = {
   removed: new SyncRefused(CLOSE.noRight, "You are no longer in this study."),
-  "signed out": new SyncRefused(CLOSE.notSignedIn, "You have signed out."),
+  "session ended": new SyncRefused(CLOSE.notSignedIn, "Your session has ended."),
   "role changed": new SyncRefused(CLOSE.roleChanged, "Your role in this study has changed."),
 } as const;
 
@@ -78,6 +78,7 @@ export function createSyncServer(needs: SyncServerNeeds) {
       else connection.expel(new SyncRefused(CLOSE.malformed, "Messages are binary."));
     });
     const end = person.expiresAt === undefined ? undefined : expireAt(person.expiresAt, connection);
+    if (person.sessionId !== undefined) sessions.set(connection, person.sessionId);
     ws.on("close", () => {
       clearTimeout(end);
       connection.gone();
@@ -101,15 +102,24 @@ export function createSyncServer(needs: SyncServerNeeds) {
 
     /**
      * Closes the person's sockets at once, in one study (removed from it, or in another role from now on) or in all
-     * (signed out). Nothing more is taken from them.
+     * (no longer anyone here). Nothing more is taken from them.
      */
     closePerson(userId: string, studyId?: string): void {
       for (const room of rooms.all()) {
         if (studyId !== undefined && room.studyId !== studyId) continue;
         for (const connection of [...room.connections]) {
           if (connection.person.id !== userId) continue;
-          if (studyId === undefined) connection.expel(REASONS["signed out"]);
+          if (studyId === undefined) connection.expel(REASONS["session ended"]);
           else connection.expel(REASONS[needs.roleOf(userId, studyId) ? "role changed" : "removed"]);
+        }
+      }
+    },
+
+    /** Closes the sockets of a session that has ended, in every study. */
+    closeSession(sessionId: string): void {
+      for (const room of rooms.all()) {
+        for (const connection of [...room.connections]) {
+          if (sessions.get(connection) === sessionId) connection.expel(REASONS["session ended"]);
         }
       }
     },
@@ -128,6 +138,9 @@ export function createSyncServer(needs: SyncServerNeeds) {
 }
 
 const alive = new WeakMap<WebSocket, boolean>();
+
+/** By which session each connection was let in. */
+const sessions = new WeakMap<Connection, string>();
 
 /** Finds the dead sockets, and keeps the living ones' watch from running out. */
 function beat(rooms: Rooms, sockets: WebSocketServer): void {

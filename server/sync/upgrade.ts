@@ -9,6 +9,8 @@ import { closeReason, SyncRefused } from "./refused.ts";
 export interface SignedIn {
   readonly id: string;
   readonly name: string;
+  /** The session this socket rests on, to end with it. */
+  readonly sessionId?: string;
   /** When the session ends; the socket ends with it. */
   readonly expiresAt?: Date;
 }

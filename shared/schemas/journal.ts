@@ -68,3 +68,6 @@ export const journalPage = z.strictObject({
   next: count.optional(),
 });
 export type JournalPage = z.infer<typeof journalPage>;
+
+/** The query: only what is older than this entry. */
+export const journalFrom = z.object({ before: z.coerce.number().int().positive().optional() });

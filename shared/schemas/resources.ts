@@ -6,13 +6,21 @@ export const ROLES = ["owner", "coauthor", "reader"] as const;
 export const role = z.enum(ROLES);
 export type Role = z.infer<typeof role>;
 
-export const account = z.strictObject({ id: identifier, name: z.string(), email: z.email() });
+export const account = z.strictObject({
+  id: identifier,
+  name: z.string(),
+  email: z.email(),
+  /** Administers the installation. */
+  isAdministrator: z.boolean().optional(),
+});
 export type Account = z.infer<typeof account>;
 
 /** GET /api/installation: what the door says before anyone has signed in. */
 export const installation = z.strictObject({
   name: z.string(),
   version: z.string(),
+  /** Where messages go: out by a mail server, or into the local post box. */
+  mail: z.enum(["mail server", "post box"]).optional(),
   demo: z.array(z.strictObject({ email: z.string(), passphrase: z.string(), role: z.string() })),
 });
 export type Installation = z.infer<typeof installation>;
@@ -34,11 +42,13 @@ export const studySummary = z.strictObject({
   changedAt: instant,
   cells: z.array(z.strictObject({ name: z.string(), state: z.string(), reads: z.array(z.string()) })),
   sealedAt: instant.optional(),
+  /** Put away by whoever looks. */
+  isPutAway: z.boolean().optional(),
 });
 export type StudySummary = z.infer<typeof studySummary>;
 
-export const newPerson = z.strictObject({ email: z.email(), role });
 export const changedPerson = z.strictObject({ role });
+export const handedOver = z.strictObject({ userId: identifier });
 
 export const uploadColumn = z.strictObject({
   name: z.string(),

@@ -2,11 +2,14 @@ import { createServer } from "node:http";
 import type { AddressInfo } from "node:net";
 import { createApp } from "../../server/app.ts";
 import type { Limits } from "../../server/config.ts";
-import { openDatabase } from "../../server/db/client.ts";
+import { type Database, openDatabase } from "../../server/db/client.ts";
 import { createLogger } from "../../server/http/log.ts";
 import { localPostBox } from "../../server/mail/post-box.ts";
-import { createAuthentication } from "../../server/services/authentication.ts";
+import { createAccess } from "../../server/services/access.ts";
+import { createAccountEvents } from "../../server/services/account-events.ts";
+import { type Authentication, createAuthentication, ensureAccount } from "../../server/services/authentication.ts";
 import { createServices } from "../../server/services/index.ts";
+import { createJournalService } from "../../server/services/journal.ts";
 import { createMailService } from "../../server/services/mail.ts";
 import { FakeCells, FakeParser, FakeSockets } from "./fakes.ts";
 import { temporaryFolder } from "./temporary.ts";
@@ -14,6 +17,8 @@ import { temporaryFolder } from "./temporary.ts";
 export const PASSPHRASE = "a curve and a line";
 
 interface Options {
+  /** Addresses. */
+  readonly administrators?: readonly string[];
   readonly limits?: Partial<Limits>;
   readonly secure?: boolean;
   readonly log?: NodeJS.WritableStream;
@@ -35,22 +40,12 @@ export interface Answer {
 }
 
 /** The real application over a database of its own, listening; cells, worker and sockets are fakes. */
-export async function startApplication({ limits, secure = false, log }: Options = {}) {
+export async function startApplication({ administrators = [], limits, secure = false, log }: Options = {}) {
   const folder = temporaryFolder();
   const open = openDatabase(`${folder.path}/test.sqlite`);
   const server = createServer();
   await new Promise<void>((ready) => server.listen(0, "127.0.0.1", ready));
   const origin = `http://127.0.0.1:${(server.address() as AddressInfo).port}`;
-  const auth = createAuthentication({
-    db: open.db,
-    url: origin,
-    trustedOrigins: [origin],
-    secure,
-    secret: "x".repeat(40),
-  });
-  const cells = new FakeCells();
-  const sockets = new FakeSockets();
-  const parser = new FakeParser(open);
   const mail = createMailService({
     db: open.db,
     mailer: localPostBox,
@@ -59,14 +54,34 @@ export async function startApplication({ limits, secure = false, log }: Options 
       throw error;
     },
   });
+  const journal = createJournalService({ db: open.db, access: createAccess(open.db) });
+  const accountEvents = createAccountEvents({ db: open.db, mail, record: journal.record, url: origin });
+  const sockets = new FakeSockets();
+  const auth = createAuthentication({
+    db: open.db,
+    url: origin,
+    trustedOrigins: [origin],
+    secure,
+    secret: "x".repeat(40),
+    events: accountEvents,
+    sessionEnded: sockets.closeSession,
+  });
+  const cells = new FakeCells();
+  const parser = new FakeParser(open);
   const services = createServices({
     db: open.db,
+    auth,
+    accountEvents,
     mail,
+    journal,
+    url: origin,
+    administrators: () => administrators,
     cells,
     sourcesOf: cells.sourcesOf,
     closePerson: sockets.closePerson,
     remarksChanged: sockets.remarksChanged,
     parseUpload: parser.parse,
+    lookAtRows: parser.look,
     program: "Tangency test",
   });
   const app = createApp({
@@ -99,8 +114,14 @@ export async function startApplication({ limits, secure = false, log }: Options 
     sockets,
     parser,
     stranger: visitor(origin),
-    person: (name: string) => newPerson(origin, name),
+    mail,
+    journal,
+    /** Someone with an account, signed in. */
+    person: (name: string) => newPerson({ origin, auth, db: open.db }, name),
+    /** With a cookie of their own, or with none. */
+    visitor: (about?: Pick<Visitor, "id" | "name" | "email">, cookie?: string) => visitor(origin, about, cookie),
     async close() {
+      await mail.close();
       server.closeAllConnections();
       await new Promise((closed) => server.close(closed));
       open.close();
@@ -137,11 +158,12 @@ async function ask(address: string, init: RequestInit): Promise<Answer> {
   return { status: response.status, body: json ? JSON.parse(text) : text, headers: response.headers };
 }
 
-async function newPerson(origin: string, name: string): Promise<Visitor> {
+async function newPerson(on: { origin: string; auth: Authentication; db: Database }, name: string): Promise<Visitor> {
   const email = `${name.toLowerCase().replace(/\W+/g, ".")}@vihe.example`;
-  const answer = await visitor(origin).ask("POST", "/api/auth/sign-up/email", { name, email, password: PASSPHRASE });
+  const id = await ensureAccount(on.auth, on.db, { name, email, passphrase: PASSPHRASE });
+  const answer = await visitor(on.origin).ask("POST", "/api/auth/sign-in/email", { email, password: PASSPHRASE });
   if (answer.status !== 200) throw new Error(`no account for ${name}: ${JSON.stringify(answer.body)}`);
-  return visitor(origin, { id: answer.body.user.id, name, email }, cookieOf(answer));
+  return visitor(on.origin, { id, name, email }, cookieOf(answer));
 }
 
 export function cookieOf(answer: Answer): string {

@@ -1,9 +1,11 @@
-import { randomUUID } from "node:crypto";
+import { createHash, randomUUID } from "node:crypto";
 import type { OpenDatabase } from "../../server/db/client.ts";
 import { uploadColumns } from "../../server/db/schema/uploads.ts";
 import { Refusal } from "../../server/engine/refusal.ts";
+import type { LookJob } from "../../server/jobs/job.ts";
 import type { Cells, ParsedUpload, StoredFinding } from "../../server/services/ports.ts";
 import type { Finding } from "../../shared/schemas/cell.ts";
+import type { RowsPage } from "../../shared/schemas/rows.ts";
 import type { CellStatus, StudyStatus } from "../../shared/schemas/status.ts";
 import type { CellSource } from "../../shared/study/cell-source.ts";
 
@@ -59,6 +61,14 @@ export class FakeCells implements Cells {
     this.calls.push(`removed ${studyId}`);
   }
 
+  /** A question of a data cell that means nothing, where the study has such a cell. */
+  dataOf(studyId: string, cellId: string) {
+    const found = this.#cellsOf(studyId).find(({ status }) => status.cellId === cellId);
+    if (found?.status.kind !== "data") return undefined;
+    const specification = { kind: "data" as const, upload: "weeks.csv", goods: {}, normalise: "mean" as const };
+    return { fingerprint: found.status.fingerprint ?? "", specification, uploadId: "weeks" };
+  }
+
   finding(studyId: string, fingerprint: string): StoredFinding | undefined {
     const found = this.#cellsOf(studyId).find(({ status }) => status.fingerprint === fingerprint)?.finding;
     return found === undefined ? undefined : { finding: found, foundAt: new Date(0), tookMs: 12 };
@@ -78,6 +88,7 @@ export class FakeSockets {
   readonly remarked: string[] = [];
   readonly closePerson = (userId: string, studyId = "everywhere"): void =>
     void this.closed.push(`${userId} ${studyId}`);
+  readonly closeSession = (sessionId: string): void => void this.closed.push(`session ${sessionId}`);
   readonly remarksChanged = (studyId: string): void => void this.remarked.push(studyId);
 }
 
@@ -90,7 +101,16 @@ export class FakeParser {
     this.#open = open;
   }
 
-  readonly parse = async (uploadId: string): Promise<ParsedUpload> => {
+  /** What was asked to be looked at. */
+  readonly looked: LookJob[] = [];
+
+  readonly look = async (look: LookJob): Promise<RowsPage> => {
+    this.looked.push(look);
+    return { total: 1, from: 0, columns: [{ name: "p1", type: "number" }], rows: [{ row: 1, cells: [2] }] };
+  };
+
+  /** Files are told apart by what is stored of them, as the worker tells them apart. */
+  readonly parse = async (uploadId: string, _signal?: AbortSignal, sheet?: string): Promise<ParsedUpload> => {
     if (this.refuse !== undefined) throw new Refusal([{ sentence: this.refuse, row: 3, column: "p1" }]);
     const description = JSON.stringify({ name: "p1", type: "number", missing: 0, distinct: 2 });
     this.#open.db
@@ -105,6 +125,15 @@ export class FakeParser {
         values: Buffer.alloc(16),
       })
       .run();
-    return { rows: 2, sha256: "0".repeat(64), separator: ",", decimalComma: false };
+    const { sqlite } = this.#open;
+    const stored = sqlite.prepare("SELECT name, sha256 FROM uploads WHERE id = ?").get(uploadId) as Record<
+      string,
+      string
+    >;
+    const sha256 = createHash("sha256").update(`${stored.sha256} ${sheet}`).digest("hex");
+    if (stored.name.endsWith(".xlsx")) {
+      return { rows: 2, sha256, format: "xlsx", sheet: sheet ?? "Rows", sheets: ["Rows", "Codes"] };
+    }
+    return { rows: 2, sha256, format: "csv", separator: ",", decimalComma: false };
   };
 }

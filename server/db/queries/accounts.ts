@@ -1,11 +1,39 @@
-import { and, count, eq, inArray } from "drizzle-orm";
+import { and, asc, count, desc, eq, inArray } from "drizzle-orm";
 import type { Database } from "../client.ts";
-import { account, session, user } from "../schema/auth.ts";
+import { account, session, user, verification } from "../schema/auth.ts";
+import { studyMembers } from "../schema/studies.ts";
 
 export type AccountRow = typeof user.$inferSelect;
 
 export function findAccountByEmail(db: Database, email: string): AccountRow | undefined {
   return db.select().from(user).where(eq(user.email, email.toLowerCase())).get();
+}
+
+export function findAccount(db: Database, userId: string): AccountRow | undefined {
+  return db.select().from(user).where(eq(user.id, userId)).get();
+}
+
+export function changeAccount(
+  db: Database,
+  userId: string,
+  change: Partial<Pick<AccountRow, "name" | "email" | "emailVerified">>,
+): void {
+  db.update(user)
+    .set({ ...change, updatedAt: new Date() })
+    .where(eq(user.id, userId))
+    .run();
+}
+
+/** Every account with how many studies it is in, the newest first. */
+export function listAccounts(db: Database, most: number): { account: AccountRow; studies: number }[] {
+  return db
+    .select({ account: user, studies: count(studyMembers.studyId) })
+    .from(user)
+    .leftJoin(studyMembers, eq(studyMembers.userId, user.id))
+    .groupBy(user.id)
+    .orderBy(desc(user.createdAt), asc(user.name))
+    .limit(most)
+    .all();
 }
 
 export function countAccounts(db: Database): number {
@@ -21,6 +49,11 @@ export function hasPassphrase(db: Database, email: string): boolean {
     .where(and(eq(user.email, email), eq(account.providerId, "credential")))
     .get();
   return found !== undefined;
+}
+
+/** Links by which the account's passphrase could still be set anew: their value is its id. */
+export function dropResetLinks(db: Database, userId: string): void {
+  db.delete(verification).where(eq(verification.value, userId)).run();
 }
 
 /** Takes the passphrases and open sessions of these addresses away; the accounts and their studies stay. */

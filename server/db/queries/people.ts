@@ -1,8 +1,8 @@
-import { and, asc, eq } from "drizzle-orm";
+import { and, asc, eq, isNotNull, isNull, type SQL } from "drizzle-orm";
 import type { Role } from "../../../shared/schemas/resources.ts";
 import type { Database } from "../client.ts";
 import { user } from "../schema/auth.ts";
-import { studyMembers } from "../schema/studies.ts";
+import { studies, studyMembers } from "../schema/studies.ts";
 
 export interface PersonRow {
   readonly id: string;
@@ -24,11 +24,22 @@ export function peopleOf(db: Database, studyId: string): PersonRow[] {
     .all();
 }
 
+/** In a study that is there. */
 export function roleIn(db: Database, studyId: string, userId: string): Role | undefined {
+  return roleWhere(db, studyId, userId, isNull(studies.deletedAt));
+}
+
+/** In a study that is deleted and not yet purged. */
+export function roleInDeleted(db: Database, studyId: string, userId: string): Role | undefined {
+  return roleWhere(db, studyId, userId, isNotNull(studies.deletedAt));
+}
+
+function roleWhere(db: Database, studyId: string, userId: string, standing: SQL): Role | undefined {
   return db
     .select({ role: studyMembers.role })
     .from(studyMembers)
-    .where(and(eq(studyMembers.studyId, studyId), eq(studyMembers.userId, userId)))
+    .innerJoin(studies, eq(studies.id, studyMembers.studyId))
+    .where(and(eq(studyMembers.studyId, studyId), eq(studyMembers.userId, userId), standing))
     .get()?.role;
 }
 
@@ -39,6 +50,14 @@ export function insertPerson(db: Database, studyId: string, userId: string, role
 export function changeRole(db: Database, studyId: string, userId: string, role: Role): void {
   db.update(studyMembers)
     .set({ role })
+    .where(and(eq(studyMembers.studyId, studyId), eq(studyMembers.userId, userId)))
+    .run();
+}
+
+/** From this person's list only; null brings it back into it. */
+export function putAway(db: Database, studyId: string, userId: string, putAwayAt: Date | null): void {
+  db.update(studyMembers)
+    .set({ putAwayAt })
     .where(and(eq(studyMembers.studyId, studyId), eq(studyMembers.userId, userId)))
     .run();
 }

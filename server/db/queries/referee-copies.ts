@@ -2,6 +2,7 @@ import { and, desc, eq, isNull } from "drizzle-orm";
 import type { Database } from "../client.ts";
 import { user } from "../schema/auth.ts";
 import { refereeCopies } from "../schema/referee-copies.ts";
+import { studies } from "../schema/studies.ts";
 
 export type RefereeCopyRow = typeof refereeCopies.$inferSelect;
 export type RefereeCopySummaryRow = Omit<RefereeCopyRow, "content" | "tokenHash"> & { sealedByName: string | null };
@@ -43,7 +44,7 @@ export function findRefereeCopy(db: Database, studyId: string, copyId: string): 
     .get();
 }
 
-/** Only a copy that is not revoked: one query, whether the token is wrong or its copy revoked. */
+/** Only a copy that is not revoked, of a study that is not deleted: one query, whether the token is wrong or its copy revoked. */
 export function openRefereeCopy(
   db: Database,
   tokenHash: string,
@@ -51,7 +52,8 @@ export function openRefereeCopy(
   return db
     .select({ id: refereeCopies.id, fingerprint: refereeCopies.fingerprint, content: refereeCopies.content })
     .from(refereeCopies)
-    .where(and(eq(refereeCopies.tokenHash, tokenHash), isNull(refereeCopies.revokedAt)))
+    .innerJoin(studies, eq(studies.id, refereeCopies.studyId))
+    .where(and(eq(refereeCopies.tokenHash, tokenHash), isNull(refereeCopies.revokedAt), isNull(studies.deletedAt)))
     .get();
 }
 
