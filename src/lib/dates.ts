@@ -21,6 +21,23 @@ export function whenInWords(instant: string | number | Date, now = new Date()): 
   return calendarDate(then, now);
 }
 
+/** A clock time, whatever the day: "14:08". */
+export const clockTime = (instant: string | number | Date): string => clock(new Date(instant));
+
+/** A day: "Today", "Yesterday", "Tuesday", "9 March". */
+export function dayInWords(instant: string | number | Date, now = new Date()): string {
+  const then = new Date(instant);
+  const days = daysBetween(then, now);
+  if (days <= 0) return "Today";
+  return days === 1 ? "Yesterday" : whenInWords(then, now);
+}
+
+/** A moment of any day, to the minute: "14:08", "Tuesday 14:08", "9 March 14:08". */
+export function momentInWords(instant: string | number | Date, now = new Date()): string {
+  const then = new Date(instant);
+  return daysBetween(then, now) <= 0 ? clock(then) : `${whenInWords(then, now)} ${clock(then)}`;
+}
+
 /** How long ago a change was: "2 minutes ago", "at 9:05", "yesterday", "on Tuesday", "on 4 March". */
 export function agoInWords(instant: string | number | Date, now = new Date()): string {
   const then = new Date(instant);

@@ -67,17 +67,21 @@ export function removeCell(doc: Y.Doc, cellId: string): void {
 export function returnToCells(doc: Y.Doc, wanted: readonly CellSource[]): void {
   const stay = new Set(wanted.map(({ id }) => id));
   for (const id of [...cellsOf(doc).keys()]) if (!stay.has(id)) removeCell(doc, id);
-  for (const { id, name, kind, order, source } of wanted) {
-    const entry = entryOf(doc, id) ?? new Y.Map<unknown>();
-    if (entry.doc === null) {
-      entry.set("source", new Y.Text(source));
-      cellsOf(doc).set(id, entry);
-    }
-    for (const [key, value] of Object.entries({ name, kind, order })) {
-      if (entry.get(key) !== value) entry.set(key, value);
-    }
-    replaceSource(doc, id, source);
+  for (const cell of wanted) restoreCell(doc, cell);
+}
+
+/** Makes a cell what it was, under its id. */
+export function restoreCell(doc: Y.Doc, { id, name, kind, order, source }: CellSource): void {
+  if (entryOf(doc, id) === undefined) {
+    const entry = new Y.Map<unknown>();
+    entry.set("source", new Y.Text(source));
+    cellsOf(doc).set(id, entry);
   }
+  const entry = entryOf(doc, id);
+  for (const [key, value] of Object.entries({ name, kind, order })) {
+    if (entry?.get(key) !== value) entry?.set(key, value);
+  }
+  replaceSource(doc, id, source);
 }
 
 /** Turns a text into another, touching only what differs, so that others' edits elsewhere in it stay. */

@@ -3,7 +3,15 @@ import { listWords } from "../../shared/study/words.ts";
 import { cellsOf } from "./cells.ts";
 
 /** What a person did, as *Undone: …* goes on. */
-export type Doing = "adding" | "removing" | "renaming" | "moving" | "changing" | "typing in" | "returning to";
+export type Doing =
+  | "adding"
+  | "removing"
+  | "renaming"
+  | "moving"
+  | "changing"
+  | "typing in"
+  | "bringing back"
+  | "returning to";
 
 /** What undoing or redoing came to. */
 export interface Undone {

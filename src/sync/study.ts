@@ -11,6 +11,7 @@ import {
   removeCell,
   renameCell,
   replaceSource,
+  restoreCell,
   returnToCells,
   sourceOf,
 } from "./cells.ts";
@@ -120,6 +121,14 @@ export class StudyConnection {
   /** Turns the study into a state it was in, as one step; cells keep their ids. `name` is what the state is called. */
   returnTo(cells: readonly CellSource[], name: string): void {
     this.#change("returning to", () => returnToCells(this.doc, cells), name);
+  }
+
+  /** Gives a cell the source it had; one that is gone comes back whole, under its id. */
+  bringBack(cell: CellSource): void {
+    this.#change("bringing back", () => {
+      if (this.sourceOf(cell.id) === undefined) restoreCell(this.doc, cell);
+      else replaceSource(this.doc, cell.id, cell.source);
+    });
   }
 
   /** Undoes this person's last step, in the whole study or in one cell, and says so. */

@@ -64,7 +64,6 @@ export function Ledger(props: LedgerProps) {
     swap: () => focusedCell && source.swap(focusedCell),
     remark: () => focused !== undefined && beginRemark(focused),
     leave: () => focused !== undefined && focusBand(focused),
-    undo: () => connection.undo.undo(),
   });
   const remove = (cell: CellSource, place: number) => {
     actions.remove(cell.id);

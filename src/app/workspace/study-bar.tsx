@@ -1,15 +1,17 @@
 import { useMemo } from "react";
 import { useNavigate } from "react-router-dom";
-import { Button } from "../../components/button.tsx";
+import { Button, LinkButton } from "../../components/button.tsx";
 import { Menu } from "../../components/menu.tsx";
 import { type Crumb, TopBar } from "../../components/top-bar.tsx";
 import { PeoplePresent } from "../../features/presence/people-present.tsx";
 import { presentPeople } from "../../features/presence/present.ts";
 import { SavedState } from "../../features/presence/saved-state.tsx";
+import { UndoneWords } from "../../features/presence/undone-words.tsx";
 import { pages } from "../../lib/paths.ts";
 import { useStudyPart } from "../../sync/index.ts";
 import { useLeave } from "../use-leave.ts";
 import type { OpenStudy } from "./open-study.ts";
+import { useUndoKeys } from "./use-undo-keys.ts";
 
 export type StudyDialog = "people" | "uploads" | "remarks" | "referee copies" | "settings" | "delete";
 
@@ -25,14 +27,19 @@ export function StudyBar({ study, me, connection, readOnly, crumbs, onDialog, ch
   const leave = useLeave(me.id);
   const cells = useStudyPart(connection, "cells");
   const present = usePresent(connection);
+  useUndoKeys(connection);
   const isOwner = study.role === "owner";
   const entry = (key: StudyDialog, words: string) => ({ key, words, onSelect: () => onDialog(key) });
   return (
     <TopBar home={pages.studies} crumbs={crumbs} narrowName={study.title}>
       <PeoplePresent people={present} nameOfCell={(id) => cells.find((cell) => cell.id === id)?.name} />
+      <UndoneWords study={connection} />
       <span className="mx-3">
         <SavedState study={connection} changedAt={study.changedAt} />
       </span>
+      <LinkButton className="wide-only" to={pages.history(study.id)}>
+        Checkpoints
+      </LinkButton>
       {isOwner && (
         <Button className="wide-only" onClick={() => onDialog("referee copies")}>
           Seal a referee copy
@@ -47,6 +54,11 @@ export function StudyBar({ study, me, connection, readOnly, crumbs, onDialog, ch
             entry("people", "People"),
             entry("uploads", "Uploads"),
             entry("remarks", "Remarks"),
+            {
+              key: "history",
+              words: "History and checkpoints",
+              onSelect: () => void navigate(pages.history(study.id)),
+            },
             ...(isOwner ? [entry("referee copies", "Referee copies")] : []),
           ],
           [entry("settings", "Settings"), { key: "leave", words: "Sign out", onSelect: leave }],

@@ -9,7 +9,6 @@ interface BandKeys {
   readonly remark: () => void;
   /** From a field back to its band. */
   readonly leave: () => void;
-  readonly undo: () => void;
 }
 
 const isField = (target: EventTarget | null) =>
@@ -26,10 +25,6 @@ export function useBandKeys(keys: BandKeys): void {
       if (event.defaultPrevented || isTaken(event.target)) return;
       if (event.key === "Escape") return keys.leave();
       if (isField(event.target)) return;
-      if ((event.ctrlKey || event.metaKey) && !event.shiftKey && event.key.toLowerCase() === "z") {
-        event.preventDefault();
-        return keys.undo();
-      }
       if (event.ctrlKey || event.metaKey || event.altKey) return;
       if (event.key === "Enter" && event.target instanceof HTMLElement && event.target.matches("section.band")) {
         return keys.open();
