@@ -2,7 +2,9 @@ import type { MessagePort } from "node:worker_threads";
 import type { CellSpecification } from "../../shared/schemas/cell.ts";
 import type { DataSpecification } from "../../shared/schemas/data.ts";
 import type { Problem } from "../../shared/schemas/problem.ts";
+import type { RowsAsked } from "../../shared/schemas/rows.ts";
 import type { SystemSpecification } from "../../shared/schemas/system.ts";
+import type { FileFormat } from "../engine/columns/file-format.ts";
 import type { RunControl } from "../engine/run.ts";
 
 /** A cell to compute: its question, and what it rests on. Plain data, so that it crosses threads. */
@@ -16,6 +18,8 @@ export interface CellJob {
     readonly fingerprint: string;
     readonly specification: DataSpecification;
     readonly uploadId: string;
+    /** Kept beside the finding, to say later that another file took its place. */
+    readonly uploadSha256?: string;
   };
   /** Where the system's finding is stored and what was asked of it, for what rests on one. */
   readonly systemFingerprint?: string;
@@ -33,13 +37,22 @@ export interface CellResult {
 export interface ParsedUploadResult {
   readonly rows: number;
   readonly sha256: string;
-  readonly separator: string;
-  readonly decimalComma: boolean;
+  readonly format: FileFormat;
+  readonly separator?: string;
+  readonly decimalComma?: boolean;
+  readonly sheet?: string;
+  readonly sheets?: readonly string[];
 }
+
+/** Rows to be looked at: of an upload as it stands, or those that something found of a data cell is about. */
+export type LookJob =
+  | { readonly of: "upload"; readonly uploadId: string; readonly asked: RowsAsked }
+  | { readonly of: "cell"; readonly data: CellJob["data"]; readonly about: string; readonly asked: RowsAsked };
 
 export type Task =
   | { readonly kind: "cell"; readonly job: CellJob }
-  | { readonly kind: "parse upload"; readonly uploadId: string };
+  | { readonly kind: "parse upload"; readonly uploadId: string; readonly sheet?: string }
+  | { readonly kind: "look"; readonly look: LookJob };
 
 /** What a task is sent with: how to stop it, and where it reports. */
 export interface Sent {

@@ -2,10 +2,12 @@ import { availableParallelism } from "node:os";
 import { MessageChannel } from "node:worker_threads";
 import { Piscina } from "piscina";
 import type { CellSpecification } from "../../shared/schemas/cell.ts";
+import type { RowsPage } from "../../shared/schemas/rows.ts";
 import { Cancelled } from "../engine/run.ts";
 import type {
   CellJob,
   CellResult,
+  LookJob,
   Outcome,
   ParsedUploadResult,
   ProgressNow,
@@ -23,7 +25,10 @@ export interface JobPool {
     uploadId: string,
     onProgress: (now: ProgressNow) => void,
     signal: AbortSignal,
+    sheet?: string,
   ): Promise<ParsedUploadResult>;
+  /** A page of rows, on a thread beside the estimations. */
+  look(look: LookJob, signal: AbortSignal): Promise<RowsPage>;
   /** Cancels what runs and waits until every thread has ended. */
   close(): Promise<void>;
 }
@@ -58,6 +63,7 @@ export function createPool({
   /** A thread that has just computed the rows beneath a cell still has them, so `aside` is for when none is free. */
   function poolFor(task: Task): Piscina {
     if (task.kind === "parse upload") return uploads;
+    if (task.kind === "look") return aside;
     return inCells >= threads && !LONG.has(task.job.specification.kind) ? aside : cells;
   }
 
@@ -96,8 +102,9 @@ export function createPool({
 
   return {
     runCell: (job, onProgress, signal) => send<CellResult>({ kind: "cell", job }, onProgress, signal),
-    parseUpload: (uploadId, onProgress, signal) =>
-      send<ParsedUploadResult>({ kind: "parse upload", uploadId }, onProgress, signal),
+    parseUpload: (uploadId, onProgress, signal, sheet) =>
+      send<ParsedUploadResult>({ kind: "parse upload", uploadId, ...(sheet && { sheet }) }, onProgress, signal),
+    look: (look, signal) => send<RowsPage>({ kind: "look", look }, () => {}, signal),
     async close() {
       for (const stopper of running) stopper.abort();
       await Promise.all([cells, uploads, aside].map((pool) => pool.destroy()));

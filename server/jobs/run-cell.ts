@@ -42,15 +42,25 @@ function find(job: CellJob, db: Database, memory: WorkerMemory, control: RunCont
   return runSlutsky(specification, system, data, control);
 }
 
-function prepared({ data }: CellJob, db: Database, memory: WorkerMemory, control: RunControl): PreparedData {
+export function prepared(
+  { data }: Pick<CellJob, "data">,
+  db: Database,
+  memory: WorkerMemory,
+  control: RunControl,
+): PreparedData {
   const known = memory.prepared.get(data.fingerprint);
   if (known) return known;
-  const table = memory.tables.get(data.uploadId) ?? loadTable(db, data.uploadId);
-  memory.tables.set(data.uploadId, table, bytesOf(table));
+  const table = tableOf(data.uploadId, db, memory);
   const fresh = runData(data.specification, table, control);
   const columns = 2 * fresh.goods.length + fresh.numeric.size + (fresh.labelled?.size ?? 0) / 2 + 3;
   memory.prepared.set(data.fingerprint, fresh, 8 * fresh.rows * columns);
   return fresh;
+}
+
+export function tableOf(uploadId: string, db: Database, memory: WorkerMemory): UploadTable {
+  const table = memory.tables.get(uploadId) ?? loadTable(db, uploadId);
+  memory.tables.set(uploadId, table, bytesOf(table));
+  return table;
 }
 
 function storedSystem({ studyId, systemFingerprint }: CellJob, db: Database): SystemFinding {

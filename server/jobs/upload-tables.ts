@@ -1,41 +1,35 @@
-import { and, asc, eq } from "drizzle-orm";
+import { asc, eq } from "drizzle-orm";
 import type { Database } from "../db/client.ts";
-import { uploadChunks, uploadColumns, uploads } from "../db/schema/uploads.ts";
+import { uploadColumns, uploads } from "../db/schema/uploads.ts";
 import type { UploadTable } from "../engine/columns/prepared-data.ts";
-import { type ReadCsv, readCsv } from "../engine/columns/read-csv.ts";
+import { type ReadTable, readTable } from "../engine/columns/read-table.ts";
 import { Refusal } from "../engine/refusal.ts";
 import type { RunControl } from "../engine/run.ts";
-import type { ParsedUploadResult } from "./job.ts";
+import type { ParsedUploadResult, Task } from "./job.ts";
 import { loadColumn, storeColumn } from "./stored-columns.ts";
-
-/** The stored bytes of an upload, a piece at a time. */
-async function* piecesOf(db: Database, uploadId: string): AsyncGenerator<Uint8Array> {
-  for (let position = 0; ; position++) {
-    const piece = db
-      .select({ bytes: uploadChunks.bytes })
-      .from(uploadChunks)
-      .where(and(eq(uploadChunks.uploadId, uploadId), eq(uploadChunks.position, position)))
-      .get();
-    if (!piece) return;
-    yield piece.bytes;
-  }
-}
+import { uploadedFile } from "./uploaded-file.ts";
 
 /** Reads a stored file into its columns and keeps them, all or none. Errors: `Refusal`, `Cancelled`. */
 export async function parseStoredUpload(
   db: Database,
-  uploadId: string,
+  { uploadId, sheet }: Pick<Extract<Task, { kind: "parse upload" }>, "uploadId" | "sheet">,
   control: RunControl,
 ): Promise<ParsedUploadResult> {
-  const upload = db.select({ name: uploads.name }).from(uploads).where(eq(uploads.id, uploadId)).get();
+  const where = eq(uploads.id, uploadId);
+  const upload = db
+    .select({ name: uploads.name, fileName: uploads.fileName, bytes: uploads.bytes })
+    .from(uploads)
+    .where(where)
+    .get();
   if (!upload) throw new Refusal("The upload was removed before it was read.");
-  const parsed = await readCsv(piecesOf(db, uploadId), upload.name, control);
-  saveColumns(db, uploadId, parsed);
-  const { table, separator, decimalComma } = parsed;
-  return { rows: table.rows, sha256: table.sha256, separator, decimalComma };
+  const file = uploadedFile(db, uploadId, upload.bytes);
+  const read = await readTable(file, upload.fileName ?? upload.name, { sheet, control });
+  saveColumns(db, uploadId, read);
+  const { table, format, csv, workbook } = read;
+  return { rows: table.rows, sha256: table.sha256, format, ...csv, ...workbook };
 }
 
-function saveColumns(db: Database, uploadId: string, { table, columns }: ReadCsv): void {
+function saveColumns(db: Database, uploadId: string, { table, columns }: ReadTable): void {
   db.transaction((transaction) => {
     transaction.delete(uploadColumns).where(eq(uploadColumns.uploadId, uploadId)).run();
     table.columns.forEach((column, position) => {

@@ -1,8 +1,10 @@
 import { workerData } from "node:worker_threads";
+import type { RowsPage } from "../../shared/schemas/rows.ts";
 import { connectDatabase } from "../db/client.ts";
 import { startThreads } from "../engine/threads/start-threads.ts";
 import { workerControl } from "./control.ts";
 import type { CellResult, Outcome, ParsedUploadResult, Sent, WorkerSettings } from "./job.ts";
+import { lookAtRows } from "./look-at-rows.ts";
 import { outcomeOf } from "./outcome.ts";
 import { runCellJob, WorkerMemory } from "./run-cell.ts";
 import { parseStoredUpload } from "./upload-tables.ts";
@@ -13,14 +15,20 @@ const { db } = connectDatabase(databasePath);
 const threads = startThreads(threadsEach);
 const memory = new WorkerMemory();
 
-export default async function run({ task, flag, port }: Sent): Promise<Outcome<CellResult | ParsedUploadResult>> {
+export default async function run({
+  task,
+  flag,
+  port,
+}: Sent): Promise<Outcome<CellResult | ParsedUploadResult | RowsPage>> {
   const control = workerControl(port, flag, threads);
   try {
     // Cancelled while it stood in the queue.
     if (control.cancelled()) return { ended: "cancelled" };
-    return await outcomeOf<CellResult | ParsedUploadResult>(() =>
-      task.kind === "cell" ? runCellJob(task.job, db, memory, control) : parseStoredUpload(db, task.uploadId, control),
-    );
+    return await outcomeOf<CellResult | ParsedUploadResult | RowsPage>(() => {
+      if (task.kind === "cell") return runCellJob(task.job, db, memory, control);
+      if (task.kind === "look") return lookAtRows(task.look, db, memory, control);
+      return parseStoredUpload(db, task, control);
+    });
   } finally {
     port.close();
   }

@@ -1,9 +1,13 @@
 import { type Request, type RequestHandler, type Response, Router } from "express";
 import multer from "multer";
+import { z } from "zod";
+import { fingerprint } from "../../shared/schemas/primitives.ts";
 import type { Account } from "../../shared/schemas/resources.ts";
+import { rowsAsked } from "../../shared/schemas/rows.ts";
 import { invalid, tooLarge } from "../errors.ts";
 import { signedIn } from "../http/session.ts";
-import { place } from "../http/validate.ts";
+import { place, validate } from "../http/validate.ts";
+import { presentRows } from "../presenters/rows.ts";
 import { presentUpload } from "../presenters/uploads.ts";
 import { inMegabytes, LARGEST_UPLOAD } from "../services/upload-names.ts";
 import { brokenOff, sizeRefusal, type UploadService } from "../services/uploads.ts";
@@ -11,6 +15,18 @@ import { streamingTo } from "../storage/incoming-file.ts";
 
 /** What a form adds around its one file: boundaries and a few heads. */
 const AROUND_THE_FILE = 16 * 1024;
+
+/** How a file is taken in: as a new version of an upload, beside one of its name, or as it is; of a workbook, which sheet. */
+const added = z.object({
+  replaces: z.string().min(1).max(300).optional(),
+  beside: z
+    .literal("1")
+    .transform(() => true)
+    .optional(),
+  sheet: z.string().min(1).max(100).optional(),
+});
+const chosenSheet = z.strictObject({ sheet: z.string().min(1).max(100) });
+const rowsAskedOfCell = rowsAsked.extend({ about: z.string().min(1).max(500), fingerprint });
 
 interface Collaborators {
   readonly uploads: UploadService;
@@ -30,8 +46,33 @@ export function uploadRoutes({ uploads, limit }: Collaborators): Router {
   router.post("/studies/:studyId/uploads", mayUpload(uploads), limit, receive, async (request, response) => {
     if (request.file === undefined) throw invalid("The request brings no file: its field is called file.");
     const studyId = place(request.params, "studyId");
-    const finished = await uploads.finish(studyId, request.file.filename, whileThere(response));
+    const { sheet } = validate(added, request.query);
+    const finished = await uploads.finish(studyId, request.file.filename, whileThere(response), sheet);
     response.status(201).json(presentUpload(finished));
+  });
+
+  router.post("/studies/:studyId/uploads/:uploadId/sheets", limit, async (request, response) => {
+    const actor = signedIn(response);
+    const studyId = place(request.params, "studyId");
+    const { sheet } = validate(chosenSheet, request.body);
+    const uploadId = await uploads.addSheet(actor, studyId, place(request.params, "uploadId"), sheet);
+    response.status(201).json(presentUpload(await uploads.finish(studyId, uploadId, whileThere(response), sheet)));
+  });
+
+  router.get("/studies/:studyId/uploads/:uploadId/rows", async (request, response) => {
+    const actor = signedIn(response);
+    const asked = validate(rowsAsked, request.query);
+    const studyId = place(request.params, "studyId");
+    const uploadId = place(request.params, "uploadId");
+    response.json(presentRows(await uploads.rows.ofUpload(actor, studyId, uploadId, asked, whileThere(response))));
+  });
+
+  router.get("/studies/:studyId/cells/:cellId/rows", async (request, response) => {
+    const actor = signedIn(response);
+    const { about, fingerprint, ...asked } = validate(rowsAskedOfCell, request.query);
+    const studyId = place(request.params, "studyId");
+    const cell = { studyId, cellId: place(request.params, "cellId"), about, fingerprint };
+    response.json(presentRows(await uploads.rows.ofCell(actor, cell, asked, whileThere(response))));
   });
 
   router.delete("/studies/:studyId/uploads/:uploadId", async (request, response) => {
@@ -48,7 +89,7 @@ function mayUpload(uploads: UploadService): RequestHandler {
   return (request, response, next) => {
     const actor = signedIn(response);
     if (!request.is("multipart/form-data")) throw invalid("An upload is a form with one file, in the field file.");
-    uploads.mayAdd(actor, place(request.params, "studyId"));
+    uploads.mayAdd(actor, place(request.params, "studyId"), validate(added, request.query));
     const announced = Number(request.get("content-length") ?? 0);
     if (announced > LARGEST_UPLOAD + AROUND_THE_FILE) throw tooLarge(sizeRefusal(inMegabytes(announced)));
     next();
@@ -58,7 +99,13 @@ function mayUpload(uploads: UploadService): RequestHandler {
 function receiveFile(uploads: UploadService): RequestHandler {
   const storage = streamingTo<Request>({
     store: (request, name, stream) =>
-      uploads.store(request.res?.locals.account as Account, place(request.params, "studyId"), name, stream),
+      uploads.store(
+        request.res?.locals.account as Account,
+        place(request.params, "studyId"),
+        name,
+        stream,
+        validate(added, request.query),
+      ),
     discard: uploads.discard,
   });
   const receive = multer({

@@ -79,6 +79,12 @@ export function createCellService({
       conductors.delete(studyId);
     },
 
+    async dataOf(studyId, cellId) {
+      const conductor = conductorOf(studyId);
+      if (!conductor.isReady || rests.has(studyId)) await conductor.refresh();
+      return conductor.dataOf(cellId);
+    },
+
     finding(studyId, fingerprint): StoredFinding | undefined {
       const row = findFinding(db, studyId, fingerprint);
       if (!row) return undefined;

@@ -1,6 +1,7 @@
 import { parseDocument } from "yaml";
 import type { CellSource } from "../../shared/study/cell-source.ts";
 import { LONGEST_SOURCE } from "../../shared/study/document.ts";
+import { type UploadNamed, type UploadVersion, uploadRead } from "../../shared/study/uploads.ts";
 
 export const LARGEST_UPLOAD = 100 * 1024 * 1024;
 const LONGEST_NAME = 200;
@@ -22,17 +23,28 @@ export function freeName(name: string, taken: readonly string[]): string {
 }
 
 /**
- * Names of the data cells whose source says `upload: <name>`, in their order, however far their writing has come.
+ * Names of the data cells that read a version of an upload, in their order, however far their writing has come: those
+ * that name it, and where they pin no version, if it is the latest.
  * Of a source too long for a cell only as much is read as a cell could have: reading is on the requests' thread.
  */
-export function cellsNamingUpload(sources: readonly CellSource[], upload: string): string[] {
+export function cellsReadingUpload(
+  sources: readonly CellSource[],
+  upload: UploadVersion,
+  versions: readonly UploadVersion[],
+): string[] {
   return sources
-    .filter(({ kind, source }) => kind === "data" && uploadOf(source.slice(0, LONGEST_SOURCE)) === upload)
+    .filter(({ kind, source }) => {
+      if (kind !== "data") return false;
+      const read = uploadRead(versions, namedIn(source.slice(0, LONGEST_SOURCE)));
+      return read !== undefined && read.version === upload.version;
+    })
     .map(({ name }) => name);
 }
 
-function uploadOf(source: string): unknown {
-  return parseDocument(source).get("upload");
+function namedIn(source: string): UploadNamed {
+  const document = parseDocument(source);
+  const version = document.get("version");
+  return { upload: document.get("upload"), ...(typeof version === "number" && { version }) };
 }
 
 export function inMegabytes(bytes: number): string {

@@ -25,6 +25,8 @@ export const dataSpecification = z.strictObject({
   kind: z.literal("data"),
   /** The name of an upload of the study; on the command line, a path beside the study file. */
   upload: z.string().min(1).max(300),
+  /** Which version of it; the latest, unless said. On the command line a file is what it is. */
+  version: z.number().int().min(1).max(1_000_000).optional(),
   goods: z.record(goodName, goodMapping),
   /** Total expenditure, when not the sum of the goods. */
   total: columnName.optional(),
@@ -80,9 +82,11 @@ export const goodDescription = z.strictObject({
 
 /** Something worth knowing before estimating; never an error. */
 export const qualityFlag = z.strictObject({
-  about: z.enum(["zeros", "outliers", "price variation", "collinearity", "shares"]),
+  about: z.enum(["zeros", "outliers", "unit values", "price variation", "collinearity", "shares"]),
   sentence: z.string(),
   rows: z.array(count).max(200),
+  /** Lists of rows that can be looked at, each under a key, in words, with how many. */
+  parts: z.array(z.strictObject({ key: z.string(), words: z.string(), count })).optional(),
 });
 
 export const dataFinding = z.strictObject({

@@ -72,11 +72,21 @@ export type UploadColumn = z.infer<typeof uploadColumn>;
 export const upload = z.strictObject({
   id: identifier,
   name: z.string(),
+  /** Counted within the name, from 1; a data cell reads the latest unless it names another. */
+  version: count.min(1),
+  /** What the file of this version was called, when otherwise. */
+  fileName: z.string().optional(),
   bytes: count,
   rows: count,
+  /** Of the bytes; of a workbook, of those and the name of the sheet. */
   sha256: z.string(),
-  separator: z.enum([",", ";", "\t"]),
-  decimalComma: z.boolean(),
+  format: z.enum(["csv", "parquet", "xlsx"]),
+  /** Of a workbook: the sheet that was read, and the names of all. */
+  sheet: z.string().optional(),
+  sheets: z.array(z.string()).optional(),
+  /** Of a CSV. */
+  separator: z.enum([",", ";", "\t"]).optional(),
+  decimalComma: z.boolean().optional(),
   uploadedAt: instant,
   uploadedBy: z.string(),
   columns: z.array(uploadColumn),

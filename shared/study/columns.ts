@@ -7,10 +7,12 @@ import type { SlutskySpecification } from "../schemas/slutsky.ts";
 import type { SystemSpecification } from "../schemas/system.ts";
 import type { KeyPath, Places } from "./cell-source.ts";
 import { nearestWord } from "./nearest-word.ts";
+import { latestUploads, uploadRead, versionOf, versionsOf } from "./uploads.ts";
 import { counted, listSome, listWords } from "./words.ts";
 
 /** What is known of an upload before its rows are read. */
 export interface UploadShape extends Pick<Upload, "name" | "sha256"> {
+  readonly version?: number;
   readonly rows?: number;
   readonly columns: readonly Pick<Upload["columns"][number], "name" | "type">[];
 }
@@ -43,9 +45,11 @@ function teller(places: Places) {
 
 function dataProblems(specification: DataSpecification, { places, uploads }: Context): Problem[] {
   const tell = teller(places);
-  const upload = uploads.find(({ name }) => name === specification.upload);
+  const upload = uploadRead(uploads, specification);
+  const versions = versionsOf(uploads, specification.upload).map(versionOf);
+  if (!upload && versions.length > 0) return [tell(["version"], ...noVersion(specification, versions))];
   if (!upload) {
-    const names = uploads.map(({ name }) => name);
+    const names = latestUploads(uploads).map(({ name }) => name);
     const nearest = nearestWord(specification.upload, names);
     const there = names.length === 0 ? "Nothing has been uploaded yet" : `There are ${listSome(names)}`;
     return [
@@ -73,6 +77,15 @@ function dataProblems(specification: DataSpecification, { places, uploads }: Con
     .map(([path, column]) => tell(path, ...noColumn(upload.name, column, names)));
 }
 
+function noVersion({ upload, version }: DataSpecification, versions: readonly number[]): [string, string] {
+  const latest = versions[0];
+  const there =
+    versions.length === 1
+      ? `Its only version is ${latest}`
+      : `It has the versions ${listWords(versions.toReversed().map(String))}`;
+  return [`${upload} has no version ${version}. ${there}.`, String(latest)];
+}
+
 function noColumn(owner: string, column: string, names: readonly string[]): [string, string?] {
   const nearest = nearestWord(column, names);
   const there = nearest ? `The nearest is ${nearest}` : `Its columns are ${listSome(names)}`;
@@ -84,7 +97,7 @@ function systemProblems(specification: SystemSpecification, context: Context): P
   const data = context.specifications.get(specification.data);
   if (data?.kind !== "data") return [];
   const problems: Problem[] = [];
-  const upload = context.uploads.find(({ name }) => name === data.upload);
+  const upload = uploadRead(context.uploads, data);
   if (upload) {
     const numeric = upload.columns.filter(({ type }) => type === "number").map(({ name }) => name);
     const names = [...numeric, ...Object.keys(data.derive ?? {})];
@@ -145,7 +158,7 @@ function elasticitiesProblems(specification: ElasticitiesSpecification, context:
     );
   }
   const data = system?.kind === "system" ? context.specifications.get(system.data) : undefined;
-  const upload = data?.kind === "data" ? context.uploads.find((one) => one.name === data.upload) : undefined;
+  const upload = data?.kind === "data" ? uploadRead(context.uploads, data) : undefined;
   if (groups === undefined || data?.kind !== "data" || upload === undefined || groups.of === TOTAL_EXPENDITURE) {
     return problems;
   }

@@ -42,6 +42,8 @@ function asked(specification: CellSpecification): Record<string, unknown> {
   if (specification.kind === "data") {
     plain.goods = Object.entries(specification.goods);
     plain.derive = specification.derive && Object.entries(specification.derive);
+    // Which bytes are read enters by their own hash: to name the version that is read anyhow asks nothing else.
+    delete plain.version;
   }
   return plain;
 }

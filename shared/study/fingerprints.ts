@@ -3,6 +3,7 @@ import { fingerprintCell } from "./fingerprint.ts";
 import { PROGRAM_VERSION } from "./program.ts";
 import type { ResolvedCell } from "./resolve.ts";
 import { sortByReading } from "./topology.ts";
+import { uploadRead } from "./uploads.ts";
 
 /**
  * The fingerprint of every cell that is sound and whose reading, all the way up, is sound too; by cell id.
@@ -21,7 +22,7 @@ export function fingerprintCells(
     const { id, specification, reads } = sound.get(name)!;
     const upstream = reads.map((read) => byName.get(read));
     if (!specification || !upstream.every((fingerprint) => fingerprint !== undefined)) continue;
-    const upload = specification.kind === "data" ? uploads.find((one) => one.name === specification.upload) : undefined;
+    const upload = specification.kind === "data" ? uploadRead(uploads, specification) : undefined;
     const fingerprint = fingerprintCell({
       kind: specification.kind,
       specification,

@@ -24,6 +24,8 @@ export interface StateParts {
   readonly stopped: ReadonlyMap<string, string>;
   /** By cell id: the finding it last had, and the source that asked for it. */
   readonly last: ReadonlyMap<string, LastFinding>;
+  /** By cell id: what stands in the place of the upload its last finding rested on: "version 2 of purchases.csv". */
+  readonly replaced?: ReadonlyMap<string, string>;
   /** By cell id: how long an estimation that waits to be asked for would take. */
   readonly aboutMs: ReadonlyMap<string, number>;
 }
@@ -73,7 +75,8 @@ function stateOf(cell: ResolvedCell, upstream: readonly CellStatus[], parts: Sta
   const failed = parts.failed.get(fingerprint);
   if (failed) return { ...status, state: "failed", because: failureOf(failed), problems: placed(failed, cell.places) };
   const aboutMs = parts.aboutMs.get(cell.id);
-  const because = parts.stopped.get(fingerprint) ?? (last && changeOf(cell, last, upstream)) ?? waitsFor(upstream);
+  const because =
+    parts.stopped.get(fingerprint) ?? (last && changeOf(cell, last, upstream, parts.replaced)) ?? waitsFor(upstream);
   return { ...status, state: waiting, ...(because && { because }), ...(aboutMs !== undefined && { aboutMs }) };
 }
 
@@ -101,9 +104,16 @@ function waitsFor(upstream: readonly CellStatus[]): string | undefined {
   return behind.kind === "system" ? `waits for ${behind.name} to be estimated` : `waits for ${behind.name}`;
 }
 
-function changeOf(cell: ResolvedCell, last: LastFinding, upstream: readonly CellStatus[]): string {
+function changeOf(
+  cell: ResolvedCell,
+  last: LastFinding,
+  upstream: readonly CellStatus[],
+  replaced: StateParts["replaced"],
+): string {
   const own = describeChanges(last.source, cell.source);
   if (own) return own;
+  const upload = replaced?.get(cell.id);
+  if (upload !== undefined) return `upload replaced by ${upload}`;
   const notCurrent = upstream.filter(({ state }) => state !== "current").map(({ name }) => name);
   const above = notCurrent.length > 0 ? notCurrent : cell.reads;
   if (new RegExp(`^["']?${LIKE}["']?\\s*:`, "m").test(cell.source))

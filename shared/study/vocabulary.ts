@@ -37,6 +37,7 @@ type KeysOf<K extends CellKind> = Exclude<keyof SpecificationOf<K>, "kind">;
 const KEYS: { readonly [K in CellKind]: Readonly<Record<KeysOf<K>, Told>> } = {
   data: {
     upload: ["the uploaded file the columns come from", "upload"],
+    version: ["which version of the upload is read; the latest unless one is named"],
     goods: ["each good by two of price, quantity and expenditure"],
     total: ["the column of total expenditure, when it is not the sum of the goods", "numeric column"],
     weight: ["the column of sampling weights", "numeric column"],

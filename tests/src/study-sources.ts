@@ -10,6 +10,8 @@ export const upload: Upload = {
   bytes: 1000,
   rows: 4938,
   sha256: "a".repeat(64),
+  version: 1,
+  format: "csv",
   separator: ",",
   decimalComma: false,
   uploadedAt: "2031-03-02T10:00:00.000Z",

@@ -8,6 +8,8 @@ export function exampleUpload(names: readonly string[]): Upload {
     bytes: 1,
     rows: 100,
     sha256: "",
+    version: 1,
+    format: "csv",
     separator: ",",
     decimalComma: false,
     uploadedAt: "2032-03-01T09:00:00.000Z",

@@ -59,13 +59,23 @@ export function lastFindings(db: Database, studyId: string): LastFindingRow[] {
     .all();
 }
 
+/** By cell id: the SHA-256 of the upload its last finding rested on. */
+export function lastUploads(db: Database, studyId: string): Map<string, string> {
+  const rows = db
+    .select({ cellId: cellFindings.cellId, sha256: cellFindings.uploadSha256 })
+    .from(cellFindings)
+    .where(eq(cellFindings.studyId, studyId))
+    .all();
+  return new Map(rows.flatMap(({ cellId, sha256 }) => (sha256 === null ? [] : [[cellId, sha256] as const])));
+}
+
 export function setLastFinding(db: Database, row: typeof cellFindings.$inferInsert): void {
-  const { source, fingerprint, userId, at } = row;
+  const { source, fingerprint, userId, uploadSha256 = null, at } = row;
   db.insert(cellFindings)
     .values(row)
     .onConflictDoUpdate({
       target: [cellFindings.studyId, cellFindings.cellId],
-      set: { source, fingerprint, userId, at },
+      set: { source, fingerprint, userId, uploadSha256, at },
     })
     .run();
 }

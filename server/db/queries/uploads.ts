@@ -24,6 +24,50 @@ export function changeUpload(db: Database, uploadId: string, change: Partial<Upl
   db.update(uploads).set(change).where(eq(uploads.id, uploadId)).run();
 }
 
+/** The stored pieces of an upload, one after the other, with a breath between for whoever else waits. */
+export async function* chunksOf(db: Database, uploadId: string): AsyncGenerator<Buffer> {
+  for (let position = 0; ; position++) {
+    const piece = db
+      .select({ bytes: uploadChunks.bytes })
+      .from(uploadChunks)
+      .where(and(eq(uploadChunks.uploadId, uploadId), eq(uploadChunks.position, position)))
+      .get();
+    if (piece === undefined) return;
+    yield piece.bytes;
+    await new Promise((breath) => setImmediate(breath));
+  }
+}
+
+/** Versions of a name that are whole, the latest first. */
+export function readyVersions(db: Pick<Database, "select">, studyId: string, name: string): UploadRow[] {
+  return db
+    .select()
+    .from(uploads)
+    .where(and(eq(uploads.studyId, studyId), eq(uploads.name, name), eq(uploads.state, "ready")))
+    .orderBy(desc(uploads.version))
+    .all();
+}
+
+/** Makes a file that has been read the latest version of its name, and returns undefined; or the version it repeats. */
+export function publishVersion(
+  db: Database,
+  { id, studyId, name }: UploadRow,
+  read: Partial<UploadRow>,
+): UploadRow | undefined {
+  return db.transaction((transaction) => {
+    const versions = readyVersions(transaction, studyId, name);
+    const same = versions.find(({ sha256 }) => sha256 === read.sha256);
+    if (same) return same;
+    const version = 1 + (versions.at(0)?.version ?? 0);
+    transaction
+      .update(uploads)
+      .set({ ...read, version, state: "ready" })
+      .where(eq(uploads.id, id))
+      .run();
+    return undefined;
+  });
+}
+
 export function deleteUpload(db: Database, uploadId: string): void {
   db.delete(uploads).where(eq(uploads.id, uploadId)).run();
 }

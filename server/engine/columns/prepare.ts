@@ -35,18 +35,23 @@ export function prepareData(
     control.progress({ step: name, fraction });
   };
   step("reading columns", 0);
-  const problems: Problem[] = [];
-  const derived = deriveColumns(specification, table, problems);
-  const roles = resolveRoles(specification, derived.columns, problems);
-  if (problems.length > 0) throw new Refusal(problems);
-  step("accounting for rows", 0.3);
-  const goods = roles.goods.map((good) => formGood(good, table.rows));
-  const leftOut = leaveOut(table.rows, goods, roles, derived);
+  const { derived, roles, goods, leftOut } = accountRows(specification, table, () => step("accounting for rows", 0.3));
   if (leftOut.accounting.used === 0) throw noRowLeft(leftOut.accounting, specification);
   step("forming shares", 0.5);
   const used = formColumns(specification, table, goods, roles, derived, leftOut);
   step("describing the data", 0.8);
   return describe(specification, table, roles, leftOut.accounting, used);
+}
+
+/** What a specification makes of an upload's columns, and what becomes of each of its rows. */
+export function accountRows(specification: DataSpecification, table: UploadTable, onColumns: () => void = () => {}) {
+  const problems: Problem[] = [];
+  const derived = deriveColumns(specification, table, problems);
+  const roles = resolveRoles(specification, derived.columns, problems);
+  if (problems.length > 0) throw new Refusal(problems);
+  onColumns();
+  const goods = roles.goods.map((good) => formGood(good, table.rows));
+  return { derived, roles, goods, leftOut: leaveOut(table.rows, goods, roles, derived) };
 }
 
 /** The columns of the rows used, in units of estimation, with what describing them still needs. */

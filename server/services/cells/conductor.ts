@@ -4,6 +4,7 @@ import type { ResolvedCell } from "../../../shared/study/resolve.ts";
 import { cellStatuses } from "../../../shared/study/states.ts";
 import type { Database } from "../../db/client.ts";
 import { conflict, notFound, refused } from "../../errors.ts";
+import type { CellJob } from "../../jobs/job.ts";
 import type { JobPool } from "../../jobs/pool.ts";
 import type { SourcesOf } from "../ports.ts";
 import type { Durations } from "./durations.ts";
@@ -92,8 +93,12 @@ export class Conductor {
     }
     const found = this.#ledger.found([...fingerprints.values()]);
     const last = this.#ledger.last();
+    const replaced = this.#read().replacedUploads(this.#ledger.lastUploads());
     const [failed, stopped] = [this.#failed, this.#stopped];
-    return { studyId, cells: cellStatuses({ cells, fingerprints, found, running, failed, stopped, last, aboutMs }) };
+    return {
+      studyId,
+      cells: cellStatuses({ cells, fingerprints, found, running, failed, stopped, last, aboutMs, replaced }),
+    };
   }
 
   async estimate(cellId: string, userId: string): Promise<void> {
@@ -116,6 +121,13 @@ export class Conductor {
     if (now.state !== "estimating" && now.state !== "current") {
       throw conflict(`${now.name} ${now.because ?? "cannot be estimated now"}.`);
     }
+  }
+
+  /** What a data cell reads and asks. */
+  dataOf(cellId: string): CellJob["data"] | undefined {
+    const snapshot = this.#read();
+    const cell = snapshot.cell(cellId);
+    return cell?.kind === "data" ? snapshot.job(this.#parts.studyId, cell)?.data : undefined;
   }
 
   async cancel(cellId: string): Promise<void> {

@@ -8,6 +8,7 @@ import {
   foundAmong,
   insertFinding,
   lastFindings,
+  lastUploads,
   setLastFinding,
 } from "../../db/queries/findings.ts";
 import type { CellResult } from "../../jobs/job.ts";
@@ -39,6 +40,11 @@ export class Ledger {
     );
   }
 
+  /** By cell id: the SHA-256 of the upload its last finding rested on, where that is known. */
+  lastUploads(): Map<string, string> {
+    return lastUploads(this.#db, this.#studyId);
+  }
+
   /** Under the fingerprint its job was started with, whatever the cell asks by now. */
   store({ job, cellId, source, userId }: Pick<RunningJob, "job" | "cellId" | "source" | "userId">, result: CellResult) {
     const foundAt = new Date();
@@ -46,17 +52,37 @@ export class Ledger {
     const { finding, tookMs } = result;
     const studyId = this.#studyId;
     insertFinding(this.#db, { studyId, fingerprint, kind: specification.kind, finding, tookMs, foundAt });
-    setLastFinding(this.#db, { studyId, cellId, fingerprint, source, userId: userId ?? null, at: foundAt });
+    const { uploadSha256 } = job.data;
+    setLastFinding(this.#db, {
+      studyId,
+      cellId,
+      fingerprint,
+      source,
+      userId: userId ?? null,
+      uploadSha256,
+      at: foundAt,
+    });
   }
 
   /** Cells whose question turns out to be answered already now have that answer. */
-  remember({ cells, fingerprints }: Snapshot): void {
+  remember(snapshot: Snapshot): void {
+    const { cells, fingerprints } = snapshot;
     const last = this.last();
     const found = this.found([...fingerprints.values()]);
-    for (const { id, source } of cells) {
+    for (const cell of cells) {
+      const { id, source } = cell;
       const fingerprint = fingerprints.get(id);
       if (!fingerprint || !found.has(fingerprint) || last.get(id)?.fingerprint === fingerprint) continue;
-      const row = { studyId: this.#studyId, cellId: id, fingerprint, source, userId: null, at: new Date() };
+      const uploadSha256 = snapshot.uploadBelow(cell)?.sha256;
+      const row = {
+        studyId: this.#studyId,
+        cellId: id,
+        fingerprint,
+        source,
+        userId: null,
+        uploadSha256,
+        at: new Date(),
+      };
       setLastFinding(this.#db, row);
     }
   }

@@ -2,6 +2,7 @@ import type { CellSpecification } from "../../../shared/schemas/cell.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { fingerprintCells } from "../../../shared/study/fingerprints.ts";
 import { type ResolvedCell, resolveCells } from "../../../shared/study/resolve.ts";
+import { uploadRead, versionInWords } from "../../../shared/study/uploads.ts";
 import type { CellJob } from "../../jobs/job.ts";
 import type { Work } from "./durations.ts";
 import type { StudyUpload } from "./study-uploads.ts";
@@ -37,14 +38,18 @@ export class Snapshot {
     const specification = cell.specification;
     const dataFingerprint = data && this.fingerprints.get(data.id);
     if (!specification || !fingerprint || data?.specification?.kind !== "data" || !dataFingerprint) return undefined;
-    const { upload: name } = data.specification;
-    const upload = this.#uploads.find((one) => one.name === name);
+    const upload = uploadRead(this.#uploads, data.specification);
     if (!upload) return undefined;
     return {
       studyId,
       fingerprint,
       specification,
-      data: { fingerprint: dataFingerprint, specification: data.specification, uploadId: upload.id },
+      data: {
+        fingerprint: dataFingerprint,
+        specification: data.specification,
+        uploadId: upload.id,
+        uploadSha256: upload.sha256,
+      },
       ...this.#systemBelow(specification),
     };
   }
@@ -58,12 +63,33 @@ export class Snapshot {
     };
   }
 
+  /** The upload beneath a cell. */
+  uploadBelow(cell: ResolvedCell): StudyUpload | undefined {
+    const data = this.#dataBelow(cell)?.specification;
+    return data?.kind === "data" ? uploadRead(this.#uploads, data) : undefined;
+  }
+
+  /**
+   * By cell id: what stands in the place of the upload that the cell's last finding rested on, in words.
+   *
+   * @param rested by cell id, the SHA-256 of that upload
+   */
+  replacedUploads(rested: ReadonlyMap<string, string>): Map<string, string> {
+    const replaced = new Map<string, string>();
+    for (const cell of this.cells) {
+      const before = rested.get(cell.id);
+      const now = before === undefined ? undefined : this.uploadBelow(cell);
+      if (now && now.sha256 !== before) replaced.set(cell.id, versionInWords(this.#uploads, now));
+    }
+    return replaced;
+  }
+
   /** What an estimation of the cell has to go through. */
   work(cell: ResolvedCell): Work | undefined {
     const data = this.#dataBelow(cell);
     if (data?.specification?.kind !== "data") return undefined;
-    const { upload: name, goods } = data.specification;
-    const upload = this.#uploads.find((one) => one.name === name);
+    const { goods } = data.specification;
+    const upload = uploadRead(this.#uploads, data.specification);
     return upload && { rows: upload.rows, goods: Object.keys(goods).length };
   }
 

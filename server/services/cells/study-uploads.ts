@@ -11,12 +11,12 @@ export interface StudyUpload extends UploadShape {
 /** A study's uploads as its cells see them: names, columns and a hash of the bytes, no values. */
 export function studyUploads(db: Database, studyId: string): StudyUpload[] {
   return uploadsOf(db, studyId).flatMap(({ upload, descriptions }) => {
-    const { id, name, sha256, rows } = upload;
+    const { id, name, version, sha256, rows } = upload;
     if (sha256 === null || rows === null) return [];
     const columns = descriptions.map((text) => {
       const { name, type } = JSON.parse(text) as UploadColumn;
       return { name, type };
     });
-    return [{ id, name, sha256, rows, columns }];
+    return [{ id, name, version, sha256, rows, columns }];
   });
 }

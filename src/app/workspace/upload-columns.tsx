@@ -1,6 +1,7 @@
 import type { Upload } from "../../../shared/schemas/resources.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
+import { uploadRead } from "../../../shared/study/uploads.ts";
 import { ColumnList } from "./column-list.tsx";
 import { demographicsOn } from "./column-uses.ts";
 
@@ -12,8 +13,7 @@ interface UploadColumnsProps {
 
 /** The columns of the upload a data cell names, and what the cell and the systems on it use them for. */
 export default function UploadColumns({ cell, cells, uploads }: UploadColumnsProps) {
-  const { upload: name } = parseCell("data", cell.source).written;
-  const upload = uploads.find((one) => one.name === name);
+  const upload = uploadRead(uploads, parseCell("data", cell.source).written);
   return upload ? (
     <ColumnList upload={upload} source={cell.source} demographics={demographicsOn(cell.name, cells)} />
   ) : null;

@@ -1,5 +1,6 @@
 import { TOTAL_EXPENDITURE } from "../../../shared/schemas/elasticities.ts";
 import type { Value } from "../../../shared/study/edit.ts";
+import { uploadRead } from "../../../shared/study/uploads.ts";
 import type { KeyPath, Written } from "../form/written.ts";
 import type { FormProps } from "../types.ts";
 
@@ -43,7 +44,7 @@ const isMap = (value: unknown): value is Record<string, unknown> => typeof value
 
 /** Columns that rows may be grouped by: derived ones, then those of the upload that are no purchase and no weight. */
 export function groupColumns({ uploads }: FormProps["context"], data: Record<string, unknown>): string[] {
-  const upload = uploads.find(({ name }) => name === data.upload);
+  const upload = uploadRead(uploads, data);
   const goods = isMap(data.goods) ? Object.values(data.goods) : [];
   const taken = new Set([
     ...goods.flatMap((mapping) => (isMap(mapping) ? Object.values(mapping) : [])),

@@ -1,5 +1,6 @@
 import { ESTIMATOR_NAMES } from "../../../shared/schemas/system.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
+import { uploadRead } from "../../../shared/study/uploads.ts";
 import { listWords } from "../../../shared/study/words.ts";
 import { SYSTEMS } from "../../../shared/systems/index.ts";
 import { RESTRICTION_NAMES, SYSTEM_NAMES, type SystemName } from "../../../shared/systems/names.ts";
@@ -26,7 +27,7 @@ const isMap = (value: unknown): value is Record<string, unknown> => typeof value
 function offered({ cells, uploads }: FormProps["context"], dataName: string) {
   const cell = cells.find((one) => one.kind === "data" && one.name === dataName);
   const written = cell ? parseCell("data", cell.source).written : {};
-  const upload = uploads.find((one) => one.name === written.upload);
+  const upload = uploadRead(uploads, written);
   const numeric = upload?.columns.filter((column) => column.type === "number").map((column) => column.name) ?? [];
   const goods: Record<string, unknown> = isMap(written.goods) ? written.goods : {};
   // What makes shares and prices, or weighs the rows, does not shift their intercepts too.

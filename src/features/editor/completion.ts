@@ -8,6 +8,7 @@ import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { readDocument } from "../../../shared/study/document.ts";
 import { keyEdit } from "../../../shared/study/edit.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
+import { latestUploads, uploadRead } from "../../../shared/study/uploads.ts";
 import { type KeyWord, VOCABULARY } from "../../../shared/study/vocabulary.ts";
 import { type EditorSubject, editorSubject } from "./editor-subject.ts";
 import { type WhereInYaml, whereInYaml } from "./where-in-yaml.ts";
@@ -83,7 +84,7 @@ function named({ cellsNow, uploads, name, kind }: EditorSubject, word: KeyWord, 
     case undefined:
       return [];
     case "upload":
-      return uploads.map((upload) => ({ label: upload.name, detail: `${upload.rows} rows` }));
+      return latestUploads(uploads).map((upload) => ({ label: upload.name, detail: `${upload.rows} rows` }));
     case "column":
     case "numeric column":
       return columnsOf({ cells, uploads, kind }, text)
@@ -115,7 +116,7 @@ function dataOf({ cells, kind }: Pick<Rest, "cells" | "kind">, text: string): Re
 
 function columnsOf({ cells, uploads, kind }: Rest, text: string): { name: string; type: string }[] {
   const data = dataOf({ cells, kind }, text);
-  const upload = uploads.find(({ name }) => name === data.upload);
+  const upload = uploadRead(uploads, data);
   const derived = Object.keys((data.derive as object | null | undefined) ?? {});
   return [...derived.map((name) => ({ name, type: "number" })), ...(upload?.columns ?? [])];
 }

@@ -103,7 +103,7 @@ describe("the worker threads", () => {
       "tuna.csv",
     );
     const result = await parsed("tuna");
-    expect(result).toEqual({ rows: 338, sha256: direct.table.sha256, separator: ",", decimalComma: false });
+    expect(result).toEqual({ rows: 338, sha256: direct.table.sha256, format: "csv", separator: ",", decimalComma: false });
     expect(loadTable(open.db, "tuna")).toEqual(direct.table);
   });
 

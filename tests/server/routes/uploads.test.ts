@@ -24,10 +24,10 @@ beforeEach(async () => {
   studyId = (await owner.ask("POST", "/api/studies", { title: "Levy" })).body.id;
 });
 
-const bring = (name: string, content: BlobPart = "p1\n1\n2\n", field = "file") => {
+const bring = (name: string, content: BlobPart = "p1\n1\n2\n", query = "", field = "file") => {
   const form = new FormData();
   form.set(field, new Blob([content]), name);
-  return owner.ask("POST", `/api/studies/${studyId}/uploads`, form);
+  return owner.ask("POST", `/api/studies/${studyId}/uploads${query}`, form);
 };
 const rowsOf = (table: typeof uploads | typeof uploadChunks | typeof uploadColumns) =>
   application.open.db.select().from(table).all().length;
@@ -50,8 +50,79 @@ describe("an upload", () => {
 
   test("of a name that is taken gets a number", async () => {
     const names = [];
-    for (let i = 0; i < 3; i += 1) names.push((await bring("weeks.csv")).body.name);
+    for (let i = 0; i < 3; i += 1) names.push((await bring("weeks.csv", `p1\n${i}\n`, "?beside=1")).body.name);
     expect(names).toEqual(["weeks.csv", "weeks (2).csv", "weeks (3).csv"]);
+  });
+
+  test("of a name that is taken, or said to replace another, is a new version and keeps the old", async () => {
+    const first = (await bring("weeks.csv", "p1\n1\n")).body;
+    const second = (await bring("weeks.csv", "p1\n2\n")).body;
+    const third = (await bring("weeks of 2032.csv", "p1\n3\n", "?replaces=weeks.csv")).body;
+    expect([first, second, third].map(({ name, version, fileName }) => [name, version, fileName])).toEqual([
+      ["weeks.csv", 1, undefined],
+      ["weeks.csv", 2, undefined],
+      ["weeks.csv", 3, "weeks of 2032.csv"],
+    ]);
+    expect((await owner.ask("GET", `/api/studies/${studyId}/uploads`)).body).toHaveLength(3);
+    const missing = await bring("a.csv", "p1\n4\n", "?replaces=months.csv");
+    expect([missing.status, missing.body.error.sentence]).toEqual([
+      404,
+      "There is no upload called months.csv in this study to put a new version of.",
+    ]);
+  });
+
+  test("that is the same as a version kept is told so, and nothing of it stays", async () => {
+    await bring("weeks.csv", "p1\n1\n");
+    await bring("weeks.csv", "p1\n2\n");
+    const before = [uploads, uploadChunks].map(rowsOf);
+    const answer = await bring("weeks.csv", "p1\n1\n");
+    expect([answer.status, answer.body.error.sentence]).toEqual([
+      409,
+      "The file is the same as version 1 of weeks.csv, byte for byte; nothing was added.",
+    ]);
+    expect([uploads, uploadChunks].map(rowsOf)).toEqual(before);
+  });
+
+  test("of several sheets gives one, and another sheet as an upload of its own", async () => {
+    const { id, sheet, sheets } = (await bring("book.xlsx", "PK")).body;
+    expect([sheet, sheets]).toEqual(["Rows", ["Rows", "Codes"]]);
+    const path = `/api/studies/${studyId}/uploads/${id}/sheets`;
+    expect((await owner.ask("POST", path, {})).status).toBe(400);
+    const wrong = await owner.ask("POST", path, { sheet: "Notes" });
+    expect(wrong.body.error.sentence).toBe("book.xlsx has no sheet Notes: its sheets are Rows, Codes.");
+  });
+
+  test("is looked at a page at a time, by whoever may read it", async () => {
+    const { id } = (await bring("weeks.csv", "p1\n9\n")).body;
+    const path = `/api/studies/${studyId}/uploads/${id}/rows`;
+    const outsider = await application.person("Nobody Inparticular");
+    expect((await application.stranger.ask("GET", path)).status).toBe(401);
+    expect((await owner.ask("GET", `${path}?count=9999`)).status).toBe(400);
+    expect((await outsider.ask("GET", path)).status).toBe(404);
+    expect((await owner.ask("GET", `/api/studies/${studyId}/uploads/none/rows`)).status).toBe(404);
+    const page = await owner.ask("GET", `${path}?from=100&count=20`);
+    expect([page.status, page.body.total]).toEqual([200, 1]);
+    expect(application.parser.looked.at(-1)).toEqual({ of: "upload", uploadId: id, asked: { from: 100, count: 20 } });
+  });
+
+  test("is looked at through a data cell, under its present finding only", async () => {
+    const { cellId, fingerprint } = application.cells.put(
+      studyId,
+      { name: "survey", kind: "data", source: "upload: weeks.csv" },
+      [],
+    );
+    const path = `/api/studies/${studyId}/cells/${cellId}/rows`;
+    const about = encodeURIComponent('["zeros","grains"]');
+    expect((await application.stranger.ask("GET", path)).status).toBe(401);
+    expect((await owner.ask("GET", path)).status).toBe(400);
+    expect((await owner.ask("GET", `${path}?about=${about}&fingerprint=${"0".repeat(64)}`)).status).toBe(409);
+    const page = await owner.ask("GET", `${path}?about=${about}&fingerprint=${fingerprint}`);
+    expect(page.status).toBe(200);
+    expect(application.parser.looked.at(-1)).toMatchObject({
+      of: "cell",
+      about: '["zeros","grains"]',
+      asked: { from: 0, count: 50 },
+    });
   });
 
   test.each([
@@ -83,7 +154,7 @@ describe("an upload", () => {
   });
 
   test("needs the field file and one file", async () => {
-    expect((await bring("weeks.csv", "x", "data")).status).toBe(400);
+    expect((await bring("weeks.csv", "x", "", "data")).status).toBe(400);
     const two = new FormData();
     two.append("file", new Blob(["a"]), "a.csv");
     two.append("file", new Blob(["b"]), "b.csv");
@@ -96,7 +167,18 @@ describe("an upload", () => {
     const { id } = (await bring("weeks.csv")).body;
     application.cells.put(studyId, { name: "survey", kind: "data", source: "upload: weeks.csv\ngoods: {" }, []);
     const answer = await owner.ask("DELETE", `/api/studies/${studyId}/uploads/${id}`);
-    expect([answer.status, answer.body.error.sentence]).toEqual([409, "weeks.csv stays: the cell survey names it."]);
+    expect([answer.status, answer.body.error.sentence]).toEqual([409, "weeks.csv stays: the cell survey reads it."]);
+  });
+
+  test("in a version that no cell reads goes, and the one that is read stays", async () => {
+    const [old, now] = [(await bring("weeks.csv", "p1\n1\n")).body, (await bring("weeks.csv", "p1\n2\n")).body];
+    application.cells.put(studyId, { name: "survey", kind: "data", source: "upload: weeks.csv" }, []);
+    const refused = await owner.ask("DELETE", `/api/studies/${studyId}/uploads/${now.id}`);
+    expect(refused.body.error.sentence).toBe("version 2 of weeks.csv stays: the cell survey reads it.");
+    expect((await owner.ask("DELETE", `/api/studies/${studyId}/uploads/${old.id}`)).status).toBe(204);
+    application.cells.put(studyId, { name: "pinned", kind: "data", source: "upload: weeks.csv\nversion: 2" }, []);
+    const two = await owner.ask("DELETE", `/api/studies/${studyId}/uploads/${now.id}`);
+    expect(two.body.error.sentence).toBe("weeks.csv stays: the cells survey and pinned read it.");
   });
 
   test("that no cell names is removed whole", async () => {

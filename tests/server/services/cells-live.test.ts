@@ -36,7 +36,7 @@ beforeAll(async () => {
   const parsed = await pool.parseUpload("up", () => {}, new AbortController().signal);
   open.db
     .update(uploads)
-    .set({ ...parsed, state: "ready" })
+    .set({ rows: parsed.rows, sha256: parsed.sha256, state: "ready" })
     .run();
   service = begin();
 });

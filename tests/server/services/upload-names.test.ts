@@ -1,6 +1,9 @@
 import { expect, test } from "vitest";
-import { cellsNamingUpload, freeName, inMegabytes, plainName } from "../../../server/services/upload-names.ts";
+import { cellsReadingUpload, freeName, inMegabytes, plainName } from "../../../server/services/upload-names.ts";
 import { LONGEST_SOURCE } from "../../../shared/study/document.ts";
+
+const only = { name: "weeks.csv", version: 1 };
+const reading = (cells: Parameters<typeof cellsReadingUpload>[0]) => cellsReadingUpload(cells, only, [only]);
 
 test.each([
   ["weeks.csv", "weeks.csv"],
@@ -36,14 +39,29 @@ test("a cell names an upload however far its writing has come", () => {
     cell("list", "- upload: weeks.csv"),
     cell("empty", ""),
   ];
-  expect(cellsNamingUpload(cells, "weeks.csv")).toEqual(["whole", "quoted", "unfinished"]);
+  expect(reading(cells)).toEqual(["whole", "quoted", "unfinished"]);
+});
+
+test("a cell reads the latest version of an upload, unless it pins one", () => {
+  const cell = (name: string, source: string) => ({ id: name, name, kind: "data", order: "a", source });
+  const cells = [
+    cell("latest", "upload: weeks.csv"),
+    cell("pinned", "upload: weeks.csv\nversion: 1"),
+    cell("both", "version: 2\nupload: weeks.csv"),
+    cell("none of them", "upload: weeks.csv\nversion: 7"),
+  ];
+  const versions = [2, 1].map((version) => ({ name: "weeks.csv", version }));
+  expect(versions.map((version) => cellsReadingUpload(cells, version, versions))).toEqual([
+    ["latest", "both"],
+    ["pinned"],
+  ]);
 });
 
 test("of a source too long for a cell no more is read than a cell could have", () => {
   const cell = (source: string) => [{ id: "a", name: "a", kind: "data", order: "a", source }];
   const filler = `# ${"x".repeat(LONGEST_SOURCE)}\n`;
-  expect(cellsNamingUpload(cell(`upload: weeks.csv\n${filler}`), "weeks.csv")).toEqual(["a"]);
-  expect(cellsNamingUpload(cell(`${filler}upload: weeks.csv\n`), "weeks.csv")).toEqual([]);
+  expect(reading(cell(`upload: weeks.csv\n${filler}`))).toEqual(["a"]);
+  expect(reading(cell(`${filler}upload: weeks.csv\n`))).toEqual([]);
 });
 
 test("sizes are told in megabytes", () => {

@@ -22,6 +22,8 @@ const upload: Upload = {
   bytes: 1,
   rows: 4938,
   sha256: "0".repeat(64),
+  version: 1,
+  format: "csv",
   separator: ",",
   decimalComma: false,
   uploadedAt: "2031-03-02T10:00:00.000Z",

@@ -11,6 +11,8 @@ const purchases: Upload = {
   bytes: 1000,
   rows: 4938,
   sha256: "0".repeat(64),
+  version: 1,
+  format: "csv",
   separator: ";",
   decimalComma: true,
   uploadedAt: "2031-03-02T10:00:00.000Z",

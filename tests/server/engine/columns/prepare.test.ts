@@ -453,6 +453,7 @@ describe("worth knowing before estimating", () => {
       about: "outliers",
       sentence: "1 log price lies more than five median deviations from the median of their village. It is kept.",
       rows: [42],
+      parts: [{ key: '["outliers","Grains"]', words: "Grains", count: 1 }],
     });
   });
 
