@@ -1,6 +1,8 @@
+import { availableParallelism } from "node:os";
 import tailwindcss from "@tailwindcss/vite";
 import react from "@vitejs/plugin-react";
 import { defineConfig } from "vitest/config";
+import { BrowserFilesFirst } from "./tests/support/browser-files-first.ts";
 
 export default defineConfig({
   plugins: [react(), tailwindcss()],
@@ -8,6 +10,9 @@ export default defineConfig({
   build: { outDir: "dist/client", emptyOutDir: true, target: "es2022" },
   worker: { format: "es" },
   test: {
+    // By itself vitest leaves one core to itself, half of a machine that has two.
+    maxWorkers: availableParallelism(),
+    sequence: { sequencer: BrowserFilesFirst },
     projects: [
       {
         test: {
@@ -35,7 +40,7 @@ export default defineConfig({
           include: ["tests/e2e/**/*.test.ts"],
           testTimeout: 180_000,
           hookTimeout: 180_000,
-          fileParallelism: false,
+          globalSetup: ["tests/e2e/demo-data.ts"],
         },
       },
     ],

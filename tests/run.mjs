@@ -16,10 +16,10 @@ const browser = findBrowser() ?? installBrowser();
 if (browser === undefined) console.error(HOW);
 build();
 
-const words = ["run", ...process.argv.slice(2)];
+const words = ["run", "--reporter=default", "--reporter=./tests/support/slowest-files.ts", ...process.argv.slice(2)];
 if (browser === undefined) words.push("--project", "node", "--project", "browser-dom");
 const results = process.env.VITEST_RESULTS;
-if (results !== undefined) words.push("--reporter=default", "--reporter=json", `--outputFile.json=${results}`);
+if (results !== undefined) words.push("--reporter=json", `--outputFile.json=${results}`);
 const code = runPackage("vitest/vitest.mjs", words, { env: { ...process.env, CHROMIUM_PATH: browser ?? "" } });
 if (browser === undefined) console.error(HOW);
 process.exit(browser === undefined ? code || 1 : code);

@@ -1,5 +1,5 @@
 import { type ChildProcess, spawn } from "node:child_process";
-import { existsSync } from "node:fs";
+import { cpSync, existsSync } from "node:fs";
 import type { AddressInfo } from "node:net";
 import { createServer } from "node:net";
 import { fileURLToPath } from "node:url";
@@ -26,6 +26,12 @@ export const ILSE = { name: "Ilse Marchetti", email: "ilse.marchetti@vihe.exampl
 export const TOMAS = { name: "Tomás Adeyemi", email: "tomas.adeyemi@vihe.example" };
 export const PETRA = { name: "Petra Vance", email: "petra.vance@vihe.example" };
 
+/**
+ * Conventions of these files. They run beside one another and beside the other tests, so a step waits for what it needs
+ * to see and never for a time. A `Product` begins with the demo study, copied from one made before the first file
+ * (`demo-data.ts`); where a study must be made by the program itself, see tests/server/program.test.ts.
+ */
+
 /** The built program over a folder of data of its own, which outlives it until `remove`. */
 export class Product {
   readonly #folder = temporaryFolder();
@@ -36,6 +42,8 @@ export class Product {
     if (!existsSync(PROGRAM))
       throw new Error("The program is not built: npm test builds it, and so does npm run build.");
     const product = new Product();
+    const demo = process.env.E2E_DEMO_DATA;
+    if (demo !== undefined) cpSync(demo, product.folder, { recursive: true });
     product.#port = await freePort();
     await product.start();
     return product;
@@ -45,8 +53,12 @@ export class Product {
     return `http://localhost:${this.#port}`;
   }
 
+  get folder(): string {
+    return this.#folder.path;
+  }
+
   get database(): string {
-    return `${this.#folder.path}/tangency.sqlite`;
+    return `${this.folder}/tangency.sqlite`;
   }
 
   async start(): Promise<void> {
@@ -59,7 +71,7 @@ export class Product {
         TEST: "",
         NODE_ENV: "production",
         PORT: String(this.#port),
-        TANGENCY_DATA: this.#folder.path,
+        TANGENCY_DATA: this.folder,
         TANGENCY_SIGN_INS_PER_MINUTE: "1000",
       },
     });
@@ -80,8 +92,13 @@ export class Product {
     return this.#end("SIGKILL");
   }
 
+  /** Ends the program as whoever keeps it would. */
+  stop(): Promise<void> {
+    return this.#end("SIGTERM");
+  }
+
   async remove(): Promise<void> {
-    await this.#end("SIGTERM");
+    await this.stop();
     this.#folder.remove();
   }
 
