@@ -9,6 +9,7 @@ import { afterFirstFinding } from "./workspace/first-finding.ts";
 /** What stands on the live document may come after what can be read without it. */
 const Workspace = lazy(() => afterFirstFinding(() => import("./pages/workspace.tsx")));
 const History = lazy(() => import("./pages/history.tsx"));
+const Compare = lazy(() => afterFirstFinding(() => import("./pages/compare.tsx")));
 const OpenedCell = lazy(() => afterFirstFinding(() => import("./pages/opened-cell.tsx")));
 
 /** A page loaded when it is first gone to. */
@@ -37,6 +38,7 @@ export function routes(client: QueryClient): RouteObject[] {
               children: [
                 { index: true, Component: Workspace },
                 { path: "cells/:cellId", Component: OpenedCell },
+                { path: "compare/:leftId/:rightId", Component: Compare },
                 { path: "history", Component: History },
               ],
             },

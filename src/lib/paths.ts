@@ -65,6 +65,7 @@ export const api = {
   reply: (studyId: string, remarkId: string, replyId: string) =>
     `${study(studyId)}/remarks/${part(remarkId)}/replies/${part(replyId)}`,
   history: (studyId: string) => `${study(studyId)}/history`,
+  latestEdits: (studyId: string) => `${study(studyId)}/history/latest`,
   checkpoints: (studyId: string) => `${study(studyId)}/checkpoints`,
   checkpoint: (studyId: string, checkpointId: string) => `${study(studyId)}/checkpoints/${part(checkpointId)}`,
   checkpointFile: (studyId: string, checkpointId: string) =>

@@ -1,3 +1,4 @@
+import { elasticitiesAt } from "../../shared/economics/elasticities.ts";
 import { matrixAt } from "../../shared/economics/slutsky.ts";
 import type { QuestionKind, Questions, Reply, Request } from "./protocol.ts";
 import { verifyCopy } from "./verify-copy.ts";
@@ -6,6 +7,7 @@ type Answers = { [K in QuestionKind]: (ask: Questions[K]["ask"]) => Questions[K]
 
 const ANSWERS: Answers = {
   matrix: ({ fitted, point, ...options }) => matrixAt(fitted, point, options),
+  elasticities: ({ fitted, point }) => elasticitiesAt(fitted, point),
   verification: (copy) => verifyCopy(copy, () => performance.now()),
 };
 

@@ -1,3 +1,4 @@
+import type { Elasticities } from "../../shared/economics/elasticities.ts";
 import type { RefereeCopy } from "../../shared/schemas/referee-copy.ts";
 import type { MatrixAtPoint } from "../../shared/schemas/slutsky.ts";
 import type { FittedSystem } from "../../shared/schemas/system.ts";
@@ -16,6 +17,7 @@ export interface Questions {
     };
     answer: MatrixAtPoint;
   };
+  elasticities: { ask: { readonly fitted: FittedSystem; readonly point: Point }; answer: Elasticities };
   verification: { ask: RefereeCopy; answer: Verification };
 }
 export type QuestionKind = keyof Questions;

@@ -10,6 +10,7 @@ import { usePageTitle } from "../../lib/page-title.ts";
 import { pages } from "../../lib/paths.ts";
 import { useStudyPart } from "../../sync/index.ts";
 import { BandSource, type SourcePage } from "../workspace/band-source.tsx";
+import { comparable } from "../workspace/comparable.ts";
 import { afterFirstFinding } from "../workspace/first-finding.ts";
 import { type OpenStudy, useOpenStudy } from "../workspace/open-study.ts";
 import { FindingAside, OpenedFinding } from "../workspace/opened-finding.tsx";
@@ -17,6 +18,7 @@ import { ReadByThread } from "../workspace/read-by-thread.tsx";
 import { StudyBar, type StudyDialog } from "../workspace/study-bar.tsx";
 import { StudyDialogs } from "../workspace/study-dialogs.tsx";
 import { TypingHere } from "../workspace/typing-here.tsx";
+import { useEscape } from "../workspace/use-escape.ts";
 import { useOneColumn } from "../workspace/use-source-pages.ts";
 import { useStandings } from "../workspace/use-standings.ts";
 import { useStudyActions } from "../workspace/use-study-actions.ts";
@@ -77,6 +79,7 @@ export default function OpenedCellPage() {
                       actions={{
                         rename: () => setRenaming(true),
                         ...(standing.kind === "data" && { uploads: () => setDialog("uploads") }),
+                        compareWith: comparable(study.id, standing, standings, (to) => void navigate(to)),
                         remove: () => {
                           actions.remove(cellId);
                           void navigate(pages.study(study.id));
@@ -126,17 +129,4 @@ function useTypingIn(cellId: string, connection: OpenStudy["connection"]) {
   const you = useStudyPart(connection, "you");
   const there = new Set(typists(cellId, whereabouts, you).map(({ id }) => id));
   return presentPeople(people, whereabouts, you).filter(({ person }) => there.has(person.id));
-}
-
-/** Escape leaves the opened cell, unless a field, a matrix or something laid over the page wants it. */
-function useEscape(leave: () => void): void {
-  useEffect(() => {
-    const onKeyDown = (event: KeyboardEvent) => {
-      if (event.key !== "Escape" || event.defaultPrevented || !(event.target instanceof HTMLElement)) return;
-      if (event.target.closest("[role=dialog], [role=menu], input, textarea, select, [contenteditable=true]")) return;
-      leave();
-    };
-    document.addEventListener("keydown", onKeyDown);
-    return () => document.removeEventListener("keydown", onKeyDown);
-  }, [leave]);
 }

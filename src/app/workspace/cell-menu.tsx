@@ -6,6 +6,9 @@ export interface CellActions {
   readonly moveUp?: () => void;
   readonly moveDown?: () => void;
   readonly uploads?: () => void;
+  readonly history?: () => void;
+  /** Of a system: the others it can be set beside. */
+  readonly compareWith?: readonly { readonly name: string; readonly go: () => void }[];
   readonly remove: () => void;
 }
 
@@ -28,7 +31,13 @@ export function CellMenu({ name, actions }: { name: string; actions: CellActions
           entry("up", "Move up", actions.moveUp),
           entry("down", "Move down", actions.moveDown),
         ],
-        actions.uploads ? [entry("uploads", "Uploads of the study", actions.uploads)] : [],
+        (actions.compareWith ?? []).map((other) =>
+          entry(`compare ${other.name}`, `Compare with ${other.name}`, other.go),
+        ),
+        [
+          ...(actions.uploads ? [entry("uploads", "Uploads of the study", actions.uploads)] : []),
+          ...(actions.history ? [entry("history", "History of this cell", actions.history)] : []),
+        ],
         [entry("remove", "Remove", actions.remove)],
       ]}
     />

@@ -1,5 +1,5 @@
 import { useEffect, useId, useMemo } from "react";
-import { useParams } from "react-router-dom";
+import { useMatch, useParams } from "react-router-dom";
 import type { StudySummary } from "../../../shared/schemas/resources.ts";
 import type { StudyStatus } from "../../../shared/schemas/status.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
@@ -26,11 +26,14 @@ const nothing = () => {};
  * findings in the place where they will stay, under the very source that found them.
  */
 export function FirstLook({ study }: { study: StudySummary }) {
-  const { cellId } = useParams();
+  const { cellId: openedId, leftId } = useParams();
+  // Of two systems set beside each other, and of the history, nothing is shown beforehand.
+  const isHistory = useMatch("/studies/:studyId/history") !== null;
+  const cellId = openedId ?? leftId ?? (isHistory ? "none" : undefined);
   const { data: status, isError } = useStatus(study.id);
   const cells = useMemo(() => cellsTold(status), [status]);
   const standings = useMemo(() => standingsTold(cells, status), [cells, status]);
-  const opened = standings.find(({ cell }) => cell.id === cellId);
+  const opened = openedId ? standings.find(({ cell }) => cell.id === openedId) : undefined;
   const isNothingToRead =
     isError || (status !== undefined && (cellId ? !opened?.fingerprint : !standings.some((one) => one.fingerprint)));
   useEffect(() => {

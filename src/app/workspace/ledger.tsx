@@ -12,6 +12,7 @@ import { useStudyPart } from "../../sync/index.ts";
 import { AddCellBand } from "./add-cell-band.tsx";
 import { addressOf, beginRemark, focusBand } from "./addresses.ts";
 import { CellBand } from "./cell-band.tsx";
+import { comparable } from "./comparable.ts";
 import { HeadBand } from "./head-band.tsx";
 import type { OpenStudy } from "./open-study.ts";
 import { RemovedCell } from "./removed-cell.tsx";
@@ -103,6 +104,7 @@ export function Ledger(props: LedgerProps) {
                 ...(place > 0 && { moveUp: () => actions.move(standing.cell.id, -1) }),
                 ...(place < standings.length - 1 && { moveDown: () => actions.move(standing.cell.id, 1) }),
                 ...(standing.kind === "data" && { uploads: onUploads }),
+                compareWith: comparable(study.id, standing, standings, (to) => void navigate(to)),
               }}
               remarking={remarking}
               typing={typing.get(standing.cell.id) ?? NOBODY}
