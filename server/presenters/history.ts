@@ -1,7 +1,14 @@
-import type { Checkpoint, CheckpointSummary, HistoryPage, PastCell, Sitting } from "../../shared/schemas/history.ts";
+import type {
+  Checkpoint,
+  CheckpointSummary,
+  HistoryPage,
+  LatestEdits,
+  PastCell,
+  Sitting,
+} from "../../shared/schemas/history.ts";
 import type { CellSource } from "../../shared/study/cell-source.ts";
 import type { CheckpointSummaryRow, CheckpointView } from "../services/checkpoints.ts";
-import type { HistoryView, SittingView } from "../services/history.ts";
+import type { HistoryView, LatestEditView, SittingView } from "../services/history.ts";
 
 export function presentHistory({ sittings, next, names }: HistoryView): HistoryPage {
   return {
@@ -20,6 +27,15 @@ function presentSitting(sitting: SittingView, names: HistoryView["names"]): Sitt
     to: endedAt.toISOString(),
     ...(before !== undefined && { before: presentPastCell(before) }),
     ...(after !== undefined && { after: presentPastCell(after) }),
+  };
+}
+
+export function presentLatestEdit({ cell, by, byName, at }: LatestEditView): LatestEdits[number] {
+  return {
+    cellId: cell.id,
+    cellName: cell.name,
+    ...(by !== undefined && { by: presentWriter(by, byName) }),
+    at: at.toISOString(),
   };
 }
 

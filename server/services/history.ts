@@ -1,7 +1,7 @@
 import type { HistoryQuery } from "../../shared/schemas/history.ts";
 import type { CellSource } from "../../shared/study/cell-source.ts";
 import type { Database } from "../db/client.ts";
-import { namesOf, type SittingRow, sittingsOf } from "../db/queries/sittings.ts";
+import { type LastEdit, lastEdits, namesOf, type SittingRow, sittingsOf } from "../db/queries/sittings.ts";
 import type { Actor } from "../policies/can.ts";
 import type { Access } from "./access.ts";
 import type { SourcesOf } from "./ports.ts";
@@ -18,6 +18,11 @@ export interface HistoryView {
   readonly names: ReadonlyMap<string, string>;
 }
 
+export interface LatestEditView extends LastEdit {
+  readonly cell: CellSource;
+  readonly byName: string | undefined;
+}
+
 interface Collaborators {
   readonly db: Database;
   readonly access: Access;
@@ -32,6 +37,17 @@ export type HistoryService = ReturnType<typeof createHistoryService>;
 
 export function createHistoryService({ db, access, sourcesOf }: Collaborators) {
   return {
+    /** Who edited each cell of the study last, in their order; a cell from before the history was kept is left out. */
+    async latest(actor: Actor, studyId: string): Promise<LatestEditView[]> {
+      access.allow(actor, "history.read", studyId);
+      const edits = lastEdits(db, studyId);
+      const names = namesOf(db, [...new Set([...edits.values()].flatMap(({ by }) => by ?? []))]);
+      return (await sourcesOf(studyId)).flatMap((cell) => {
+        const edit = edits.get(cell.id);
+        return edit === undefined ? [] : [{ ...edit, cell, byName: edit.by && names.get(edit.by) }];
+      });
+    },
+
     /** A page of who edited which cell, the newest first. Nothing is computed here: what differs is told where it is read. */
     async read(actor: Actor, studyId: string, { cell, person, before }: HistoryQuery): Promise<HistoryView> {
       access.allow(actor, "history.read", studyId);

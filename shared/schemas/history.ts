@@ -30,6 +30,12 @@ export type Sitting = z.infer<typeof sitting>;
 export const historyPage = z.strictObject({ sittings: z.array(sitting), next: count.optional() });
 export type HistoryPage = z.infer<typeof historyPage>;
 
+/** GET /api/studies/:studyId/history/latest: who edited each cell last, and when; nobody where the program did. */
+export const latestEdits = z.array(
+  z.strictObject({ cellId: identifier, cellName: z.string(), by: writer.optional(), at: instant }),
+);
+export type LatestEdits = z.infer<typeof latestEdits>;
+
 export const historyQuery = z.strictObject({
   cell: identifier.optional(),
   person: identifier.optional(),

@@ -1,7 +1,9 @@
 import { lazy, Suspense } from "react";
+import { useNavigate } from "react-router-dom";
 import type { Upload } from "../../../shared/schemas/resources.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { SwitchWords } from "../../components/switch-words.tsx";
+import { pages } from "../../lib/paths.ts";
 import type { StudyConnection } from "../../sync/index.ts";
 import { type CellActions, CellMenu } from "./cell-menu.tsx";
 import { CellName } from "./cell-name.tsx";
@@ -45,6 +47,8 @@ const WORDS = [
 export function BandSource(props: BandSourceProps) {
   const { standing, cells, page, onPage, headingId, readOnly, typing, title } = props;
   const { cell } = standing;
+  const navigate = useNavigate();
+  const history = () => void navigate(`${pages.history(props.studyId)}?cell=${encodeURIComponent(cell.id)}`);
   const idOf = (name: string) => cells.find((one) => one.name === name)?.id;
   return (
     <>
@@ -65,7 +69,7 @@ export function BandSource(props: BandSourceProps) {
             value={page === "closed" ? undefined : page}
             onChange={(next) => onPage(next)}
           />
-          {!readOnly && <CellMenu name={cell.name} actions={props.actions} />}
+          {!readOnly && <CellMenu name={cell.name} actions={{ ...props.actions, history }} />}
         </div>
       </div>
       {title && <h2 className="sr-only">Source</h2>}

@@ -1,4 +1,5 @@
-import type { ReactNode } from "react";
+import { lazy, type ReactNode, Suspense } from "react";
+import { useParams } from "react-router-dom";
 import { capital } from "../../../shared/study/words.ts";
 import { StateWords } from "../../components/state-shape.tsx";
 import { aboutInWords, durationInWords, whenInWords } from "../../lib/dates.ts";
@@ -18,6 +19,8 @@ export function stateDetail({ state, because, last, aboutMs, kind }: Standing): 
   return because ?? "";
 }
 
+const WhoAndWhen = lazy(() => import("./who-and-when.tsx"));
+
 interface StateLineProps {
   readonly standing: Standing;
   /** Who is typing here, where the page has no room for it beside the source. */
@@ -36,11 +39,23 @@ export function StateLine({ standing, beside, actions }: StateLineProps) {
           <>
             <StateWords state={standing.state} words={capital(standing.state)} />
             <span className="text-ink2 tabular-nums">{stateDetail(standing)}</span>
+            <OutOfDateBy standing={standing} />
           </>
         )}
         {beside}
       </p>
       {actions && <div className="no-print type-small flex flex-wrap items-baseline gap-x-5">{actions}</div>}
     </div>
+  );
+}
+
+/** Of a finding out of date also who changed what it answers, and when. */
+function OutOfDateBy({ standing }: { standing: Standing }) {
+  const { studyId } = useParams();
+  if (standing.state !== "out of date" || !standing.last || !studyId) return null;
+  return (
+    <Suspense>
+      <WhoAndWhen studyId={studyId} standing={standing} last={standing.last} />
+    </Suspense>
   );
 }

@@ -22,7 +22,6 @@ export function DifferingSource({ label, before, after }: DifferingSourceProps) 
       <pre className="past-source type-source">
         {shown.map((part, place) => (
           // Lines are told apart by nothing but their place.
-          // biome-ignore lint/suspicious/noArrayIndexKey: see above
           <Fragment key={place}>
             {"line" in part ? <Line line={part.line} /> : <em>{`… ${counted(part.folded, "line")} as before\n`}</em>}
           </Fragment>
@@ -42,15 +41,7 @@ function Line({ line }: { line: DifferingLine }) {
   return (
     <>
       {line.map(({ kind, text }, place) =>
-        kind === "same" ? (
-          text
-        ) : kind === "struck" ? (
-          // biome-ignore lint/suspicious/noArrayIndexKey: pieces stand in one order
-          <del key={place}>{text}</del>
-        ) : (
-          // biome-ignore lint/suspicious/noArrayIndexKey: pieces stand in one order
-          <ins key={place}>{text}</ins>
-        ),
+        kind === "same" ? text : kind === "struck" ? <del key={place}>{text}</del> : <ins key={place}>{text}</ins>,
       )}
       {"\n"}
     </>

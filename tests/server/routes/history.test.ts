@@ -3,7 +3,7 @@ import { insertPerson } from "../../../server/db/queries/people.ts";
 import { noteEdits } from "../../../server/db/queries/sittings.ts";
 import { cellSittings } from "../../../server/db/schema/history.ts";
 import { createCheckpointService } from "../../../server/services/checkpoints.ts";
-import { checkpoint, checkpointSummary, historyPage, returning } from "../../../shared/schemas/history.ts";
+import { checkpoint, checkpointSummary, historyPage, latestEdits, returning } from "../../../shared/schemas/history.ts";
 import { parseStudyFile } from "../../../shared/study/study-file.ts";
 import { type Application, startApplication, type Visitor } from "../../support/application.ts";
 
@@ -66,6 +66,17 @@ describe("the history of a study", () => {
       { people: [{ name: "Ilse Marchetti" }], after: { source: "form: la-aids\n" } },
     ]);
     expect(sittings[1].before).toBeUndefined();
+  });
+
+  test("tells in short who edited each cell last", async () => {
+    expect((await application.stranger.ask("GET", study("/history/latest"))).status).toBe(401);
+    expect((await outsider.ask("GET", study("/history/latest"))).status).toBe(404);
+    edited(owner.id, 0, undefined, "a");
+    edited(coauthor.id, 9, "a", "b");
+    edited(owner.id, 12, undefined, "of a cell that is gone", "gone");
+    expect(latestEdits.parse((await reader.ask("GET", study("/history/latest"))).body)).toEqual([
+      { cellId, cellName: "base", by: { id: coauthor.id, name: "Tomas Adeyemi" }, at: at(9).toISOString() },
+    ]);
   });
 
   test("is read by cell and by person", async () => {
