@@ -12,6 +12,11 @@ function calendarDate(then: Date, now: Date): string {
   return `${then.getDate()} ${then.toLocaleDateString("en-GB", { month: "long" })}${year}`;
 }
 
+/** A date to come or gone by: "15 December", with its year when that is another. */
+export function dateInWords(instant: string | number | Date, now = new Date()): string {
+  return calendarDate(new Date(instant), now);
+}
+
 /** A clock time today, a weekday this week, a date after: "14:08", "Tuesday", "9 March". */
 export function whenInWords(instant: string | number | Date, now = new Date()): string {
   const then = new Date(instant);
@@ -33,9 +38,15 @@ export function dayInWords(instant: string | number | Date, now = new Date()): s
 }
 
 /** A moment of any day, to the minute: "14:08", "Tuesday 14:08", "9 March 14:08". */
-export function momentInWords(instant: string | number | Date, now = new Date()): string {
+export function minuteInWords(instant: string | number | Date, now = new Date()): string {
   const then = new Date(instant);
   return daysBetween(then, now) <= 0 ? clock(then) : `${whenInWords(then, now)} ${clock(then)}`;
+}
+
+/** A moment to the minute: "14:08" today, "9 March, 14:08" on another day. */
+export function momentInWords(instant: string | number | Date, now = new Date()): string {
+  const then = new Date(instant);
+  return daysBetween(then, now) === 0 ? clock(then) : `${calendarDate(then, now)}, ${clock(then)}`;
 }
 
 /** How long ago a change was: "2 minutes ago", "at 9:05", "yesterday", "on Tuesday", "on 4 March". */

@@ -1,7 +1,7 @@
 import { useDeferredValue, useEffect, useState } from "react";
 import type { LatestEdits } from "../../../shared/schemas/history.ts";
 import { LinkWord } from "../../components/button.tsx";
-import { clockTime, momentInWords } from "../../lib/dates.ts";
+import { clockTime, minuteInWords } from "../../lib/dates.ts";
 import { pages } from "../../lib/paths.ts";
 import { useLatestEdits } from "./api/get-latest-edits.ts";
 
@@ -25,7 +25,7 @@ export function WhoAndWhen({ studyId, you, what, ...asked }: WhoAndWhenProps) {
   if (edit === undefined) return null;
   const name =
     edit.by === undefined ? "the program" : edit.by.id === you ? "you" : (edit.by.name ?? "someone no longer here");
-  const moment = momentInWords(edit.at);
+  const moment = minuteInWords(edit.at);
   const when = moment === clockTime(edit.at) ? `at ${moment}` : `on ${moment}`;
   return (
     <LinkWord quiet to={`${pages.history(studyId)}?cell=${encodeURIComponent(edit.cellId)}`}>
