@@ -187,7 +187,10 @@ const differences = ({ pairs }: ComparedRow, decimals: number): TableCell[] =>
     return value === undefined ? EMPTY : { kind: "number", value, printed: printFixed(value, decimals) };
   });
 
-/** "The expenditure elasticities differ most for dairy: 0.912 in base and 0.943 in linear."; none where no good is in both. */
+/**
+ * "The expenditure elasticities differ by 0.031 at most: dairy, 0.912 in base and 0.943 in linear."; none where no good
+ * is in both.
+ */
 export function largestDifference(
   { goods, rows }: Compared,
   label: (typeof OWN_ELASTICITIES)[number],
@@ -201,7 +204,9 @@ export function largestDifference(
   if (!pair?.left || !pair.right) return undefined;
   const kind = label === "Expenditure" ? "expenditure" : "own-price";
   const [one, other] = [pair.left, pair.right].map(({ value }) => printFixed(value, decimals));
-  return `The ${kind} elasticities differ most for ${goods[place]}: ${one} in ${left} and ${other} in ${right}.`;
+  const least = 10 ** -decimals;
+  if (sizes[place] < least) return `The ${kind} elasticities differ by less than ${printFixed(least, decimals)} for every good.`;
+  return `The ${kind} elasticities differ by ${printFixed(sizes[place], decimals)} at most: ${goods[place]}, ${one} in ${left} and ${other} in ${right}.`;
 }
 
 /** What is said of two systems that do not rest on the same rows of the same data; nothing where they do. */

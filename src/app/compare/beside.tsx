@@ -1,12 +1,20 @@
 import { type ReactNode, useId } from "react";
 import { SideMark } from "./side-mark.tsx";
 
+interface SectionProps {
+  readonly title: string;
+  readonly said?: ReactNode;
+  /** Whether all of it stands across both pages. */
+  readonly wide?: boolean;
+  readonly children: ReactNode;
+}
+
 /** A section of the comparison: its heading on the left page, what is said of both on the right. */
-export function BesideSection({ title, said, children }: { title: string; said?: ReactNode; children: ReactNode }) {
+export function BesideSection({ title, said, wide = false, children }: SectionProps) {
   const id = useId();
   return (
     <section aria-labelledby={id} className="beside-section">
-      <div className="beside-title">
+      <div className={`beside-title ${wide ? "bg-recto" : ""}`}>
         <h2 id={id} className="type-section">
           {title}
         </h2>

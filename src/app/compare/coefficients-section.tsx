@@ -23,7 +23,7 @@ export function CoefficientsSection({ left, right }: { left: EstimatedSystem; ri
     notes: [note],
   });
   return (
-    <BesideSection title="Coefficients" said={<CopyTable table={table} />}>
+    <BesideSection wide title="Coefficients" said={<CopyTable table={table} />}>
       <BesideWide>
         <ComparedView
           compared={compared}

@@ -25,7 +25,9 @@ interface ViewProps {
 }
 
 const HEAD = "sticky left-0 bg-recto py-0.5 pr-4 text-left font-normal whitespace-nowrap";
-const CELL = "py-0.5 pr-[0.33em] pl-4 text-right align-top whitespace-nowrap";
+const CELL = "pb-0.5 pr-[0.33em] pl-4 text-right align-top whitespace-nowrap";
+/** Level with the name of the system, which the first line has below the name of the number. */
+const LEVEL = "pt-7";
 
 /** Two systems' numbers, name by name: the left one's line, the right one's, and the difference. */
 export function ComparedView({ compared, caption, corner, names, decimals, folded }: ViewProps) {
@@ -89,7 +91,7 @@ function Lines({ row, goods, names, decimals }: LinesProps) {
           </span>
         </th>
         {row.pairs.map((pair, i) => (
-          <td key={goods[i]} className={`${CELL} ${isFirst ? "align-bottom" : ""}`}>
+          <td key={goods[i]} className={`${CELL} ${isFirst ? LEVEL : "pt-0.5"}`}>
             <One estimate={pair[side]} decimals={decimals} />
           </td>
         ))}
@@ -110,7 +112,7 @@ function Lines({ row, goods, names, decimals }: LinesProps) {
           </span>
         </th>
         {row.pairs.map((pair, i) => (
-          <td key={goods[i]} className={`${CELL} text-ink2`}>
+          <td key={goods[i]} className={`${CELL} pt-0.5 text-ink2`}>
             <Difference pair={pair} decimals={decimals} />
           </td>
         ))}

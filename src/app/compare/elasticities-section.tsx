@@ -37,7 +37,7 @@ export function ElasticitiesSection({ left, right }: Sides) {
     return <Found left={left} right={right} ours={found.left} theirs={found.right} />;
   }
   return (
-    <BesideSection title="Elasticities">
+    <BesideSection wide title="Elasticities">
       <BesideWide>
         <p role="status" className="type-small text-ink2">
           {found.state === "computing" ? "Computing the elasticities" : `They cannot be computed: ${found.reason}.`}
@@ -69,7 +69,7 @@ function Found({ left, right, ours, theirs }: Sides & { ours: Elasticities; thei
   );
   const row = compared.rows.find(({ label }) => label === which);
   return (
-    <BesideSection title="Elasticities" said={<CopyTable table={table} />}>
+    <BesideSection wide title="Elasticities" said={<CopyTable table={table} />}>
       <BesideWide>
         <p className="type-finding mb-3 max-w-[62ch] text-pretty">{sentences.join(" ")}</p>
         <SwitchWords label="Elasticity in the picture" words={WORDS} value={which} onChange={setWhich} />
