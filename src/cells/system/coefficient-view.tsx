@@ -55,7 +55,7 @@ function Row({ row, goods, intervals }: RowProps) {
         <AnchorMark of={`row ${rowName(row)}`} />
       </th>
       {row.cells.map((cell, index) => (
-        <td key={goods[index]} className="py-0.5 pr-[0.33em] pl-3 text-right align-top">
+        <td key={goods[index]} className="relative py-0.5 pr-[0.33em] pl-3 text-right align-top">
           {cell.kind === "estimate" && (
             <Estimate
               value={cell.printed}
@@ -63,7 +63,9 @@ function Row({ row, goods, intervals }: RowProps) {
               interval={intervals ? cell.printedInterval : undefined}
             />
           )}
-          <AnchorMark of={`entry ${rowName(row)}, ${capital(goods[index])}`} />
+          <span className="entry-mark">
+            <AnchorMark of={`entry ${rowName(row)}, ${capital(goods[index])}`} />
+          </span>
         </td>
       ))}
     </tr>

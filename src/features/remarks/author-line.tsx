@@ -1,3 +1,4 @@
+import type { ReactNode } from "react";
 import type { RemarkReply } from "../../../shared/schemas/remarks.ts";
 import { whenInWords } from "../../lib/dates.ts";
 import type { PersonColour } from "../../sync/index.ts";
@@ -8,14 +9,16 @@ interface AuthorLineProps {
   readonly writtenAt: string;
   readonly editedAt?: string;
   readonly full?: boolean;
-  readonly children?: React.ReactNode;
+  /** The letter, before the name. */
+  readonly children?: ReactNode;
+  readonly after?: ReactNode;
 }
 
 /** Who, underlined in their colour while they are here, and when. */
-export function AuthorLine({ author, colour, writtenAt, editedAt, full = false, children }: AuthorLineProps) {
+export function AuthorLine({ author, colour, writtenAt, editedAt, full = false, children, after }: AuthorLineProps) {
   const first = author.name.trim().split(/\s+/)[0] ?? author.name;
   return (
-    <p className="remark-author">
+    <div className="remark-author">
       {children}
       <b
         className="remark-name"
@@ -35,7 +38,8 @@ export function AuthorLine({ author, colour, writtenAt, editedAt, full = false, 
           , edited {whenInWords(editedAt)}
         </span>
       )}
-    </p>
+      {after && <span className="remark-after">{after}</span>}
+    </div>
   );
 }
 

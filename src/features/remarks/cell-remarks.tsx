@@ -36,7 +36,7 @@ export function CellRemarks({ setting, cell, remarks, letters, opened, isOpen, o
   useLaidOver(margin, isOpen, () => onOpen(false));
   const lead = { id, isOpen, onOpen };
   return (
-    <aside
+    <section
       ref={margin}
       aria-label={`Remarks on ${cell.name}`}
       className="remarks no-print"
@@ -84,7 +84,7 @@ export function CellRemarks({ setting, cell, remarks, letters, opened, isOpen, o
           Add a remark <span className="sr-only">on {cell.name}</span>
         </Word>
       )}
-    </aside>
+    </section>
   );
 }
 

@@ -14,6 +14,7 @@ import { RemarkForm } from "./remark-form.tsx";
 import type { RemarkSetting } from "./remark-setting.ts";
 import { RemarkText } from "./remark-text.tsx";
 import { ReplyEntry } from "./reply-entry.tsx";
+import { WithdrawWords } from "./withdraw-words.tsx";
 
 interface RemarkEntryProps {
   readonly setting: RemarkSetting;
@@ -39,7 +40,7 @@ export function RemarkEntry({ setting, remark, letter, onLetter, above }: Remark
       <AuthorLine {...remark} colour={setting.colourOf(author.id)} full={isFull}>
         {letter && onLetter && <Letter letter={letter} remark={remark} onFollow={onLetter} />}
       </AuthorLine>
-      {remark.anchor && !onLetter && <p className="text-ink2">on {anchorInWords(remark.anchor)}</p>}
+      {remark.anchor && !onLetter && !isFull && <p className="text-ink2">on {anchorInWords(remark.anchor)}</p>}
       {isEditing ? (
         <RemarkForm
           setting={setting}
@@ -47,6 +48,7 @@ export function RemarkEntry({ setting, remark, letter, onLetter, above }: Remark
           of={`edit/${remark.id}`}
           before={remark.text}
           word="Keep the change"
+          beside={<WithdrawWords studyId={setting.studyId} remarkId={remark.id} of={`the remark by ${author.name}`} />}
           send={({ text }) => reword.mutateAsync(text)}
           onDone={() => setEditing(false)}
         />

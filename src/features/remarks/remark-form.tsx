@@ -1,4 +1,4 @@
-import { type FormEvent, type KeyboardEvent, useId, useState } from "react";
+import { type FormEvent, type KeyboardEvent, type ReactNode, useId, useState } from "react";
 import { LONGEST_REMARK } from "../../../shared/schemas/remarks.ts";
 import { Button, Word } from "../../components/button.tsx";
 import { Fault } from "../../components/field.tsx";
@@ -18,13 +18,15 @@ interface RemarkFormProps {
   readonly word: string;
   /** Places that may be spoken of; without it there is no choice. */
   readonly places?: readonly string[];
+  /** Stands at the end of the form. */
+  readonly beside?: ReactNode;
   readonly send: (draft: Draft) => Promise<unknown>;
   /** The field has gone: sent, or put away with its words kept. */
   readonly onDone: () => void;
 }
 
 /** A field for a remark or a reply. What is written is kept until it has been sent, whatever happens. */
-export function RemarkForm({ setting, label, of, before = "", word, places, send, onDone }: RemarkFormProps) {
+export function RemarkForm({ setting, label, of, before = "", word, places, beside, send, onDone }: RemarkFormProps) {
   const id = useId();
   const { draft, write, forget } = useDraft(setting.me.id, `${setting.studyId}/${of}`, { text: before });
   const [isSending, setSending] = useState(false);
@@ -99,6 +101,7 @@ export function RemarkForm({ setting, label, of, before = "", word, places, send
         <Word quiet className="type-small" onClick={onDone}>
           Put away
         </Word>
+        {beside}
       </div>
     </form>
   );

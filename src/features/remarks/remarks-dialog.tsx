@@ -7,6 +7,7 @@ import { Fault } from "../../components/field.tsx";
 import { SwitchWords } from "../../components/switch-words.tsx";
 import { sentenceOf } from "../../lib/api.ts";
 import { useRemarks } from "./api/list-remarks.ts";
+import { anchorInWords } from "./letters.ts";
 import { RemarkEntry } from "./remark-entry.tsx";
 import type { RemarkSetting } from "./remark-setting.ts";
 
@@ -63,19 +64,21 @@ export default function RemarksDialog({ setting, onClose, onGo }: RemarksDialogP
 }
 
 function CellLine({ remark, onGo }: { remark: Remark; onGo: (remark: Remark) => void }) {
+  const about = remark.anchor === undefined ? "" : `, on ${anchorInWords(remark.anchor)}`;
   if (!remark.cellIsThere) {
     return (
       <p className="text-ink2">
-        <span className="font-serif text-base">{remark.cellName}</span>, which is not in the study any more
+        <span className="font-serif text-base">{remark.cellName}</span>
+        {about}; the cell is not in the study any more
       </p>
     );
   }
   return (
-    <p>
+    <p className="text-ink2">
       <Word onClick={() => onGo(remark)}>
-        <span className="sr-only">Go to </span>
-        <span className="font-serif text-base">{remark.cellName}</span>
+        <span className="sr-only">Go to</span> <span className="font-serif text-base">{remark.cellName}</span>
       </Word>
+      {about}
     </p>
   );
 }

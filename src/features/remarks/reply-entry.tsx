@@ -6,6 +6,7 @@ import { OwnWords } from "./own-words.tsx";
 import { RemarkForm } from "./remark-form.tsx";
 import type { RemarkSetting } from "./remark-setting.ts";
 import { RemarkText } from "./remark-text.tsx";
+import { WithdrawWords } from "./withdraw-words.tsx";
 
 interface ReplyEntryProps {
   readonly setting: RemarkSetting;
@@ -19,9 +20,15 @@ export function ReplyEntry({ setting, remarkId, reply, full }: ReplyEntryProps) 
   const [isEditing, setEditing] = useState(false);
   const reword = useReword(setting.studyId, remarkId, reply.id);
   const { author, may } = reply;
+  const where = { studyId: setting.studyId, remarkId, replyId: reply.id, of: `the reply by ${author.name}` };
   return (
     <li className="remark-reply">
-      <AuthorLine {...reply} colour={setting.colourOf(author.id)} full={full} />
+      <AuthorLine
+        {...reply}
+        colour={setting.colourOf(author.id)}
+        full={full}
+        after={!isEditing && <OwnWords {...where} may={may} onEdit={() => setEditing(true)} />}
+      />
       {isEditing ? (
         <RemarkForm
           setting={setting}
@@ -29,25 +36,12 @@ export function ReplyEntry({ setting, remarkId, reply, full }: ReplyEntryProps) 
           of={`edit/${reply.id}`}
           before={reply.text}
           word="Keep the change"
+          beside={<WithdrawWords {...where} />}
           send={({ text }) => reword.mutateAsync(text)}
           onDone={() => setEditing(false)}
         />
       ) : (
-        <>
-          <RemarkText key={reply.text} text={reply.text} />
-          {(may.edit || may.withdraw) && (
-            <div className="remark-words">
-              <OwnWords
-                studyId={setting.studyId}
-                remarkId={remarkId}
-                replyId={reply.id}
-                may={may}
-                of={`the reply by ${author.name}`}
-                onEdit={() => setEditing(true)}
-              />
-            </div>
-          )}
-        </>
+        <RemarkText key={reply.text} text={reply.text} />
       )}
     </li>
   );
