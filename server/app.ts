@@ -88,10 +88,10 @@ type PeopleApi = Pick<AppDependencies, "auth" | "config" | "services" | "install
   readonly mailLimits: RequestHandler[];
 };
 
-/** Who comes in, who is in a study, whose the installation is. */
+/** Who comes in, who is in a study or reads a copy of it, whose the installation is: all that has messages sent. */
 function peopleApi({ auth, config, services, installation, mailLimits }: PeopleApi) {
   const router = express.Router();
-  const { people, accounts, ownAccount, invitations, administration, journal } = services;
+  const { people, accounts, ownAccount, invitations, refereeCopies, administration, journal } = services;
   const enter = enterBy(auth);
   const limit = limitLinks(config.limits.signInsPerMinute);
   router.use(doorRoutes({ installation, administration }));
@@ -108,13 +108,20 @@ function peopleApi({ auth, config, services, installation, mailLimits }: PeopleA
   router.use(peopleRoutes({ people }));
   router.use(invitationRoutes({ invitations, enter, limitMail: mailLimits, limit }));
   router.use(journalRoutes({ journal }));
+  router.use(
+    refereeCopyRoutes({
+      refereeCopies,
+      limit: limitRefereeReads(config.limits.refereeReadsPerMinute),
+      limitMail: mailLimits,
+    }),
+  );
   router.use(administrationRoutes({ administration }));
   return router;
 }
 
 function apiRoutes({ config, services }: Pick<AppDependencies, "config" | "services">) {
   const router = express.Router();
-  const { studies, uploads, cells, refereeCopies, remarks, access, history, checkpoints } = services;
+  const { studies, uploads, cells, remarks, access, history, checkpoints } = services;
   router.use(studyRoutes({ studies }));
   router.use(deletedStudyRoutes({ studies }));
   router.use(uploadRoutes({ uploads, limit: limitUploads(config.limits.uploadsPerHour) }));
@@ -122,6 +129,5 @@ function apiRoutes({ config, services }: Pick<AppDependencies, "config" | "servi
   router.use(remarkRoutes({ remarks, limit: limitRemarks(REMARKS_PER_MINUTE) }));
   router.use(historyRoutes({ history }));
   router.use(checkpointRoutes({ checkpoints }));
-  router.use(refereeCopyRoutes({ refereeCopies, limit: limitRefereeReads(config.limits.refereeReadsPerMinute) }));
   return router;
 }

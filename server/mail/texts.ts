@@ -91,3 +91,20 @@ export const ownershipHandedOver = (about: { from: string; study: string; link: 
     `${about.from} has handed the study “${about.study}” over to you. You own it now; ${about.from} stays as a coauthor.`,
     `It is here:\n${about.link}`,
   );
+
+/** To a referee. Where the authors are withheld, the letter does not name them either. */
+export function refereeLink(about: {
+  readonly study: string;
+  readonly authors: readonly string[] | undefined;
+  readonly link: string;
+  readonly until: Date | undefined;
+}): Words {
+  const by = about.authors === undefined ? "" : ` by ${about.authors.join(", ")}`;
+  const day = about.until?.toLocaleDateString("en-GB", { day: "numeric", month: "long", year: "numeric" });
+  return letter(
+    `A referee copy of “${about.study}”`,
+    `You are sent a sealed copy of “${about.study}”${by}: its Slutsky matrix, the checks, the specification and the coefficients. Your own browser computes the matrix again and says how far it is from the sealed one.`,
+    `It is read here, without an account:\n${about.link}`,
+    `${day === undefined ? "The link opens until it is withdrawn." : `The link opens until ${day}.`} Whoever has it can read the copy; it holds no household's data.`,
+  );
+}

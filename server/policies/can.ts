@@ -39,6 +39,7 @@ const ALLOWED = {
   "remark.withdraw": ["owner"],
   "referee copy.read": ["owner"],
   "referee copy.seal": ["owner"],
+  "referee copy.change": ["owner"],
   "referee copy.revoke": ["owner"],
 } as const satisfies Record<string, readonly Role[]>;
 

@@ -91,6 +91,6 @@ export function createServices({
     remarks: createRemarkService({ db, access, sourcesOf, remarksChanged }),
     history: createHistoryService({ db, access, sourcesOf }),
     checkpoints: createCheckpointService({ db, access, sourcesOf }),
-    refereeCopies: createRefereeCopyService({ db, access, cells, sourcesOf, program, record }),
+    refereeCopies: createRefereeCopyService({ db, access, cells, sourcesOf, program, record, mail, url }),
   };
 }

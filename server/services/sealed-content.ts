@@ -1,7 +1,9 @@
+import type { FindingOf } from "../../shared/schemas/cell.ts";
 import type { DataFinding } from "../../shared/schemas/data.ts";
-import type { SealedContent } from "../../shared/schemas/referee-copy.ts";
+import type { AlsoKind, SealedAlso, SealedContent, SealedSlutsky } from "../../shared/schemas/referee-copy.ts";
 import type { SlutskyFinding } from "../../shared/schemas/slutsky.ts";
 import type { SystemFinding } from "../../shared/schemas/system.ts";
+import type { TestsFinding } from "../../shared/schemas/tests.ts";
 import type { CellSource } from "../../shared/study/cell-source.ts";
 import { setKey } from "../../shared/study/edit.ts";
 import { withoutDraws } from "../../shared/study/without-draws.ts";
@@ -11,6 +13,15 @@ export interface SealedCells {
   readonly matrix: { readonly cell: CellSource; readonly finding: SlutskyFinding };
   readonly system: { readonly cell: CellSource; readonly finding: SystemFinding };
   readonly data: { readonly cell: CellSource; readonly finding: DataFinding };
+  /** Further findings, in the order asked for. */
+  readonly also?: readonly AlsoCell[];
+  /** What those rest on besides the three above and themselves: their sources go along. */
+  readonly read?: readonly CellSource[];
+}
+
+export interface AlsoCell {
+  readonly cell: CellSource;
+  readonly finding: FindingOf<AlsoKind>;
 }
 
 interface About {
@@ -25,8 +36,12 @@ interface About {
  * What a referee reads, named field by field so that nothing comes along by itself. Of the
  * households it has sums only: no row's number, no row's values, no place of a row in the file.
  */
-export function sealedContentOf(about: About, { matrix, system, data }: SealedCells): SealedContent {
+export function sealedContentOf(
+  about: About,
+  { matrix, system, data, also = [], read = [] }: SealedCells,
+): SealedContent {
   const { title, authors, program, note, sealedAt } = about;
+  const sources = [data.cell, system.cell, matrix.cell, ...read, ...also.map(({ cell }) => cell)];
   return {
     format: "tangency referee copy 1",
     program,
@@ -34,15 +49,16 @@ export function sealedContentOf(about: About, { matrix, system, data }: SealedCe
     note,
     sealedAt: sealedAt.toISOString(),
     cells: {
-      sources: [authors === undefined ? withoutFileName(data.cell) : data.cell, system.cell, matrix.cell].map(
-        ({ name, kind, source }) => ({ name, kind, source }),
-      ),
+      sources: sources
+        .map((cell) => (authors === undefined && cell.kind === "data" ? withoutFileName(cell) : cell))
+        .map(({ name, kind, source }) => ({ name, kind, source })),
       matrix: matrix.cell.name,
       system: system.cell.name,
       data: data.cell.name,
     },
     slutsky: matrixOf(matrix.finding),
     system: withoutDraws(withoutRows(system.finding)),
+    ...(also.length > 0 && { also: also.map(alsoOf) }),
     accounting: accountingOf(data.finding),
     data: {
       meanTotal: data.finding.meanTotal,
@@ -50,6 +66,26 @@ export function sealedContentOf(about: About, { matrix, system, data }: SealedCe
       fingerprint: data.finding.dataFingerprint,
     },
   };
+}
+
+function alsoOf({ cell: { name }, finding }: AlsoCell): SealedAlso {
+  switch (finding.kind) {
+    case "system":
+      return { kind: "system", name, finding: withoutDraws(withoutRows(finding)) };
+    case "tests":
+      return { kind: "tests", name, finding: withoutCycle(finding) };
+    case "elasticities":
+      return { kind: "elasticities", name, finding };
+    case "slutsky":
+      return { kind: "slutsky", name, finding: matrixOf(finding) };
+  }
+}
+
+/** Rows that contradict one another are counted, not listed. */
+function withoutCycle(finding: TestsFinding): TestsFinding {
+  const { revealed } = finding;
+  if (revealed === undefined || "absent" in revealed) return finding;
+  return { ...finding, revealed: { ...revealed, cycle: [] } };
 }
 
 /** The rows of the linear expenditure system without supernumerary expenditure are counted, not listed. */
@@ -65,7 +101,7 @@ function withoutFileName(cell: CellSource): CellSource {
   return { ...cell, source: setKey(cell.source, ["upload"], "withheld") };
 }
 
-function matrixOf(finding: SlutskyFinding): SealedContent["slutsky"] {
+function matrixOf(finding: SlutskyFinding): SealedSlutsky {
   const { kind, dataFingerprint, fitted, form, pointName, point, priceScale, totalScale, at, tests, caveats, sample } =
     finding;
   const sealed = { kind, dataFingerprint, fitted, form, pointName, point, priceScale, totalScale, at, tests };

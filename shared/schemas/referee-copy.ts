@@ -1,8 +1,29 @@
 import { z } from "zod";
 import { LEFT_OUT_REASONS } from "./data.ts";
+import { elasticitiesFinding } from "./elasticities.ts";
 import { count, fingerprint, finite, instant } from "./primitives.ts";
 import { negativityOverSample, slutskyFinding } from "./slutsky.ts";
 import { systemFinding } from "./system.ts";
+import { testsFinding } from "./tests.ts";
+
+/** A Slutsky finding without the rows where negativity breaks. */
+const sealedSlutsky = slutskyFinding
+  .omit({ brokenRows: true, sample: true })
+  .extend({ sample: negativityOverSample.optional() });
+export type SealedSlutsky = z.infer<typeof sealedSlutsky>;
+
+/** The kinds that can be sealed beside the matrix. */
+export const ALSO_KINDS = ["system", "tests", "elasticities", "slutsky"] as const;
+export type AlsoKind = (typeof ALSO_KINDS)[number];
+
+/** A further finding under its cell's name: of rows it has counts and sums, never which. */
+const sealedAlso = z.discriminatedUnion("kind", [
+  z.strictObject({ kind: z.literal("system"), name: z.string(), finding: systemFinding }),
+  z.strictObject({ kind: z.literal("tests"), name: z.string(), finding: testsFinding }),
+  z.strictObject({ kind: z.literal("elasticities"), name: z.string(), finding: elasticitiesFinding }),
+  z.strictObject({ kind: z.literal("slutsky"), name: z.string(), finding: sealedSlutsky }),
+]);
+export type SealedAlso = z.infer<typeof sealedAlso>;
 
 /**
  * What a referee reads: everything needed to recompute matrix, errors, eigenvalues and checks, and
@@ -21,8 +42,10 @@ export const sealedContent = z.strictObject({
     system: z.string(),
     data: z.string(),
   }),
-  slutsky: slutskyFinding.omit({ brokenRows: true, sample: true }).extend({ sample: negativityOverSample.optional() }),
+  slutsky: sealedSlutsky,
   system: systemFinding,
+  /** Further findings of the owner's choice; a copy without any has no such key. */
+  also: z.array(sealedAlso).min(1).optional(),
   accounting: z.strictObject({
     uploaded: count,
     leftOut: z.array(z.strictObject({ reason: z.enum(LEFT_OUT_REASONS), label: z.string(), count })),
@@ -33,6 +56,12 @@ export const sealedContent = z.strictObject({
 });
 export type SealedContent = z.infer<typeof sealedContent>;
 
-/** GET /api/referee/:token. The fingerprint is the SHA-256 of the canonical JSON of `content`. */
-export const refereeCopy = z.strictObject({ fingerprint, content: sealedContent });
+/** That a copy has been replaced, and by which: told beside it, since nothing in it can change. */
+const newerCopy = z.strictObject({ sealedAt: instant, fingerprint });
+
+/**
+ * GET /api/referee/:token, and /api/referee/:token/newest for the copy that replaced it. The fingerprint is the SHA-256
+ * of the canonical JSON of `content`.
+ */
+export const refereeCopy = z.strictObject({ fingerprint, content: sealedContent, newer: newerCopy.optional() });
 export type RefereeCopy = z.infer<typeof refereeCopy>;

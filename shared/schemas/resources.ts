@@ -93,25 +93,6 @@ export const upload = z.strictObject({
 });
 export type Upload = z.infer<typeof upload>;
 
-export const newRefereeCopy = z.strictObject({
-  cellId: identifier,
-  note: z.string().trim().max(300).default(""),
-  withholdAuthors: z.boolean().default(true),
-});
-/** What the owner sees of a copy afterwards; the link itself is told once, when sealed. */
-export const refereeCopySummary = z.strictObject({
-  id: identifier,
-  cellName: z.string(),
-  note: z.string(),
-  fingerprint: z.string(),
-  sealedAt: instant,
-  sealedBy: z.string(),
-  revokedAt: instant.optional(),
-  lastOpenedAt: instant.optional(),
-});
-export type RefereeCopySummary = z.infer<typeof refereeCopySummary>;
-export const sealedRefereeCopy = z.strictObject({ copy: refereeCopySummary, token: z.string() });
-
 /** Every refusal of the API: a code for programs, a sentence for people, the place when there is one. */
 export const apiError = z.strictObject({
   error: z.strictObject({ code: z.string(), sentence: z.string(), problems: z.array(problem).default([]) }),

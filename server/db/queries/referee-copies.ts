@@ -1,4 +1,4 @@
-import { and, desc, eq, isNull } from "drizzle-orm";
+import { and, desc, eq, gt, isNull, or } from "drizzle-orm";
 import type { Database } from "../client.ts";
 import { user } from "../schema/auth.ts";
 import { refereeCopies } from "../schema/referee-copies.ts";
@@ -11,12 +11,15 @@ const summary = {
   id: refereeCopies.id,
   studyId: refereeCopies.studyId,
   cellName: refereeCopies.cellName,
+  also: refereeCopies.also,
   note: refereeCopies.note,
   fingerprint: refereeCopies.fingerprint,
   sealedBy: refereeCopies.sealedBy,
   sealedAt: refereeCopies.sealedAt,
   revokedAt: refereeCopies.revokedAt,
   lastOpenedAt: refereeCopies.lastOpenedAt,
+  expiresAt: refereeCopies.expiresAt,
+  replacedBy: refereeCopies.replacedBy,
   sealedByName: user.name,
 };
 
@@ -44,23 +47,37 @@ export function findRefereeCopy(db: Database, studyId: string, copyId: string): 
     .get();
 }
 
-/** Only a copy that is not revoked, of a study that is not deleted: one query, whether the token is wrong or its copy revoked. */
+type OpenedRow = Pick<RefereeCopyRow, "id" | "fingerprint" | "content" | "sealedAt" | "replacedBy">;
+
+const opened = {
+  id: refereeCopies.id,
+  fingerprint: refereeCopies.fingerprint,
+  content: refereeCopies.content,
+  sealedAt: refereeCopies.sealedAt,
+  replacedBy: refereeCopies.replacedBy,
+};
+
+/**
+ * Only a copy that is not revoked and has not run out, of a study that is not deleted: one query, whether the token is
+ * wrong or its copy closed.
+ */
 export function openRefereeCopy(
   db: Database,
-  tokenHash: string,
-): Pick<RefereeCopyRow, "id" | "fingerprint" | "content"> | undefined {
+  by: { readonly tokenHash: string } | { readonly id: string },
+  now: Date,
+): OpenedRow | undefined {
+  const which = "id" in by ? eq(refereeCopies.id, by.id) : eq(refereeCopies.tokenHash, by.tokenHash);
+  const hasNotRunOut = or(isNull(refereeCopies.expiresAt), gt(refereeCopies.expiresAt, now));
   return db
-    .select({ id: refereeCopies.id, fingerprint: refereeCopies.fingerprint, content: refereeCopies.content })
+    .select(opened)
     .from(refereeCopies)
     .innerJoin(studies, eq(studies.id, refereeCopies.studyId))
-    .where(and(eq(refereeCopies.tokenHash, tokenHash), isNull(refereeCopies.revokedAt), isNull(studies.deletedAt)))
+    .where(and(which, isNull(refereeCopies.revokedAt), hasNotRunOut, isNull(studies.deletedAt)))
     .get();
 }
 
-export function changeRefereeCopy(
-  db: Database,
-  copyId: string,
-  change: Partial<Pick<RefereeCopyRow, "revokedAt" | "lastOpenedAt">>,
-): void {
+type Change = Partial<Pick<RefereeCopyRow, "tokenHash" | "expiresAt" | "replacedBy" | "revokedAt" | "lastOpenedAt">>;
+
+export function changeRefereeCopy(db: Database, copyId: string, change: Change): void {
   db.update(refereeCopies).set(change).where(eq(refereeCopies.id, copyId)).run();
 }

@@ -11,6 +11,8 @@ export const refereeCopies = sqliteTable(
     /** SHA-256 of the link's token; the token itself is told once and never stored. */
     tokenHash: text("token_hash").notNull().unique(),
     cellName: text("cell_name").notNull(),
+    /** Names of the cells sealed with the matrix, JSON. */
+    also: text("also", { mode: "json" }).$type<string[]>().notNull().default([]),
     note: text("note").notNull(),
     /** SHA-256 of the canonical JSON of `content`. */
     fingerprint: text("fingerprint").notNull(),
@@ -19,6 +21,10 @@ export const refereeCopies = sqliteTable(
     sealedAt: integer("sealed_at", { mode: "timestamp_ms" }).notNull(),
     revokedAt: integer("revoked_at", { mode: "timestamp_ms" }),
     lastOpenedAt: integer("last_opened_at", { mode: "timestamp_ms" }),
+    /** From then on its link opens nothing; null: until it is revoked. */
+    expiresAt: integer("expires_at", { mode: "timestamp_ms" }),
+    /** The id of the copy sealed in its place. */
+    replacedBy: text("replaced_by"),
   },
   (table) => [index("referee_copies_study").on(table.studyId)],
 );

@@ -1,4 +1,4 @@
-import type { RefereeCopySummary } from "../../../shared/schemas/resources.ts";
+import type { RefereeCopySummary } from "../../../shared/schemas/referee-copies.ts";
 import { Word } from "../../components/button.tsx";
 import { Fault } from "../../components/field.tsx";
 import { sentenceOf } from "../../lib/api.ts";

@@ -1,6 +1,6 @@
 import { queryOptions, useQuery } from "@tanstack/react-query";
 import { z } from "zod";
-import { refereeCopySummary } from "../../../../shared/schemas/resources.ts";
+import { refereeCopySummary } from "../../../../shared/schemas/referee-copies.ts";
 import { ask } from "../../../lib/api.ts";
 import { api } from "../../../lib/paths.ts";
 

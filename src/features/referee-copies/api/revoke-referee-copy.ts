@@ -1,5 +1,5 @@
 import { useMutation, useQueryClient } from "@tanstack/react-query";
-import { refereeCopySummary } from "../../../../shared/schemas/resources.ts";
+import { refereeCopySummary } from "../../../../shared/schemas/referee-copies.ts";
 import { ask } from "../../../lib/api.ts";
 import { api } from "../../../lib/paths.ts";
 

@@ -1,6 +1,6 @@
 import { useMutation, useQueryClient } from "@tanstack/react-query";
 import { z } from "zod";
-import { sealedRefereeCopy } from "../../../../shared/schemas/resources.ts";
+import { sealedRefereeCopy } from "../../../../shared/schemas/referee-copies.ts";
 import { ask } from "../../../lib/api.ts";
 import { api } from "../../../lib/paths.ts";
 
