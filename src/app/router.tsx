@@ -17,6 +17,11 @@ const page = (load: () => Promise<{ default: React.ComponentType }>) => async ()
   Component: (await load()).default,
 });
 
+/** A part of the administration; they are loaded together. */
+const part = (name: "Messages" | "Accounts" | "InstallationJournal") => async () => ({
+  Component: (await import("./pages/administration-parts.tsx"))[name],
+});
+
 export function routes(client: QueryClient): RouteObject[] {
   return [
     {
@@ -25,6 +30,11 @@ export function routes(client: QueryClient): RouteObject[] {
       children: [
         { path: "/sign-in", lazy: page(() => import("./pages/sign-in.tsx")) },
         { path: "/create-account", lazy: page(() => import("./pages/create-account.tsx")) },
+        { path: "/create-account/:token", lazy: page(() => import("./pages/finish-account.tsx")) },
+        { path: "/forgotten-passphrase", lazy: page(() => import("./pages/forgotten-passphrase.tsx")) },
+        { path: "/reset-passphrase/:token", lazy: page(() => import("./pages/reset-passphrase.tsx")) },
+        { path: "/confirm-address/:token", lazy: page(() => import("./pages/confirm-address.tsx")) },
+        { path: "/invitation/:token", lazy: page(() => import("./pages/invitation.tsx")) },
         { path: "/referee/:token", lazy: page(() => import("./pages/referee.tsx")) },
         {
           loader: someoneSignedIn(client),
@@ -32,6 +42,16 @@ export function routes(client: QueryClient): RouteObject[] {
           shouldRevalidate: () => false,
           children: [
             { path: "/", lazy: page(() => import("./pages/studies.tsx")) },
+            { path: "/account", lazy: page(() => import("./pages/account.tsx")) },
+            {
+              path: "/administration",
+              lazy: page(() => import("./pages/administration.tsx")),
+              children: [
+                { index: true, lazy: part("Messages") },
+                { path: "accounts", lazy: part("Accounts") },
+                { path: "journal", lazy: part("InstallationJournal") },
+              ],
+            },
             {
               path: "/studies/:studyId",
               lazy: page(() => import("./pages/study.tsx")),

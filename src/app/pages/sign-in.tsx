@@ -13,7 +13,12 @@ export default function SignInPage() {
   return (
     <Door title="Sign in">
       <SignInForm onSignedIn={() => navigate(destinationOf(search), { replace: true })} />
-      <p className="pt-5 text-ink2">
+      <p className="type-small pt-4">
+        <LinkWord quiet to={pages.forgottenPassphrase} className="reference">
+          Forgotten passphrase
+        </LinkWord>
+      </p>
+      <p className="pt-4 text-ink2">
         No account yet? <LinkWord to={`${pages.createAccount}${search}`}>Create an account</LinkWord>
       </p>
     </Door>

@@ -1,11 +1,14 @@
 import { lazy, Suspense, useState } from "react";
-import { useNavigate } from "react-router-dom";
-import { Button } from "../../components/button.tsx";
+import { Link, useNavigate } from "react-router-dom";
+import { Button, LinkButton } from "../../components/button.tsx";
 import { Fault } from "../../components/field.tsx";
 import { TopBar } from "../../components/top-bar.tsx";
 import { useInstallation } from "../../features/accounts/api/get-installation.ts";
 import { useMe } from "../../features/accounts/api/get-me.ts";
+import { InvitationsForYou } from "../../features/people/invitations-for-you.tsx";
+import { useDeletedStudies } from "../../features/studies/api/deleted-studies.ts";
 import { useStudies } from "../../features/studies/api/list-studies.ts";
+import { DeletedList } from "../../features/studies/deleted-list.tsx";
 import { type StudyFilter, shownStudies } from "../../features/studies/study-filters.ts";
 import { StudyFinder } from "../../features/studies/study-finder.tsx";
 import { StudyList } from "../../features/studies/study-list.tsx";
@@ -21,6 +24,7 @@ const SettingsDialog = lazy(() => import("../settings-dialog.tsx"));
 export default function StudiesPage() {
   const { data: me } = useMe();
   const { data: studies, error } = useStudies();
+  const { data: deleted = [] } = useDeletedStudies();
   const { data: installation } = useInstallation();
   const [filter, setFilter] = useState<StudyFilter>("all");
   const [find, setFind] = useState("");
@@ -32,7 +36,10 @@ export default function StudiesPage() {
   return (
     <>
       <TopBar home={pages.studies}>
-        <span className="you mr-4 font-semibold">{me?.name}</span>
+        <Link to={pages.account} className="you mr-4 font-semibold text-ink no-underline hover:text-accent">
+          {me?.name} <span className="sr-only">, your account</span>
+        </Link>
+        {me?.isAdministrator && <LinkButton to={pages.administration}>Administration</LinkButton>}
         <Button onClick={() => setDialog("settings")}>Settings</Button>
         <Button onClick={leave}>Sign out</Button>
       </TopBar>
@@ -40,7 +47,14 @@ export default function StudiesPage() {
         <div className="studies-left">
           <h1 className="type-display">Studies</h1>
           <p className="type-finding pt-2 pb-5 lg:pb-9">{installation && installationInWords(installation.name)}</p>
-          <StudyFinder studies={studies ?? []} filter={filter} find={find} onFilter={setFilter} onFind={setFind} />
+          <StudyFinder
+            studies={studies ?? []}
+            deleted={deleted.length}
+            filter={filter}
+            find={find}
+            onFilter={setFilter}
+            onFind={setFind}
+          />
           <div className="pt-6 lg:pt-9">
             <Button filled onClick={() => setDialog("new study")}>
               New study
@@ -49,7 +63,9 @@ export default function StudiesPage() {
         </div>
         <div className="studies-right">
           {error && <Fault>{sentenceOf(error)}</Fault>}
-          {studies && me && (
+          <InvitationsForYou />
+          {filter === "deleted" && <DeletedList studies={deleted} />}
+          {filter !== "deleted" && studies && me && (
             <StudyList studies={shownStudies(studies, filter, find)} you={me.id} hidden={studies.length > 0} />
           )}
           {!studies && !error && <p role="status">Fetching the studies</p>}

@@ -13,7 +13,7 @@ import { useLeave } from "../use-leave.ts";
 import type { OpenStudy } from "./open-study.ts";
 import { useUndoKeys } from "./use-undo-keys.ts";
 
-export type StudyDialog = "people" | "uploads" | "remarks" | "referee copies" | "settings" | "delete";
+export type StudyDialog = "people" | "uploads" | "remarks" | "referee copies" | "journal" | "settings" | "delete";
 
 interface StudyBarProps extends OpenStudy {
   readonly crumbs: readonly Crumb[];
@@ -60,6 +60,7 @@ export function StudyBar({ study, me, connection, readOnly, crumbs, onDialog, ch
               onSelect: () => void navigate(pages.history(study.id)),
             },
             ...(isOwner ? [entry("referee copies", "Referee copies")] : []),
+            entry("journal", "Journal"),
           ],
           [entry("settings", "Settings"), { key: "leave", words: "Sign out", onSelect: leave }],
           isOwner && !readOnly ? [entry("delete", "Delete the study")] : [],

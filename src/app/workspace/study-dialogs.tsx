@@ -9,6 +9,7 @@ const PeopleDialog = lazy(() => import("../../features/people/people-dialog.tsx"
 const UploadsDialog = lazy(() => import("../../features/uploads/uploads-dialog.tsx"));
 const StudyRemarks = lazy(() => import("./study-remarks.tsx"));
 const RefereeCopiesDialog = lazy(() => import("../../features/referee-copies/referee-copies-dialog.tsx"));
+const JournalDialog = lazy(() => import("../../features/journal/journal-dialog.tsx"));
 const DeleteStudyDialog = lazy(() => import("../../features/studies/delete-study-dialog.tsx"));
 const SettingsDialog = lazy(() => import("../settings-dialog.tsx"));
 
@@ -51,6 +52,8 @@ function Opened({
       return <StudyRemarks study={study} me={me} connection={connection} onClose={onClose} />;
     case "referee copies":
       return <RefereeCopiesDialog studyId={study.id} matrices={sealable(standings)} onClose={onClose} />;
+    case "journal":
+      return <JournalDialog studyId={study.id} onClose={onClose} />;
     case "settings":
       return <SettingsDialog onClose={onClose} />;
     case "delete":

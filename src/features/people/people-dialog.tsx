@@ -3,9 +3,11 @@ import { Word } from "../../components/button.tsx";
 import { Dialog } from "../../components/dialog.tsx";
 import { Fault } from "../../components/field.tsx";
 import { sentenceOf } from "../../lib/api.ts";
-import { AddPersonForm } from "./add-person-form.tsx";
 import { useChangeRole, useRemovePerson } from "./api/change-people.ts";
 import { usePeople } from "./api/list-people.ts";
+import { HandOver } from "./hand-over.tsx";
+import { InvitationList } from "./invitation-list.tsx";
+import { InviteForm } from "./invite-form.tsx";
 import { ROLE_WORDS } from "./roles.ts";
 
 interface PeopleDialogProps {
@@ -17,7 +19,7 @@ interface PeopleDialogProps {
   readonly onLeft: () => void;
 }
 
-/** Who is in the study, as what. An owner adds, changes and removes; anyone may leave. */
+/** Who is in the study, as what. An owner invites, changes, removes and hands over; anyone may leave. */
 export default function PeopleDialog({ studyId, you, isOwner, onClose, onLeft }: PeopleDialogProps) {
   return (
     <Dialog
@@ -26,9 +28,20 @@ export default function PeopleDialog({ studyId, you, isOwner, onClose, onLeft }:
       lede="Owners and coauthors write. Readers see everything and change nothing. Referees need no account: seal a copy for them."
     >
       <PeopleList studyId={studyId} you={you} isOwner={isOwner} onLeft={onLeft} />
-      {isOwner && <AddPersonForm studyId={studyId} />}
+      {isOwner && (
+        <>
+          <InvitationList studyId={studyId} />
+          <InviteForm studyId={studyId} />
+          <HandOverOf studyId={studyId} />
+        </>
+      )}
     </Dialog>
   );
+}
+
+function HandOverOf({ studyId }: { studyId: string }) {
+  const { data: people } = usePeople(studyId);
+  return people ? <HandOver studyId={studyId} people={people} /> : null;
 }
 
 function PeopleList({ studyId, you, isOwner, onLeft }: Omit<PeopleDialogProps, "onClose">) {
@@ -36,7 +49,7 @@ function PeopleList({ studyId, you, isOwner, onLeft }: Omit<PeopleDialogProps, "
   const change = useChangeRole(studyId);
   const remove = useRemovePerson(studyId);
   const fault = error ?? change.error ?? remove.error;
-  const leave = (person: Person) => remove.mutate(person.id, { onSuccess: () => person.id === you && onLeft() });
+  const takeOut = (person: Person) => remove.mutate(person.id, { onSuccess: () => person.id === you && onLeft() });
   return (
     <>
       <ul>
@@ -57,7 +70,7 @@ function PeopleList({ studyId, you, isOwner, onLeft }: Omit<PeopleDialogProps, "
               <span className="text-ink2">{ROLE_WORDS[person.role]}</span>
             )}
             {(isOwner || person.id === you) && (
-              <Word disabled={remove.isPending} onClick={() => leave(person)} className="justify-self-end">
+              <Word disabled={remove.isPending} onClick={() => takeOut(person)} className="justify-self-end">
                 {person.id === you ? "Leave" : "Remove"}{" "}
                 <span className="sr-only">{person.id === you ? "the study" : person.name}</span>
               </Word>

@@ -17,7 +17,7 @@ export default function DeleteStudyDialog({ study, onClose, onDeleted }: DeleteS
     <Dialog
       onClose={onClose}
       title="Delete the study"
-      lede={`${study.title} goes with its cells, uploads, findings and referee copies, for everyone in it. There is no way back.`}
+      lede={`${study.title} goes at once for everyone in it, and links to its referee copies open nothing. For 30 days its owners find it under Deleted, among the studies, and can bring all of it back; then it is gone for good.`}
     >
       {remove.isError && <Fault>{sentenceOf(remove.error)}</Fault>}
       <div className="flex flex-wrap gap-4">

@@ -4,6 +4,7 @@ import { StateWords } from "../../components/state-shape.tsx";
 import { ThreadAside } from "../../components/thread-aside.tsx";
 import { agoInWords } from "../../lib/dates.ts";
 import { pages } from "../../lib/paths.ts";
+import { PutAwayWord } from "./put-away-word.tsx";
 import { belongingInWords, shownState, stateCounts } from "./study-words.ts";
 
 /** A study in the list: what it asks, how its cells stand, what they read, whose it is. */
@@ -37,6 +38,9 @@ export function StudyEntry({ study, you }: { study: StudySummary; you: string })
         <p className="text-ink">Changed {agoInWords(study.changedAt)}</p>
         <p>{belongingInWords(study, you)}</p>
         {study.sealedAt && <p>Last sealed {agoInWords(study.sealedAt)}</p>}
+        <p>
+          <PutAwayWord study={study} />
+        </p>
       </div>
     </li>
   );

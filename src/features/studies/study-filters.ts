@@ -2,13 +2,22 @@ import type { StudySummary } from "../../../shared/schemas/resources.ts";
 
 /** The list's filters, in the order of the page. */
 export const STUDY_FILTERS = [
-  { key: "all", words: "All", keeps: () => true },
-  { key: "yours", words: "Yours", keeps: ({ role }: StudySummary) => role === "owner" },
-  { key: "shared", words: "Shared with you", keeps: ({ role }: StudySummary) => role !== "owner" },
-  { key: "sealed", words: "With a referee copy", keeps: ({ sealedAt }: StudySummary) => sealedAt !== undefined },
+  { key: "all", words: "All", keeps: (study: StudySummary) => !study.isPutAway },
+  { key: "yours", words: "Yours", keeps: (study: StudySummary) => !study.isPutAway && study.role === "owner" },
+  {
+    key: "shared",
+    words: "Shared with you",
+    keeps: (study: StudySummary) => !study.isPutAway && study.role !== "owner",
+  },
+  {
+    key: "sealed",
+    words: "With a referee copy",
+    keeps: (study: StudySummary) => !study.isPutAway && study.sealedAt !== undefined,
+  },
+  { key: "put away", words: "Put away", keeps: (study: StudySummary) => study.isPutAway === true },
 ] as const;
 
-export type StudyFilter = (typeof STUDY_FILTERS)[number]["key"];
+export type StudyFilter = (typeof STUDY_FILTERS)[number]["key"] | "deleted";
 
 /** Letters without their accents and case, so that "tomas" finds Tomás. */
 const plain = (text: string) => text.normalize("NFD").replace(/\p{M}/gu, "").toLowerCase();

@@ -4,19 +4,27 @@ import { STUDY_FILTERS, type StudyFilter, shownStudies } from "./study-filters.t
 
 interface StudyFinderProps {
   readonly studies: readonly StudySummary[];
+  /** How many deleted studies can be brought back; the filter is there when there are any. */
+  readonly deleted: number;
   readonly filter: StudyFilter;
   readonly find: string;
   readonly onFilter: (filter: StudyFilter) => void;
   readonly onFind: (find: string) => void;
 }
 
-/** Which studies are listed: four filters with their counts, and words to find. */
-export function StudyFinder({ studies, filter, find, onFilter, onFind }: StudyFinderProps) {
+/** Which studies are listed: filters with their counts, and words to find. */
+export function StudyFinder({ studies, deleted, filter, find, onFilter, onFind }: StudyFinderProps) {
   const id = useId();
+  const entries: { key: StudyFilter; words: string; count: number }[] = STUDY_FILTERS.map(({ key, words }) => ({
+    key,
+    words,
+    count: shownStudies(studies, key, "").length,
+  }));
+  if (deleted > 0 || filter === "deleted") entries.push({ key: "deleted", words: "Deleted", count: deleted });
   return (
     <search>
       <ul className="finder-filters border-rule2 border-b">
-        {STUDY_FILTERS.map(({ key, words }) => (
+        {entries.map(({ key, words, count }) => (
           <li key={key} className="border-rule2 border-t">
             <button
               type="button"
@@ -24,7 +32,7 @@ export function StudyFinder({ studies, filter, find, onFilter, onFind }: StudyFi
               onClick={() => onFilter(key)}
               className={`flex min-h-8.5 w-full items-center justify-between gap-2 hover:text-accent ${filter === key ? "font-semibold" : ""}`}
             >
-              <span>{words}</span> <span className="tabular-nums">{shownStudies(studies, key, "").length}</span>
+              <span>{words}</span> <span className="tabular-nums">{count}</span>
             </button>
           </li>
         ))}

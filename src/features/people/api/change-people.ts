@@ -1,4 +1,5 @@
 import { type QueryClient, useMutation, useQueryClient } from "@tanstack/react-query";
+import { z } from "zod";
 import { person, type Role } from "../../../../shared/schemas/resources.ts";
 import { ask } from "../../../lib/api.ts";
 import { api } from "../../../lib/paths.ts";
@@ -9,15 +10,6 @@ const told = (client: QueryClient, studyId: string) =>
     client.invalidateQueries({ queryKey: ["people", studyId] }),
     client.invalidateQueries({ queryKey: ["studies"] }),
   ]);
-
-export function useAddPerson(studyId: string) {
-  const client = useQueryClient();
-  return useMutation({
-    mutationFn: (body: { email: string; role: Role }) =>
-      ask({ method: "POST", path: api.people(studyId), body, answer: person }),
-    onSuccess: () => told(client, studyId),
-  });
-}
 
 export function useChangeRole(studyId: string) {
   const client = useQueryClient();
@@ -32,6 +24,17 @@ export function useRemovePerson(studyId: string) {
   const client = useQueryClient();
   return useMutation({
     mutationFn: (userId: string) => ask({ method: "DELETE", path: api.person(studyId, userId) }),
+    onSuccess: () => told(client, studyId),
+  });
+}
+
+const people = z.array(person);
+
+/** The coauthor owns the study from then on. */
+export function useHandOver(studyId: string) {
+  const client = useQueryClient();
+  return useMutation({
+    mutationFn: (userId: string) => ask({ method: "POST", path: api.owner(studyId), body: { userId }, answer: people }),
     onSuccess: () => told(client, studyId),
   });
 }

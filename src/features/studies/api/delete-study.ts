@@ -8,7 +8,10 @@ export function useDeleteStudy() {
     mutationFn: (studyId: string) => ask({ method: "DELETE", path: api.study(studyId) }),
     onSuccess: (_, studyId) => {
       client.removeQueries({ queryKey: ["studies", studyId] });
-      return client.invalidateQueries({ queryKey: ["studies"], exact: true });
+      return Promise.all([
+        client.invalidateQueries({ queryKey: ["studies"], exact: true }),
+        client.invalidateQueries({ queryKey: ["deleted studies"] }),
+      ]);
     },
   });
 }

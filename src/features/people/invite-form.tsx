@@ -6,16 +6,16 @@ import { role } from "../../../shared/schemas/resources.ts";
 import { Button } from "../../components/button.tsx";
 import { Fault, Field } from "../../components/field.tsx";
 import { sentenceOf } from "../../lib/api.ts";
-import { useAddPerson } from "./api/change-people.ts";
+import { useInvite } from "./api/invitations.ts";
 import { ROLE_WORDS } from "./roles.ts";
 
 const form = z.object({ email: z.email("An e-mail address looks like name@place.example."), role });
 type Form = z.infer<typeof form>;
 
-/** Adds someone who has an account on this installation, by the address they sign in with. */
-export function AddPersonForm({ studyId }: { studyId: string }) {
+/** Invites an address by mail; whether it has an account is between it and the installation. */
+export function InviteForm({ studyId }: { studyId: string }) {
   const id = useId();
-  const add = useAddPerson(studyId);
+  const invite = useInvite(studyId);
   const { register, handleSubmit, reset, formState } = useForm<Form>({
     resolver: zodResolver(form),
     defaultValues: { email: "", role: "coauthor" },
@@ -24,9 +24,9 @@ export function AddPersonForm({ studyId }: { studyId: string }) {
     <form
       noValidate
       className="pt-6"
-      onSubmit={handleSubmit((wanted) => add.mutate(wanted, { onSuccess: () => reset() }))}
+      onSubmit={handleSubmit((wanted) => invite.mutate(wanted, { onSuccess: () => reset() }))}
     >
-      <h3 className="type-section pb-3">Add someone</h3>
+      <h3 className="type-section pb-3">Invite someone</h3>
       <div className="grid items-start gap-4 sm:grid-cols-[minmax(0,1fr)_9rem_auto]">
         <Field
           label="Email"
@@ -47,14 +47,14 @@ export function AddPersonForm({ studyId }: { studyId: string }) {
             ))}
           </select>
         </div>
-        <Button type="submit" disabled={add.isPending} className="min-h-[2.625rem] self-start sm:mt-[1.375rem]">
-          Add
+        <Button type="submit" disabled={invite.isPending} className="min-h-[2.625rem] self-start sm:mt-[1.375rem]">
+          Invite
         </Button>
       </div>
-      {add.isError && <Fault>{sentenceOf(add.error)}</Fault>}
-      {add.isSuccess && (
+      {invite.isError && <Fault>{sentenceOf(invite.error)}</Fault>}
+      {invite.isSuccess && (
         <p role="status" className="type-small pt-2 text-ink2">
-          {add.data.name} is in the study now, as {add.data.role}.
+          A message is on its way to {invite.data.email}.
         </p>
       )}
     </form>

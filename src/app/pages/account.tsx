@@ -1,0 +1,74 @@
+import { lazy, type ReactNode, Suspense, useState } from "react";
+import { Button } from "../../components/button.tsx";
+import { Fault } from "../../components/field.tsx";
+import { useOwnAccount } from "../../features/accounts/api/own-account.ts";
+import { OwnAddressForm } from "../../features/accounts/own-address-form.tsx";
+import { OwnNameForm } from "../../features/accounts/own-name-form.tsx";
+import { OwnPassphraseForm } from "../../features/accounts/own-passphrase-form.tsx";
+import { SessionList } from "../../features/accounts/session-list.tsx";
+import { sentenceOf } from "../../lib/api.ts";
+import { dateInWords } from "../../lib/dates.ts";
+import { usePageTitle } from "../../lib/page-title.ts";
+import { OwnBar } from "../own-bar.tsx";
+import { useForget } from "../use-leave.ts";
+
+const RemoveAccountDialog = lazy(() => import("../../features/accounts/remove-account-dialog.tsx"));
+
+/** One's own account: who one is here, where one is signed in, what is kept. */
+export default function AccountPage() {
+  const { data: account, error } = useOwnAccount();
+  const [removing, setRemoving] = useState(false);
+  const forget = useForget(account?.id);
+  usePageTitle("Your account");
+  return (
+    <>
+      <OwnBar />
+      <main className="account">
+        <h1 className="type-display pb-2">Your account</h1>
+        {error && !account && <Fault>{sentenceOf(error)}</Fault>}
+        {!account && !error && <p role="status">Fetching the account</p>}
+        {account && (
+          <>
+            <p className="type-finding pb-4">There since {dateInWords(account.since)}.</p>
+            <Part title="Name">
+              <OwnNameForm key={account.name} name={account.name} />
+            </Part>
+            <Part title="Address">
+              <OwnAddressForm key={account.email} email={account.email} isConfirmed={account.isConfirmed} />
+            </Part>
+            <Part title="Passphrase">
+              <OwnPassphraseForm />
+            </Part>
+            <Part title="Where you are signed in">
+              <SessionList sessions={account.sessions} />
+            </Part>
+            <Part title="What is kept of you">
+              <p className="type-prose max-w-[38rem]">
+                Your name, your address, your passphrase in a form that cannot be read back, and for each session the
+                browser, the network address and the times. In studies: who wrote, uploaded, remarked and sealed what,
+                and when. All of it lies in this installation's own database and goes nowhere else.
+              </p>
+            </Part>
+            <Part title="Delete the account">
+              <Button onClick={() => setRemoving(true)}>Delete the account</Button>
+            </Part>
+          </>
+        )}
+      </main>
+      <Suspense>
+        {removing && account && (
+          <RemoveAccountDialog account={account} onClose={() => setRemoving(false)} onRemoved={forget} />
+        )}
+      </Suspense>
+    </>
+  );
+}
+
+function Part({ title, children }: { title: string; children: ReactNode }) {
+  return (
+    <section aria-label={title} className="account-part">
+      <h2 className="type-section">{title}</h2>
+      <div className="min-w-0">{children}</div>
+    </section>
+  );
+}

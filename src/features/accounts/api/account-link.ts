@@ -1,0 +1,33 @@
+import { queryOptions, useMutation, useQuery, useQueryClient } from "@tanstack/react-query";
+import { linkedAddress } from "../../../../shared/schemas/accounts.ts";
+import { ask } from "../../../lib/api.ts";
+import { api } from "../../../lib/paths.ts";
+
+const accountLinkOptions = (token: string) =>
+  queryOptions({
+    queryKey: ["account link", token],
+    queryFn: ({ signal }) => ask({ path: api.accountLink(token), answer: linkedAddress, signal }),
+    staleTime: Number.POSITIVE_INFINITY,
+  });
+
+/** Whose account is to be made. */
+export const useAccountLink = (token: string) => useQuery(accountLinkOptions(token));
+
+/** Makes the account and signs in. */
+export function useFinishAccount(token: string) {
+  const client = useQueryClient();
+  return useMutation({
+    mutationFn: (body: { name: string; password: string }) =>
+      ask({ method: "POST", path: api.accountLink(token), body, answer: linkedAddress }),
+    onSuccess: () => client.clear(),
+  });
+}
+
+/** The account has the link's address from now on. */
+export function useConfirmAddress(token: string) {
+  const client = useQueryClient();
+  return useMutation({
+    mutationFn: () => ask({ method: "POST", path: api.addressLink(token), body: {}, answer: linkedAddress }),
+    onSuccess: () => client.clear(),
+  });
+}
