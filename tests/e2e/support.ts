@@ -19,7 +19,7 @@ const FLAGS = [
   "--disable-sync",
 ];
 /** A demo study is simulated, written and estimated on a machine that may have more to do. */
-const START_MS = 90_000;
+const START_MS = 170_000;
 
 export const PASSPHRASE = "the levy on sweet drinks";
 export const ILSE = { name: "Ilse Marchetti", email: "ilse.marchetti@vihe.example" };
@@ -45,7 +45,10 @@ export class Product {
     const demo = process.env.E2E_DEMO_DATA;
     if (demo !== undefined) cpSync(demo, product.folder, { recursive: true });
     product.#port = await freePort();
-    await product.start();
+    await product.start().catch(async (error: unknown) => {
+      await product.remove();
+      throw error;
+    });
     return product;
   }
 

@@ -23,6 +23,8 @@ const slutsky = specification("slutsky", "system: base\nat: {row: 5}\n");
 let folder: ReturnType<typeof temporaryFolder>;
 let open: OpenDatabase;
 let pool: JobPool;
+/** With one thread for cells; its threads take a while to start, so two tests share it. */
+let single: JobPool;
 const signal = new AbortController().signal;
 
 beforeAll(async () => {
@@ -32,10 +34,12 @@ beforeAll(async () => {
   open.db.insert(studies).values({ id: "s", title: "Tuna", createdAt: now, changedAt: now }).run();
   addUpload("tuna", TUNA);
   pool = createPool({ databasePath: open.path, threads: 2 });
+  single = createPool({ databasePath: open.path, threads: 1 });
 });
 
 afterAll(async () => {
   await pool.close();
+  await single.close();
   open.close();
   folder.remove();
 });
@@ -60,12 +64,22 @@ function addUpload(id: string, bytes: Buffer) {
     })
     .run();
   const size = 10_000;
-  for (let from = 0; from < bytes.length; from += size) {
-    open.db
-      .insert(uploadChunks)
-      .values({ uploadId: id, position: from / size, bytes: bytes.subarray(from, from + size) })
-      .run();
-  }
+  open.db.transaction((tx) => {
+    for (let from = 0; from < bytes.length; from += size) {
+      tx.insert(uploadChunks)
+        .values({ uploadId: id, position: from / size, bytes: bytes.subarray(from, from + size) })
+        .run();
+    }
+  });
+}
+
+/** Rows enough for half a minute of reading; made when first asked for. */
+let longTable: Buffer | undefined;
+function longFile(): Buffer {
+  longTable ??= Buffer.from(
+    `a,b,c\n${Array.from({ length: 400_000 }, (_, i) => `${i},${i * 7},word ${i}`).join("\n")}\n`,
+  );
+  return longTable;
 }
 
 const job = (fingerprint: string, specification: CellJob["specification"]): CellJob => ({
@@ -103,7 +117,13 @@ describe("the worker threads", () => {
       "tuna.csv",
     );
     const result = await parsed("tuna");
-    expect(result).toEqual({ rows: 338, sha256: direct.table.sha256, format: "csv", separator: ",", decimalComma: false });
+    expect(result).toEqual({
+      rows: 338,
+      sha256: direct.table.sha256,
+      format: "csv",
+      separator: ",",
+      decimalComma: false,
+    });
     expect(loadTable(open.db, "tuna")).toEqual(direct.table);
   });
 
@@ -153,9 +173,7 @@ describe("the worker threads", () => {
   });
 
   it("compute cells while a file is read, neither waiting for the other", async () => {
-    const lines = Array.from({ length: 400_000 }, (_, i) => `${i},${i * 7},word ${i}`);
-    addUpload("meanwhile", Buffer.from(`a,b,c\n${lines.join("\n")}\n`));
-    const single = createPool({ databasePath: open.path, threads: 1 });
+    addUpload("meanwhile", longFile());
     const stopper = new AbortController();
     let isRead = false;
     let reading: Promise<unknown> = Promise.resolve();
@@ -171,7 +189,6 @@ describe("the worker threads", () => {
     expect(isRead).toBe(false);
     stopper.abort();
     await reading;
-    await single.close();
   });
 
   it("compute what is soon done while an estimation takes the only thread for cells", async () => {
@@ -186,7 +203,6 @@ describe("the worker threads", () => {
       "data: weeks\nform: aids\nstandard errors: {bootstrap: rows, replicates: 10000}\n",
     );
     const long = { ...job("wide", endless), data: { fingerprint: "w", specification: wide, uploadId: "wide" } };
-    const single = createPool({ databasePath: open.path, threads: 1 });
     const stopper = new AbortController();
     let isFound = false;
     let estimating: Promise<unknown> = Promise.resolve();
@@ -202,13 +218,10 @@ describe("the worker threads", () => {
     expect(isFound).toBe(false);
     stopper.abort();
     await estimating;
-    await single.close();
   });
 
   it("stop within a row's time when cancelled, and go on with the next", async () => {
-    // Rows enough for half a minute of reading.
-    const lines = Array.from({ length: 400_000 }, (_, i) => `${i},${i * 7},word ${i}`);
-    addUpload("long", Buffer.from(`a,b,c\n${lines.join("\n")}\n`));
+    addUpload("long", longFile());
     const stopper = new AbortController();
     let ended: Promise<unknown> = Promise.resolve();
     await new Promise<void>((begun) => {
