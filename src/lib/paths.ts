@@ -73,5 +73,6 @@ export const api = {
   checkpointReturn: (studyId: string, checkpointId: string) =>
     `${study(studyId)}/checkpoints/${part(checkpointId)}/return`,
   refereeCopies: (studyId: string) => `${study(studyId)}/referee-copies`,
+  refereeLink: (studyId: string, copyId: string) => `${study(studyId)}/referee-copies/${part(copyId)}/link`,
   refereeCopy: (studyId: string, copyId: string) => `${study(studyId)}/referee-copies/${part(copyId)}`,
 } as const;

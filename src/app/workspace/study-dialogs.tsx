@@ -1,5 +1,6 @@
 import { lazy, Suspense } from "react";
 import { useNavigate } from "react-router-dom";
+import { isSealable, type Sealable } from "../../features/referee-copies/sealable.ts";
 import { pages } from "../../lib/paths.ts";
 import type { OpenStudy } from "./open-study.ts";
 import type { Standing } from "./standing.ts";
@@ -51,7 +52,7 @@ function Opened({
     case "remarks":
       return <StudyRemarks study={study} me={me} connection={connection} onClose={onClose} />;
     case "referee copies":
-      return <RefereeCopiesDialog studyId={study.id} matrices={sealable(standings)} onClose={onClose} />;
+      return <RefereeCopiesDialog studyId={study.id} cells={sealable(standings)} onClose={onClose} />;
     case "journal":
       return <JournalDialog studyId={study.id} onClose={onClose} />;
     case "settings":
@@ -61,9 +62,9 @@ function Opened({
   }
 }
 
-/** Matrices whose finding stands. */
-function sealable(standings: readonly Standing[]) {
-  return standings
-    .filter(({ kind, fingerprint }) => kind === "slutsky" && fingerprint !== undefined)
-    .map(({ cell }) => ({ cellId: cell.id, name: cell.name }));
+/** Cells whose finding stands, of the kinds that are sealed. */
+function sealable(standings: readonly Standing[]): Sealable[] {
+  return standings.flatMap(({ cell, kind, fingerprint }) =>
+    fingerprint !== undefined && isSealable(kind) ? [{ cellId: cell.id, name: cell.name, kind }] : [],
+  );
 }

@@ -1,42 +1,39 @@
 import { useState } from "react";
 import { Dialog } from "../../components/dialog.tsx";
 import { CopyList } from "./copy-list.tsx";
-import { type Sealable, SealForm } from "./seal-form.tsx";
-import { SealedLink } from "./sealed-link.tsx";
+import { SealForm } from "./seal-form.tsx";
+import type { Sealable } from "./sealable.ts";
+import { SealedLink, type Told } from "./sealed-link.tsx";
 
 interface RefereeCopiesDialogProps {
   readonly studyId: string;
-  readonly matrices: readonly Sealable[];
+  readonly cells: readonly Sealable[];
   readonly onClose: () => void;
 }
 
-/** Seals a copy for a referee, tells its link once, and revokes. */
+/** Seals a copy for a referee, tells its link once, and says what has become of the others. */
 export default function RefereeCopiesDialog({ onClose, ...contents }: RefereeCopiesDialogProps) {
   return (
     <Dialog
       onClose={onClose}
       title="Referee copies"
-      lede="A sealed copy holds the matrix, its checks, the specification, the coefficients and the row accounting. It holds no rows."
+      lede="A sealed copy holds the matrix, its checks, the specification, the coefficients and the row accounting, and what you seal with it. It holds no rows."
     >
       <Contents {...contents} />
     </Dialog>
   );
 }
 
-function Contents({ studyId, matrices }: Pick<RefereeCopiesDialogProps, "studyId" | "matrices">) {
-  const [sealed, setSealed] = useState<{ token: string; cellName: string }>();
+function Contents({ studyId, cells }: Pick<RefereeCopiesDialogProps, "studyId" | "cells">) {
+  const [told, setTold] = useState<Told>();
   return (
     <>
-      {sealed ? (
-        <SealedLink {...sealed} onAnother={() => setSealed(undefined)} />
+      {told ? (
+        <SealedLink key={told.token} {...told} onAnother={() => setTold(undefined)} />
       ) : (
-        <SealForm
-          studyId={studyId}
-          matrices={matrices}
-          onSealed={(token, cellName) => setSealed({ token, cellName })}
-        />
+        <SealForm studyId={studyId} cells={cells} onSealed={setTold} />
       )}
-      <CopyList studyId={studyId} />
+      <CopyList studyId={studyId} onTold={setTold} />
     </>
   );
 }

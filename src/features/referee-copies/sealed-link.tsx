@@ -2,14 +2,20 @@ import { useRef, useState } from "react";
 import { Button, Word } from "../../components/button.tsx";
 import { pages } from "../../lib/paths.ts";
 
-interface SealedLinkProps {
+/** A link as it is told, this once. */
+export interface Told {
   readonly token: string;
   readonly cellName: string;
+  /** Where it is sent; empty where nowhere. */
+  readonly sentTo: string;
+}
+
+interface SealedLinkProps extends Told {
   readonly onAnother: () => void;
 }
 
 /** The link of a copy just sealed. It is told once: only a hash of it is kept. */
-export function SealedLink({ token, cellName, onAnother }: SealedLinkProps) {
+export function SealedLink({ token, cellName, sentTo, onAnother }: SealedLinkProps) {
   const field = useRef<HTMLInputElement>(null);
   const [said, setSaid] = useState("");
   const link = new URL(pages.referee(token), location.origin).href;
@@ -26,6 +32,7 @@ export function SealedLink({ token, cellName, onAnother }: SealedLinkProps) {
     <div>
       <p className="type-finding pb-4">
         {cellName} is sealed. Whoever has this link reads the copy without an account. It is shown this once.
+        {sentTo && ` It is on its way to ${sentTo}.`}
       </p>
       <div className="flex flex-wrap items-stretch gap-3">
         <input

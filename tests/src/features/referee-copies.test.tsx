@@ -1,6 +1,7 @@
 import { screen } from "@testing-library/react";
 import { afterEach, describe, expect, it, vi } from "vitest";
 import RefereeCopiesDialog from "../../../src/features/referee-copies/referee-copies-dialog.tsx";
+import type { Sealable } from "../../../src/features/referee-copies/sealable.ts";
 import { answering, Refused, renderPart } from "../answering.tsx";
 
 afterEach(() => vi.unstubAllGlobals());
@@ -12,17 +13,19 @@ const copy = {
   fingerprint: `7c1e4f0ab9d26358${"0".repeat(48)}`,
   sealedAt: "2031-03-09T10:00:00.000Z",
   sealedBy: "Ilse Marchetti",
+  also: [],
 };
-const matrices = [
-  { cellId: "m", name: "matrix" },
-  { cellId: "n", name: "ninetieth" },
-];
+const cells = [
+  { cellId: "m", name: "matrix", kind: "slutsky" },
+  { cellId: "n", name: "ninetieth", kind: "slutsky" },
+  { cellId: "l", name: "laws", kind: "tests" },
+] as const;
 const list = "GET /api/studies/s/referee-copies";
 const seal = "POST /api/studies/s/referee-copies";
 
-const open = (answers: Record<string, unknown>, choices = matrices) => {
+const open = (answers: Record<string, unknown>, choices: readonly Sealable[] = cells) => {
   const asked = answering(answers);
-  return { ...renderPart(<RefereeCopiesDialog studyId="s" matrices={choices} onClose={() => {}} />), asked };
+  return { ...renderPart(<RefereeCopiesDialog studyId="s" cells={choices} onClose={() => {}} />), asked };
 };
 
 describe("sealing a referee copy", () => {
@@ -36,6 +39,7 @@ describe("sealing a referee copy", () => {
     expect(link).toHaveValue(`${location.origin}/referee/an-unguessable-token`);
     expect(asked.find(({ method }) => method === "POST")?.body).toEqual({
       cellId: "n",
+      also: [],
       note: "For the second round.",
       withholdAuthors: true,
     });
@@ -43,6 +47,27 @@ describe("sealing a referee copy", () => {
     expect(await navigator.clipboard.readText()).toBe(`${location.origin}/referee/an-unguessable-token`);
     await user.click(screen.getByRole("button", { name: "Seal another" }));
     expect(screen.queryByDisplayValue(/an-unguessable-token/)).not.toBeInTheDocument();
+  });
+
+  it("seals further findings, with an end, in another's place, and sends the link", async () => {
+    const { user, asked } = open({ [list]: [copy], [seal]: { copy, token: "an-unguessable-token" } });
+    await user.click(await screen.findByRole("checkbox", { name: "laws tests" }));
+    await user.click(screen.getByRole("checkbox", { name: "ninetieth slutsky" }));
+    // Chosen as the matrix, it is no longer one of the others.
+    await user.click(screen.getByRole("radio", { name: "ninetieth" }));
+    await user.selectOptions(screen.getByLabelText("The link opens"), "for 90 days");
+    await user.selectOptions(await screen.findByLabelText("In the place of"), "c");
+    await user.type(screen.getByLabelText("Send the link to"), "not an address");
+    await user.click(screen.getByRole("button", { name: "Seal a referee copy" }));
+    expect(await screen.findByRole("alert")).toHaveTextContent("Write an e-mail address, or nothing.");
+    await user.clear(screen.getByLabelText("Send the link to"));
+    await user.type(screen.getByLabelText("Send the link to"), "editor@example.org");
+    await user.click(screen.getByRole("button", { name: "Seal a referee copy" }));
+    expect(await screen.findByText(/It is on its way to editor@example.org/)).toBeInTheDocument();
+    const body = asked.find(({ method }) => method === "POST")?.body as Record<string, unknown>;
+    expect(body).toMatchObject({ cellId: "n", also: ["l"], replaces: "c", email: "editor@example.org" });
+    const days = (Date.parse(String(body.expiresAt)) - Date.now()) / 86_400_000;
+    expect(days).toBeCloseTo(90, 2);
   });
 
   it("tells why a matrix cannot be sealed", async () => {
@@ -72,5 +97,36 @@ describe("copies sealed so far", () => {
     expect(screen.queryByRole("button", { name: "Revoke the copy of ninetieth" })).not.toBeInTheDocument();
     await user.click(screen.getByRole("button", { name: "Revoke the copy of matrix" }));
     await vi.waitFor(() => expect(asked.some(({ method }) => method === "DELETE")).toBe(true));
+  });
+
+  it("say what is in them, what stands in their place and until when they open", async () => {
+    const older = {
+      ...copy,
+      id: "o",
+      also: ["laws", "fifths"],
+      replacedBy: "c",
+      lastOpenedAt: "2024-03-09T11:00:00.000Z",
+    };
+    const past = { ...copy, id: "p", cellName: "ninetieth", expiresAt: "2024-03-20T10:00:00.000Z" };
+    open({ [list]: [{ ...copy, sealedAt: "2024-03-12T10:00:00.000Z" }, older, past] });
+    const [, replaced, runOut] = (await screen.findAllByText(/sealed .* by Ilse Marchetti/)).map(
+      (line) => line.textContent,
+    );
+    expect(replaced).toMatch(/^matrix with laws and fifths, .*last opened .*; replaced by that of 12 March 2024$/);
+    expect(runOut).toMatch(/not opened yet; run out 20 March 2024$/);
+  });
+
+  it("have their end moved, and a new link", async () => {
+    const { user, asked } = open({
+      [list]: [copy],
+      "PATCH /api/studies/s/referee-copies/c": copy,
+      "POST /api/studies/s/referee-copies/c/link": { copy, token: "another-token" },
+    });
+    await user.click(await screen.findByRole("button", { name: "Move the end of the copy of matrix" }));
+    await user.click(screen.getByRole("button", { name: "until it is revoked" }));
+    await vi.waitFor(() => expect(asked.find(({ method }) => method === "PATCH")?.body).toEqual({ expiresAt: null }));
+    await user.click(screen.getByRole("button", { name: "New link of the copy of matrix" }));
+    await user.click(screen.getByRole("button", { name: "Make a new link" }));
+    expect(await screen.findByDisplayValue(/referee\/another-token$/)).toBeInTheDocument();
   });
 });
