@@ -1,6 +1,7 @@
 import { useQueryClient } from "@tanstack/react-query";
 import { useNavigate } from "react-router-dom";
 import { useSignOut } from "../features/accounts/api/sign-out.ts";
+import { forgetKeptAnswers } from "../lib/kept-answers.ts";
 import { pages } from "../lib/paths.ts";
 
 /**
@@ -26,6 +27,7 @@ export function useForget(accountId: string | undefined, to: string | null = pag
       // Only at the door: a page that is still there would ask again for what it has just lost.
       client.clear();
     }
+    forgetKeptAnswers();
     // Loaded when it is needed: the list of studies has no other use for it.
     const { forgetAccount } = await import("../sync/index.ts");
     if (accountId !== undefined) await forgetAccount(accountId).catch(() => []);

@@ -11,11 +11,11 @@ export interface Keeping {
   close(): Promise<void>;
 }
 
-const UNSTORED = "unstored";
+export const UNSTORED = "unstored";
 /** A browser may refuse to keep anything; the study then opens without. */
 const PATIENCE_MS = 4_000;
 
-const databaseOf = (accountId: string, studyId: string) => `tangency/${accountId}/${studyId}`;
+export const databaseOf = (accountId: string, studyId: string) => `tangency/${accountId}/${studyId}`;
 
 export function keepInBrowser(accountId: string, studyId: string, doc: Y.Doc): Keeping {
   const persistence = new IndexeddbPersistence(databaseOf(accountId, studyId), doc);
@@ -55,7 +55,7 @@ async function unstoredIn(name: string): Promise<number> {
   }
 }
 
-function asked<T>(request: IDBRequest<T>): Promise<T> {
+export function asked<T>(request: IDBRequest<T>): Promise<T> {
   return new Promise((resolve, reject) => {
     request.onsuccess = () => resolve(request.result);
     request.onerror = () => reject(request.error);

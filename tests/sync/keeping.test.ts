@@ -3,6 +3,7 @@ import { afterEach, beforeEach, expect, it } from "vitest";
 import { type OpenDatabase, openDatabase } from "../../server/db/client.ts";
 import { addCell } from "../../server/sync/index.ts";
 import { forgetAccount, keepInBrowser } from "../../src/sync/keeping.ts";
+import { keptWords, letGo } from "../../src/sync/kept-words.ts";
 import { openAs, until } from "../support/sync-clients.ts";
 import { fillDatabase, type RunningSync, STUDY, startSyncServer } from "../support/sync-server.ts";
 import { temporaryFolder } from "../support/temporary.ts";
@@ -97,4 +98,23 @@ it("signing out clears what is stored and leaves what is not", async () => {
   expect(await forgetAccount("tomas")).toEqual([STUDY]);
   expect((await indexedDB.databases()).map(({ name }) => name)).toContain(`tangency/tomas/${STUDY}`);
   server = await startSyncServer(open, { port });
+});
+
+it("what someone wrote before they became a reader is kept to be read, until they let it go", async () => {
+  const first = page();
+  await until(() => first.snapshot().stored.everything, "not connected");
+  await first.close();
+  expect(await keptWords("tomas", STUDY)).toBeUndefined();
+  await server.close();
+  server.roles.set("tomas", "reader");
+  const alone = page();
+  await until(() => alone.snapshot().loaded, "not kept");
+  alone.replaceSource("survey", "s, and what was written alone");
+  await alone.close();
+  const kept = await keptWords("tomas", STUDY);
+  expect(kept).toMatchObject({ edits: 1, cells: [{ id: "survey", source: "s, and what was written alone" }] });
+  expect(await forgetAccount("tomas")).toEqual([STUDY]);
+  await letGo("tomas", STUDY);
+  expect(await keptWords("tomas", STUDY)).toBeUndefined();
+  server = await startSyncServer(open);
 });

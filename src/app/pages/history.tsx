@@ -34,6 +34,10 @@ export default function HistoryPage() {
       </StudyBar>
       <main className="desk">
         <div className="ledger history">
+          <div className="pages-end" aria-hidden="true">
+            <div className="verso" />
+            <div className="recto" />
+          </div>
           <div className="band">
             <div className="verso">
               <h1 className="type-title">History</h1>

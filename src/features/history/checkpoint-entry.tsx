@@ -50,7 +50,7 @@ export function CheckpointEntry(props: CheckpointEntryProps) {
         {minuteInWords(madeAt)}
       </p>
       {note && opened !== "words" && <p className="pt-1 wrap-anywhere">{note}</p>}
-      <div className="type-small flex flex-wrap gap-x-4 gap-y-1 pt-1.5">
+      <div className="type-small flex flex-wrap items-baseline gap-x-4 gap-y-1 pt-1.5">
         {action("since", "What differs now")}
         {may.make && action("return", "Return to it")}
         {may.make && action("words", "Rename")}

@@ -7,6 +7,7 @@ import { clockTime } from "../../lib/dates.ts";
 import { useCheckpoints } from "./api/get-checkpoints.ts";
 import { type HistoryFilter, useHistory } from "./api/get-history.ts";
 import { SittingEntry } from "./sitting-entry.tsx";
+import { TogetherEntry, together } from "./together-entry.tsx";
 import { byDay, writersInWords } from "./words.ts";
 
 interface HistoryListProps {
@@ -19,6 +20,7 @@ interface HistoryListProps {
 
 type Entry =
   | { readonly at: string; readonly sitting: Sitting }
+  | { readonly at: string; readonly together: readonly Sitting[] }
   | { readonly at: string; readonly checkpoint: CheckpointSummary };
 
 /** Who changed what and when, by day, with the checkpoints among it. */
@@ -54,7 +56,9 @@ export function HistoryList({ studyId, filter, cells, you, onBringBack }: Histor
           <h3 className="type-section pb-1">{day}</h3>
           <ol>
             {entries.map((entry) =>
-              "sitting" in entry ? (
+              "together" in entry ? (
+                <TogetherEntry key={entry.together[0].id} sittings={entry.together} you={you} />
+              ) : "sitting" in entry ? (
                 <SittingEntry
                   key={entry.sitting.id}
                   sitting={entry.sitting}
@@ -105,7 +109,9 @@ function belongs(
 function merged(sittings: readonly Sitting[], checkpoints: readonly CheckpointSummary[]): Entry[] {
   const entries: Entry[] = [
     ...checkpoints.map((checkpoint) => ({ at: checkpoint.madeAt, checkpoint })),
-    ...sittings.map((sitting) => ({ at: sitting.from, sitting })),
+    ...together(sittings).map((group) =>
+      group.length === 1 ? { at: group[0].from, sitting: group[0] } : { at: group[0].from, together: group },
+    ),
   ];
   return entries.toSorted((a, b) => (a.at < b.at ? 1 : a.at > b.at ? -1 : 0));
 }

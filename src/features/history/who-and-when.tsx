@@ -1,6 +1,6 @@
 import { useDeferredValue, useEffect, useState } from "react";
+import { Link } from "react-router-dom";
 import type { LatestEdits } from "../../../shared/schemas/history.ts";
-import { LinkWord } from "../../components/button.tsx";
 import { clockTime, minuteInWords } from "../../lib/dates.ts";
 import { pages } from "../../lib/paths.ts";
 import { useLatestEdits } from "./api/get-latest-edits.ts";
@@ -28,9 +28,9 @@ export function WhoAndWhen({ studyId, you, what, ...asked }: WhoAndWhenProps) {
   const moment = minuteInWords(edit.at);
   const when = moment === clockTime(edit.at) ? `at ${moment}` : `on ${moment}`;
   return (
-    <LinkWord quiet to={`${pages.history(studyId)}?cell=${encodeURIComponent(edit.cellId)}`}>
+    <Link className="reference" to={`${pages.history(studyId)}?cell=${encodeURIComponent(edit.cellId)}`}>
       by {name} {when}
-    </LinkWord>
+    </Link>
   );
 }
 

@@ -1,11 +1,12 @@
 import { queryOptions, useQuery } from "@tanstack/react-query";
 import { account } from "../../../../shared/schemas/resources.ts";
 import { ask } from "../../../lib/api.ts";
+import { orKept } from "../../../lib/kept-answers.ts";
 import { api } from "../../../lib/paths.ts";
 
 export const meOptions = queryOptions({
   queryKey: ["me"],
-  queryFn: ({ signal }) => ask({ path: api.me, answer: account, signal }),
+  queryFn: ({ signal }) => orKept("me", account, ask({ path: api.me, answer: account, signal })),
   staleTime: 5 * 60_000,
 });
 
