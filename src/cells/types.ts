@@ -11,6 +11,14 @@ export interface FormProps {
   readonly onChange: (nextSource: string) => void;
   readonly readOnly: boolean;
   readonly context: { readonly cells: readonly CellSource[]; readonly uploads: readonly Upload[] };
+  /** Shows rows of the upload beside the finding; absent where rows are not to be seen. */
+  readonly onLook?: (rows: LookedAt) => void;
+}
+
+/** Rows that something found is about, by its key, with a title for the list. */
+export interface LookedAt {
+  readonly about: string;
+  readonly title: string;
 }
 
 /** A finding within the study: the sentence, the verdicts, one table. The state line above it is the band's. */

@@ -51,7 +51,7 @@ async function createAccount(who: Page, { name, email, passphrase }: typeof ANNA
 /** Gives the page's file field a file, from memory or from a path. */
 const give = (file: string | { name: string; text: string }) =>
   page
-    .getByLabel("Choose a CSV file")
+    .getByLabel("Choose a file")
     .setInputFiles(
       typeof file === "string" ? file : { name: file.name, mimeType: "text/csv", buffer: Buffer.from(file.text) },
     );

@@ -91,7 +91,7 @@ export default function OpenedCellPage() {
                     <KeyMarks />
                     {standing.kind === "data" && (
                       <Suspense>
-                        <UploadColumns cell={standing.cell} cells={cells} uploads={uploads} />
+                        <UploadColumns studyId={study.id} cell={standing.cell} cells={cells} uploads={uploads} />
                       </Suspense>
                     )}
                     <FindingAside studyId={study.id} fingerprint={standing.fingerprint} />

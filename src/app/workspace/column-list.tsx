@@ -11,10 +11,12 @@ interface ColumnListProps {
   readonly source: string;
   /** Columns that systems on the cell take as demographics. */
   readonly demographics?: readonly string[];
+  /** Shows the rows as they stand in the file. */
+  readonly onLook?: () => void;
 }
 
 /** An upload's columns in the order of the file, each with its numbers in small and what it is used for. */
-export function ColumnList({ upload, source, demographics }: ColumnListProps) {
+export function ColumnList({ upload, source, demographics, onLook }: ColumnListProps) {
   const [whole, setWhole] = useState(false);
   const uses = usesOfColumns(
     source,
@@ -33,6 +35,11 @@ export function ColumnList({ upload, source, demographics }: ColumnListProps) {
           {uses.size} of {upload.columns.length} used
         </span>
       </div>
+      {onLook && (
+        <Word className="type-small mb-1.5 block" onClick={onLook}>
+          Look at the rows <span className="sr-only">of {upload.name}</span>
+        </Word>
+      )}
       <ul className="border-rule border-b">
         {shown.map((column) => (
           <li

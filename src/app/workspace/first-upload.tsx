@@ -1,5 +1,6 @@
 import type { Upload } from "../../../shared/schemas/resources.ts";
 import { suggestData } from "../../../shared/study/suggest.ts";
+import { latestUploads } from "../../../shared/study/uploads.ts";
 import { Word } from "../../components/button.tsx";
 import { FileDrop } from "../../features/uploads/file-drop.tsx";
 import { shapeInWords } from "../../features/uploads/upload-words.ts";
@@ -20,7 +21,7 @@ export default function FirstUpload({ studyId, uploads, onChange }: FirstUploadP
         <>
           <p className="type-small pt-3 text-ink2">Or take one that is here already:</p>
           <ul>
-            {uploads.map((upload) => (
+            {latestUploads(uploads).map((upload) => (
               <li key={upload.id} className="py-0.5">
                 <Word onClick={() => take(upload)}>{upload.name}</Word>{" "}
                 <span className="type-small text-ink3">{shapeInWords(upload)}</span>

@@ -1,17 +1,20 @@
-import { lazy, Suspense, useEffect } from "react";
+import { lazy, Suspense, useEffect, useState } from "react";
 import type { Upload } from "../../../shared/schemas/resources.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
+import type { LookedAt } from "../../cells/types.ts";
 import { Fault } from "../../components/field.tsx";
 import { ProgressLine } from "../../features/estimation/progress-line.tsx";
 import { useFinding } from "../../features/findings/api/get-finding.ts";
 import { sentenceOf } from "../../lib/api.ts";
 import { AsideOf, FindingOpen } from "./finding-view.tsx";
 import { firstFindingShown } from "./first-finding.ts";
+import { keepOnly } from "./keep-only.ts";
 import type { OpenStudy } from "./open-study.ts";
 import { ProblemList } from "./problem-list.tsx";
 import type { Standing } from "./standing.ts";
 import { StateLine } from "./state-line.tsx";
 
+const RowsDialog = lazy(() => import("../../features/uploads/rows-dialog.tsx"));
 const Unanswered = lazy(() => import("./unanswered.tsx"));
 
 interface OpenedFindingProps extends OpenStudy {
@@ -28,17 +31,30 @@ export function OpenedFinding({ study, connection, readOnly, standing, cells, up
     if (error || (!fingerprint && !standing.isUnread)) firstFindingShown();
   }, [error, fingerprint, standing.isUnread]);
   const onChange = readOnly ? undefined : (next: string) => connection.replaceSource(cell.id, next);
+  const [looked, setLooked] = useState<LookedAt>();
   const form = {
     source: cell.source,
     onChange: onChange ?? (() => {}),
     readOnly,
     context: { cells, uploads },
+    ...(standing.kind === "data" && { onLook: setLooked }),
   };
   return (
     <>
       <h2 className="sr-only">Finding</h2>
       <StateLine standing={standing} />
       {fingerprint && data && <FindingOpen finding={data.finding} status={status} form={form} />}
+      <Suspense>
+        {looked && fingerprint && (
+          <RowsDialog
+            studyId={study.id}
+            of={{ cellId: cell.id, about: looked.about, fingerprint }}
+            title={looked.title}
+            {...(onChange && { onKeep: (expression) => onChange(keepOnly(cell.source, expression)) })}
+            onClose={() => setLooked(undefined)}
+          />
+        )}
+      </Suspense>
       {fingerprint && error && <Fault>{sentenceOf(error)}</Fault>}
       {state === "failed" && <ProblemList standing={standing} onMend={onChange} />}
       {state === "estimating" && progress && (

@@ -35,6 +35,7 @@ export function useStandings({ study, connection }: Pick<OpenStudy, "study" | "c
     // With nothing to wait for, what can wait need not.
     if (status && standings.every(({ fingerprint, isUnread }) => !fingerprint && !isUnread)) firstFindingShown();
   }, [status, standings]);
+  useVersionsOfOthers(study.id, standings);
   return { standings, cells, uploads: uploads ?? NONE, error, isKnown: uploads !== undefined && status !== undefined };
 }
 
@@ -46,6 +47,24 @@ function useUnchanged(standings: readonly Standing[]): readonly Standing[] {
   if (!isSame) setBefore(kept);
   return isSame ? before : kept;
 }
+
+/**
+ * A data cell whose text is as it was found, and whose finding the server has under another fingerprint than is asked
+ * here, reads a version that a coauthor has just added.
+ */
+function useVersionsOfOthers(studyId: string, standings: readonly Standing[]) {
+  const client = useQueryClient();
+  const elsewhere = standings
+    .filter(({ kind, state, status, cell }) => kind === "data" && state === "out of date" && isAsFound(status, cell))
+    .map(({ status }) => status?.fingerprint)
+    .join();
+  useEffect(() => {
+    if (elsewhere) void client.invalidateQueries({ queryKey: ["uploads", studyId] });
+  }, [client, studyId, elsewhere]);
+}
+
+const isAsFound = (status: Standing["status"], { source }: Standing["cell"]) =>
+  status?.state === "current" && status.last?.fingerprint === status.fingerprint && status.last?.source === source;
 
 /** A cell that names an upload unknown here may name one a coauthor has just added. */
 function useUploadsOfOthers(

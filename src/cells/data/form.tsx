@@ -1,10 +1,22 @@
-import { asChoices, ChoiceField, TextField, Unreadable } from "../form/fields.tsx";
+import type { Upload } from "../../../shared/schemas/resources.ts";
+import { latestUploads, uploadRead, versionOf, versionsOf } from "../../../shared/study/uploads.ts";
+import { counted } from "../../../shared/study/words.ts";
+import { asChoices, type Choice, ChoiceField, TextField, Unreadable } from "../form/fields.tsx";
 import { readWritten } from "../form/written.ts";
 import type { FormProps } from "../types.ts";
 import { columnChoices } from "./column-choices.ts";
 import { DerivedFields } from "./derived-fields.tsx";
 import { goodsInWords, mappingOf } from "./goods-mapping.ts";
 import { GoodsTable } from "./goods-table.tsx";
+
+function versionChoice(upload: Upload): Choice {
+  const version = String(upload.version);
+  return {
+    value: version,
+    label: `${version}: ${counted(upload.rows, "row")}, by ${upload.uploadedBy}`,
+    chosen: version,
+  };
+}
 
 const ROLES = [
   ["total", "Total", "the sum of the goods", true],
@@ -18,7 +30,9 @@ export function DataForm(props: FormProps) {
   const { context, readOnly } = props;
   const written = readWritten("data", props);
   if (!written.readable) return <Unreadable />;
-  const upload = context.uploads.find((one) => one.name === written.text("upload"));
+  const named = { upload: written.text("upload"), version: written.value("version") };
+  const upload = uploadRead(context.uploads, named);
+  const versions = versionsOf(context.uploads, named.upload);
   const derived = Object.keys(written.map("derive"));
   const goods = Object.keys(written.map("goods")).map((good) => mappingOf(written, good));
   return (
@@ -26,10 +40,21 @@ export function DataForm(props: FormProps) {
       <ChoiceField
         label="Upload"
         value={written.text("upload")}
-        choices={asChoices(context.uploads.map((one) => one.name))}
+        choices={asChoices(latestUploads(context.uploads).map((one) => one.name))}
         readOnly={readOnly}
-        onChange={(value) => written.write([["upload"], value])}
+        // Versions are counted within a name: a pin means nothing for another.
+        onChange={(value) => written.write([["upload"], value], [["version"], undefined])}
       />
+      {(versions.length > 1 || named.version !== undefined) && (
+        <ChoiceField
+          label="Version"
+          value={written.text("version")}
+          choices={versions.map((one) => versionChoice(one))}
+          none={versions.length > 0 ? `the latest, ${versionOf(versions[0])}` : "the latest"}
+          readOnly={readOnly}
+          onChange={(value) => written.write([["version"], value === "" ? undefined : Number(value)])}
+        />
+      )}
       <details open={goods.length === 0} className="py-1">
         <summary className="min-h-6 cursor-pointer text-[0.875rem]/[1.25rem]">
           <span className="text-ink2">Goods:</span> {goodsInWords(goods)}

@@ -50,9 +50,12 @@ export function chooseColumn(
 
 const WORDS = ["no", "one", "two", "three", "four", "five", "six", "seven", "eight", "nine", "ten", "eleven", "twelve"];
 
+/** "six"; beyond twelve in digits. */
+export const inWords = (count: number): string => WORDS[count] ?? String(count);
+
 /** "six, each a price and an expenditure" when they are alike, else how many by which two. */
 export function goodsInWords(mappings: readonly Mapping[]): string {
-  const count = WORDS[mappings.length] ?? String(mappings.length);
+  const count = inWords(mappings.length);
   const pairs = new Set(mappings.map((mapping) => SLOTS.filter((slot) => mapping[slot] !== undefined).join(" and ")));
   const [pair] = pairs;
   if (pairs.size === 1 && pair) return `${count}, each by ${pair}`;

@@ -1,6 +1,6 @@
 import { useState } from "react";
 import type { DataFinding } from "../../../shared/schemas/data.ts";
-import { suggestGoods } from "../../../shared/study/suggest.ts";
+import { uploadRead } from "../../../shared/study/uploads.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { DECIMALS, printFixed, printPercent } from "../../../shared/tables/numbers.ts";
 import { TableScroller } from "../../components/table-scroller.tsx";
@@ -9,6 +9,9 @@ import { readWritten, type Written } from "../form/written.ts";
 import type { FormProps } from "../types.ts";
 import { columnChoices } from "./column-choices.ts";
 import { chooseColumn, FOLLOWS, follows, mappingOf, SLOTS } from "./goods-mapping.ts";
+import { moveGood, moveGoodTo, renameGood } from "./goods-order.ts";
+import { MoveHandle } from "./move-handle.tsx";
+import { Recognised } from "./recognised.tsx";
 
 interface GoodsTableProps {
   readonly form: FormProps;
@@ -18,23 +21,61 @@ interface GoodsTableProps {
 
 const LINK = "word type-small";
 
-function GoodRow({
-  good,
-  written,
-  choices,
-  form,
-  found,
-}: GoodsTableProps & {
-  good: string;
-  written: Written;
-  choices: ReturnType<typeof columnChoices>;
-}) {
+interface GoodRowProps extends GoodsTableProps {
+  readonly good: string;
+  readonly written: Written;
+  readonly choices: ReturnType<typeof columnChoices>;
+  readonly order: Order;
+}
+
+/** How goods change names and places. */
+interface Order {
+  readonly rename: (good: string, name: string) => void;
+  readonly move: (good: string, by: 1 | -1) => void;
+  readonly drag: (good: string | undefined) => void;
+  /** What is dragged is let go over a good. */
+  readonly drop: (target: string) => void;
+  readonly dragged: string | undefined;
+}
+
+function GoodRow({ good, written, choices, form, found, order }: GoodRowProps) {
+  const [over, setOver] = useState(false);
   const mapping = mappingOf(written, good);
   const description = found?.find((one) => one.name === good);
   return (
-    <tr className="border-rule border-b">
-      <th scope="row" className="py-1 pr-2 text-left text-[0.875rem]/[1.25rem] font-semibold">
-        {capital(good)}
+    <tr
+      className={`border-rule border-b ${over && order.dragged !== undefined && order.dragged !== good ? "bg-accent-wash" : ""}`}
+      onDragOver={(event) => {
+        if (order.dragged === undefined) return;
+        event.preventDefault();
+        setOver(true);
+      }}
+      onDragLeave={() => setOver(false)}
+      onDrop={(event) => {
+        if (order.dragged === undefined) return;
+        event.preventDefault();
+        setOver(false);
+        order.drop(good);
+      }}
+    >
+      <th scope="row" className="min-w-[7.5rem] py-1 pr-3 text-left text-[0.875rem]/[1.25rem] font-semibold">
+        {form.readOnly ? (
+          capital(good)
+        ) : (
+          <span className="flex items-center gap-1">
+            <MoveHandle
+              good={good}
+              onMove={(by) => order.move(good, by)}
+              onDrag={(dragged) => order.drag(dragged ? good : undefined)}
+            />
+            <TextControl
+              aria-label={`Name of ${good}`}
+              value={good}
+              readOnly={false}
+              onCommit={(name) => order.rename(good, name)}
+            />
+          </span>
+        )}
       </th>
       {SLOTS.map((slot) => (
         <td key={slot} className="min-w-[7rem] py-1 pr-3">
@@ -96,14 +137,32 @@ function AddGood({ written, goods }: { written: Written; goods: readonly string[
 export function GoodsTable({ form, found }: GoodsTableProps) {
   const written = readWritten("data", form);
   const goods = Object.keys(written.map("goods"));
-  const upload = form.context.uploads.find((one) => one.name === written.text("upload"));
+  const upload = uploadRead(form.context.uploads, {
+    upload: written.text("upload"),
+    version: written.value("version"),
+  });
   const choices = columnChoices(upload, Object.keys(written.map("derive")), true);
-  const suggested = upload && goods.length === 0 ? Object.entries(suggestGoods(upload.columns).goods) : [];
-  const takeSuggested = () =>
-    written.write([
-      ["goods"],
-      Object.fromEntries(suggested.map(([good, columns]) => [good, { ...columns } as Record<string, string>])),
-    ]);
+  const [dragged, setDragged] = useState<string>();
+  const [said, setSaid] = useState("");
+  const order: Order = {
+    dragged,
+    drag: setDragged,
+    rename(good, name) {
+      const renamed = renameGood(form.source, goods, good, name);
+      setSaid(typeof renamed === "string" ? "" : renamed.no);
+      if (typeof renamed === "string") form.onChange(renamed);
+    },
+    move(good, by) {
+      const to = goods.indexOf(good) + by;
+      if (to < 0 || to >= goods.length) return;
+      form.onChange(moveGood(form.source, goods, good, by));
+      setSaid(`${capital(good)} is now ${to + 1} of ${goods.length}.`);
+    },
+    drop(target) {
+      if (dragged !== undefined) form.onChange(moveGoodTo(form.source, goods, dragged, target));
+      setDragged(undefined);
+    },
+  };
   return (
     <div>
       {goods.length > 0 && (
@@ -125,17 +184,24 @@ export function GoodsTable({ form, found }: GoodsTableProps) {
             </thead>
             <tbody>
               {goods.map((good) => (
-                <GoodRow key={good} good={good} written={written} choices={choices} form={form} found={found} />
+                <GoodRow
+                  key={good}
+                  good={good}
+                  written={written}
+                  choices={choices}
+                  form={form}
+                  found={found}
+                  order={order}
+                />
               ))}
             </tbody>
           </table>
         </TableScroller>
       )}
-      {!form.readOnly && suggested.length > 0 && (
-        <button type="button" className={LINK} onClick={takeSuggested}>
-          Take the {suggested.length} goods that the columns’ names suggest
-        </button>
-      )}
+      <p role="status" className="type-small text-ink2">
+        {said}
+      </p>
+      {!form.readOnly && upload && <Recognised written={written} upload={upload} />}
       {!form.readOnly && <AddGood written={written} goods={goods} />}
     </div>
   );

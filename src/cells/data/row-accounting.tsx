@@ -4,6 +4,7 @@ import { rowAccountingTable } from "../../../shared/tables/row-accounting.ts";
 import { AccountTable } from "../../components/table-account.tsx";
 import { TableScroller } from "../../components/table-scroller.tsx";
 import { CopyTable } from "../copy-table.tsx";
+import type { FormProps } from "../types.ts";
 import { RowStrip } from "./row-strip.tsx";
 
 const NAMED = 3;
@@ -16,11 +17,23 @@ function rowsInWords(rows: readonly number[], count: number): string {
   return more > 0 ? `${word} ${named} and ${printCount(more)} more` : `${word} ${named}`;
 }
 
-function Where({ reason, uploaded }: { reason: RowAccounting["leftOut"][number]; uploaded: number }) {
+interface WhereProps {
+  readonly reason: RowAccounting["leftOut"][number];
+  readonly uploaded: number;
+  readonly onLook: FormProps["onLook"];
+}
+
+function Where({ reason, uploaded, onLook }: WhereProps) {
+  const look = { about: JSON.stringify(["left out", reason.reason]), title: reason.label };
   return (
     <div className="grid grid-cols-1 items-center gap-x-4 min-[800px]:grid-cols-[minmax(8rem,1fr)_minmax(11rem,1fr)]">
       <RowStrip strip={reason.strip} rowsPerSlice={uploaded / reason.strip.length} />
-      {reason.rows.length > NAMED ? (
+      {onLook ? (
+        <button type="button" className="word type-small text-left" onClick={() => onLook(look)}>
+          <span className="sr-only">Look at </span>
+          {rowsInWords(reason.rows, reason.count)}
+        </button>
+      ) : reason.rows.length > NAMED ? (
         <details className="type-small">
           <summary className="word list-none">{rowsInWords(reason.rows, reason.count)}</summary>
           <TableScroller label="Rows left out" className="max-h-40 overflow-y-auto">
@@ -36,7 +49,7 @@ function Where({ reason, uploaded }: { reason: RowAccounting["leftOut"][number];
 }
 
 /** What became of every row of the upload: each left-out row under its reason, and where it stands in the file. */
-export function RowAccountingView({ accounting }: { accounting: RowAccounting }) {
+export function RowAccountingView({ accounting, onLook }: { accounting: RowAccounting; onLook?: FormProps["onLook"] }) {
   const reasons = accounting.leftOut.filter((reason) => reason.count > 0);
   return (
     <section aria-labelledby="row-accounting">
@@ -66,7 +79,7 @@ export function RowAccountingView({ accounting }: { accounting: RowAccounting })
           key: reason.label,
           label: reason.label,
           number: printCount(-reason.count),
-          between: <Where reason={reason} uploaded={accounting.uploaded} />,
+          between: <Where reason={reason} uploaded={accounting.uploaded} onLook={onLook} />,
         }))}
         total={{ key: "used", label: "Rows used", number: printCount(accounting.used) }}
       />

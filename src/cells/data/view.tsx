@@ -33,9 +33,9 @@ export function DataOpen({ finding, form }: OpenProps<"data">) {
         <Description finding={finding} />
       </section>
       <div className="border-line border-t pt-4">
-        <RowAccountingView accounting={finding.accounting} />
+        <RowAccountingView accounting={finding.accounting} onLook={form?.onLook} />
       </div>
-      <WorthKnowing flags={finding.flags} />
+      <WorthKnowing flags={finding.flags} onLook={form?.onLook} />
     </div>
   );
 }

@@ -1,12 +1,16 @@
+import { lazy, Suspense, useState } from "react";
 import type { Upload } from "../../../shared/schemas/resources.ts";
-import { Word } from "../../components/button.tsx";
+import { latestUploads, versionsOf } from "../../../shared/study/uploads.ts";
 import { Dialog } from "../../components/dialog.tsx";
 import { Fault } from "../../components/field.tsx";
 import { sentenceOf } from "../../lib/api.ts";
+import { useAddSheet } from "./api/add-sheet.ts";
 import { useUploads } from "./api/list-uploads.ts";
 import { useRemoveUpload } from "./api/remove-upload.ts";
 import { FileDrop } from "./file-drop.tsx";
-import { originInWords, shapeInWords } from "./upload-words.ts";
+import { UploadEntry } from "./upload-entry.tsx";
+
+const UploadRows = lazy(() => import("./upload-rows.tsx"));
 
 interface UploadsDialogProps {
   readonly studyId: string;
@@ -14,48 +18,56 @@ interface UploadsDialogProps {
   readonly readOnly: boolean;
 }
 
-/** The files of the study: what is there, another one, and away with one that no cell names. */
+/** The files of the study: what is there in which versions, another one, and away with what no cell reads. */
 export default function UploadsDialog({ studyId, onClose, readOnly }: UploadsDialogProps) {
   const { data: uploads = [], error } = useUploads(studyId);
   const remove = useRemoveUpload(studyId);
+  const addSheet = useAddSheet(studyId);
+  const [looking, setLooking] = useState<Upload>();
+  const [replacing, setReplacing] = useState<string>();
+  const busy = remove.isPending || addSheet.isPending;
   return (
     <Dialog onClose={onClose} title="Uploads" lede="Rows stay on this installation, with those entitled to them.">
       {error && <Fault>{sentenceOf(error)}</Fault>}
       {uploads.length === 0 && <p className="pb-4 text-ink2">Nothing has been uploaded yet.</p>}
-      <ul>
-        {uploads.map((upload) => (
+      <ul className="border-rule border-b">
+        {latestUploads(uploads).map(({ name }) => (
           <UploadEntry
-            key={upload.id}
-            upload={upload}
-            onRemove={readOnly ? undefined : () => remove.mutate(upload.id)}
-            busy={remove.isPending}
-          />
+            key={name}
+            versions={versionsOf(uploads, name)}
+            busy={busy}
+            onLook={setLooking}
+            {...(!readOnly && {
+              onRemove: (upload: Upload) => remove.mutate(upload.id),
+              onSheet: (upload: Upload, sheet: string) => addSheet.mutate({ uploadId: upload.id, sheet }),
+              onReplace: () => setReplacing(replacing === name ? undefined : name),
+            })}
+          >
+            {replacing === name && (
+              <div className="pt-2">
+                <FileDrop
+                  studyId={studyId}
+                  replaces={name}
+                  words={`Choose the next version of ${name}`}
+                  onAdded={() => setReplacing(undefined)}
+                />
+              </div>
+            )}
+          </UploadEntry>
         ))}
       </ul>
-      {remove.isError && <Fault>{sentenceOf(remove.error)}</Fault>}
+      {addSheet.isPending && <p role="status">Reading sheet {addSheet.variables.sheet}</p>}
+      {[remove, addSheet].map(
+        ({ isError, error: fault }, place) => isError && <Fault key={place}>{sentenceOf(fault)}</Fault>,
+      )}
       {!readOnly && (
         <div className="pt-5">
           <FileDrop studyId={studyId} onAdded={() => {}} />
         </div>
       )}
+      <Suspense>
+        {looking && <UploadRows studyId={studyId} upload={looking} onClose={() => setLooking(undefined)} />}
+      </Suspense>
     </Dialog>
-  );
-}
-
-function UploadEntry({ upload, onRemove, busy }: { upload: Upload; onRemove?: () => void; busy: boolean }) {
-  return (
-    <li className="flex flex-wrap items-baseline justify-between gap-x-6 border-rule border-t py-2.5 last:border-b">
-      <div className="min-w-0">
-        <p className="break-words font-semibold">{upload.name}</p>
-        <p className="type-small text-ink2">
-          {shapeInWords(upload)}; {originInWords(upload)}
-        </p>
-      </div>
-      {onRemove && (
-        <Word onClick={onRemove} disabled={busy}>
-          Remove <span className="sr-only">{upload.name}</span>
-        </Word>
-      )}
-    </li>
   );
 }

@@ -130,7 +130,7 @@ describe("the form of a data cell", () => {
 
   it("takes the goods that the columns' names suggest", async () => {
     const { user, written } = open(DataForm, "upload: purchases.csv\n");
-    await user.click(screen.getByRole("button", { name: "Take the 2 goods that the columns’ names suggest" }));
+    await user.click(screen.getByRole("button", { name: "Take them over" }));
     expect(specification("data", written.source)).toMatchObject({
       goods: { grains: { price: "p_grains", expenditure: "e_grains" } },
     });

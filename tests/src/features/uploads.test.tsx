@@ -57,7 +57,7 @@ const file = (name = "purchases-2031.csv") => new File(["a;b\n1;2\n"], name, { t
 async function choose() {
   const onAdded = vi.fn();
   const view = renderPart(<FileDrop studyId="s" onAdded={onAdded} />);
-  await view.user.upload(await screen.findByLabelText("Choose a CSV file"), file());
+  await view.user.upload(await screen.findByLabelText("Choose a file"), file());
   return { ...view, onAdded, request: HeldRequest.latest };
 }
 
@@ -80,14 +80,14 @@ describe("an upload", () => {
     request.answer(422, { error: { code: "refused", sentence: "The file cannot be read.", problems: [problem] } });
     expect(await screen.findByRole("alert")).toHaveTextContent("The file cannot be read.");
     expect(screen.getByText(problem.sentence)).toBeInTheDocument();
-    expect(screen.getByLabelText("Choose a CSV file")).toBeEnabled();
+    expect(screen.getByLabelText("Choose a file")).toBeEnabled();
     expect(onAdded).not.toHaveBeenCalled();
   });
 
   it("can be given up, without a word of failure", async () => {
     const { user } = await choose();
     await user.click(await screen.findByRole("button", { name: "Cancel" }));
-    expect(await screen.findByLabelText("Choose a CSV file")).toBeInTheDocument();
+    expect(await screen.findByLabelText("Choose a file")).toBeInTheDocument();
     expect(screen.queryByRole("alert")).not.toBeInTheDocument();
   });
 
@@ -95,7 +95,7 @@ describe("an upload", () => {
     const large = file("large.csv");
     Object.defineProperty(large, "size", { value: 123 * 1024 * 1024 });
     const { user } = renderPart(<FileDrop studyId="s" onAdded={() => {}} />);
-    await user.upload(await screen.findByLabelText("Choose a CSV file"), large);
+    await user.upload(await screen.findByLabelText("Choose a file"), large);
     expect(await screen.findByRole("alert")).toHaveTextContent("large.csv has 123.0 MB; an upload may have 100 MB.");
   });
 });
@@ -120,6 +120,6 @@ describe("the uploads of a study", () => {
     renderPart(<UploadsDialog studyId="s" onClose={() => {}} readOnly />);
     await screen.findByText("purchases-2031.csv");
     expect(screen.queryByRole("button", { name: /Remove/ })).not.toBeInTheDocument();
-    expect(screen.queryByLabelText("Choose a CSV file")).not.toBeInTheDocument();
+    expect(screen.queryByLabelText("Choose a file")).not.toBeInTheDocument();
   });
 });

@@ -10,16 +10,21 @@ export interface Sending {
   /** How much of the file has gone out, 0 to 1; at 1 the installation is reading it. */
   readonly onProgress: (fraction: number) => void;
   readonly signal: AbortSignal;
+  /** The upload whose next version the file is; that of its own name, unless said. */
+  readonly replaces?: string;
+  /** An upload of its own although one of its name is there. */
+  readonly beside?: boolean;
 }
 
 /** Sends a file. `fetch` does not tell how much has gone out, so this asks the older way. */
-export function sendUpload(studyId: string, { file, onProgress, signal }: Sending): Promise<Upload> {
+export function sendUpload(studyId: string, { file, onProgress, signal, replaces, beside }: Sending): Promise<Upload> {
   if (file.size > LARGEST) return Promise.reject(tooLarge(file));
   const form = new FormData();
   form.append("file", file);
+  const how = new URLSearchParams({ ...(replaces && { replaces }), ...(beside && { beside: "1" }) });
   return new Promise((resolve, reject) => {
     const request = new XMLHttpRequest();
-    request.open("POST", api.uploads(studyId));
+    request.open("POST", `${api.uploads(studyId)}${how.size > 0 ? `?${how}` : ""}`);
     request.setRequestHeader("accept", "application/json");
     request.upload.onprogress = ({ loaded, total }) => onProgress(total > 0 ? loaded / total : 0);
     request.upload.onload = () => onProgress(1);
