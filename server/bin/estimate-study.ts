@@ -4,12 +4,13 @@ import { basename, dirname, resolve } from "node:path";
 import type { Finding } from "../../shared/schemas/cell.ts";
 import type { Problem } from "../../shared/schemas/problem.ts";
 import type { UploadShape } from "../../shared/study/columns.ts";
+import { fingerprintCells } from "../../shared/study/fingerprints.ts";
 import { nearestWord } from "../../shared/study/nearest-word.ts";
 import { type ResolvedCell, resolveParsed } from "../../shared/study/resolve.ts";
 import { placed } from "../../shared/study/states.ts";
 import { parseStudyFile } from "../../shared/study/study-file.ts";
 import { sortByReading } from "../../shared/study/topology.ts";
-import { runData, runElasticities, runSlutsky, runSystem, runTests } from "../engine/cells/index.ts";
+import { runData, runElasticities, runSlutsky, runSystem, runTests, runText } from "../engine/cells/index.ts";
 import type { PreparedData, UploadTable } from "../engine/columns/prepared-data.ts";
 import { readCsv } from "../engine/columns/read-csv.ts";
 import { Refusal } from "../engine/refusal.ts";
@@ -48,14 +49,17 @@ export async function estimateStudy(
     path,
     control,
   );
-  const wanted = wantedAmong(resolveParsed(file.cells, read.shapes), only);
+  const resolved = resolveParsed(file.cells, read.shapes);
+  const fingerprints = fingerprintCells(resolved, read.shapes);
+  const wanted = wantedAmong(resolved, only);
   const complaints = wanted.flatMap((cell) => {
     const unread = cell.kind === "data" ? read.problems.get(uploadOf(cell.id, file.cells)) : undefined;
     const problems = unread ? placed(unread, cell.places) : cell.problems;
     return problems.map((problem) => complaintOf(cell.name, problem));
   });
   if (complaints.length > 0) return { findings: {}, complaints };
-  return runCells(wanted, read.tables, { only, inFile: file.cells.map(({ name }) => name) }, control);
+  const inFile = file.cells.map(({ name }) => name);
+  return runCells(wanted, read.tables, { only, inFile, fingerprints }, control);
 }
 
 type Cells = ReturnType<typeof parseStudyFile>["cells"];
@@ -125,10 +129,16 @@ function wantedAmong(cells: readonly ResolvedCell[], only: readonly string[]): R
   return [...order, ...stuck].filter((name) => wanted.has(name)).flatMap((name) => byName.get(name) ?? []);
 }
 
+interface Asked {
+  readonly only: readonly string[];
+  readonly inFile: readonly string[];
+  readonly fingerprints: ReadonlyMap<string, string>;
+}
+
 function runCells(
   cells: readonly ResolvedCell[],
   tables: ReadonlyMap<string, UploadTable>,
-  { only, inFile }: { readonly only: readonly string[]; readonly inFile: readonly string[] },
+  { only, inFile, fingerprints }: Asked,
   control: RunControl,
 ): EstimatedStudy {
   const prepared = new Map<string, PreparedData>();
@@ -139,7 +149,7 @@ function runCells(
     // What reads a cell that failed has nothing to say of its own.
     if (cell.reads.some((name) => !found.has(name))) continue;
     try {
-      found.set(cell.name, runCell(cell, prepared, found, tables, { control, specificationOf }));
+      found.set(cell.name, runCell(cell, prepared, found, tables, { control, specificationOf, fingerprints }));
     } catch (error) {
       if (!(error instanceof Refusal)) throw error;
       complaints.push(...placed(error.problems, cell.places).map((problem) => complaintOf(cell.name, problem)));
@@ -153,6 +163,8 @@ function runCells(
 interface Running {
   readonly control: RunControl;
   readonly specificationOf: (name: string) => ResolvedCell["specification"];
+  /** By name: of a file, a cell's id is its name. */
+  readonly fingerprints: ReadonlyMap<string, string>;
 }
 
 function runCell(
@@ -160,12 +172,18 @@ function runCell(
   prepared: Map<string, PreparedData>,
   found: ReadonlyMap<string, Finding>,
   tables: ReadonlyMap<string, UploadTable>,
-  { control, specificationOf }: Running,
+  { control, specificationOf, fingerprints }: Running,
 ): Finding {
   if (specification?.kind === "data") {
     const data = runData(specification, tables.get(specification.upload)!, control);
     prepared.set(name, data);
     return data.finding;
+  }
+  if (specification?.kind === "text") {
+    const quoted = [...found].map(
+      ([cell, finding]) => [cell, { finding, fingerprint: fingerprints.get(cell) }] as const,
+    );
+    return runText(specification, new Map(quoted));
   }
   // The rows beneath a system go with it under its own name.
   const below = readOf(specification);

@@ -65,6 +65,19 @@ form: les
 estimator: maximum likelihood
 `;
 
+const ARGUMENT = `At the base point meat & fish is a luxury, *η* = {base: eta, meat & fish}, and grains a necessity, *η* = {base: eta, grains}. Negativity holds for {matrix: rows that hold} of households, so that the compensated effects may be used where most of them live.
+
+Sweet drinks take {survey: mean share, sweet drinks} of the average budget, and their compensated own-price elasticity is {matrix: compensated, sweet drinks, sweet drinks}. To second order a levy on them costs a household
+
+$$
+\\Delta \\ln c \\approx w_i \\, \\Delta \\ln p_i + \\tfrac{1}{2} \\, k_{ii} \\, (\\Delta \\ln p_i)^2
+$$
+
+of its food budget, with $k_{ii}$ = {matrix: entry, sweet drinks, sweet drinks}.[^point]
+
+[^point]: At the base point. Larger budgets are looked at in the cell ninetieth; $w_i$ is the share predicted there.
+`;
+
 const DEMO_TITLE = "Food demand in Velmark, 2029–31";
 
 const DEMO_LEDE =
@@ -80,6 +93,7 @@ const DEMO_CELLS: DemoStudy["cells"] = [
   { name: "fifths", kind: "elasticities", source: FIFTHS },
   { name: "linear", kind: "system", source: LINEAR },
   { name: "needs", kind: "system", source: NEEDS },
+  { name: "argument", kind: "text", source: ARGUMENT },
 ];
 
 /** The study an installation opens with: invented households, and the questions asked of them. */

@@ -29,6 +29,7 @@ export function runCellJob(job: CellJob, db: Database, memory: WorkerMemory, con
 
 function find(job: CellJob, db: Database, memory: WorkerMemory, control: RunControl): Finding {
   const { specification } = job;
+  if (specification.kind === "text") throw new Error("a text is read, not computed");
   const data = prepared(job, db, memory, control);
   if (specification.kind === "data") return data.finding;
   if (specification.kind === "system") return runSystem(specification, data, control);

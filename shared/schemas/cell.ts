@@ -4,9 +4,10 @@ import { elasticitiesFinding, elasticitiesSpecification } from "./elasticities.t
 import { slutskyFinding, slutskySpecification } from "./slutsky.ts";
 import { systemFinding, systemSpecification } from "./system.ts";
 import { testsFinding, testsSpecification } from "./tests.ts";
+import { textFinding, textSpecification } from "./text.ts";
 
 /** The kinds of cell. A kind is added here, with its schema file, its engine file and its view. */
-export const CELL_KINDS = ["data", "system", "tests", "elasticities", "slutsky"] as const;
+export const CELL_KINDS = ["data", "system", "tests", "elasticities", "slutsky", "text"] as const;
 export const cellKind = z.enum(CELL_KINDS);
 export type CellKind = z.infer<typeof cellKind>;
 
@@ -16,6 +17,7 @@ export const cellSpecification = z.discriminatedUnion("kind", [
   testsSpecification,
   elasticitiesSpecification,
   slutskySpecification,
+  textSpecification,
 ]);
 export type CellSpecification = z.infer<typeof cellSpecification>;
 
@@ -25,6 +27,7 @@ export const SPECIFICATIONS = {
   tests: testsSpecification,
   elasticities: elasticitiesSpecification,
   slutsky: slutskySpecification,
+  text: textSpecification,
 } as const;
 
 export const finding = z.discriminatedUnion("kind", [
@@ -33,6 +36,7 @@ export const finding = z.discriminatedUnion("kind", [
   testsFinding,
   elasticitiesFinding,
   slutskyFinding,
+  textFinding,
 ]);
 export type Finding = z.infer<typeof finding>;
 export type FindingOf<K extends CellKind> = Extract<Finding, { kind: K }>;

@@ -1,6 +1,7 @@
 import type { CellKind, CellSpecification } from "../schemas/cell.ts";
 import { canonicalJson } from "./canonical-json.ts";
 import { normaliseSpecification } from "./normalise.ts";
+import { withoutCellNames } from "./quotations.ts";
 import { sha256Hex } from "./sha256.ts";
 import { REFERENCES } from "./vocabulary.ts";
 
@@ -45,5 +46,6 @@ function asked(specification: CellSpecification): Record<string, unknown> {
     // Which bytes are read enters by their own hash: to name the version that is read anyhow asks nothing else.
     delete plain.version;
   }
+  if (specification.kind === "text") plain.text = withoutCellNames(specification.text);
   return plain;
 }

@@ -7,6 +7,7 @@ import { readDocument } from "./document.ts";
 import { issueProblems } from "./issues.ts";
 import { nearestWord } from "./nearest-word.ts";
 import { normaliseSpecification } from "./normalise.ts";
+import { type PlaceInText, parseText } from "./parse-text.ts";
 import { LIKE } from "./vocabulary.ts";
 import { aKind, capital } from "./words.ts";
 
@@ -19,6 +20,8 @@ export interface ParsedCell {
   readonly places: Places;
   /** The keys as written, for `like` and references; empty when the text cannot be read. */
   readonly written: Readonly<Record<string, unknown>>;
+  /** Of a text cell: where a stretch of its text stands. */
+  readonly placeInText?: PlaceInText;
 }
 
 /** A cell of a study, read: a source of the workspace, or a part of a study file. */
@@ -28,6 +31,7 @@ export interface StudyCell extends CellSource {
 
 /** A cell's source as text: its specification, or everything wrong with it, each at its place. */
 export function parseCell(kind: string, source: string): ParsedCell {
+  if (kind === "text") return parseText(source);
   const { value, problems, places } = readDocument(source);
   if (problems.length > 0) {
     return { ...(isKind(kind) && { kind }), problems: [...problems], places, written: {} };

@@ -6,6 +6,8 @@ import { takeOver } from "./like.ts";
 import { nearestWord } from "./nearest-word.ts";
 import { inOrder } from "./order.ts";
 import { checkKeys, parseCell, type StudyCell } from "./parse-cell.ts";
+import { quotationProblems } from "./quotation-problems.ts";
+import { quotedCells } from "./quotations.ts";
 import { sortByReading } from "./topology.ts";
 import { LIKE, REFERENCES } from "./vocabulary.ts";
 import { aKind, capital, listSome, listWords } from "./words.ts";
@@ -39,7 +41,7 @@ export function resolveCells(cells: readonly CellSource[], uploads: readonly Upl
 export function resolveParsed(cells: readonly StudyCell[], uploads: readonly UploadShape[]): ResolvedCell[] {
   const byName = new Map<string, StudyCell>();
   for (const cell of cells) if (!byName.has(cell.name)) byName.set(cell.name, cell);
-  const reading = new Map([...byName].map(([name, cell]) => [name, referencesOf(cell).map((to) => to.name)]));
+  const reading = new Map([...byName].map(([name, cell]) => [name, namesRead(cell, byName)]));
   const { cycles } = sortByReading(reading);
 
   const sound = cells.map((cell) => {
@@ -52,10 +54,11 @@ export function resolveParsed(cells: readonly StudyCell[], uploads: readonly Upl
   const specifications = new Map(
     sound.flatMap(({ cell, specification }) => (specification ? [[cell.name, specification] as const] : [])),
   );
+  const kinds = new Map([...byName].map(([name, { kind }]) => [name, kind]));
   return sound.map(({ cell, problems, specification, reads }) => {
     const { places, kind } = cell.parsed;
     const columns = specification ? columnProblems({ specification, places, specifications, uploads }) : [];
-    const all = [...problems, ...columns];
+    const all = [...problems, ...columns, ...quotedWrongly(cell, { kinds, specifications })];
     return {
       id: cell.id,
       name: cell.name,
@@ -67,6 +70,21 @@ export function resolveParsed(cells: readonly StudyCell[], uploads: readonly Upl
       places,
     };
   });
+}
+
+/** What is wrong with the quotations of a text cell. */
+function quotedWrongly({ parsed }: StudyCell, study: Parameters<typeof quotationProblems>[1]): Problem[] {
+  const { kind, written, placeInText = () => undefined } = parsed;
+  if (kind !== "text" || typeof written.text !== "string") return [];
+  return quotationProblems(written.text, study, placeInText);
+}
+
+/** The names that stand in a cell, whatever they lead to; a text quotes cells that have numbers. */
+function namesRead(cell: StudyCell, byName: ReadonlyMap<string, StudyCell>): string[] {
+  const { kind, written } = cell.parsed;
+  if (kind !== "text") return referencesOf(cell).map((to) => to.name);
+  const text = typeof written.text === "string" ? written.text : "";
+  return quotedCells(text).filter((name) => byName.get(name)?.kind !== "text");
 }
 
 interface Reference {
@@ -89,6 +107,7 @@ function referencesOf({ parsed }: StudyCell): Reference[] {
 
 /** The cells whose findings it needs; a cell it is only `like` is none of them, the one that names its data is. */
 function readsOf(cell: StudyCell, byName: ReadonlyMap<string, StudyCell>): string[] {
+  if (cell.parsed.kind === "text") return namesRead(cell, byName);
   const { written } = takeOver(cell, byName);
   const kind = cell.parsed.kind;
   if (!kind) return [];

@@ -68,6 +68,7 @@ function stateOf(cell: ResolvedCell, upstream: readonly CellStatus[], parts: Sta
     };
   }
   const waiting = last ? ("out of date" as const) : ("draft" as const);
+  if (cell.kind === "text") return { ...status, ...writtenState(cell, upstream) };
   if (!fingerprint) return { ...status, state: waiting, because: waitsFor(upstream) ?? "waits for a cell it reads" };
   const progress = parts.running.get(fingerprint);
   if (progress) return { ...status, state: "estimating", progress };
@@ -78,6 +79,17 @@ function stateOf(cell: ResolvedCell, upstream: readonly CellStatus[], parts: Sta
   const because =
     parts.stopped.get(fingerprint) ?? (last && changeOf(cell, last, upstream, parts.replaced)) ?? waitsFor(upstream);
   return { ...status, state: waiting, ...(because && { because }), ...(aboutMs !== undefined && { aboutMs }) };
+}
+
+/** Of a text, which is not computed but read: as current as what it quotes. */
+function writtenState(
+  { source }: ResolvedCell,
+  upstream: readonly CellStatus[],
+): Pick<CellStatus, "state" | "because"> {
+  if (source.trim() === "") return { state: "draft", because: "nothing is written yet" };
+  const behind = upstream.filter(({ state }) => state !== "current").map(({ name }) => name);
+  if (behind.length === 0) return { state: "current" };
+  return { state: "out of date", because: `${listWords(behind)} ${behind.length === 1 ? "is" : "are"} not current` };
 }
 
 /** "demographics", "price of brand1", "line 3". */

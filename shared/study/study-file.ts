@@ -6,7 +6,8 @@ import { LONGEST_STUDY_FILE, nodeAt, placeAt, placesIn, readDocument } from "./d
 import { removeKey, setKey, type Value } from "./edit.ts";
 import { nearestWord } from "./nearest-word.ts";
 import { spread } from "./order.ts";
-import { parseValue, type StudyCell } from "./parse-cell.ts";
+import { type ParsedCell, parseValue, type StudyCell } from "./parse-cell.ts";
+import { placesInBlock } from "./parse-text.ts";
 
 /** A study as one file: `study`, its title, and `cells`, each with its kind among its keys. */
 export interface StudyFile {
@@ -76,15 +77,18 @@ function cellsOf(text: string, cells: YAMLMap, lines: LineCounter, problems: Pro
     const value = toPlain(pair.value);
     const kind = kindOf(value, name, problems, placeAt(lines, from, to));
     const places = placesIn((pair.value as Node | null) ?? undefined, lines);
-    return {
-      id: name,
-      name,
-      kind,
-      order: orders[i],
-      source: cellText(text, cells, i, value),
-      parsed: parseValue(kind, value, places),
-    };
+    const parsed = parseValue(kind, value, places);
+    const common = { id: name, name, kind, order: orders[i] };
+    if (kind === "text") return { ...common, ...proseOf(text, pair.value, parsed, lines) };
+    return { ...common, source: cellText(text, cells, i, value), parsed };
   });
+}
+
+/** Of a text cell the workspace holds the text alone. */
+function proseOf(file: string, node: unknown, parsed: ParsedCell, lines: LineCounter) {
+  const { text } = parsed.written;
+  const placeInText = placesInBlock(file, nodeAt(node, ["text"]), lines);
+  return { source: typeof text === "string" ? text : "", parsed: { ...parsed, placeInText } };
 }
 
 function toPlain(node: unknown): unknown {

@@ -25,6 +25,8 @@ export const REFERENCES: { readonly [K in CellKind]: Readonly<Record<string, Cel
   tests: { system: "system", data: "data" },
   elasticities: { system: "system" },
   slutsky: { system: "system" },
+  // Its quotations lead to cells of every kind: shared/study/quotations.ts.
+  text: {},
 };
 
 /** A system cell takes over every key it does not give itself from the cell it is `like`. */
@@ -87,6 +89,9 @@ const KEYS: { readonly [K in CellKind]: Readonly<Record<KeysOf<K>, Told>> } = {
     system: ["the name of the system cell it evaluates", "system"],
     at: ["where: base point, mean, a row, a quantile of expenditure, or prices and x of one's own"],
     form: ["share form k, or quantity form S in the units uploaded"],
+  },
+  text: {
+    text: ["prose in Markdown with mathematics, and numbers quoted as {base: eta, grains}"],
   },
 };
 

@@ -34,4 +34,9 @@ export const CELL_VIEWS: { readonly [K in CellKind]: CellView<K> } = {
     Aside: async () => (await import("./slutsky/how-checked.tsx")).HowChecked,
     tables: async () => (await import("./tables.ts")).CELL_TABLES.slutsky,
   },
+  text: {
+    Band: async () => (await import("./text/band.tsx")).TextBand,
+    Open: async () => (await import("./text/view.tsx")).TextOpen,
+    tables: async () => (await import("./tables.ts")).CELL_TABLES.text,
+  },
 };

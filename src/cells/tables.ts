@@ -10,6 +10,7 @@ import { rowAccountingTable } from "../../shared/tables/row-accounting.ts";
 import { compensatedTable, slutskyTable } from "../../shared/tables/slutsky-matrix.ts";
 import type { LabelledTable } from "../../shared/tables/table.ts";
 import { testsTable } from "../../shared/tables/tests.ts";
+import { quotedNumbersTable } from "../../shared/tables/text-finding.ts";
 
 /** The tables of a finding of each kind, the one to copy first. */
 export const CELL_TABLES: { readonly [K in CellKind]: (finding: FindingOf<K>) => LabelledTable[] } = {
@@ -18,6 +19,7 @@ export const CELL_TABLES: { readonly [K in CellKind]: (finding: FindingOf<K>) =>
   tests: testsTables,
   elasticities: elasticityTables,
   slutsky: (finding) => [slutskyTable(finding, finding.form), eigenvalueTable(finding), compensatedTable(finding)],
+  text: (finding) => [quotedNumbersTable(finding)],
 };
 
 function testsTables(finding: FindingOf<"tests">): LabelledTable[] {

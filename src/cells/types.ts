@@ -39,7 +39,8 @@ type Loaded<T> = () => Promise<T>;
  * need not wait for forms, opened cells and copying. Views take findings as props and fetch nothing.
  */
 export interface CellView<K extends CellKind> {
-  readonly Form: Loaded<ComponentType<FormProps>>;
+  /** Absent where the source is prose, which is written as it stands. */
+  readonly Form?: Loaded<ComponentType<FormProps>>;
   readonly Band: Loaded<ComponentType<BandProps<K>>>;
   readonly Open: Loaded<ComponentType<OpenProps<K>>>;
   /** What stands on the source page of the opened cell below its form: how each check is made. */

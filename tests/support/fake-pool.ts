@@ -34,7 +34,12 @@ export class FakePool implements Pick<JobPool, "runCell"> {
   /** Ends the oldest open job of a kind with a finding. */
   finish(kind: CellKind, tookMs = 12): void {
     const fake = this.#oldest(kind);
-    this.#close(fake, () => fake.settle({ finding: JSON.stringify(exampleFindings()[kind]), tookMs }));
+    this.#close(fake, () =>
+      fake.settle({
+        finding: JSON.stringify(exampleFindings()[kind as keyof ReturnType<typeof exampleFindings>]),
+        tookMs,
+      }),
+    );
   }
 
   refuse(kind: CellKind, sentence: string, key?: string[]): void {

@@ -3,3 +3,4 @@ export { runElasticities } from "./elasticities.ts";
 export { runSlutsky } from "./slutsky.ts";
 export { runSystem } from "./system.ts";
 export { runTests } from "./tests.ts";
+export { runText } from "./text.ts";

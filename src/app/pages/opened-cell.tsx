@@ -9,6 +9,7 @@ import { Remarked } from "../../features/remarks/remarked.tsx";
 import { usePageTitle } from "../../lib/page-title.ts";
 import { pages } from "../../lib/paths.ts";
 import { useStudyPart } from "../../sync/index.ts";
+import { AllStandingsProvider } from "../workspace/all-standings.ts";
 import { BandSource, type SourcePage } from "../workspace/band-source.tsx";
 import { comparable } from "../workspace/comparable.ts";
 import { afterFirstFinding } from "../workspace/first-finding.ts";
@@ -19,7 +20,7 @@ import { StudyBar, type StudyDialog } from "../workspace/study-bar.tsx";
 import { StudyDialogs } from "../workspace/study-dialogs.tsx";
 import { TypingHere } from "../workspace/typing-here.tsx";
 import { useEscape } from "../workspace/use-escape.ts";
-import { useOneColumn } from "../workspace/use-source-pages.ts";
+import { firstPage, useOneColumn } from "../workspace/use-source-pages.ts";
 import { useStandings } from "../workspace/use-standings.ts";
 import { useStudyActions } from "../workspace/use-study-actions.ts";
 
@@ -35,7 +36,7 @@ export default function OpenedCellPage() {
   const [dialog, setDialog] = useState<StudyDialog>();
   const [renaming, setRenaming] = useState(false);
   const oneColumn = useOneColumn();
-  const [page, setPage] = useState<SourcePage>(oneColumn ? "closed" : standing?.kind === "system" ? "text" : "form");
+  const [page, setPage] = useState<SourcePage>(oneColumn ? "closed" : firstPage(standing?.kind));
   const actions = useStudyActions(connection, uploads);
   const typing = useTypingIn(cellId, connection);
   const remarking = useRemarkSetting(study.id, open.me, connection);
@@ -97,7 +98,9 @@ export default function OpenedCellPage() {
                     <FindingAside studyId={study.id} fingerprint={standing.fingerprint} />
                   </div>
                   <div className="recto">
-                    <OpenedFinding {...open} standing={standing} cells={cells} uploads={uploads} />
+                    <AllStandingsProvider value={standings}>
+                      <OpenedFinding {...open} standing={standing} cells={cells} uploads={uploads} />
+                    </AllStandingsProvider>
                   </div>
                 </Remarked>
               </div>

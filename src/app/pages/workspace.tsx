@@ -4,6 +4,7 @@ import { Fault } from "../../components/field.tsx";
 import { sentenceOf } from "../../lib/api.ts";
 import { usePageTitle } from "../../lib/page-title.ts";
 import { pages } from "../../lib/paths.ts";
+import { AllStandingsProvider } from "../workspace/all-standings.ts";
 import { BringUpToDate } from "../workspace/bring-up-to-date.tsx";
 import { expectOpening } from "../workspace/finding-view.tsx";
 import { Ledger } from "../workspace/ledger.tsx";
@@ -38,15 +39,17 @@ export default function WorkspacePage() {
             <Fault>{sentenceOf(error)}</Fault>
           </div>
         )}
-        <Ledger
-          {...open}
-          standings={standings}
-          cells={cells}
-          uploads={uploads}
-          headAction={oneColumn && bring}
-          onUploads={() => setDialog("uploads")}
-          onRemarks={() => setDialog("remarks")}
-        />
+        <AllStandingsProvider value={standings}>
+          <Ledger
+            {...open}
+            standings={standings}
+            cells={cells}
+            uploads={uploads}
+            headAction={oneColumn && bring}
+            onUploads={() => setDialog("uploads")}
+            onRemarks={() => setDialog("remarks")}
+          />
+        </AllStandingsProvider>
       </main>
       <StudyDialogs {...open} standings={standings} open={dialog} onClose={() => setDialog(undefined)} />
     </>

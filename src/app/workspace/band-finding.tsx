@@ -7,12 +7,13 @@ import { sentenceOf } from "../../lib/api.ts";
 import { pages } from "../../lib/paths.ts";
 import { CopyWord } from "./copy-word.tsx";
 import { expectBand, FindingBand, OnItsWay, useTables } from "./finding-view.tsx";
-import { firstFindingShown, hasBeenSeen, nowSeen } from "./first-finding.ts";
+import { afterFirstFinding, firstFindingShown, hasBeenSeen, nowSeen } from "./first-finding.ts";
 import { ProblemList } from "./problem-list.tsx";
 import type { Standing } from "./standing.ts";
 import { StateLine } from "./state-line.tsx";
 
 const Unanswered = lazy(() => import("./unanswered.tsx"));
+const TextCell = lazy(() => afterFirstFinding(() => import("./text-cell.tsx")));
 
 interface BandFindingProps {
   readonly studyId: string;
@@ -23,7 +24,18 @@ interface BandFindingProps {
 }
 
 /** The right page of a band: the state line, then the finding, or what stands in its place. */
-export function BandFinding({ studyId, standing, beside, onChange }: BandFindingProps) {
+export function BandFinding(props: BandFindingProps) {
+  const { standing, beside } = props;
+  // Of a text nothing is stored: it is read anew wherever it is shown.
+  if (standing.kind !== "text" || standing.isUnread) return <StoredFinding {...props} />;
+  return (
+    <Suspense fallback={<StateLine standing={standing} beside={beside} />}>
+      <TextCell {...props} />
+    </Suspense>
+  );
+}
+
+function StoredFinding({ studyId, standing, beside, onChange }: BandFindingProps) {
   const { fingerprint, cell, status, kind } = standing;
   const { data, error, refetch } = useFinding(studyId, fingerprint);
   const arrives = useArrival(data && fingerprint);

@@ -14,6 +14,7 @@ import { SourceText } from "./source-text.tsx";
 import type { Standing } from "./standing.ts";
 
 const FirstUpload = lazy(() => import("./first-upload.tsx"));
+const PaperWords = lazy(() => afterFirstFinding(() => import("./paper-words.tsx")));
 const SourceLine = lazy(() => afterFirstFinding(() => import("./source-line.tsx")));
 
 /** Which page of the source is open; a strip shows neither until asked. */
@@ -43,6 +44,9 @@ const WORDS = [
   { value: "text", word: "Text" },
 ] as const;
 
+/** Prose has no form: it is written in the type it is read in, or letter for letter. */
+const PROSE_WORDS = [{ value: "form", word: "Written" }, WORDS[1]] as const;
+
 /** The left page of a band: name, kind and source, as a form or as text. */
 export function BandSource(props: BandSourceProps) {
   const { standing, cells, page, onPage, headingId, readOnly, typing, title } = props;
@@ -65,7 +69,7 @@ export function BandSource(props: BandSourceProps) {
         <div className="no-print flex gap-3.5 pt-1">
           <SwitchWords
             label={`Source of ${cell.name} as`}
-            words={WORDS}
+            words={standing.kind === "text" ? PROSE_WORDS : WORDS}
             value={page === "closed" ? undefined : page}
             onChange={(next) => onPage(next)}
           />
@@ -86,6 +90,11 @@ export function BandSource(props: BandSourceProps) {
       </div>
       <pre className="print-only type-source whitespace-pre-wrap">{cell.source}</pre>
       {typing}
+      {page !== "closed" && standing.kind === "system" && !standing.isUnread && (
+        <Suspense>
+          <PaperWords studyId={props.studyId} standing={standing} cells={cells} uploads={props.uploads} />
+        </Suspense>
+      )}
       {page !== "closed" && <SourceFoot standing={standing} idOf={idOf} />}
     </>
   );
@@ -94,9 +103,10 @@ export function BandSource(props: BandSourceProps) {
 function Source({ studyId, connection, standing, cells, uploads, readOnly, page, onLeave }: BandSourceProps) {
   const { cell, kind } = standing;
   const onChange = (next: string) => connection.replaceSource(cell.id, next);
-  if (page === "text" || !kind) {
+  if (page === "text" || kind === "text" || !kind) {
     return (
       <SourceText
+        face={page === "form" ? "prose" : "source"}
         connection={connection}
         standing={standing}
         cells={cells}

@@ -12,6 +12,7 @@ const FIRST_NAMES: Readonly<Record<CellKind, string>> = {
   tests: "laws",
   elasticities: "elasticities",
   slutsky: "matrix",
+  text: "argument",
 };
 
 /** A name for a fresh cell that no other has: "matrix", "matrix 2". */
@@ -31,6 +32,7 @@ export function freshSource(kind: CellKind, cells: readonly CellSource[], upload
   }
   if (kind === "elasticities") return `system: ${last("system")}\nat: mean\n`;
   if (kind === "slutsky") return `system: ${last("system")}\nat: base point\nform: share\n`;
+  if (kind === "text") return "";
   const free = uploads.filter(
     ({ name }) => !cells.some(({ kind, source }) => kind === "data" && source.includes(name)),
   );
@@ -71,7 +73,7 @@ export function sourceInALine(kind: string, source: string): string {
     const at = typeof written.at === "object" && written.at ? inWords(written.at) : text("at") || "base point";
     return `${text("system") || "no system yet"} at ${at}; ${text("form") || "share"} form`;
   }
-  return source.split("\n", 1)[0];
+  return source.split("\n").find((line) => line.trim() !== "") ?? "nothing written yet";
 }
 
 function elasticitiesInALine(written: Record<string, unknown>, text: (key: string) => string): string {

@@ -21,7 +21,7 @@ function partsOf(kind: CellKind) {
   return {
     Band: part(() => (kind === first ? Band() : afterFirstFinding(Band))),
     Open: part(Open),
-    Form: part(() => afterFirstFinding(Form)),
+    ...(Form && { Form: part(() => afterFirstFinding(Form)) }),
     ...(Aside && { Aside: part(Aside) }),
   };
 }
@@ -79,11 +79,8 @@ export const OnItsWay = () => <p className="type-small text-ink3">Fetching the f
 /** Until the form is here, the text it writes stands in its place. */
 export function CellForm({ kind, ...form }: FormProps & { kind: CellKind }) {
   const { Form } = PARTS[kind];
-  return (
-    <Suspense fallback={<pre className="type-source whitespace-pre-wrap">{form.source || " "}</pre>}>
-      <Form {...form} />
-    </Suspense>
-  );
+  const text = <pre className="type-source whitespace-pre-wrap">{form.source || " "}</pre>;
+  return <Suspense fallback={text}>{Form ? <Form {...form} /> : text}</Suspense>;
 }
 
 /** What a kind says of its finding beside it; nothing for most kinds. */

@@ -16,6 +16,7 @@ import { StateLine } from "./state-line.tsx";
 
 const RowsDialog = lazy(() => import("../../features/uploads/rows-dialog.tsx"));
 const Unanswered = lazy(() => import("./unanswered.tsx"));
+const TextCell = lazy(() => import("./text-cell.tsx"));
 
 interface OpenedFindingProps extends OpenStudy {
   readonly standing: Standing;
@@ -24,7 +25,21 @@ interface OpenedFindingProps extends OpenStudy {
 }
 
 /** The right page of an opened cell: the finding in full, or what stands in its place. */
-export function OpenedFinding({ study, connection, readOnly, standing, cells, uploads }: OpenedFindingProps) {
+export function OpenedFinding(props: OpenedFindingProps) {
+  const { study, connection, readOnly, standing } = props;
+  if (standing.kind !== "text" || standing.isUnread) return <StoredFinding {...props} />;
+  const onChange = readOnly ? undefined : (next: string) => connection.replaceSource(standing.cell.id, next);
+  return (
+    <>
+      <h2 className="sr-only">Finding</h2>
+      <Suspense fallback={<StateLine standing={standing} />}>
+        <TextCell studyId={study.id} standing={standing} onChange={onChange} opened />
+      </Suspense>
+    </>
+  );
+}
+
+function StoredFinding({ study, connection, readOnly, standing, cells, uploads }: OpenedFindingProps) {
   const { cell, fingerprint, status, state, progress } = standing;
   const { data, error } = useFinding(study.id, fingerprint);
   useEffect(() => {

@@ -8,6 +8,7 @@ import { parseCell, type StudyCell } from "../../../shared/study/parse-cell.ts";
 import { type ResolvedCell, resolveParsed } from "../../../shared/study/resolve.ts";
 import { lacksUpload } from "./cell-words.ts";
 import type { Standing } from "./standing.ts";
+import { writtenStanding } from "./written-standing.ts";
 
 export { freshName, freshSource } from "./cell-words.ts";
 export { sourcesAfterRenaming } from "./rename.ts";
@@ -53,13 +54,14 @@ export function standingsOf(
     return told?.state === "current" && told.fingerprint !== fingerprints.get(own.id);
   };
   const ahead = new Set(resolved.filter(isAhead).map(({ name }) => name));
-  return cells.flatMap((cell) => {
+  const standings = cells.flatMap((cell): Standing[] => {
     const own = resolved.find(({ id }) => id === cell.id);
     if (!own) return [];
     const readBy = resolved.filter(({ reads }) => reads.includes(cell.name)).map(({ name }) => name);
     const common = { cell, kind: own.kind, reads: own.reads, readBy };
     return [{ ...common, ...stands(own, cell, statuses.get(cell.id), ahead) }];
   });
+  return standings.map((standing) => (standing.kind === "text" ? writtenStanding(standing, standings) : standing));
 }
 
 function stands(own: ResolvedCell, cell: CellSource, status: CellStatus | undefined, ahead: ReadonlySet<string>) {

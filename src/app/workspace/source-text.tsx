@@ -14,10 +14,20 @@ interface SourceTextProps {
   readonly uploads: readonly Upload[];
   readonly readOnly: boolean;
   readonly onLeave: () => void;
+  /** The type it is written in: prose as it is read, everything else letter for letter. */
+  readonly face?: "source" | "prose";
 }
 
 /** A cell's source as text. Until the editor is here, the text stands in its place in the same type. */
-export function SourceText({ connection, standing, cells, uploads, readOnly, onLeave }: SourceTextProps) {
+export function SourceText({
+  connection,
+  standing,
+  cells,
+  uploads,
+  readOnly,
+  onLeave,
+  face = "source",
+}: SourceTextProps) {
   const { cell, kind, problems, state, last } = standing;
   const text = connection.sourceOf(cell.id);
   const lastSource = state === "current" || !last ? undefined : last.source;
@@ -44,8 +54,17 @@ export function SourceText({ connection, standing, cells, uploads, readOnly, onL
   );
   if (!text) return null;
   return (
-    <Suspense fallback={<pre className="type-source whitespace-pre-wrap">{cell.source || " "}</pre>}>
+    <Suspense
+      fallback={
+        <pre className={`${face === "prose" ? "type-prose" : "type-source"} whitespace-pre-wrap`}>
+          {cell.source || " "}
+        </pre>
+      }
+    >
       <SourceEditor
+        // Another face is another editor: of a text there is never more than one on the page.
+        key={face}
+        face={face}
         text={text}
         awareness={connection.awareness}
         steps={steps}

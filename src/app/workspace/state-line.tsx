@@ -26,10 +26,12 @@ interface StateLineProps {
   /** Who is typing here, where the page has no room for it beside the source. */
   readonly beside?: ReactNode;
   readonly actions?: ReactNode;
+  /** Said in the place of since when or why. */
+  readonly detail?: string;
 }
 
 /** Shape, word, since when or why; at the right the actions as words. */
-export function StateLine({ standing, beside, actions }: StateLineProps) {
+export function StateLine({ standing, beside, actions, detail }: StateLineProps) {
   return (
     <div className="flex flex-wrap items-baseline justify-between gap-x-6 gap-y-1 pb-3">
       <p className="type-small flex min-w-0 flex-wrap items-baseline gap-x-2.5" aria-live="polite">
@@ -38,7 +40,7 @@ export function StateLine({ standing, beside, actions }: StateLineProps) {
         ) : (
           <>
             <StateWords state={standing.state} words={capital(standing.state)} />
-            <span className="text-ink2 tabular-nums">{stateDetail(standing)}</span>
+            <span className="text-ink2 tabular-nums">{detail ?? stateDetail(standing)}</span>
             <OutOfDateBy standing={standing} />
           </>
         )}

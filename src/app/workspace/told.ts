@@ -16,6 +16,11 @@ export function standingsTold(cells: readonly CellSource[], status: StudyStatus 
   return cells.map((cell) => {
     const own = told.get(cell.id);
     const common = { cell, kind: kindOf(cell), reads: own?.reads ?? [], readBy: readBy(cell.name) };
+    // A text is read where it is shown, number by number: nothing found is kept of it.
+    if (own && common.kind === "text" && own.problems.length === 0) {
+      const { state, because } = own;
+      return { ...common, state, problems: [], status: own, ...(because !== undefined && { because }) };
+    }
     if (!own || own.problems.length > 0 || (own.state === "current" && !isAsFound(cell))) {
       return { ...common, state: "draft", problems: [], isUnread: true, ...(own && { status: own }) };
     }

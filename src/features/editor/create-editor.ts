@@ -1,4 +1,10 @@
-import { autocompletion, closeBrackets, closeBracketsKeymap, completionKeymap } from "@codemirror/autocomplete";
+import {
+  autocompletion,
+  closeBrackets,
+  closeBracketsKeymap,
+  completionKeymap,
+  startCompletion,
+} from "@codemirror/autocomplete";
 import { defaultKeymap } from "@codemirror/commands";
 import { yaml } from "@codemirror/lang-yaml";
 import { bracketMatching, indentUnit } from "@codemirror/language";
@@ -14,6 +20,7 @@ import { editorTheme } from "./editor-theme.ts";
 import { withFirstNames } from "./first-names.ts";
 import { showProblems } from "./lint.ts";
 import { sourceMarks } from "./marks.ts";
+import { proseEditing } from "./prose/prose-editing.ts";
 
 export interface EditorNeeds {
   readonly parent: HTMLElement;
@@ -23,6 +30,8 @@ export interface EditorNeeds {
   readonly steps?: EditorSteps;
   readonly label: string;
   readonly readOnly: boolean;
+  /** Of prose: whether it is written in the type it is read in; letter for letter unless said otherwise. */
+  readonly face?: "source" | "prose";
   readonly subject: EditorSubject;
   /** Escape, once nothing else in the editor wants it. */
   readonly onLeave: () => void;
@@ -36,12 +45,24 @@ export interface EditorSteps {
 
 export interface Editor {
   readonly setSubject: (subject: EditorSubject) => void;
+  /** Begins a quotation at the caret, and offers what may be quoted. */
+  readonly quote: () => void;
   readonly destroy: () => void;
 }
 
 function reading(readOnly: boolean): Extension {
   return readOnly ? [EditorState.readOnly.of(true), EditorView.editable.of(false)] : [];
 }
+
+/** An editor of keys and values. */
+const yamlEditing: Extension = [
+  EditorView.contentAttributes.of({ spellcheck: "false", autocapitalize: "off" }),
+  bracketMatching(),
+  indentUnit.of("  "),
+  yaml(),
+  autocompletion({ override: [completeSource], icons: false }),
+  sourceMarks,
+];
 
 /** The manager as the editor's keys reach it: typing becomes a step of the study's, its way back stays within the text. */
 function within({ manager, undo, redo }: EditorSteps): Y.UndoManager {
@@ -50,7 +71,7 @@ function within({ manager, undo, redo }: EditorSteps): Y.UndoManager {
 
 /** An editor on a live text: one for as long as the cell's text is shown. */
 export function createEditor(needs: EditorNeeds): Editor {
-  const { parent, text, awareness, label, readOnly, subject, onLeave, steps } = needs;
+  const { parent, text, awareness, label, readOnly, face = "source", subject, onLeave, steps } = needs;
   const told = new Compartment();
   const leave = {
     key: "Escape",
@@ -65,14 +86,11 @@ export function createEditor(needs: EditorNeeds): Editor {
       doc: text.toString(),
       extensions: [
         told.of(editorSubject.of(subject)),
-        EditorView.contentAttributes.of({ "aria-label": label, spellcheck: "false", autocapitalize: "off" }),
+        EditorView.contentAttributes.of({ "aria-label": label }),
         EditorView.lineWrapping,
         drawSelection(),
-        bracketMatching(),
         closeBrackets(),
-        indentUnit.of("  "),
-        yaml(),
-        autocompletion({ override: [completeSource], icons: false }),
+        subject.kind === "text" ? proseEditing(face) : yamlEditing,
         keymap.of([
           ...completionKeymap,
           ...closeBracketsKeymap,
@@ -81,7 +99,6 @@ export function createEditor(needs: EditorNeeds): Editor {
           leave,
           ...defaultKeymap,
         ]),
-        sourceMarks,
         editorTheme,
         reading(readOnly),
         yCollab(text, withFirstNames(awareness), steps && { undoManager: within(steps) }),
@@ -97,6 +114,12 @@ export function createEditor(needs: EditorNeeds): Editor {
     setSubject: (next) => {
       view.dispatch({ effects: told.reconfigure(editorSubject.of(next)) });
       showProblems(view);
+    },
+    quote: () => {
+      const { from, to } = view.state.selection.main;
+      view.focus();
+      view.dispatch({ changes: { from, to, insert: "{}" }, selection: { anchor: from + 1 }, userEvent: "input" });
+      startCompletion(view);
     },
     destroy: () => view.destroy(),
   };

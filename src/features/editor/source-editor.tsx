@@ -1,6 +1,7 @@
 import { useEffect, useRef } from "react";
 import type { Awareness } from "y-protocols/awareness";
 import type * as Y from "yjs";
+import { Word } from "../../components/button.tsx";
 import { createEditor, type Editor, type EditorSteps } from "./create-editor.ts";
 import type { EditorSubject } from "./editor-subject.ts";
 
@@ -10,13 +11,15 @@ interface SourceEditorProps {
   readonly steps?: EditorSteps;
   readonly label: string;
   readonly readOnly: boolean;
+  /** Of prose: whether it is written in the type it is read in. */
+  readonly face: "source" | "prose";
   readonly subject: EditorSubject;
   readonly onLeave: () => void;
 }
 
 /** A cell's source, edited live with everyone who has it open. */
 export default function SourceEditor(props: SourceEditorProps) {
-  const { text, awareness, steps, label, readOnly, subject, onLeave } = props;
+  const { text, awareness, steps, label, readOnly, face, subject, onLeave } = props;
   const parent = useRef<HTMLDivElement>(null);
   const editor = useRef<Editor>(undefined);
   const latest = useRef({ subject, onLeave });
@@ -30,6 +33,7 @@ export default function SourceEditor(props: SourceEditorProps) {
       steps,
       label,
       readOnly,
+      face,
       subject: latest.current.subject,
       onLeave: () => latest.current.onLeave(),
     });
@@ -38,7 +42,19 @@ export default function SourceEditor(props: SourceEditorProps) {
       editor.current = undefined;
       made.destroy();
     };
-  }, [text, awareness, steps, label, readOnly]);
+  }, [text, awareness, steps, label, readOnly, face]);
   useEffect(() => editor.current?.setSubject(subject), [subject]);
-  return <div ref={parent} className="source-editor" />;
+  return (
+    <>
+      <div ref={parent} className="source-editor" />
+      {subject.kind === "text" && !readOnly && (
+        <p className="type-smallest mt-3 flex flex-wrap items-baseline gap-x-4 gap-y-1 text-ink2">
+          <Word className="type-small" onClick={() => editor.current?.quote()}>
+            Quote a number
+          </Word>
+          <span>Markdown; mathematics between $ signs; a brace quotes a number.</span>
+        </p>
+      )}
+    </>
+  );
 }

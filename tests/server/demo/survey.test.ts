@@ -159,6 +159,7 @@ describe("the cells", () => {
       ["fifths", "elasticities", ["base"]],
       ["linear", "system", ["survey"]],
       ["needs", "system", ["survey"]],
+      ["argument", "text", ["base", "matrix", "survey"]],
     ]);
   });
 
