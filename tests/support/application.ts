@@ -130,6 +130,18 @@ export async function startApplication({ administrators = [], limits, secure = f
   };
 }
 
+/** The words of the newest message to an address, once the local post box has it; and the secret of its first link. */
+export async function letterTo({ mail }: Pick<Application, "mail">, email: string) {
+  for (let tries = 0; tries < 200; tries++) {
+    const letter = mail.list().find(({ recipient }) => recipient === email);
+    if (letter?.text !== undefined) {
+      return { subject: letter.subject, text: letter.text, token: /\/([\w-]{20,})$/m.exec(letter.text)?.[1] ?? "" };
+    }
+    await new Promise((later) => setTimeout(later, 5));
+  }
+  throw new Error(`No message to ${email}.`);
+}
+
 export type Application = Awaited<ReturnType<typeof startApplication>>;
 
 function visitor(origin: string, about = { id: "", name: "", email: "" }, cookie?: string): Visitor {

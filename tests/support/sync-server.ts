@@ -39,8 +39,9 @@ export async function startSyncServer(open: OpenDatabase, { port = 0, updates, l
   const roles = new Map<string, Role>(Object.values(PEOPLE).map(({ id, role }) => [id, role]));
   const changed: string[] = [];
   const reports: unknown[] = [];
+  const sessions: string[] = [];
   const sync = createSyncServer({
-    authenticate: (request) => signedIn(request, expiresAt),
+    authenticate: (request) => signedIn(request, sessions, expiresAt),
     roleOf: (userId, studyId) => (studyId === STUDY ? roles.get(userId) : undefined),
     updates: updates ?? storedUpdates(open.db),
     changed: (studyId, userId) => changed.push(`${studyId} ${userId}`),
@@ -69,8 +70,12 @@ export async function startSyncServer(open: OpenDatabase, { port = 0, updates, l
 
 export type RunningSync = Awaited<ReturnType<typeof startSyncServer>>;
 
-async function signedIn(request: IncomingMessage, expiresAt?: Date) {
+/** Each time by a session of its own: "tomas 1", "tomas 2". */
+async function signedIn(request: IncomingMessage, sessions: string[], expiresAt?: Date) {
   const id = /(?:^|; )person=(\w+)/.exec(request.headers.cookie ?? "")?.[1];
   const person = PEOPLE[id as PersonId];
-  return person === undefined ? null : { id: person.id, name: person.name, expiresAt };
+  if (person === undefined) return null;
+  sessions.push(person.id);
+  const sessionId = `${person.id} ${sessions.filter((one) => one === person.id).length}`;
+  return { id: person.id, name: person.name, sessionId, expiresAt };
 }

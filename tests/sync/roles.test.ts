@@ -235,6 +235,15 @@ describe("someone who is removed", () => {
     expect(ilse.closed).toBeUndefined();
   });
 
+  it("whose one session is ended leaves with its sockets, and stays with those of another", async () => {
+    const [first, second, ilse] = [await join("tomas"), await join("tomas"), await join("ilse")];
+    server.sync.closeSession("tomas 1");
+    expect(await first.closing()).toEqual({ code: CLOSE.notSignedIn, reason: "Your session has ended." });
+    await settled(second);
+    await settled(ilse);
+    expect([second.closed, ilse.closed]).toEqual([undefined, undefined]);
+  });
+
   it("by the end of the session is out at that moment", async () => {
     await server.close();
     server = await startSyncServer(open, { expiresAt: new Date(Date.now() + 400) });
