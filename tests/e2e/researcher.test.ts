@@ -358,6 +358,44 @@ it("adds a coauthor by e-mail, who finds the study", async () => {
   await context.close();
 });
 
+it("looks at rows, replaces the file by a new version, and pins the old", async () => {
+  await page.getByRole("link", { name: "Row accounting of purchases" }).click();
+  await page.getByRole("button", { name: "Look at the rows of tuna-weekly.csv" }).click();
+  const rows = page.getByRole("dialog", { name: "tuna-weekly.csv" });
+  await rows.getByText("1 to 50 of 338 rows").waitFor();
+  await rows.getByRole("button", { name: "Last" }).click();
+  await rows.getByText("301 to 338 of 338 rows").waitFor();
+  await page.keyboard.press("Escape");
+  const outliers = page.getByRole("list", { name: "Look at the rows of outliers" }).getByRole("button").first();
+  await outliers.focus();
+  await page.keyboard.press("Enter");
+  const far = page.getByRole("dialog", { name: /^Outliers: / });
+  await far.getByRole("columnheader", { name: /price ÷ median/ }).waitFor();
+  expect(await wordsOf(far)).toMatch(/keep only rows with p\d [<>]= \d/);
+  await page.keyboard.press("Escape");
+  await page.getByRole("link", { name: "Back to the study" }).click();
+
+  await choose(page, "Uploads");
+  const dialog = page.getByRole("dialog", { name: "Uploads" });
+  await dialog.getByRole("button", { name: "Replace by a new version of tuna-weekly.csv" }).click();
+  const shorter = lines
+    .filter((line) => line !== "")
+    .slice(0, -1)
+    .join("\n");
+  const next = dialog.getByLabel("Choose the next version of tuna-weekly.csv");
+  await next.setInputFiles({ name: "weeks.csv", mimeType: "text/csv", buffer: Buffer.from(shorter) });
+  await dialog.getByText("Against version 1: 1 row fewer, the same columns").waitFor();
+  await page.keyboard.press("Escape");
+  await untilSays(page, "purchases", "All 337 rows are used.");
+  await untilSays(page, "base", /Out of date.*upload replaced by version 2 of tuna-weekly\.csv/);
+  const band = bandOf(page, "purchases");
+  await band.getByRole("button", { name: "Form", exact: true }).click();
+  await band.getByLabel("Version").selectOption("1");
+  await untilSays(page, "purchases", "All 338 rows are used.");
+  await untilSays(page, "base", /^Current/);
+  expect(await textIn(await openText(page, "purchases"))).toContain("version: 1");
+});
+
 it("signs out, and the study is closed", async () => {
   const [study, asked] = [studyPath(), studyApi()];
   expect(watched.outside).toEqual([]);

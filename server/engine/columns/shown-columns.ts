@@ -75,7 +75,8 @@ export function usedColumn(
 ): TableColumn {
   const whole = new Float64Array(table.rows).fill(Number.NaN);
   values.forEach((value, at) => {
-    whole[data.rowNumbers[at] - 1] = value;
+    // Formed to be looked at: more digits than four would only look exact.
+    whole[data.rowNumbers[at] - 1] = Number(value.toPrecision(4));
   });
   return numbers(name, whole);
 }

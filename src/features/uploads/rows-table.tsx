@@ -20,7 +20,9 @@ export function RowsTable({ page, label, about }: RowsTableProps) {
             {page.columns.map((column, place) => (
               <th key={place} scope="col" className={column.type === "number" ? "text-right" : "text-left"}>
                 <span className="type-source block whitespace-nowrap">{column.name}</span>
-                <span className="block max-w-[14rem] font-normal text-ink2">{column.says ?? about?.(column.name)}</span>
+                <span className={`block max-w-[14rem] text-ink2 ${column.type === "number" ? "ml-auto" : ""}`}>
+                  {column.says ?? about?.(column.name)}
+                </span>
               </th>
             ))}
           </tr>
