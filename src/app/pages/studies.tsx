@@ -1,8 +1,8 @@
 import { lazy, Suspense, useState } from "react";
 import { Link, useNavigate } from "react-router-dom";
 import { Button, LinkButton } from "../../components/button.tsx";
-import { Fault } from "../../components/field.tsx";
 import { TopBar } from "../../components/top-bar.tsx";
+import { Unfetched } from "../../components/unfetched.tsx";
 import { useInstallation } from "../../features/accounts/api/get-installation.ts";
 import { useMe } from "../../features/accounts/api/get-me.ts";
 import { InvitationsForYou } from "../../features/people/invitations-for-you.tsx";
@@ -23,7 +23,7 @@ const SettingsDialog = lazy(() => import("../settings-dialog.tsx"));
 
 export default function StudiesPage() {
   const { data: me } = useMe();
-  const { data: studies, error } = useStudies();
+  const { data: studies, error, refetch } = useStudies();
   const { data: deleted = [] } = useDeletedStudies();
   const { data: installation } = useInstallation();
   const [filter, setFilter] = useState<StudyFilter>("all");
@@ -62,7 +62,7 @@ export default function StudiesPage() {
           </div>
         </div>
         <div className="studies-right">
-          {error && <Fault>{sentenceOf(error)}</Fault>}
+          {error && !studies && <Unfetched sentence={sentenceOf(error)} onAgain={() => void refetch()} />}
           <InvitationsForYou />
           {filter === "deleted" && <DeletedList studies={deleted} />}
           {filter !== "deleted" && studies && me && (

@@ -1,6 +1,6 @@
 import { lazy, type ReactNode, Suspense, useEffect, useState } from "react";
-import { LinkWord, Word } from "../../components/button.tsx";
-import { Fault } from "../../components/field.tsx";
+import { LinkWord } from "../../components/button.tsx";
+import { Unfetched } from "../../components/unfetched.tsx";
 import { ProgressLine } from "../../features/estimation/progress-line.tsx";
 import { useFinding } from "../../features/findings/api/get-finding.ts";
 import { sentenceOf } from "../../lib/api.ts";
@@ -60,12 +60,7 @@ function StoredFinding({ studyId, standing, beside, onChange }: BandFindingProps
       {fingerprint ? (
         <div className={arrives ? "arrives" : ""} key={fingerprint}>
           {data && <FindingBand finding={data.finding} status={status} />}
-          {error && (
-            <>
-              <Fault>{sentenceOf(error)}</Fault>
-              <Word onClick={() => void refetch()}>Ask again</Word>
-            </>
-          )}
+          {error && <Unfetched sentence={sentenceOf(error)} onAgain={() => void refetch()} />}
           {!data && !error && <OnItsWay />}
         </div>
       ) : (

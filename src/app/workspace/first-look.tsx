@@ -30,12 +30,13 @@ export function FirstLook({ study }: { study: StudySummary }) {
   // Of two systems set beside each other, and of the history, nothing is shown beforehand.
   const isHistory = useMatch("/studies/:studyId/history") !== null;
   const cellId = openedId ?? leftId ?? (isHistory ? "none" : undefined);
-  const { data: status, isError } = useStatus(study.id);
+  const { data: status, failureCount } = useStatus(study.id);
   const cells = useMemo(() => cellsTold(status), [status]);
   const standings = useMemo(() => standingsTold(cells, status), [cells, status]);
   const opened = openedId ? standings.find(({ cell }) => cell.id === openedId) : undefined;
   const isNothingToRead =
-    isError || (status !== undefined && (cellId ? !opened?.fingerprint : !standings.some((one) => one.fingerprint)));
+    (failureCount > 0 && !status) ||
+    (status !== undefined && (cellId ? !opened?.fingerprint : !standings.some((one) => one.fingerprint)));
   useEffect(() => {
     if (isNothingToRead) firstFindingShown();
   }, [isNothingToRead]);

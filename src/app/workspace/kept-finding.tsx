@@ -1,8 +1,8 @@
-import { Fault } from "../../components/field.tsx";
+import { Unfetched } from "../../components/unfetched.tsx";
 import { useFinding } from "../../features/findings/api/get-finding.ts";
 import { sentenceOf } from "../../lib/api.ts";
 import { whenInWords } from "../../lib/dates.ts";
-import { FindingBand } from "./finding-view.tsx";
+import { FindingBand, OnItsWay } from "./finding-view.tsx";
 import type { Standing } from "./standing.ts";
 
 interface KeptFindingProps {
@@ -12,14 +12,15 @@ interface KeptFindingProps {
 
 /** A finding that no longer answers its cell, together with the source it does answer. */
 export function KeptFinding({ studyId, last }: KeptFindingProps) {
-  const { data, error } = useFinding(studyId, last.fingerprint);
+  const { data, error, refetch } = useFinding(studyId, last.fingerprint);
   return (
     <section aria-label="The last finding, under its own specification" className="kept arrives">
       <p className="type-small pb-2 text-stale">
         <b>Not this specification's.</b> Found {whenInWords(last.at)} under:
       </p>
       <pre className="type-source whitespace-pre-wrap pb-4 text-ink2">{last.source.trimEnd()}</pre>
-      {error && <Fault>{sentenceOf(error)}</Fault>}
+      {error && <Unfetched sentence={sentenceOf(error)} onAgain={() => void refetch()} />}
+      {!data && !error && <OnItsWay />}
       {data && <FindingBand finding={data.finding} />}
     </section>
   );

@@ -2,7 +2,7 @@ import { lazy, Suspense, useEffect, useState } from "react";
 import type { Upload } from "../../../shared/schemas/resources.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import type { LookedAt } from "../../cells/types.ts";
-import { Fault } from "../../components/field.tsx";
+import { Unfetched } from "../../components/unfetched.tsx";
 import { ProgressLine } from "../../features/estimation/progress-line.tsx";
 import { useFinding } from "../../features/findings/api/get-finding.ts";
 import { sentenceOf } from "../../lib/api.ts";
@@ -41,7 +41,7 @@ export function OpenedFinding(props: OpenedFindingProps) {
 
 function StoredFinding({ study, connection, readOnly, standing, cells, uploads }: OpenedFindingProps) {
   const { cell, fingerprint, status, state, progress } = standing;
-  const { data, error } = useFinding(study.id, fingerprint);
+  const { data, error, refetch } = useFinding(study.id, fingerprint);
   useEffect(() => {
     if (error || (!fingerprint && !standing.isUnread)) firstFindingShown();
   }, [error, fingerprint, standing.isUnread]);
@@ -70,7 +70,7 @@ function StoredFinding({ study, connection, readOnly, standing, cells, uploads }
           />
         )}
       </Suspense>
-      {fingerprint && error && <Fault>{sentenceOf(error)}</Fault>}
+      {fingerprint && error && <Unfetched sentence={sentenceOf(error)} onAgain={() => void refetch()} />}
       {state === "failed" && <ProblemList standing={standing} onMend={onChange} />}
       {state === "estimating" && progress && (
         <ProgressLine studyId={study.id} cellId={cell.id} name={cell.name} progress={progress} readOnly={readOnly} />

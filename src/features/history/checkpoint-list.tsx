@@ -1,7 +1,7 @@
 import { useState } from "react";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { Button } from "../../components/button.tsx";
-import { Fault } from "../../components/field.tsx";
+import { Unfetched } from "../../components/unfetched.tsx";
 import { sentenceOf } from "../../lib/api.ts";
 import { useMakeCheckpoint } from "./api/change-checkpoints.ts";
 import { useCheckpoints } from "./api/get-checkpoints.ts";
@@ -27,14 +27,7 @@ export function CheckpointList({ studyId, cells, you, may, hindrance, onReturn }
         Checkpoints
       </h2>
       {may.make && <KeepThisState studyId={studyId} hindrance={hindrance} />}
-      {error && !checkpoints && (
-        <div className="pt-2">
-          <Fault>{sentenceOf(error)}</Fault>
-          <Button className="mt-3" onClick={() => void refetch()}>
-            Try again
-          </Button>
-        </div>
-      )}
+      {error && !checkpoints && <Unfetched sentence={sentenceOf(error)} onAgain={() => void refetch()} />}
       {!checkpoints && !error && (
         <p role="status" className="pt-3 text-ink2">
           Looking up the checkpoints

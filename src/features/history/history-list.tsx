@@ -1,7 +1,8 @@
 import type { CheckpointSummary, Sitting } from "../../../shared/schemas/history.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
-import { Button, Word } from "../../components/button.tsx";
+import { Word } from "../../components/button.tsx";
 import { Fault } from "../../components/field.tsx";
+import { Unfetched } from "../../components/unfetched.tsx";
 import { sentenceOf } from "../../lib/api.ts";
 import { clockTime } from "../../lib/dates.ts";
 import { useCheckpoints } from "./api/get-checkpoints.ts";
@@ -36,14 +37,7 @@ export function HistoryList({ studyId, filter, cells, you, onBringBack }: Histor
     );
   }
   if (history.isError && sittings.length === 0) {
-    return (
-      <div className="pt-4">
-        <Fault>{sentenceOf(history.error)}</Fault>
-        <Button className="mt-3" onClick={() => void history.refetch()}>
-          Try again
-        </Button>
-      </div>
-    );
+    return <Unfetched sentence={sentenceOf(history.error)} onAgain={() => void history.refetch()} />;
   }
   const shown =
     filter.cell === "" ? checkpoints.filter((one) => belongs(one, filter, sittings, history.hasNextPage)) : [];

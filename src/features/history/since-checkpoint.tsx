@@ -1,8 +1,8 @@
 import { useState } from "react";
 import { type StateDifference, stateDifferences } from "../../../shared/study/cell-differences.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
-import { Button, Word } from "../../components/button.tsx";
-import { Fault } from "../../components/field.tsx";
+import { Word } from "../../components/button.tsx";
+import { Unfetched } from "../../components/unfetched.tsx";
 import { sentenceOf } from "../../lib/api.ts";
 import { useCheckpoint } from "./api/get-checkpoints.ts";
 import { DifferingSource } from "./differing-source.tsx";
@@ -18,14 +18,7 @@ interface SinceCheckpointProps {
 export function SinceCheckpoint({ studyId, checkpointId, cells }: SinceCheckpointProps) {
   const { data, error, refetch } = useCheckpoint(studyId, checkpointId);
   if (error && !data) {
-    return (
-      <div className="pt-2">
-        <Fault>{sentenceOf(error)}</Fault>
-        <Button className="mt-2" onClick={() => void refetch()}>
-          Try again
-        </Button>
-      </div>
-    );
+    return <Unfetched sentence={sentenceOf(error)} onAgain={() => void refetch()} />;
   }
   if (!data) {
     return (

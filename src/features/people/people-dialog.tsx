@@ -2,6 +2,7 @@ import type { Person, Role } from "../../../shared/schemas/resources.ts";
 import { Word } from "../../components/button.tsx";
 import { Dialog } from "../../components/dialog.tsx";
 import { Fault } from "../../components/field.tsx";
+import { Unfetched } from "../../components/unfetched.tsx";
 import { sentenceOf } from "../../lib/api.ts";
 import { useChangeRole, useRemovePerson } from "./api/change-people.ts";
 import { usePeople } from "./api/list-people.ts";
@@ -45,13 +46,19 @@ function HandOverOf({ studyId }: { studyId: string }) {
 }
 
 function PeopleList({ studyId, you, isOwner, onLeft }: Omit<PeopleDialogProps, "onClose">) {
-  const { data: people, error } = usePeople(studyId);
+  const { data: people, error, refetch } = usePeople(studyId);
   const change = useChangeRole(studyId);
   const remove = useRemovePerson(studyId);
-  const fault = error ?? change.error ?? remove.error;
+  const fault = change.error ?? remove.error;
   const takeOut = (person: Person) => remove.mutate(person.id, { onSuccess: () => person.id === you && onLeft() });
   return (
     <>
+      {error && <Unfetched sentence={sentenceOf(error)} onAgain={() => void refetch()} />}
+      {!people && !error && (
+        <p role="status" className="pb-2 text-ink2">
+          Fetching the people
+        </p>
+      )}
       <ul>
         {people?.map((person) => (
           <li

@@ -3,8 +3,8 @@ import type { Remark } from "../../../shared/schemas/remarks.ts";
 import { counted } from "../../../shared/study/words.ts";
 import { Word } from "../../components/button.tsx";
 import { Dialog } from "../../components/dialog.tsx";
-import { Fault } from "../../components/field.tsx";
 import { SwitchWords } from "../../components/switch-words.tsx";
+import { Unfetched } from "../../components/unfetched.tsx";
 import { sentenceOf } from "../../lib/api.ts";
 import { useRemarks } from "./api/list-remarks.ts";
 import { anchorInWords } from "./letters.ts";
@@ -27,7 +27,7 @@ type Which = (typeof WHICH)[number]["value"];
 
 /** Every remark of the study, the newest first; also those on cells that have been removed. */
 export default function RemarksDialog({ setting, onClose, onGo }: RemarksDialogProps) {
-  const { data, error } = useRemarks(setting.studyId);
+  const { data, error, refetch } = useRemarks(setting.studyId);
   const [which, setWhich] = useState<Which>("open");
   const [person, setPerson] = useState("");
   const shown = (data ?? [])
@@ -43,7 +43,12 @@ export default function RemarksDialog({ setting, onClose, onGo }: RemarksDialogP
         <SwitchWords label="Which remarks" words={WHICH} value={which} onChange={setWhich} />
         <PersonChoice people={authorsOf(data ?? [])} value={person} onChange={setPerson} />
       </div>
-      {error && <Fault>{sentenceOf(error)}</Fault>}
+      {error && <Unfetched sentence={sentenceOf(error)} onAgain={() => void refetch()} />}
+      {!data && !error && (
+        <p role="status" className="type-small pb-2 text-ink2">
+          Fetching the remarks
+        </p>
+      )}
       {data && (
         <p role="status" className="type-small pb-2 text-ink2">
           {shown.length === 0 ? noneInWords(which, person !== "", data.length) : counted(shown.length, "remark")}

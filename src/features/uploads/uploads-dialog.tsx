@@ -3,6 +3,7 @@ import type { Upload } from "../../../shared/schemas/resources.ts";
 import { latestUploads, versionsOf } from "../../../shared/study/uploads.ts";
 import { Dialog } from "../../components/dialog.tsx";
 import { Fault } from "../../components/field.tsx";
+import { Unfetched } from "../../components/unfetched.tsx";
 import { sentenceOf } from "../../lib/api.ts";
 import { useAddSheet } from "./api/add-sheet.ts";
 import { useUploads } from "./api/list-uploads.ts";
@@ -20,7 +21,7 @@ interface UploadsDialogProps {
 
 /** The files of the study: what is there in which versions, another one, and away with what no cell reads. */
 export default function UploadsDialog({ studyId, onClose, readOnly }: UploadsDialogProps) {
-  const { data: uploads = [], error } = useUploads(studyId);
+  const { data: uploads = [], error, isPending, refetch } = useUploads(studyId);
   const remove = useRemoveUpload(studyId);
   const addSheet = useAddSheet(studyId);
   const [looking, setLooking] = useState<Upload>();
@@ -28,8 +29,13 @@ export default function UploadsDialog({ studyId, onClose, readOnly }: UploadsDia
   const busy = remove.isPending || addSheet.isPending;
   return (
     <Dialog onClose={onClose} title="Uploads" lede="Rows stay on this installation, with those entitled to them.">
-      {error && <Fault>{sentenceOf(error)}</Fault>}
-      {uploads.length === 0 && <p className="pb-4 text-ink2">Nothing has been uploaded yet.</p>}
+      {error && <Unfetched sentence={sentenceOf(error)} onAgain={() => void refetch()} />}
+      {isPending && (
+        <p role="status" className="pb-4 text-ink2">
+          Fetching the uploads
+        </p>
+      )}
+      {!error && !isPending && uploads.length === 0 && <p className="pb-4 text-ink2">Nothing has been uploaded yet.</p>}
       <ul className="border-rule border-b">
         {latestUploads(uploads).map(({ name }) => (
           <UploadEntry
