@@ -185,3 +185,23 @@ it(`${KILLS} SIGKILLs of the server while both type lose nothing that was called
   await Promise.all([isSaved(ilse), isSaved(tomas)]);
   expect(sourceInFile(product.database, studyId, CELL)).toBe(await textIn(ilseText));
 });
+
+it("a remark, a reply to it and its settling are seen by the other as they happen", async () => {
+  const remarks = (page: Page) => page.getByRole("region", { name: "Remarks on base" });
+  const symmetry = (page: Page) => page.getByRole("link", { name: /^Remark b by Tomás Adeyemi, on Symmetry$/ });
+  await bandOf(tomas, "base").focus();
+  await tomas.keyboard.press("r");
+  await tomas.keyboard.type("Does it survive Italianer's correction?");
+  await remarks(tomas).getByLabel("About").selectOption({ label: "Symmetry" });
+  await remarks(tomas).getByRole("button", { name: "Add the remark" }).click();
+  const seen = remarks(ilse).getByRole("listitem").filter({ hasText: "Does it survive" }).last();
+  await seen.waitFor();
+  await symmetry(ilse).waitFor();
+  await seen.getByRole("button", { name: "Reply to the remark by Tomás Adeyemi" }).click();
+  await ilse.keyboard.type("It does.");
+  await ilse.keyboard.press("Control+Enter");
+  await remarks(tomas).getByText("It does.").waitFor();
+  await seen.getByRole("button", { name: "Settle the remark by Tomás Adeyemi" }).click();
+  await remarks(tomas).getByRole("button", { name: "1 settled remark" }).waitFor();
+  await symmetry(tomas).waitFor({ state: "detached" });
+});

@@ -223,7 +223,7 @@ it("has none in what is laid over a study either", async () => {
   await page.goto(`/studies/${studyId}`);
   await page.getByRole("heading", { level: 1 }).waitFor();
   await settled(page);
-  for (const entry of ["People", "Uploads", "Referee copies", "Settings", "Delete the study"]) {
+  for (const entry of ["People", "Uploads", "Remarks", "Referee copies", "Settings", "Delete the study"]) {
     await choose(page, entry);
     await page.getByRole("dialog").waitFor();
     for (const theme of THEMES) {
@@ -238,3 +238,22 @@ it("has none in what is laid over a study either", async () => {
   expect.soft(watched.takeFaults()).toEqual([]);
   await page.context().close();
 }, 400_000);
+
+it("has none where remarks are folded to letters, opened over the finding and written", async () => {
+  const page = await openPage(true);
+  const watched = watch(page, product.origin);
+  await page.setViewportSize({ width: 1100, height: 1000 });
+  await page.goto(`/studies/${studyId}`);
+  const remarks = page.getByRole("region", { name: "Remarks on base" });
+  await remarks.getByRole("button", { name: "Remark a by Tomás Adeyemi" }).click();
+  await remarks.getByRole("button", { name: "Reply to the remark by Tomás Adeyemi" }).click();
+  await remarks.getByRole("button", { name: "Add a remark on base" }).first().click();
+  for (const theme of THEMES) {
+    await turn(page, theme);
+    await settled(page);
+    await page.screenshot({ path: `${PICTURES}remarks-over-${theme}.png` });
+    expect.soft(await faultsOf(page), theme).toEqual([]);
+  }
+  expect.soft(watched.takeFaults()).toEqual([]);
+  await page.context().close();
+});

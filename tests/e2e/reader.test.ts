@@ -131,3 +131,24 @@ it("the interface over HTTP refuses a reader's changes", async () => {
   const answer = await petra.request.patch(`/api/studies/${studyId}`, { data: { title: "Mine" }, headers });
   expect(answer.status()).toBe(403);
 });
+
+it("a reader remarks on a cell, which the owner sees at once, and still writes nothing", async () => {
+  const before = file();
+  const cell = "linear";
+  const remarks = (page: Page) => page.getByRole("region", { name: `Remarks on ${cell}` });
+  await remarks(petra)
+    .getByRole("button", { name: `Add a remark on ${cell}` })
+    .click();
+  await petra
+    .getByRole("textbox", { name: `Remark on ${cell}` })
+    .fill("Why this index? See https://vihe.example/indices.");
+  await remarks(petra).getByLabel("About").selectOption({ label: "index" });
+  await remarks(petra).getByRole("button", { name: "Add the remark" }).click();
+  await remarks(ilse).getByText("Why this index?").waitFor();
+  const link = remarks(ilse).getByRole("link", { name: "https://vihe.example/indices" });
+  expect(await link.getAttribute("rel")).toBe("noopener nofollow");
+  await bandOf(ilse, cell).getByRole("link", { name: "Remark a by Petra Vance, on the key index" }).waitFor();
+  expect(await remarks(ilse).getByRole("button", { name: /^Edit/ }).count()).toBe(0);
+  expect(await remarks(petra).getByRole("button", { name: "Settle the remark by Petra Vance" }).count()).toBe(1);
+  expect(file()).toBe(before);
+});
