@@ -1,4 +1,5 @@
 import { lazy, Suspense, useState } from "react";
+import { commandOf } from "../lib/keys.ts";
 import type { Asked, MenuProps } from "./menu-entries.ts";
 
 const load = () => import("./opened-menu.tsx");
@@ -20,7 +21,7 @@ export function Menu(props: MenuProps) {
       onFocus={expect}
       onClick={({ detail }) => setAsked(detail === 0 ? "keyboard" : "pointer")}
       onKeyDown={(event) => {
-        if (event.key !== "ArrowDown") return;
+        if (commandOf("menu", event) !== "open") return;
         event.preventDefault();
         setAsked("keyboard");
       }}

@@ -1,4 +1,5 @@
 import type { KeyboardEvent, MouseEvent } from "react";
+import { commandOf } from "../lib/keys.ts";
 import { STATE_COLOURS, StateFigure } from "./state-shape.tsx";
 import { type Arc, arcsOf, bracket, isDashed, reachOf, type Stop } from "./thread-geometry.ts";
 
@@ -31,10 +32,10 @@ export function Thread({ stops, width, height, focused, addressOf, onFollow, onM
     onFollow(id);
   };
   const onKeyDown = (event: KeyboardEvent) => {
-    const by = event.key === "ArrowDown" ? 1 : event.key === "ArrowUp" ? -1 : undefined;
-    if (by === undefined) return;
+    const command = commandOf("thread", event);
+    if (!command) return;
     event.preventDefault();
-    onMove(by);
+    onMove(command === "next" ? 1 : -1);
   };
   return (
     <nav aria-label="What reads what" className="thread" onKeyDown={onKeyDown}>

@@ -78,13 +78,17 @@ export default function OpenedCellPage() {
                       onRenamed={() => setRenaming(false)}
                       onLeave={() => document.getElementById(headingId)?.focus()}
                       actions={{
-                        rename: () => setRenaming(true),
-                        ...(standing.kind === "data" && { uploads: () => setDialog("uploads") }),
                         compareWith: comparable(study.id, standing, standings, (to) => void navigate(to)),
-                        remove: () => {
-                          actions.remove(cellId);
-                          void navigate(pages.study(study.id));
-                        },
+                        ...(!readOnly && {
+                          changes: {
+                            rename: () => setRenaming(true),
+                            ...(standing.kind === "data" && { uploads: () => setDialog("uploads") }),
+                            remove: () => {
+                              actions.remove(cellId);
+                              void navigate(pages.study(study.id));
+                            },
+                          },
+                        }),
                       }}
                       typing={typing.length > 0 && <TypingHere people={typing} className="mt-4 block" />}
                       title

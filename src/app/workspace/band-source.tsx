@@ -65,6 +65,7 @@ export function BandSource(props: BandSourceProps) {
           onRename={props.onRename}
           onDone={props.onRenamed}
           title={title}
+          isDraggable={!readOnly && !title}
         />
         <div className="no-print flex gap-3.5 pt-1">
           <SwitchWords
@@ -73,7 +74,7 @@ export function BandSource(props: BandSourceProps) {
             value={page === "closed" ? undefined : page}
             onChange={(next) => onPage(next)}
           />
-          {!readOnly && <CellMenu name={cell.name} actions={{ ...props.actions, history }} />}
+          <CellMenu name={cell.name} actions={{ ...props.actions, ...(!readOnly && { history }) }} />
         </div>
       </div>
       {title && <h2 className="sr-only">Source</h2>}

@@ -1,6 +1,7 @@
 import { type KeyboardEvent, useId, useState } from "react";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { Fault } from "../../components/field.tsx";
+import { commandOf } from "../../lib/keys.ts";
 import { nameFault } from "./name-fault.ts";
 
 interface CellNameProps {
@@ -11,14 +12,28 @@ interface CellNameProps {
   readonly onRename: (name: string) => void;
   readonly onDone: () => void;
   readonly title?: boolean;
+  /** Whether the cell can be put elsewhere by dragging its name. */
+  readonly isDraggable?: boolean;
 }
 
 /** Name and kind. While renaming, the name is a field in its own place and type. */
-export function CellName({ cell, cells, headingId, renaming, onRename, onDone, title = false }: CellNameProps) {
+export function CellName({
+  cell,
+  cells,
+  headingId,
+  renaming,
+  onRename,
+  onDone,
+  title = false,
+  isDraggable,
+}: CellNameProps) {
   const Heading = title ? "h1" : "h2";
   const type = title ? "type-title" : "type-cell-name";
   return (
-    <div className="min-w-0">
+    <div
+      className={`min-w-0 ${isDraggable ? "cursor-grab active:cursor-grabbing" : ""}`}
+      {...(isDraggable && !renaming && { draggable: true, "data-drag": true })}
+    >
       <Heading id={headingId} data-stop className={`${type} min-w-0 break-words`}>
         {renaming ? (
           <NameField cell={cell} cells={cells} onRename={onRename} onDone={onDone} />
@@ -43,8 +58,9 @@ function NameField({ cell, cells, onRename, onDone }: Pick<CellNameProps, "cell"
   };
   const onKeyDown = (event: KeyboardEvent) => {
     event.stopPropagation();
-    if (event.key === "Enter" && !fault) commit();
-    if (event.key === "Escape") onDone();
+    const command = commandOf("field", event);
+    if (command === "write" && !fault) commit();
+    if (command === "giveUp") onDone();
   };
   return (
     <>

@@ -22,6 +22,18 @@ export function freshName(kind: CellKind, cells: readonly Pick<CellSource, "name
   for (let number = 2, name = first; ; name = `${first} ${number}`, number += 1) if (!taken.has(name)) return name;
 }
 
+const LONGEST_NAME = 60;
+
+/** A name for the copy of a cell that no other has: "base 2" of "base", "base 3" of "base 2". */
+export function nameOfCopy(name: string, cells: readonly Pick<CellSource, "name">[]): string {
+  const taken = new Set(cells.map((cell) => cell.name));
+  const [, stem, number] = /^(.*?)(?: (\d+))?$/.exec(name) ?? ["", name];
+  for (let next = Number(number ?? 1) + 1; ; next += 1) {
+    const copy = `${stem.slice(0, LONGEST_NAME - 1 - String(next).length)} ${next}`;
+    if (!taken.has(copy)) return copy;
+  }
+}
+
 /** What a fresh cell asks: the last cell of the kind it reads, and the plainest question. */
 export function freshSource(kind: CellKind, cells: readonly CellSource[], uploads: readonly Upload[]): string {
   const last = (of: CellKind) => cells.findLast((cell) => cell.kind === of)?.name ?? "";

@@ -1,5 +1,6 @@
 import { type KeyboardEvent, useState } from "react";
 import { Fault } from "../../components/field.tsx";
+import { commandOf } from "../../lib/keys.ts";
 
 interface InPlaceProps {
   readonly label: string;
@@ -22,8 +23,9 @@ export function InPlace({ label, value, className, longest, placeholder, needed,
     setDraft(undefined);
   };
   const onKeyDown = (event: KeyboardEvent<HTMLTextAreaElement>) => {
-    if (event.key === "Escape") setDraft(undefined);
-    if (event.key !== "Enter") return;
+    const command = commandOf("field", event);
+    if (command === "giveUp") setDraft(undefined);
+    if (command !== "write") return;
     event.preventDefault();
     event.currentTarget.blur();
   };

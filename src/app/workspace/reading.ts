@@ -10,7 +10,7 @@ import { lacksUpload } from "./cell-words.ts";
 import type { Standing } from "./standing.ts";
 import { writtenStanding } from "./written-standing.ts";
 
-export { freshName, freshSource } from "./cell-words.ts";
+export { freshName, freshSource, nameOfCopy } from "./cell-words.ts";
 export { sourcesAfterRenaming } from "./rename.ts";
 
 /** Reads a cell's text once for as long as it stays as it is: whoever types changes one text of many. */

@@ -10,7 +10,7 @@ interface RemovedCellProps {
 /** In the place of a cell just removed: that it was, and the way back. */
 export function RemovedCell({ cell, onUndo, onDismiss }: RemovedCellProps) {
   return (
-    <div className="band" role="status">
+    <div className="band removed-cell" role="status">
       <div className="verso flex flex-wrap items-baseline gap-x-5 py-3!">
         <span>
           <b>{cell.name}</b> was removed.

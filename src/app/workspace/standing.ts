@@ -33,10 +33,10 @@ export function isSameStanding(a: Standing, b: Standing): boolean {
   return JSON.stringify(left) === JSON.stringify(right);
 }
 
-/** Those that wait to be asked for: how many, and about how long together. */
-export function waitingToBeAsked(standings: readonly Standing[]): { count: number; aboutMs: number } {
-  const waiting = standings.filter(
-    ({ state, aboutMs }) => aboutMs !== undefined && (state === "draft" || state === "out of date"),
+/** Those that wait to be asked for: which, how many, and about how long together. */
+export function waitingToBeAsked(standings: readonly Standing[]) {
+  const waiting = standings.flatMap(({ cell, state, aboutMs }) =>
+    aboutMs !== undefined && (state === "draft" || state === "out of date") ? [{ cellId: cell.id, aboutMs }] : [],
   );
-  return { count: waiting.length, aboutMs: waiting.reduce((sum, { aboutMs }) => sum + (aboutMs ?? 0), 0) };
+  return { waiting, count: waiting.length, aboutMs: waiting.reduce((sum, { aboutMs }) => sum + aboutMs, 0) };
 }

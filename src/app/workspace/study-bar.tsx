@@ -11,9 +11,17 @@ import { pages } from "../../lib/paths.ts";
 import { useStudyPart } from "../../sync/index.ts";
 import { useLeave } from "../use-leave.ts";
 import type { OpenStudy } from "./open-study.ts";
-import { useUndoKeys } from "./use-undo-keys.ts";
+import { useStudyKeys } from "./use-study-keys.ts";
 
-export type StudyDialog = "people" | "uploads" | "remarks" | "referee copies" | "journal" | "settings" | "delete";
+export type StudyDialog =
+  | "people"
+  | "uploads"
+  | "remarks"
+  | "referee copies"
+  | "journal"
+  | "settings"
+  | "keys"
+  | "delete";
 
 interface StudyBarProps extends OpenStudy {
   readonly crumbs: readonly Crumb[];
@@ -27,7 +35,7 @@ export function StudyBar({ study, me, connection, readOnly, crumbs, onDialog, ch
   const leave = useLeave(me.id);
   const cells = useStudyPart(connection, "cells");
   const present = usePresent(connection);
-  useUndoKeys(connection);
+  useStudyKeys(connection, () => onDialog("keys"));
   const isOwner = study.role === "owner";
   const entry = (key: StudyDialog, words: string) => ({ key, words, onSelect: () => onDialog(key) });
   return (
@@ -62,7 +70,7 @@ export function StudyBar({ study, me, connection, readOnly, crumbs, onDialog, ch
             ...(isOwner ? [entry("referee copies", "Referee copies")] : []),
             entry("journal", "Journal"),
           ],
-          [entry("settings", "Settings"), { key: "leave", words: "Sign out", onSelect: leave }],
+          [entry("settings", "Settings"), entry("keys", "Keys"), { key: "leave", words: "Sign out", onSelect: leave }],
           isOwner && !readOnly ? [entry("delete", "Delete the study")] : [],
         ]}
       />

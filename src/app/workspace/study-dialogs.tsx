@@ -12,6 +12,7 @@ const StudyRemarks = lazy(() => import("./study-remarks.tsx"));
 const RefereeCopiesDialog = lazy(() => import("../../features/referee-copies/referee-copies-dialog.tsx"));
 const JournalDialog = lazy(() => import("../../features/journal/journal-dialog.tsx"));
 const DeleteStudyDialog = lazy(() => import("../../features/studies/delete-study-dialog.tsx"));
+const KeysDialog = lazy(() => import("../keys-dialog.tsx"));
 const SettingsDialog = lazy(() => import("../settings-dialog.tsx"));
 
 interface StudyDialogsProps extends OpenStudy {
@@ -57,6 +58,8 @@ function Opened({
       return <JournalDialog studyId={study.id} onClose={onClose} />;
     case "settings":
       return <SettingsDialog onClose={onClose} />;
+    case "keys":
+      return <KeysDialog readOnly={readOnly} onClose={onClose} />;
     case "delete":
       return <DeleteStudyDialog study={study} onClose={onClose} onDeleted={toStudies} />;
   }

@@ -1,43 +1,42 @@
-import { useEffect } from "react";
-import { letterKeysAct } from "../../lib/preferences.ts";
+import { isField, type KeyActions, useKeys } from "../../lib/use-keys.ts";
 
-interface BandKeys {
-  readonly move: (by: 1 | -1) => void;
-  readonly open: () => void;
-  readonly swap: () => void;
-  /** Begins a remark on the band in focus. */
-  readonly remark: () => void;
-  /** From a field back to its band. */
-  readonly leave: () => void;
-}
+type Actions = { readonly [C in keyof KeyActions<"study">]: () => void };
 
-const isField = (target: EventTarget | null) =>
-  target instanceof HTMLElement && (target.isContentEditable || /^(INPUT|TEXTAREA|SELECT)$/.test(target.tagName));
+/** A matrix has arrows and letters of its own. */
+const isInGrid = (target: EventTarget | null) =>
+  target instanceof HTMLElement && target.closest("[role=grid]") !== null;
 
-/** Whether the key is already another part's: a dialog's, a menu's, a matrix's. */
-const isTaken = (target: EventTarget | null) =>
-  target instanceof HTMLElement && target.closest("[role=dialog], [role=menu], [role=grid]") !== null;
+/** Whether the focus is on a band itself, not on something in it. */
+const isBand = (target: EventTarget | null) => target instanceof HTMLElement && target.matches("section.band");
 
-/** The keys of the study's page. Single letters act only while no field has the focus, and can be turned off. */
-export function useBandKeys(keys: BandKeys): void {
-  useEffect(() => {
-    const onKeyDown = (event: KeyboardEvent) => {
-      if (event.defaultPrevented || isTaken(event.target)) return;
-      if (event.key === "Escape") return keys.leave();
-      if (isField(event.target)) return;
-      if (event.ctrlKey || event.metaKey || event.altKey) return;
-      if (event.key === "Enter" && event.target instanceof HTMLElement && event.target.matches("section.band")) {
-        return keys.open();
-      }
-      if (!letterKeysAct()) return;
-      const act = { j: () => keys.move(1), k: () => keys.move(-1), t: keys.swap, r: keys.remark }[
-        event.key.toLowerCase()
-      ];
-      if (!act) return;
-      event.preventDefault();
-      act();
-    };
-    document.addEventListener("keydown", onKeyDown);
-    return () => document.removeEventListener("keydown", onKeyDown);
-  }, [keys]);
+/** The keys of the study's page. All but the way back to the band act only while no field has the focus. */
+export function useBandKeys(actions: Actions): void {
+  const outside = (act: () => void) => (event: KeyboardEvent) => {
+    if (isField(event.target) || isInGrid(event.target)) return false;
+    act();
+  };
+  const onBand = (act: () => void) => (event: KeyboardEvent) => {
+    if (!isBand(event.target)) return false;
+    act();
+  };
+  useKeys("study", {
+    next: outside(actions.next),
+    previous: outside(actions.previous),
+    // On a link or a button within the band, Enter is theirs.
+    open: onBand(actions.open),
+    swap: outside(actions.swap),
+    fold: outside(actions.fold),
+    compare: outside(actions.compare),
+    remark: outside(actions.remark),
+    rename: outside(actions.rename),
+    duplicate: outside(actions.duplicate),
+    moveUp: outside(actions.moveUp),
+    moveDown: outside(actions.moveDown),
+    // Only with the band itself in focus, so that nothing is removed by a key meant for something in it.
+    remove: onBand(actions.remove),
+    leave: (event) => {
+      if (isInGrid(event.target)) return false;
+      actions.leave();
+    },
+  });
 }

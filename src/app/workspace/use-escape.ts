@@ -1,14 +1,12 @@
-import { useEffect } from "react";
+import { useKeys } from "../../lib/use-keys.ts";
 
 /** Escape leaves the page for the study, unless a field, a matrix or something laid over the page wants it. */
 export function useEscape(leave: () => void): void {
-  useEffect(() => {
-    const onKeyDown = (event: KeyboardEvent) => {
-      if (event.key !== "Escape" || event.defaultPrevented || !(event.target instanceof HTMLElement)) return;
-      if (event.target.closest("[role=dialog], [role=menu], input, textarea, select, [contenteditable=true]")) return;
+  useKeys("page", {
+    leave: ({ target }) => {
+      if (!(target instanceof HTMLElement)) return false;
+      if (target.closest("input, textarea, select, [contenteditable=true]")) return false;
       leave();
-    };
-    document.addEventListener("keydown", onKeyDown);
-    return () => document.removeEventListener("keydown", onKeyDown);
-  }, [leave]);
+    },
+  });
 }

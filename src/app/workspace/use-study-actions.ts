@@ -38,6 +38,19 @@ export function useStudyActions(connection: StudyConnection, uploads: readonly U
         connection.moveCell(cellId, after?.id ?? null);
       },
 
+      /** Puts a cell after another, or first; nothing where it stands there already. */
+      moveAfter: (cellId: string, after: string | null): void => {
+        const before = cells()[placeOf(cellId) - 1]?.id ?? null;
+        if (after !== cellId && after !== before) connection.moveCell(cellId, after);
+      },
+
+      /** Adds a copy of a cell below it, under a name of its own; returns the copy's id. */
+      duplicate: async (cell: CellSource): Promise<string> => {
+        const { nameOfCopy } = await loadReading();
+        const { kind, source } = cells().find(({ id }) => id === cell.id) ?? cell;
+        return connection.addCell({ name: nameOfCopy(cell.name, cells()), kind, source }, cell.id);
+      },
+
       remove: (cellId: string): void => connection.removeCell(cellId),
     };
   }, [connection, uploads]);

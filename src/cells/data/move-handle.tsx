@@ -1,4 +1,5 @@
 import type { KeyboardEvent } from "react";
+import { commandOf } from "../../lib/keys.ts";
 
 interface MoveHandleProps {
   readonly good: string;
@@ -10,11 +11,11 @@ interface MoveHandleProps {
 /** Moves a good among the others: dragged by the pointer, or by the arrow keys while it has the focus. */
 export function MoveHandle({ good, onMove, onDrag }: MoveHandleProps) {
   const onKeyDown = (event: KeyboardEvent) => {
-    const by = event.key === "ArrowUp" ? -1 : event.key === "ArrowDown" ? 1 : undefined;
-    if (by === undefined) return;
+    const command = commandOf("handle", event);
+    if (!command) return;
     event.preventDefault();
     event.stopPropagation();
-    onMove(by);
+    onMove(command === "up" ? -1 : 1);
   };
   return (
     <button

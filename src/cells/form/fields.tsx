@@ -1,4 +1,5 @@
 import { type KeyboardEvent, type ReactNode, useId, useState } from "react";
+import { commandOf } from "../../lib/keys.ts";
 
 const CONTROL =
   "min-h-6 w-full min-w-0 border-ctl border-b bg-transparent py-0.5 text-[0.875rem]/[1.25rem] text-ink hover:border-accent max-[599px]:min-h-11";
@@ -108,8 +109,9 @@ export function TextControl({
     setDraft(undefined);
   };
   const onKeyDown = (event: KeyboardEvent<HTMLInputElement>) => {
-    if (event.key === "Enter") commit();
-    if (event.key !== "Escape" || draft === undefined) return;
+    const command = commandOf("field", event);
+    if (command === "write") commit();
+    if (command !== "giveUp" || draft === undefined) return;
     // The first Escape gives up what was typed; only the next one leaves the form.
     event.stopPropagation();
     setDraft(undefined);

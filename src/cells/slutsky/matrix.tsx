@@ -1,6 +1,7 @@
 import { type KeyboardEvent, useEffect, useRef } from "react";
 import { capital } from "../../../shared/study/words.ts";
 import { AnchorMark } from "../../components/anchor-mark.tsx";
+import { commandOf } from "../../lib/keys.ts";
 import { MatrixEntry } from "./matrix-entry.tsx";
 import { moveBy, type Place } from "./moves.ts";
 import type { MatrixSetting, ShownMatrix } from "./shown-matrix.ts";
@@ -82,11 +83,10 @@ function useFollowedFocus(pointed: Place | undefined) {
 export function MatrixField({ shown, setting, label, pointed, onPoint, sums }: MatrixFieldProps) {
   const ref = useFollowedFocus(pointed);
   const onKeyDown = (event: KeyboardEvent) => {
-    if (!onPoint || !pointed || event.altKey || event.metaKey) return;
-    const next = moveBy(event.key, pointed, shown.goods.length, event.ctrlKey);
-    if (!next) return;
+    const command = onPoint && pointed ? commandOf("matrix", event) : undefined;
+    if (!onPoint || !pointed || !command) return;
     event.preventDefault();
-    onPoint(next);
+    onPoint(moveBy(command, pointed, shown.goods.length));
   };
   return (
     <div className="relative -m-1 overflow-x-auto p-1">

@@ -14,6 +14,7 @@ import { drawSelection, EditorView, keymap } from "@codemirror/view";
 import { yCollab, yUndoManagerKeymap } from "y-codemirror.next";
 import type { Awareness } from "y-protocols/awareness";
 import type * as Y from "yjs";
+import { KEYS } from "../../lib/keys.ts";
 import { completeSource } from "./completion.ts";
 import { type EditorSubject, editorSubject } from "./editor-subject.ts";
 import { editorTheme } from "./editor-theme.ts";
@@ -74,7 +75,7 @@ export function createEditor(needs: EditorNeeds): Editor {
   const { parent, text, awareness, label, readOnly, face = "source", subject, onLeave, steps } = needs;
   const told = new Compartment();
   const leave = {
-    key: "Escape",
+    key: KEYS.source.commands.leave.strokes[0],
     run: () => {
       onLeave();
       return true;

@@ -3,6 +3,7 @@ import type { Remark } from "../../../shared/schemas/remarks.ts";
 import { counted } from "../../../shared/study/words.ts";
 import { letterId, saidId } from "../../components/anchor-mark.tsx";
 import { Word } from "../../components/button.tsx";
+import { commandOf } from "../../lib/keys.ts";
 import { AddRemark } from "./add-remark.tsx";
 import { goTo } from "./go-to.ts";
 import type { RemarkedCell } from "./places.ts";
@@ -152,7 +153,8 @@ function useLaidOver(margin: RefObject<HTMLElement | null>, isOpen: boolean, clo
       latest.current();
     };
     const onKeyDown = (event: KeyboardEvent) => {
-      if (event.key !== "Escape" || event.defaultPrevented || !aside.contains(document.activeElement)) return;
+      if (commandOf("remark", event) !== "giveUp" || event.defaultPrevented || !aside.contains(document.activeElement))
+        return;
       event.preventDefault();
       latest.current();
       if (before instanceof HTMLElement) before.focus();

@@ -3,6 +3,7 @@ import { LONGEST_REMARK } from "../../../shared/schemas/remarks.ts";
 import { Button, Word } from "../../components/button.tsx";
 import { Fault } from "../../components/field.tsx";
 import { sentenceOf } from "../../lib/api.ts";
+import { commandOf } from "../../lib/keys.ts";
 import { AboutChoice } from "./about-choice.tsx";
 import { type Draft, useDraft } from "./drafts.ts";
 import type { RemarkSetting } from "./remark-setting.ts";
@@ -48,12 +49,13 @@ export function RemarkForm({ setting, label, of, before = "", word, places, besi
     }
   };
   const onKeyDown = (event: KeyboardEvent) => {
-    if (event.key === "Escape") {
+    const command = commandOf("remark", event);
+    if (command === "giveUp") {
       event.preventDefault();
       event.stopPropagation();
       onDone();
     }
-    if (event.key === "Enter" && (event.ctrlKey || event.metaKey)) {
+    if (command === "write") {
       event.preventDefault();
       void submit();
     }

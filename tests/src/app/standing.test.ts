@@ -4,7 +4,7 @@ import type { CellStatus } from "../../../shared/schemas/status.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { fingerprintCells } from "../../../shared/study/fingerprints.ts";
 import { resolveCells } from "../../../shared/study/resolve.ts";
-import { freshName, freshSource, sourceInALine } from "../../../src/app/workspace/cell-words.ts";
+import { freshName, freshSource, nameOfCopy, sourceInALine } from "../../../src/app/workspace/cell-words.ts";
 import { nameFault } from "../../../src/app/workspace/name-fault.ts";
 import { mended } from "../../../src/app/workspace/problem-list.tsx";
 import { standingsOf } from "../../../src/app/workspace/reading.ts";
@@ -93,13 +93,24 @@ describe("where a cell stands", () => {
       one.name === "base" ? { ...one, state: "out of date" as const, because: "form changed", aboutMs: 21_000 } : one,
     );
     const all = standings(studyCells(), told);
-    expect(waitingToBeAsked(Object.values(all))).toEqual({ count: 1, aboutMs: 21_000 });
+    expect(waitingToBeAsked(Object.values(all))).toMatchObject({ count: 1, aboutMs: 21_000 });
     expect(stateDetail(all.base)).toBe("form changed");
     expect(stateDetail({ ...all.base, state: "draft", because: undefined })).toBe("never estimated; about 20 s");
   });
 });
 
 describe("words and names of cells", () => {
+  it("calls a copy by the next number that is free, within the longest name there may be", () => {
+    const cells = ["base", "base 2", "x 9"].map((name) => ({ name }));
+    expect(["base", "base 2", "x 9", "matrix"].map((name) => nameOfCopy(name, cells))).toEqual([
+      "base 3",
+      "base 3",
+      "x 10",
+      "matrix 2",
+    ]);
+    expect(nameOfCopy("a".repeat(60), [])).toBe(`${"a".repeat(58)} 2`);
+  });
+
   it("puts a source into one line", () => {
     const [survey, base, matrix] = studyCells();
     expect(sourceInALine(survey.kind, survey.source)).toBe("purchases-2031.csv, 2 goods, members <= 12");

@@ -261,10 +261,73 @@ describe("a reader", () => {
     await open("reader");
     expect(await within(await band("base")).findByText(/is a luxury/i)).toBeInTheDocument();
     expect(screen.getByRole("heading", { level: 1, name: study.title })).toBeVisible();
-    for (const name of [/^More for/, /^Estimate/, /^Bring up to date/, "data", "system", "Seal a referee copy"]) {
+    for (const name of [/^Estimate/, /^Bring up to date/, "data", "system", "Seal a referee copy"]) {
       expect(screen.queryByRole("button", { name })).not.toBeInTheDocument();
     }
     expect(screen.queryByRole("textbox", { name: "Title of the study" })).not.toBeInTheDocument();
     expect(within(await band("survey")).queryByRole("combobox")).not.toBeInTheDocument();
+  });
+
+  it("has the ways of looking at a cell in its list of words, and none of changing it, by no key either", async () => {
+    const { user, connection } = await open("reader");
+    const base = await band("base");
+    await user.click(within(base).getByRole("button", { name: "More for base" }));
+    expect((await screen.findAllByRole("menuitem")).map(({ textContent }) => textContent)).toEqual(["Fold to a line"]);
+    await user.keyboard("{Escape}");
+    base.focus();
+    const before = connection.snapshot().cells;
+    await user.keyboard("d{Delete}{Alt>}{ArrowUp}{/Alt}{F2}");
+    expect(connection.snapshot().cells).toBe(before);
+    expect(screen.queryByRole("textbox", { name: "Name of base" })).not.toBeInTheDocument();
+  });
+});
+
+describe("what is done with cells from the keyboard", () => {
+  it("moves the cell in focus, says where it stands, and keeps it in focus", async () => {
+    const { user } = await open();
+    (await band("matrix")).focus();
+    await user.keyboard("{Alt>}{ArrowUp}{/Alt}");
+    await waitFor(() => expect(names()).toEqual(["survey", "matrix", "base"]));
+    expect(screen.getByText("matrix is now cell 2 of 3.")).toHaveAttribute("role", "status");
+    await waitFor(async () => expect(await band("matrix")).toHaveFocus());
+    await user.keyboard("{Alt>}{ArrowUp}{ArrowUp}{/Alt}");
+    await waitFor(() => expect(names()).toEqual(["matrix", "survey", "base"]));
+  });
+
+  it("adds a copy below, under a name of its own, which asks the same and is answered alike", async () => {
+    const { user, connection } = await open();
+    (await band("base")).focus();
+    await user.keyboard("d");
+    const copy = await band("base 2");
+    expect(names()).toEqual(["survey", "base", "base", "matrix"]);
+    expect(connection.snapshot().cells[2].source).toBe(connection.snapshot().cells[1].source);
+    await waitFor(() => expect(copy).toHaveFocus());
+    await user.click(within(copy).getByRole("button", { name: "More for base 2" }));
+    expect(await screen.findByRole("menuitem", { name: "Compare with base" })).toBeInTheDocument();
+  });
+
+  it("removes the cell in focus, leads to the way back, and from there back to the cell", async () => {
+    const { user } = await open();
+    (await band("base")).focus();
+    await user.keyboard("{Delete}");
+    const undo = await screen.findByRole("button", { name: "Undo the removal of base" });
+    await waitFor(() => expect(undo).toHaveFocus());
+    await user.keyboard("{Enter}");
+    await waitFor(async () => expect(await band("base")).toHaveFocus());
+    expect(names()).toEqual(["survey", "base", "matrix"]);
+  });
+
+  it("folds a cell to a line, which this browser remembers, and unfolds it", async () => {
+    const { user } = await open();
+    const base = await band("base");
+    await within(base).findByText(/is a luxury/i);
+    base.focus();
+    await user.keyboard("c");
+    expect(within(base).queryByText(/is a luxury/i)).not.toBeInTheDocument();
+    expect(base).toHaveTextContent("Current");
+    expect(localStorage.getItem("tangency-folded/s")).toBe('["b"]');
+    await user.click(within(base).getByRole("button", { name: "Unfold base" }));
+    expect(await within(base).findByText(/is a luxury/i)).toBeInTheDocument();
+    expect(localStorage.getItem("tangency-folded/s")).toBeNull();
   });
 });
