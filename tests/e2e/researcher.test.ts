@@ -8,7 +8,7 @@ import type { SystemFinding } from "../../shared/schemas/system.ts";
 import { purchasesCsv } from "../support/purchases-csv.ts";
 import { bandOf, eventually, openText, textIn, wordsOf } from "./editing.ts";
 import { addCell, choose, findingOf, fromApi, rewriteLine, untilSays } from "./study-page.ts";
-import { openBrowser, Product } from "./support.ts";
+import { linkSentTo, openBrowser, Product } from "./support.ts";
 import { watch } from "./watch.ts";
 
 const FIXTURES = new URL("../reference/fixtures/", import.meta.url);
@@ -41,8 +41,11 @@ async function findingFromApi<T>(cell: string) {
 async function createAccount(who: Page, { name, email, passphrase }: typeof ANNA): Promise<void> {
   await who.goto("/sign-in");
   await who.getByRole("link", { name: "Create an account" }).click();
-  await who.getByLabel("Name").fill(name);
   await who.getByLabel("Email").fill(email);
+  await who.getByRole("button", { name: "Send the link" }).click();
+  await who.getByText("A message is on its way").waitFor();
+  await who.goto(await linkSentTo(product, email));
+  await who.getByLabel("Name").fill(name);
   await who.getByLabel("Passphrase", { exact: true }).fill(passphrase);
   await who.getByRole("button", { name: "Create the account" }).click();
   await who.getByRole("heading", { name: "Studies", level: 1 }).waitFor();
@@ -334,20 +337,21 @@ it("cancels an estimation that takes long, and can estimate again", async () => 
   near(finding.logLikelihood, reference.laAids.both.logLikelihood, 1e-9);
 });
 
-it("adds a coauthor by e-mail, who finds the study", async () => {
+it("invites a coauthor by e-mail, who makes an account on the way and is in the study", async () => {
   const context = await browser.newContext({ baseURL: product.origin });
   const other = await context.newPage();
   await choose(page, "People");
   const dialog = page.getByRole("dialog", { name: "People" });
   await dialog.getByLabel("Email").fill(BORIS.email);
-  await dialog.getByRole("button", { name: "Add", exact: true }).click();
-  expect(await wordsOf(dialog.getByRole("alert"))).toContain(BORIS.email);
-  await createAccount(other, BORIS);
-  await dialog.getByRole("button", { name: "Add", exact: true }).click();
-  await dialog.getByText("Boris Lindqvist is in the study now, as coauthor.").waitFor();
+  await dialog.getByRole("button", { name: "Invite", exact: true }).click();
+  await dialog.getByText(`A message is on its way to ${BORIS.email}.`).waitFor();
+  await dialog.getByRole("button", { name: `Withdraw the invitation of ${BORIS.email}` }).waitFor();
   await dialog.getByRole("button", { name: "Close" }).click();
-  await other.reload();
-  await other.getByRole("link", { name: TITLE }).click();
+  await other.goto(await linkSentTo(product, BORIS.email));
+  await other.getByText(`Anna Verhoeven invites ${BORIS.email} to ${TITLE}`).waitFor();
+  await other.getByLabel("Name").fill(BORIS.name);
+  await other.getByLabel("Passphrase", { exact: true }).fill(BORIS.passphrase);
+  await other.getByRole("button", { name: "Create the account and accept" }).click();
   await untilSays(other, "matrix", /^Current/);
   const here = page.getByRole("list", { name: "People here" });
   await eventually(

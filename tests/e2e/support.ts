@@ -137,6 +137,22 @@ export async function signIn(
   return page;
 }
 
+/** The address of the page behind the link in the newest message to someone, as the administrator finds it in the post box. */
+export async function linkSentTo(product: Product, email: string): Promise<string> {
+  const headers = { origin: product.origin, "content-type": "application/json" };
+  const body = JSON.stringify({ email: ILSE.email, password: PASSPHRASE });
+  const answer = await fetch(`${product.origin}/api/auth/sign-in/email`, { method: "POST", headers, body });
+  const cookie = answer.headers.getSetCookie()[0].split(";")[0];
+  for (let tries = 0; tries < 100; tries++) {
+    const box = await fetch(`${product.origin}/api/administration/mails`, { headers: { cookie } });
+    const { mails } = (await box.json()) as { mails: { to: string; text?: string }[] };
+    const link = /https?:\/\/[^/\s]+(\/\S+)/.exec(mails.find(({ to }) => to === email)?.text ?? "");
+    if (link !== null) return link[1];
+    await new Promise((later) => setTimeout(later, 50));
+  }
+  throw new Error(`No message to ${email}.`);
+}
+
 /** The id of the only study there is. */
 export async function demoStudyId(page: Page): Promise<string> {
   const answer = await page.request.get("/api/studies");

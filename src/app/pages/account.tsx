@@ -1,4 +1,5 @@
 import { lazy, type ReactNode, Suspense, useState } from "react";
+import type { OwnAccount } from "../../../shared/schemas/accounts.ts";
 import { Button } from "../../components/button.tsx";
 import { Fault } from "../../components/field.tsx";
 import { useOwnAccount } from "../../features/accounts/api/own-account.ts";
@@ -23,43 +24,51 @@ export default function AccountPage() {
   return (
     <>
       <OwnBar />
-      <main className="account">
-        <h1 className="type-display pb-2">Your account</h1>
-        {error && !account && <Fault>{sentenceOf(error)}</Fault>}
-        {!account && !error && <p role="status">Fetching the account</p>}
-        {account && (
-          <>
-            <p className="type-finding pb-4">There since {dateInWords(account.since)}.</p>
-            <Part title="Name">
-              <OwnNameForm key={account.name} name={account.name} />
-            </Part>
-            <Part title="Address">
-              <OwnAddressForm key={account.email} email={account.email} isConfirmed={account.isConfirmed} />
-            </Part>
-            <Part title="Passphrase">
-              <OwnPassphraseForm />
-            </Part>
-            <Part title="Where you are signed in">
-              <SessionList sessions={account.sessions} />
-            </Part>
-            <Part title="What is kept of you">
-              <p className="type-prose max-w-[38rem]">
-                Your name, your address, your passphrase in a form that cannot be read back, and for each session the
-                browser, the network address and the times. In studies: who wrote, uploaded, remarked and sealed what,
-                and when. All of it lies in this installation's own database and goes nowhere else.
-              </p>
-            </Part>
-            <Part title="Delete the account">
-              <Button onClick={() => setRemoving(true)}>Delete the account</Button>
-            </Part>
-          </>
-        )}
+      <main className="studies">
+        <div className="studies-left">
+          <h1 className="type-display own-title">Your account</h1>
+          {account && <p className="type-finding pt-2">There since {dateInWords(account.since)}.</p>}
+        </div>
+        <div className="studies-right">
+          {error && !account && <Fault>{sentenceOf(error)}</Fault>}
+          {!account && !error && <p role="status">Fetching the account</p>}
+          {account && <Parts account={account} onRemove={() => setRemoving(true)} />}
+        </div>
       </main>
       <Suspense>
         {removing && account && (
           <RemoveAccountDialog account={account} onClose={() => setRemoving(false)} onRemoved={forget} />
         )}
       </Suspense>
+    </>
+  );
+}
+
+function Parts({ account, onRemove }: { account: OwnAccount; onRemove: () => void }) {
+  return (
+    <>
+      <Part title="Name">
+        <OwnNameForm key={account.name} name={account.name} />
+      </Part>
+      <Part title="Address">
+        <OwnAddressForm key={account.email} email={account.email} isConfirmed={account.isConfirmed} />
+      </Part>
+      <Part title="Passphrase">
+        <OwnPassphraseForm />
+      </Part>
+      <Part title="Where you are signed in">
+        <SessionList sessions={account.sessions} />
+      </Part>
+      <Part title="What is kept of you">
+        <p className="type-prose max-w-[38rem]">
+          Your name, your address, your passphrase in a form that cannot be read back, and for each session the browser,
+          the network address and the times. In studies: who wrote, uploaded, remarked and sealed what, and when. All of
+          it lies in this installation's own database and goes nowhere else.
+        </p>
+      </Part>
+      <Part title="Delete the account">
+        <Button onClick={onRemove}>Delete the account</Button>
+      </Part>
     </>
   );
 }

@@ -19,7 +19,7 @@ export default function AdministrationPage() {
       <OwnBar />
       <main className="studies">
         <div className="studies-left">
-          <h1 className="type-display administration-title">Administration</h1>
+          <h1 className="type-display own-title">Administration</h1>
           <p className="type-finding pt-2 pb-5 lg:pb-9">
             What the installation sends, who has an account, what concerns it. Studies are their people's own.
           </p>

@@ -1,6 +1,6 @@
 import { lazy, Suspense, useState } from "react";
 import { Link, useNavigate } from "react-router-dom";
-import { Button, LinkButton } from "../../components/button.tsx";
+import { Button, LinkWord } from "../../components/button.tsx";
 import { TopBar } from "../../components/top-bar.tsx";
 import { Unfetched } from "../../components/unfetched.tsx";
 import { useInstallation } from "../../features/accounts/api/get-installation.ts";
@@ -39,7 +39,6 @@ export default function StudiesPage() {
         <Link to={pages.account} className="you mr-4 font-semibold text-ink no-underline hover:text-accent">
           {me?.name} <span className="sr-only">, your account</span>
         </Link>
-        {me?.isAdministrator && <LinkButton to={pages.administration}>Administration</LinkButton>}
         <Button onClick={() => setDialog("settings")}>Settings</Button>
         <Button onClick={leave}>Sign out</Button>
       </TopBar>
@@ -59,6 +58,11 @@ export default function StudiesPage() {
             <Button filled onClick={() => setDialog("new study")}>
               New study
             </Button>
+            {me?.isAdministrator && (
+              <LinkWord quiet to={pages.administration} className="ml-5">
+                Administration
+              </LinkWord>
+            )}
           </div>
         </div>
         <div className="studies-right">

@@ -25,7 +25,7 @@ export function OwnPassphraseForm() {
       onSubmit={handleSubmit((fields) => change.mutate(fields, { onSuccess: () => reset() }))}
     >
       <PassphraseField
-        label="Passphrase of now"
+        label="Present passphrase"
         autoComplete="current-password"
         fault={errors.currentPassword?.message}
         {...register("currentPassword")}
