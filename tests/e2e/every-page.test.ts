@@ -5,7 +5,7 @@ import type { Browser, BrowserContext, Page } from "playwright-core";
 import { afterAll, beforeAll, expect, it } from "vitest";
 import type { StudyStatus } from "../../shared/schemas/status.ts";
 import { choose, fromApi, untilSays } from "./study-page.ts";
-import { demoStudyId, ILSE, openBrowser, Product, signIn } from "./support.ts";
+import { demoStudyId, ILSE, linkSentTo, openBrowser, Product, signIn } from "./support.ts";
 import { watch } from "./watch.ts";
 
 /**
@@ -40,6 +40,8 @@ let state: Awaited<ReturnType<BrowserContext["storageState"]>>;
 let studyId: string;
 const ids = new Map<string, string>();
 const tokens = new Map<string, string>();
+/** Pages behind links that were sent. */
+const links = new Map<string, string>();
 
 const heading = (name: string | RegExp) => (page: Page) => page.getByRole("heading", { name }).first().waitFor();
 const cell = (name: string) => () => `/studies/${studyId}/cells/${ids.get(name)}`;
@@ -53,6 +55,39 @@ const PLACES: readonly Place[] = [
     signedIn: false,
   },
   { name: "create-account", path: () => "/create-account", ready: heading("Create an account"), signedIn: false },
+  {
+    name: "finish-account",
+    path: () => links.get("account") ?? "",
+    ready: (page) => page.getByLabel("Name").waitFor(),
+    signedIn: false,
+  },
+  {
+    name: "forgotten-passphrase",
+    path: () => "/forgotten-passphrase",
+    ready: heading("Forgotten passphrase"),
+    signedIn: false,
+  },
+  {
+    name: "reset-passphrase",
+    path: () => "/reset-passphrase/a-link",
+    ready: heading("Set a new passphrase"),
+    signedIn: false,
+  },
+  { name: "confirm-address", path: () => "/confirm-address/a-link", ready: heading("Confirm"), signedIn: false },
+  {
+    name: "invitation",
+    path: () => links.get("invitation") ?? "",
+    ready: (page) => page.getByLabel("Name").waitFor(),
+    signedIn: false,
+  },
+  { name: "account", path: () => "/account", ready: heading("What is kept of you"), signedIn: true },
+  { name: "messages", path: () => "/administration", ready: heading("Finish your account"), signedIn: true },
+  {
+    name: "accounts",
+    path: () => "/administration/accounts",
+    ready: (page) => page.getByText("Petra Vance").waitFor(),
+    signedIn: true,
+  },
   {
     name: "studies",
     path: () => "/",
@@ -125,6 +160,12 @@ beforeAll(async () => {
     const { token } = (await sealed.json()) as { token: string };
     tokens.set(withholdAuthors ? "without authors" : "with authors", token);
   }
+  const headers = { origin: product.origin };
+  await ilse.request.post("/api/account-links", { data: { email: "nora.lind@vihe.example" }, headers });
+  links.set("account", await linkSentTo(product, "nora.lind@vihe.example"));
+  const invited = { email: "jun.okafor@vihe.example", role: "reader" };
+  await ilse.request.post(`/api/studies/${studyId}/invitations`, { data: invited, headers });
+  links.set("invitation", await linkSentTo(product, invited.email));
   state = await ilse.context().storageState();
   await ilse.context().close();
 });
@@ -223,7 +264,7 @@ it("has none in what is laid over a study either", async () => {
   await page.goto(`/studies/${studyId}`);
   await page.getByRole("heading", { level: 1 }).waitFor();
   await settled(page);
-  for (const entry of ["People", "Uploads", "Remarks", "Referee copies", "Settings", "Delete the study"]) {
+  for (const entry of ["People", "Uploads", "Remarks", "Referee copies", "Journal", "Settings", "Delete the study"]) {
     await choose(page, entry);
     await page.getByRole("dialog").waitFor();
     for (const theme of THEMES) {
