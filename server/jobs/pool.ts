@@ -44,8 +44,8 @@ interface PoolSettings extends Pick<WorkerSettings, "databasePath">, Partial<Pic
 /** What takes minutes on large data. Everything else is soon done, and does not wait for it. */
 const LONG: ReadonlySet<CellSpecification["kind"]> = new Set(["system"]);
 
-/** A task asks its flag many times a second; one that has not heard after so long is ended with its thread. */
-const GRACE_MILLISECONDS = 5_000;
+/** A task asks its flag several times a second; one that has not heard after so long is ended with its thread. */
+const GRACE_MILLISECONDS = 1_500;
 
 export function createPool({
   databasePath,

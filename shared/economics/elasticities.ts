@@ -2,7 +2,7 @@ import { type Matrix, standardError } from "../numerics/matrix.ts";
 import type { Point } from "../systems/demand-system.ts";
 import type { FittedCoefficients } from "../systems/index.ts";
 import { combined } from "./evaluation.ts";
-import { type ResponseGradients, type ResponseOptions, type Responses, responsesAt } from "./responses.ts";
+import { type ResponseGradients, type ResponseOptions, type Responses, responsesAt, slopesAt } from "./responses.ts";
 
 /** Elasticities, and the shares that stand in them. */
 export interface ElasticityValues {
@@ -34,6 +34,19 @@ export function elasticitiesAt(fitted: FittedCoefficients, point: Point, options
   return elasticitiesOf(responses, gradients, fitted.covariance);
 }
 
+/** Expenditure elasticities alone, with standard errors. Error: as `elasticitiesAt`. */
+export function expenditureElasticitiesAt(
+  fitted: FittedCoefficients,
+  point: Point,
+): Pick<Elasticities, "expenditure" | "expenditureErrors"> {
+  const { slopes, derivatives } = slopesAt(fitted, point);
+  const shares = nonZeroShares(slopes.shares, fitted.goods);
+  return {
+    expenditure: shares.map((share, i) => 1 + slopes.total[i] / share),
+    expenditureErrors: expenditureErrors(slopes, derivatives, fitted.covariance),
+  };
+}
+
 /** The elasticities alone. */
 export function elasticityValues({ shares, total, prices, compensated }: Responses): ElasticityValues {
   return {
@@ -44,26 +57,39 @@ export function elasticityValues({ shares, total, prices, compensated }: Respons
   };
 }
 
-/** Elasticities as quotients of responses, with √(g'V g) from the responses' derivatives. */
+/**
+ * Elasticities as quotients of responses, with √(g'V g) from the responses' derivatives. Of many goods that takes
+ * seconds: `poll` is called between rows, and may throw.
+ */
 export function elasticitiesOf(
   responses: Responses,
   gradients: ResponseGradients,
   covariance: FittedCoefficients["covariance"],
+  poll: () => void = () => {},
 ): Elasticities {
-  const { shares, total, prices, compensated } = responses;
+  const { shares, prices, compensated } = responses;
   const errorOf = (gradient: readonly number[]) => standardError(covariance, gradient);
   const quotientErrors = (entries: Matrix, of: number[][][]) =>
-    entries.map((row, i) =>
-      row.map((entry, j) => errorOf(ratioGradient(entry, of[i][j], shares[i], gradients.shares[i]))),
-    );
+    entries.map((row, i) => {
+      poll();
+      return row.map((entry, j) => errorOf(ratioGradient(entry, of[i][j], shares[i], gradients.shares[i])));
+    });
   return {
     ...elasticityValues(responses),
-    expenditureErrors: shares.map((share, i) =>
-      errorOf(ratioGradient(total[i], gradients.total[i], share, gradients.shares[i])),
-    ),
+    expenditureErrors: expenditureErrors(responses, gradients, covariance),
     uncompensatedErrors: quotientErrors(prices, gradients.prices),
     compensatedErrors: quotientErrors(compensated, gradients.compensated),
   };
+}
+
+function expenditureErrors(
+  { shares, total }: Pick<Responses, "shares" | "total">,
+  gradients: Pick<ResponseGradients, "shares" | "total">,
+  covariance: FittedCoefficients["covariance"],
+): number[] {
+  return shares.map((share, i) =>
+    standardError(covariance, ratioGradient(total[i], gradients.total[i], share, gradients.shares[i])),
+  );
 }
 
 /** ∂(a/w)/∂θ = ∂a/w − a ∂w/w². */

@@ -14,6 +14,8 @@ export interface MatrixOptions {
   /** Uploaded total = total of estimation × totalScale. */
   readonly totalScale: number;
   readonly pointName: string;
+  /** Called between rows of many goods, which take seconds; may throw. */
+  readonly poll?: () => void;
 }
 
 /** The Slutsky matrix at a point, its errors, eigenvalues and laws. */
@@ -48,14 +50,17 @@ export interface SlutskyAtPoint {
  */
 export function matrixAt(fitted: FittedCoefficients, point: Point, options: MatrixOptions): SlutskyAtPoint {
   const { slopes, derivatives } = evaluateAt(fitted, point);
-  const { priceScale, totalScale, pointName } = options;
+  const { priceScale, totalScale, pointName, poll = () => {} } = options;
   if (priceScale.length !== fitted.goods.length) {
     throw new RangeError(`priceScale has ${priceScale.length} entries, the system has ${fitted.goods.length} goods`);
   }
   const shares = nonZeroShares(slopes.shares, fitted.goods);
   const share = slutskyMatrix(slopes);
   const gradients = slutskyDerivatives(slopes, derivatives);
-  const shareErrors = gradients.map((row) => row.map((gradient) => standardError(fitted.covariance, gradient)));
+  const shareErrors = gradients.map((row) => {
+    poll();
+    return row.map((gradient) => standardError(fitted.covariance, gradient));
+  });
   const factors = quantityFactors(
     point.prices.map((price, i) => price * priceScale[i]),
     point.total * totalScale,
@@ -72,11 +77,12 @@ export function matrixAt(fitted: FittedCoefficients, point: Point, options: Matr
     quantity: share.map((row, i) => row.map((entry, j) => entry * factors[i][j])),
     quantityErrors: shareErrors.map((row, i) => row.map((error, j) => error * factors[i][j])),
     compensated: share.map((row, i) => row.map((entry) => entry / shares[i])),
-    compensatedErrors: share.map((row, i) =>
-      row.map((entry, j) =>
+    compensatedErrors: share.map((row, i) => {
+      poll();
+      return row.map((entry, j) =>
         standardError(fitted.covariance, compensatedGradient(entry, gradients[i][j], shares[i], derivatives.shares[i])),
-      ),
-    ),
+      );
+    }),
     eigenvalues,
     checks: lawsOf(fitted, pointName, share, shares, eigenvalues),
   };

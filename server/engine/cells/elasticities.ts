@@ -73,7 +73,7 @@ function evaluated(
 ): { groups: GroupOrReason[]; derivativeRows?: { used: number; of: number } } {
   const { groups: groupedBy, over, at } = specification;
   if (!groupedBy && over === "means") {
-    return { groups: [refusingRanges(() => atOnePoint(at, specification, system, data))] };
+    return { groups: [refusingRanges(() => atOnePoint(at, specification, system, data, control))] };
   }
   const groups = groupedBy ? rowGroups(groupedBy, data) : [allRows(data)];
   if (over === "rows") return refusingRanges(() => overRows(groups, specification, system, data, control));
@@ -81,7 +81,7 @@ function evaluated(
     groups: groups.map((group, done) => {
       if (control.cancelled()) throw new Cancelled("cancelled between groups");
       control.progress({ step: "evaluating groups", fraction: done / groups.length });
-      return atGroupMean(group, specification, system, data);
+      return atGroupMean(group, specification, system, data, control);
     }),
   };
 }

@@ -10,6 +10,7 @@ import type { ResponseGradients, Responses } from "../../../shared/economics/res
 import type { ElasticityGroup, EstimatesByPrice } from "../../../shared/schemas/elasticities.ts";
 import type { FittedCoefficients } from "../../../shared/systems/index.ts";
 import { printQuantity } from "../../../shared/tables/numbers.ts";
+import type { Poll } from "../run.ts";
 
 /** The elasticities of a group with intervals and classes: what is said of it beside who it is. */
 export type EvaluatedGroup = Omit<
@@ -25,9 +26,10 @@ export function evaluatedGroup(
   fitted: FittedCoefficients,
   { responses, gradients }: { responses: Responses; gradients: ResponseGradients },
   level: number,
+  poll: Poll,
   draws?: readonly ElasticityValues[],
 ): EvaluatedGroup {
-  const elasticities = elasticitiesOf(responses, gradients, fitted.covariance);
+  const elasticities = elasticitiesOf(responses, gradients, fitted.covariance, poll);
   const intervals = draws ? percentileIntervals(draws, level) : normalIntervals(elasticities, level);
   const { goods, net, gross } = classesByIntervals(intervals, fitted.goods, level);
   return {

@@ -11,6 +11,7 @@ import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { capital } from "../../../shared/study/words.ts";
 import type { Point } from "../../../shared/systems/demand-system.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
+import { polling, type RunControl } from "../run.ts";
 import { evaluatedGroup, notPositive } from "./elasticity-at.ts";
 import type { RowGroup } from "./elasticity-groups.ts";
 import { demographicColumns } from "./points.ts";
@@ -25,10 +26,19 @@ export function atOnePoint(
   options: Options,
   system: SystemFinding,
   data: PreparedData,
+  control: RunControl,
 ): GroupOrReason {
   const { point, pointName } = pointOf(at ?? "mean", system, data);
   const own = typeof at === "object" && "row" in at ? Int32Array.of(data.rowNumbers.indexOf(at.row)) : undefined;
-  return evaluate({ name: pointName, total: point.total * data.totalScale }, point, options, system, data, own);
+  return evaluate(
+    { name: pointName, total: point.total * data.totalScale },
+    point,
+    options,
+    system,
+    data,
+    own,
+    control,
+  );
 }
 
 /** At the mean point of a group: weighted geometric means of prices and total, weighted means of demographics. */
@@ -37,6 +47,7 @@ export function atGroupMean(
   options: Options,
   system: SystemFinding,
   data: PreparedData,
+  control: RunControl,
 ): GroupOrReason {
   const mean = (column: Float64Array) => meanOver(column, rows, data.weights);
   const point: Point = {
@@ -50,7 +61,7 @@ export function atGroupMean(
     weightShare: weightOver(rows, data.weights) / weightOver(undefined, data.weights, data.rows),
     total: point.total * data.totalScale,
   };
-  return evaluate(about, point, options, system, data, rows);
+  return evaluate(about, point, options, system, data, rows, control);
 }
 
 function evaluate(
@@ -60,6 +71,7 @@ function evaluate(
   { fitted, bootstrap }: SystemFinding,
   data: PreparedData,
   rows: Int32Array | undefined,
+  control: RunControl,
 ): GroupOrReason {
   const observed = shares === "observed" && data.shares.map((column) => meanOver(column, rows, data.weights));
   const responseOptions = { index, ...(observed && { observed }) };
@@ -71,7 +83,8 @@ function evaluate(
       bootstrap?.draws &&
       overDraws(fitted, bootstrap.draws, (draw) => elasticityValues(responsesValuesAt(draw, point, responseOptions)));
     const named = { prices: [...point.prices], total: point.total, demographics: [...point.demographics] };
-    return { ...about, point: named, notPositive: [], ...evaluatedGroup(fitted, at, level, drawn) };
+    const poll = polling(control, "evaluating elasticities");
+    return { ...about, point: named, notPositive: [], ...evaluatedGroup(fitted, at, level, poll, drawn) };
   } catch (error) {
     // What a system does not define at a point (LA-AIDS far from its base prices) says so itself.
     if (!(error instanceof RangeError)) throw error;

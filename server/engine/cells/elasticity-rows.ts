@@ -5,7 +5,7 @@ import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import type { Evaluator, Slopes } from "../../../shared/systems/demand-system.ts";
 import { systemOf, whyNotDefined } from "../../../shared/systems/index.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
-import { Cancelled, type RunControl } from "../run.ts";
+import { type Poll, polling, type RunControl } from "../run.ts";
 import { evaluatedGroup, notPositive } from "./elasticity-at.ts";
 import type { RowGroup } from "./elasticity-groups.ts";
 import { type GroupOrReason, meanOver, weightOver } from "./elasticity-points.ts";
@@ -43,16 +43,16 @@ export function overRows(
   const stride = Math.max(1, Math.ceil((data.rows * products) / MOST_PRODUCTS));
   const derivativeRows: DerivativeRows = { used: 0, of: data.rows };
   let done = 0;
-  const report = () => {
-    if (control.cancelled()) throw new Cancelled("cancelled while going over the rows");
-    control.progress({ step: "going over the rows", fraction: done / data.rows });
-  };
+  // The derivatives of a row of many goods take as long as a thousand rows of few.
+  const poll = polling(control, "going over the rows");
   const passed = () => {
-    if (done++ % ROWS_BETWEEN_REPORTS === 0) report();
+    poll();
+    if (done++ % ROWS_BETWEEN_REPORTS > 0) return;
+    control.progress({ step: "going over the rows", fraction: done / data.rows });
   };
   const evaluated = groups.map((group) => {
     const every = Math.max(1, Math.min(stride, Math.floor(group.rows.length / FEWEST_SAMPLED)));
-    return overGroup(group, { ...options, every }, system, data, passed, derivativeRows);
+    return overGroup(group, { ...options, every }, system, data, { passed, poll }, derivativeRows);
   });
   return { groups: evaluated, derivativeRows };
 }
@@ -62,7 +62,7 @@ function overGroup(
   { shares, index, level, every }: Options & { every: number },
   { fitted }: SystemFinding,
   data: PreparedData,
-  passed: () => void,
+  { passed, poll }: { readonly passed: () => void; readonly poll: Poll },
   derivativeRows: DerivativeRows,
 ): GroupOrReason {
   const { system, size } = systemOf(fitted);
@@ -121,7 +121,7 @@ function overGroup(
       },
     }),
     notPositive: goods.flatMap((i) => (below[i] > 0 ? [{ good: fitted.goods[i], rows: below[i] }] : [])),
-    ...evaluatedGroup(fitted, { responses, gradients: gradients.result() }, level),
+    ...evaluatedGroup(fitted, { responses, gradients: gradients.result() }, level, poll),
   };
 }
 

@@ -5,6 +5,8 @@ import { Cancelled, type RunControl } from "../run.ts";
 import { demographicColumns } from "./points.ts";
 
 const ROWS_BETWEEN_REPORTS = 2048;
+/** An eigenvalue of many goods takes a millisecond. */
+const ROWS_BETWEEN_POLLS = 64;
 
 /**
  * Stands the checker at every row used, in turn, at the row's own prices, total and demographics (in a system
@@ -23,10 +25,8 @@ export function forEachRow(
   const own = new Float64Array(demographics.length);
   const observed = new Float64Array(data.goods.length);
   for (let t = 0; t < data.rows; t++) {
-    if (t % ROWS_BETWEEN_REPORTS === 0) {
-      if (control.cancelled()) throw new Cancelled("cancelled while checking rows");
-      control.progress({ step: "checking rows", fraction: t / data.rows });
-    }
+    if (t % ROWS_BETWEEN_POLLS === 0 && control.cancelled()) throw new Cancelled("cancelled while checking rows");
+    if (t % ROWS_BETWEEN_REPORTS === 0) control.progress({ step: "checking rows", fraction: t / data.rows });
     for (let j = 0; j < logPrices.length; j++) logPrices[j] = data.logPrices[j][t];
     for (let k = 0; k < own.length; k++) own[k] = demographics[k][t];
     checker.evaluate(logPrices, data.logTotal[t], own);

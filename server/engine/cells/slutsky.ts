@@ -5,7 +5,7 @@ import { type SlutskyFinding, type SlutskySpecification, slutskyFinding } from "
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import type { Matrix, Point } from "../../../shared/systems/demand-system.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
-import { QUIET, type RunControl } from "../run.ts";
+import { polling, QUIET, type RunControl } from "../run.ts";
 import { caveatsOf } from "./caveats-of.ts";
 import { refusingRanges } from "./refusing.ts";
 import { pointOf } from "./slutsky-point.ts";
@@ -24,7 +24,7 @@ export function runSlutsky(
   const { fitted } = system;
   const { priceScale, totalScale } = data;
   const { point, pointName } = pointOf(specification.at, system, data);
-  const options = { priceScale, totalScale, pointName };
+  const options = { priceScale, totalScale, pointName, poll: polling(control, "evaluating the matrix") };
   const at = refusingRanges(() => matrixAt(fitted, point, options), pointName);
   const drawn = system.bootstrap?.draws && drawnIntervals(fitted, system.bootstrap.draws, point);
   const checks = withDrawnLargest(at.checks, drawn);

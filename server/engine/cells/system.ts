@@ -1,6 +1,6 @@
 import { theoryChecksAt } from "../../../shared/economics/checks.ts";
 import { drawnIntervals, withDrawnLargest } from "../../../shared/economics/drawn-intervals.ts";
-import { elasticitiesAt } from "../../../shared/economics/elasticities.ts";
+import { expenditureElasticitiesAt } from "../../../shared/economics/elasticities.ts";
 import { type SystemFinding, type SystemSpecification, systemFinding } from "../../../shared/schemas/system.ts";
 import type { Point } from "../../../shared/systems/demand-system.ts";
 import { type FittedCoefficients, systemOf } from "../../../shared/systems/index.ts";
@@ -15,7 +15,7 @@ import {
   momentsRequest,
   requireRows,
 } from "../estimation/index.ts";
-import { QUIET, type RunControl } from "../run.ts";
+import { polling, QUIET, type RunControl } from "../run.ts";
 import { curvaturePoint } from "./curvature-point.ts";
 import { expenditureReport } from "./expenditure-report.ts";
 import { basePoint, meanPoint } from "./points.ts";
@@ -30,8 +30,12 @@ import { weightedQuantiles } from "./weighted.ts";
  */
 export function runSystem(given: SystemSpecification, data: PreparedData, control: RunControl = QUIET): SystemFinding {
   const specification = withTimeTerms(given, data);
+  const poll = polling(control, "reading the specification");
   requireRows(specification, data);
-  const moments = momentsOf(data, momentsRequest(specification, data), control);
+  poll();
+  const request = momentsRequest(specification, data);
+  poll();
+  const moments = momentsOf(data, request, control);
   const estimate = estimateSystem(specification, data, moments, control, curvaturePoint(specification, data));
   const { fitted } = estimate;
   const base = basePoint(data, fitted.demographics);
@@ -39,7 +43,7 @@ export function runSystem(given: SystemSpecification, data: PreparedData, contro
   // What is not normalised is nowhere near p = x = 1: then the head of the finding stands at the sample mean.
   const [point, pointName] = data.finding.normalise === "mean" ? [base, "base point"] : [mean, "mean"];
   const at = refusingRanges(
-    () => ({ ...elasticitiesAt(fitted, point), checks: theoryChecksAt(fitted, point, pointName) }),
+    () => ({ ...expenditureElasticitiesAt(fitted, point), checks: theoryChecksAt(fitted, point, pointName) }),
     pointName,
   );
   const draws = estimate.bootstrap?.draws;

@@ -49,6 +49,7 @@ export function approach(
   for (let iteration = 1; ; iteration++) {
     poll();
     const derivatives = sparseDerivatives(form.derivatives(state.free), equations, moments.terms.columns);
+    poll();
     const residuals = residualProducts(state.weighted, moments.terms);
     const gradient = gradientOf(derivatives, residuals, state.weight);
     const factor = factorOfProducts(normalProducts(derivatives, products, state.weight, poll), gradient, poll);
@@ -79,7 +80,7 @@ function chooseStep(
   poll: Poll,
 ): Float64Array {
   const newton = wantsNewton(criterion, estimation)
-    ? likelihoodStep(factor, covarianceDerivatives(derivatives, residuals, weight), estimation.moments.rows, poll)
+    ? likelihoodStep(factor, covarianceDerivatives(derivatives, residuals, weight, poll), estimation.moments.rows, poll)
     : undefined;
   return newton ?? gaussNewtonStep(factor);
 }

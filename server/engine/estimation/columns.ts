@@ -1,3 +1,8 @@
+import type { Poll } from "../run.ts";
+
+/** Multiplications between two polls: some ten milliseconds. */
+const WORK_BETWEEN_POLLS = 1e7;
+
 /**
  * A dense matrix stored by columns: entry (i, j) is `values[j * rows + i]`. The estimators work on
  * this rather than on rows of numbers, because every inner loop runs down a column.
@@ -38,9 +43,11 @@ export function dot(left: Float64Array, right: Float64Array): number {
 }
 
 /** A B for A (r × s) and B (s × t). */
-export function multiply(left: Columns, right: Columns): Columns {
+export function multiply(left: Columns, right: Columns, poll: Poll = () => {}): Columns {
   const product = zeros(left.rows, right.columns);
+  const between = columnsBetweenPolls(left);
   for (let j = 0; j < right.columns; j++) {
+    if (j % between === 0) poll();
     const out = columnOf(product, j);
     for (let k = 0; k < left.columns; k++) {
       const factor = right.values[j * right.rows + k];
@@ -53,14 +60,18 @@ export function multiply(left: Columns, right: Columns): Columns {
 }
 
 /** A'B for A (r × s) and B (r × t). */
-export function crossProduct(left: Columns, right: Columns): Columns {
+export function crossProduct(left: Columns, right: Columns, poll: Poll = () => {}): Columns {
   const product = zeros(left.columns, right.columns);
+  const between = columnsBetweenPolls(left);
   for (let j = 0; j < right.columns; j++) {
+    if (j % between === 0) poll();
     const column = columnOf(right, j);
     for (let i = 0; i < left.columns; i++) product.values[j * left.columns + i] = dot(columnOf(left, i), column);
   }
   return product;
 }
+
+const columnsBetweenPolls = ({ values }: Columns) => Math.max(1, Math.floor(WORK_BETWEEN_POLLS / values.length));
 
 export function transposed(matrix: Columns): Columns {
   const result = zeros(matrix.columns, matrix.rows);

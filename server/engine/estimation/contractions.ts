@@ -68,12 +68,18 @@ export function gradientOf(derivatives: SparseDerivatives, residuals: Columns, w
  * B_ab,f = ê_a'Ĵ_f,b + ê_b'Ĵ_f,a of every pair a ≤ b, F × ½g(g+1); those of a < b times √2, as each stands for
  * two entries of a symmetric matrix.
  */
-export function covarianceDerivatives(derivatives: SparseDerivatives, residuals: Columns, weight: Columns): Columns {
+export function covarianceDerivatives(
+  derivatives: SparseDerivatives,
+  residuals: Columns,
+  weight: Columns,
+  poll: Poll,
+): Columns {
   const { equations: g, terms, starts, places, values } = derivatives;
   const free = starts.length - 1;
   const result = zeros(free, (g * (g + 1)) / 2);
   const unweighted = zeros(g, g);
   for (let f = 0; f < free; f++) {
+    poll();
     unweighted.values.fill(0);
     for (let at = starts[f]; at < starts[f + 1]; at++) {
       const term = places[at] % terms;

@@ -12,8 +12,7 @@ import { invertUpper, semidefiniteCholesky } from "./triangle.ts";
  * derivatives weighted by the Σ̂⁻¹ the estimator used. Right where the estimator is efficient.
  */
 export function conventionalCovariance(estimation: Estimation, solution: Solution, poll?: Poll): number[][] {
-  const inverse = inverseRoot(solution);
-  poll?.();
+  const inverse = inverseRoot(solution, poll);
   return outerSquare(estimation, inverse, poll);
 }
 
@@ -34,10 +33,10 @@ export function leastSquaresCovariance(estimation: Estimation, solution: Solutio
     }
   }
   const spread = weightBlocks(solution.jacobian, height, root);
-  const inverse = inverseRoot(solution);
-  const inner = multiply(gram(spread, poll), inverse);
-  const middle = semidefiniteCholesky(crossProduct(inverse, inner), 0, poll).factor;
-  return outerSquare(estimation, multiply(inverse, transpose(middle)), poll);
+  const inverse = inverseRoot(solution, poll);
+  const inner = multiply(gram(spread, poll), inverse, poll);
+  const middle = semidefiniteCholesky(crossProduct(inverse, inner, poll), 0, poll).factor;
+  return outerSquare(estimation, multiply(inverse, transpose(middle), poll), poll);
 }
 
 /**
@@ -50,18 +49,19 @@ export function sandwichCovariance(
   solution: Solution,
   meat: Columns,
   groups: number,
+  poll?: Poll,
 ): number[][] {
-  const inverse = inverseRoot(solution);
-  const inner = crossProduct(inverse, multiply(meat, inverse));
+  const inverse = inverseRoot(solution, poll);
+  const inner = crossProduct(inverse, multiply(meat, inverse, poll), poll);
   for (let k = 0; k < inner.values.length; k++) inner.values[k] *= groups / (groups - 1);
   // In the metric of A every direction counts alike: what falls below this is rounding of a meat of low rank.
-  const middle = semidefiniteCholesky(inner, 1e-14).factor;
-  return outerSquare(estimation, multiply(inverse, transpose(middle)));
+  const middle = semidefiniteCholesky(inner, 1e-14, poll).factor;
+  return outerSquare(estimation, multiply(inverse, transpose(middle), poll), poll);
 }
 
 /** D⁻¹R⁻¹: A⁻¹ is this times its transpose. */
-function inverseRoot({ factor }: Solution): Columns {
-  const inverse = invertUpper(factor.triangle);
+function inverseRoot({ factor }: Solution, poll?: Poll): Columns {
+  const inverse = invertUpper(factor.triangle, poll);
   for (let j = 0; j < inverse.columns; j++) {
     const column = columnOf(inverse, j);
     for (let i = 0; i < column.length; i++) column[i] /= factor.lengths[i];
@@ -77,7 +77,7 @@ function outerSquare({ form }: Estimation, half: Columns, poll?: Poll): number[]
   matrix.forEach((row, a) => {
     columnOf(restrictions, a).set(row);
   });
-  const square = gram(multiply(transpose(half), restrictions), poll);
+  const square = gram(multiply(transpose(half), restrictions, poll), poll);
   return matrix.map((_, a) => Array.from(columnOf(square, a)));
 }
 

@@ -9,7 +9,7 @@ import { covarianceOfEstimates, inferenceFinding } from "../inference/covariance
 import { linearityOf } from "../inference/linearity.ts";
 import { type NestedFits, restrictionTests } from "../inference/restriction-tests.ts";
 import { Refusal } from "../refusal.ts";
-import type { RunControl } from "../run.ts";
+import { polling, type RunControl } from "../run.ts";
 import { advising } from "./advice.ts";
 import { systemForm } from "./coefficient-form.ts";
 import { coefficientNames, labelOfCoefficient } from "./coefficient-labels.ts";
@@ -84,14 +84,18 @@ export function estimateSystem(
     control,
   );
   const { covariance } = inference;
+  const poll = polling(control, "measuring the fit");
+  poll();
   // What the first steps add stands after the coefficients of the system itself.
   const own = SYSTEMS[specification.form].layout(size).length;
   const fit = { specification, data, system, size, estimation, solution, covariance, own };
   const { iterations, gradient, largestStep, condition } = solution;
   const measures = fitMeasures(estimation, solution);
+  poll();
   rememberFit(linear, specification, unbent.solution);
   const equations = equationsExplainedBy(sampleOf(specification), data, moments.rows);
   const durbin = durbinWatsonOf(specification, data, system, size, estimation, solution);
+  poll();
   return {
     kind: "system",
     dataFingerprint: data.fingerprint,

@@ -1,4 +1,4 @@
-import type { RunControl } from "../run.ts";
+import { polling, type RunControl } from "../run.ts";
 import { accumulateSums, momentMatrix } from "./accumulate-sums.ts";
 import { type Columns, identity, multiply, zeros } from "./columns.ts";
 import type { MomentSource, TermPair } from "./moment-source.ts";
@@ -58,7 +58,7 @@ function covariance(source: MomentSource, whitening: Whitening, control: RunCont
   const { groups } = source;
   const base = source.columns.length;
   const terms: TermPair[] = Array.from({ length: base + 1 }, (_, place) => [0, place]);
-  const plan = planTiles(terms);
+  const plan = planTiles(terms, polling(control, "whitening columns"));
   const onlyBase: MomentSource = { ...source, responses: [], responseLabels: [] };
   const sums = accumulateSums(onlyBase, whitening, terms, plan, { from: 0, to: source.rows }, control, () => 0);
   const moments = momentMatrix(plan, sums).values;

@@ -1,4 +1,4 @@
-import type { RunControl } from "../run.ts";
+import { polling, type RunControl } from "../run.ts";
 import { type CoefficientForm, expand } from "./coefficient-form.ts";
 import { type Criterion, evaluate, type State } from "./criterion.ts";
 import type { Estimation } from "./estimation.ts";
@@ -31,7 +31,7 @@ export function search(
     }
   }
   for (let damping = 1e-4; damping <= MOST_DAMPING; damping *= 10) {
-    const next = attempt(dampedStep(factor, damping), 1);
+    const next = attempt(dampedStep(factor, damping, polling(control, "iterating")), 1);
     if (next !== undefined) return next;
   }
   return undefined;

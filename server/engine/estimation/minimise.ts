@@ -163,8 +163,8 @@ function chooseStep(
   { moments, derivatives, factor, weighted }: ReturnType<typeof linearise>,
   poll: Poll,
 ): Float64Array {
-  if (factor.dependent.length > 0) return dampedStep(factor, 1e-8);
+  if (factor.dependent.length > 0) return dampedStep(factor, 1e-8, poll);
   if (!wantsNewton(criterion, estimation)) return gaussNewtonStep(factor);
-  const cross = covarianceDerivatives(derivatives, residualProducts(weighted, moments.terms), weight);
+  const cross = covarianceDerivatives(derivatives, residualProducts(weighted, moments.terms), weight, poll);
   return likelihoodStep(factor, cross, moments.rows, poll) ?? gaussNewtonStep(factor);
 }

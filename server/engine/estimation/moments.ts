@@ -1,4 +1,4 @@
-import type { RunControl } from "../run.ts";
+import { type Poll, polling, type RunControl } from "../run.ts";
 import { type Columns, columnOf, multiply, zeros } from "./columns.ts";
 import { whiteningOf } from "./find-whitening.ts";
 import { type MomentSource, ordered, type TermPair, termOf } from "./moment-source.ts";
@@ -56,9 +56,10 @@ export type Reduction = "reflected" | "summed";
  */
 export function reduceRows(source: MomentSource, key: string, control: RunControl, reduction?: Reduction): Moments {
   const plan = planReduction(source, control);
+  const poll = polling(control, "forming moments");
   const few = source.rows * plan.whitened.length ** 2 <= REFLECTED_WORK;
   const reduce = (reduction ?? (few ? "reflected" : "summed")) === "reflected" ? reflectedFactor : summedFactor;
-  return momentsOfFactor(source, key, plan, reduce(source, plan.whitening, plan.whitened, control));
+  return momentsOfFactor(source, key, plan, reduce(source, plan.whitening, plan.whitened, control), poll);
 }
 
 /** How the rows of a source are reduced: one whitening serves every subset of the rows, and every weighting of them. */
@@ -73,7 +74,10 @@ export function planReduction(source: MomentSource, control: RunControl): Reduct
   const responses: TermPair[] = source.responses.map((_, i) => [0, source.columns.length + 1 + i]);
   const combined = new Set(source.combinations?.map(({ term }) => term));
   const terms = source.terms.filter((_, term) => !combined.has(term));
-  return { ...whiteningOf(source, control), whitened: [...closure({ ...source, terms }), ...responses] };
+  return {
+    ...whiteningOf(source, control),
+    whitened: [...closure({ ...source, terms }, polling(control, "forming terms")), ...responses],
+  };
 }
 
 /** The moments whose factor in the whitened columns of a plan is given (r × columns of the plan). */
@@ -82,6 +86,7 @@ export function momentsOfFactor(
   key: string,
   { whitening, dependent, whitened }: ReductionPlan,
   factor: Columns,
+  poll?: Poll,
 ): Moments {
   const terms = whitened.slice(0, whitened.length - source.responses.length);
   const parts = splitColumns(factor, terms.length);
@@ -90,16 +95,17 @@ export function momentsOfFactor(
     rows: source.rows,
     weighted: source.weights !== undefined,
     responseLabels: source.responseLabels,
-    terms: multiply(parts.left, combine(termMap(source.terms, terms, whitening), source)),
+    terms: multiply(parts.left, combine(termMap(source.terms, terms, whitening, poll), source), poll),
     responses: shiftBack(parts.right, columnOf(parts.left, 0), whitening.shift.subarray(source.columns.length)),
     dependent,
   };
 }
 
 /** Every whitened term that a term of the list is made of; the constant first, products of three after those of two. */
-export function closure({ terms, groups }: Pick<MomentSource, "terms" | "groups">): TermPair[] {
+export function closure({ terms, groups }: Pick<MomentSource, "terms" | "groups">, poll: Poll = () => {}): TermPair[] {
   const found = new Map<string, TermPair>();
   for (const term of terms) {
+    poll();
     for (const product of productsOf(term, (place) => placesBelow(place, groups))) {
       found.set(product.join(), product);
     }
@@ -126,6 +132,7 @@ export function termMap(
   terms: readonly TermPair[],
   whitened: readonly TermPair[],
   { shift, triangle }: Whitening,
+  poll: Poll = () => {},
 ): Columns {
   const place = new Map(whitened.map((term, at) => [term.join(), at]));
   const entry = (a: number, j: number): number => {
@@ -134,6 +141,7 @@ export function termMap(
   };
   const map = zeros(whitened.length, terms.length);
   terms.forEach((factors, term) => {
+    poll();
     const column = columnOf(map, term);
     const [j, k] = factors;
     if (factors.length > 2) {

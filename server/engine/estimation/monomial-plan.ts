@@ -1,3 +1,4 @@
+import type { Poll } from "../run.ts";
 import { ordered, type TermPair, termOf } from "./moment-source.ts";
 import { fours, layTiles, TILE, type Tile, type TilePlan } from "./tile-plan.ts";
 
@@ -8,9 +9,9 @@ import { fours, layTiles, TILE, type Tile, type TilePlan } from "./tile-plan.ts"
  *
  * Responses are base columns of their own, multiplied with everything: give them as terms [0, place].
  */
-export function planTiles(terms: readonly TermPair[]): TilePlan {
+export function planTiles(terms: readonly TermPair[], poll: Poll = () => {}): TilePlan {
   const key = terms.join(" ");
-  const plan = plans.get(key) ?? newPlan(terms);
+  const plan = plans.get(key) ?? newPlan(terms, poll);
   // The oldest goes: a study has few sets of terms, and an iteration asks for the same again and again.
   if (!plans.has(key) && plans.size >= MOST_PLANS) plans.delete(plans.keys().next().value!);
   plans.set(key, plan);
@@ -20,12 +21,13 @@ export function planTiles(terms: readonly TermPair[]): TilePlan {
 const plans = new Map<string, TilePlan>();
 const MOST_PLANS = 12;
 
-function newPlan(terms: readonly TermPair[]): TilePlan {
+function newPlan(terms: readonly TermPair[], poll: Poll): TilePlan {
   const columns = terms.length;
   const place = new Map(terms.map((term, at) => [term.join(), at]));
   const chosen = new Map<string, readonly [row: number, column: number]>();
   const wanted = new Map<number, Set<number>>();
   for (let i = 0; i < columns; i++) {
+    poll();
     for (let j = i; j < columns; j++) {
       const monomial = monomialOf(terms[i], terms[j]);
       const key = monomial.join();
@@ -36,9 +38,10 @@ function newPlan(terms: readonly TermPair[]): TilePlan {
       wanted.get(row)!.add(column);
     }
   }
-  const laid = layTiles(columns, tilesOf(mergeGroups(groupRows(terms, wanted))));
+  const laid = layTiles(columns, tilesOf(mergeGroups(groupRows(terms, wanted), poll)));
   const placeOf = new Int32Array(columns * columns);
   for (let i = 0; i < columns; i++) {
+    poll();
     for (let j = i; j < columns; j++) {
       const [row, column] = chosen.get(monomialOf(terms[i], terms[j]).join())!;
       placeOf[i * columns + j] = laid.placeOf[row * columns + column];
@@ -127,12 +130,13 @@ function groupRows(terms: readonly TermPair[], wanted: ReadonlyMap<number, Reado
 }
 
 /** Merges rectangles while that saves whole tiles. */
-function mergeGroups(groups: Group[]): Group[] {
+function mergeGroups(groups: Group[], poll: Poll): Group[] {
   const cost = (group: Group) => Math.ceil(group.rows.length / TILE) * Math.ceil(group.columns.length / TILE);
   let list = groups;
   for (;;) {
     let best: { saving: number; i: number; j: number; merged: Group } | undefined;
     for (let i = 0; i < list.length; i++) {
+      poll();
       for (let j = i + 1; j < list.length; j++) {
         const merged: Group = {
           rows: [...list[i].rows, ...list[j].rows],

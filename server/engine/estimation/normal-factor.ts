@@ -30,7 +30,7 @@ export function normalFactor(jacobian: Columns, right: Columns, poll?: Poll): No
   const projections = Float64Array.from({ length: jacobian.columns }, (_, f) =>
     dot(columnOf(jacobian, f), right.values),
   );
-  return factorOfProducts(gram(jacobian, poll), projections, poll) ?? byReflections(jacobian, right);
+  return factorOfProducts(gram(jacobian, poll), projections, poll) ?? byReflections(jacobian, right, poll);
 }
 
 /** The factor from J'J (its upper triangle) and J'b; undefined where squares have lost too many digits. */
@@ -50,7 +50,7 @@ export function factorOfProducts(products: Columns, projections: Float64Array, p
   return { lengths, triangle: factor, projected, dependent: [] };
 }
 
-function byReflections(jacobian: Columns, right: Columns): NormalFactor {
+function byReflections(jacobian: Columns, right: Columns, poll: Poll | undefined): NormalFactor {
   const free = jacobian.columns;
   const lengths = new Float64Array(free);
   const scaled = zeros(jacobian.rows, free + 1);
@@ -61,7 +61,7 @@ function byReflections(jacobian: Columns, right: Columns): NormalFactor {
     for (let r = 0; r < target.length; r++) target[r] = from[r] / lengths[f];
   }
   scaled.values.set(right.values, free * jacobian.rows);
-  reduceToTriangle(scaled, free);
+  reduceToTriangle(scaled, free, poll);
   const triangle = zeros(free, free);
   const projected = new Float64Array(free);
   const height = Math.min(free, scaled.rows);

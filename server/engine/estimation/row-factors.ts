@@ -1,4 +1,4 @@
-import { Cancelled, type RunControl } from "../run.ts";
+import { Cancelled, type Poll, polling, type RunControl } from "../run.ts";
 import { accumulateSums, momentMatrix } from "./accumulate-sums.ts";
 import { type Columns, zeros } from "./columns.ts";
 import { triangularFactor } from "./householder.ts";
@@ -21,15 +21,16 @@ export function summedFactor(
   terms: readonly TermPair[],
   control: RunControl,
 ): Columns {
-  const plan = planTiles(terms);
+  const poll = polling(control, "accumulating moments");
+  const plan = planTiles(terms, poll);
   const range = { from: 0, to: source.rows };
   const sums = accumulateSums(source, whitening, terms, plan, range, control, (done) => done / source.rows);
-  return factorOfMoments(momentMatrix(plan, sums), source.responses.length);
+  return factorOfMoments(momentMatrix(plan, sums), source.responses.length, poll);
 }
 
 /** The triangular factor of second moments of whitened terms and, after them, responses. */
-export function factorOfMoments(matrix: Columns, responses: number): Columns {
-  const { factor, dependent } = semidefiniteCholesky(matrix, ROUNDING);
+export function factorOfMoments(matrix: Columns, responses: number, poll?: Poll): Columns {
+  const { factor, dependent } = semidefiniteCholesky(matrix, ROUNDING, poll);
   // A response that the terms explain to rounding keeps residuals of that size, so that no variance is zero.
   for (const column of dependent) {
     if (column < matrix.columns - responses) continue;
@@ -55,5 +56,5 @@ export function reflectedFactor(
       rows.values.set(block.subarray(term * BLOCK_ROWS, term * BLOCK_ROWS + count), term * source.rows + from);
     }
   }
-  return triangularFactor(rows);
+  return triangularFactor(rows, polling(control, "accumulating moments"));
 }

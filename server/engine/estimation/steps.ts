@@ -13,7 +13,7 @@ export function gaussNewtonStep({ triangle, projected, lengths }: NormalFactor):
 }
 
 /** Levenberg (1944), Marquardt (1963): minimises ‖R D δ + Q'b‖² + λ‖D δ‖². */
-export function dampedStep({ triangle, projected, lengths }: NormalFactor, damping: number): Float64Array {
+export function dampedStep({ triangle, projected, lengths }: NormalFactor, damping: number, poll?: Poll): Float64Array {
   const free = lengths.length;
   const stacked = zeros(2 * free, free + 1);
   for (let f = 0; f < free; f++) {
@@ -21,7 +21,7 @@ export function dampedStep({ triangle, projected, lengths }: NormalFactor, dampi
     stacked.values[f * 2 * free + free + f] = Math.sqrt(damping);
   }
   stacked.values.set(projected, free * 2 * free);
-  reduceToTriangle(stacked, free);
+  reduceToTriangle(stacked, free, poll);
   const upper = zeros(free, free);
   for (let f = 0; f < free; f++) upper.values.set(columnOf(stacked, f).subarray(0, free), f * free);
   const step = columnOf(stacked, free)

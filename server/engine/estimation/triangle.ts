@@ -22,9 +22,10 @@ export function solveUpperTransposed(upper: Columns, right: Float64Array, size: 
 }
 
 /** R⁻¹, upper triangular. */
-export function invertUpper(upper: Columns): Columns {
+export function invertUpper(upper: Columns, poll: Poll = () => {}): Columns {
   const inverse = zeros(upper.columns, upper.columns);
   for (let j = 0; j < upper.columns; j++) {
+    if (j % COLUMNS_BETWEEN_POLLS === 0) poll();
     const column = inverse.values.subarray(j * upper.columns, (j + 1) * upper.columns);
     column[j] = 1;
     solveUpper(upper, column, j + 1);

@@ -4,7 +4,7 @@ import type { MomentSource } from "../estimation/moment-source.ts";
 import { multiplyAccumulate } from "../estimation/multiply-accumulate.ts";
 import { BLOCK_ROWS } from "../estimation/term-block.ts";
 import { densePlan } from "../estimation/tile-plan.ts";
-import { Cancelled, type RunControl } from "../run.ts";
+import { Cancelled, type Poll, type RunControl } from "../run.ts";
 import { rowScores } from "./row-scores.ts";
 import type { ScoreStructure } from "./score-structure.ts";
 
@@ -34,7 +34,7 @@ export function meatOfRows(source: MomentSource, structure: ScoreStructure, cont
   const { scores, fill } = rowScores(source, structure);
   const products = new OuterProducts(structure.scores.length);
   for (let from = 0; from < source.rows; from += BLOCK_ROWS) {
-    poll(from, source.rows, control);
+    report(from, source.rows, control);
     const rows = Math.min(BLOCK_ROWS, source.rows - from);
     fill(from, rows);
     products.add(scores, rows);
@@ -58,7 +58,7 @@ export function meatOfClusters(
   const finished = new Float64Array(free * BLOCK_ROWS);
   let cluster = 0;
   for (let from = 0; from < source.rows; from += BLOCK_ROWS) {
-    poll(from, source.rows, control);
+    report(from, source.rows, control);
     const end = Math.min(from + BLOCK_ROWS, source.rows);
     fill(from, end - from);
     for (let t = from; t < end; ) {
@@ -94,21 +94,23 @@ function addRows(
 }
 
 /** Σ_g s_g s_g' of scores given as G × F rows. */
-export function meatOfScores(scores: readonly Float64Array[], free: number): Columns {
+export function meatOfScores(scores: readonly Float64Array[], free: number, poll: Poll = () => {}): Columns {
   const products = new OuterProducts(free);
   const block = new Float64Array(free * BLOCK_ROWS);
   scores.forEach((score, g) => {
     score.forEach((value, f) => {
       block[f * BLOCK_ROWS + (g % BLOCK_ROWS)] = value;
     });
-    if ((g + 1) % BLOCK_ROWS === 0) products.add(block, BLOCK_ROWS);
+    if ((g + 1) % BLOCK_ROWS !== 0) return;
+    poll();
+    products.add(block, BLOCK_ROWS);
   });
   products.add(block, scores.length % BLOCK_ROWS);
   return products.matrix();
 }
 
-function poll(done: number, rows: number, control: RunControl): void {
-  if ((done / BLOCK_ROWS) % 64 !== 0) return;
+function report(done: number, rows: number, control: RunControl): void {
   if (control.cancelled()) throw new Cancelled("cancelled while forming scores");
+  if ((done / BLOCK_ROWS) % 64 !== 0) return;
   control.progress({ step: "forming scores", fraction: done / rows });
 }

@@ -5,7 +5,7 @@ import type { Solution } from "../estimation/minimise.ts";
 import type { MomentSource } from "../estimation/moment-source.ts";
 import { planReduction } from "../estimation/moments.ts";
 import { planTiles } from "../estimation/monomial-plan.ts";
-import type { RunControl } from "../run.ts";
+import { polling, type RunControl } from "../run.ts";
 import {
   bytesOfClusterMoments,
   type ClusterMoments,
@@ -25,7 +25,7 @@ export function heteroskedasticCovariance(
   control: RunControl,
 ): number[][] {
   const meat = meatOfRows(source, scoresAt(estimation, solution), control);
-  return sandwichCovariance(estimation, solution, meat, source.rows);
+  return sandwichCovariance(estimation, solution, meat, source.rows, polling(control, "forming covariances"));
 }
 
 /**
@@ -47,9 +47,13 @@ export function clusteredCovariance(
   // Terms that move with θ have moments of their own at every θ: there is nothing to keep.
   const moments = local ? undefined : momentsOfClusters(source, clusters, terms, control, mostBytes);
   const meat = moments
-    ? meatOfScores(scoresOfClusters(source, moments, structure), estimation.form.free)
+    ? meatOfScores(
+        scoresOfClusters(source, moments, structure),
+        estimation.form.free,
+        polling(control, "forming scores"),
+      )
     : passOverClusters(source, clusters, structure, control);
-  return sandwichCovariance(estimation, solution, meat, clusters.count);
+  return sandwichCovariance(estimation, solution, meat, clusters.count, polling(control, "forming covariances"));
 }
 
 function passOverClusters(
@@ -90,7 +94,7 @@ export function momentsOfClusters(
   if (known?.column === clusters.column && mostBytes === MOST_BYTES) return known.moments;
   const rows = clusterRows(source, clusters);
   const reduction = planReduction(rows.source, control);
-  const tiles = planTiles(reduction.whitened);
+  const tiles = planTiles(reduction.whitened, polling(control, "forming moments of clusters"));
   if (bytesOfClusterMoments(clusters.count, tiles) > mostBytes) return undefined;
   const moments = clusterMoments(rows, control, reduction, tiles);
   kept.set(key, { column: clusters.column, moments });

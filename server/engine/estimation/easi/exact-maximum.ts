@@ -16,7 +16,7 @@ export interface ExactMaximum extends ExactSolution {
 }
 
 /** −∂²/∂φ∂φ' of the concentrated likelihood as K'H K. */
-export interface Information {
+interface Information {
   /** K, F × F upper triangular: that of three stages is K'K. */
   readonly root: Columns;
   /** H, F × F: no more than the difference between the two estimators away from the identity. */
