@@ -38,8 +38,9 @@ export default defineConfig({
           name: "e2e",
           environment: "node",
           include: ["tests/e2e/**/*.test.ts"],
-          testTimeout: 180_000,
-          hookTimeout: 180_000,
+          // Each step has a patience of its own (tests/e2e/support.ts), which says better what was waited for.
+          testTimeout: 900_000,
+          hookTimeout: 900_000,
           globalSetup: ["tests/e2e/demo-data.ts"],
         },
       },

@@ -105,7 +105,6 @@ it("a change by one makes the same finding appear for both", async () => {
     async () => [await finding(ilse), await finding(tomas)],
     ([one, other]) => one === other && one !== before && one.includes("Current") && !one.includes("Fetching"),
     "the same new finding in both",
-    60_000,
   );
 });
 

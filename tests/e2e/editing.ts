@@ -3,6 +3,7 @@ import * as Y from "yjs";
 import { openDatabase } from "../../server/db/client.ts";
 import { loadUpdates } from "../../server/db/queries/documents.ts";
 import { readCells } from "../../server/sync/index.ts";
+import { PATIENCE } from "./support.ts";
 
 /** A cell's band: source on the left, finding on the right. */
 export function bandOf(page: Page, cell: string): Locator {
@@ -44,9 +45,8 @@ export async function eventually<T>(
   look: () => Promise<T> | T,
   holds: (seen: T) => boolean,
   words: string,
-  patience = 20_000,
 ): Promise<T> {
-  const end = Date.now() + patience;
+  const end = Date.now() + PATIENCE;
   for (;;) {
     const seen = await look();
     if (holds(seen)) return seen;

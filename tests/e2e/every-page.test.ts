@@ -19,8 +19,6 @@ const TELEPHONE = 390;
 const RULES = ["wcag2a", "wcag2aa", "wcag21a", "wcag21aa", "wcag22aa", "best-practice"];
 /** Where pictures of the pages are left to be looked at; no part of the repository. */
 const PICTURES = fileURLToPath(new URL("../artefacts/", import.meta.url));
-/** A page whose findings are computed in the browser, on a machine that may have more to do. */
-const PATIENCE = 60_000;
 
 type Theme = (typeof THEMES)[number];
 
@@ -98,7 +96,7 @@ const PLACES: readonly Place[] = [
     name: "study",
     path: () => `/studies/${studyId}`,
     ready: async (page) => {
-      for (const name of ids.keys()) await untilSays(page, name, /^Current(?!.*Fetching)/, PATIENCE);
+      for (const name of ids.keys()) await untilSays(page, name, /^Current(?!.*Fetching)/);
     },
     signedIn: true,
   },
@@ -183,7 +181,6 @@ async function openPage(signedIn: boolean): Promise<Page> {
     reducedMotion: "reduce",
     ...(signedIn && { storageState: state }),
   });
-  context.setDefaultTimeout(PATIENCE);
   return context.newPage();
 }
 
@@ -278,7 +275,7 @@ it("has none in what is laid over a study either", async () => {
   }
   expect.soft(watched.takeFaults()).toEqual([]);
   await page.context().close();
-}, 400_000);
+});
 
 it("has none where remarks are folded to letters, opened over the finding and written", async () => {
   const page = await openPage(true);

@@ -27,12 +27,11 @@ export async function rewriteLine(editor: Locator, begins: string, words: string
 export const findingOf = (page: Page, cell: string): Locator => bandOf(page, cell).locator(".recto");
 
 /** Waits until a cell's right page says so much; what it says. */
-export function untilSays(page: Page, cell: string, words: RegExp | string, patience?: number): Promise<string> {
+export function untilSays(page: Page, cell: string, words: RegExp | string): Promise<string> {
   return eventually(
     () => wordsOf(findingOf(page, cell)),
     (said) => (typeof words === "string" ? said.includes(words) : words.test(said)),
     `${cell} says ${words}`,
-    patience,
   );
 }
 

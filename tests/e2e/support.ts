@@ -18,8 +18,10 @@ const FLAGS = [
   "--disable-component-update",
   "--disable-sync",
 ];
-/** A demo study is simulated, written and estimated on a machine that may have more to do. */
-const START_MS = 170_000;
+/** How long anything is waited for: long, because the machine may have more to do; what fails for good costs it once. */
+export const PATIENCE = 90_000;
+/** A demo study is simulated, written and estimated. */
+const START_PATIENCE = 3 * PATIENCE;
 
 export const PASSPHRASE = "the levy on sweet drinks";
 export const ILSE = { name: "Ilse Marchetti", email: "ilse.marchetti@vihe.example" };
@@ -80,7 +82,7 @@ export class Product {
     });
     this.#child = child;
     await new Promise<void>((ready, failed) => {
-      const patience = setTimeout(() => failed(new Error("The program did not say that it is open.")), START_MS);
+      const patience = setTimeout(() => failed(new Error("The program did not say that it is open.")), START_PATIENCE);
       child.stdout?.on("data", (words: Buffer) => {
         if (!words.toString().includes("Tangency is open at")) return;
         clearTimeout(patience);
@@ -115,8 +117,10 @@ export class Product {
   }
 }
 
-export function openBrowser(): Promise<Browser> {
-  return chromium.launch({ executablePath: BROWSER, args: FLAGS });
+export async function openBrowser(): Promise<Browser> {
+  const browser = await chromium.launch({ executablePath: BROWSER, args: FLAGS });
+  browser.on("context", (context) => context.setDefaultTimeout(PATIENCE));
+  return browser;
 }
 
 /** Someone with a browser profile of their own, signed in through the page. */
