@@ -1,8 +1,12 @@
 import { screen } from "@testing-library/react";
 import { afterEach, describe, expect, it, vi } from "vitest";
+import { AskAccountForm } from "../../../src/features/accounts/ask-account-form.tsx";
 import { CreateAccountForm } from "../../../src/features/accounts/create-account-form.tsx";
 import { budgetPath, indifferencePath, type Preferences } from "../../../src/features/accounts/indifference-curves.ts";
+import RemoveAccountDialog from "../../../src/features/accounts/remove-account-dialog.tsx";
+import { SessionList } from "../../../src/features/accounts/session-list.tsx";
 import { SignInForm } from "../../../src/features/accounts/sign-in-form.tsx";
+import { ApiRefusal } from "../../../src/lib/api.ts";
 import { answering, Refused, renderPart } from "../answering.tsx";
 
 afterEach(() => vi.unstubAllGlobals());
@@ -64,24 +68,85 @@ describe("signing in", () => {
 });
 
 describe("creating an account", () => {
-  it("names each field that will not do, and both numbers", async () => {
-    const asked = answering({});
-    const { user } = renderPart(<CreateAccountForm onSignedIn={() => {}} />);
+  const part = (onCreate = vi.fn(), error: unknown = null) => (
+    <CreateAccountForm
+      email="nora.lind@vihe.example"
+      words="Create the account"
+      isPending={false}
+      error={error}
+      onCreate={onCreate}
+    />
+  );
+
+  it("begins with the address, and says the same whatever it belongs to", async () => {
+    const asked = answering({
+      "GET /api/installation": { ...installation, mail: "post box" },
+      "POST /api/account-links": undefined,
+    });
+    const { user } = renderPart(<AskAccountForm />);
+    await user.type(await screen.findByLabelText("Email"), "nora.lind{Enter}");
+    expect(await screen.findByRole("alert")).toHaveTextContent("An e-mail address looks like name@place.example.");
+    await user.type(screen.getByLabelText("Email"), "@vihe.example{Enter}");
+    expect(await screen.findByRole("status")).toHaveTextContent("A message is on its way to nora.lind@vihe.example.");
+    expect(await screen.findByText(/lie in a local post box/)).toBeInTheDocument();
+    expect(asked.find(({ method }) => method === "POST")?.body).toEqual({ email: "nora.lind@vihe.example" });
+  });
+
+  it("names each field that will not do, and both numbers; the address is not to be changed", async () => {
+    const onCreate = vi.fn();
+    const { user } = renderPart(part(onCreate));
     await user.type(await screen.findByLabelText("Passphrase"), "too short");
     await user.click(screen.getByRole("button", { name: "Create the account" }));
     expect(await screen.findByText("The passphrase has 9 characters and needs at least 10.")).toBeInTheDocument();
     expect(screen.getByLabelText("Name")).toBeInvalid();
-    expect(screen.getByLabelText("Email")).toBeInvalid();
-    expect(asked).toEqual([]);
+    expect(screen.getByLabelText("Email")).toHaveAttribute("readonly");
+    expect(onCreate).not.toHaveBeenCalled();
   });
 
   it("tells what the installation refuses", async () => {
-    answering({ "POST /api/auth/sign-up/email": new Refused(422, "There is an account with this address already.") });
-    const { user } = renderPart(<CreateAccountForm onSignedIn={() => {}} />);
-    await user.type(await screen.findByLabelText("Name"), "Nora Lind");
-    await user.type(screen.getByLabelText("Email"), "nora.lind@vihe.example");
-    await user.type(screen.getByLabelText("Passphrase"), "quite a long one{Enter}");
+    renderPart(part(vi.fn(), new ApiRefusal(409, "conflict", "There is an account with this address already.")));
     expect(await screen.findByRole("alert")).toHaveTextContent("There is an account with this address already.");
+  });
+});
+
+describe("sessions", () => {
+  const now = new Date().toISOString();
+  const session = (id: string, browser: string, isThis = false) => ({ id, browser, since: now, lastUsed: now, isThis });
+
+  it("are ended one by one or all others at once, never the one in use", async () => {
+    const asked = answering({ "DELETE /api/account/sessions/b": undefined, "DELETE /api/account/sessions": undefined });
+    const sessions = [
+      session("a", "Firefox on Linux", true),
+      session("b", "Safari on a Mac"),
+      session("c", "Edge on Windows"),
+    ];
+    const { user } = renderPart(<SessionList sessions={sessions} />);
+    expect(await screen.findByText("this one")).toBeInTheDocument();
+    expect(screen.queryByRole("button", { name: "End Firefox on Linux" })).not.toBeInTheDocument();
+    await user.click(screen.getByRole("button", { name: "End Safari on a Mac" }));
+    await user.click(await screen.findByRole("button", { name: "End all 2 others" }));
+    await vi.waitFor(() =>
+      expect(asked.map(({ path }) => path)).toEqual(["/api/account/sessions/b", "/api/account/sessions"]),
+    );
+  });
+});
+
+describe("deleting the account", () => {
+  it("waits for studies to be handed over, and names them", async () => {
+    const account = {
+      id: "i",
+      name: "Ilse",
+      email: "ilse@vihe.example",
+      isConfirmed: true,
+      since: new Date().toISOString(),
+      sessions: [],
+      toHandOver: [{ studyId: "s", title: "Levy", others: 2 }],
+      alone: [],
+    };
+    renderPart(<RemoveAccountDialog account={account} onClose={() => {}} onRemoved={() => {}} />);
+    expect(await screen.findByRole("link", { name: "Levy" })).toHaveAttribute("href", "/studies/s");
+    expect(screen.getByText("2 others in it")).toBeInTheDocument();
+    expect(screen.queryByLabelText("Passphrase")).not.toBeInTheDocument();
   });
 });
 
