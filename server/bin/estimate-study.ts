@@ -1,4 +1,3 @@
-import { createReadStream } from "node:fs";
 import { readdir } from "node:fs/promises";
 import { basename, dirname, resolve } from "node:path";
 import type { Finding } from "../../shared/schemas/cell.ts";
@@ -12,9 +11,10 @@ import { parseStudyFile } from "../../shared/study/study-file.ts";
 import { sortByReading } from "../../shared/study/topology.ts";
 import { runData, runElasticities, runSlutsky, runSystem, runTests, runText } from "../engine/cells/index.ts";
 import type { PreparedData, UploadTable } from "../engine/columns/prepared-data.ts";
-import { readCsv } from "../engine/columns/read-csv.ts";
+import { readTable } from "../engine/columns/read-table.ts";
 import { Refusal } from "../engine/refusal.ts";
 import type { RunControl } from "../engine/run.ts";
+import { withFileOnDisk } from "./file-on-disk.ts";
 
 /** Something to mend, with the cell and key it is about: "base.form"; none for the file as a whole. */
 export interface Complaint extends Pick<Problem, "sentence" | "place"> {
@@ -87,7 +87,8 @@ async function readUploads(names: readonly unknown[], path: string, control: Run
   const problems = new Map<string, Problem[]>();
   for (const name of new Set(names.filter((one) => typeof one === "string"))) {
     try {
-      const { table, columns } = await readCsv(createReadStream(resolve(dirname(path), name)), name, control);
+      const whole = resolve(dirname(path), name);
+      const { table, columns } = await withFileOnDisk(whole, (file) => readTable(file, name, { control }));
       tables.set(name, table);
       shapes.push({ name, sha256: table.sha256, rows: table.rows, columns });
     } catch (error) {
