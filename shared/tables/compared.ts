@@ -204,9 +204,10 @@ export function largestDifference(
   if (!pair?.left || !pair.right) return undefined;
   const kind = label === "Expenditure" ? "expenditure" : "own-price";
   const [one, other] = [pair.left, pair.right].map(({ value }) => printFixed(value, decimals));
-  const least = 10 ** -decimals;
-  if (sizes[place] < least) return `The ${kind} elasticities differ by less than ${printFixed(least, decimals)} for every good.`;
-  return `The ${kind} elasticities differ by ${printFixed(sizes[place], decimals)} at most: ${goods[place]}, ${one} in ${left} and ${other} in ${right}.`;
+  const by = printFixed(sizes[place], decimals);
+  if (Number(by) === 0) return `The ${kind} elasticities agree to ${decimals} decimals for every good.`;
+  if (one === other) return `The ${kind} elasticities differ by ${by} at most, for ${goods[place]}.`;
+  return `The ${kind} elasticities differ by ${by} at most: ${goods[place]}, ${one} in ${left} and ${other} in ${right}.`;
 }
 
 /** What is said of two systems that do not rest on the same rows of the same data; nothing where they do. */

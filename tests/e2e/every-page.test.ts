@@ -112,6 +112,22 @@ const PLACES: readonly Place[] = [
     },
     signedIn: true,
   },
+  {
+    name: "side-by-side",
+    path: () => `/studies/${studyId}/compare/${ids.get("base")}/${ids.get("linear")}`,
+    ready: (page) => page.getByRole("group", { name: "Elasticities side by side" }).waitFor(),
+    signedIn: true,
+  },
+  {
+    name: "history",
+    path: () => `/studies/${studyId}/history`,
+    ready: async (page) => {
+      await page.getByText(/added survey/).waitFor();
+      await page.getByRole("button", { name: "Keep the study as it stands" }).click();
+      await page.getByLabel("Name").waitFor();
+    },
+    signedIn: true,
+  },
   { name: "tests-cell", path: cell("laws"), ready: heading("All statistics"), signedIn: true },
   {
     name: "slutsky-cell",
@@ -261,7 +277,16 @@ it("has none in what is laid over a study either", async () => {
   await page.goto(`/studies/${studyId}`);
   await page.getByRole("heading", { level: 1 }).waitFor();
   await settled(page);
-  for (const entry of ["People", "Uploads", "Remarks", "Referee copies", "Journal", "Settings", "Delete the study"]) {
+  for (const entry of [
+    "People",
+    "Uploads",
+    "Remarks",
+    "Referee copies",
+    "Journal",
+    "Settings",
+    "Keys",
+    "Delete the study",
+  ]) {
     await choose(page, entry);
     await page.getByRole("dialog").waitFor();
     for (const theme of THEMES) {

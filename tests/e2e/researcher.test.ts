@@ -400,6 +400,37 @@ it("looks at rows, replaces the file by a new version, and pins the old", async 
   expect(await textIn(await openText(page, "purchases"))).toContain("version: 1");
 });
 
+it("copies a system by a key, sets both side by side, and folds and lists by keys", async () => {
+  await bandOf(page, "base").focus();
+  await page.keyboard.press("d");
+  await untilSays(page, "base 3", /^Current/);
+  await bandOf(page, "base 3").focus();
+  await page.keyboard.press("b");
+  await page.waitForURL((url) => url.pathname.includes("/compare/"));
+  await page.getByLabel("On the right").selectOption("base");
+  await page.getByText("Both ask the same.").waitFor();
+  await page.getByText("The expenditure elasticities agree to 3 decimals for every good.").waitFor();
+  const said = page.getByText("No likelihood ratio is formed: base 3 and base are the same system");
+  await said.waitFor();
+  const table = page.getByRole("group", { name: "Coefficients of the share equations side by side" });
+  expect(await table.getByRole("rowheader").allTextContents()).toContainEqual(expect.stringMatching(/difference$/));
+  await said.click();
+  await page.keyboard.press("Escape");
+  await bandOf(page, "base 3").focus();
+  await page.keyboard.press("?");
+  const sheet = page.getByRole("dialog", { name: "Keys" });
+  await sheet.getByText("adds a copy of the cell below it").waitFor();
+  await page.keyboard.press("Escape");
+  await bandOf(page, "base 3").focus();
+  await page.keyboard.press("c");
+  await page.reload();
+  await bandOf(page, "base 3").getByRole("button", { name: "Unfold base 3" }).click();
+  await bandOf(page, "base 3").focus();
+  await page.keyboard.press("Delete");
+  await page.getByRole("button", { name: "Undo the removal of base 3" }).waitFor();
+  await page.getByRole("button", { name: "Leave it so" }).click();
+});
+
 it("signs out, and the study is closed", async () => {
   const [study, asked] = [studyPath(), studyApi()];
   expect(watched.outside).toEqual([]);
