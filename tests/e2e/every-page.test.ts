@@ -141,6 +141,7 @@ const PLACES: readonly Place[] = [
     ready: (page) => page.locator("#price-elasticities").waitFor(),
     signedIn: true,
   },
+  { name: "text-cell", path: cell("argument"), ready: heading("Quoted numbers"), signedIn: true },
   { name: "referee-copy", path: copy("with authors"), ready: heading(/^Largest difference/), signedIn: false },
   { name: "blinded-copy", path: copy("without authors"), ready: heading(/^Largest difference/), signedIn: false },
   {

@@ -6,7 +6,7 @@ import type { SlutskyFinding } from "../../shared/schemas/slutsky.ts";
 import type { StudyStatus } from "../../shared/schemas/status.ts";
 import type { SystemFinding } from "../../shared/schemas/system.ts";
 import { purchasesCsv } from "../support/purchases-csv.ts";
-import { bandOf, eventually, openText, textIn, wordsOf } from "./editing.ts";
+import { bandOf, eventually, openText, textIn, typeAt, wordsOf } from "./editing.ts";
 import { addCell, choose, findingOf, fromApi, rewriteLine, untilSays } from "./study-page.ts";
 import { linkSentTo, openBrowser, Product } from "./support.ts";
 import { watch } from "./watch.ts";
@@ -335,6 +335,24 @@ it("cancels an estimation that takes long, and can estimate again", async () => 
   await untilSays(page, "base 2", /^Current.*Price terms/);
   const { finding } = await findingFromApi<SystemFinding>("base 2");
   near(finding.logLikelihood, reference.laAids.both.logLikelihood, 1e-9);
+});
+
+it("quotes a finding in prose: the number stays true, and says so when it is out of date", async () => {
+  await addCell(page, "text", "argument");
+  await typeAt("end", await openText(page, "argument"), "On {base: rows} weeks, with $T$ so large.");
+  await untilSays(
+    page,
+    "argument",
+    /Current1 quoted number, from a current finding.*On 338 weeks, with .*T.* so large/,
+  );
+  expect(await bandOf(page, "argument").locator("math").count()).toBe(1);
+  const text = await openText(page, "base");
+  await rewriteLine(text, "form:", "form: la-aids");
+  const said = await untilSays(page, "argument", /Out of datethe quoted number is out of date/);
+  expect(said).toMatch(/338 is out of date: base was found .*form changed from aids to la-aids/);
+  await rewriteLine(text, "form:", "form: aids");
+  await untilSays(page, "argument", /^Current/);
+  expect(await wordsOf(bandOf(page, "base").locator(".paper-words"))).toContain("(Deaton and Muellbauer 1980)");
 });
 
 it("invites a coauthor by e-mail, who makes an account on the way and is in the study", async () => {

@@ -10,6 +10,8 @@ import { SystemOpen } from "../../src/cells/system/view.tsx";
 import { CELL_TABLES } from "../../src/cells/tables.ts";
 import { TestsBand } from "../../src/cells/tests/band.tsx";
 import { TestsOpen } from "../../src/cells/tests/view.tsx";
+import { TextBand } from "../../src/cells/text/band.tsx";
+import { TextOpen } from "../../src/cells/text/view.tsx";
 
 /** The parts of each kind that show a finding, here without loading them one by one. */
 export const CELL_PARTS = {
@@ -18,4 +20,5 @@ export const CELL_PARTS = {
   tests: { Band: TestsBand, Open: TestsOpen, tables: CELL_TABLES.tests },
   elasticities: { Band: ElasticitiesBand, Open: ElasticitiesOpen, tables: CELL_TABLES.elasticities },
   slutsky: { Band: SlutskyBand, Open: SlutskyOpen, Aside: HowChecked, tables: CELL_TABLES.slutsky },
+  text: { Band: TextBand, Open: TextOpen, tables: CELL_TABLES.text },
 };

@@ -1,5 +1,5 @@
 import type { Finding } from "../../schemas/cell.ts";
-import { isQuotable, QUOTABLE_WORDS, QUOTED_PARTS } from "../../schemas/quotable.ts";
+import { isQuotable, QUOTED_PARTS } from "../../schemas/quotable.ts";
 import { type Asked, NothingToQuote, plain, type QuotedAnswer } from "./answer.ts";
 import { DATA_QUOTES } from "./data.ts";
 import { ELASTICITIES_QUOTES } from "./elasticities.ts";
@@ -30,10 +30,7 @@ export function quoteOf(
 ): QuotedAnswer | { readonly absent: string } {
   const quotes = isQuotable(finding.kind) ? QUOTES[finding.kind] : {};
   const quote = canonical !== undefined && Object.hasOwn(quotes, canonical) ? quotes[canonical] : undefined;
-  if (quote === undefined) {
-    const offered = isQuotable(finding.kind) ? `: there are ${QUOTABLE_WORDS[finding.kind].join(", ")}` : "";
-    return { absent: `It has no such number${offered}.` };
-  }
+  if (quote === undefined) return { absent: "It has no such number." };
   const part = QUOTED_PARTS.find((one) => one === plain(rest.at(-1) ?? ""));
   try {
     return quote(finding, { words: part ? rest.slice(0, -1) : rest, part });

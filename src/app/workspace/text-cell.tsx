@@ -39,16 +39,16 @@ export default function TextCell({ studyId, standing, beside, onChange, opened }
     [standings, opened, studyId],
   );
   const isEmpty = cell.source.trim() === "";
-  const actions = !isEmpty && (
+  const copy = finding && !isEmpty && <CopyText finding={finding} name={cell.name} />;
+  const actions = !isEmpty && !opened && (
     <>
-      {!opened && (
-        <LinkWord to={pages.cell(studyId, cell.id)}>
-          Open <span className="sr-only">of {cell.name}</span>
-        </LinkWord>
-      )}
-      {finding && <CopyText finding={finding} name={cell.name} />}
+      <LinkWord to={pages.cell(studyId, cell.id)}>
+        Open <span className="sr-only">of {cell.name}</span>
+      </LinkWord>
+      {copy}
     </>
   );
+  const problems = toldBesides(standing, finding);
   const shown = finding ? { ...standing, state: stateOf(standing, finding.quotations) } : standing;
   return (
     <>
@@ -69,9 +69,10 @@ export default function TextCell({ studyId, standing, beside, onChange, opened }
           <FindingBand finding={finding} />
         )}
       </WhereCellsAreProvider>
-      {standing.problems.length > 0 && (
+      {opened && <div className="no-print type-small mt-5">{copy}</div>}
+      {problems.length > 0 && (
         <div className="mt-5">
-          <ProblemList standing={standing} onMend={onChange} />
+          <ProblemList standing={{ ...standing, problems }} onMend={onChange} />
         </div>
       )}
     </>
@@ -82,6 +83,15 @@ export default function TextCell({ studyId, standing, beside, onChange, opened }
 function stateOf({ state }: Standing, quotations: readonly QuotedNumber[]): Standing["state"] {
   if (quotations.some(({ standing }) => standing === "absent")) return "failed";
   return state === "current" && quotations.some(({ standing }) => standing === "out of date") ? "out of date" : state;
+}
+
+/** What is wrong beside the numbers that are not there, which say so themselves; and what could be put in their place. */
+function toldBesides({ problems }: Standing, finding: TextFinding | undefined): Standing["problems"] {
+  const absent = finding?.quotations.filter(({ standing }) => standing === "absent") ?? [];
+  return problems.filter(({ place, nearest }) => {
+    const isTold = place && absent.some(({ from, to }) => from <= place.from && place.from <= to);
+    return nearest !== undefined || !isTold;
+  });
 }
 
 function NothingWritten({ readOnly }: { readOnly: boolean }) {

@@ -26,6 +26,17 @@ export function withoutMarks(
   });
 }
 
+/**
+ * Quotes and lists opened on one line, one within the other, down to a depth that any page can draw; what stands deeper
+ * is text. Readers of Markdown take a time that grows with the square of the depth.
+ */
+export function shallow(marked: string): string {
+  return marked.replace(OPENED_DEEPLY, "$1\\$2");
+}
+
+const OPENED_DEEPLY =
+  /^((?:[ \t]*(?:>|[-+*](?=[ \t])|\d{1,9}[.)](?=[ \t]))){12}[ \t]*)(?=>|[-+*][ \t]|\d{1,9}[.)][ \t])(\D?)/gm;
+
 /** Text between marks, and the places of the quotations. */
 export function atMarks(marked: string): (string | number)[] {
   return marked.split(MARK).flatMap((part, i): (string | number)[] => {

@@ -4,7 +4,7 @@ import remarkGfm from "remark-gfm";
 import type { QuotedNumber as QuotedNumberOfText, TextFinding } from "../../../shared/schemas/text.ts";
 import { TableScroller } from "../../components/table-scroller.tsx";
 import { marksInTextOnly, noDeeper, proseOnly, quotationsInPlace, safeAddress } from "./markdown.ts";
-import { withMarks } from "./marked-text.ts";
+import { shallow, withMarks } from "./marked-text.ts";
 import { Quotation } from "./quotation.tsx";
 
 /** What reads and draws mathematics, where a text has any. */
@@ -45,7 +45,7 @@ export const Prose = memo(function Prose({ finding, mathematics = NO_MATHEMATICS
           urlTransform={safeAddress}
           components={ELEMENTS}
         >
-          {withMarks(text, quotations)}
+          {shallow(withMarks(text, quotations))}
         </Markdown>
       </Quotations>
     </div>

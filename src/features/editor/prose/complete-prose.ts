@@ -6,6 +6,7 @@ import {
 } from "@codemirror/autocomplete";
 import { isQuotable, QUOTED_PARTS, QUOTED_STATISTICS } from "../../../../shared/schemas/quotable.ts";
 import { HYPOTHESIS_NAMES } from "../../../../shared/schemas/tests.ts";
+import { parseCell } from "../../../../shared/study/parse-cell.ts";
 import { proseSpans } from "../../../../shared/study/prose-spans.ts";
 import { goodsNeeded, QUOTABLE, type Quotable, quotable } from "../../../../shared/study/quotable.ts";
 import { goodsOf, type QuotedStudy } from "../../../../shared/study/quotation-problems.ts";
@@ -48,8 +49,12 @@ function words(name: string, asked: string, subject: EditorSubject): Completion[
   if (!isQuotable(kind)) return [];
   const [first = "", ...rest] = asked.split(",").map((word) => word.trim());
   if (rest.length === 0) {
-    return QUOTABLE[kind].map(({ word, says, needs }) => ({
+    const { form } = parseCell(kind, all.find((cell) => cell.name === name)?.source ?? "").written;
+    const own = QUOTABLE[kind].filter(({ word }) => kind !== "system" || (FORMS[word]?.includes(String(form)) ?? true));
+    return own.map(({ word, says, needs }, place) => ({
       label: word,
+      // In the order of the vocabulary, what is quoted most first.
+      boost: -place,
       detail: says,
       type: "word",
       apply: needs === "nothing" ? word : goingOn(", "),
@@ -58,6 +63,20 @@ function words(name: string, asked: string, subject: EditorSubject): Completion[
   const entry = quotable(kind, first);
   return entry ? after(entry, rest.length, { name, first: rest[0] }, studyOf(subject)) : [];
 }
+
+const ALMOST_IDEAL = ["la-aids", "aids", "quaids"];
+/** Coefficients that only some systems have. */
+const FORMS: Readonly<Record<string, readonly string[]>> = {
+  alpha: ALMOST_IDEAL,
+  beta: ALMOST_IDEAL,
+  gamma: ALMOST_IDEAL,
+  lambda: ["quaids"],
+  committed: ["les"],
+  marginal: ["les", "rotterdam"],
+  pi: ["rotterdam"],
+  constant: ["easi"],
+  price: ["easi"],
+};
 
 function studyOf({ cellsNow, uploads }: EditorSubject): QuotedStudy {
   const resolved = resolveCells(cellsNow(), uploads);
