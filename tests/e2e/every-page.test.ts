@@ -303,6 +303,28 @@ it("has none in what is laid over a study either", async () => {
   await page.context().close();
 });
 
+it("has none in the rows of an upload and of a caution", async () => {
+  const page = await openPage(true);
+  const watched = watch(page, product.origin);
+  await page.goto(cell("survey")());
+  const outliers = page.getByRole("list", { name: "Look at the rows of outliers" }).getByRole("button").first();
+  const lists = { "rows of an upload": page.getByRole("button", { name: /^Look at the rows of .*\.csv$/ }), outliers };
+  for (const [name, button] of Object.entries(lists)) {
+    await button.click();
+    await page.getByRole("dialog").getByRole("table").waitFor();
+    for (const theme of THEMES) {
+      await turn(page, theme);
+      await settled(page);
+      await page.screenshot({ path: `${PICTURES}${name.replaceAll(" ", "-")}-${theme}.png` });
+      expect.soft(await faultsOf(page), `${name}, ${theme}`).toEqual([]);
+    }
+    await page.keyboard.press("Escape");
+    await page.getByRole("dialog").waitFor({ state: "hidden" });
+  }
+  expect.soft(watched.takeFaults()).toEqual([]);
+  await page.context().close();
+});
+
 it("has none where remarks are folded to letters, opened over the finding and written", async () => {
   const page = await openPage(true);
   const watched = watch(page, product.origin);
