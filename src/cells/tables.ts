@@ -3,13 +3,11 @@ import { coefficientTable } from "../../shared/tables/coefficients.ts";
 import { dataDescriptionTable } from "../../shared/tables/data-description.ts";
 import { eigenvalueTable } from "../../shared/tables/eigenvalues.ts";
 import { elasticityTables } from "../../shared/tables/elasticities.ts";
-import { equationsOf, equationTestsTable } from "../../shared/tables/equation-tests.ts";
 import { firstStepTables } from "../../shared/tables/first-steps.ts";
-import { revealedOf, revealedTable } from "../../shared/tables/revealed-preference.ts";
 import { rowAccountingTable } from "../../shared/tables/row-accounting.ts";
 import { compensatedTable, slutskyTable } from "../../shared/tables/slutsky-matrix.ts";
 import type { LabelledTable } from "../../shared/tables/table.ts";
-import { testsTable } from "../../shared/tables/tests.ts";
+import { testsTables } from "../../shared/tables/tests-tables.ts";
 import { quotedNumbersTable } from "../../shared/tables/text-finding.ts";
 
 /** The tables of a finding of each kind, the one to copy first. */
@@ -21,12 +19,3 @@ export const CELL_TABLES: { readonly [K in CellKind]: (finding: FindingOf<K>) =>
   slutsky: (finding) => [slutskyTable(finding, finding.form), eigenvalueTable(finding), compensatedTable(finding)],
   text: (finding) => [quotedNumbersTable(finding)],
 };
-
-function testsTables(finding: FindingOf<"tests">): LabelledTable[] {
-  const revealed = revealedOf(finding);
-  return [
-    ...(finding.tests.length > 0 ? [testsTable(finding)] : []),
-    ...(equationsOf(finding).length > 0 ? [equationTestsTable(finding)] : []),
-    ...(revealed ? [revealedTable(revealed)] : []),
-  ];
-}

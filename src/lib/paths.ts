@@ -72,6 +72,8 @@ export const api = {
     `${study(studyId)}/checkpoints/${part(checkpointId)}/study.yaml`,
   checkpointReturn: (studyId: string, checkpointId: string) =>
     `${study(studyId)}/checkpoints/${part(checkpointId)}/return`,
+  sealedCopy: (token: string) => `/api/referee/${part(token)}`,
+  newestCopy: (token: string) => `/api/referee/${part(token)}/newest`,
   refereeCopies: (studyId: string) => `${study(studyId)}/referee-copies`,
   refereeLink: (studyId: string, copyId: string) => `${study(studyId)}/referee-copies/${part(copyId)}/link`,
   refereeCopy: (studyId: string, copyId: string) => `${study(studyId)}/referee-copies/${part(copyId)}`,

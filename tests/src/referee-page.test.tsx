@@ -9,6 +9,8 @@ import { parseStudyFile } from "../../shared/study/study-file.ts";
 import { RefereePage } from "../../src/app/pages/referee.tsx";
 import { sealTangents } from "../../src/features/referee-copy/seal.tsx";
 import { verifyCopy } from "../../src/workers/verify-copy.ts";
+import { exampleFindings } from "../support/findings.ts";
+import { sampleElasticities } from "../support/sample-elasticities.ts";
 import { sampleContent, sampleCopy } from "../support/sample-findings.ts";
 
 const copy = sampleCopy();
@@ -64,6 +66,79 @@ const readBlob = (blob: Blob) =>
     reader.onload = () => resolve(String(reader.result));
     reader.readAsText(blob);
   });
+
+/** A copy with further findings of every kind that can be sealed; the second matrix and system are the first once more. */
+function sealedWithMore(): RefereeCopy {
+  const content = structuredClone(sampleContent());
+  const { slutsky, system } = content;
+  content.also = [
+    { kind: "slutsky", name: "again", finding: structuredClone(slutsky) },
+    { kind: "system", name: "rival", finding: structuredClone(system) },
+    { kind: "elasticities", name: "thirds", finding: sampleElasticities(3) },
+    { kind: "elasticities", name: "at the mean", finding: sampleElasticities(1) },
+    { kind: "tests", name: "laws", finding: exampleFindings().tests },
+  ];
+  return sampleCopy(content);
+}
+
+describe("further findings", () => {
+  it("stand below the matrix under their names, each heading for itself, and are computed again where they can be", async () => {
+    open(sealedWithMore());
+    expect(await screen.findByText("Recomputed in this browser")).toBeInTheDocument();
+    await screen.findByText(/^Sealed with the matrix\./, {}, { timeout: 30_000 });
+    const headings = [...document.querySelectorAll("main > section > h2")].map(({ textContent }) => textContent);
+    expect(headings).toEqual(
+      expect.arrayContaining([
+        "again slutsky",
+        "rival system",
+        "thirds elasticities",
+        "at the mean elasticities",
+        "laws tests",
+      ]),
+    );
+    expect(screen.getByRole("row", { name: /^again matrix, errors, eigenvalues, checks 0/ })).toBeInTheDocument();
+    expect(screen.getByRole("row", { name: /^rival coefficients as tabled 0/ })).toBeInTheDocument();
+    // Each view is loaded when it is first shown.
+    await vi.waitFor(
+      () => expect(document.body.textContent).not.toMatch(/Opening (again|rival|thirds|at the|laws)/),
+      30_000,
+    );
+    const ids = [...document.querySelectorAll("[id]")].map(({ id }) => id);
+    expect(ids.filter((id, place) => ids.indexOf(id) !== place)).toEqual([]);
+  }, 60_000);
+
+  it("are found out when changed after sealing", async () => {
+    const changed = sealedWithMore();
+    const [again, rival] = changed.content.also ?? [];
+    if (again?.kind !== "slutsky" || rival?.kind !== "system") throw new Error("the copy has other findings");
+    again.finding.at.share[0][1] += 0.002;
+    rival.finding.coefficients[0].estimate += 0.003;
+    open(changed);
+    expect(await screen.findByText("Recomputed in this browser, and it does not agree")).toBeInTheDocument();
+    expect(screen.getByRole("row", { name: /^again / })).toHaveTextContent("differs, 0.0020");
+    expect(screen.getByRole("row", { name: /^rival / })).toHaveTextContent("differs, 0.0030");
+  });
+
+  it("are taken away as tables like the rest", async () => {
+    const { user } = open(sealedWithMore());
+    await user.click(await screen.findByRole("button", { name: "thirds, elasticities" }));
+    await user.click(screen.getByRole("button", { name: "Tables" }));
+    expect(saved[0].name).toMatch(/-also-3-elasticities\.csv$/);
+    expect(await saved[0].text).toContain("lowest third");
+    expect(await saved[1].text).toContain("highest third");
+  });
+});
+
+describe("a copy that has been replaced", () => {
+  it("says so and stays; the newer one is one press away", async () => {
+    const newer = { sealedAt: "2032-04-01T08:00:00.000Z", fingerprint: "f".repeat(64) };
+    const { fetched, user } = open({ ...copy, newer });
+    const notice = await screen.findByRole("complementary", { name: "A newer copy" });
+    expect(notice).toHaveTextContent("on 1 April 2032 at 08:00. This one stays as it was sealed.");
+    await user.click(within(notice).getByRole("button", { name: "Read the newer copy" }));
+    expect(fetched.mock.lastCall?.[0 as never]).toBe("/api/referee/a%20token%2Fwith%20a%20slash/newest");
+  });
+});
 
 describe("the referee's page", () => {
   it("asks for the copy alone, by its token, and needs no account", async () => {

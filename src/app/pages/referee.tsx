@@ -1,3 +1,4 @@
+import { lazy, Suspense, useState } from "react";
 import { useParams } from "react-router-dom";
 import { SealedMatrix } from "../../cells/slutsky/sealed-matrix.tsx";
 import { SealedVerdicts } from "../../cells/slutsky/sealed-verdicts.tsx";
@@ -10,21 +11,34 @@ import { ApiRefusal, sentenceOf } from "../../lib/api.ts";
 import { usePageTitle } from "../../lib/page-title.ts";
 import { Waiting } from "../waiting.tsx";
 
+const AlsoSealed = lazy(async () => ({ default: (await import("./also-sealed.tsx")).AlsoSealed }));
+
 /** The sealed copy behind a link. Whoever has the link may read it; nothing else of the study is asked for. */
 export function RefereePage({ token, verify }: { token: string; verify?: Verify }) {
-  const { data: copy, error } = useRefereeCopy(token);
+  const [newest, setNewest] = useState(false);
+  const { data: copy, error, refetch } = useRefereeCopy(token, newest);
   usePageTitle(copy && "Referee copy", copy?.content.study.title);
-  if (error instanceof ApiRefusal && error.status !== 0) return <LinkOpensNothing />;
-  if (error) return <LinkOpensNothing because={sentenceOf(error)} />;
+  const isAnswer = error instanceof ApiRefusal && (error.status === 400 || error.status === 404);
+  if (error)
+    return <LinkOpensNothing {...(!isAnswer && { because: sentenceOf(error), onAgain: () => void refetch() })} />;
   if (!copy) return <Waiting />;
-  const { slutsky, system } = copy.content;
+  const { slutsky, system, also } = copy.content;
   return (
     <SealedCopy
+      key={copy.fingerprint}
       copy={copy}
       verify={verify}
       verdicts={<SealedVerdicts finding={slutsky} />}
       matrix={<SealedMatrix finding={slutsky} />}
       coefficients={<CoefficientView finding={system} />}
+      also={
+        also && (
+          <Suspense>
+            <AlsoSealed also={also} />
+          </Suspense>
+        )
+      }
+      onNewer={() => setNewest(true)}
     />
   );
 }

@@ -1,3 +1,4 @@
+import { useId } from "react";
 import type { ElasticityGroup } from "../../../shared/schemas/elasticities.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { listed } from "../../../shared/tables/phrases.ts";
@@ -17,10 +18,11 @@ function respondsToIncome({ normal, incomeNeutral, giffen }: ElasticityGroup["cl
 
 /** How each good of a group answers expenditure, and which others replace or accompany it, beyond doubt. */
 export function ClassesView({ group }: { group: ElasticityGroup }) {
+  const id = useId();
   const goods = group.classes.map(({ good }) => good);
   return (
-    <section aria-labelledby="classes" className="space-y-2 border-line border-t pt-4">
-      <h2 id="classes" className="type-section">
+    <section aria-labelledby={id} className="space-y-2 border-line border-t pt-4">
+      <h2 id={id} className="type-section">
         Goods among each other
       </h2>
       <Table

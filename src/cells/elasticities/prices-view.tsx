@@ -1,4 +1,4 @@
-import { useState } from "react";
+import { useId, useState } from "react";
 import type { ElasticitiesFinding, ElasticityGroup } from "../../../shared/schemas/elasticities.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { entryOf, priceTable } from "../../../shared/tables/elasticities.ts";
@@ -25,13 +25,14 @@ const SAYS: Readonly<Record<Which, string>> = {
 
 /** All price elasticities of a group, uncompensated or compensated, with the pairs that are beyond doubt marked. */
 export function PricesView({ finding, group, below }: PricesProps) {
+  const id = useId();
   const [which, setWhich] = useState<Which>("uncompensated");
   const pairs = which === "compensated" ? group.net : group.gross;
   const kind = which === "compensated" ? "net" : "gross";
   return (
-    <section aria-labelledby="price-elasticities" className="space-y-2 border-line border-t pt-4">
+    <section aria-labelledby={id} className="space-y-2 border-line border-t pt-4">
       <div className="flex flex-wrap items-baseline justify-between gap-x-6 gap-y-1">
-        <h2 id="price-elasticities" className="type-section">
+        <h2 id={id} className="type-section">
           Price elasticities
         </h2>
         <SwitchWords

@@ -1,4 +1,4 @@
-import { useState } from "react";
+import { useId, useState } from "react";
 import { type ByGood, goodsTable, groupsTable } from "../../../shared/tables/elasticities.ts";
 import { elasticitiesSentence, whereOf } from "../../../shared/tables/elasticity-words.ts";
 import { capital } from "../../../shared/tables/phrases.ts";
@@ -20,6 +20,7 @@ const LABEL = "What theory says of the system";
 
 /** Elasticities in full: groups compared, then one group's goods, price elasticities and classes. */
 export function ElasticitiesOpen({ finding }: OpenProps<"elasticities">) {
+  const id = useId();
   const [which, setWhich] = useState<ByGood>("expenditure");
   const [below, setBelow] = useState<Below>("errors");
   const [wanted, setWanted] = useState(0);
@@ -52,8 +53,8 @@ export function ElasticitiesOpen({ finding }: OpenProps<"elasticities">) {
           {figure}
         </>
       )}
-      <section aria-labelledby="goods-of-group" className="space-y-2" aria-live="polite">
-        <h2 id="goods-of-group" className="type-section">
+      <section aria-labelledby={id} className="space-y-2" aria-live="polite">
+        <h2 id={id} className="type-section">
           {capital(whereOf(finding, group.name))}
         </h2>
         <GoodsView finding={finding} group={group} below={below} />

@@ -1,3 +1,4 @@
+import { useId } from "react";
 import type { Endogeneity } from "../../../shared/schemas/first-steps.ts";
 import { firstStageTable } from "../../../shared/tables/first-steps.ts";
 import { endogeneitySentences } from "../../../shared/tables/first-steps-words.ts";
@@ -14,11 +15,12 @@ function Coefficient({ estimate, standardError }: { estimate: number; standardEr
 
 /** The first stage of total expenditure, its residual in the share equations, and the test of exogeneity. */
 export function EndogeneityView({ endogeneity }: { endogeneity: Endogeneity }) {
+  const id = useId();
   const { firstStage, instruments, residual } = endogeneity;
   return (
-    <section aria-labelledby="endogeneity" className="border-line border-t pt-4">
+    <section aria-labelledby={id} className="border-line border-t pt-4">
       <div className="mb-2 flex flex-wrap items-baseline justify-between gap-x-6">
-        <h2 id="endogeneity" className="type-section">
+        <h2 id={id} className="type-section">
           Endogenous total expenditure
         </h2>
         <CopyTable table={firstStageTable(endogeneity)} />

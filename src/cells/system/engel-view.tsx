@@ -1,4 +1,4 @@
-import { useCallback } from "react";
+import { useCallback, useId } from "react";
 import { capital } from "../../../shared/study/words.ts";
 import { DECIMALS, printFixed } from "../../../shared/tables/numbers.ts";
 import { ChartNumbers } from "../../components/chart-numbers.tsx";
@@ -9,11 +9,12 @@ const HEIGHT = 380;
 
 /** Engel curves of all goods, large enough to read, with their numbers as a table. */
 export function EngelView({ finding }: { finding: EngelCurves }) {
+  const id = useId();
   const { engel, fitted } = finding;
   const figure = useCallback((colour: TokenColour) => engelFigure(finding, colour), [finding]);
   return (
-    <section aria-labelledby="engel" className="border-line border-t pt-4">
-      <h2 id="engel" className="type-section">
+    <section aria-labelledby={id} className="border-line border-t pt-4">
+      <h2 id={id} className="type-section">
         Engel curves
       </h2>
       <p className="type-small mb-2 text-ink2">

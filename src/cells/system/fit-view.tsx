@@ -1,4 +1,5 @@
 import type { ReactNode } from "react";
+import { useId } from "react";
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { curvatureFact } from "../../../shared/tables/curvature-words.ts";
@@ -19,12 +20,13 @@ function Fact({ label, children }: { label: string; children: ReactNode }) {
 
 /** Fit and convergence, and what the coefficients say of each good at the point of the checks. */
 export function FitView({ finding }: { finding: SystemFinding }) {
+  const [goodsId, fitId] = [useId(), useId()];
   const { convergence, durbinWatson, fitted } = finding;
   const number = (value: number) => printFixed(value, DECIMALS.statistic);
   return (
     <div className="grid gap-x-14 gap-y-6 border-line border-t pt-4 min-[1100px]:grid-cols-2">
-      <section aria-labelledby="elasticities">
-        <h2 id="elasticities" className="type-section mb-2">
+      <section aria-labelledby={goodsId}>
+        <h2 id={goodsId} className="type-section mb-2">
           By good
         </h2>
         <Table
@@ -53,8 +55,8 @@ export function FitView({ finding }: { finding: SystemFinding }) {
           })}
         />
       </section>
-      <section aria-labelledby="fit">
-        <h2 id="fit" className="type-section mb-2">
+      <section aria-labelledby={fitId}>
+        <h2 id={fitId} className="type-section mb-2">
           Fit and convergence
         </h2>
         <dl className="type-table">

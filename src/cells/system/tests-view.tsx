@@ -1,3 +1,4 @@
+import { useId } from "react";
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { DECIMALS, printCount, printFixed, printProbability } from "../../../shared/tables/numbers.ts";
@@ -28,10 +29,11 @@ export function TestsView({
   untested = [],
   standardErrors,
 }: Pick<SystemFinding, "tests" | "untested" | "standardErrors">) {
+  const id = useId();
   const hasQuadratic = tests.some(({ restriction }) => restriction === "quadratic terms zero");
   return (
-    <section aria-labelledby="tests" className="border-line border-t pt-4">
-      <h2 id="tests" className="type-section mb-2">
+    <section aria-labelledby={id} className="border-line border-t pt-4">
+      <h2 id={id} className="type-section mb-2">
         Tests of the theory
       </h2>
       {tests.length === 0 && untested.length === 0 && (

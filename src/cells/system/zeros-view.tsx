@@ -1,4 +1,5 @@
 import type { ReactNode } from "react";
+import { useId } from "react";
 import type { ZerosFinding } from "../../../shared/schemas/first-steps.ts";
 import { boughtByAll, probitTable } from "../../../shared/tables/first-steps.ts";
 import { zerosSentences } from "../../../shared/tables/first-steps-words.ts";
@@ -17,11 +18,12 @@ function shown(cell: TableCell, key: string): ReactNode {
 
 /** The probits of the goods that some rows do not buy, and what the two steps do to adding-up. */
 export function ZerosView({ zeros }: { zeros: ZerosFinding }) {
+  const id = useId();
   const table = probitTable(zeros);
   return (
-    <section aria-labelledby="zeros" className="border-line border-t pt-4">
+    <section aria-labelledby={id} className="border-line border-t pt-4">
       <div className="mb-2 flex flex-wrap items-baseline justify-between gap-x-6">
-        <h2 id="zeros" className="type-section">
+        <h2 id={id} className="type-section">
           Goods not bought, in two steps
         </h2>
         <CopyTable table={table} />

@@ -1,3 +1,4 @@
+import { useId } from "react";
 import type { TestsFinding } from "../../../shared/schemas/tests.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { equationsOf, equationTestsTable } from "../../../shared/tables/equation-tests.ts";
@@ -8,13 +9,14 @@ import { CopyTable } from "../copy-table.tsx";
 
 /** Homogeneity equation by equation: where a rejection comes from. */
 export function Equations({ finding }: { finding: TestsFinding }) {
+  const id = useId();
   const equations = equationsOf(finding);
   if (equations.length === 0) return null;
   const table = equationTestsTable(finding);
   return (
-    <section aria-labelledby="equations" className="border-line border-t pt-4">
+    <section aria-labelledby={id} className="border-line border-t pt-4">
       <div className="mb-2 flex flex-wrap items-baseline justify-between gap-x-6">
-        <h2 id="equations" className="type-section">
+        <h2 id={id} className="type-section">
           Homogeneity, equation by equation
         </h2>
         <CopyTable table={table} />

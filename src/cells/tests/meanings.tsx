@@ -1,3 +1,4 @@
+import { useId } from "react";
 import type { TestsFinding } from "../../../shared/schemas/tests.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { printProbability } from "../../../shared/tables/numbers.ts";
@@ -25,10 +26,11 @@ function Deciding({ test, finding }: { test: AnyTest; finding: TestsFinding }) {
 
 /** What each test means, in words, and why what is missing is missing. */
 export function Meanings({ finding }: { finding: TestsFinding }) {
+  const id = useId();
   if (finding.tests.length === 0) return null;
   return (
-    <section aria-labelledby="meanings" className="border-line border-t pt-4">
-      <h2 id="meanings" className="type-section mb-2">
+    <section aria-labelledby={id} className="border-line border-t pt-4">
+      <h2 id={id} className="type-section mb-2">
         What it means
       </h2>
       <dl>

@@ -1,3 +1,4 @@
+import { useId } from "react";
 import type { TestsFinding } from "../../../shared/schemas/tests.ts";
 import { printCount } from "../../../shared/tables/numbers.ts";
 import { printIndex, revealedOf, revealedTable } from "../../../shared/tables/revealed-preference.ts";
@@ -33,12 +34,13 @@ export function RevealedTable({ finding }: { finding: TestsFinding }) {
 
 /** The same as a section of an opened cell, or why there is none. */
 export function Revealed({ finding }: { finding: TestsFinding }) {
+  const id = useId();
   if (!finding.revealed) return null;
   const revealed = revealedOf(finding);
   return (
-    <section aria-labelledby="revealed" className="border-line border-t pt-4">
+    <section aria-labelledby={id} className="border-line border-t pt-4">
       <div className="mb-2 flex flex-wrap items-baseline justify-between gap-x-6">
-        <h2 id="revealed" className="type-section">
+        <h2 id={id} className="type-section">
           Revealed preference
         </h2>
         {revealed && <CopyTable table={revealedTable(revealed)} />}

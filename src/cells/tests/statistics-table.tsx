@@ -1,3 +1,4 @@
+import { useId } from "react";
 import type { ChiSquareStatistic, TestsFinding } from "../../../shared/schemas/tests.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { printCount, printProbability, printQuantity } from "../../../shared/tables/numbers.ts";
@@ -21,12 +22,13 @@ function Statistic({ of }: { of: ChiSquareStatistic }) {
 
 /** Every statistic of every hypothesis that was tested. */
 export function StatisticsTable({ finding }: { finding: TestsFinding }) {
+  const id = useId();
   const tests = finding.tests.filter(isMade);
   if (tests.length === 0) return null;
   const withLaitinen = tests.some(({ laitinen }) => laitinen && !("absent" in laitinen));
   return (
-    <section aria-labelledby="statistics" className="border-line border-t pt-4">
-      <h2 id="statistics" className="type-section mb-2">
+    <section aria-labelledby={id} className="border-line border-t pt-4">
+      <h2 id={id} className="type-section mb-2">
         All statistics
       </h2>
       <Table

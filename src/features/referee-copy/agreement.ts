@@ -17,10 +17,16 @@ export interface PartCompared {
 }
 
 export const agrees = (verification: Verification): boolean =>
-  verification.largest <= ROUNDING && verification.comparison.verdictsAgree && verification.fingerprintAgrees;
+  verification.largest <= ROUNDING &&
+  verification.comparison.verdictsAgree &&
+  verification.also.every(({ verdictsAgree }) => verdictsAgree) &&
+  verification.fingerprintAgrees;
 
 /** Part by part: what was computed again, and how far it is from what is sealed. */
-export function partsCompared({ comparison, coefficients }: Verification, content: SealedContent): PartCompared[] {
+export function partsCompared(
+  { comparison, coefficients, also }: Verification,
+  content: SealedContent,
+): PartCompared[] {
   const { fitted, at } = content.slutsky;
   const entries = `${printCount(fitted.goods.length ** 2)} entries`;
   const part = (name: string, what: string, difference: number): PartCompared => ({
@@ -44,5 +50,9 @@ export function partsCompared({ comparison, coefficients }: Verification, conten
       difference: comparison.verdictsAgree ? "agree" : "some otherwise",
       agrees: comparison.verdictsAgree,
     },
+    ...also.map(({ name, kind, largest, verdictsAgree }) => {
+      const what = kind === "slutsky" ? "matrix, errors, eigenvalues, checks" : "coefficients as tabled";
+      return { ...part(name, what, largest), agrees: largest <= ROUNDING && verdictsAgree };
+    }),
   ];
 }

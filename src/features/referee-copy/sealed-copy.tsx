@@ -4,6 +4,7 @@ import { listWords } from "../../../shared/study/words.ts";
 import { Mark } from "../../components/mark.tsx";
 import { Downloads } from "./downloads.tsx";
 import { Fingerprint, FingerprintVerdict } from "./fingerprint-words.tsx";
+import { NewerCopy, sealedInWords } from "./newer-copy.tsx";
 import { Recomputed } from "./recomputed.tsx";
 import { Seal } from "./seal.tsx";
 import { SealedAccounting } from "./sealed-accounting.tsx";
@@ -17,12 +18,10 @@ export interface SealedCopyProps {
   readonly verdicts: ReactNode;
   readonly matrix: ReactNode;
   readonly coefficients: ReactNode;
-}
-
-function sealedAt(instant: string): string {
-  const date = new Date(instant);
-  const day = date.toLocaleDateString("en-GB", { day: "numeric", month: "long", year: "numeric" });
-  return `${day} at ${date.toLocaleTimeString("en-GB", { hour: "2-digit", minute: "2-digit" })}`;
+  /** Further findings, where there are any. */
+  readonly also?: ReactNode;
+  /** Opens the copy that has replaced this one. */
+  readonly onNewer?: () => void;
 }
 
 function SealedHead({ copy, result }: { copy: RefereeCopy; result: VerificationState }) {
@@ -42,7 +41,7 @@ function SealedHead({ copy, result }: { copy: RefereeCopy; result: VerificationS
         <div>
           <h2 className="font-serif text-[1.625rem]/[2rem] max-[899px]:hidden">Referee copy</h2>
           <p className="mb-2 text-[0.9375rem]/[1.375rem] text-ink2">
-            Sealed {sealedAt(copy.content.sealedAt)}.
+            Sealed {sealedInWords(copy.content.sealedAt)}.
             <span className="max-[899px]:hidden"> Nothing in it can change.</span>
           </p>
           <p className="type-small mt-5 mb-1 text-ink2 max-[899px]:hidden">Fingerprint, SHA-256</p>
@@ -75,7 +74,7 @@ function Title({ content }: { content: SealedContent }) {
 }
 
 /** A sealed copy as a referee reads it: no account, nothing to change, everything computed again. */
-export function SealedCopy({ copy, verify, verdicts, matrix, coefficients }: SealedCopyProps) {
+export function SealedCopy({ copy, verify, verdicts, matrix, coefficients, also, onNewer }: SealedCopyProps) {
   const { result, again } = useVerification(copy, verify);
   const { content } = copy;
   return (
@@ -83,6 +82,7 @@ export function SealedCopy({ copy, verify, verdicts, matrix, coefficients }: Sea
       <SealedHead copy={copy} result={result} />
       <main className="min-w-0 min-[900px]:border-rule2 min-[900px]:border-l space-y-7 px-4.5 py-6 min-[900px]:row-span-2 min-[900px]:max-w-[62.5rem] min-[900px]:px-11 min-[900px]:py-9">
         <Title content={content} />
+        {copy.newer && onNewer && <NewerCopy newer={copy.newer} onOpen={onNewer} />}
         <Recomputed result={result} content={content} onAgain={() => void again()} />
         {verdicts}
         {matrix}
@@ -90,6 +90,7 @@ export function SealedCopy({ copy, verify, verdicts, matrix, coefficients }: Sea
           <Specification content={content} coefficients={coefficients} />
           <SealedAccounting content={content} />
         </div>
+        {also}
       </main>
       <aside className="bg-verso px-4.5 pt-6 pb-10 min-[900px]:pr-11 min-[900px]:pl-21 max-[899px]:bg-recto max-[899px]:border-line max-[899px]:border-t print:hidden">
         <Downloads copy={copy} />

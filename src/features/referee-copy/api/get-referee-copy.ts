@@ -1,16 +1,15 @@
 import { queryOptions, useQuery } from "@tanstack/react-query";
-import { type RefereeCopy, refereeCopy } from "../../../../shared/schemas/referee-copy.ts";
+import { refereeCopy } from "../../../../shared/schemas/referee-copy.ts";
 import { ask } from "../../../lib/api.ts";
+import { api } from "../../../lib/paths.ts";
 
-const getRefereeCopy = (token: string, signal?: AbortSignal): Promise<RefereeCopy> =>
-  ask({ path: `/api/referee/${encodeURIComponent(token)}`, answer: refereeCopy, signal });
-
-/** A copy never changes; it is asked for once. */
-const refereeCopyOptions = (token: string) =>
+/** The copy behind the link, or the one that has replaced it. A copy never changes; it is asked for once. */
+const refereeCopyOptions = (token: string, newest: boolean) =>
   queryOptions({
-    queryKey: ["referee copy", token],
-    queryFn: ({ signal }) => getRefereeCopy(token, signal),
+    queryKey: ["referee copy", token, newest],
+    queryFn: ({ signal }) =>
+      ask({ path: newest ? api.newestCopy(token) : api.sealedCopy(token), answer: refereeCopy, signal }),
     staleTime: Number.POSITIVE_INFINITY,
   });
 
-export const useRefereeCopy = (token: string) => useQuery(refereeCopyOptions(token));
+export const useRefereeCopy = (token: string, newest: boolean) => useQuery(refereeCopyOptions(token, newest));
