@@ -17,6 +17,7 @@ import { findStudy } from "../db/queries/studies.ts";
 import { conflict, notFound } from "../errors.ts";
 import type { Actor } from "../policies/can.ts";
 import { type Access, noSuchStudy } from "./access.ts";
+import type { RecordInJournal } from "./journal.ts";
 import type { SourcesOf } from "./ports.ts";
 
 export type { CheckpointSummaryRow };
@@ -31,6 +32,7 @@ interface Collaborators {
   readonly db: Database;
   readonly access: Access;
   readonly sourcesOf: SourcesOf;
+  readonly record: RecordInJournal;
   readonly limits?: Partial<CheckpointLimits>;
 }
 
@@ -48,7 +50,7 @@ export type CheckpointService = ReturnType<typeof createCheckpointService>;
  * States of a study under a name. Each holds its cells whole, with their ids, so that neither later edits nor the compaction
  * of updates touch it, and whoever returns to it finds the findings of then under the same fingerprints.
  */
-export function createCheckpointService({ db, access, sourcesOf, limits: own }: Collaborators) {
+export function createCheckpointService({ db, access, sourcesOf, record, limits: own }: Collaborators) {
   const limits = { ...LIMITS, ...own };
 
   async function keep(
@@ -122,7 +124,9 @@ export function createCheckpointService({ db, access, sourcesOf, limits: own }: 
 
     async make(actor: Actor, studyId: string, wanted: { name: string; note: string }): Promise<CheckpointSummaryRow> {
       access.allow(actor, "checkpoint.make", studyId);
-      return keep(actor, studyId, { ...wanted, occasion: "kept" });
+      const kept = await keep(actor, studyId, { ...wanted, occasion: "kept" });
+      record({ studyId, actor, action: "checkpoint kept", subject: wanted.name });
+      return kept;
     },
 
     change(
@@ -146,13 +150,16 @@ export function createCheckpointService({ db, access, sourcesOf, limits: own }: 
       access.allow(actor, "checkpoint.return", studyId);
       const to = whole(studyId, checkpointId);
       const name = `Before returning to ${to.row.name}`.slice(0, 120);
-      return { to, before: await keep(actor, studyId, { name, note: "", occasion: "before returning" }) };
+      const before = await keep(actor, studyId, { name, note: "", occasion: "before returning" });
+      record({ studyId, actor, action: "checkpoint returned to", subject: to.row.name });
+      return { to, before };
     },
 
     remove(actor: Actor, studyId: string, checkpointId: string): void {
       access.allow(actor, "checkpoint.remove", studyId);
-      found(studyId, checkpointId);
+      const { name } = found(studyId, checkpointId);
       deleteCheckpoint(db, checkpointId);
+      record({ studyId, actor, action: "checkpoint removed", subject: name });
     },
   };
 }

@@ -90,7 +90,7 @@ export function createServices({
     uploads: createUploadService({ db, access, parseUpload, lookAtRows, sourcesOf, cells, record }),
     remarks: createRemarkService({ db, access, sourcesOf, remarksChanged }),
     history: createHistoryService({ db, access, sourcesOf }),
-    checkpoints: createCheckpointService({ db, access, sourcesOf }),
+    checkpoints: createCheckpointService({ db, access, sourcesOf, record }),
     refereeCopies: createRefereeCopyService({ db, access, cells, sourcesOf, program, record, mail, url }),
   };
 }

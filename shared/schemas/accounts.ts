@@ -87,7 +87,6 @@ export const mailSummary = z.strictObject({
 });
 export type MailSummary = z.infer<typeof mailSummary>;
 export const postBox = z.strictObject({ kind: z.enum(["mail server", "post box"]), mails: z.array(mailSummary) });
-export type PostBox = z.infer<typeof postBox>;
 
 /** GET /api/administration/accounts */
 export const accountSummary = z.strictObject({

@@ -213,10 +213,17 @@ describe("checkpoints", () => {
   test("have a limit in number and in size, told with both figures", async () => {
     const { access } = application.services;
     const { sourcesOf } = application.cells;
-    const few = createCheckpointService({ db: application.open.db, access, sourcesOf, limits: { count: 1 } });
+    const { record } = application.services.journal;
+    const few = createCheckpointService({ db: application.open.db, access, sourcesOf, record, limits: { count: 1 } });
     await few.make(owner, studyId, { name: "first", note: "" });
     await expect(few.make(owner, studyId, { name: "second", note: "" })).rejects.toThrow("has 1 checkpoints");
-    const small = createCheckpointService({ db: application.open.db, access, sourcesOf, limits: { size: 200 } });
+    const small = createCheckpointService({
+      db: application.open.db,
+      access,
+      sourcesOf,
+      record,
+      limits: { size: 200 },
+    });
     await expect(small.make(owner, studyId, { name: "third", note: "" })).rejects.toThrow(/hold \d+ .* at most 200/);
   });
 });
