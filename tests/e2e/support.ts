@@ -147,7 +147,8 @@ export async function linkSentTo(product: Product, email: string): Promise<strin
   const body = JSON.stringify({ email: ILSE.email, password: PASSPHRASE });
   const answer = await fetch(`${product.origin}/api/auth/sign-in/email`, { method: "POST", headers, body });
   const cookie = answer.headers.getSetCookie()[0].split(";")[0];
-  for (let tries = 0; tries < 100; tries++) {
+  const end = Date.now() + PATIENCE;
+  while (Date.now() < end) {
     const box = await fetch(`${product.origin}/api/administration/mails`, { headers: { cookie } });
     const { mails } = (await box.json()) as { mails: { to: string; text?: string }[] };
     const link = /https?:\/\/[^/\s]+(\/\S+)/.exec(mails.find(({ to }) => to === email)?.text ?? "");
