@@ -204,3 +204,33 @@ it("a remark, a reply to it and its settling are seen by the other as they happe
   await remarks(tomas).getByRole("button", { name: "1 settled remark" }).waitFor();
   await symmetry(tomas).waitFor({ state: "detached" });
 });
+
+it("who changed what is told, a checkpoint is returned to, and one's own steps are undone in words", async () => {
+  const source = () => sourceInFile(product.database, studyId, "linear");
+  const before = source();
+  const linear = await openText(tomas, "linear");
+  await linear.locator(".cm-line", { hasText: "form:" }).click();
+  await linear.press("Home");
+  await linear.press("Shift+End");
+  await ilse.getByRole("link", { name: "Checkpoints" }).click();
+  await ilse.getByRole("button", { name: "Keep the study as it stands" }).click();
+  await ilse.getByLabel("Name").fill("Before the referee");
+  await ilse.getByRole("button", { name: "Keep it" }).click();
+  const kept = ilse.getByRole("listitem").filter({ hasText: "kept by you" });
+  await kept.getByText("Before the referee").first().waitFor();
+  await linear.pressSequentially("form: les", { delay: 5 });
+  await isSaved(tomas);
+  const entry = ilse.getByRole("listitem").filter({ hasText: /Tomás Adeyemi in linear: form changed from .* to les/ });
+  await entry.getByRole("button", { name: /^Look/ }).click();
+  await entry.getByText("les", { exact: true }).waitFor();
+  await kept.getByRole("button", { name: "Return to it Before the referee" }).click();
+  await kept.getByText("1 cell changes.").waitFor();
+  await kept.getByRole("button", { name: "Return to it", exact: true }).click();
+  await eventually(source, (words) => words === before, "returned");
+  await ilse.getByText("Before returning to Before the referee").first().waitFor();
+  await ilse.locator("body").press("Control+z");
+  await ilse.getByText("Undone: returning to Before the referee.").waitFor();
+  await eventually(source, (words) => words.includes("form: les"), "the return undone");
+  await ilse.goBack();
+  await bandOf(ilse, "linear").waitFor();
+});

@@ -157,4 +157,20 @@ describe("returning to a state", () => {
     expect(undone()).toBe("Undone: returning to First draft.");
     expect(tomas.snapshot().cells).toEqual(left);
   });
+
+  it("undone, gives back letter by letter what another typed meanwhile", () => {
+    const base = ilse.addCell({ name: "base", kind: "system", source: "data: survey\nform: la-aids\nx: 1\n" });
+    const kept = ilse.snapshot().cells;
+    const text = tomas.sourceOf(base);
+    tomas.doc.transact(() => text?.delete(13, 13), TYPING);
+    for (const [place, letter] of [..."form: les"].entries()) {
+      tomas.doc.transact(() => text?.insert(13 + place, letter), TYPING);
+    }
+    const typed = "data: survey\nform: les\nx: 1\n";
+    expect(source(base)).toBe(typed);
+    ilse.returnTo(kept, "First draft");
+    expect(source(base)).toBe("data: survey\nform: la-aids\nx: 1\n");
+    ilse.undoStep();
+    expect([source(base), ilse.sourceOf(base)?.toString()]).toEqual([typed, typed]);
+  });
 });
