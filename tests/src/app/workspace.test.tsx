@@ -1,5 +1,5 @@
 import { QueryClient, QueryClientProvider } from "@tanstack/react-query";
-import { render, screen, waitFor, within } from "@testing-library/react";
+import { fireEvent, render, screen, waitFor, within } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
 import { createMemoryRouter, Outlet, RouterProvider } from "react-router-dom";
 import { afterEach, describe, expect, it, vi } from "vitest";
@@ -315,6 +315,23 @@ describe("what is done with cells from the keyboard", () => {
     await user.keyboard("{Enter}");
     await waitFor(async () => expect(await band("base")).toHaveFocus());
     expect(names()).toEqual(["survey", "base", "matrix"]);
+  });
+
+  it("puts a cell elsewhere by dragging its name, and only by that", async () => {
+    await open();
+    const dataTransfer = { setData: () => {}, effectAllowed: "" };
+    const [matrix, survey] = [await band("matrix"), await band("survey")];
+    // Nothing is laid out here: every band is at nought, so that below it is after it.
+    const drop = (on: HTMLElement) => {
+      fireEvent.dragOver(on, { dataTransfer, clientY: 1 });
+      fireEvent.drop(on, { dataTransfer, clientY: 1 });
+    };
+    fireEvent.dragStart(within(matrix).getByRole("heading"), { dataTransfer });
+    drop(survey);
+    await waitFor(() => expect(names()).toEqual(["survey", "matrix", "base"]));
+    fireEvent.dragStart(await band("base"), { dataTransfer });
+    drop(survey);
+    expect(names()).toEqual(["survey", "matrix", "base"]);
   });
 
   it("folds a cell to a line, which this browser remembers, and unfolds it", async () => {
