@@ -41,6 +41,7 @@ async function findingFromApi<T>(cell: string) {
 async function createAccount(who: Page, { name, email, passphrase }: typeof ANNA): Promise<void> {
   await who.goto("/sign-in");
   await who.getByRole("link", { name: "Create an account" }).click();
+  await who.getByRole("button", { name: "Send the link" }).waitFor();
   await who.getByLabel("Email").fill(email);
   await who.getByRole("button", { name: "Send the link" }).click();
   await who.getByText("A message is on its way").waitFor();
@@ -291,6 +292,75 @@ it("undoes the change and is answered from the store", async () => {
   expect(watched.requests.slice(asked).filter((address) => /estimation/.test(address))).toEqual([]);
 });
 
+it("looks at rows, replaces the file by a new version, and pins the old", async () => {
+  await page.getByRole("link", { name: "Row accounting of purchases" }).click();
+  await page.getByRole("button", { name: "Look at the rows of tuna-weekly.csv" }).click();
+  const rows = page.getByRole("dialog", { name: "tuna-weekly.csv" });
+  await rows.getByText("1 to 50 of 338 rows").waitFor();
+  await rows.getByRole("button", { name: "Last" }).click();
+  await rows.getByText("301 to 338 of 338 rows").waitFor();
+  await page.keyboard.press("Escape");
+  const outliers = page.getByRole("list", { name: "Look at the rows of outliers" }).getByRole("button").first();
+  await outliers.focus();
+  await page.keyboard.press("Enter");
+  const far = page.getByRole("dialog", { name: /^Outliers: / });
+  await far.getByRole("columnheader", { name: /price ÷ median/ }).waitFor();
+  expect(await wordsOf(far)).toMatch(/keep only rows with p\d [<>]= \d/);
+  await page.keyboard.press("Escape");
+  await page.getByRole("link", { name: "Back to the study" }).click();
+
+  await choose(page, "Uploads");
+  const dialog = page.getByRole("dialog", { name: "Uploads" });
+  await dialog.getByRole("button", { name: "Replace by a new version of tuna-weekly.csv" }).click();
+  const shorter = lines
+    .filter((line) => line !== "")
+    .slice(0, -1)
+    .join("\n");
+  const next = dialog.getByLabel("Choose the next version of tuna-weekly.csv");
+  await next.setInputFiles({ name: "weeks.csv", mimeType: "text/csv", buffer: Buffer.from(shorter) });
+  await dialog.getByText("Against version 1: 1 row fewer, the same columns").waitFor();
+  await page.keyboard.press("Escape");
+  await untilSays(page, "purchases", "All 337 rows are used.");
+  await untilSays(page, "base", /Out of date.*upload replaced by version 2 of tuna-weekly\.csv/);
+  const band = bandOf(page, "purchases");
+  await band.getByRole("button", { name: "Form", exact: true }).click();
+  await band.getByLabel("Version").selectOption("1");
+  await untilSays(page, "purchases", "All 338 rows are used.");
+  await untilSays(page, "base", /^Current/);
+  expect(await textIn(await openText(page, "purchases"))).toContain("version: 1");
+});
+
+it("copies a system by a key, sets both side by side, and folds and lists by keys", async () => {
+  await bandOf(page, "base").focus();
+  await page.keyboard.press("d");
+  await untilSays(page, "base 3", /^Current/);
+  await bandOf(page, "base 3").focus();
+  await page.keyboard.press("b");
+  await page.waitForURL((url) => url.pathname.includes("/compare/"));
+  await page.getByLabel("On the right").selectOption("base");
+  await page.getByText("Both ask the same.").waitFor();
+  await page.getByText("The expenditure elasticities agree to 3 decimals for every good.").waitFor();
+  const said = page.getByText("No likelihood ratio is formed: base 3 and base are the same system");
+  await said.waitFor();
+  const table = page.getByRole("group", { name: "Coefficients of the share equations side by side" });
+  expect(await table.getByRole("rowheader").allTextContents()).toContainEqual(expect.stringMatching(/difference$/));
+  await said.click();
+  await page.keyboard.press("Escape");
+  await bandOf(page, "base 3").focus();
+  await page.keyboard.press("?");
+  const sheet = page.getByRole("dialog", { name: "Keys" });
+  await sheet.getByText("adds a copy of the cell below it").waitFor();
+  await page.keyboard.press("Escape");
+  await bandOf(page, "base 3").focus();
+  await page.keyboard.press("c");
+  await page.reload();
+  await bandOf(page, "base 3").getByRole("button", { name: "Unfold base 3" }).click();
+  await bandOf(page, "base 3").focus();
+  await page.keyboard.press("Delete");
+  await page.getByRole("button", { name: "Undo the removal of base 3" }).waitFor();
+  await page.getByRole("button", { name: "Leave it so" }).click();
+});
+
 it("is told at which row a column of numbers holds a word", async () => {
   const band = await addCell(page, "data", "purchases 2");
   await give({ name: "worded.csv", text: changed(200, (line) => line.replace(/[^,]+$/, "unknown")) });
@@ -378,75 +448,6 @@ it("invites a coauthor by e-mail, who makes an account on the way and is in the 
     "he is here",
   );
   await context.close();
-});
-
-it("looks at rows, replaces the file by a new version, and pins the old", async () => {
-  await page.getByRole("link", { name: "Row accounting of purchases" }).click();
-  await page.getByRole("button", { name: "Look at the rows of tuna-weekly.csv" }).click();
-  const rows = page.getByRole("dialog", { name: "tuna-weekly.csv" });
-  await rows.getByText("1 to 50 of 338 rows").waitFor();
-  await rows.getByRole("button", { name: "Last" }).click();
-  await rows.getByText("301 to 338 of 338 rows").waitFor();
-  await page.keyboard.press("Escape");
-  const outliers = page.getByRole("list", { name: "Look at the rows of outliers" }).getByRole("button").first();
-  await outliers.focus();
-  await page.keyboard.press("Enter");
-  const far = page.getByRole("dialog", { name: /^Outliers: / });
-  await far.getByRole("columnheader", { name: /price ÷ median/ }).waitFor();
-  expect(await wordsOf(far)).toMatch(/keep only rows with p\d [<>]= \d/);
-  await page.keyboard.press("Escape");
-  await page.getByRole("link", { name: "Back to the study" }).click();
-
-  await choose(page, "Uploads");
-  const dialog = page.getByRole("dialog", { name: "Uploads" });
-  await dialog.getByRole("button", { name: "Replace by a new version of tuna-weekly.csv" }).click();
-  const shorter = lines
-    .filter((line) => line !== "")
-    .slice(0, -1)
-    .join("\n");
-  const next = dialog.getByLabel("Choose the next version of tuna-weekly.csv");
-  await next.setInputFiles({ name: "weeks.csv", mimeType: "text/csv", buffer: Buffer.from(shorter) });
-  await dialog.getByText("Against version 1: 1 row fewer, the same columns").waitFor();
-  await page.keyboard.press("Escape");
-  await untilSays(page, "purchases", "All 337 rows are used.");
-  await untilSays(page, "base", /Out of date.*upload replaced by version 2 of tuna-weekly\.csv/);
-  const band = bandOf(page, "purchases");
-  await band.getByRole("button", { name: "Form", exact: true }).click();
-  await band.getByLabel("Version").selectOption("1");
-  await untilSays(page, "purchases", "All 338 rows are used.");
-  await untilSays(page, "base", /^Current/);
-  expect(await textIn(await openText(page, "purchases"))).toContain("version: 1");
-});
-
-it("copies a system by a key, sets both side by side, and folds and lists by keys", async () => {
-  await bandOf(page, "base").focus();
-  await page.keyboard.press("d");
-  await untilSays(page, "base 3", /^Current/);
-  await bandOf(page, "base 3").focus();
-  await page.keyboard.press("b");
-  await page.waitForURL((url) => url.pathname.includes("/compare/"));
-  await page.getByLabel("On the right").selectOption("base");
-  await page.getByText("Both ask the same.").waitFor();
-  await page.getByText("The expenditure elasticities agree to 3 decimals for every good.").waitFor();
-  const said = page.getByText("No likelihood ratio is formed: base 3 and base are the same system");
-  await said.waitFor();
-  const table = page.getByRole("group", { name: "Coefficients of the share equations side by side" });
-  expect(await table.getByRole("rowheader").allTextContents()).toContainEqual(expect.stringMatching(/difference$/));
-  await said.click();
-  await page.keyboard.press("Escape");
-  await bandOf(page, "base 3").focus();
-  await page.keyboard.press("?");
-  const sheet = page.getByRole("dialog", { name: "Keys" });
-  await sheet.getByText("adds a copy of the cell below it").waitFor();
-  await page.keyboard.press("Escape");
-  await bandOf(page, "base 3").focus();
-  await page.keyboard.press("c");
-  await page.reload();
-  await bandOf(page, "base 3").getByRole("button", { name: "Unfold base 3" }).click();
-  await bandOf(page, "base 3").focus();
-  await page.keyboard.press("Delete");
-  await page.getByRole("button", { name: "Undo the removal of base 3" }).waitFor();
-  await page.getByRole("button", { name: "Leave it so" }).click();
 });
 
 it("signs out, and the study is closed", async () => {
