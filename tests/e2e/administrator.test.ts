@@ -27,6 +27,7 @@ it("reads in the local post box what would have been sent, and finds accounts an
   const visitor = await (await browser.newContext({ baseURL: product.origin })).newPage();
   await visitor.goto("/sign-in");
   await visitor.getByRole("link", { name: "Forgotten passphrase" }).click();
+  await visitor.getByRole("button", { name: "Send the link" }).waitFor();
   await visitor.getByLabel("Email").fill(PETRA.email);
   await visitor.getByRole("button", { name: "Send the link" }).click();
   await visitor.getByText(`A message is on its way to ${PETRA.email}`).waitFor();
@@ -82,6 +83,9 @@ it("hands a study over, and deletes and brings back another", async () => {
   await dialog.getByRole("button", { name: `Hand over to ${TOMAS.name}` }).click();
   await dialog.getByRole("button", { name: "Leave the study" }).waitFor();
   await ilse.keyboard.press("Escape");
+  // In the new role, the page's connection is another one.
+  await ilse.goto(`/studies/${studyId}`);
+  await heading(ilse, "survey");
   await choose(ilse, "Journal");
   await ilse.getByText(`Ilse Marchetti handed the study over to ${TOMAS.name}.`).waitFor();
   await ilse.keyboard.press("Escape");
