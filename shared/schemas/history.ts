@@ -72,4 +72,3 @@ export type Checkpoint = z.infer<typeof checkpoint>;
 
 /** POST /api/studies/:studyId/checkpoints/:checkpointId/return: what to return to, and what was kept before. */
 export const returning = z.strictObject({ to: checkpoint, before: checkpointSummary });
-export type Returning = z.infer<typeof returning>;
