@@ -292,12 +292,41 @@ it("reads on a phone, nothing to be scrolled sideways but the page's own tables"
   await phone.context().close();
 });
 
+it("a newer copy with further findings takes the first one's place, and the first link leads to it", async () => {
+  const dialog = ilse.getByRole("dialog", { name: "Referee copies" });
+  await ilse.reload();
+  await untilSays(ilse, "fifths", /^Current/);
+  await choose(ilse, "Referee copies");
+  await dialog.getByRole("radio", { name: "matrix" }).check();
+  await dialog.getByRole("checkbox", { name: "laws tests" }).check();
+  await dialog.getByRole("checkbox", { name: "fifths elasticities" }).check();
+  await dialog.getByLabel("The link opens").selectOption("for 90 days");
+  await dialog.getByLabel("In the place of").selectOption({ index: 1 });
+  await dialog.getByLabel("Send the link to").fill("editor@journal.example");
+  await dialog.getByRole("button", { name: "Seal a referee copy" }).click();
+  await dialog.getByText(/on its way to editor@journal\.example/).waitFor();
+  await dialog.getByText(/matrix with laws and fifths.*opens until/).waitFor();
+  await dialog.getByText(/replaced by that of/).waitFor();
+
+  const other = await stranger();
+  await other.goto(link);
+  await other.getByRole("complementary", { name: "A newer copy" }).getByRole("button").click();
+  await other.getByRole("region", { name: "laws tests" }).getByRole("table").first().waitFor();
+  await other.getByRole("region", { name: "fifths elasticities" }).getByRole("table").first().waitFor();
+  expect((await computedAgain(other)).largest).toBeLessThan(ROUNDING);
+  await other.context().close();
+});
+
 it("a revoked and a wrong link give the same plain page and the same answer", async () => {
   const dialog = ilse.getByRole("dialog", { name: "Referee copies" });
   await ilse.reload();
   await choose(ilse, "Referee copies");
-  await dialog.getByText(/last opened/).waitFor();
-  await dialog.getByRole("button", { name: "Revoke the copy of matrix" }).click();
+  await dialog
+    .getByText(/last opened/)
+    .first()
+    .waitFor();
+  // The older of the two: the list has the newest first.
+  await dialog.getByRole("button", { name: "Revoke the copy of matrix" }).last().click();
   await dialog.getByText(/; revoked /).waitFor();
   const wrong = link.replace(/[\w-]{43}$/, (token) => [...token].reverse().join(""));
   const seen = async (address: string) => {
