@@ -77,6 +77,8 @@ const PLACES: readonly Place[] = [
     path: () => links.get("invitation") ?? "",
     ready: (page) => page.getByLabel("Name").waitFor(),
     signedIn: false,
+    // Asks whether whoever opens the link is signed in.
+    refused: /401.*\/api\/me\b/,
   },
   { name: "account", path: () => "/account", ready: heading("What is kept of you"), signedIn: true },
   { name: "messages", path: () => "/administration", ready: heading("Finish your account"), signedIn: true },
