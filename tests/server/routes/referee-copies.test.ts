@@ -1,8 +1,8 @@
 import { createHash } from "node:crypto";
 import { afterAll, beforeAll, beforeEach, describe, expect, test } from "vitest";
 import { refereeCopies } from "../../../server/db/schema/referee-copies.ts";
-import { refereeCopy } from "../../../shared/schemas/referee-copy.ts";
 import { sealedRefereeCopy } from "../../../shared/schemas/referee-copies.ts";
+import { refereeCopy } from "../../../shared/schemas/referee-copy.ts";
 import { canonicalJson } from "../../../shared/study/canonical-json.ts";
 import { type Application, startApplication, type Visitor } from "../../support/application.ts";
 import { exampleFindings, ROW_NUMBERS } from "../../support/findings.ts";

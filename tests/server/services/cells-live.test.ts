@@ -34,10 +34,7 @@ beforeAll(async () => {
     .run();
   open.db.insert(uploadChunks).values({ uploadId: "up", position: 0, bytes: TUNA }).run();
   const parsed = await pool.parseUpload("up", () => {}, new AbortController().signal);
-  open.db
-    .update(uploads)
-    .set({ rows: parsed.rows, sha256: parsed.sha256, state: "ready" })
-    .run();
+  open.db.update(uploads).set({ rows: parsed.rows, sha256: parsed.sha256, state: "ready" }).run();
   service = begin();
 });
 
