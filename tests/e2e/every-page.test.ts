@@ -4,6 +4,7 @@ import { AxeBuilder } from "@axe-core/playwright";
 import type { Browser, BrowserContext, Page } from "playwright-core";
 import { afterAll, beforeAll, expect, it } from "vitest";
 import type { StudyStatus } from "../../shared/schemas/status.ts";
+import { eventually } from "./editing.ts";
 import { choose, fromApi, untilSays } from "./study-page.ts";
 import { demoStudyId, ILSE, linkSentTo, openBrowser, Product, signIn } from "./support.ts";
 import { watch } from "./watch.ts";
@@ -108,9 +109,14 @@ const PLACES: readonly Place[] = [
     path: cell("base"),
     ready: async (page) => {
       await heading("Fit and convergence")(page);
-      // The figure is drawn when it comes near the window.
-      await page.getByRole("heading", { name: "Engel curves" }).scrollIntoViewIfNeeded();
-      await page.locator(".js-plotly-plot .ytick text").first().waitFor();
+      // The figure is drawn when it comes near the window, from which parts that arrive above may push it again.
+      const figure = page.getByRole("heading", { name: "Engel curves" });
+      const ticks = page.locator(".js-plotly-plot .ytick text");
+      const look = async () => {
+        await figure.evaluate((element) => element.scrollIntoView());
+        return ticks.count();
+      };
+      await eventually(look, (count) => count > 0, "the Engel curves are drawn");
     },
     signedIn: true,
   },
