@@ -39,7 +39,8 @@ export const Prose = memo(function Prose({ finding, mathematics = NO_MATHEMATICS
           remarkRehypeOptions={{
             clobberPrefix: prefix,
             footnoteLabel: "Notes",
-            footnoteLabelTagName: "h3",
+            // As a first heading of the text would: two levels down, below the cell's name.
+            footnoteLabelTagName: "h1",
             footnoteBackLabel: (place: number) => `Back to where note ${place + 1} stands`,
           }}
           urlTransform={safeAddress}
