@@ -146,7 +146,7 @@ const PLACES: readonly Place[] = [
   {
     name: "elasticities-cell",
     path: cell("fifths"),
-    ready: (page) => page.locator("#price-elasticities").waitFor(),
+    ready: heading("Price elasticities"),
     signedIn: true,
   },
   { name: "text-cell", path: cell("argument"), ready: heading("Quoted numbers"), signedIn: true },
