@@ -3,11 +3,14 @@ import * as Y from "yjs";
 import { openDatabase } from "../../server/db/client.ts";
 import { loadUpdates } from "../../server/db/queries/documents.ts";
 import { readCells } from "../../server/sync/index.ts";
+import { CELL_KINDS } from "../../shared/schemas/cell.ts";
 import { PATIENCE } from "./support.ts";
 
 /** A cell's band: source on the left, finding on the right. */
 export function bandOf(page: Page, cell: string): Locator {
-  return page.locator("section.band", { has: page.getByRole("heading", { name: new RegExp(`^${cell}\\b`) }) });
+  // The whole name and the kind: a copy is called after its cell.
+  const name = new RegExp(`^${cell} (${CELL_KINDS.join("|")})$`);
+  return page.locator("section.band", { has: page.getByRole("heading", { name }) });
 }
 
 /** Shows the cell's source as text; the editor. */

@@ -165,7 +165,7 @@ describe("out of date", () => {
     service.changed(STUDY);
     const { survey, base } = await settled();
     expect(survey.state).toBe("current");
-    expect(base).toMatchObject({ state: "out of date", because: "survey changed" });
+    expect(base).toMatchObject({ state: "out of date", because: "upload replaced by u.csv" });
   });
 
   it("is brought up to date together", async () => {
