@@ -1,4 +1,5 @@
 import { afterAll, beforeAll, beforeEach, describe, expect, test } from "vitest";
+import { insertPerson } from "../../../server/db/queries/people.ts";
 import { remarks } from "../../../server/db/schema/remarks.ts";
 import { REMARK_LIMITS } from "../../../server/services/remarks.ts";
 import { type Remark, remark, remarkReply } from "../../../shared/schemas/remarks.ts";
@@ -21,8 +22,8 @@ afterAll(() => application.close());
 
 beforeEach(async () => {
   studyId = (await ilse.ask("POST", "/api/studies", { title: "Levy" })).body.id;
-  await ilse.ask("POST", `/api/studies/${studyId}/people`, { email: tomas.email, role: "coauthor" });
-  await ilse.ask("POST", `/api/studies/${studyId}/people`, { email: petra.email, role: "reader" });
+  insertPerson(application.open.db, studyId, tomas.id, "coauthor", new Date());
+  insertPerson(application.open.db, studyId, petra.id, "reader", new Date());
   cellId = application.cells.put(studyId, { name: "base", kind: "system", source: "" }, []).cellId;
   application.sockets.remarked.length = 0;
 });
@@ -183,7 +184,7 @@ describe("limits", () => {
   test("one person writes so many a minute, and others are not held up", async () => {
     const made = await write(tomas, "Often.");
     const hasty = await application.person("Hasty Reader");
-    await ilse.ask("POST", `/api/studies/${studyId}/people`, { email: hasty.email, role: "reader" });
+    insertPerson(application.open.db, studyId, hasty.id, "reader", new Date());
     const answers = await Promise.all(
       Array.from({ length: 32 }, (_, i) => hasty.ask("POST", path(`/${made.id}/replies`), { text: `${i}` })),
     );
