@@ -48,7 +48,7 @@ export default function PaperWords({ studyId, standing, cells, uploads }: PaperW
     <section className="paper-words" aria-labelledby={headingId}>
       <div className="type-small flex flex-wrap items-baseline justify-between gap-x-4 gap-y-1 pb-1.5">
         <h3 id={headingId} className="text-ink2">
-          As the paper would say it
+          As the paper would say it <span className="sr-only">of {cell.name}</span>
         </h3>
         <p className="no-print flex flex-wrap items-baseline gap-x-4">
           <span role="status" className="text-ink2">
