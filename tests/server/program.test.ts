@@ -64,6 +64,8 @@ describe("a first start", () => {
   test("every finding is its kind's schema, under its fingerprint", async () => {
     const { cells } = studyStatus.parse(await get("/api/studies/demo/status"));
     for (const { fingerprint, kind } of cells) {
+      // Prose has no finding of its own: its numbers are those of the cells it quotes.
+      if (kind === "text") continue;
       const { finding, tookMs } = await get(`/api/studies/demo/findings/${fingerprint}`);
       expect(findingSchema.parse(finding).kind).toBe(kind);
       expect(tookMs).toBeGreaterThan(0);
