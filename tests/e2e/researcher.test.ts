@@ -417,8 +417,9 @@ it("quotes a finding in prose: the number stays true, and says so when it is out
   expect(await bandOf(page, "argument").locator("math").count()).toBe(1);
   const text = await openText(page, "base");
   await rewriteLine(text, "form:", "form: la-aids");
-  const said = await untilSays(page, "argument", /Out of datethe quoted number is out of date/);
-  expect(said).toMatch(/338 is out of date: base was found .*form changed from aids to la-aids/);
+  // Not before the whole word is typed: on the way to it the cell says other things.
+  await untilSays(page, "argument", /^Out of datethe quoted number is out of date/);
+  await untilSays(page, "argument", /338 is out of date: base was found .*form changed from aids to la-aids/);
   await rewriteLine(text, "form:", "form: aids");
   await untilSays(page, "argument", /^Current/);
   expect(await wordsOf(bandOf(page, "base").locator(".paper-words"))).toContain("(Deaton and Muellbauer 1980)");
