@@ -1,4 +1,4 @@
-import { queryOptions, useMutation, useQuery, useQueryClient } from "@tanstack/react-query";
+import { type QueryClient, queryOptions, useMutation, useQuery, useQueryClient } from "@tanstack/react-query";
 import { linkedAddress } from "../../../../shared/schemas/accounts.ts";
 import { ask } from "../../../lib/api.ts";
 import { api } from "../../../lib/paths.ts";
@@ -19,7 +19,7 @@ export function useFinishAccount(token: string) {
   return useMutation({
     mutationFn: (body: { name: string; password: string }) =>
       ask({ method: "POST", path: api.accountLink(token), body, answer: linkedAddress }),
-    onSuccess: () => client.clear(),
+    onSuccess: () => forgetAllButLinks(client),
   });
 }
 
@@ -28,6 +28,11 @@ export function useConfirmAddress(token: string) {
   const client = useQueryClient();
   return useMutation({
     mutationFn: () => ask({ method: "POST", path: api.addressLink(token), body: {}, answer: linkedAddress }),
-    onSuccess: () => client.clear(),
+    onSuccess: () => forgetAllButLinks(client),
   });
+}
+
+/** Someone else is signed in from here on. The link is used up, and the page that still shows it must not ask again. */
+function forgetAllButLinks(client: QueryClient): void {
+  client.removeQueries({ predicate: ({ queryKey }) => !String(queryKey[0]).endsWith(" link") });
 }
