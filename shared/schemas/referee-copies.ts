@@ -19,7 +19,7 @@ export const newRefereeCopy = z.strictObject({
   expiresAt: opensUntil.optional(),
   /** An earlier copy of the study, which then says that there is a newer one. */
   replaces: identifier.optional(),
-  /** Where the link is sent; it is not kept. */
+  /** Where the link is sent. It stays in the study's journal, and with the message as long as messages are kept. */
   email: address.optional(),
 });
 export type NewRefereeCopy = z.infer<typeof newRefereeCopy>;

@@ -104,7 +104,7 @@ export function SealForm({ studyId, cells, onSealed }: SealFormProps) {
         type="email"
         autoComplete="off"
         fault={errors.email?.message}
-        hint="May be left out: the link is shown to you in any case. The address is kept in the study's journal alone."
+        hint="May be left out: the link is shown to you in any case. The address stays in the study's journal, and for 30 days with the administrators' messages."
         {...register("email")}
       />
       {seal.isError && <Fault>{sentenceOf(seal.error)}</Fault>}
