@@ -1,4 +1,5 @@
 import { lazy, type ReactNode, Suspense, useEffect, useState } from "react";
+import type { LabelledTable } from "../../../shared/tables/table.ts";
 import { LinkWord } from "../../components/button.tsx";
 import { Unfetched } from "../../components/unfetched.tsx";
 import { ProgressLine } from "../../features/estimation/progress-line.tsx";
@@ -51,7 +52,7 @@ function StoredFinding({ studyId, standing, beside, onChange }: BandFindingProps
       <LinkWord to={pages.cell(studyId, cell.id)}>
         {kind === "data" ? "Row accounting" : "Open"} <span className="sr-only">of {cell.name}</span>
       </LinkWord>
-      {kind !== "data" && table && <CopyWord table={table} name={cell.name} />}
+      {kind !== "data" && table && <CopyWord what="table" name={cell.name} write={() => writeTable(table)} />}
     </>
   );
   return (
@@ -104,4 +105,10 @@ function Otherwise({ studyId, standing, onChange }: Omit<BandFindingProps, "besi
     );
   }
   return <Unanswered studyId={studyId} standing={standing} onChange={onChange} />;
+}
+
+/** The code that makes a table for a spreadsheet is loaded when one is copied. */
+async function writeTable(table: LabelledTable): Promise<void> {
+  const { copyTable } = await import("../../cells/copy-table.tsx");
+  await copyTable(table, "table");
 }

@@ -1,26 +1,24 @@
-import { useState } from "react";
-import type { LabelledTable } from "../../../shared/tables/table.ts";
 import { Word } from "../../components/button.tsx";
+import { useCopying } from "../../components/use-copying.ts";
 
-/** *Copy table*: pastes into a spreadsheet; LaTeX and CSV are in the opened cell. */
-export function CopyWord({ table, name }: { table: LabelledTable; name: string }) {
-  const [said, setSaid] = useState<string>();
-  const copy = async () => {
-    try {
-      const { copyTable } = await import("../../cells/copy-table.tsx");
-      await copyTable(table, "table");
-      setSaid("Copied");
-    } catch {
-      setSaid("The browser does not let this page copy");
-    }
-  };
+interface CopyWordProps {
+  /** What is copied, as it is called: table, text. */
+  readonly what: string;
+  /** The cell's name. */
+  readonly name: string;
+  readonly write: () => Promise<void>;
+}
+
+/** *Copy table*, *Copy text*: the finding of a cell, for a spreadsheet or a manuscript. */
+export function CopyWord({ what, name, write }: CopyWordProps) {
+  const { said, copy } = useCopying();
   return (
     <span>
       <span role="status" className={said ? "mr-3 text-ink2" : ""}>
         {said}
       </span>
-      <Word onClick={() => void copy()}>
-        Copy table <span className="sr-only">of {name}</span>
+      <Word onClick={() => void copy(write)}>
+        Copy {what} <span className="sr-only">of {name}</span>
       </Word>
     </span>
   );

@@ -1,4 +1,4 @@
-import { useId, useMemo, useState } from "react";
+import { useId, useMemo } from "react";
 import type { Upload } from "../../../shared/schemas/resources.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { referenceInWords } from "../../../shared/tables/cite.ts";
@@ -8,6 +8,7 @@ import {
   paragraphWithReferences,
 } from "../../../shared/tables/methods/paragraph.ts";
 import { Word } from "../../components/button.tsx";
+import { useCopying } from "../../components/use-copying.ts";
 import { useFinding } from "../../features/findings/api/get-finding.ts";
 import { resolveHere } from "./reading.ts";
 import type { Standing } from "./standing.ts";
@@ -24,7 +25,7 @@ export default function PaperWords({ studyId, standing, cells, uploads }: PaperW
   const { cell, fingerprint } = standing;
   const { data } = useFinding(studyId, fingerprint);
   const headingId = useId();
-  const [said, setSaid] = useState<string>();
+  const { said, copy } = useCopying();
   const asked = useMemo(() => {
     const resolved = resolveHere(cells, uploads);
     const own = resolved.find(({ id }) => id === cell.id)?.specification;
@@ -35,14 +36,7 @@ export default function PaperWords({ studyId, standing, cells, uploads }: PaperW
   if (!asked) return null;
   const finding = fingerprint && data?.finding.kind === "system" ? data.finding : undefined;
   const paragraph = methodsParagraph({ ...asked, ...(finding && { finding }) });
-  const copy = async (text: string) => {
-    try {
-      await navigator.clipboard.writeText(text);
-      setSaid("Copied");
-    } catch {
-      setSaid("The browser does not let this page copy");
-    }
-  };
+  const copyText = (text: string) => copy(() => navigator.clipboard.writeText(text));
   const of = <span className="sr-only"> of the methods of {cell.name}</span>;
   return (
     <section className="paper-words" aria-labelledby={headingId}>
@@ -54,8 +48,8 @@ export default function PaperWords({ studyId, standing, cells, uploads }: PaperW
           <span role="status" className="text-ink2">
             {said}
           </span>
-          <Word onClick={() => void copy(paragraphWithReferences(paragraph))}>Copy with references{of}</Word>
-          <Word onClick={() => void copy(paragraphBibtex(paragraph))}>BibTeX{of}</Word>
+          <Word onClick={() => void copyText(paragraphWithReferences(paragraph))}>Copy with references{of}</Word>
+          <Word onClick={() => void copyText(paragraphBibtex(paragraph))}>BibTeX{of}</Word>
         </p>
       </div>
       <p className="font-serif text-[0.96875rem]/[1.5rem] text-pretty">{paragraph.text}</p>

@@ -1,12 +1,13 @@
-import { type ReactNode, useCallback, useEffect, useState } from "react";
+import { type ReactNode, useCallback, useEffect } from "react";
 import type { QuotedNumber, TextFinding } from "../../../shared/schemas/text.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { quotationsInWords } from "../../../shared/tables/text-finding.ts";
 import { WhereCellsAreProvider } from "../../cells/text/where-cells-are.ts";
-import { LinkWord, Word } from "../../components/button.tsx";
+import { LinkWord } from "../../components/button.tsx";
 import { pages } from "../../lib/paths.ts";
 import { addressOf } from "./addresses.ts";
 import { useAllStandings } from "./all-standings.ts";
+import { CopyWord } from "./copy-word.tsx";
 import { FindingBand, FindingOpen, OnItsWay } from "./finding-view.tsx";
 import { firstFindingShown } from "./first-finding.ts";
 import { ProblemList } from "./problem-list.tsx";
@@ -39,7 +40,9 @@ export default function TextCell({ studyId, standing, beside, onChange, opened }
     [standings, opened, studyId],
   );
   const isEmpty = cell.source.trim() === "";
-  const copy = finding && !isEmpty && <CopyText finding={finding} name={cell.name} />;
+  const copy = finding && !isEmpty && (
+    <CopyWord what="text" name={cell.name} write={() => navigator.clipboard.writeText(finding.resolved)} />
+  );
   const actions = !isEmpty && !opened && (
     <>
       <LinkWord to={pages.cell(studyId, cell.id)}>
@@ -102,28 +105,5 @@ function NothingWritten({ readOnly }: { readOnly: boolean }) {
       <span className="type-source">{"{base: eta, grains}"}</span>: it follows its finding, and says so when that is out
       of date or gone.
     </p>
-  );
-}
-
-/** The text with its numbers in their places, for a manuscript. */
-function CopyText({ finding, name }: { finding: TextFinding; name: string }) {
-  const [said, setSaid] = useState<string>();
-  const copy = async () => {
-    try {
-      await navigator.clipboard.writeText(finding.resolved);
-      setSaid("Copied");
-    } catch {
-      setSaid("The browser does not let this page copy");
-    }
-  };
-  return (
-    <span>
-      <span role="status" className={said ? "mr-3 text-ink2" : ""}>
-        {said}
-      </span>
-      <Word onClick={() => void copy()}>
-        Copy text <span className="sr-only">of {name}</span>
-      </Word>
-    </span>
   );
 }
