@@ -1,6 +1,8 @@
 import { z } from "zod";
 import { identifier } from "../../shared/schemas/primitives.ts";
 import type { Problem } from "../../shared/schemas/problem.ts";
+import type { KeyPath } from "../../shared/study/cell-source.ts";
+import { valueAt } from "../../shared/study/issues.ts";
 import { invalid } from "../errors.ts";
 
 /** The value as the schema returns it, or a 400 that names every key that will not do. */
@@ -9,9 +11,26 @@ export function validate<T>(schema: z.ZodType<T>, value: unknown): T {
   if (parsed.success) return parsed.data;
   const problems = parsed.error.issues.map((issue): Problem => {
     const key = issue.path.map(String);
-    return { sentence: key.length === 0 ? issue.message : `${key.join(".")}: ${issue.message}`, key };
+    const sentence = sizeInWords(issue, value) ?? issue.message;
+    return { sentence: key.length === 0 ? sentence : `${key.join(".")}: ${sentence}`, key };
   });
   throw invalid(problems.map((problem) => problem.sentence).join("; "), problems);
+}
+
+const UNITS: Readonly<Record<string, string>> = { string: " characters", array: " entries" };
+
+/** What is too large or too small, with both numbers; nothing where the schema has words of its own for it. */
+function sizeInWords(issue: z.core.$ZodIssue, whole: unknown): string | undefined {
+  if (issue.code !== "too_big" && issue.code !== "too_small") return undefined;
+  if (!issue.message.startsWith("Too ")) return undefined;
+  const value = valueAt(whole, issue.path as KeyPath);
+  const unit = UNITS[issue.origin] ?? "";
+  // A number from an address comes as a text: its length is not its size.
+  const size = unit && (typeof value === "string" || Array.isArray(value)) ? value.length : String(value);
+  const [inclusive, exclusive, end] =
+    issue.code === "too_big" ? ["at most", "below", issue.maximum] : ["at least", "above", issue.minimum];
+  const limit = `${issue.inclusive === false ? exclusive : inclusive} ${end}`;
+  return unit ? `has ${size}${unit}, and takes ${limit}` : `is ${size}, and must be ${limit}`;
 }
 
 const places = z.object({
