@@ -37,16 +37,14 @@ export function dayInWords(instant: string | number | Date, now = new Date()): s
   return days === 1 ? "Yesterday" : whenInWords(then, now);
 }
 
-/** A moment of any day, to the minute: "14:08", "Tuesday 14:08", "9 March 14:08". */
-export function minuteInWords(instant: string | number | Date, now = new Date()): string {
-  const then = new Date(instant);
-  return daysBetween(then, now) <= 0 ? clock(then) : `${whenInWords(then, now)} ${clock(then)}`;
-}
-
-/** A moment to the minute: "14:08" today, "9 March, 14:08" on another day. */
+/** A moment to the minute, gone by or to come: "14:08" today, "Tuesday 14:08" in the past week, "9 March, 14:08". */
 export function momentInWords(instant: string | number | Date, now = new Date()): string {
   const then = new Date(instant);
-  return daysBetween(then, now) === 0 ? clock(then) : `${calendarDate(then, now)}, ${clock(then)}`;
+  const days = daysBetween(then, now);
+  if (days === 0) return clock(then);
+  return days > 0 && days < 7
+    ? `${whenInWords(then, now)} ${clock(then)}`
+    : `${calendarDate(then, now)}, ${clock(then)}`;
 }
 
 /** How long ago a change was: "2 minutes ago", "at 9:05", "yesterday", "on Tuesday", "on 4 March". */

@@ -5,7 +5,7 @@ import { counted } from "../../../shared/study/words.ts";
 import { Word } from "../../components/button.tsx";
 import { Fault } from "../../components/field.tsx";
 import { sentenceOf } from "../../lib/api.ts";
-import { minuteInWords } from "../../lib/dates.ts";
+import { momentInWords } from "../../lib/dates.ts";
 import { api } from "../../lib/paths.ts";
 import { useChangeCheckpoint, useRemoveCheckpoint } from "./api/change-checkpoints.ts";
 import { CheckpointForm } from "./checkpoint-form.tsx";
@@ -47,7 +47,7 @@ export function CheckpointEntry(props: CheckpointEntryProps) {
       <p className="type-small text-ink2">
         {counted(checkpoint.cells, "cell")}, kept {occasion === "kept" ? "" : "by itself for "}
         {occasion === "kept" ? `by ${lower(writersInWords([madeBy], you))}` : lower(writersInWords([madeBy], you))},{" "}
-        {minuteInWords(madeAt)}
+        {momentInWords(madeAt)}
       </p>
       {note && opened !== "words" && <p className="pt-1 wrap-anywhere">{note}</p>}
       <div className="type-small flex flex-wrap items-baseline gap-x-4 gap-y-1 pt-1.5">

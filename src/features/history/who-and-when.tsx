@@ -1,7 +1,7 @@
 import { useDeferredValue, useEffect, useState } from "react";
 import { Link } from "react-router-dom";
 import type { LatestEdits } from "../../../shared/schemas/history.ts";
-import { clockTime, minuteInWords } from "../../lib/dates.ts";
+import { clockTime, momentInWords } from "../../lib/dates.ts";
 import { pages } from "../../lib/paths.ts";
 import { useLatestEdits } from "./api/get-latest-edits.ts";
 
@@ -25,7 +25,7 @@ export function WhoAndWhen({ studyId, you, what, ...asked }: WhoAndWhenProps) {
   if (edit === undefined) return null;
   const name =
     edit.by === undefined ? "the program" : edit.by.id === you ? "you" : (edit.by.name ?? "someone no longer here");
-  const moment = minuteInWords(edit.at);
+  const moment = momentInWords(edit.at);
   const when = moment === clockTime(edit.at) ? `at ${moment}` : `on ${moment}`;
   return (
     <Link className="reference" to={`${pages.history(studyId)}?cell=${encodeURIComponent(edit.cellId)}`}>
