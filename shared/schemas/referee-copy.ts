@@ -27,7 +27,8 @@ export type SealedAlso = z.infer<typeof sealedAlso>;
 
 /**
  * What a referee reads: everything needed to recompute matrix, errors, eigenvalues and checks, and
- * nothing of any household: no row numbers, no row values, no village, no upload.
+ * nothing of any household: no row numbers, no row values, no upload. Groups of households have their
+ * names and counts only in elasticities by group that the owner chose to seal, ten rows or more each.
  */
 export const sealedContent = z.strictObject({
   format: z.literal("tangency referee copy 1"),
