@@ -4,6 +4,9 @@ import react from "@vitejs/plugin-react";
 import { defineConfig } from "vitest/config";
 import { BrowserFilesFirst } from "./tests/support/browser-files-first.ts";
 
+/** Tests of what computes: without a server, a database or a page. */
+const NUMBERS = ["tests/{shared,laws,reference,server/engine}/**/*.test.ts"];
+
 export default defineConfig({
   plugins: [react(), tailwindcss()],
   publicDir: "src/public",
@@ -16,9 +19,20 @@ export default defineConfig({
     projects: [
       {
         test: {
+          name: "numbers",
+          environment: "node",
+          include: NUMBERS,
+          // They only compute and share nothing that they change: what one file has read is there for the next.
+          isolate: false,
+          testTimeout: 60_000,
+        },
+      },
+      {
+        test: {
           name: "node",
           environment: "node",
-          include: ["tests/{shared,server,laws,reference,sync,architecture}/**/*.test.ts"],
+          include: ["tests/{server,sync,architecture}/**/*.test.ts"],
+          exclude: NUMBERS,
           testTimeout: 60_000,
           hookTimeout: 60_000,
         },

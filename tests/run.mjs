@@ -17,7 +17,7 @@ if (browser === undefined) console.error(HOW);
 build();
 
 const words = ["run", "--reporter=default", "--reporter=./tests/support/slowest-files.ts", ...process.argv.slice(2)];
-if (browser === undefined) words.push("--project", "node", "--project", "browser-dom");
+if (browser === undefined) words.push("--project", "numbers", "--project", "node", "--project", "browser-dom");
 const results = process.env.VITEST_RESULTS;
 if (results !== undefined) words.push("--reporter=json", `--outputFile.json=${results}`);
 const code = runPackage("vitest/vitest.mjs", words, { env: { ...process.env, CHROMIUM_PATH: browser ?? "" } });

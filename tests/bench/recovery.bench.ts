@@ -28,16 +28,6 @@ const CLUSTERED: Readonly<Record<RecoveredSystem, number>> = {
   easi: 300,
   "cubic easi": 200,
 };
-/** Where terms move with the coefficients every replicate iterates from the rows: fewer samples. */
-const BOOTSTRAPPED: Readonly<Record<RecoveredSystem, number>> = {
-  "la-aids": SAMPLES,
-  aids: SAMPLES,
-  les: SAMPLES,
-  rotterdam: SAMPLES,
-  quaids: 100,
-  easi: 40,
-  "cubic easi": 15,
-};
 /** Apart by more than there are samples of a line. */
 const SEEDS_OF_A_LINE = 10_000;
 
@@ -61,10 +51,7 @@ const LINES: readonly (Asked | "first stage")[] = [
     const samples = CLUSTERED[system];
     return { system, made: "in clusters", errors: byCluster, rows: 960, samples } as const;
   }),
-  ...RECOVERED.map((system) => {
-    const samples = BOOTSTRAPPED[system];
-    return { system, made: "independent", errors: bootstrap("rows"), rows: 200, samples } as const;
-  }),
+  ...RECOVERED.map((system) => ({ system, made: "independent", errors: bootstrap("rows"), rows: 200 }) as const),
   { ...aids, made: "in clusters", errors: "conventional", rows: 960, tooNarrow: "errors alike within clusters" },
   { ...aids, made: "in clusters", errors: bootstrap("clusters", byCluster), rows: 960 },
   ...[12, 80].map((clusters) => {

@@ -1,11 +1,9 @@
-import { mkdirSync } from "node:fs";
-import { fileURLToPath } from "node:url";
-import { AxeBuilder } from "@axe-core/playwright";
 import type { Browser, BrowserContext, Page } from "playwright-core";
 import { afterAll, beforeAll, expect, it } from "vitest";
 import type { StudyStatus } from "../../shared/schemas/status.ts";
+import { faultsOf, picture, settled, THEMES } from "./access.ts";
 import { eventually } from "./editing.ts";
-import { choose, fromApi, untilSays } from "./study-page.ts";
+import { fromApi, untilSays } from "./study-page.ts";
 import { demoStudyId, ILSE, linkSentTo, openBrowser, Product, signIn } from "./support.ts";
 import { watch } from "./watch.ts";
 
@@ -13,16 +11,8 @@ import { watch } from "./watch.ts";
  * Whoever sees badly, hears the page or has a small one: every page in both themes and at three widths; all
  * rules of access in every one of the six.
  */
-const THEMES = ["light", "dark"] as const;
 const WIDTHS = [1440, 720, 390] as const;
 const TELEPHONE = 390;
-/** The law's rules, the size of targets among them, and the practice beyond. */
-const RULES = ["wcag2a", "wcag2aa", "wcag21a", "wcag21aa", "wcag22aa", "best-practice"];
-/** Where pictures of the pages are left to be looked at; no part of the repository. */
-const PICTURES = fileURLToPath(new URL("../artefacts/", import.meta.url));
-
-type Theme = (typeof THEMES)[number];
-
 interface Place {
   readonly name: string;
   readonly path: () => string;
@@ -168,7 +158,6 @@ const PLACES: readonly Place[] = [
 ];
 
 beforeAll(async () => {
-  mkdirSync(PICTURES, { recursive: true });
   product = await Product.start();
   browser = await openBrowser();
   const ilse = await signIn(browser, product, ILSE);
@@ -209,12 +198,6 @@ async function openPage(signedIn: boolean): Promise<Page> {
   return context.newPage();
 }
 
-/** Turns the machine's theme on an open page, which follows it. */
-async function turn(page: Page, theme: Theme): Promise<void> {
-  await page.emulateMedia({ colorScheme: theme });
-  await page.locator(`html[data-theme="${theme}"]`).waitFor();
-}
-
 /** Gives an open page a width; the narrowest is a telephone's and pointed at with a finger. */
 async function resizer(page: Page): Promise<(width: number) => Promise<void>> {
   const device = await page.context().newCDPSession(page);
@@ -231,25 +214,6 @@ async function unfold(page: Page): Promise<void> {
   await page.evaluate(() => {
     for (const details of document.querySelectorAll("details")) details.open = true;
   });
-}
-
-/** Waits until nothing moves and no finding is still on its way. */
-async function settled(page: Page): Promise<void> {
-  await page.getByText("Fetching").first().waitFor({ state: "hidden" });
-  await page.evaluate(() => document.fonts.ready);
-  await page.waitForFunction(() => document.getAnimations().every(({ playState }) => playState !== "running"));
-}
-
-/** Only violations are described, and nothing is fetched again for rules that are not asked for: the rest is the same. */
-async function faultsOf(page: Page) {
-  // By one call in the page itself: there are no frames of others, and no second page has to be opened.
-  const { violations } = await new AxeBuilder({ page })
-    .options({ runOnly: { type: "tag", values: RULES }, resultTypes: ["violations"], preload: false })
-    .setLegacyMode()
-    .analyze();
-  return violations.flatMap(({ id, help, nodes }) =>
-    nodes.map(({ html, any }) => ({ id, help, html: html.slice(0, 300), why: any[0]?.message })),
-  );
 }
 
 it.each(PLACES)("$name has no fault that a machine can find, in either theme at any width", async (place) => {
@@ -269,7 +233,7 @@ it.each(PLACES)("$name has no fault that a machine can find, in either theme at 
       await settled(page);
       expect(await page.locator("html").getAttribute("data-theme")).toBe(theme);
       expect(await page.evaluate(() => matchMedia("(pointer: coarse)").matches)).toBe(width === TELEPHONE);
-      await page.screenshot({ path: `${PICTURES}${place.name}-${theme}-${width}.png`, fullPage: true });
+      await picture(page, `${place.name}-${theme}-${width}`, { fullPage: true });
       expect.soft(await faultsOf(page), `${theme}, ${width} pixels`).toEqual([]);
       const [wide, inner] = await page.evaluate(() => [document.documentElement.scrollWidth, innerWidth]);
       expect.soft(wide, `the document's width at ${width} pixels, ${theme}`).toBeLessThanOrEqual(inner);
@@ -277,77 +241,5 @@ it.each(PLACES)("$name has no fault that a machine can find, in either theme at 
   }
   expect.soft(watched.takeFaults().filter((fault) => !place.refused?.test(fault))).toEqual([]);
   expect.soft(watched.outside).toEqual([]);
-  await page.context().close();
-});
-
-it("has none in what is laid over a study either", async () => {
-  const page = await openPage(true);
-  const watched = watch(page, product.origin);
-  await page.goto(`/studies/${studyId}`);
-  await page.getByRole("heading", { level: 1 }).waitFor();
-  await settled(page);
-  for (const entry of [
-    "People",
-    "Uploads",
-    "Remarks",
-    "Referee copies",
-    "Journal",
-    "Settings",
-    "Keys",
-    "Delete the study",
-  ]) {
-    await choose(page, entry);
-    await page.getByRole("dialog").waitFor();
-    for (const theme of THEMES) {
-      await turn(page, theme);
-      await settled(page);
-      await page.screenshot({ path: `${PICTURES}${entry.toLowerCase().replaceAll(" ", "-")}-${theme}.png` });
-      expect.soft(await faultsOf(page), `${entry}, ${theme}`).toEqual([]);
-    }
-    await page.keyboard.press("Escape");
-    await page.getByRole("dialog").waitFor({ state: "hidden" });
-  }
-  expect.soft(watched.takeFaults()).toEqual([]);
-  await page.context().close();
-});
-
-it("has none in the rows of an upload and of a caution", async () => {
-  const page = await openPage(true);
-  const watched = watch(page, product.origin);
-  await page.goto(cell("survey")());
-  const outliers = page.getByRole("list", { name: "Look at the rows of outliers" }).getByRole("button").first();
-  const lists = { "rows of an upload": page.getByRole("button", { name: /^Look at the rows of .*\.csv$/ }), outliers };
-  for (const [name, button] of Object.entries(lists)) {
-    await button.click();
-    await page.getByRole("dialog").getByRole("table").waitFor();
-    for (const theme of THEMES) {
-      await turn(page, theme);
-      await settled(page);
-      await page.screenshot({ path: `${PICTURES}${name.replaceAll(" ", "-")}-${theme}.png` });
-      expect.soft(await faultsOf(page), `${name}, ${theme}`).toEqual([]);
-    }
-    await page.keyboard.press("Escape");
-    await page.getByRole("dialog").waitFor({ state: "hidden" });
-  }
-  expect.soft(watched.takeFaults()).toEqual([]);
-  await page.context().close();
-});
-
-it("has none where remarks are folded to letters, opened over the finding and written", async () => {
-  const page = await openPage(true);
-  const watched = watch(page, product.origin);
-  await page.setViewportSize({ width: 1100, height: 1000 });
-  await page.goto(`/studies/${studyId}`);
-  const remarks = page.getByRole("region", { name: "Remarks on base" });
-  await remarks.getByRole("button", { name: "Remark a by Tomás Adeyemi" }).click();
-  await remarks.getByRole("button", { name: "Reply to the remark by Tomás Adeyemi" }).click();
-  await remarks.getByRole("button", { name: "Add a remark on base" }).first().click();
-  for (const theme of THEMES) {
-    await turn(page, theme);
-    await settled(page);
-    await page.screenshot({ path: `${PICTURES}remarks-over-${theme}.png` });
-    expect.soft(await faultsOf(page), theme).toEqual([]);
-  }
-  expect.soft(watched.takeFaults()).toEqual([]);
   await page.context().close();
 });

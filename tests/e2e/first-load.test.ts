@@ -41,8 +41,8 @@ afterAll(async () => {
 it.each([
   ["sign-in", "form button", 1440],
   ["studies", "main a[href^='/studies/']", 1440],
-  ["study", ".arrives .type-finding", 1440],
-  ["study", ".arrives .type-finding", 390],
+  ["study", "main table", 1440],
+  ["study", "main table", 390],
   ["opened cell", ".type-finding-open", 1440],
   ["referee copy", "main table", 1440],
 ] as const)("%s can be read (%s, %i px) before 220 kB of scripts have come", async (name, selector, width) => {
