@@ -1,3 +1,4 @@
+import { FINDING_TABLES } from "../../shared/tables/of-finding.ts";
 import { DataBand } from "../../src/cells/data/band.tsx";
 import { DataOpen } from "../../src/cells/data/view.tsx";
 import { ElasticitiesBand } from "../../src/cells/elasticities/band.tsx";
@@ -7,7 +8,6 @@ import { HowChecked } from "../../src/cells/slutsky/how-checked.tsx";
 import { SlutskyOpen } from "../../src/cells/slutsky/view.tsx";
 import { SystemBand } from "../../src/cells/system/band.tsx";
 import { SystemOpen } from "../../src/cells/system/view.tsx";
-import { CELL_TABLES } from "../../src/cells/tables.ts";
 import { TestsBand } from "../../src/cells/tests/band.tsx";
 import { TestsOpen } from "../../src/cells/tests/view.tsx";
 import { TextBand } from "../../src/cells/text/band.tsx";
@@ -15,10 +15,10 @@ import { TextOpen } from "../../src/cells/text/view.tsx";
 
 /** The parts of each kind that show a finding, here without loading them one by one. */
 export const CELL_PARTS = {
-  data: { Band: DataBand, Open: DataOpen, tables: CELL_TABLES.data },
-  system: { Band: SystemBand, Open: SystemOpen, tables: CELL_TABLES.system },
-  tests: { Band: TestsBand, Open: TestsOpen, tables: CELL_TABLES.tests },
-  elasticities: { Band: ElasticitiesBand, Open: ElasticitiesOpen, tables: CELL_TABLES.elasticities },
-  slutsky: { Band: SlutskyBand, Open: SlutskyOpen, Aside: HowChecked, tables: CELL_TABLES.slutsky },
-  text: { Band: TextBand, Open: TextOpen, tables: CELL_TABLES.text },
+  data: { Band: DataBand, Open: DataOpen, tables: FINDING_TABLES.data },
+  system: { Band: SystemBand, Open: SystemOpen, tables: FINDING_TABLES.system },
+  tests: { Band: TestsBand, Open: TestsOpen, tables: FINDING_TABLES.tests },
+  elasticities: { Band: ElasticitiesBand, Open: ElasticitiesOpen, tables: FINDING_TABLES.elasticities },
+  slutsky: { Band: SlutskyBand, Open: SlutskyOpen, Aside: HowChecked, tables: FINDING_TABLES.slutsky },
+  text: { Band: TextBand, Open: TextOpen, tables: FINDING_TABLES.text },
 };
