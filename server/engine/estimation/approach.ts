@@ -13,10 +13,13 @@ import type { Estimation } from "./estimation.ts";
 import { gram } from "./gram.ts";
 import { iterationProgress, largestGradient } from "./iteration-progress.ts";
 import { relativeStep, search } from "./line-search.ts";
-import { factorOfProducts, type NormalFactor } from "./normal-factor.ts";
+import { factorOfProducts, type NormalFactor, projectedOn } from "./normal-factor.ts";
 import { gaussNewtonStep, likelihoodStep } from "./steps.ts";
 
 const MOST_ITERATIONS = 400;
+/** After a step this small that was so much shorter than the last, squares of derivatives hardly move any more. */
+const SMALL_STEP = 1e-2;
+const SHORTER = 0.1;
 
 export interface Approach {
   readonly free: number[];
@@ -46,13 +49,17 @@ export function approach(
   let state = evaluate(estimation, criterion, [...start], control);
   const { say } = iterationProgress(estimation, criterion, control);
   let previous = Number.POSITIVE_INFINITY;
+  let kept: NormalFactor | undefined;
   for (let iteration = 1; ; iteration++) {
     poll();
     const derivatives = sparseDerivatives(form.derivatives(state.free), equations, moments.terms.columns);
     poll();
     const residuals = residualProducts(state.weighted, moments.terms);
     const gradient = gradientOf(derivatives, residuals, state.weight);
-    const factor = factorOfProducts(normalProducts(derivatives, products, state.weight, poll), gradient, poll);
+    const factor: NormalFactor | undefined =
+      kept !== undefined
+        ? projectedOn(kept, gradient)
+        : factorOfProducts(normalProducts(derivatives, products, state.weight, poll), gradient, poll);
     const leave = { free: state.free, iterations: iteration - 1, reached: false };
     if (factor === undefined) return leave;
     const step = chooseStep(estimation, criterion, state, factor, derivatives, residuals, poll);
@@ -62,6 +69,8 @@ export function approach(
     }
     // Steps that shrink no more although they are small are rounding.
     if (iteration >= MOST_ITERATIONS || (size < 1e-4 && size > 0.9 * previous)) return leave;
+    const settles = size <= SMALL_STEP && size <= SHORTER * previous;
+    kept = settles && !wantsNewton(criterion, estimation) ? factor : undefined;
     previous = size;
     const next = search(estimation, criterion, state, step, dot(gradient, step), factor, control);
     if (next === undefined) return leave;

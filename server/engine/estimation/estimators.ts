@@ -2,7 +2,8 @@ import type { RunControl } from "../run.ts";
 import { approach } from "./approach.ts";
 import type { Criterion } from "./criterion.ts";
 import type { Estimation } from "./estimation.ts";
-import { minimise, type Solution } from "./minimise.ts";
+import { minimise, type Solution, TOLERANCE } from "./minimise.ts";
+import { residualFactor } from "./residuals.ts";
 import { equalWeights, residualCovariance } from "./weighting.ts";
 
 /** How far least squares is carried where it only starts the likelihood off. */
@@ -24,13 +25,30 @@ export function leastSquares(
 }
 
 /**
+ * Least squares as a first step, of which the next one reads the residuals alone: from contractions of
+ * Z'Z where these carry it as far as a fit is carried, and otherwise from the fit in full, which makes every refusal.
+ */
+export function firstLeastSquares(
+  estimation: Estimation,
+  addsUp: boolean,
+  start: readonly number[],
+  control: RunControl,
+): Pick<Solution, "residuals"> {
+  const weight = equalWeights(estimation.equations.length, addsUp);
+  const near = approach(estimation, { kind: "weighted", weight }, start, control, TOLERANCE);
+  if (!near.reached) return leastSquares(estimation, addsUp, start, control);
+  const { moments, form } = estimation;
+  return { residuals: residualFactor(moments, form, near.free) };
+}
+
+/**
  * Seemingly unrelated regressions, one step (Zellner 1962, Journal of the American Statistical
  * Association 57): generalised least squares at the Σ̂ of `first`, whose restrictions act within
  * equations only, so that the result does not depend on the dropped good. Σ̂ divides by T.
  */
 export function seeminglyUnrelated(
   estimation: Estimation,
-  first: Solution,
+  first: Pick<Solution, "residuals">,
   start: readonly number[],
   control: RunControl,
 ): Solution {

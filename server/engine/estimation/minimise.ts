@@ -35,7 +35,8 @@ export interface Solution {
   readonly factor: NormalFactor;
 }
 
-const TOLERANCE = 1e-10;
+/** Of |Δθ|/(1 + |θ|) in the last step. */
+export const TOLERANCE = 1e-10;
 /** So near, derivatives are formed in full: what is left is rounding. */
 const CLOSE = 1e-8;
 const MOST_ITERATIONS = 500;

@@ -45,9 +45,17 @@ export function factorOfProducts(products: Columns, projections: Float64Array, p
   }
   const { factor, dependent, smallestPivot } = semidefiniteCholesky(scaled, SQUARED_PIVOT, poll);
   if (dependent.length > 0 || smallestPivot < SQUARED_PIVOT) return undefined;
+  return projectedOn({ lengths, triangle: factor, dependent: [] }, projections);
+}
+
+/** The same R with the Q'b of another J'b. */
+export function projectedOn(
+  { lengths, triangle, dependent }: Omit<NormalFactor, "projected">,
+  projections: Float64Array,
+): NormalFactor {
   const projected = projections.map((value, f) => value / lengths[f]);
-  solveUpperTransposed(factor, projected);
-  return { lengths, triangle: factor, projected, dependent: [] };
+  solveUpperTransposed(triangle, projected);
+  return { lengths, triangle, projected, dependent };
 }
 
 function byReflections(jacobian: Columns, right: Columns, poll: Poll | undefined): NormalFactor {

@@ -4,7 +4,7 @@ import { type Refusal, unlessRefused } from "../refusal.ts";
 import type { RunControl } from "../run.ts";
 import { systemForm } from "./coefficient-form.ts";
 import type { Estimation } from "./estimation.ts";
-import { leastSquares, maximumLikelihood, seeminglyUnrelated } from "./estimators.ts";
+import { firstLeastSquares, leastSquares, maximumLikelihood, seeminglyUnrelated } from "./estimators.ts";
 import { NotConverged } from "./failures.ts";
 import { minimise, type Solution } from "./minimise.ts";
 import { solveStraight } from "./solve-straight.ts";
@@ -90,7 +90,7 @@ function solveFrom(
       // With symmetry in the first step, Σ̂ would depend on the dropped good.
       const form = systemForm(system, size, withinEquations(specification));
       const from = form.expand.places.map((place) => theta[place]);
-      const first = leastSquares({ ...estimation, form }, true, from, control);
+      const first = firstLeastSquares({ ...estimation, form }, true, from, control);
       return seeminglyUnrelated(estimation, first, start, control);
     }
     case "iterated seemingly unrelated":

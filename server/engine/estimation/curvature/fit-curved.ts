@@ -6,7 +6,7 @@ import type { RunControl } from "../../run.ts";
 import { constrainedForm } from "../coefficient-form.ts";
 import { dot, pickColumns } from "../columns.ts";
 import type { Estimation } from "../estimation.ts";
-import { leastSquares, seeminglyUnrelated } from "../estimators.ts";
+import { firstLeastSquares, leastSquares, seeminglyUnrelated } from "../estimators.ts";
 import { minimise, type Solution } from "../minimise.ts";
 import { asOneColumn, weightBlocks } from "../residuals.ts";
 import { residualCovariance } from "../weighting.ts";
@@ -146,7 +146,8 @@ function estimate(
       // Σ̂ of the first step holds no restriction across equations, curvature no more than symmetry.
       const form = constrainedForm(system, size, system.free(size, ["homogeneity"]));
       const start = form.expand.places.map((place) => solution.theta[place]);
-      return seeminglyUnrelated(estimation, leastSquares({ ...estimation, form }, true, start, control), free, control);
+      const first = firstLeastSquares({ ...estimation, form }, true, start, control);
+      return seeminglyUnrelated(estimation, first, free, control);
     }
     case "iterated seemingly unrelated":
       return minimise(estimation, { kind: "likelihood", step: "update" }, free, control);
