@@ -9,7 +9,15 @@ import { type ResolvedCell, resolveParsed } from "../../shared/study/resolve.ts"
 import { placed } from "../../shared/study/states.ts";
 import { parseStudyFile } from "../../shared/study/study-file.ts";
 import { sortByReading } from "../../shared/study/topology.ts";
-import { runData, runElasticities, runSlutsky, runSystem, runTests, runText } from "../engine/cells/index.ts";
+import {
+  runData,
+  runElasticities,
+  runPriceChange,
+  runSlutsky,
+  runSystem,
+  runTests,
+  runText,
+} from "../engine/cells/index.ts";
 import type { PreparedData, UploadTable } from "../engine/columns/prepared-data.ts";
 import { readTable } from "../engine/columns/read-table.ts";
 import { Refusal } from "../engine/refusal.ts";
@@ -30,6 +38,8 @@ export interface EstimatedStudy {
 interface Options {
   /** Names of the cells wanted; all when none are named. */
   readonly only?: readonly string[];
+  /** Sheets to read of workbooks, by the name their data cells write; the first that is not empty, unless said. */
+  readonly sheets?: ReadonlyMap<string, string>;
   readonly control: RunControl;
 }
 
@@ -37,7 +47,7 @@ interface Options {
 export async function estimateStudy(
   text: string,
   path: string,
-  { only = [], control }: Options,
+  { only = [], sheets, control }: Options,
 ): Promise<EstimatedStudy> {
   const file = parseStudyFile(text);
   const unknown = only.filter((name) => !file.cells.some((cell) => cell.name === name));
@@ -47,7 +57,7 @@ export async function estimateStudy(
   const read = await readUploads(
     file.cells.map(({ parsed }) => parsed.written.upload),
     path,
-    control,
+    { sheets, control },
   );
   const resolved = resolveParsed(file.cells, read.shapes);
   const fingerprints = fingerprintCells(resolved, read.shapes);
@@ -81,14 +91,20 @@ function complaintOf(cell: string, { key = [], sentence, place }: Problem): Comp
 }
 
 /** The files that data cells name, each read once. */
-async function readUploads(names: readonly unknown[], path: string, control: RunControl) {
+async function readUploads(
+  names: readonly unknown[],
+  path: string,
+  { sheets, control }: Pick<Options, "sheets" | "control">,
+) {
   const tables = new Map<string, UploadTable>();
   const shapes: UploadShape[] = [];
   const problems = new Map<string, Problem[]>();
   for (const name of new Set(names.filter((one) => typeof one === "string"))) {
     try {
       const whole = resolve(dirname(path), name);
-      const { table, columns } = await withFileOnDisk(whole, (file) => readTable(file, name, { control }));
+      const { table, columns } = await withFileOnDisk(whole, (file) =>
+        readTable(file, name, { sheet: sheets?.get(name), control }),
+      );
       tables.set(name, table);
       shapes.push({ name, sha256: table.sha256, rows: table.rows, columns });
     } catch (error) {
@@ -199,6 +215,7 @@ function runCell(
   }
   if (system?.kind !== "system") throw new Error(`${name} has no specification`);
   if (specification?.kind === "elasticities") return runElasticities(specification, system, data, control);
+  if (specification?.kind === "price change") return runPriceChange(specification, system, data, control);
   if (specification?.kind !== "slutsky") throw new Error(`${name} has no specification`);
   return runSlutsky(specification, system, data, control);
 }

@@ -3,7 +3,7 @@ import type { Finding } from "../../shared/schemas/cell.ts";
 import { type SystemFinding, systemFinding } from "../../shared/schemas/system.ts";
 import type { Database } from "../db/client.ts";
 import { findings } from "../db/schema/findings.ts";
-import { runData, runElasticities, runSlutsky, runSystem, runTests } from "../engine/cells/index.ts";
+import { runData, runElasticities, runPriceChange, runSlutsky, runSystem, runTests } from "../engine/cells/index.ts";
 import type { PreparedData, UploadTable } from "../engine/columns/prepared-data.ts";
 import { Refusal } from "../engine/refusal.ts";
 import type { RunControl } from "../engine/run.ts";
@@ -40,6 +40,7 @@ function find(job: CellJob, db: Database, memory: WorkerMemory, control: RunCont
   }
   const system = storedSystem(job, db);
   if (specification.kind === "elasticities") return runElasticities(specification, system, data, control);
+  if (specification.kind === "price change") return runPriceChange(specification, system, data, control);
   return runSlutsky(specification, system, data, control);
 }
 

@@ -1,13 +1,14 @@
 import { z } from "zod";
 import { dataFinding, dataSpecification } from "./data.ts";
 import { elasticitiesFinding, elasticitiesSpecification } from "./elasticities.ts";
+import { priceChangeFinding, priceChangeSpecification } from "./price-change.ts";
 import { slutskyFinding, slutskySpecification } from "./slutsky.ts";
 import { systemFinding, systemSpecification } from "./system.ts";
 import { testsFinding, testsSpecification } from "./tests.ts";
 import { textFinding, textSpecification } from "./text.ts";
 
 /** The kinds of cell. A kind is added here, with its schema file, its engine file and its view. */
-export const CELL_KINDS = ["data", "system", "tests", "elasticities", "slutsky", "text"] as const;
+export const CELL_KINDS = ["data", "system", "tests", "elasticities", "slutsky", "price change", "text"] as const;
 export const cellKind = z.enum(CELL_KINDS);
 export type CellKind = z.infer<typeof cellKind>;
 
@@ -17,6 +18,7 @@ export const cellSpecification = z.discriminatedUnion("kind", [
   testsSpecification,
   elasticitiesSpecification,
   slutskySpecification,
+  priceChangeSpecification,
   textSpecification,
 ]);
 export type CellSpecification = z.infer<typeof cellSpecification>;
@@ -27,6 +29,7 @@ export const SPECIFICATIONS = {
   tests: testsSpecification,
   elasticities: elasticitiesSpecification,
   slutsky: slutskySpecification,
+  "price change": priceChangeSpecification,
   text: textSpecification,
 } as const;
 
@@ -36,6 +39,7 @@ export const finding = z.discriminatedUnion("kind", [
   testsFinding,
   elasticitiesFinding,
   slutskyFinding,
+  priceChangeFinding,
   textFinding,
 ]);
 export type Finding = z.infer<typeof finding>;

@@ -49,7 +49,7 @@ export const elasticitiesSpecification = z
 export type ElasticitiesSpecification = z.infer<typeof elasticitiesSpecification>;
 
 /** Estimates with standard errors and the ends of their intervals. */
-const estimates = z.strictObject({ values: vector, errors: vector, low: vector, high: vector });
+export const estimates = z.strictObject({ values: vector, errors: vector, low: vector, high: vector });
 const estimatesByPrice = z.strictObject({ values: matrix, errors: matrix, low: matrix, high: matrix });
 export type EstimatesByPrice = z.infer<typeof estimatesByPrice>;
 

@@ -25,6 +25,7 @@ export const REFERENCES: { readonly [K in CellKind]: Readonly<Record<string, Cel
   tests: { system: "system", data: "data" },
   elasticities: { system: "system" },
   slutsky: { system: "system" },
+  "price change": { system: "system" },
   // Its quotations lead to cells of every kind: shared/study/quotations.ts.
   text: {},
 };
@@ -90,6 +91,17 @@ const KEYS: { readonly [K in CellKind]: Readonly<Record<KeysOf<K>, Told>> } = {
     at: ["where: base point, mean, a row, a quantile of expenditure, or prices and x of one's own"],
     form: ["share form k, or quantity form S in the units uploaded"],
   },
+  "price change": {
+    system: ["the name of the system cell it evaluates", "system"],
+    at: [
+      "where the effects are taken: base point, mean, a row, a quantile of expenditure, or prices and x of one's own",
+    ],
+    prices: ["by good: how its price changes, and whether that is a tax", "good"],
+    expenditure: ["change of total expenditure in per cent; 0 unless said otherwise"],
+    groups: ["who bears it: by a column, by total expenditure, or by expenditure per equivalent adult"],
+    "equivalence scale": ["a column of equivalent adults, or the square root of a column of members", "numeric column"],
+    level: ["the level of confidence of intervals; 0.95 unless said otherwise"],
+  },
   text: {
     text: ["prose in Markdown with mathematics, and numbers quoted as {base: eta, grains}"],
   },
@@ -113,6 +125,13 @@ const INNER: Readonly<Record<string, Told>> = {
   harmonics: ["pairs of sine and cosine instead of a dummy for every period"],
   at: ["where: base point, mean or a row"],
   rank: ["the rank of the matrix at the point; one less than the goods unless said otherwise"],
+  "per cent": ["by so many per cent of the price before"],
+  to: ["to this price, in the units uploaded"],
+  "ad valorem": ["a tax in per cent of what the seller receives; a subsidy below 0"],
+  specific: ["a tax per unit, in the units uploaded; a subsidy below 0"],
+  tax: ["whether the change is a tax: revenue is counted for those only"],
+  "pass-through": ["the share of the tax that reaches the price; 1 unless said otherwise"],
+  "square root of": ["the column of members of the household", "numeric column"],
   "two-step": ["columns that explain whether a good is bought at all", "numeric column"],
 };
 

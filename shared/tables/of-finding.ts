@@ -4,6 +4,7 @@ import { dataDescriptionTable } from "./data-description.ts";
 import { eigenvalueTable } from "./eigenvalues.ts";
 import { elasticityTables } from "./elasticities.ts";
 import { firstStepTables } from "./first-steps.ts";
+import { priceChangeTables } from "./price-change.ts";
 import { rowAccountingTable } from "./row-accounting.ts";
 import { compensatedTable, slutskyTable } from "./slutsky-matrix.ts";
 import type { LabelledTable } from "./table.ts";
@@ -17,5 +18,6 @@ export const FINDING_TABLES: { readonly [K in CellKind]: (finding: FindingOf<K>)
   tests: testsTables,
   elasticities: elasticityTables,
   slutsky: (finding) => [slutskyTable(finding, finding.form), eigenvalueTable(finding), compensatedTable(finding)],
+  "price change": priceChangeTables,
   text: (finding) => [quotedNumbersTable(finding)],
 };

@@ -34,6 +34,11 @@ export const CELL_VIEWS: { readonly [K in CellKind]: CellView<K> } = {
     Aside: async () => (await import("./slutsky/how-checked.tsx")).HowChecked,
     tables: async () => (await import("../../shared/tables/of-finding.ts")).FINDING_TABLES.slutsky,
   },
+  "price change": {
+    Band: async () => (await import("./price-change/band.tsx")).PriceChangeBand,
+    Open: async () => (await import("./price-change/view.tsx")).PriceChangeOpen,
+    tables: async () => (await import("../../shared/tables/of-finding.ts")).FINDING_TABLES["price change"],
+  },
   text: {
     Band: async () => (await import("./text/band.tsx")).TextBand,
     Open: async () => (await import("./text/view.tsx")).TextOpen,

@@ -6,6 +6,7 @@ const SAYS: Readonly<Record<CellKind, string>> = {
   tests: "what the data say of theory, and of the system’s own terms",
   elasticities: "elasticities at a point, by group or over rows, with intervals",
   slutsky: "the matrix of compensated effects, checked",
+  "price change": "new prices or taxes: effects, welfare, revenue and who bears it",
   text: "the argument between the numbers, which it quotes and keeps true",
 };
 

@@ -12,6 +12,7 @@ const FIRST_NAMES: Readonly<Record<CellKind, string>> = {
   tests: "laws",
   elasticities: "elasticities",
   slutsky: "matrix",
+  "price change": "price change",
   text: "argument",
 };
 
@@ -44,6 +45,7 @@ export function freshSource(kind: CellKind, cells: readonly CellSource[], upload
   }
   if (kind === "elasticities") return `system: ${last("system")}\nat: mean\n`;
   if (kind === "slutsky") return `system: ${last("system")}\nat: base point\nform: share\n`;
+  if (kind === "price change") return `system: ${last("system")}\nat: mean\nprices: {}\n`;
   if (kind === "text") return "";
   const free = uploads.filter(
     ({ name }) => !cells.some(({ kind, source }) => kind === "data" && source.includes(name)),
@@ -85,6 +87,7 @@ export function sourceInALine(kind: string, source: string): string {
     const at = typeof written.at === "object" && written.at ? inWords(written.at) : text("at") || "base point";
     return `${text("system") || "no system yet"} at ${at}; ${text("form") || "share"} form`;
   }
+  if (kind === "price change") return priceChangeInALine(written, text);
   return source.split("\n").find((line) => line.trim() !== "") ?? "nothing written yet";
 }
 
@@ -95,6 +98,12 @@ function elasticitiesInALine(written: Record<string, unknown>, text: (key: strin
   const where = typeof at === "object" && at ? inWords(at) : text("at") || "mean";
   const rest = by || isRows ? `${by}${isRows ? " over rows" : " at means"}` : ` at ${where}`;
   return `${text("system") || "no system yet"}${rest}`;
+}
+
+function priceChangeInALine(written: Record<string, unknown>, text: (key: string) => string): string {
+  const { prices } = written;
+  const goods = typeof prices === "object" && prices ? Object.keys(prices) : [];
+  return [text("system") || "no system yet", goods.length === 0 ? "no price changes yet" : goods.join(", ")].join("; ");
 }
 
 function inWords(at: object): string {
