@@ -29,6 +29,8 @@ export const theoryChecks = z.strictObject({
   sample: z
     .strictObject({
       rows: count,
+      /** T, where equations of changes or of lagged shares leave fewer rows than are judged. */
+      equations: count.optional(),
       /** Absent where the system is defined in every row. */
       undefined: undefinedRows.optional(),
       negativity: z.strictObject({ breaks: count, weightedShareThatHolds: finite }).optional(),

@@ -1,7 +1,9 @@
 import type { SystemFinding } from "../schemas/system.ts";
 import { EMPTY, estimateCell } from "./cells.ts";
 import { equationsNotes } from "./equations-sentence.ts";
-import { DECIMALS, printCount, printFixed } from "./numbers.ts";
+import { fewRowsNotes } from "./few-rows.ts";
+import { DECIMALS, printFixed } from "./numbers.ts";
+import { countedRows } from "./phrases.ts";
 import { standardErrorsNotes, standardErrorsPhrase } from "./standard-errors.ts";
 import type { LabelledTable, TableCell, TableRow } from "./table.ts";
 
@@ -39,9 +41,11 @@ export function priceMatrices(rows: readonly CoefficientRow[]): string {
   return [...new Set(rows.filter((row) => isPriceBlock(row.block)).map((row) => PRICE_BLOCKS[row.block]))].join(", ");
 }
 
-function headOf(coefficient: Coefficient): { label: string; symbol?: string } {
+/** In the linear expenditure system demographics shift committed quantities, not shares. */
+function headOf(coefficient: Coefficient, form: SystemFinding["fitted"]["form"]): { label: string; symbol?: string } {
   const { block, symbol, column } = coefficient;
   if (column === undefined) return { symbol, ...(ROW_NAMES[block] ?? { label: block }) };
+  if (form === "les" && block === "demographic") return { label: `${column}, shifts c` };
   return isPriceBlock(block) ? { label: `ln p, ${column}` } : { label: column };
 }
 
@@ -56,7 +60,7 @@ export function coefficientRows(
     rows.set(key, [...(rows.get(key) ?? []), coefficient]);
   }
   return [...rows.values()].map((coefficients) => ({
-    ...headOf(coefficients[0]),
+    ...headOf(coefficients[0], finding.fitted.form),
     block: coefficients[0].block,
     cells: finding.fitted.goods.map((good) => {
       const found = coefficients.find((coefficient) => coefficient.good === good);
@@ -80,8 +84,9 @@ export function coefficientTable(finding: SystemFinding): LabelledTable {
     columns: finding.fitted.goods.map((label) => ({ label })),
     rows: coefficientRows(finding),
     notes: [
-      `Estimate over (standard error), ${standardErrorsPhrase(finding)}. ${printCount(finding.rows)} rows, ${finding.estimator}, prices and total in units of estimation.`,
+      `Estimate over (standard error), ${standardErrorsPhrase(finding)}. ${countedRows(finding.rows)}, ${finding.estimator}, prices and total in units of estimation.`,
       ...equationsNotes(finding),
+      ...fewRowsNotes(finding),
       ...standardErrorsNotes(finding),
     ],
   };

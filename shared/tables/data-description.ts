@@ -1,6 +1,6 @@
 import type { DataFinding } from "../schemas/data.ts";
 import { numberCell, percentCell } from "./cells.ts";
-import { printCount } from "./numbers.ts";
+import { countedRows } from "./phrases.ts";
 import type { LabelledTable } from "./table.ts";
 
 /** Shares and prices of every good over the rows used. */
@@ -8,7 +8,7 @@ export function dataDescriptionTable(finding: DataFinding): LabelledTable {
   const weighted = finding.weighted ? "weighted" : "not weighted";
   return {
     name: "data-description",
-    title: `Shares and prices over ${printCount(finding.accounting.used)} rows used, ${weighted}`,
+    title: `Shares and prices over ${countedRows(finding.accounting.used)} used, ${weighted}`,
     corner: "Good",
     columns: [
       { label: "Mean share" },

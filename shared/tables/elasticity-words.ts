@@ -4,6 +4,11 @@ import { printCount, printPercent, printQuantity } from "./numbers.ts";
 import { capital, countedRows, listed, undefinedSentence } from "./phrases.ts";
 import { withArticle } from "./slutsky-matrix.ts";
 
+/** The name of a group where a sentence or a line begins: a column's own name stays as it is written. */
+export function groupHead(groupedBy: ElasticitiesFinding["groupedBy"], name: string): string {
+  return groupedBy !== undefined && groupedBy.quantiles === undefined ? name : capital(name);
+}
+
 /** Groups of fewer rows than these are named: their mean point is the mean of few. */
 export const FEW_ROWS = 30;
 
@@ -97,10 +102,10 @@ function notDefined({ groups }: ElasticitiesFinding): string[] {
   return undefinedSentence(without > 0 ? { rows: without } : undefined, rows);
 }
 
-function withoutAny({ without }: ElasticitiesFinding): string[] {
+function withoutAny({ without, groupedBy }: ElasticitiesFinding): string[] {
   if (without.length === 0) return [];
   const names = without.map(({ name }) => name);
-  return [`${capital(listed(names))} ${names.length === 1 ? "has" : "have"} none.`];
+  return [`${groupHead(groupedBy, listed(names))} ${names.length === 1 ? "has" : "have"} none.`];
 }
 
 /** The conventions behind the numbers, a sentence each: what parentheses are, where, which shares, which index. */
@@ -137,7 +142,7 @@ function sharesNote({ shares, form, index }: ElasticitiesFinding): string {
   return `${which}; ${weights}.`;
 }
 
-function cautions({ groups, without, derivativeRows }: ElasticitiesFinding): string[] {
+function cautions({ groups, without, derivativeRows, groupedBy }: ElasticitiesFinding): string[] {
   const few = groups.filter(({ rows }) => rows !== undefined && rows < FEW_ROWS);
   const fewNote = `Fewer than ${FEW_ROWS} rows: ${listed(few.map(({ name, rows = 0 }) => `${name}, ${countedRows(rows)}`))}.`;
   const below = groups.flatMap(({ name, notPositive }) =>
@@ -158,6 +163,6 @@ function cautions({ groups, without, derivativeRows }: ElasticitiesFinding): str
     ...(below.length > 0 ? [`A share is not positive: ${listed(below)}.`] : []),
     ...nowhere,
     ...(sampled ?? []),
-    ...without.map(({ name, undefined: reason }) => `${capital(name)}: ${reason}`),
+    ...without.map(({ name, undefined: reason }) => `${groupHead(groupedBy, name)}: ${reason}`),
   ];
 }

@@ -37,7 +37,7 @@ function explained(rows: number, { explains, leftOut, because, gaps }: NonNullab
       second === undefined
         ? `the first period has ${one}`
         : `the first ${leftOut} periods in turn have no shares, or no change of shares, before them`;
-    sentences.push(`T is ${printCount(rows)} of ${printCount(rows + leftOut)} rows used: ${reason}.`);
+    sentences.push(`T is ${printCount(rows)} of ${countedRows(rows + leftOut)} used: ${reason}.`);
   }
   if (gaps > 0) {
     sentences.push(
@@ -56,7 +56,7 @@ function regularity(
     const { rows: without, weightedShare, firstRows } = withoutSupernumerary;
     const which = firstRows.length > 0 ? `, first in row ${firstRows[0]}` : "";
     sentences.push(
-      `In ${printCount(without)} of ${printCount(rows)} rows (${printFixed(100 * weightedShare, 1)} % by weight) committed expenditure takes all of the total${which}: utility is not defined there.`,
+      `In ${printCount(without)} of ${countedRows(rows)} (${printFixed(100 * weightedShare, 1)} % by weight) committed expenditure takes all of the total${which}: utility is not defined there.`,
     );
   }
   if (atBound.length > 0) {

@@ -11,6 +11,11 @@ export function countedRows(count: number): string {
   return `${printCount(count)} ${count === 1 ? "row" : "rows"}`;
 }
 
+/** "the one row", "all 4,812 rows". */
+export function everyRow(count: number): string {
+  return count === 1 ? "the one row" : `all ${countedRows(count)}`;
+}
+
 /** "The system is not defined in 3 of 338 rows."; nothing where it is defined in all. */
 export function undefinedSentence(without: { readonly rows: number } | undefined, of: number): string[] {
   if (without === undefined) return [];

@@ -6,7 +6,7 @@ import { curvatureSentences } from "./curvature-words.ts";
 import { equationsSentences } from "./equations-sentence.ts";
 import { endogeneityHeadline } from "./first-steps-words.ts";
 import { DECIMALS, printCount, printQuantity, printSize } from "./numbers.ts";
-import { capital, countedRows, intervalInWords, listed, undefinedSentence } from "./phrases.ts";
+import { capital, countedRows, everyRow, intervalInWords, listed, undefinedSentence } from "./phrases.ts";
 import { withArticle } from "./slutsky-matrix.ts";
 import { unequalWeightsSentence } from "./standard-errors.ts";
 import { decides, isRejected, testOf } from "./verdicts.ts";
@@ -25,10 +25,11 @@ const LEFT_OUT: Readonly<Record<DataFinding["accounting"]["leftOut"][number]["re
 export function dataSentence({ accounting }: Pick<DataFinding, "accounting">): string {
   const { uploaded, used } = accounting;
   const leftOut = accounting.leftOut.filter(({ count }) => count > 0);
-  if (leftOut.length === 0) return `All ${printCount(uploaded)} rows are used.`;
+  if (leftOut.length === 0)
+    return uploaded === 1 ? "The one row is used." : `All ${printCount(uploaded)} rows are used.`;
   const parts = leftOut.map(({ reason, count }) => `${printCount(count)} ${LEFT_OUT[reason][count === 1 ? 0 : 1]}`);
   const verb = used === 1 ? "is" : "are";
-  return `${printCount(used)} of ${printCount(uploaded)} rows ${verb} used. Of the ${printCount(uploaded - used)} left out, ${listed(parts)}.`;
+  return `${printCount(used)} of ${countedRows(uploaded)} ${verb} used. Of the ${printCount(uploaded - used)} left out, ${listed(parts)}.`;
 }
 
 type ToldSystem = Pick<
@@ -149,7 +150,7 @@ export function slutskySentence({ at: { checks }, pointName, sample, caveats }: 
 function whereItBreaks(sample: ToldMatrix["sample"]): string[] {
   if (!sample || sample.breaks === 0) return [];
   const { breaks, rows, breaksInRichestTenth, goods } = sample;
-  if (breaks === rows) return [`Negativity breaks in all ${countedRows(rows)}.`];
+  if (breaks === rows) return [`Negativity breaks in ${everyRow(rows)}.`];
   // Said where the richest tenth has more than twice its part of the breaks.
   const isOfTheRich = breaks > 1 && breaksInRichestTenth / breaks > 0.2;
   const rich = isOfTheRich ? `, ${printCount(breaksInRichestTenth)} of them in the richest tenth` : "";

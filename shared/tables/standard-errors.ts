@@ -1,5 +1,6 @@
 import type { SystemFinding } from "../schemas/system.ts";
 import { printCount, printFixed } from "./numbers.ts";
+import { countedRows } from "./phrases.ts";
 
 /** What a sentence on standard errors needs of a finding. */
 type Errors = Pick<
@@ -37,7 +38,7 @@ export function standardErrorsNotes(finding: Errors): string[] {
 }
 
 function weightsSentence(rows: number, effectiveRows: number): string {
-  return `The weights make ${printCount(rows)} rows tell as much as ${printFixed(effectiveRows, 0)} of one weight.`;
+  return `The weights make ${countedRows(rows)} tell as much as ${printFixed(effectiveRows, 0)} of one weight.`;
 }
 
 /** Effective rows below this part of all rows are said at the head: then a few weights of enormous size decide. */

@@ -1,7 +1,7 @@
 import type { ChiSquareStatistic, MadeTest, TestsFinding, UnmadeTest } from "../schemas/tests.ts";
 import { EMPTY, numberCell, textCell } from "./cells.ts";
 import { printCount, printProbability, printQuantity } from "./numbers.ts";
-import { capital } from "./phrases.ts";
+import { capital, countedRows } from "./phrases.ts";
 import type { LabelledTable, TableCell, TableRow } from "./table.ts";
 import type { Verdict } from "./verdicts.ts";
 
@@ -199,7 +199,7 @@ export function testsTable(finding: TestsFinding): LabelledTable {
     ],
     rows: finding.tests.map((test) => rowOf(test, finding)),
     notes: [
-      `Wald, likelihood ratio (LR) and score (LM) against χ²; the corrected LR is Italianer’s (1985). ${printCount(finding.rows)} rows; all fits by maximum likelihood.`,
+      `Wald, likelihood ratio (LR) and score (LM) against χ²; the corrected LR is Italianer’s (1985). ${countedRows(finding.rows)}; all fits by maximum likelihood.`,
       ...exact.map(({ numerator, denominator, approximate, because }) => {
         const kind = approximate ? "approximate" : "exact";
         return `Laitinen’s (1978) F on (${numerator}, ${denominator}) is ${kind}: ${because}.`;

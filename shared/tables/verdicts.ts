@@ -2,7 +2,7 @@ import type { TheoryChecks } from "../schemas/checks.ts";
 import type { SlutskyFinding } from "../schemas/slutsky.ts";
 import type { RestrictionTest, SystemFinding } from "../schemas/system.ts";
 import { DECIMALS, printCount, printPercent, printProbability, printQuantity, printSize } from "./numbers.ts";
-import { countedRows, intervalInWords } from "./phrases.ts";
+import { countedRows, everyRow, intervalInWords } from "./phrases.ts";
 
 export const VERDICT_FIGURES = ["holds", "imposed", "holds here", "breaks", "not stated"] as const;
 
@@ -137,17 +137,22 @@ function overSample(
   detail: boolean,
 ): Pick<Verdict, "figure" | "word" | "note"> {
   if (!counts || sample === undefined) return { figure: "holds here", word: atPoint(pointName), note: otherwise };
-  const { rows, undefined: without } = sample;
+  const { rows, undefined: without, equations } = sample;
   const nowhere = without && `not defined in ${printCount(without.rows)}`;
   if (counts.breaks === 0) {
     if (nowhere) return { figure: "holds here", word: atPoint(pointName), note: `${nowhere} of ${countedRows(rows)}` };
-    return { figure: "holds", word: "holds", note: `in all ${printCount(rows)} rows` };
+    return { figure: "holds", word: "holds", note: `in ${everyRow(rows)}${beside(equations)}` };
   }
   const broken = 1 - counts.weightedShareThatHolds - (without?.weightedShare ?? 0);
   const isWeighted = Math.abs(broken - counts.breaks / rows) > 1e-9;
   const share = detail ? `, ${printPercent(broken)}${isWeighted ? " by weight" : ""}` : "";
   const breaks = `breaks in ${countedRows(counts.breaks)}${share}`;
   return { figure: "holds here", word: atPoint(pointName), note: [breaks, ...(nowhere ? [nowhere] : [])].join("; ") };
+}
+
+/** Laws stand at levels: rows that no equation explains, having none before them, are counted among them. */
+function beside(equations: number | undefined): string {
+  return equations === undefined ? "" : ` used, where T is ${printCount(equations)}`;
 }
 
 /** Short enough to stand beside its figure: "at base point", "at the mean", "at this point". */

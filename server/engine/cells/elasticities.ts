@@ -7,8 +7,8 @@ import {
   elasticitiesFinding,
 } from "../../../shared/schemas/elasticities.ts";
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
-import { capital } from "../../../shared/study/words.ts";
 import { SYSTEMS } from "../../../shared/systems/index.ts";
+import { groupHead } from "../../../shared/tables/elasticity-words.ts";
 import { withArticle } from "../../../shared/tables/slutsky-matrix.ts";
 import { standardErrorsPhrase } from "../../../shared/tables/standard-errors.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
@@ -40,7 +40,7 @@ export function runElasticities(
   const { groups, derivativeRows } = evaluated({ ...specification, shares }, system, data, control);
   const found = groups.filter((group): group is ElasticityGroup => !("undefined" in group));
   const without = groups.filter((group) => "undefined" in group);
-  if (found.length === 0) throw new Refusal(without.map((group) => refused(group, groupedBy !== undefined)));
+  if (found.length === 0) throw new Refusal(without.map((group) => refused(group, groupedBy)));
   return elasticitiesFinding.parse({
     kind: "elasticities",
     dataFingerprint: system.dataFingerprint,
@@ -97,8 +97,9 @@ function allRows({ rows }: PreparedData): RowGroup {
   return { name: "all rows", rows: Int32Array.from({ length: rows }, (_, t) => t) };
 }
 
-function refused(group: Exclude<GroupOrReason, { shares: unknown }>, isOneOfSeveral: boolean) {
+function refused(group: Exclude<GroupOrReason, { shares: unknown }>, groupedBy: ElasticitiesSpecification["groups"]) {
   const { name, undefined: reason } = group;
-  const sentence = isOneOfSeveral ? `${capital(name)}: ${reason}` : `At ${withArticle(name)}: ${reason}`;
+  const isOneOfSeveral = groupedBy !== undefined;
+  const sentence = isOneOfSeveral ? `${groupHead(groupedBy, name)}: ${reason}` : `At ${withArticle(name)}: ${reason}`;
   return { sentence, key: isOneOfSeveral ? ["groups"] : ["at"] };
 }

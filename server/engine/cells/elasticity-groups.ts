@@ -34,7 +34,7 @@ export function rowGroups(groups: GroupsSpecification, data: PreparedData): RowG
 
 function byValue(column: string, data: PreparedData): RowGroup[] {
   if (column === TOTAL_EXPENDITURE && !isColumn(column, data)) {
-    throw refusal("total expenditure has as many values as rows: give quantiles beside it, such as quantiles: 5.");
+    throw refusal("Total expenditure has as many values as rows: give quantiles beside it, such as quantiles: 5.");
   }
   const { codes, labels } = groupsOf(data, column, ["groups", "of"]);
   if (labels.length > MOST_GROUPS) {
@@ -95,5 +95,5 @@ function partedBy(codes: ArrayLike<number>, labels: readonly string[]): RowGroup
 }
 
 function refusal(sentence: string): Refusal {
-  return new Refusal([{ sentence: sentence.charAt(0).toUpperCase() + sentence.slice(1), key: ["groups", "of"] }]);
+  return new Refusal([{ sentence, key: ["groups", "of"] }]);
 }

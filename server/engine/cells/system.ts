@@ -62,9 +62,14 @@ export function runSystem(given: SystemSpecification, data: PreparedData, contro
         standardError: expenditureErrors[i],
       })),
       engel: engelCurves(fitted, data, mean),
-      checks: { ...lawsHere, sample: checkSample(fitted, data, control) },
+      checks: { ...lawsHere, sample: { ...checkSample(fitted, data, control), ...equationsOf(estimate) } },
     });
   });
+}
+
+/** T, where it is not the number of rows at which laws are judged. */
+function equationsOf({ rows, equations }: Pick<SystemFinding, "rows" | "equations">): { equations?: number } {
+  return equations !== undefined && equations.leftOut > 0 ? { equations: rows } : {};
 }
 
 /** AIDS with α₀ fixed and Stone's index are not invariant to units (Moschini 1995, American Journal of Agricultural Economics 77). */

@@ -59,6 +59,8 @@ export function estimateSystem(
     form: systemForm(system, size, specification.impose),
     equations: data.goods.map((_, good) => good).filter((good) => good !== dropped),
     coefficientLabels: names.map(labelOfCoefficient),
+    // Terms of time are no column that could be left out.
+    demographics: specification.demographics.filter((name) => data.numeric.has(name)),
   };
   const within = systemForm(system, size, withinEquations(specification)).free;
   refuseTooFewRows(moments.rows, linear.form.free, linear.equations.length, within, neededByForm(system, size, linear));

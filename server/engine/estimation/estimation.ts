@@ -9,4 +9,6 @@ export interface Estimation {
   readonly equations: readonly number[];
   /** What a refusal calls each of the k coefficients: "γ of bread on the price of milk". */
   readonly coefficientLabels: readonly string[];
+  /** Names among the columns that a cell asks for as demographics: where a refusal says that one is mended. */
+  readonly demographics?: readonly string[];
 }

@@ -1,4 +1,6 @@
+import type { Problem } from "../../../shared/schemas/problem.ts";
 import { printQuantity, printSize } from "../../../shared/tables/numbers.ts";
+import { countedRows, everyRow } from "../../../shared/tables/phrases.ts";
 import { Refusal } from "../refusal.ts";
 import { columnOf, dot } from "./columns.ts";
 import type { Estimation } from "./estimation.ts";
@@ -35,10 +37,14 @@ export function refuseNotConverged(
 }
 
 /** The data do not tell some coefficients apart: names the columns where they are collinear, else the coefficients. */
-export function refuseNotIdentified({ moments, form, coefficientLabels }: Estimation, factor: NormalFactor): never {
+export function refuseNotIdentified(estimation: Estimation, factor: NormalFactor): never {
+  const { moments, form, coefficientLabels, demographics = [] } = estimation;
   if (moments.dependent.length > 0) {
     throw new Refusal(
-      moments.dependent.map((column) => ({ sentence: `The moments are singular: ${dependence(column)}.` })),
+      moments.dependent.map((one) => ({
+        sentence: `The moments are singular: ${dependence(one)}.`,
+        ...placeOf(one, demographics),
+      })),
     );
   }
   const names = factor.dependent.map((f) => coefficientLabels[form.expand.places[f]]);
@@ -46,6 +52,12 @@ export function refuseNotIdentified({ moments, form, coefficientLabels }: Estima
     `The moments are singular: the data do not tell ${names.slice(0, 5).join(", ")} apart from the other coefficients ` +
       `(${factor.dependent.length} of ${form.free} free coefficients are not identified).`,
   );
+}
+
+/** Where it is mended: among the demographics of the cell, or in the data beneath it. */
+function placeOf({ column, on }: DependentColumn, demographics: readonly string[]): Pick<Problem, "key" | "column"> {
+  const mine = [column, ...on].find((name) => demographics.includes(name));
+  return mine === undefined ? { key: ["data"] } : { key: ["demographics"], column: mine };
 }
 
 function dependence({ column, on }: DependentColumn): string {
@@ -65,7 +77,8 @@ export function refuseConstantShares({ moments, equations }: Pick<Estimation, "m
   if (constant.length === 0) return;
   throw new Refusal(
     constant.map(({ mean, i }) => ({
-      sentence: `The residual covariance is singular: ${moments.responseLabels[i]} is ${printShare(mean)} in all ${moments.rows} rows used, so that its equation (one of ${equations.length + 1}) has nothing to explain.`,
+      sentence: `The residual covariance is singular: ${moments.responseLabels[i]} is ${printShare(mean)} in ${everyRow(moments.rows)} used, so that its equation (one of ${equations.length + 1}) has nothing to explain.`,
+      key: ["data"],
     })),
   );
 }
@@ -93,6 +106,6 @@ export function refuseTooFewRows(
   const needed = Math.max(rowsForEquations(freeWithinEquations, equations), combined);
   if (rows >= needed) return;
   throw new Refusal(
-    `The data have ${rows} rows used; ${free} free coefficients in ${equations} equations need at least ${needed}.`,
+    `The data have ${countedRows(rows)} used; ${free} free coefficients in ${equations} equations need at least ${needed}.`,
   );
 }

@@ -2,11 +2,14 @@ import { normalTwoSidedTail, tTwoSidedTail } from "../../../shared/numerics/dist
 import type { MadeTest } from "../../../shared/schemas/tests.ts";
 import type { DemandSystem, SystemSize } from "../../../shared/systems/demand-system.ts";
 
+/** Of a variance, relative to the variances of what is summed: below it is rounding. */
+const ROUNDING = 1e-14;
+
 /**
  * Homogeneity of each equation, Σ_j γ_ij = 0, for all n goods: the sum over its standard error. Where equations are
  * linear in their coefficients and share their regressors, maximum likelihood is least squares equation by equation:
  * `freedom` (T − k) then makes the divisor T of the covariance T − k, and the ratio a t of that many degrees.
- * Undefined in a system with more than one row of price coefficients for each good.
+ * Undefined in a system with more than one row of price coefficients for each good, and where a sum does not vary.
  */
 export function equationTests(
   system: DemandSystem,
@@ -28,7 +31,9 @@ export function equationTests(
       (total, a) => total + places.reduce((inner, b) => inner + fit.covariance[a][b], 0),
       0,
     );
-    const standardError = Math.sqrt(Math.max(0, variance * scale));
+    const size = places.reduce((total, a) => total + fit.covariance[a][a], 0);
+    // A sum that does not vary, as where restrictions fix it, has no t value: what is left is rounding.
+    const standardError = variance > ROUNDING * size ? Math.sqrt(variance * scale) : 0;
     const t = sum / standardError;
     const pValue = exact ? tTwoSidedTail(t, exact.freedom) : normalTwoSidedTail(t);
     return { good, sum, standardError, t, ...(exact && { freedom: exact.freedom }), pValue };

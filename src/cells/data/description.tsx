@@ -1,6 +1,7 @@
 import type { DataFinding } from "../../../shared/schemas/data.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { DECIMALS, printCount, printFixed, printPercent } from "../../../shared/tables/numbers.ts";
+import { countedRows } from "../../../shared/tables/phrases.ts";
 import { Table } from "../../components/table.tsx";
 
 function Share({ share, largest }: { share: number; largest: number }) {
@@ -24,7 +25,7 @@ export function Description({ finding }: { finding: DataFinding }) {
   return (
     <>
       <Table
-        caption={`Shares and prices over ${printCount(finding.accounting.used)} rows used`}
+        caption={`Shares and prices over ${countedRows(finding.accounting.used)} used`}
         heads={[
           { key: "good", content: finding.weighted ? "Rows used, weighted" : "Rows used" },
           { key: "share", content: "Mean share" },

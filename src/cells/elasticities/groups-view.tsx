@@ -1,7 +1,8 @@
 import { useId } from "react";
-import type { ElasticitiesFinding } from "../../../shared/schemas/elasticities.ts";
+import { type ElasticitiesFinding, TOTAL_EXPENDITURE } from "../../../shared/schemas/elasticities.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { type ByGood, byGood } from "../../../shared/tables/elasticities.ts";
+import { groupHead } from "../../../shared/tables/elasticity-words.ts";
 import { DECIMALS, printCount, printFixed } from "../../../shared/tables/numbers.ts";
 import { SwitchWords } from "../../components/switch-words.tsx";
 import { TableScroller } from "../../components/table-scroller.tsx";
@@ -51,7 +52,9 @@ export function GroupsView({ finding, which, below, chosen, onChoose }: GroupsPr
         <thead>
           <tr className="border-line border-b">
             <th scope="col" className={`sticky left-0 bg-recto pr-3 text-left ${HEAD}`}>
-              {finding.groupedBy ? capital(finding.groupedBy.of) : "Group"}
+              {finding.groupedBy?.of === TOTAL_EXPENDITURE
+                ? capital(TOTAL_EXPENDITURE)
+                : (finding.groupedBy?.of ?? "Group")}
             </th>
             <th scope="col" className={`pl-3 text-right ${HEAD}`}>
               Rows
@@ -79,10 +82,12 @@ export function GroupsView({ finding, which, below, chosen, onChoose }: GroupsPr
                       onChange={() => onChoose(g)}
                       className="m-0 size-2.5 shrink-0 appearance-none rounded-full border border-ctl checked:border-ink checked:bg-ink"
                     />
-                    <span className={g === chosen ? "font-semibold" : ""}>{capital(group.name)}</span>
+                    <span className={g === chosen ? "font-semibold" : ""}>
+                      {groupHead(finding.groupedBy, group.name)}
+                    </span>
                   </label>
                 ) : (
-                  capital(group.name)
+                  groupHead(finding.groupedBy, group.name)
                 )}
               </th>
               <td className="py-1 pl-3 text-right align-top">{printCount(group.rows ?? 0)}</td>

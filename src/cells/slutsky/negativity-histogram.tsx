@@ -1,6 +1,7 @@
 import { useId } from "react";
 import type { SlutskyFinding } from "../../../shared/schemas/slutsky.ts";
 import { printCount, printFixed, printPercent } from "../../../shared/tables/numbers.ts";
+import { countedRows } from "../../../shared/tables/phrases.ts";
 import { BottomAxis } from "../../components/chart-axis.tsx";
 import { Hatch } from "../../components/chart-hatch.tsx";
 import { ChartNumbers } from "../../components/chart-numbers.tsx";
@@ -53,7 +54,7 @@ interface BreakWordsProps {
 
 function BreakWords({ sample, listed, x, room, holds }: BreakWordsProps) {
   const ticks = listed === sample.breaks ? "each a tick" : listed > 0 ? `${printCount(listed)} ticked` : "";
-  const rows = `${printCount(sample.breaks)} of ${printCount(sample.rows)} rows`;
+  const rows = `${printCount(sample.breaks)} of ${countedRows(sample.rows)}`;
   const lines = room < 220 ? [rows, ticks] : [[rows, ticks].filter(Boolean).join(", ")];
   if (sample.undefined) lines.push(`${printCount(sample.undefined.rows)} not defined, in no bar`);
   return (
@@ -91,7 +92,7 @@ export function NegativityHistogram({ sample, brokenRows, holds }: HistogramProp
   const nought = scale.at(0);
   const { ticks, decimals } = roundTicks(scale.from, scale.to, width < 420 ? 4 : 6);
   const listed = brokenRows.filter((row) => row.breaks.includes("negativity")).length;
-  const label = `Histogram of the largest eigenvalue over ${printCount(sample.rows)} rows: ${printPercent(holds)} hold, ${printCount(sample.breaks)} break${sample.undefined ? `, ${printCount(sample.undefined.rows)} not defined` : ""}`;
+  const label = `Histogram of the largest eigenvalue over ${countedRows(sample.rows)}: ${printPercent(holds)} hold, ${printCount(sample.breaks)} break${sample.undefined ? `, ${printCount(sample.undefined.rows)} not defined` : ""}`;
   return (
     <div ref={ref}>
       <svg

@@ -22,6 +22,16 @@ describe("the sentence", () => {
     );
   });
 
+  test("leaves the name of a column as it is written where a sentence begins", () => {
+    const finding = sampleElasticities(3);
+    const group = { name: "region = north", undefined: "no shares", rows: 4, weightShare: 0.1, total: 1 };
+    const of = { ...finding, groupedBy: { of: "region" }, without: [group] };
+    expect(elasticitiesSentence(of)).toContain(". region = north has none.");
+    expect(elasticityNotes(of).at(-1)).toBe("region = north: no shares");
+    const fifths = { ...of, groupedBy: { of: "income", quantiles: 5 }, without: [{ ...group, name: "lowest fifth" }] };
+    expect(elasticitiesSentence(fifths)).toContain(". Lowest fifth has none.");
+  });
+
   test("of groups names what holds in each of them, and where they differ most", () => {
     expect(elasticitiesSentence(sampleElasticities(3))).toBe(
       "In each of 3 groups, by 95\u2009% intervals, meat is a luxury and grains is a necessity. Meat varies most, its expenditure elasticity from 1.300 to 1.500.",

@@ -100,3 +100,21 @@ describe("data as tables", () => {
     expect(numbers.slice(1).every((number) => number < 0)).toBe(true);
   });
 });
+
+describe("what is said of demographics and of one row", () => {
+  it("shifts of committed quantities are named as such in the linear expenditure system alone", () => {
+    const coefficients = [
+      { block: "demographic", symbol: "c", good: goods[0], column: "size", estimate: 1, standardError: 0.1 },
+    ];
+    const labelIn = (form: "les" | "aids") =>
+      coefficientRows({ ...system, coefficients, fitted: { ...system.fitted, form } })[0].label;
+    expect(labelIn("les")).toBe("size, shifts c");
+    expect(labelIn("aids")).toBe("size");
+  });
+
+  it("one row is told as one", () => {
+    expect(coefficientTable({ ...system, rows: 1 }).notes?.[0]).toMatch(/ 1 row, /);
+    const one = { ...data, accounting: { ...data.accounting, used: 1 } };
+    expect(dataDescriptionTable(one).title).toMatch(/over 1 row used, /);
+  });
+});

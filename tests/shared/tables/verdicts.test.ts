@@ -112,6 +112,15 @@ describe("verdictsOf", () => {
     ]);
   });
 
+  it("tells one row as one, and the rows judged from the fewer that equations explain", () => {
+    const whole = { breaks: 0, weightedShareThatHolds: 1 };
+    const noteOf = (sample: object) => lines({ ...checks, sample: { ...checks.sample!, ...sample } }, [])[4];
+    expect(noteOf({ rows: 1, monotonicity: whole })).toBe("Monotonicity | holds | holds | in the one row");
+    expect(noteOf({ rows: 338, equations: 337, monotonicity: whole })).toBe(
+      "Monotonicity | holds | holds | in all 338 rows used, where T is 337",
+    );
+  });
+
   it("never says that an imposed law holds, nor one held by form", () => {
     for (const status of ["imposed", "by form"] as const) {
       const law = { size: 0, holds: true, status };

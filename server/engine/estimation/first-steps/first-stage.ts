@@ -1,5 +1,6 @@
 import { fTail } from "../../../../shared/numerics/distributions.ts";
 import { printSize } from "../../../../shared/tables/numbers.ts";
+import { countedRows } from "../../../../shared/tables/phrases.ts";
 import type { PreparedData } from "../../columns/prepared-data.ts";
 import { Refusal } from "../../refusal.ts";
 import { type Columns, columnOf } from "../columns.ts";
@@ -72,7 +73,7 @@ function regress(data: PreparedData, { instruments, demographics }: FirstStageCo
   const freedom = data.rows - count;
   if (freedom <= 0) {
     throw refuse(
-      `The first stage has ${count} coefficients and ${data.rows} rows used: it needs at least ${count + 1}.`,
+      `The first stage has ${count} coefficients and ${countedRows(data.rows)} used: it needs at least ${count + 1}.`,
     );
   }
   const triangle = columnFactor(regressors, data.logTotal, data.weights);

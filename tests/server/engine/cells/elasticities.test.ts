@@ -176,7 +176,7 @@ describe("groups", () => {
   test.each([
     ["groups: {of: nothing}", /no column of the data/],
     ["groups: {of: total expenditure}", "Total expenditure has as many values as rows: give quantiles"],
-    ["groups: {of: week}", "Week has 338 different values, and at most 24 are groups: give quantiles beside it."],
+    ["groups: {of: week}", "week has 338 different values, and at most 24 are groups: give quantiles beside it."],
     [
       "groups: {of: parity, quantiles: 5}",
       /^No row falls into the .* fifth of parity, which has 2 different values in 338/,

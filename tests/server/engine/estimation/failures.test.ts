@@ -26,7 +26,30 @@ function refusalOf(work: () => unknown): string {
   throw new Error("nothing was refused");
 }
 
+function placesOf(work: () => unknown) {
+  try {
+    work();
+  } catch (error) {
+    return (error as Refusal).problems.map(({ key, column }) => ({ key, column }));
+  }
+  throw new Error("nothing was refused");
+}
+
 describe("singular moments name the columns", () => {
+  it("and the key at which they are mended", () => {
+    const data = sample(120, 3, 1);
+    const rural = Float64Array.from({ length: data.rows }, () => 0.1);
+    const numeric = new Map([...data.numeric, ["rural", rural]]);
+    expect(placesOf(() => estimated({ ...data, numeric }, SYMMETRIC))).toEqual([
+      { key: ["demographics"], column: "rural" },
+    ]);
+    const logPrices = [data.logPrices[0], data.logPrices[1], data.logPrices[0]];
+    expect(placesOf(() => estimated({ ...data, logPrices }, { form: "la-aids" }))[0]).toEqual({ key: ["data"] });
+    const constant = data.shares[0].map(() => 0.1);
+    const shares = [constant, data.shares[1], data.shares[1].map((share) => 0.9 - share)];
+    expect(placesOf(() => estimated({ ...data, shares }, SYMMETRIC))[0]).toEqual({ key: ["data"] });
+  });
+
   const reductions = ["reflected", "summed"] as const;
 
   it.each(reductions)("a price that follows from others (%s)", (reduction) => {
