@@ -31,6 +31,7 @@ import { ownAccountRoutes } from "./routes/own-account.ts";
 import { peopleRoutes } from "./routes/people.ts";
 import { refereeCopyRoutes } from "./routes/referee-copies.ts";
 import { remarkRoutes } from "./routes/remarks.ts";
+import { replicationBundleRoutes } from "./routes/replication-bundles.ts";
 import { studyRoutes } from "./routes/studies.ts";
 import { uploadRoutes } from "./routes/uploads.ts";
 import type { Authentication } from "./services/authentication.ts";
@@ -121,7 +122,7 @@ function peopleApi({ auth, config, services, installation, mailLimits }: PeopleA
 
 function apiRoutes({ config, services }: Pick<AppDependencies, "config" | "services">) {
   const router = express.Router();
-  const { studies, uploads, cells, remarks, access, history, checkpoints } = services;
+  const { studies, uploads, cells, remarks, access, history, checkpoints, replicationBundles } = services;
   router.use(studyRoutes({ studies }));
   router.use(deletedStudyRoutes({ studies }));
   router.use(uploadRoutes({ uploads, limit: limitUploads(config.limits.uploadsPerHour) }));
@@ -129,5 +130,6 @@ function apiRoutes({ config, services }: Pick<AppDependencies, "config" | "servi
   router.use(remarkRoutes({ remarks, limit: limitRemarks(REMARKS_PER_MINUTE) }));
   router.use(historyRoutes({ history }));
   router.use(checkpointRoutes({ checkpoints }));
+  router.use(replicationBundleRoutes({ replicationBundles }));
   return router;
 }

@@ -190,6 +190,7 @@ function live({ open, auth, pool, logger, origins, ...people }: LiveParts): Live
     remarksChanged: sync.remarksChanged,
     parseUpload: (uploadId, signal, sheet) => pool.parseUpload(uploadId, () => {}, signal, sheet),
     lookAtRows: (look, signal) => pool.look(look, signal),
+    writeBundle: (job, signal) => pool.writeBundle(job, signal),
     program: `Tangency ${VERSION}`,
   });
   return { services, sync, stopCells: cells.close };

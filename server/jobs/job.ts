@@ -4,6 +4,7 @@ import type { DataSpecification } from "../../shared/schemas/data.ts";
 import type { Problem } from "../../shared/schemas/problem.ts";
 import type { RowsAsked } from "../../shared/schemas/rows.ts";
 import type { SystemSpecification } from "../../shared/schemas/system.ts";
+import type { BundleJob } from "../bundle/bundle-job.ts";
 import type { FileFormat } from "../engine/columns/file-format.ts";
 import type { RunControl } from "../engine/run.ts";
 
@@ -52,7 +53,8 @@ export type LookJob =
 export type Task =
   | { readonly kind: "cell"; readonly job: CellJob }
   | { readonly kind: "parse upload"; readonly uploadId: string; readonly sheet?: string }
-  | { readonly kind: "look"; readonly look: LookJob };
+  | { readonly kind: "look"; readonly look: LookJob }
+  | { readonly kind: "write bundle"; readonly bundle: BundleJob };
 
 /** What a task is sent with: how to stop it, and where it reports. */
 export interface Sent {

@@ -3,6 +3,7 @@ import { MessageChannel } from "node:worker_threads";
 import { Piscina } from "piscina";
 import type { CellSpecification } from "../../shared/schemas/cell.ts";
 import type { RowsPage } from "../../shared/schemas/rows.ts";
+import type { BundleJob, BundleWritten } from "../bundle/bundle-job.ts";
 import { Cancelled } from "../engine/run.ts";
 import type {
   CellJob,
@@ -29,6 +30,8 @@ export interface JobPool {
   ): Promise<ParsedUploadResult>;
   /** A page of rows, on a thread beside the estimations. */
   look(look: LookJob, signal: AbortSignal): Promise<RowsPage>;
+  /** A replication bundle, on the same thread. */
+  writeBundle(bundle: BundleJob, signal: AbortSignal): Promise<BundleWritten>;
   /** Cancels what runs and waits until every thread has ended. */
   close(): Promise<void>;
 }
@@ -63,7 +66,7 @@ export function createPool({
   /** A thread that has just computed the rows beneath a cell still has them, so `aside` is for when none is free. */
   function poolFor(task: Task): Piscina {
     if (task.kind === "parse upload") return uploads;
-    if (task.kind === "look") return aside;
+    if (task.kind === "look" || task.kind === "write bundle") return aside;
     return inCells >= threads && !LONG.has(task.job.specification.kind) ? aside : cells;
   }
 
@@ -105,6 +108,7 @@ export function createPool({
     parseUpload: (uploadId, onProgress, signal, sheet) =>
       send<ParsedUploadResult>({ kind: "parse upload", uploadId, ...(sheet && { sheet }) }, onProgress, signal),
     look: (look, signal) => send<RowsPage>({ kind: "look", look }, () => {}, signal),
+    writeBundle: (bundle, signal) => send<BundleWritten>({ kind: "write bundle", bundle }, () => {}, signal),
     async close() {
       for (const stopper of running) stopper.abort();
       await Promise.all([cells, uploads, aside].map((pool) => pool.destroy()));

@@ -41,6 +41,7 @@ const ALLOWED = {
   "referee copy.seal": ["owner"],
   "referee copy.change": ["owner"],
   "referee copy.revoke": ["owner"],
+  "replication bundle.make": ["owner"],
 } as const satisfies Record<string, readonly Role[]>;
 
 /** What anyone of the study may do besides with what they made themselves. */

@@ -11,9 +11,10 @@ import type { JournalService } from "./journal.ts";
 import type { MailService } from "./mail.ts";
 import { createOwnAccountService, type OwnAccountService } from "./own-account.ts";
 import { createPeopleService, type PeopleService } from "./people.ts";
-import type { Cells, ClosePerson, LookAtRows, ParseUpload, SourcesOf } from "./ports.ts";
+import type { Cells, ClosePerson, LookAtRows, ParseUpload, SourcesOf, WriteBundle } from "./ports.ts";
 import { createRefereeCopyService, type RefereeCopyService } from "./referee-copies.ts";
 import { createRemarkService, type RemarkService } from "./remarks.ts";
+import { createReplicationBundleService, type ReplicationBundleService } from "./replication-bundles.ts";
 import { createStudyService, type StudyService } from "./studies.ts";
 import { createUploadService, type UploadService } from "./uploads.ts";
 
@@ -31,6 +32,7 @@ export interface Services {
   readonly people: PeopleService;
   readonly uploads: UploadService;
   readonly refereeCopies: RefereeCopyService;
+  readonly replicationBundles: ReplicationBundleService;
   readonly history: HistoryService;
   readonly checkpoints: CheckpointService;
   readonly remarks: RemarkService;
@@ -52,6 +54,7 @@ interface Collaborators {
   readonly remarksChanged: (studyId: string) => void;
   readonly parseUpload: ParseUpload;
   readonly lookAtRows: LookAtRows;
+  readonly writeBundle: WriteBundle;
   readonly program: string;
 }
 
@@ -69,6 +72,7 @@ export function createServices({
   remarksChanged,
   parseUpload,
   lookAtRows,
+  writeBundle,
   program,
 }: Collaborators): Services {
   const access = createAccess(db);
@@ -91,6 +95,7 @@ export function createServices({
     remarks: createRemarkService({ db, access, sourcesOf, remarksChanged }),
     history: createHistoryService({ db, access, sourcesOf }),
     checkpoints: createCheckpointService({ db, access, sourcesOf, record }),
+    replicationBundles: createReplicationBundleService({ db, access, cells, sourcesOf, writeBundle, record, program }),
     refereeCopies: createRefereeCopyService({ db, access, cells, sourcesOf, program, record, mail, url }),
   };
 }

@@ -2,6 +2,7 @@ import type { Finding } from "../../shared/schemas/cell.ts";
 import type { RowsPage } from "../../shared/schemas/rows.ts";
 import type { StudyStatus } from "../../shared/schemas/status.ts";
 import type { CellSource } from "../../shared/study/cell-source.ts";
+import type { BundleJob, BundleWritten } from "../bundle/bundle-job.ts";
 import type { CellJob, LookJob } from "../jobs/job.ts";
 
 /**
@@ -49,3 +50,6 @@ export type ParseUpload = (uploadId: string, signal: AbortSignal, sheet?: string
 
 /** A page of rows, put together away from the request's thread. */
 export type LookAtRows = (look: LookJob, signal: AbortSignal) => Promise<RowsPage>;
+
+/** Writes a replication bundle to the file it names, away from the request's thread. */
+export type WriteBundle = (job: BundleJob, signal: AbortSignal) => Promise<BundleWritten>;

@@ -21,6 +21,7 @@ export const STUDY_ACTIONS = [
   "referee copy sent",
   "referee copy replaced",
   "referee copy revoked",
+  "replication bundle made",
   "checkpoint kept",
   "checkpoint returned to",
   "checkpoint removed",
@@ -46,6 +47,7 @@ export const OWNERS_ACTIONS: readonly JournalAction[] = [
   "referee copy sent",
   "referee copy replaced",
   "referee copy revoked",
+  "replication bundle made",
 ];
 
 const journalAction = z.enum([...STUDY_ACTIONS, ...INSTALLATION_ACTIONS]);

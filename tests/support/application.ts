@@ -3,7 +3,10 @@ import type { AddressInfo } from "node:net";
 import { createApp } from "../../server/app.ts";
 import type { Limits } from "../../server/config.ts";
 import { type Database, openDatabase } from "../../server/db/client.ts";
+import { QUIET } from "../../server/engine/run.ts";
 import { createLogger } from "../../server/http/log.ts";
+import { WorkerMemory } from "../../server/jobs/run-cell.ts";
+import { writeBundle } from "../../server/jobs/write-bundle.ts";
 import { localPostBox } from "../../server/mail/post-box.ts";
 import { createAccess } from "../../server/services/access.ts";
 import { createAccountEvents } from "../../server/services/account-events.ts";
@@ -37,6 +40,8 @@ export interface Answer {
   // biome-ignore lint/suspicious/noExplicitAny: the tests look into answers of every shape
   readonly body: any;
   readonly headers: Headers;
+  /** The body as it came. */
+  readonly bytes: Uint8Array;
 }
 
 /** The real application over a database of its own, listening; cells, worker and sockets are fakes. */
@@ -82,6 +87,8 @@ export async function startApplication({ administrators = [], limits, secure = f
     remarksChanged: sockets.remarksChanged,
     parseUpload: parser.parse,
     lookAtRows: parser.look,
+    // The real one, on the thread that asks.
+    writeBundle: (job) => writeBundle(job, open.db, new WorkerMemory(), QUIET),
     program: "Tangency test",
   });
   const app = createApp({
@@ -165,9 +172,10 @@ function visitor(origin: string, about = { id: "", name: "", email: "" }, cookie
 
 async function ask(address: string, init: RequestInit): Promise<Answer> {
   const response = await fetch(address, init);
-  const text = await response.text();
+  const bytes = new Uint8Array(await response.arrayBuffer());
+  const text = new TextDecoder().decode(bytes);
   const json = response.headers.get("content-type")?.includes("json") === true;
-  return { status: response.status, body: json ? JSON.parse(text) : text, headers: response.headers };
+  return { status: response.status, body: json ? JSON.parse(text) : text, bytes, headers: response.headers };
 }
 
 async function newPerson(on: { origin: string; auth: Authentication; db: Database }, name: string): Promise<Visitor> {

@@ -17,6 +17,7 @@ const WORDS: Readonly<Record<JournalAction, string>> = {
   "upload added": "uploaded …",
   "upload removed": "removed the upload …",
   "referee copy sealed": "sealed a referee copy of …",
+  "replication bundle made": "made a replication bundle: …",
   "referee copy sent": "sent a referee copy to …",
   "referee copy replaced": "replaced the referee copy of …",
   "referee copy revoked": "revoked the referee copy of …",

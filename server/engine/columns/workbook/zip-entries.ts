@@ -36,11 +36,14 @@ interface ZipEntry {
 export class ZipEntries {
   private readonly file: FileBytes;
   private readonly entries: ReadonlyMap<string, ZipEntry>;
+  /** What the archive is, as its refusals say it. */
+  private readonly what: string;
   private expanded = 0;
 
-  constructor(file: FileBytes) {
+  constructor(file: FileBytes, what = "workbook") {
     this.file = file;
-    this.entries = readDirectory(file);
+    this.what = what;
+    this.entries = readDirectory(file, what);
   }
 
   has(name: string): boolean {
@@ -54,9 +57,9 @@ export class ZipEntries {
   /** The bytes of a part, unpacked, as they come. */
   async *read(name: string): AsyncGenerator<Uint8Array> {
     const entry = this.entries.get(name);
-    if (entry === undefined) throw new Refusal(`The workbook lacks its part ${name}.`);
-    if (entry.unpacked > MOST_EXPANDED) throw tooLarge(name, entry.unpacked);
-    refuseDensity(name, entry.packed, entry.unpacked);
+    if (entry === undefined) throw new Refusal(`The ${this.what} lacks its part ${name}.`);
+    if (entry.unpacked > MOST_EXPANDED) throw tooLarge(this.what, name, entry.unpacked);
+    refuseDensity(this.what, name, entry.packed, entry.unpacked);
     const from = this.startOf(name, entry);
     let unpacked = 0;
     for await (const piece of entry.method === STORED
@@ -64,15 +67,16 @@ export class ZipEntries {
       : this.inflated(from, entry, name)) {
       unpacked += piece.length;
       this.expanded += piece.length;
-      if (this.expanded > MOST_EXPANDED) throw tooLarge(name, this.expanded);
-      refuseDensity(name, entry.packed, unpacked);
+      if (this.expanded > MOST_EXPANDED) throw tooLarge(this.what, name, this.expanded);
+      refuseDensity(this.what, name, entry.packed, unpacked);
       yield piece;
     }
   }
 
   private startOf(name: string, { at, packed }: ZipEntry): number {
     const head = at + 30 <= this.file.size ? viewOf(this.file.slice(at, at + 30)) : undefined;
-    if (head?.getUint32(0, true) !== LOCAL) throw new Refusal(`The part ${name} is not where the workbook says it is.`);
+    if (head?.getUint32(0, true) !== LOCAL)
+      throw new Refusal(`The part ${name} is not where the ${this.what} says it is.`);
     const from = at + 30 + head.getUint16(26, true) + head.getUint16(28, true);
     if (from + packed > this.file.size) {
       throw new Refusal(
@@ -100,62 +104,60 @@ export class ZipEntries {
       for await (const piece of inflate) yield piece as Uint8Array;
     } catch (error) {
       if (error instanceof Refusal) throw error;
-      throw new Refusal(`The part ${name} of the workbook cannot be unpacked: ${(error as Error).message}.`);
+      throw new Refusal(`The part ${name} of the ${this.what} cannot be unpacked: ${(error as Error).message}.`);
     } finally {
       inflate.destroy();
     }
   }
 }
 
-function tooLarge(name: string, bytes: number): Refusal {
+function tooLarge(what: string, name: string, bytes: number): Refusal {
   return new Refusal(
-    `Unpacked, the workbook's part ${name} would go to ${printCount(bytes)} bytes; at most ${printCount(MOST_EXPANDED)} are read.`,
+    `Unpacked, the ${what}'s part ${name} would go to ${printCount(bytes)} bytes; at most ${printCount(MOST_EXPANDED)} are read.`,
   );
 }
 
-function refuseDensity(name: string, packed: number, unpacked: number): void {
+function refuseDensity(what: string, name: string, packed: number, unpacked: number): void {
   if (unpacked <= LITTLE || unpacked <= DENSEST * packed) return;
   throw new Refusal(
-    `The workbook's part ${name} unpacks from ${printCount(packed)} bytes to more than ${DENSEST} times as many; no sheet does. It is not read.`,
+    `The ${what}'s part ${name} unpacks from ${printCount(packed)} bytes to more than ${DENSEST} times as many; no ${what} does. It is not read.`,
   );
 }
 
 const viewOf = (bytes: Uint8Array) => new DataView(bytes.buffer, bytes.byteOffset, bytes.byteLength);
 
-function readDirectory(file: FileBytes): Map<string, ZipEntry> {
+function readDirectory(file: FileBytes, what: string): Map<string, ZipEntry> {
   const tailFrom = Math.max(0, file.size - END_SIZE - LONGEST_COMMENT);
   const tail = viewOf(file.slice(tailFrom, file.size));
   let end = tail.byteLength - END_SIZE;
   while (end >= 0 && tail.getUint32(end, true) !== END_OF_DIRECTORY) end--;
   if (end < 0)
-    throw new Refusal("The workbook is cut short: the list of its parts, at the end of the file, is not there.");
+    throw new Refusal(`The ${what} is cut short: the list of its parts, at the end of the file, is not there.`);
   const count = tail.getUint16(end + 10, true);
   const size = tail.getUint32(end + 12, true);
   const at = tail.getUint32(end + 16, true);
   if (count > MOST_ENTRIES || size > LARGEST_DIRECTORY || at + size > file.size) {
     throw new Refusal(
-      `The workbook would have ${printCount(count)} parts listed in ${printCount(size)} bytes; at most ${printCount(MOST_ENTRIES)} parts are read.`,
+      `The ${what} would have ${printCount(count)} parts listed in ${printCount(size)} bytes; at most ${printCount(MOST_ENTRIES)} parts are read.`,
     );
   }
-  return entriesOf(file.slice(at, at + size), count);
+  return entriesOf(file.slice(at, at + size), count, what);
 }
 
-function entriesOf(bytes: Uint8Array, count: number): Map<string, ZipEntry> {
+function entriesOf(bytes: Uint8Array, count: number, what: string): Map<string, ZipEntry> {
   const view = viewOf(bytes);
   const entries = new Map<string, ZipEntry>();
   let at = 0;
   for (let number = 0; number < count; number++) {
     if (at + 46 > bytes.length || view.getUint32(at, true) !== ENTRY) {
-      throw new Refusal(`The workbook lists ${count} parts, and part ${number + 1} of its list cannot be read.`);
+      throw new Refusal(`The ${what} lists ${count} parts, and part ${number + 1} of its list cannot be read.`);
     }
     const [nameLength, extraLength, commentLength] = [28, 30, 32].map((place) => view.getUint16(at + place, true));
     const name = new TextDecoder().decode(bytes.subarray(at + 46, at + 46 + nameLength));
     const method = view.getUint16(at + 10, true);
-    if ((view.getUint16(at + 8, true) & 1) !== 0) throw new Refusal(`The part ${name} of the workbook is encrypted.`);
+    if ((view.getUint16(at + 8, true) & 1) !== 0) throw new Refusal(`The part ${name} of the ${what} is encrypted.`);
     if (method !== STORED && method !== DEFLATED) {
-      throw new Refusal(
-        `The part ${name} of the workbook is packed by a method, ${method}, that workbooks do not use.`,
-      );
+      throw new Refusal(`The part ${name} of the ${what} is packed by a method, ${method}, that no ${what} uses.`);
     }
     const extra = at + 46 + nameLength;
     entries.set(name, {

@@ -1,0 +1,111 @@
+import type { CellKind, Finding, FindingOf } from "../../shared/schemas/cell.ts";
+import type { BundledCell } from "../../shared/schemas/replication-bundle.ts";
+import type { SystemSpecification } from "../../shared/schemas/system.ts";
+import { canonicalJson } from "../../shared/study/canonical-json.ts";
+import type { CellSource } from "../../shared/study/cell-source.ts";
+import { removeKey, setKey } from "../../shared/study/edit.ts";
+import { withoutDraws } from "../../shared/study/without-draws.ts";
+import { writeStudyFile } from "../../shared/study/write-study-file.ts";
+import { covarianceCsv } from "../../shared/tables/covariance.ts";
+import { tableCsv } from "../../shared/tables/csv.ts";
+import { tableLatex } from "../../shared/tables/latex.ts";
+import { methodsParagraph, paragraphBibtex, paragraphWithReferences } from "../../shared/tables/methods/paragraph.ts";
+import { FINDING_TABLES } from "../../shared/tables/of-finding.ts";
+import { withoutHouseholds } from "./without-households.ts";
+
+/** A cell that goes into a bundle, with what it found; a text finds nothing that is stored. */
+export interface ContentCell {
+  readonly cell: Pick<CellSource, "name" | "kind" | "source">;
+  readonly fingerprint?: string;
+  readonly finding?: Finding;
+  /** Of a system: what was asked, for its methods paragraph. */
+  readonly asked?: SystemSpecification;
+}
+
+export interface TextPart {
+  readonly name: string;
+  readonly content: string;
+}
+
+export interface ContentAbout {
+  readonly title: string;
+  readonly lede: string;
+  readonly isWithheld: boolean;
+  /** The file within the bundle that each data cell reads, by the cell's name. */
+  readonly files: Readonly<Record<string, string>>;
+}
+
+/** The texts of a bundle, and what its list of contents says of each cell. */
+export function bundleContents(
+  about: ContentAbout,
+  cells: readonly ContentCell[],
+): { readonly parts: TextPart[]; readonly listed: BundledCell[] } {
+  const study = {
+    name: "study.yaml",
+    content: writeStudyFile({ ...about, cells: cells.map((one) => readable(one, about)) }),
+  };
+  const stems = fileStems(cells.map(({ cell }) => cell.name));
+  const each = cells.map((one) => partsOf(one, stems.get(one.cell.name)!, about.isWithheld));
+  return { parts: [study, ...each.flatMap(({ parts }) => parts)], listed: each.map(({ listed }) => listed) };
+}
+
+/** A data cell reads the file that lies in the bundle, whichever version of an upload that was. */
+function readable({ cell }: ContentCell, { files }: ContentAbout): ContentCell["cell"] {
+  const file = cell.kind === "data" ? files[cell.name] : undefined;
+  if (file === undefined) return cell;
+  return { ...cell, source: setKey(removeKey(cell.source, ["version"]), ["upload"], file) };
+}
+
+function partsOf(one: ContentCell, stem: string, isWithheld: boolean): { parts: TextPart[]; listed: BundledCell } {
+  const { cell, fingerprint, finding } = one;
+  const listed = { name: cell.name, kind: cell.kind as CellKind, ...(fingerprint !== undefined && { fingerprint }) };
+  if (finding === undefined) return { parts: [], listed: { ...listed, tables: [] } };
+  const file = { name: `findings/${stem}.json`, content: `${canonicalJson(leaving(finding, isWithheld))}\n` };
+  const tables = isWithheld && finding.kind === "data" ? [] : tableParts(finding, stem);
+  return {
+    parts: [file, ...tables, ...systemParts(one, stem)],
+    listed: { ...listed, finding: file.name, tables: tables.map(({ name }) => name) },
+  };
+}
+
+function leaving(finding: Finding, isWithheld: boolean): object {
+  if (isWithheld) return withoutHouseholds(finding);
+  return finding.kind === "system" ? withoutDraws(finding) : finding;
+}
+
+function tableParts<K extends CellKind>(finding: FindingOf<K>, stem: string): TextPart[] {
+  const tables = FINDING_TABLES[finding.kind as K](finding);
+  return tables.flatMap((table, at) => {
+    const name = `tables/${stem}${tables.length > 1 ? `-${at + 1}` : ""}`;
+    return [
+      { name: `${name}.csv`, content: tableCsv(table) },
+      { name: `${name}.tex`, content: tableLatex(table) },
+    ];
+  });
+}
+
+function systemParts({ finding, asked }: ContentCell, stem: string): TextPart[] {
+  if (finding?.kind !== "system") return [];
+  const covariance = { name: `coefficients/${stem}.csv`, content: covarianceCsv(finding) };
+  if (asked === undefined) return [covariance];
+  const paragraph = methodsParagraph({ specification: asked, finding });
+  return [
+    covariance,
+    { name: `methods/${stem}.txt`, content: paragraphWithReferences(paragraph) },
+    { name: `methods/${stem}.bib`, content: paragraphBibtex(paragraph) },
+  ];
+}
+
+/** What the files of each cell are called: its name without spaces, and told apart where systems of files would not. */
+export function fileStems(names: readonly string[]): ReadonlyMap<string, string> {
+  const taken = new Set<string>();
+  const stems = new Map<string, string>();
+  for (const name of names) {
+    const plain = name.replaceAll(" ", "_");
+    let stem = plain;
+    for (let number = 2; taken.has(stem.toLowerCase()); number++) stem = `${plain}-${number}`;
+    taken.add(stem.toLowerCase());
+    stems.set(name, stem);
+  }
+  return stems;
+}
