@@ -2,9 +2,11 @@ import type { DecodedArray, PageHeader } from "hyparquet";
 import { parquetHeader } from "hyparquet/src/column.js";
 import { DEFAULT_PARSERS } from "hyparquet/src/convert.js";
 import { decompressPage, readDataPage, readDataPageV2 } from "hyparquet/src/datapage.js";
+import { readRleBitPackedHybrid } from "hyparquet/src/encoding.js";
 import { readPlain } from "hyparquet/src/plain.js";
 import { compressors } from "hyparquet-compressors";
 import { checkRuns } from "./check-runs.ts";
+import { checkTexts } from "./check-texts.ts";
 import type { ParquetColumn } from "./parquet-columns.ts";
 
 type ColumnDecoder = Parameters<typeof readDataPageV2>[2];
@@ -77,15 +79,16 @@ function decodeDataPage(
   if (header.type === "DATA_PAGE" && header.data_page_header) {
     const about = header.data_page_header;
     refuseCount(about.num_values, expected);
-    refuseEncoding(about.encoding);
     const page = decompressPage(packed, header.uncompressed_page_size, decoder.codec, decoder.compressors);
     let levels = 0;
+    let present = about.num_values;
     if (optional) {
       if (about.definition_level_encoding !== "RLE") throw new Error("missing values are marked in an outdated way");
       levels = 4 + lengthAt(page, 0);
       checkRuns(page.subarray(4, levels), 1, about.num_values);
+      present = countPresent(page.subarray(4, levels), about.num_values);
     }
-    checkValues(page.subarray(levels), about.encoding, decoder.type, about.num_values);
+    checkValues(page.subarray(levels), about.encoding, decoder.type, present);
     const { definitionLevels, dataPage } = readDataPage(page, about, decoder);
     return inPlace(lookUp(dataPage, about.encoding, dictionary), definitionLevels, about.num_values);
   }
@@ -94,7 +97,6 @@ function decodeDataPage(
     throw new Error(`a page of the kind ${header.type} stands among the data`);
   const { num_values, num_nulls, definition_levels_byte_length, repetition_levels_byte_length } = about;
   refuseCount(num_values, expected);
-  refuseEncoding(about.encoding);
   const levels = definition_levels_byte_length + repetition_levels_byte_length;
   if (
     repetition_levels_byte_length !== 0 ||
@@ -108,7 +110,7 @@ function decodeDataPage(
   const size = header.uncompressed_page_size - levels;
   const rest = packed.subarray(levels);
   const values = about.is_compressed ? decompressPage(rest, size, decoder.codec, decoder.compressors) : rest;
-  checkValues(values, about.encoding, decoder.type, num_values);
+  checkValues(values, about.encoding, decoder.type, num_values - num_nulls);
   const page = new Uint8Array(levels + values.length);
   page.set(packed.subarray(0, levels));
   page.set(values, levels);
@@ -123,19 +125,22 @@ function refuseCount(count: number, expected: number): void {
   }
 }
 
-/** Each text may take up the one before: a few bytes may stand for any number of them. */
-function refuseEncoding(encoding: string): void {
-  if (encoding === "DELTA_BYTE_ARRAY") {
-    throw new Error("texts are written as differences from one another; write them plain or by a dictionary");
-  }
+/** How many of so many values are not missing, by the levels before them. */
+function countPresent(levels: Uint8Array, values: number): number {
+  const read = new Array<number>(values);
+  const view = new DataView(levels.buffer, levels.byteOffset, levels.byteLength);
+  readRleBitPackedHybrid({ view, offset: 0 }, 1, read, levels.length);
+  return read.reduce((count, level) => count + (level === 1 ? 1 : 0), 0);
 }
 
-function checkValues(bytes: Uint8Array, encoding: string, type: string, most: number): void {
+function checkValues(bytes: Uint8Array, encoding: string, type: string, count: number): void {
   if (encoding === "RLE_DICTIONARY" || encoding === "PLAIN_DICTIONARY") {
-    if (bytes.length > 0) checkRuns(bytes.subarray(1), bytes[0], most);
+    if (bytes.length > 0) checkRuns(bytes.subarray(1), bytes[0], count);
   } else if (encoding === "RLE") {
     if (type !== "BOOLEAN") throw new Error("values are written by an encoding of truth values");
-    checkRuns(bytes.subarray(4, 4 + lengthAt(bytes, 0)), 1, most);
+    checkRuns(bytes.subarray(4, 4 + lengthAt(bytes, 0)), 1, count);
+  } else if (encoding === "DELTA_BYTE_ARRAY") {
+    checkTexts(bytes, count, LARGEST_PAGE);
   }
 }
 

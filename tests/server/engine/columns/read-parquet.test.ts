@@ -2,6 +2,7 @@ import fc from "fast-check";
 import { parquetWriteBuffer } from "hyparquet-writer";
 import { describe, expect, test } from "vitest";
 import { checkRuns } from "../../../../server/engine/columns/parquet/check-runs.ts";
+import { checkTexts } from "../../../../server/engine/columns/parquet/check-texts.ts";
 import { Refusal } from "../../../../server/engine/refusal.ts";
 import { cellsByName, readBytes, refusalOf } from "./cells-of.ts";
 
@@ -77,6 +78,21 @@ describe("what a Parquet column holds", () => {
     expect((await refusalOf(file, "x.parquet")).problems.map(({ column }) => column)).toEqual(["a", "d"]);
   });
 
+  test("texts written as differences from the one before, in groups of rows and pages", async () => {
+    const data = Array.from({ length: 2_000 }, (_, row) =>
+      row % 7 === 0 ? null : `village ${row >> 3}, house Å${row}`,
+    );
+    for (const nullable of [true, false]) {
+      const values = nullable ? data : data.map((text, row) => text ?? `none ${row}`);
+      const file = written({
+        columnData: [{ name: "c", data: values, type: "STRING", nullable, encoding: "DELTA_BYTE_ARRAY" }],
+        rowGroupSize: 900,
+        pageSize: 4_000,
+      });
+      expect((await cellsByName(file, "x.parquet")).c).toEqual(values);
+    }
+  });
+
   test("many groups of rows and pages, packed or not", async () => {
     const data = Array.from({ length: 5_000 }, (_, row) => (row % 11 === 0 ? null : Math.sqrt(row)));
     for (const codec of ["SNAPPY", "UNCOMPRESSED"] as const) {
@@ -96,6 +112,12 @@ describe("a hostile Parquet file", () => {
     columnData: [
       { name: "p1", data: Float64Array.from({ length: 400 }, (_, row) => row / 7), type: "DOUBLE" },
       { name: "place", data: Array.from({ length: 400 }, (_, row) => `place ${row % 9}`), type: "STRING" },
+      {
+        name: "house",
+        data: Array.from({ length: 400 }, (_, row) => `house ${row}`),
+        type: "STRING",
+        encoding: "DELTA_BYTE_ARRAY",
+      },
     ],
   });
 
@@ -118,7 +140,7 @@ describe("a hostile Parquet file", () => {
     wide.set(sound.subarray(at + 2), at + 6);
     new DataView(wide.buffer).setUint32(wide.length - 8, sound.length - 8 - footer + 4, true);
     expect((await refusalOf(wide, "x.parquet")).message).toMatch(
-      /declares [\d,]+ rows of 2 columns; at most 50,000,000 cells/,
+      /declares [\d,]+ rows of 3 columns; at most 50,000,000 cells/,
     );
   });
 
@@ -136,6 +158,22 @@ describe("a hostile Parquet file", () => {
       }),
       { numRuns: 300, seed: 5 },
     );
+  });
+
+  test("with texts that would be longer than the page they come from is refused before they are put together", async () => {
+    /** Lengths as differences in blocks of 128: first, then the same step each time (zigzag, no bits left over). */
+    const lengths = (count: number, first: number, step: number) => [
+      ...[128, 1, 4, count, first * 2],
+      ...[step * 2, 0, 0, 0, 0],
+    ];
+    // Each takes up the whole of the text before and adds a byte: 1 + 2 + … + 100 bytes out of 100.
+    const growing = Uint8Array.from([...lengths(100, 0, 1), ...lengths(100, 1, 0), ...new Array(100).fill(65)]);
+    expect(() => checkTexts(growing, 100, 5_050)).not.toThrow();
+    expect(() => checkTexts(growing, 100, 5_049)).toThrow("the texts of a page would have more than 5049 bytes");
+    const early = Uint8Array.from([...lengths(2, 3, 0), ...lengths(2, 1, 0), 65, 65]);
+    expect(() => checkTexts(early, 2, 100)).toThrow("a text takes up 3 bytes of one that has 0");
+    const long = Uint8Array.from([...lengths(2, 0, 0), ...lengths(2, 1, 1), 65, 65]);
+    expect(() => checkTexts(long, 2, 100)).toThrow("a text of 2 bytes stands where 1 are left");
   });
 
   test("with runs of more values than its page has is refused before they are written out", () => {
