@@ -199,8 +199,8 @@ export const incidenceGroup = z.strictObject({
   substitution: estimates.optional(),
   /** Rows in which the answer is not defined; in none of the means. */
   notDefined: undefinedRows.optional(),
-  /** Rows in the means in which a share leaves [0, 1], before or after. */
-  outside: count,
+  /** Rows in the means in which a share leaves [0, 1]: one that the system predicts, before or after, or what a household would buy. */
+  outside: z.strictObject({ system: count, household: count }),
 });
 export type IncidenceGroup = z.infer<typeof incidenceGroup>;
 
@@ -233,6 +233,8 @@ export const incidence = z.strictObject({
   /** The worst rows first, at most 500, and how many there are. */
   named: z.array(namedRow).max(500),
   namedRows: count,
+  /** Rows whose new price lies outside the prices of the sample, by good. */
+  unseen: z.array(unseenPrice),
   /** How many rows the derivatives behind the standard errors were taken at, where not at all. */
   derivativeRows: z.strictObject({ used: count, of: count }).optional(),
 });

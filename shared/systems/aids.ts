@@ -10,6 +10,7 @@ import {
 } from "./almost-ideal.ts";
 import { almostIdealDerivatives, shareDerivatives } from "./almost-ideal-derivatives.ts";
 import { aidsCostDerivatives } from "./cost-derivatives.ts";
+import { aidsCostEvaluator } from "./cost-evaluators.ts";
 import type { DemandSystem, Evaluator, Point, SlopeDerivatives, SystemSize } from "./demand-system.ts";
 import { slopesByEvaluator } from "./evaluation.ts";
 import { symmetricPart, translogAt, translogDerivatives } from "./translog.ts";
@@ -55,6 +56,7 @@ export const aids: DemandSystem = {
   moments: aidsMoments,
   start: almostIdealStart,
   cost: {
+    evaluator: aidsCostEvaluator,
     logCostDerivatives: aidsCostDerivatives,
     /** ln c = ln P(p) + u Π p_k^β_k. */
     logCost: (theta, size, utility, prices, demographics) => {

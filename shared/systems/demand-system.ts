@@ -85,6 +85,8 @@ export interface SlopeDerivatives {
  * NaN where the system defines none (LES with committed expenditure above the total).
  */
 export interface CostFunction {
+  /** The same two, for many households: nothing is allocated from one to the next. */
+  evaluator(theta: readonly number[], size: SystemSize): CostEvaluator;
   /** ln c(u, p; z). */
   logCost(
     theta: readonly number[],
@@ -103,6 +105,14 @@ export interface CostFunction {
     prices: readonly number[],
     demographics: readonly number[],
   ): CostDerivatives;
+}
+
+/** Utility and cost at fixed θ in logs of prices and total, without allocating; NaN where the system defines none. */
+export interface CostEvaluator {
+  /** v(p, x; z). */
+  utility(logPrices: ArrayLike<number>, logTotal: number, demographics: ArrayLike<number>): number;
+  /** ln c(u, p; z). */
+  logCost(logPrices: ArrayLike<number>, utility: number, demographics: ArrayLike<number>): number;
 }
 
 /** Of ln c(u, p; z): ∂/∂u with prices and coefficients held, and ∂/∂θ (k) with utility and prices held. */

@@ -1,4 +1,5 @@
 import { easiCostDerivatives } from "./cost-derivatives.ts";
+import { easiCostEvaluator } from "./cost-evaluators.ts";
 import type { DemandSystem, Evaluator, Point, SystemSize } from "./demand-system.ts";
 import { easiDerivatives } from "./easi-derivatives.ts";
 import { EASI_BLOCKS, easiFreeForm, easiLayout, easiStart } from "./easi-layout.ts";
@@ -80,6 +81,7 @@ export const easi: DemandSystem = {
   moments: easiMoments,
   start: easiStart,
   cost: {
+    evaluator: easiCostEvaluator,
     logCostDerivatives: easiCostDerivatives,
     /** NaN where cost falls with utility. */
     logCost: (theta, size, utility, prices, demographics) => {

@@ -1,5 +1,6 @@
 import { zeros } from "../numerics/matrix.ts";
 import { lesCostDerivatives } from "./cost-derivatives.ts";
+import { lesCostEvaluator } from "./cost-evaluators.ts";
 import type {
   CoefficientPlace,
   DemandSystem,
@@ -158,6 +159,7 @@ export const les: DemandSystem = {
   /** Nothing committed: shares that do not move. */
   start: (size, meanShares) => [...new Array<number>(size.goods * (1 + size.demographics)).fill(0), ...meanShares],
   cost: {
+    evaluator: lesCostEvaluator,
     logCostDerivatives: lesCostDerivatives,
     logCost: (theta, size, utility, prices, demographics) => {
       const { cost, logPrice } = subsistence(theta, size, prices, demographics);

@@ -6,6 +6,7 @@ import {
   interceptsAt,
 } from "./almost-ideal.ts";
 import { quaidsCostDerivatives } from "./cost-derivatives.ts";
+import { quaidsCostEvaluator } from "./cost-evaluators.ts";
 import type { DemandSystem, Evaluator, SystemSize } from "./demand-system.ts";
 import { slopesByEvaluator } from "./evaluation.ts";
 import { freeForm, remainder } from "./free-form.ts";
@@ -75,6 +76,7 @@ export const quaids: DemandSystem = {
   moments: quaidsMoments,
   start: (size, meanShares) => [...almostIdealStart(size, meanShares), ...meanShares.map(() => 0)],
   cost: {
+    evaluator: quaidsCostEvaluator,
     logCostDerivatives: quaidsCostDerivatives,
     /** ln c = ln a(p) + b(p) u/(1 − λ(p) u) with u = ln V; NaN where 1 − λ(p) u ≤ 0. */
     logCost: (theta, size, utility, prices, demographics) => {

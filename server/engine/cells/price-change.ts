@@ -8,13 +8,14 @@ import {
   priceChangeFinding,
 } from "../../../shared/schemas/price-change.ts";
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
-import { listSome } from "../../../shared/study/words.ts";
+import { capital, listSome } from "../../../shared/study/words.ts";
 import { SYSTEMS } from "../../../shared/systems/index.ts";
 import { standardErrorsPhrase } from "../../../shared/tables/standard-errors.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { Refusal } from "../refusal.ts";
 import { QUIET, type RunControl } from "../run.ts";
 import { caveatsOf } from "./caveats-of.ts";
+import { incidenceOver } from "./price-change-incidence.ts";
 import { refusingRanges } from "./refusing.ts";
 import { pointOf } from "./slutsky-point.ts";
 
@@ -27,7 +28,7 @@ export function runPriceChange(
   specification: PriceChangeSpecification,
   system: SystemFinding,
   data: PreparedData,
-  _control: RunControl = QUIET,
+  control: RunControl = QUIET,
 ): PriceChangeFinding {
   const { fitted } = system;
   const { priceScale, totalScale } = data;
@@ -40,7 +41,10 @@ export function runPriceChange(
     () => changeAt(fitted, point, question, { priceScale, totalScale, level, ...(draws && { draws }) }),
     pointName,
   );
-  const priceRange = rangeOf(data);
+  const range = rangeOf(data);
+  const inUnits = (ends: readonly number[]) => ends.map((end, i) => end * priceScale[i]);
+  const priceRange = { low: inUnits(range.low), high: inUnits(range.high) };
+  const { shareFunction } = SYSTEMS[fitted.form];
   return priceChangeFinding.parse({
     kind: "price change",
     dataFingerprint: system.dataFingerprint,
@@ -57,13 +61,16 @@ export function runPriceChange(
     priceRange,
     unseen: unseenPrices(fitted.goods, at.pricesAfter, priceRange),
     ...(specification["equivalence scale"] && { equivalenceScale: specification["equivalence scale"] }),
+    ...(shareFunction
+      ? { noIncidence: `${capital(shareFunction.absent)}.` }
+      : { incidence: incidenceOver(specification, system, data, range, control) }),
     checks: refusingRanges(() => {
       const after = {
         ...point,
         prices: at.pricesAfter.map((price, i) => price / priceScale[i]),
         total: at.totalAfter / totalScale,
       };
-      return theoryChecksAt(fitted, after, SYSTEMS[fitted.form].shareFunction ? pointName : "the new prices");
+      return theoryChecksAt(fitted, after, shareFunction ? pointName : "the new prices");
     }),
     tests: system.tests,
     ...caveatsOf(system),
@@ -81,16 +88,16 @@ function requireGoods({ prices }: PriceQuestion, goods: readonly string[]): void
   );
 }
 
-/** Lowest and highest price of each good among the rows used, in the units uploaded. */
-function rangeOf({ logPrices, priceScale }: PreparedData): { low: number[]; high: number[] } {
-  const ends = logPrices.map((column, i) => {
+/** Lowest and highest price of each good among the rows used, in units of estimation. */
+function rangeOf({ logPrices }: PreparedData): { low: number[]; high: number[] } {
+  const ends = logPrices.map((column) => {
     let low = Number.POSITIVE_INFINITY;
     let high = Number.NEGATIVE_INFINITY;
     for (const logPrice of column) {
       if (logPrice < low) low = logPrice;
       if (logPrice > high) high = logPrice;
     }
-    return [Math.exp(low) * priceScale[i], Math.exp(high) * priceScale[i]];
+    return [Math.exp(low), Math.exp(high)];
   });
   return { low: ends.map(([low]) => low), high: ends.map(([, high]) => high) };
 }

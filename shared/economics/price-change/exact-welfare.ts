@@ -1,29 +1,29 @@
 import type { Point } from "../../systems/demand-system.ts";
-import { costOf, utilityAt, WelfareUndefined } from "../welfare.ts";
+import type { FittedCoefficients } from "../../systems/index.ts";
+import { compensatingVariation, costOf, WelfareUndefined } from "../welfare.ts";
+import { compensatingVariationWithError } from "../welfare-errors.ts";
 import { type Bundle, bundleAt, lengthOf, type Subject } from "./bundle.ts";
 import { constant, type Dual, difference } from "./dual.ts";
 
 /**
- * c(p', v(p, x)), the cost at other prices of the utility that x buys at p, with its derivative in θ at a given x:
- *
- *     ∂c/∂θ = c [∂ln c/∂θ|p' − (∂ln c/∂u|p')/(∂ln c/∂u|p) ∂ln c/∂θ|p]
- *
+ * c(p', v(p, x)) − x, what keeping the utility that x buys at p costs more at other prices. With its derivative in θ at a
+ * given x.
  * Errors: `WelfareUndefined` for a system without cost function, and where utility or its cost is not defined.
  */
-export function costElsewhere(subject: Subject, home: Point, prices: readonly number[]): Dual {
-  const { fitted, derivatives } = subject;
-  const { cost, size } = costOf(fitted);
-  const utility = utilityAt(cost, fitted, size, home);
-  const { theta } = fitted;
-  const away = cost.logCost(theta, size, utility, prices, home.demographics);
-  if (!Number.isFinite(away)) throw new WelfareUndefined("the cost of this utility is not defined at the other prices");
-  // Not e^(ln c): at unchanged prices the cost is the total to the last digit.
-  const value = home.total * Math.exp(away - Math.log(home.total));
-  if (!derivatives) return constant(value, lengthOf(subject));
-  const here = cost.logCostDerivatives(theta, size, utility, home.prices, home.demographics);
-  const there = cost.logCostDerivatives(theta, size, utility, prices, home.demographics);
-  const ratio = there.utility / here.utility;
-  return { value, gradient: there.theta.map((entry, a) => value * (entry - ratio * here.theta[a])) };
+function costMore({ fitted, derivatives }: Subject, home: Point, prices: readonly number[]): Dual {
+  if (derivatives) return compensatingVariationWithError(fitted, home, prices);
+  return { value: compensatingVariation(fitted, home, prices), gradient: [] };
+}
+
+/** Why a fitted system has no cost function, by its form or by what is not imposed, as a clause; undefined where it has one. */
+export function whyNoCost(fitted: Omit<FittedCoefficients, "covariance">): string | undefined {
+  try {
+    costOf(fitted);
+    return undefined;
+  } catch (error) {
+    if (!(error instanceof WelfareUndefined)) throw error;
+    return error.message;
+  }
 }
 
 /** What a cost function adds, or why there is none. */
@@ -37,13 +37,15 @@ export type Exact =
  */
 export function exactMeasures(subject: Subject, before: Point, after: Point): Exact {
   const k = lengthOf(subject);
+  const moreMoney = constant(after.total - before.total, k);
   try {
-    const kept = costElsewhere(subject, before, after.prices);
-    const reached = costElsewhere(subject, after, before.prices);
+    const more = costMore(subject, before, after.prices);
+    const less = costMore(subject, after, before.prices);
+    const kept = { value: before.total + more.value, gradient: more.gradient };
     return {
       hicks: bundleAt(subject, after.prices, kept, before.demographics),
-      compensating: difference(kept, constant(after.total, k)),
-      equivalent: difference(constant(before.total, k), reached),
+      compensating: difference(more, moreMoney),
+      equivalent: difference(constant(0, k), { value: less.value + moreMoney.value, gradient: less.gradient }),
     };
   } catch (error) {
     if (!(error instanceof WelfareUndefined)) throw error;

@@ -7,7 +7,7 @@ import { combination, constant, type Dual, difference, quotient, weighted } from
 import { exactMeasures } from "./exact-welfare.ts";
 import { marshallianLoss } from "./marshallian.ts";
 import { newPricesOf } from "./question.ts";
-import { type TaxMeasures, taxMeasures } from "./tax.ts";
+import { type TaxMeasures, taxMeasures, taxSums } from "./tax.ts";
 
 /** Everything a price change does at a point, in units of estimation, each with its derivative in θ. */
 export interface Measures {
@@ -86,7 +86,7 @@ export function measuresAt(
       ...("hicks" in exact && { atUtilityBefore: combination([1 / point.total, exact.hicks.total]) }),
     },
     ...(taxes.some((tax) => tax !== 0) && {
-      tax: taxMeasures({ before: point.prices, after: bought, taxes }, question, exact),
+      tax: taxMeasures(taxSums(bought, bought.shares, point.prices, taxes), question, exact),
     }),
   };
 }
