@@ -18,12 +18,15 @@ import { conflict, invalid, notFound } from "../errors.ts";
 import * as texts from "../mail/texts.ts";
 import type { Actor } from "../policies/can.ts";
 import { type Access, noSuchStudy } from "./access.ts";
+import { studyUploads } from "./cells/study-uploads.ts";
 import type { RecordInJournal } from "./journal.ts";
 import { linkTokenHash, newLinkToken } from "./link-token.ts";
 import type { MailService } from "./mail.ts";
 import type { Cells, SourcesOf } from "./ports.ts";
 import { collectSealedCells } from "./sealed-cells.ts";
-import { sealedContentOf } from "./sealed-content.ts";
+import { type SealedCells, sealedContentOf, sourcesSealed } from "./sealed-content.ts";
+import { methodsToSeal } from "./sealed-methods.ts";
+import { refuseWithheldNames } from "./withheld-names.ts";
 
 export type { RefereeCopySummaryRow };
 
@@ -62,10 +65,17 @@ export function createRefereeCopyService({ db, access, cells, sourcesOf, program
     return copy;
   }
 
-  function authorsOf(studyId: string): string[] {
-    return peopleOf(db, studyId)
-      .filter(({ role }) => role !== "reader")
-      .map(({ name }) => name);
+  const authorsOf = (studyId: string) => peopleOf(db, studyId).filter(({ role }) => role !== "reader");
+
+  /** The cells of a copy, with the methods of its systems where they are asked for. */
+  async function collected(studyId: string, { cellId, also, methods }: NewRefereeCopy): Promise<SealedCells> {
+    const sealed = await sealedCells(studyId, cellId, also);
+    if (!methods) return sealed;
+    const systems = [sealed.system, ...(sealed.also ?? [])].flatMap(({ cell, finding }) =>
+      finding.kind === "system" ? [{ cell, finding }] : [],
+    );
+    const sources = await sourcesOf(studyId);
+    return { ...sealed, methods: methodsToSeal(distinct(systems), sources, studyUploads(db, studyId)) };
   }
 
   /** Sends the link, without a word of who the authors are where that is withheld. */
@@ -120,12 +130,14 @@ export function createRefereeCopyService({ db, access, cells, sourcesOf, program
       }
       const many = refereeCopiesOf(db, studyId).length;
       if (many >= MOST_COPIES) throw conflict(`The study has ${many} referee copies, and may have ${MOST_COPIES}.`);
-      const sealed = await sealedCells(studyId, wanted.cellId, wanted.also);
+      const sealed = await collected(studyId, wanted);
       const sealedAt = new Date();
-      const authors = wanted.withholdAuthors ? undefined : authorsOf(studyId);
-      const content = sealedContent.parse(
-        sealedContentOf({ program, title: study.title, authors, note: wanted.note, sealedAt }, sealed),
-      );
+      const { title } = study;
+      const { note, withholdAuthors } = wanted;
+      const people = authorsOf(studyId);
+      if (withholdAuthors) refuseWithheldNames({ authors: people, title, note, cells: sourcesSealed(sealed) });
+      const authors = withholdAuthors ? undefined : people.map(({ name }) => name);
+      const content = sealedContent.parse(sealedContentOf({ program, title, authors, note, sealedAt }, sealed));
       const { token, tokenHash } = newLinkToken();
       const id = randomUUID();
       const cellName = sealed.matrix.cell.name;
@@ -202,6 +214,11 @@ export function createRefereeCopyService({ db, access, cells, sourcesOf, program
       return { fingerprint: newest.fingerprint, content: JSON.parse(newest.content) as SealedContent };
     },
   };
+}
+
+/** Each cell once: the matrix's system may have been chosen besides. */
+function distinct<C extends { readonly cell: { readonly id: string } }>(cells: readonly C[]): C[] {
+  return cells.filter(({ cell }, place) => cells.findIndex((one) => one.cell.id === cell.id) === place);
 }
 
 /** The end of a link: to come, and not out of all sight. */

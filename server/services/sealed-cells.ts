@@ -1,13 +1,12 @@
-import type { CellKind, FindingOf } from "../../shared/schemas/cell.ts";
-import type { ElasticitiesFinding } from "../../shared/schemas/elasticities.ts";
+import { CELL_KINDS, type CellKind, type FindingOf } from "../../shared/schemas/cell.ts";
 import { ALSO_KINDS, type AlsoKind } from "../../shared/schemas/referee-copy.ts";
-import type { pointSpecification } from "../../shared/schemas/slutsky.ts";
 import type { CellStatus } from "../../shared/schemas/status.ts";
 import type { CellSource } from "../../shared/study/cell-source.ts";
-import { parseCell } from "../../shared/study/parse-cell.ts";
 import { conflict, notFound } from "../errors.ts";
+import { refuseOneHousehold } from "./one-household.ts";
 import type { Cells, SourcesOf } from "./ports.ts";
 import type { AlsoCell, SealedCells } from "./sealed-content.ts";
+import { sealText } from "./sealed-text.ts";
 
 interface Collaborators {
   readonly cells: Pick<Cells, "status" | "finding">;
@@ -25,23 +24,27 @@ interface Standing {
 export function collectSealedCells({ cells, sourcesOf }: Collaborators) {
   /** The current finding of a cell with its source. */
   async function current<K extends CellKind>(study: Standing, status: CellStatus, kinds: readonly K[]) {
-    if (!kinds.some((kind) => kind === status.kind)) {
-      throw conflict(`${status.name} is a ${status.kind} cell; a ${kinds.join(" or ")} cell is needed here.`);
-    }
-    if (status.state !== "current" || status.fingerprint === undefined) {
-      const because = status.because === undefined ? "" : ` (${status.because.replace(/\.$/, "")})`;
-      throw conflict(`${status.name} is ${status.state}${because}, and only a current finding is sealed.`);
-    }
-    const stored = await cells.finding(study.studyId, status.fingerprint);
-    const cell = study.sources.find(({ id }) => id === status.cellId);
-    if (stored === undefined || cell === undefined) throw conflict(`${status.name} is changing; seal it again.`);
-    return { cell, finding: stored.finding as FindingOf<K> };
+    const cell = currentCell(study, status, kinds);
+    const { name, fingerprint } = status;
+    const stored = fingerprint === undefined ? undefined : await cells.finding(study.studyId, fingerprint);
+    if (fingerprint === undefined || stored === undefined) throw conflict(`${name} is changing; seal it again.`);
+    return { cell, fingerprint, finding: stored.finding as FindingOf<K> };
   }
 
   async function alsoCell(study: Standing, cellId: string): Promise<AlsoCell> {
-    const found = await current<AlsoKind>(study, statusOf(study, cellId), ALSO_KINDS);
-    refuseOneHousehold(found);
-    return found;
+    const status = statusOf(study, cellId);
+    if (status.kind === "text") return alsoText(study, status);
+    const { cell, finding } = await current<ComputedKind>(study, status, ALSO_KINDS.filter(isComputed));
+    refuseOneHousehold({ cell, finding });
+    return { cell, finding };
+  }
+
+  /** Of a text nothing is stored: its numbers are those of the cells it quotes, which are current when it is. */
+  async function alsoText(study: Standing, status: CellStatus): Promise<AlsoCell> {
+    const cell = currentCell(study, status, ["text"]);
+    const named = study.statuses.filter(({ name }) => status.reads.includes(name));
+    const quoted = await Promise.all(named.map((one) => current(study, one, CELL_KINDS)));
+    return { cell, finding: sealText(cell, new Map(quoted.map((one) => [one.cell.name, one]))) };
   }
 
   return async (studyId: string, cellId: string, alsoIds: readonly string[]): Promise<SealedCells> => {
@@ -57,6 +60,24 @@ export function collectSealedCells({ cells, sourcesOf }: Collaborators) {
     const named = new Set([matrix, system, data, ...also].map(({ cell }) => cell.id));
     return { matrix, system, data, also, read: readByAll(study, also).filter(({ id }) => !named.has(id)) };
   };
+}
+
+type ComputedKind = Exclude<AlsoKind, "text">;
+const isComputed = (kind: AlsoKind): kind is ComputedKind => kind !== "text";
+
+/** The source of a cell that is current, and of a kind that is wanted. */
+function currentCell(study: Standing, status: CellStatus, kinds: readonly CellKind[]): CellSource {
+  const { name, kind, state, because } = status;
+  if (!kinds.some((one) => one === kind)) {
+    throw conflict(`${name} is a ${kind} cell; a ${kinds.join(" or ")} cell is needed here.`);
+  }
+  if (state !== "current") {
+    const told = because === undefined ? "" : ` (${because.replace(/\.$/, "")})`;
+    throw conflict(`${name} is ${state}${told}, and only a current ${kind === "text" ? "text" : "finding"} is sealed.`);
+  }
+  const cell = study.sources.find(({ id }) => id === status.cellId);
+  if (cell === undefined) throw conflict(`${name} is changing; seal it again.`);
+  return cell;
 }
 
 function statusOf({ statuses }: Standing, cellId: string): CellStatus {
@@ -82,46 +103,4 @@ function readByAll({ statuses, sources }: Standing, readers: readonly AlsoCell[]
     for (const read of statuses.find((status) => status.name === name)?.reads ?? []) reached.add(read);
   }
   return sources.filter(({ name }) => reached.has(name));
-}
-
-/** Quantiles nearer the ends than this are the total of the poorest or the richest household asked. */
-const OUTERMOST_QUANTILE = 0.01;
-
-/**
- * Groups of fewer households are not sealed. From practice: many statistics offices ask for ten or more behind a
- * published figure; what the data's owner asks comes first.
- */
-const SMALLEST_GROUP = 10;
-
-/** What stands at a row of the upload, or for a handful of them, would show a referee those households. */
-function refuseOneHousehold({ cell, finding }: { cell: CellSource; finding: FindingOf<CellKind> }): void {
-  const { name, source } = cell;
-  if (finding.kind === "elasticities") refuseSmallGroups(name, finding);
-  if (finding.kind !== "slutsky" && finding.kind !== "elasticities") return;
-  const { specification } = parseCell(finding.kind, source);
-  if (specification?.kind !== finding.kind) throw conflict(`${name} is changing; seal it again.`);
-  const pointName = finding.kind === "slutsky" ? finding.pointName : finding.groups[0].name;
-  if (specification.at !== undefined) refuseOnePoint(name, pointName, specification.at);
-}
-
-function refuseOnePoint(name: string, pointName: string, at: typeof pointSpecification._output): void {
-  if (typeof at === "string" || "prices" in at) return;
-  if ("row" in at) {
-    throw conflict(
-      `${name} stands at ${pointName}, the prices and total of one household: seal it at the base point or the mean.`,
-    );
-  }
-  const fraction = Number(at.x.slice("quantile ".length));
-  if (fraction >= OUTERMOST_QUANTILE && fraction <= 1 - OUTERMOST_QUANTILE) return;
-  throw conflict(
-    `${name} stands at ${pointName}, the total of one household: seal it at a quantile from ${OUTERMOST_QUANTILE} to ${1 - OUTERMOST_QUANTILE}.`,
-  );
-}
-
-function refuseSmallGroups(name: string, { groups, without }: ElasticitiesFinding): void {
-  const small = [...groups, ...without].find(({ rows }) => rows !== undefined && rows < SMALLEST_GROUP);
-  if (small === undefined) return;
-  throw conflict(
-    `${name} has a group of ${small.rows} ${small.rows === 1 ? "row" : "rows"} (${small.name}), and groups of fewer than ${SMALLEST_GROUP} are not sealed: they may show whose they are.`,
-  );
 }

@@ -1,9 +1,16 @@
 import type { FindingOf } from "../../shared/schemas/cell.ts";
 import type { DataFinding } from "../../shared/schemas/data.ts";
-import type { AlsoKind, SealedAlso, SealedContent, SealedSlutsky } from "../../shared/schemas/referee-copy.ts";
+import type {
+  AlsoKind,
+  SealedAlso,
+  SealedContent,
+  SealedMethods,
+  SealedSlutsky,
+} from "../../shared/schemas/referee-copy.ts";
 import type { SlutskyFinding } from "../../shared/schemas/slutsky.ts";
 import type { SystemFinding } from "../../shared/schemas/system.ts";
 import type { TestsFinding } from "../../shared/schemas/tests.ts";
+import type { SealedText } from "../../shared/schemas/text.ts";
 import type { CellSource } from "../../shared/study/cell-source.ts";
 import { setKey } from "../../shared/study/edit.ts";
 import { withoutDraws } from "../../shared/study/without-draws.ts";
@@ -17,11 +24,18 @@ export interface SealedCells {
   readonly also?: readonly AlsoCell[];
   /** What those rest on besides the three above and themselves: their sources go along. */
   readonly read?: readonly CellSource[];
+  /** Drafted from the systems among them, where that was asked for. */
+  readonly methods?: readonly SealedMethods[];
+}
+
+/** Every cell whose source goes into a copy: what the matrix rests on, what else is read, what is sealed beside it. */
+export function sourcesSealed({ matrix, system, data, also = [], read = [] }: SealedCells): CellSource[] {
+  return [data.cell, system.cell, matrix.cell, ...read, ...also.map(({ cell }) => cell)];
 }
 
 export interface AlsoCell {
   readonly cell: CellSource;
-  readonly finding: FindingOf<AlsoKind>;
+  readonly finding: FindingOf<Exclude<AlsoKind, "text">> | SealedText;
 }
 
 interface About {
@@ -36,12 +50,9 @@ interface About {
  * What a referee reads, named field by field so that nothing comes along by itself. Of the
  * households it has sums only: no row's number, no row's values, no place of a row in the file.
  */
-export function sealedContentOf(
-  about: About,
-  { matrix, system, data, also = [], read = [] }: SealedCells,
-): SealedContent {
+export function sealedContentOf(about: About, sealed: SealedCells): SealedContent {
+  const { matrix, system, data, also = [], methods = [] } = sealed;
   const { title, authors, program, note, sealedAt } = about;
-  const sources = [data.cell, system.cell, matrix.cell, ...read, ...also.map(({ cell }) => cell)];
   return {
     format: "tangency referee copy 1",
     program,
@@ -49,7 +60,7 @@ export function sealedContentOf(
     note,
     sealedAt: sealedAt.toISOString(),
     cells: {
-      sources: sources
+      sources: sourcesSealed(sealed)
         .map((cell) => (authors === undefined && cell.kind === "data" ? withoutFileName(cell) : cell))
         .map(({ name, kind, source }) => ({ name, kind, source })),
       matrix: matrix.cell.name,
@@ -59,6 +70,7 @@ export function sealedContentOf(
     slutsky: matrixOf(matrix.finding),
     system: withoutDraws(withoutRows(system.finding)),
     ...(also.length > 0 && { also: also.map(alsoOf) }),
+    ...(methods.length > 0 && { methods: methods.map(methodsOf) }),
     accounting: accountingOf(data.finding),
     data: {
       meanTotal: data.finding.meanTotal,
@@ -78,7 +90,13 @@ function alsoOf({ cell: { name }, finding }: AlsoCell): SealedAlso {
       return { kind: "elasticities", name, finding };
     case "slutsky":
       return { kind: "slutsky", name, finding: matrixOf(finding) };
+    case "text":
+      return { kind: "text", name, finding };
   }
+}
+
+function methodsOf({ system, text, references, bibtex }: SealedMethods): SealedMethods {
+  return { system, text, references: [...references], bibtex };
 }
 
 /** Rows that contradict one another are counted, not listed. */

@@ -14,6 +14,8 @@ export const newRefereeCopy = z.strictObject({
   cellId: identifier,
   /** Further cells whose findings are sealed with it, in this order. */
   also: z.array(identifier).max(MOST_ALSO).default([]),
+  /** Whether the methods paragraph of every system goes with them. */
+  methods: z.boolean().default(false),
   note: z.string().trim().max(300).default(""),
   withholdAuthors: z.boolean().default(true),
   expiresAt: opensUntil.optional(),

@@ -5,6 +5,7 @@ import { count, fingerprint, finite, instant } from "./primitives.ts";
 import { negativityOverSample, slutskyFinding } from "./slutsky.ts";
 import { systemFinding } from "./system.ts";
 import { testsFinding } from "./tests.ts";
+import { sealedTextFinding } from "./text.ts";
 
 /** A Slutsky finding without the rows where negativity breaks. */
 const sealedSlutsky = slutskyFinding
@@ -13,7 +14,7 @@ const sealedSlutsky = slutskyFinding
 export type SealedSlutsky = z.infer<typeof sealedSlutsky>;
 
 /** The kinds that can be sealed beside the matrix. */
-export const ALSO_KINDS = ["system", "tests", "elasticities", "slutsky"] as const;
+export const ALSO_KINDS = ["system", "tests", "elasticities", "slutsky", "text"] as const;
 export type AlsoKind = (typeof ALSO_KINDS)[number];
 
 /** A further finding under its cell's name: of rows it has counts and sums, never which. */
@@ -22,8 +23,19 @@ const sealedAlso = z.discriminatedUnion("kind", [
   z.strictObject({ kind: z.literal("tests"), name: z.string(), finding: testsFinding }),
   z.strictObject({ kind: z.literal("elasticities"), name: z.string(), finding: elasticitiesFinding }),
   z.strictObject({ kind: z.literal("slutsky"), name: z.string(), finding: sealedSlutsky }),
+  z.strictObject({ kind: z.literal("text"), name: z.string(), finding: sealedTextFinding }),
 ]);
 export type SealedAlso = z.infer<typeof sealedAlso>;
+
+/** The methods of a sealed system in the words of a paper, as they were drafted when it was sealed. */
+const sealedMethods = z.strictObject({
+  system: z.string(),
+  text: z.string(),
+  /** By first author and year, in words. */
+  references: z.array(z.string()),
+  bibtex: z.string(),
+});
+export type SealedMethods = z.infer<typeof sealedMethods>;
 
 /**
  * What a referee reads: everything needed to recompute matrix, errors, eigenvalues and checks, and
@@ -47,6 +59,8 @@ export const sealedContent = z.strictObject({
   system: systemFinding,
   /** Further findings of the owner's choice; a copy without any has no such key. */
   also: z.array(sealedAlso).min(1).optional(),
+  /** Of the matrix's system first, then of those among the further findings; where the owner chose so. */
+  methods: z.array(sealedMethods).min(1).optional(),
   accounting: z.strictObject({
     uploaded: count,
     leftOut: z.array(z.strictObject({ reason: z.enum(LEFT_OUT_REASONS), label: z.string(), count })),

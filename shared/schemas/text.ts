@@ -43,3 +43,16 @@ export const textFinding = z.strictObject({
   resolved: z.string(),
 });
 export type TextFinding = z.infer<typeof textFinding>;
+
+/** A number of a sealed text: at its place in the sealed words, as it was printed, and what it was quoted as. */
+const sealedNumber = quotedNumber.omit({ standing: true, because: true }).required({ printed: true, says: true });
+export type SealedNumber = z.infer<typeof sealedNumber>;
+
+/** A text as a sealed copy keeps it: Markdown with its numbers in their places, none of which can change any more. */
+export const sealedTextFinding = z.strictObject({
+  kind: z.literal("text"),
+  markdown: z.string(),
+  /** In the order of the text. */
+  numbers: z.array(sealedNumber),
+});
+export type SealedText = z.infer<typeof sealedTextFinding>;

@@ -1,5 +1,5 @@
 import type { Finding } from "../schemas/cell.ts";
-import type { QuotedNumber, TextFinding } from "../schemas/text.ts";
+import type { QuotedNumber, SealedNumber, SealedText, TextFinding } from "../schemas/text.ts";
 import { textCell } from "./cells.ts";
 import { printCount } from "./numbers.ts";
 import { quoteOf } from "./quoted/quote.ts";
@@ -119,25 +119,28 @@ export function quotedNumbersTable({ quotations }: Pick<TextFinding, "quotations
   };
 }
 
-/** A text as a sealed copy keeps it: Markdown without quotations, and what each number was and came from. */
-export interface SealedText {
-  readonly markdown: string;
-  readonly numbers: readonly {
-    readonly asked: string;
-    readonly printed: string;
-    readonly says: string;
-    readonly fingerprint?: string;
-  }[];
-}
-
 /** A text to be sealed. Only one whose every number is current is: otherwise which are not, in words. */
 export function sealedText({ quotations, resolved }: TextFinding): SealedText | { readonly refused: string } {
-  if (quotations.some(({ standing }) => standing !== "current")) return { refused: quotationsInWords(quotations) };
-  const numbers = quotations.map((one) => ({
-    asked: askedInWords(one),
-    printed: one.printed ?? "",
-    says: one.says ?? "",
-    ...(one.fingerprint !== undefined && { fingerprint: one.fingerprint }),
-  }));
-  return { markdown: resolved, numbers };
+  const behind = quotations.filter(({ standing }) => standing !== "current");
+  if (behind.length > 0) return { refused: `${quotationsInWords(quotations)}: ${behind.map(asRefused).join("; ")}` };
+  let shift = 0;
+  const numbers = quotations.map(({ from, to, cell, words, printed = "", says = "", fingerprint }): SealedNumber => {
+    const start = from + shift;
+    const length = escaped(printed).length;
+    shift += length - (to - from);
+    const place = { from: start, to: start + length, cell, words, printed, says };
+    return { ...place, ...(fingerprint !== undefined && { fingerprint }) };
+  });
+  return { kind: "text", markdown: resolved, numbers };
+}
+
+function asRefused(one: QuotedNumber): string {
+  const because = (one.because ?? "").replace(/\.$/, "");
+  return one.standing === "absent" ? `${askedInWords(one)} has no number (${because})` : quotationInWords(one);
+}
+
+/** A sealed text as a reader of texts takes it: what was current when it was sealed is all there is. */
+export function asSealed({ markdown, numbers }: SealedText): TextFinding {
+  const quotations = numbers.map((one) => ({ ...one, standing: "current" as const }));
+  return { kind: "text", text: markdown, quotations, resolved: markdown };
 }

@@ -3,11 +3,13 @@ import { render, screen, within } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
 import { afterEach, beforeEach, describe, expect, it, vi } from "vitest";
 import type { RefereeCopy, SealedContent } from "../../shared/schemas/referee-copy.ts";
+import type { SealedText } from "../../shared/schemas/text.ts";
 import { canonicalJson } from "../../shared/study/canonical-json.ts";
 import { sha256Hex } from "../../shared/study/fingerprint.ts";
 import { parseStudyFile } from "../../shared/study/study-file.ts";
 import { RefereePage } from "../../src/app/pages/referee.tsx";
 import { sealTangents } from "../../src/features/referee-copy/seal.tsx";
+import { specificationYaml } from "../../src/features/referee-copy/sealed-files.ts";
 import { verifyCopy } from "../../src/workers/verify-copy.ts";
 import { exampleFindings } from "../support/findings.ts";
 import { sampleElasticities } from "../support/sample-elasticities.ts";
@@ -67,6 +69,22 @@ const readBlob = (blob: Blob) =>
     reader.readAsText(blob);
   });
 
+const ARGUMENT: SealedText = {
+  kind: "text",
+  markdown: "## Meat\n\nA *luxury*, 1.318 (0.009).\n\n#### By season\n\nThe same.",
+  numbers: [
+    {
+      from: 21,
+      to: 34,
+      cell: "base",
+      words: ["eta", "meat & fish"],
+      printed: "1.318 (0.009)",
+      says: "expenditure elasticity of meat & fish at the base point",
+      fingerprint: "ab12".repeat(16),
+    },
+  ],
+};
+
 /** A copy with further findings of every kind that can be sealed; the second matrix and system are the first once more. */
 function sealedWithMore(): RefereeCopy {
   const content = structuredClone(sampleContent());
@@ -77,6 +95,10 @@ function sealedWithMore(): RefereeCopy {
     { kind: "elasticities", name: "thirds", finding: sampleElasticities(3) },
     { kind: "elasticities", name: "at the mean", finding: sampleElasticities(1) },
     { kind: "tests", name: "laws", finding: exampleFindings().tests },
+    { kind: "text", name: "argument", finding: ARGUMENT },
+  ];
+  content.methods = [
+    { system: "base", text: "Shares follow…", references: ["Stone, R. (1954)."], bibtex: "@article{s}" },
   ];
   return sampleCopy(content);
 }
@@ -94,18 +116,65 @@ describe("further findings", () => {
         "thirds elasticities",
         "at the mean elasticities",
         "laws tests",
+        "argument text",
+        "base methods",
       ]),
     );
     expect(screen.getByRole("row", { name: /^again matrix, errors, eigenvalues, checks 0/ })).toBeInTheDocument();
     expect(screen.getByRole("row", { name: /^rival coefficients as tabled 0/ })).toBeInTheDocument();
     // Each view is loaded when it is first shown.
     await vi.waitFor(
-      () => expect(document.body.textContent).not.toMatch(/Opening (again|rival|thirds|at the|laws)/),
+      () => expect(document.body.textContent).not.toMatch(/Opening (again|rival|thirds|at the|laws|argument)/),
       30_000,
     );
     const ids = [...document.querySelectorAll("[id]")].map(({ id }) => id);
     expect(ids.filter((id, place) => ids.indexOf(id) !== place)).toEqual([]);
   }, 60_000);
+
+  it("of words have their numbers in their places, said to be as sealed, and heads below the text's name", async () => {
+    const { user } = open(sealedWithMore());
+    const text = await screen.findByRole("region", { name: "argument text" });
+    expect(await within(text).findByText("1.318 (0.009)", { selector: ".quoted" })).toHaveAttribute(
+      "title",
+      "expenditure elasticity of meat & fish at the base point, from base",
+    );
+    expect(text).toHaveTextContent("1 quoted number, as it was when this was sealed.");
+    expect(
+      within(text).getByRole("row", {
+        name: "base: eta, meat & fish 1.318 (0.009) expenditure elasticity of meat & fish at the base point ab12 ab12 ab12 ab12",
+      }),
+    ).toBeInTheDocument();
+    expect(within(text).getByRole("heading", { level: 3 })).toHaveTextContent("Meat");
+    expect(within(text).getByRole("heading", { level: 4 })).toHaveTextContent("By season");
+    expect(document.querySelector(".katex")).toBeNull();
+
+    const methods = screen.getByRole("region", { name: "base methods" });
+    expect(within(methods).getByRole("listitem")).toHaveTextContent("Stone, R. (1954).");
+    for (const name of ["argument, text", "Methods of base", "References of the methods of base", "Tables"])
+      await user.click(screen.getByRole("button", { name }));
+    expect(saved.map(({ name }) => name.replace(/^referee-copy-\w+/, ""))).toEqual([
+      "-also-6-text.md",
+      "-methods-1.txt",
+      "-methods-1.bib",
+      ".tex",
+    ]);
+    expect(await saved[0].text).toBe(ARGUMENT.markdown);
+    expect(await saved[1].text).toContain("References\n\nStone, R. (1954).");
+    expect(await saved[3].text).toContain("1.318 (0.009)");
+  }, 60_000);
+
+  it.each([
+    "One line.",
+    "  Set in.\n\n## Meat\n\n- one\n- two\n",
+    "Ends with lines.\n\n\n",
+    'Tab\there, "quotes": {base: rows}\u2028\n---\n# no comment',
+  ])("of words keep every letter in the study file: %j", async (text) => {
+    const content = structuredClone(sampleContent());
+    content.cells.sources = [...content.cells.sources, { name: "argument", kind: "text", source: text }];
+    const study = parseStudyFile(specificationYaml(content));
+    expect(study.cells.find(({ name }) => name === "argument")?.source).toBe(text);
+    expect(study.cells.map(({ name }) => name)).toEqual(["survey", "base", "matrix", "argument"]);
+  });
 
   it("are found out when changed after sealing", async () => {
     const changed = sealedWithMore();

@@ -1,7 +1,8 @@
 import { type ComponentType, lazy, Suspense, useId } from "react";
-import type { SealedAlso } from "../../../shared/schemas/referee-copy.ts";
+import type { SealedMethods as Methods, SealedAlso } from "../../../shared/schemas/referee-copy.ts";
 import { SealedMatrix } from "../../cells/slutsky/sealed-matrix.tsx";
 import { SealedVerdicts } from "../../cells/slutsky/sealed-verdicts.tsx";
+import { SealedMethods } from "./sealed-methods.tsx";
 
 /** A view by its promise, as a part that is loaded when it is first shown. */
 const later = <P extends object>(load: () => Promise<ComponentType<P>>) =>
@@ -11,8 +12,15 @@ const SystemOpen = later(async () => (await import("../../cells/system/view.tsx"
 const TestsOpen = later(async () => (await import("../../cells/tests/view.tsx")).TestsOpen);
 const ElasticitiesOpen = later(async () => (await import("../../cells/elasticities/view.tsx")).ElasticitiesOpen);
 
-/** Further findings of a sealed copy, as the study shows them. */
-export function AlsoSealed({ also }: { also: readonly SealedAlso[] }) {
+const SealedText = later(async () => (await import("../../cells/text/sealed-text.tsx")).SealedText);
+
+interface AlsoSealedProps {
+  readonly also: readonly SealedAlso[];
+  readonly methods: readonly Methods[];
+}
+
+/** Further findings of a sealed copy, as the study shows them, then the methods of its systems. */
+export function AlsoSealed({ also, methods }: AlsoSealedProps) {
   return (
     <>
       <p className="type-small border-line border-t pt-4 text-ink2">
@@ -22,6 +30,7 @@ export function AlsoSealed({ also }: { also: readonly SealedAlso[] }) {
       {also.map((one) => (
         <OneSealed key={one.name} one={one} />
       ))}
+      <SealedMethods methods={methods} />
     </>
   );
 }
@@ -48,6 +57,8 @@ function Finding({ one }: { one: SealedAlso }) {
       return <TestsOpen finding={one.finding} />;
     case "elasticities":
       return <ElasticitiesOpen finding={one.finding} />;
+    case "text":
+      return <SealedText finding={one.finding} />;
     case "slutsky":
       return (
         <div className="space-y-7">

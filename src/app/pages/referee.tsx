@@ -22,7 +22,7 @@ export function RefereePage({ token, verify }: { token: string; verify?: Verify 
   if (error)
     return <LinkOpensNothing {...(!isAnswer && { because: sentenceOf(error), onAgain: () => void refetch() })} />;
   if (!copy) return <Waiting />;
-  const { slutsky, system, also } = copy.content;
+  const { slutsky, system, also, methods } = copy.content;
   return (
     <SealedCopy
       key={copy.fingerprint}
@@ -32,9 +32,9 @@ export function RefereePage({ token, verify }: { token: string; verify?: Verify 
       matrix={<SealedMatrix finding={slutsky} />}
       coefficients={<CoefficientView finding={system} />}
       also={
-        also && (
+        (also || methods) && (
           <Suspense>
-            <AlsoSealed also={also} />
+            <AlsoSealed also={also ?? []} methods={methods ?? []} />
           </Suspense>
         )
       }

@@ -65,9 +65,11 @@ function Opened({
   }
 }
 
-/** Cells whose finding stands, of the kinds that are sealed. */
+/** Cells that are current, of the kinds that are sealed; of a text no finding is stored. */
 function sealable(standings: readonly Standing[]): Sealable[] {
-  return standings.flatMap(({ cell, kind, fingerprint }) =>
-    fingerprint !== undefined && isSealable(kind) ? [{ cellId: cell.id, name: cell.name, kind }] : [],
+  return standings.flatMap(({ cell, kind, state, fingerprint }) =>
+    (fingerprint !== undefined || (kind === "text" && state === "current")) && isSealable(kind)
+      ? [{ cellId: cell.id, name: cell.name, kind }]
+      : [],
   );
 }

@@ -91,6 +91,27 @@ export function quotationsInPlace({ quotations, prefix }: Pick<Quoting, "quotati
   return (root: TreeNode): void => inPlace(root);
 }
 
+/**
+ * The heads of a text as those of an outline that leaves out no level: the first begins at the first, whichever sign it
+ * was written with, and one below another is one level deeper. Which stands below which stays as written.
+ */
+export function headsInOrder() {
+  return (root: TreeNode): void => {
+    const above: number[] = [];
+    for (const head of headsOf(root)) {
+      const written = Number(head.tagName?.slice(1));
+      while ((above.at(-1) ?? 0) >= written) above.pop();
+      above.push(written);
+      head.tagName = `h${above.length}`;
+    }
+  };
+}
+
+function headsOf(node: TreeNode): TreeNode[] {
+  if (/^h[1-6]$/.test(node.tagName ?? "")) return [node];
+  return (node.children ?? []).flatMap(headsOf);
+}
+
 /** Addresses a text may lead to: pages of the web, mail, and its own notes. Anything else is no address. */
 export function safeAddress(address: string): string {
   return /^(https?:\/\/|mailto:|#)/i.test(address) ? address : "";

@@ -3,7 +3,7 @@ import Markdown, { type Components, type Options } from "react-markdown";
 import remarkGfm from "remark-gfm";
 import type { QuotedNumber as QuotedNumberOfText, TextFinding } from "../../../shared/schemas/text.ts";
 import { TableScroller } from "../../components/table-scroller.tsx";
-import { marksInTextOnly, noDeeper, proseOnly, quotationsInPlace, safeAddress } from "./markdown.ts";
+import { headsInOrder, marksInTextOnly, noDeeper, proseOnly, quotationsInPlace, safeAddress } from "./markdown.ts";
 import { shallow, withMarks } from "./marked-text.ts";
 import { Quotation } from "./quotation.tsx";
 
@@ -35,7 +35,7 @@ export const Prose = memo(function Prose({ finding, mathematics = NO_MATHEMATICS
             noDeeper,
             [marksInTextOnly, { text, quotations }],
           ]}
-          rehypePlugins={[...mathematics.draw, [quotationsInPlace, { quotations, prefix }]]}
+          rehypePlugins={[...mathematics.draw, headsInOrder, [quotationsInPlace, { quotations, prefix }]]}
           remarkRehypeOptions={{
             clobberPrefix: prefix,
             footnoteLabel: "Notes",

@@ -25,6 +25,11 @@ export function AlsoChoice({ cells, register }: AlsoChoiceProps) {
           </label>
         ))}
       </div>
+      {cells.some(({ kind }) => kind === "text") && (
+        <p className="type-small pt-1 text-ink2">
+          Texts are sealed as they read now, numbers included: look for names in them that are to be withheld.
+        </p>
+      )}
     </fieldset>
   );
 }

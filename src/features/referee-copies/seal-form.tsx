@@ -31,6 +31,7 @@ export function SealForm({ studyId, cells, onSealed }: SealFormProps) {
     defaultValues: {
       cellId: matrices[0]?.cellId ?? "",
       also: [],
+      methods: false,
       note: "",
       withholdAuthors: true,
       opensFor: "",
@@ -69,6 +70,10 @@ export function SealForm({ studyId, cells, onSealed }: SealFormProps) {
       </fieldset>
       <AlsoChoice cells={cells.filter(({ cellId }) => cellId !== matrix)} register={register} />
       {errors.also && <Fault>{errors.also.message}</Fault>}
+      <label className="flex min-h-6 items-center gap-2.5">
+        <input type="checkbox" className="choice-box" {...register("methods")} />
+        With the methods of its systems, as a paper would say them
+      </label>
       <LongField
         label="A note to the referee"
         rows={2}

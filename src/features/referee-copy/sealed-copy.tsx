@@ -18,7 +18,7 @@ export interface SealedCopyProps {
   readonly verdicts: ReactNode;
   readonly matrix: ReactNode;
   readonly coefficients: ReactNode;
-  /** Further findings, where there are any. */
+  /** Further findings and methods, where there are any. */
   readonly also?: ReactNode;
   /** Opens the copy that has replaced this one. */
   readonly onNewer?: () => void;

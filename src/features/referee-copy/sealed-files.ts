@@ -1,4 +1,10 @@
-import type { RefereeCopy, SealedAlso, SealedContent, SealedSlutsky } from "../../../shared/schemas/referee-copy.ts";
+import type {
+  RefereeCopy,
+  SealedAlso,
+  SealedContent,
+  SealedMethods,
+  SealedSlutsky,
+} from "../../../shared/schemas/referee-copy.ts";
 import { canonicalJson } from "../../../shared/study/canonical-json.ts";
 import { coefficientTable } from "../../../shared/tables/coefficients.ts";
 import { covarianceCsv } from "../../../shared/tables/covariance.ts";
@@ -11,11 +17,12 @@ import { rowAccountingTable } from "../../../shared/tables/row-accounting.ts";
 import { compensatedTable, slutskyTable } from "../../../shared/tables/slutsky-matrix.ts";
 import type { LabelledTable } from "../../../shared/tables/table.ts";
 import { testsTables } from "../../../shared/tables/tests-tables.ts";
+import { asSealed, quotedNumbersTable } from "../../../shared/tables/text-finding.ts";
 
 /** A file made in the browser from the sealed content. */
 export interface SealedFile {
   readonly label: string;
-  readonly format: "CSV" | "LaTeX" | "YAML" | "JSON";
+  readonly format: "CSV" | "LaTeX" | "Markdown" | "Text" | "BibTeX" | "YAML" | "JSON";
   readonly name: string;
   readonly type: string;
   readonly text: string;
@@ -23,17 +30,26 @@ export interface SealedFile {
 
 /** The specification as one study file: every cell's source under its name and kind. */
 export function specificationYaml({ study, cells }: SealedContent): string {
-  const indented = (source: string) =>
-    source
-      .trimEnd()
-      .split("\n")
-      .map((line) => (line === "" ? "" : `    ${line}`))
-      .join("\n");
   // A JSON string is a YAML one too: any title and any name may stand in quotes.
   const blocks = cells.sources.map(
-    ({ name, kind, source }) => `  ${JSON.stringify(name)}:\n    kind: ${kind}\n${indented(source)}\n`,
+    ({ name, kind, source }) =>
+      `  ${JSON.stringify(name)}:\n    kind: ${kind}\n${kind === "text" ? textYaml(source) : indented(source, 4)}\n`,
   );
   return `study: ${JSON.stringify(study.title)}\ncells:\n${blocks.join("")}`;
+}
+
+function indented(source: string, by: number): string {
+  const margin = " ".repeat(by);
+  const lines = source.trimEnd().split("\n");
+  return lines.map((line) => (line === "" ? "" : `${margin}${line}`)).join("\n");
+}
+
+/** Prose is no map of keys: it stands under one, line by line where nothing in it has to be escaped. */
+function textYaml(text: string): string {
+  const lines = text.replace(/\n$/, "");
+  const isPlain = /\S$/.test(lines) && !/[^\P{C}\n]|[\u2028\u2029]/u.test(lines);
+  if (!isPlain) return `    text: ${JSON.stringify(text)}`;
+  return `    text: |2${lines === text ? "-" : ""}\n${indented(lines, 6)}`;
 }
 
 function matrixTables(slutsky: SealedSlutsky): LabelledTable[] {
@@ -56,6 +72,8 @@ function alsoTables(one: SealedAlso): LabelledTable[] {
       return elasticityTables(one.finding);
     case "slutsky":
       return matrixTables(one.finding);
+    case "text":
+      return one.finding.numbers.length === 0 ? [] : [quotedNumbersTable(asSealed(one.finding))];
   }
 }
 
@@ -70,6 +88,24 @@ function tablesLatex({ slutsky, system, accounting, also = [] }: SealedContent):
     .join("\n");
 }
 
+function markdownFile({ name, finding }: Extract<SealedAlso, { kind: "text" }>, file: string): SealedFile {
+  return { label: `${name}, text`, format: "Markdown", name: file, type: "text/markdown", text: finding.markdown };
+}
+
+function methodsFiles({ system, text, references, bibtex }: SealedMethods, stem: string): SealedFile[] {
+  const written = `${text}\n\nReferences\n\n${references.join("\n")}\n`;
+  return [
+    { label: `Methods of ${system}`, format: "Text", name: `${stem}.txt`, type: "text/plain", text: written },
+    {
+      label: `References of the methods of ${system}`,
+      format: "BibTeX",
+      name: `${stem}.bib`,
+      type: "application/x-bibtex",
+      text: bibtex,
+    },
+  ];
+}
+
 /** Everything a copy can be downloaded as. JSON is the very text whose SHA-256 is the fingerprint. */
 export function sealedFiles({ fingerprint, content }: RefereeCopy): SealedFile[] {
   const stem = `referee-copy-${fingerprint.slice(0, 8)}`;
@@ -80,7 +116,7 @@ export function sealedFiles({ fingerprint, content }: RefereeCopy): SealedFile[]
     type: "text/csv;charset=utf-8",
     text,
   });
-  const { slutsky, system, also = [] } = content;
+  const { slutsky, system, also = [], methods = [] } = content;
   const alsoCsv = (one: SealedAlso) => {
     if (one.kind === "system") return covarianceCsv(one.finding);
     return alsoTables(one).map(tableCsv).join("\n");
@@ -88,7 +124,12 @@ export function sealedFiles({ fingerprint, content }: RefereeCopy): SealedFile[]
   return [
     csv("Matrix, with standard errors", "matrix", tableCsv(slutskyTable(slutsky, slutsky.form))),
     csv("Coefficients, with full covariance", "coefficients", covarianceCsv(system)),
-    ...also.map((one, i) => csv(`${one.name}, ${one.kind}`, `also-${i + 1}-${one.kind}`, alsoCsv(one))),
+    ...also.map((one, i) => {
+      const place = `also-${i + 1}-${one.kind}`;
+      if (one.kind === "text") return markdownFile(one, `${stem}-${place}.md`);
+      return csv(`${one.name}, ${one.kind}`, place, alsoCsv(one));
+    }),
+    ...methods.flatMap((one, i) => methodsFiles(one, `${stem}-methods-${i + 1}`)),
     { label: "Tables", format: "LaTeX", name: `${stem}.tex`, type: "application/x-tex", text: tablesLatex(content) },
     {
       label: "Specification",

@@ -2,6 +2,7 @@ import { describe, expect, it } from "vitest";
 import { textFinding as schema } from "../../../shared/schemas/text.ts";
 import { askedNumbers } from "../../../shared/study/asked-numbers.ts";
 import {
+  asSealed,
   type QuotedCell,
   quotationsInWords,
   quotedNumbersTable,
@@ -89,9 +90,37 @@ describe("a text with its numbers", () => {
 
   it("is sealed with fingerprints where every number is current, and not otherwise", () => {
     expect(sealedText(found("Of {base: rows} rows."))).toEqual({
+      kind: "text",
       markdown: "Of 900 rows.",
-      numbers: [{ asked: "base: rows", printed: "900", says: "rows of the equations", fingerprint: SHA }],
+      numbers: [
+        {
+          from: 3,
+          to: 6,
+          cell: "base",
+          words: ["rows"],
+          printed: "900",
+          says: "rows of the equations",
+          fingerprint: SHA,
+        },
+      ],
     });
-    expect(sealedText(found("Of {linear: rows} rows."))).toEqual({ refused: "the quoted number is out of date" });
+    expect(sealedText(found("Of {linear: rows} rows."))).toEqual({
+      refused: "the quoted number is out of date: 900 (out of date: form changed from la-aids to aids)",
+    });
+    expect(sealedText(found("{base: rows} rows, {base: eta, bread}."))).toEqual({
+      refused: expect.stringMatching(/^1 of 2 quoted numbers is not there: base: eta, bread has no number \(.*bread/),
+    });
+  });
+
+  it("is sealed with every number where it stands in the sealed words, and reads there as it did", () => {
+    const before = found("*η* = {base: η, meat & fish} over {survey: rows used} rows; $x^2$ {base: rows}.");
+    const sealed = sealedText(before);
+    if ("refused" in sealed) throw new Error(sealed.refused);
+    expect(sealed.numbers.map(({ from, to }) => sealed.markdown.slice(from, to))).toEqual(
+      before.quotations.map(({ printed }) => printed),
+    );
+    expect(schema.parse(asSealed(sealed)).quotations.map(({ says }) => says)).toEqual(
+      before.quotations.map(({ says }) => says),
+    );
   });
 });

@@ -56,6 +56,18 @@ describe("a text as it reads", () => {
     ]);
   });
 
+  it.each([
+    ["## A\n### B\n## C", "3 4 3"],
+    ["### A\n##### B\n###### C\n### D", "3 4 5 3"],
+    ["## A\n# B\n### C\n## D", "3 3 4 4"],
+    ["# A\n## B\n### C\n#### D\n##### E", "3 4 5 6 6"],
+    ["> ## A\n\n### B[^n]\n\n[^n]: Note.", "3 4 3"],
+  ])("leaves out no level of heading, whichever it begins with: %j", (text, levels) => {
+    const page = read(text);
+    const heads = [...page.querySelectorAll("h1, h2, h3, h4, h5, h6")].map(({ tagName }) => tagName.slice(1));
+    expect(heads.join(" ")).toBe(levels);
+  });
+
   it("sets heads below the cell's, tables that scroll, notes with ids of their own", () => {
     const text =
       "# Needs\n\n| good | η |\n|---|---:|\n| meat | {base: eta, meat & fish, alone} |\n\nSo.[^a]\n\n[^a]: Here.\n";

@@ -19,6 +19,7 @@ const cells = [
   { cellId: "m", name: "matrix", kind: "slutsky" },
   { cellId: "n", name: "ninetieth", kind: "slutsky" },
   { cellId: "l", name: "laws", kind: "tests" },
+  { cellId: "t", name: "argument", kind: "text" },
 ] as const;
 const list = "GET /api/studies/s/referee-copies";
 const seal = "POST /api/studies/s/referee-copies";
@@ -40,6 +41,7 @@ describe("sealing a referee copy", () => {
     expect(asked.find(({ method }) => method === "POST")?.body).toEqual({
       cellId: "n",
       also: [],
+      methods: false,
       note: "For the second round.",
       withholdAuthors: true,
     });
@@ -52,6 +54,9 @@ describe("sealing a referee copy", () => {
   it("seals further findings, with an end, in another's place, and sends the link", async () => {
     const { user, asked } = open({ [list]: [copy], [seal]: { copy, token: "an-unguessable-token" } });
     await user.click(await screen.findByRole("checkbox", { name: "laws tests" }));
+    await user.click(screen.getByRole("checkbox", { name: "argument text" }));
+    expect(screen.getByText(/look for names in them/)).toBeInTheDocument();
+    await user.click(screen.getByRole("checkbox", { name: /^With the methods of its systems/ }));
     await user.click(screen.getByRole("checkbox", { name: "ninetieth slutsky" }));
     // Chosen as the matrix, it is no longer one of the others.
     await user.click(screen.getByRole("radio", { name: "ninetieth" }));
@@ -65,7 +70,13 @@ describe("sealing a referee copy", () => {
     await user.click(screen.getByRole("button", { name: "Seal a referee copy" }));
     expect(await screen.findByText(/It is on its way to editor@example.org/)).toBeInTheDocument();
     const body = asked.find(({ method }) => method === "POST")?.body as Record<string, unknown>;
-    expect(body).toMatchObject({ cellId: "n", also: ["l"], replaces: "c", email: "editor@example.org" });
+    expect(body).toMatchObject({
+      cellId: "n",
+      also: ["l", "t"],
+      methods: true,
+      replaces: "c",
+      email: "editor@example.org",
+    });
     const days = (Date.parse(String(body.expiresAt)) - Date.now()) / 86_400_000;
     expect(days).toBeCloseTo(90, 2);
   });

@@ -15,6 +15,7 @@ export const maybeAddress = z
 export const sealForm = z.object({
   cellId: z.string().min(1, "Choose the matrix to seal."),
   also: z.array(z.string()).max(MOST_ALSO, `At most ${MOST_ALSO} findings go with a matrix.`),
+  methods: z.boolean(),
   note: z.string().trim().max(300, "The note has at most 300 characters."),
   withholdAuthors: z.boolean(),
   /** Days, or nothing. */
