@@ -28,10 +28,29 @@ interface Request<T> {
 }
 
 /** Asks the API of this installation and returns the answer as its schema reads it. */
-export async function ask<T = void>({ method = "GET", path, body, signal, answer }: Request<T>): Promise<T> {
-  let response: Response;
+export async function ask<T = void>({ answer, ...request }: Request<T>): Promise<T> {
+  const response = await answerTo(request);
+  const text = await response.text();
+  if (!response.ok) throw refusalOf(response.status, text);
+  return answer ? answer.parse(JSON.parse(text)) : (undefined as T);
+}
+
+/** A file that the API of this installation answers with, under the name it is given there. */
+export interface AnsweredFile {
+  readonly name: string;
+  readonly content: Blob;
+}
+
+export async function askForFile(request: Omit<Request<void>, "answer">): Promise<AnsweredFile> {
+  const response = await answerTo(request);
+  if (!response.ok) throw refusalOf(response.status, await response.text());
+  const named = /filename="?([^";]+)"?/.exec(response.headers.get("content-disposition") ?? "");
+  return { name: named?.[1] ?? "file", content: await response.blob() };
+}
+
+async function answerTo({ method = "GET", path, body, signal }: Omit<Request<void>, "answer">): Promise<Response> {
   try {
-    response = await fetch(path, {
+    return await fetch(path, {
       method,
       credentials: "same-origin",
       headers: { accept: "application/json", ...(body !== undefined && { "content-type": "application/json" }) },
@@ -42,9 +61,6 @@ export async function ask<T = void>({ method = "GET", path, body, signal, answer
     if (signal?.aborted) throw error;
     throw unreachable();
   }
-  const text = await response.text();
-  if (!response.ok) throw refusalOf(response.status, text);
-  return answer ? answer.parse(JSON.parse(text)) : (undefined as T);
 }
 
 export function unreachable(): ApiRefusal {

@@ -74,6 +74,7 @@ export const api = {
     `${study(studyId)}/checkpoints/${part(checkpointId)}/return`,
   sealedCopy: (token: string) => `/api/referee/${part(token)}`,
   newestCopy: (token: string) => `/api/referee/${part(token)}/newest`,
+  replicationBundles: (studyId: string) => `${study(studyId)}/replication-bundles`,
   refereeCopies: (studyId: string) => `${study(studyId)}/referee-copies`,
   refereeLink: (studyId: string, copyId: string) => `${study(studyId)}/referee-copies/${part(copyId)}/link`,
   refereeCopy: (studyId: string, copyId: string) => `${study(studyId)}/referee-copies/${part(copyId)}`,

@@ -18,6 +18,7 @@ export type StudyDialog =
   | "uploads"
   | "remarks"
   | "referee copies"
+  | "replication bundle"
   | "journal"
   | "settings"
   | "keys"
@@ -67,7 +68,9 @@ export function StudyBar({ study, me, connection, readOnly, crumbs, onDialog, ch
               words: "History and checkpoints",
               onSelect: () => void navigate(pages.history(study.id)),
             },
-            ...(isOwner ? [entry("referee copies", "Referee copies")] : []),
+            ...(isOwner
+              ? [entry("referee copies", "Referee copies"), entry("replication bundle", "Replication bundle")]
+              : []),
             entry("journal", "Journal"),
           ],
           [entry("settings", "Settings"), entry("keys", "Keys"), { key: "leave", words: "Sign out", onSelect: leave }],

@@ -10,6 +10,7 @@ const PeopleDialog = lazy(() => import("../../features/people/people-dialog.tsx"
 const UploadsDialog = lazy(() => import("../../features/uploads/uploads-dialog.tsx"));
 const StudyRemarks = lazy(() => import("./study-remarks.tsx"));
 const RefereeCopiesDialog = lazy(() => import("../../features/referee-copies/referee-copies-dialog.tsx"));
+const ReplicationDialog = lazy(() => import("../../features/replication/replication-dialog.tsx"));
 const JournalDialog = lazy(() => import("../../features/journal/journal-dialog.tsx"));
 const DeleteStudyDialog = lazy(() => import("../../features/studies/delete-study-dialog.tsx"));
 const KeysDialog = lazy(() => import("../keys-dialog.tsx"));
@@ -54,6 +55,8 @@ function Opened({
       return <StudyRemarks study={study} me={me} connection={connection} onClose={onClose} />;
     case "referee copies":
       return <RefereeCopiesDialog studyId={study.id} cells={sealable(standings)} onClose={onClose} />;
+    case "replication bundle":
+      return <ReplicationDialog studyId={study.id} cells={standings.map(asBundled)} onClose={onClose} />;
     case "journal":
       return <JournalDialog studyId={study.id} onClose={onClose} />;
     case "settings":
@@ -73,3 +76,5 @@ function sealable(standings: readonly Standing[]): Sealable[] {
       : [],
   );
 }
+
+const asBundled = ({ cell, state }: Standing) => ({ name: cell.name, isCurrent: state === "current" });

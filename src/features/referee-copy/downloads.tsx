@@ -1,17 +1,10 @@
 import { useMemo } from "react";
 import type { RefereeCopy } from "../../../shared/schemas/referee-copy.ts";
 import { printCount } from "../../../shared/tables/numbers.ts";
+import { saveFile } from "../../lib/save-file.ts";
 import { type SealedFile, sealedFiles } from "./sealed-files.ts";
 
-function save({ text, type, name }: SealedFile): void {
-  const address = URL.createObjectURL(new Blob([text], { type }));
-  const link = document.createElement("a");
-  link.href = address;
-  link.download = name;
-  link.click();
-  // Revoked a turn later: some browsers begin reading only then.
-  setTimeout(() => URL.revokeObjectURL(address), 1000);
-}
+const save = ({ text, type, name }: SealedFile) => saveFile(name, new Blob([text], { type }));
 
 const size = (file: SealedFile) =>
   `${file.format}, ${printCount(Math.max(1, Math.round(new Blob([file.text]).size / 1000)))} kB`;
