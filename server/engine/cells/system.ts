@@ -42,14 +42,15 @@ export function runSystem(given: SystemSpecification, data: PreparedData, contro
   const mean = meanPoint(data, fitted.demographics);
   // What is not normalised is nowhere near p = x = 1: then the head of the finding stands at the sample mean.
   const [point, pointName] = data.finding.normalise === "mean" ? [base, "base point"] : [mean, "mean"];
-  const at = refusingRanges(
-    () => ({ ...expenditureElasticitiesAt(fitted, point), checks: theoryChecksAt(fitted, point, pointName) }),
-    pointName,
-  );
+  poll();
+  const elasticities = refusingRanges(() => expenditureElasticitiesAt(fitted, point), pointName);
+  poll();
+  const checks = refusingRanges(() => theoryChecksAt(fitted, point, pointName), pointName);
+  poll();
   const draws = estimate.bootstrap?.draws;
-  const lawsHere = withDrawnLargest(at.checks, draws && drawnIntervals(fitted, draws, point));
+  const lawsHere = withDrawnLargest(checks, draws && drawnIntervals(fitted, draws, point));
   return refusingRanges(() => {
-    const { expenditure, expenditureErrors } = at;
+    const { expenditure, expenditureErrors } = elasticities;
     const expenditureOfLes = expenditureReport(fitted, data, point);
     return systemFinding.parse({
       ...estimate,

@@ -4,7 +4,7 @@ import { asOneColumn, weightBlocks } from "../residuals.ts";
 import { semidefiniteCholesky, solveUpper, solveUpperTransposed } from "../triangle.ts";
 import type { ExactEquations, ExactProblem, ExactSolution } from "./exact-iteration.ts";
 import { RowDerivatives } from "./row-derivatives.ts";
-import { entriesOf, loadEntries, termValue, timesSymmetric } from "./row-terms.ts";
+import { loadEntries, packedEntries, termValue, timesSymmetric } from "./row-terms.ts";
 
 /**
  * The estimating equations of the settled estimate are Σ_t Q_t e_t(φ) = 0 with Q_t = Ẑ_t'(W ⊗ ·) from the first stage,
@@ -89,7 +89,7 @@ function breadAndMeat(problem: ExactProblem, { equations, solution }: ExactSolut
   const derivatives = new RowDerivatives(solution.theta, size, problem.estimation.form.expand, rows, equations.real);
   const projections = projectedTerms(equations);
   const weight = multiply(solution.weight, transposed(solution.weight)).values;
-  const entries = entriesOf(turned.form.derivatives(turned.form.expand.offset), kept);
+  const entries = packedEntries(turned.form.derivatives(turned.form.expand.offset), kept);
   const coefficients = form.coefficients(turned.turn(solution.free));
   const picked = new Float64Array(kept.length);
   const scaled = new Float64Array(kept.length);

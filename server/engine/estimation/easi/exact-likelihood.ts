@@ -1,4 +1,3 @@
-import type { Entry } from "../coefficient-form.ts";
 import { expand } from "../coefficient-form.ts";
 import { type Columns, multiply, transposed, zeros } from "../columns.ts";
 import { LOG_TWO_PI_E } from "../criterion.ts";
@@ -7,7 +6,7 @@ import type { ExactProblem } from "./exact-iteration.ts";
 import type { RealExpenditure } from "./exact-rows.ts";
 import { type ExactSource, exactSource } from "./exact-source.ts";
 import { RowDerivatives } from "./row-derivatives.ts";
-import { entriesOf, loadEntries, termValue, timesSymmetric } from "./row-terms.ts";
+import { loadEntries, type PackedEntries, packedEntries, termValue, timesSymmetric } from "./row-terms.ts";
 
 /** What the rows are at some φ. */
 interface At {
@@ -42,14 +41,15 @@ export interface RowScore {
  */
 export class ExactLikelihood {
   readonly #problem: ExactProblem;
-  readonly #entries: readonly (readonly Entry[])[];
-  readonly #kept: readonly (readonly Entry[])[];
+  readonly #entries: PackedEntries;
+  readonly #kept: PackedEntries;
 
   constructor(problem: ExactProblem) {
     const { form, equations } = problem.estimation;
     this.#problem = problem;
-    this.#entries = form.derivatives(form.expand.places.map(() => 0));
-    this.#kept = entriesOf(this.#entries, equations);
+    const entries = form.derivatives(form.expand.places.map(() => 0));
+    this.#entries = packedEntries(entries);
+    this.#kept = packedEntries(entries, equations);
   }
 
   value(free: readonly number[]): number {
@@ -128,7 +128,10 @@ export class ExactLikelihood {
   /** −∂e/∂φ_f of the row's equations. */
   derivativeOf(f: number, { terms, tilt, byFree }: RowScore, into: Float64Array): void {
     for (let i = 0; i < into.length; i++) into[i] = tilt[i] * byFree[f];
-    for (const [equation, term, value] of this.#kept[f]) into[equation] += value * terms[term];
+    const kept = this.#kept;
+    for (let at = kept.starts[f]; at < kept.starts[f + 1]; at++) {
+      into[kept.equations[at]] += kept.values[at] * terms[kept.terms[at]];
+    }
   }
 
   #at(free: readonly number[]): At {

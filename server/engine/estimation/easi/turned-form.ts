@@ -28,6 +28,26 @@ export interface TurnedForm {
 }
 
 export function turnedForm(of: CoefficientForm, size: SystemSize, prices: WhitenedPrices, poll?: Poll): TurnedForm {
+  return prices.whitened ? overWhitenedPrices(of, size, prices, poll) : asItIs(of);
+}
+
+function asItIs(of: CoefficientForm): TurnedForm {
+  return {
+    places: of.expand.places,
+    root: identity(of.free),
+    form: { ...of, expand: freeAlone(of.free) },
+    turn: (free) => [...free],
+    turnBack: (turned) => [...turned],
+  };
+}
+
+/** The free coefficients themselves in place of θ. */
+function freeAlone(free: number): CoefficientForm["expand"] {
+  const places = Array.from({ length: free }, (_, f) => f);
+  return { matrix: places.map((f) => places.map((g) => (f === g ? 1 : 0))), offset: places.map(() => 0), places };
+}
+
+function overWhitenedPrices(of: CoefficientForm, size: SystemSize, prices: WhitenedPrices, poll?: Poll): TurnedForm {
   const terms = easiMoments.terms(size);
   const parts = partsOfTerms(terms, prices).map((sum) => sum.filter(([, factor]) => factor !== 0));
   const equations = size.goods;
@@ -41,16 +61,15 @@ export function turnedForm(of: CoefficientForm, size: SystemSize, prices: Whiten
       for (const [whitened, factor] of parts[term]) column[equation * terms.length + whitened] += value * factor;
     }
   });
-  const root = prices.whitened ? triangularFactor(directions, poll) : identity(of.free);
-  if (prices.whitened) orthonormalise(directions, root);
+  const root = triangularFactor(directions, poll);
+  orthonormalise(directions, root);
   const entries = entriesOfColumns(directions, terms.length);
-  const itself = origin.map((_, f) => origin.map((__, g) => (f === g ? 1 : 0)));
   return {
     places: of.expand.places,
     root,
     form: {
       free: of.free,
-      expand: { matrix: itself, offset: origin, places: origin.map((_, f) => f) },
+      expand: freeAlone(of.free),
       derivatives: () => entries,
       coefficients: (turned) => {
         const moved = multiply(directions, { rows: of.free, columns: 1, values: Float64Array.from(turned) }).values;
