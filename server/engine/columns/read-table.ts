@@ -3,8 +3,10 @@ import type { UploadColumn } from "../../../shared/schemas/resources.ts";
 import { QUIET, type RunControl } from "../run.ts";
 import type { FileBytes } from "./file-bytes.ts";
 import { type FileFormat, fileFormat } from "./file-format.ts";
+import { readParquet } from "./parquet/read-parquet.ts";
 import type { UploadTable } from "./prepared-data.ts";
 import { readCsv } from "./read-csv.ts";
+import { readWorkbook } from "./workbook/read-workbook.ts";
 
 /** A file as columns, with how they stood in it. */
 export interface ReadTable {
@@ -44,13 +46,10 @@ export async function readTable(
     return { table, columns, format, csv: { separator, decimalComma } };
   }
   const sha256 = await hashOf(file);
-  // Loaded only where such a file is read: in the thread that reads it.
   if (format === "parquet") {
-    const { readParquet } = await import("./parquet/read-parquet.ts");
     const { rows, columns, described } = await readParquet(file, name, control);
     return { table: { name, sha256, rows, columns }, columns: described, format };
   }
-  const { readWorkbook } = await import("./workbook/read-workbook.ts");
   const { rows, columns, described, ...workbook } = await readWorkbook(file, name, sheet, control);
   const ofSheet = createHash("sha256").update(`${sha256} ${workbook.sheet}`).digest("hex");
   return { table: { name, sha256: ofSheet, rows, columns }, columns: described, format, workbook };

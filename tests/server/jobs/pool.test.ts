@@ -1,4 +1,5 @@
 import { readFileSync } from "node:fs";
+import { eq } from "drizzle-orm";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { type OpenDatabase, openDatabase } from "../../../server/db/client.ts";
 import { findings, studies, uploadChunks, uploadColumns, uploads } from "../../../server/db/schema/index.ts";
@@ -13,6 +14,7 @@ import { seededRandom } from "../../../shared/numerics/random.ts";
 import type { SpecificationOf } from "../../../shared/schemas/cell.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
 import { temporaryFolder } from "../../support/temporary.ts";
+import { workbookParts, zipOf } from "../../support/zip.ts";
 
 const TUNA = readFileSync(new URL("../../reference/fixtures/tuna-weekly.csv", import.meta.url));
 const GOODS = [1, 2, 3, 4, 5, 6, 7].map((i) => `  brand${i}: {price: p${i}, quantity: q${i}}`).join("\n");
@@ -50,13 +52,13 @@ function specification<K extends "data" | "system" | "slutsky">(kind: K, source:
   return parsed as SpecificationOf<K>;
 }
 
-function addUpload(id: string, bytes: Buffer) {
+function addUpload(id: string, bytes: Buffer, ending = "csv") {
   open.db
     .insert(uploads)
     .values({
       id,
       studyId: "s",
-      name: `${id}.csv`,
+      name: `${id}.${ending}`,
       bytes: bytes.length,
       state: "receiving",
       uploadedBy: "u",
@@ -127,13 +129,36 @@ describe("the worker threads", () => {
     expect(loadTable(open.db, "tuna")).toEqual(direct.table);
   });
 
+  it("read the sheet of a workbook that is asked for, and the first when none is", async () => {
+    const sheet = (name: string, head: string, numbers: readonly number[]) => {
+      const rows = numbers.map((value, at) => `<row r="${at + 2}"><c r="A${at + 2}"><v>${value}</v></c></row>`);
+      const first = `<row r="1"><c r="A1" t="inlineStr"><is><t>${head}</t></is></c></row>`;
+      return { name, xml: `<sheetData>${first}${rows.join("")}</sheetData>` };
+    };
+    const book = zipOf(workbookParts([sheet("Rows", "p1", [1.5, 2.5]), sheet("Codes", "code", [7, 8, 9])]));
+    for (const [id, asked, expected] of [
+      ["book", undefined, { rows: 2, sheet: "Rows", columns: [["p1", [1.5, 2.5]]] }],
+      ["codes", "Codes", { rows: 3, sheet: "Codes", columns: [["code", [7, 8, 9]]] }],
+    ] as const) {
+      addUpload(id, Buffer.from(book), "xlsx");
+      const { rows, sha256, ...read } = await pool.parseUpload(id, () => {}, signal, asked);
+      open.db.update(uploads).set({ rows, sha256, state: "ready" }).where(eq(uploads.id, id)).run();
+      const columns = loadTable(open.db, id).columns.map((column) => [
+        column.name,
+        column.type === "number" ? [...column.values] : [],
+      ]);
+      expect({ rows, columns, ...read }).toEqual({ ...expected, format: "xlsx", sheets: ["Rows", "Codes"] });
+    }
+  });
+
   it("refuse a file with its problems, and keep nothing of it", async () => {
     addUpload("ragged", Buffer.from("a,b\n1,2\n3\n"));
     const refusal = await pool.parseUpload("ragged", () => {}, signal).catch((error: unknown) => error);
     expect(refusal).toBeInstanceOf(Refusal);
     expect((refusal as Refusal).problems[0]).toMatchObject({ row: 2 });
     const kept = open.db.select({ id: uploadColumns.uploadId }).from(uploadColumns).all();
-    expect(new Set(kept.map(({ id }) => id))).toEqual(new Set(["tuna"]));
+    expect(kept.map(({ id }) => id)).not.toContain("ragged");
+    expect(kept.map(({ id }) => id)).toContain("tuna");
   });
 
   it("find what the engine finds on this thread, to the last digit", async () => {

@@ -34,7 +34,10 @@ class HeldRequest {
   constructor() {
     HeldRequest.latest = this;
   }
-  open() {}
+  address = "";
+  open(_method: string, address: string) {
+    this.address = address;
+  }
   setRequestHeader() {}
   send(form: FormData) {
     this.sent = form;
@@ -97,6 +100,53 @@ describe("an upload", () => {
     const { user } = renderPart(<FileDrop studyId="s" onAdded={() => {}} />);
     await user.upload(await screen.findByLabelText("Choose a file"), large);
     expect(await screen.findByRole("alert")).toHaveTextContent("large.csv has 123.0 MB; an upload may have 100 MB.");
+  });
+});
+
+describe("a file of the name of an upload that is there", () => {
+  async function asked() {
+    const onAdded = vi.fn();
+    const view = renderPart(<FileDrop studyId="s" onAdded={onAdded} />);
+    view.client.setQueryData(["uploads", "s"], [purchases, { ...purchases, id: "v", version: 2 }]);
+    HeldRequest.latest = undefined as unknown as HeldRequest;
+    await view.user.upload(await screen.findByLabelText("Choose a file"), file());
+    const question = await screen.findByRole("group", { name: "purchases-2031.csv is there already" });
+    return { ...view, onAdded, question };
+  }
+
+  it("is not sent before a person has said what becomes of the one that is there", async () => {
+    const { question, user } = await asked();
+    expect(question).toHaveTextContent(
+      "As its version 3, cells that read the latest version follow and version 2 is kept",
+    );
+    expect(HeldRequest.latest).toBeUndefined();
+    await user.click(screen.getByRole("button", { name: "Leave it" }));
+    expect(question).not.toBeInTheDocument();
+    expect(screen.getByLabelText("Choose a file")).toBeEnabled();
+    expect(HeldRequest.latest).toBeUndefined();
+  });
+
+  it.each([
+    ["Keep it as version 3", "/api/studies/s/uploads?replaces=purchases-2031.csv"],
+    ["Put it beside", "/api/studies/s/uploads?beside=1"],
+  ])("goes out by %s as what was chosen", async (word, address) => {
+    const { user, onAdded } = await asked();
+    await user.click(screen.getByRole("button", { name: word }));
+    expect(HeldRequest.latest.address).toBe(address);
+    const added = { ...purchases, id: "w", version: 3 };
+    HeldRequest.latest.answer(201, added);
+    await vi.waitFor(() => expect(onAdded.mock.calls[0]?.[0]).toEqual(added));
+  });
+
+  it("may be chosen again after it was refused, and the question stands in the place of the fault", async () => {
+    const { user } = await asked();
+    await user.click(screen.getByRole("button", { name: "Put it beside" }));
+    const sentence = "You may read this study and add nothing to it.";
+    HeldRequest.latest.answer(403, { error: { code: "forbidden", sentence, problems: [] } });
+    expect(await screen.findByRole("alert")).toHaveTextContent(sentence);
+    await user.upload(screen.getByLabelText("Choose a file"), file());
+    expect(await screen.findByRole("group", { name: /is there already/ })).toBeInTheDocument();
+    expect(screen.queryByRole("alert")).not.toBeInTheDocument();
   });
 });
 

@@ -1,8 +1,11 @@
 import fc from "fast-check";
-import { parquetWriteBuffer } from "hyparquet-writer";
+import { ByteWriter, parquetWriteBuffer } from "hyparquet-writer";
+import { writePageHeader } from "hyparquet-writer/src/datapage.js";
+import { deltaByteArray } from "hyparquet-writer/src/delta.js";
 import { describe, expect, test } from "vitest";
 import { checkRuns } from "../../../../server/engine/columns/parquet/check-runs.ts";
 import { checkTexts } from "../../../../server/engine/columns/parquet/check-texts.ts";
+import { decodePages } from "../../../../server/engine/columns/parquet/decode-pages.ts";
 import { Refusal } from "../../../../server/engine/refusal.ts";
 import { cellsByName, readBytes, refusalOf } from "./cells-of.ts";
 
@@ -91,6 +94,39 @@ describe("what a Parquet column holds", () => {
       });
       expect((await cellsByName(file, "x.parquet")).c).toEqual(values);
     }
+  });
+
+  test("texts written as differences in a page of the first kind, which does not say how many are missing", () => {
+    const levels = [2, 0, 0, 0, 0b11, 0b1011];
+    const texts = ["house 1", "house 2", "home"].map((text) => new TextEncoder().encode(text));
+    const values = new ByteWriter();
+    deltaByteArray(values, texts);
+    const size = levels.length + values.offset;
+    const file = new ByteWriter();
+    writePageHeader(file, {
+      type: "DATA_PAGE",
+      uncompressed_page_size: size,
+      compressed_page_size: size,
+      data_page_header: {
+        num_values: 4,
+        encoding: "DELTA_BYTE_ARRAY",
+        definition_level_encoding: "RLE",
+        repetition_level_encoding: "RLE",
+      },
+    });
+    file.appendBytes(Uint8Array.from(levels));
+    file.appendBytes(values.getBytes());
+    const element = { name: "c", type: "BYTE_ARRAY", repetition_type: "OPTIONAL" } as const;
+    const root = { element: { name: "root" }, path: [], count: 4, children: [] };
+    const path = [root, { element, path: ["c"], count: 4, children: [] }];
+    const chunk = { codec: "UNCOMPRESSED" };
+    const [page] = decodePages(
+      Uint8Array.from(file.getBytes()),
+      { element, path } as unknown as Parameters<typeof decodePages>[1],
+      { rows: 4, chunk } as unknown as Parameters<typeof decodePages>[2],
+    );
+    const words = Array.from(page, (text) => text && new TextDecoder().decode(text as Uint8Array));
+    expect(words).toEqual(["house 1", "house 2", null, "home"]);
   });
 
   test("many groups of rows and pages, packed or not", async () => {
