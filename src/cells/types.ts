@@ -10,6 +10,8 @@ export interface FormProps {
   readonly source: string;
   readonly onChange: (nextSource: string) => void;
   readonly readOnly: boolean;
+  /** Gives a good another name in this source and wherever else it is named; absent where there is nothing else. */
+  readonly onRenameGood?: (good: string, name: string) => void;
   readonly context: { readonly cells: readonly CellSource[]; readonly uploads: readonly Upload[] };
   /** Shows rows of the upload beside the finding; absent where rows are not to be seen. */
   readonly onLook?: (rows: LookedAt) => void;

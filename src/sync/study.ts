@@ -113,9 +113,9 @@ export class StudyConnection {
     this.#change("changing", () => replaceSource(this.doc, cellId, next));
   }
 
-  /** Several changes as one step. */
-  atOnce<T>(doing: Doing, change: () => T): T {
-    return this.#change(doing, change);
+  /** Several changes as one step; `object` is what it was done to, where that is not a cell. */
+  atOnce<T>(doing: Doing, change: () => T, object?: string): T {
+    return this.#change(doing, change, object);
   }
 
   /** Turns the study into a state it was in, as one step; cells keep their ids. `name` is what the state is called. */

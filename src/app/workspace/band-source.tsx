@@ -9,6 +9,7 @@ import { type CellActions, CellMenu } from "./cell-menu.tsx";
 import { CellName } from "./cell-name.tsx";
 import { CellForm } from "./finding-view.tsx";
 import { afterFirstFinding } from "./first-finding.ts";
+import { renameGoodEverywhere } from "./rename-good-everywhere.ts";
 import { SourceFoot } from "./source-foot.tsx";
 import { SourceText } from "./source-text.tsx";
 import type { Standing } from "./standing.ts";
@@ -125,6 +126,13 @@ function Source({ studyId, connection, standing, cells, uploads, readOnly, page,
     );
   }
   return (
-    <CellForm kind={kind} source={cell.source} onChange={onChange} readOnly={readOnly} context={{ cells, uploads }} />
+    <CellForm
+      kind={kind}
+      source={cell.source}
+      onChange={onChange}
+      onRenameGood={(good, name) => void renameGoodEverywhere(connection, cell.id, good, name)}
+      readOnly={readOnly}
+      context={{ cells, uploads }}
+    />
   );
 }

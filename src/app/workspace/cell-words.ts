@@ -4,6 +4,7 @@ import type { CellSource } from "../../../shared/study/cell-source.ts";
 import { readDocument } from "../../../shared/study/document.ts";
 import { parseCell } from "../../../shared/study/parse-cell.ts";
 import { suggestData } from "../../../shared/study/suggest.ts";
+import { latestUploads } from "../../../shared/study/uploads.ts";
 import { counted } from "../../../shared/study/words.ts";
 
 const FIRST_NAMES: Readonly<Record<CellKind, string>> = {
@@ -47,7 +48,7 @@ export function freshSource(kind: CellKind, cells: readonly CellSource[], upload
   if (kind === "slutsky") return `system: ${last("system")}\nat: base point\nform: share\n`;
   if (kind === "price change") return `system: ${last("system")}\nat: mean\nprices: {}\n`;
   if (kind === "text") return "";
-  const free = uploads.filter(
+  const free = latestUploads(uploads).filter(
     ({ name }) => !cells.some(({ kind, source }) => kind === "data" && source.includes(name)),
   );
   const upload = free.at(-1);

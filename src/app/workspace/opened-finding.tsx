@@ -11,6 +11,7 @@ import { firstFindingShown } from "./first-finding.ts";
 import { keepOnly } from "./keep-only.ts";
 import type { OpenStudy } from "./open-study.ts";
 import { ProblemList } from "./problem-list.tsx";
+import { renameGoodEverywhere } from "./rename-good-everywhere.ts";
 import type { Standing } from "./standing.ts";
 import { StateLine } from "./state-line.tsx";
 
@@ -50,6 +51,7 @@ function StoredFinding({ study, connection, readOnly, standing, cells, uploads }
   const form = {
     source: cell.source,
     onChange: onChange ?? (() => {}),
+    onRenameGood: (good: string, name: string) => void renameGoodEverywhere(connection, cell.id, good, name),
     readOnly,
     context: { cells, uploads },
     ...(standing.kind === "data" && { onLook: setLooked }),

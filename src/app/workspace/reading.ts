@@ -12,6 +12,7 @@ import { writtenStanding } from "./written-standing.ts";
 
 export { freshName, freshSource, nameOfCopy } from "./cell-words.ts";
 export { sourcesAfterRenaming } from "./rename.ts";
+export { sourcesAfterRenamingGood } from "./rename-good.ts";
 
 /** Reads a cell's text once for as long as it stays as it is: whoever types changes one text of many. */
 const known = new WeakMap<CellSource, StudyCell>();

@@ -150,7 +150,9 @@ export function GoodsTable({ form, found }: GoodsTableProps) {
     rename(good, name) {
       const renamed = renameGood(form.source, goods, good, name);
       setSaid(typeof renamed === "string" ? "" : renamed.no);
-      if (typeof renamed === "string") form.onChange(renamed);
+      if (typeof renamed !== "string" || renamed === form.source) return;
+      if (form.onRenameGood) form.onRenameGood(good, name);
+      else form.onChange(renamed);
     },
     move(good, by) {
       const to = goods.indexOf(good) + by;

@@ -124,6 +124,14 @@ describe("words and names of cells", () => {
     const other: Upload = { ...upload, name: "other.csv" };
     expect(freshSource("data", studyCells(), [upload, other])).toContain("upload: other.csv");
     expect(freshSource("data", studyCells(), [upload])).toBe("");
+    // The newest version says which columns there are, wherever it stands in the list.
+    const [p, e] = ["p_bread", "e_bread"].map((name) => ({ ...upload.columns[0], name }));
+    const versions = [
+      { ...other, id: "2", version: 2, columns: [p, e] },
+      { ...other, id: "1", version: 1, columns: upload.columns },
+    ];
+    expect(freshSource("data", studyCells(), versions)).toMatch(/^upload: other\.csv\n.*bread: \{price: p_bread/s);
+    expect(freshSource("data", studyCells(), versions)).not.toContain("grains");
   });
 
   it("renames a cell in the sources that read it, and leaves the rest of their text alone", () => {

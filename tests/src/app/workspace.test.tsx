@@ -213,6 +213,25 @@ describe("a study", () => {
     expect(await within(await band("matrix")).findByText("Current")).toBeInTheDocument();
   });
 
+  it("renames a good in its form, and what names the good follows; one step back undoes it all", async () => {
+    const { connection, user } = await open();
+    const system = "data: survey\nform: aids\ndropped: dairy\n";
+    const text = connection.addCell({ name: "argument", kind: "text", source: "Of {base: eta, dairy}." });
+    connection.replaceSource("b", system);
+    const before = connection.sourceOf("s")?.toString();
+    const field = await within(await band("survey")).findByRole("textbox", { name: "Name of dairy" });
+    await user.clear(field);
+    await user.type(field, "milk{Enter}");
+    await waitFor(() => expect(connection.sourceOf("s")?.toString()).toContain("  milk: {price: p_dairy"));
+    expect(connection.sourceOf("b")?.toString()).toBe(system.replace("dairy", "milk"));
+    expect(connection.sourceOf(text)?.toString()).toBe("Of {base: eta, milk}.");
+    connection.undoStep();
+    expect(connection.snapshot().undone?.sentence).toBe("Undone: renaming the good dairy.");
+    expect(connection.sourceOf("s")?.toString()).toBe(before);
+    expect(connection.sourceOf("b")?.toString()).toBe(system);
+    expect(connection.sourceOf(text)?.toString()).toBe("Of {base: eta, dairy}.");
+  });
+
   it("moves and removes cells, and brings a removed one back to its place", async () => {
     const { user } = await open();
     await user.click(within(await band("matrix")).getByRole("button", { name: "More for matrix" }));
