@@ -110,7 +110,7 @@ export const elasticitiesFinding = z.strictObject({
   level: finite,
   /** What the system's standard errors are, in words: "clustered by village, 212 clusters". */
   standardErrors: z.string(),
-  /** Estimate and standard error times a normal quantile, or (at points) the bootstrap's own percentiles. */
+  /** Estimate and standard error times a normal quantile, or the bootstrap's own percentiles, over rows where these are few enough. */
   intervals: z.enum(["normal", "percentile"]),
   /** What parts the rows; absent of one point, and over all rows. */
   groupedBy: groupsSpecification.optional(),

@@ -113,9 +113,11 @@ export function elasticityNotes(finding: ElasticitiesFinding): string[] {
   return [errorsNote(finding), whereNote(finding), sharesNote(finding), ...cautions(finding)];
 }
 
-function errorsNote({ intervals, level, standardErrors }: ElasticitiesFinding): string {
+function errorsNote({ intervals, level, standardErrors, over }: ElasticitiesFinding): string {
   const errors = `Estimate over (standard error) by the delta method, ${standardErrors}`;
-  const percentiles = intervals === "percentile" ? " by the bootstrap's own percentiles" : "";
+  const isTooMany = over === "rows" && intervals === "normal" && standardErrors.startsWith("bootstrap");
+  const normal = isTooMany ? ", normal as the rows are too many to go over at every replicate" : "";
+  const percentiles = intervals === "percentile" ? " by the bootstrap's own percentiles" : normal;
   return `${errors}; intervals of ${printPercent(level, 0)}${percentiles}.`;
 }
 

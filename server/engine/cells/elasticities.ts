@@ -15,6 +15,7 @@ import type { PreparedData } from "../columns/prepared-data.ts";
 import { Refusal } from "../refusal.ts";
 import { Cancelled, QUIET, type RunControl } from "../run.ts";
 import { caveatsOf } from "./caveats-of.ts";
+import { drawsOverRows } from "./elasticity-draws.ts";
 import { type RowGroup, rowGroups } from "./elasticity-groups.ts";
 import { atGroupMean, atOnePoint, type GroupOrReason } from "./elasticity-points.ts";
 import { overRows } from "./elasticity-rows.ts";
@@ -52,7 +53,7 @@ export function runElasticities(
     index,
     level,
     standardErrors: standardErrorsPhrase(system),
-    intervals: over === "means" && system.bootstrap?.draws ? "percentile" : "normal",
+    intervals: (over === "means" ? system.bootstrap?.draws : drawsOverRows(system, data)) ? "percentile" : "normal",
     ...(groupedBy && { groupedBy }),
     groups: found,
     checks: checksOf(system, found),

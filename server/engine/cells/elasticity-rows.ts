@@ -2,11 +2,11 @@ import { AggregateGradients, AggregateResponses } from "../../../shared/economic
 import { type ResponseOptions, responsesFrom, slopesAt } from "../../../shared/economics/responses.ts";
 import type { ElasticitiesSpecification } from "../../../shared/schemas/elasticities.ts";
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
-import type { Evaluator, Slopes } from "../../../shared/systems/demand-system.ts";
 import { systemOf, whyNotDefined } from "../../../shared/systems/index.ts";
 import type { PreparedData } from "../columns/prepared-data.ts";
 import { type Poll, polling, type RunControl } from "../run.ts";
 import { evaluatedGroup, notPositive } from "./elasticity-at.ts";
+import { drawsOverRows, elasticitiesOverDraws, heldBy } from "./elasticity-draws.ts";
 import type { RowGroup } from "./elasticity-groups.ts";
 import { type GroupOrReason, meanOver, weightOver } from "./elasticity-points.ts";
 import { demographicColumns } from "./points.ts";
@@ -60,11 +60,12 @@ export function overRows(
 function overGroup(
   { name, rows }: RowGroup,
   { shares, index, level, every }: Options & { every: number },
-  { fitted }: SystemFinding,
+  finding: SystemFinding,
   data: PreparedData,
   { passed, poll }: { readonly passed: () => void; readonly poll: Poll },
   derivativeRows: DerivativeRows,
 ): GroupOrReason {
+  const { fitted } = finding;
   const { system, size } = systemOf(fitted);
   const evaluator = system.evaluator(fitted.theta, size);
   const demographics = demographicColumns(data, fitted.demographics);
@@ -111,6 +112,9 @@ function overGroup(
   const responses = sums.result();
   const reason = notPositive(responses.shares, fitted.goods, shares);
   if (reason !== undefined) return { ...about, undefined: reason };
+  const draws = drawsOverRows(finding, data);
+  const drawn =
+    draws && elasticitiesOverDraws(fitted, draws, rows, { observed: shares === "observed", index }, data, poll);
   return {
     ...about,
     ...(without.rows > 0 && {
@@ -121,16 +125,6 @@ function overGroup(
       },
     }),
     notPositive: goods.flatMap((i) => (below[i] > 0 ? [{ good: fitted.goods[i], rows: below[i] }] : [])),
-    ...evaluatedGroup(fitted, { responses, gradients: gradients.result() }, level, poll),
-  };
-}
-
-/** What an evaluator carries, as rows of numbers of one's own. */
-function heldBy({ shares, total, prices }: Evaluator): Slopes {
-  const n = shares.length;
-  return {
-    shares: Array.from(shares),
-    total: Array.from(total),
-    prices: Array.from({ length: n }, (_, i) => Array.from(prices.subarray(i * n, (i + 1) * n))),
+    ...evaluatedGroup(fitted, { responses, gradients: gradients.result() }, level, poll, drawn),
   };
 }

@@ -105,3 +105,10 @@ describe("the tables", () => {
     expect(groups.rows.map(({ label }) => label)).toEqual(["lowest third", "second third", "highest third"]);
   });
 });
+
+test("normal intervals of a bootstrapped system say why they are normal", () => {
+  const finding = { ...sampleElasticities(1), over: "rows" as const, intervals: "normal" as const };
+  const [of] = elasticityNotes({ ...finding, standardErrors: "bootstrap of rows, 500 replicates, seed 1" });
+  expect(of).toContain("normal as the rows are too many to go over at every replicate.");
+  expect(elasticityNotes({ ...finding, standardErrors: "conventional" })[0]).not.toContain("too many");
+});

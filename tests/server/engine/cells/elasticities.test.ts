@@ -227,3 +227,22 @@ test("intervals are the bootstrap's own percentiles where the system has draws",
   expect(groups[0].expenditure.low[2]).toBeCloseTo(low, 12);
   expect(groups[0].expenditure.high[2]).toBeCloseTo(high, 12);
 });
+
+test.each(["over: rows", "over: rows\nshares: observed", "groups: {of: late}\nover: rows"])(
+  "over the rows they are percentiles of the same averages at every draw (%s)",
+  (keys) => {
+    const { intervals, groups } = run(keys, "bootstrap");
+    expect(intervals).toBe("percentile");
+    const { bootstrap, fitted } = systems.bootstrap;
+    const asked = specificationOf("elasticities", `system: s\n${keys}\n`);
+    const drawn = bootstrap!.draws!.map((theta) => {
+      const { bootstrap: _, ...alone } = { ...systems.bootstrap, fitted: { ...fitted, theta: [...theta] } };
+      return runElasticities(asked, alone, data).groups;
+    });
+    groups.forEach((group, g) => {
+      const [low, high] = percentileInterval(drawn.map((at) => at[g].compensated.values[1][2]));
+      expect(group.compensated.low[1][2]).toBeCloseTo(low, 12);
+      expect(group.compensated.high[1][2]).toBeCloseTo(high, 12);
+    });
+  },
+);
