@@ -1,8 +1,8 @@
 import { useId } from "react";
-import type { ElasticityGroup } from "../../../shared/schemas/elasticities.ts";
-import { capital } from "../../../shared/study/words.ts";
+import type { ElasticitiesFinding, ElasticityGroup } from "../../../shared/schemas/elasticities.ts";
 import { listed } from "../../../shared/tables/phrases.ts";
 import { Table } from "../../components/table.tsx";
+import { GoodHead } from "./good-head.tsx";
 
 type Pairs = ElasticityGroup["net"][number];
 
@@ -17,7 +17,7 @@ function respondsToIncome({ normal, incomeNeutral, giffen }: ElasticityGroup["cl
 }
 
 /** How each good of a group answers expenditure, and which others replace or accompany it, beyond doubt. */
-export function ClassesView({ group }: { group: ElasticityGroup }) {
+export function ClassesView({ finding, group }: { finding: ElasticitiesFinding; group: ElasticityGroup }) {
   const id = useId();
   const goods = group.classes.map(({ good }) => good);
   return (
@@ -35,7 +35,7 @@ export function ClassesView({ group }: { group: ElasticityGroup }) {
         ]}
         lines={group.classes.map((one, i) => ({
           key: one.good,
-          head: capital(one.good),
+          head: <GoodHead finding={finding} group={group} good={one.good} table="among the goods" />,
           cells: [
             respondsToIncome(one),
             namesOf(group.net[i], "substitutes", goods),

@@ -1,9 +1,9 @@
 import type { ElasticitiesFinding, ElasticityGroup } from "../../../shared/schemas/elasticities.ts";
-import { capital } from "../../../shared/study/words.ts";
 import { BY_GOOD, byGood } from "../../../shared/tables/elasticities.ts";
 import { whereOf } from "../../../shared/tables/elasticity-words.ts";
 import { DECIMALS, printFixed } from "../../../shared/tables/numbers.ts";
 import { Table } from "../../components/table.tsx";
+import { GoodHead } from "./good-head.tsx";
 import { type Below, ElasticityEstimate } from "./one-estimate.tsx";
 import { ClassWord } from "./shapes.tsx";
 
@@ -28,7 +28,7 @@ export function GoodsView({ finding, group, below }: GoodsProps) {
       ]}
       lines={finding.goods.map((good, i) => ({
         key: good,
-        head: capital(good),
+        head: <GoodHead finding={finding} group={group} good={good} />,
         cells: [
           printFixed(group.shares[i], DECIMALS.share),
           ...BY_GOOD.map((which) => <ElasticityEstimate key={which} one={byGood(group, which, i)} below={below} />),

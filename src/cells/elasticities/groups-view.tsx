@@ -4,6 +4,7 @@ import { capital } from "../../../shared/study/words.ts";
 import { type ByGood, byGood } from "../../../shared/tables/elasticities.ts";
 import { groupHead } from "../../../shared/tables/elasticity-words.ts";
 import { DECIMALS, printCount, printFixed } from "../../../shared/tables/numbers.ts";
+import { AnchorMark } from "../../components/anchor-mark.tsx";
 import { SwitchWords } from "../../components/switch-words.tsx";
 import { TableScroller } from "../../components/table-scroller.tsx";
 import { type Below, ElasticityEstimate } from "./one-estimate.tsx";
@@ -89,6 +90,7 @@ export function GroupsView({ finding, which, below, chosen, onChoose }: GroupsPr
                 ) : (
                   groupHead(finding.groupedBy, group.name)
                 )}
+                <AnchorMark of={`row ${capital(groupHead(finding.groupedBy, group.name))}`} />
               </th>
               <td className="py-1 pl-3 text-right align-top">{printCount(group.rows ?? 0)}</td>
               <td className="py-1 pl-3 text-right align-top">{printFixed(group.total, DECIMALS.money)}</td>

@@ -6,6 +6,7 @@ import { whereOf } from "../../../shared/tables/elasticity-words.ts";
 import { SwitchWords } from "../../components/switch-words.tsx";
 import { Table } from "../../components/table.tsx";
 import { CopyTable } from "../copy-table.tsx";
+import { GoodHead } from "./good-head.tsx";
 import { type Below, ElasticityEstimate } from "./one-estimate.tsx";
 import { PairMark, SignMark } from "./shapes.tsx";
 
@@ -54,7 +55,7 @@ export function PricesView({ finding, group, below }: PricesProps) {
         ]}
         lines={finding.goods.map((good, i) => ({
           key: good,
-          head: capital(good),
+          head: <GoodHead finding={finding} group={group} good={good} table={which} />,
           cells: finding.goods.map((other, j) => (
             <span key={other} className="inline-flex items-baseline">
               <ElasticityEstimate

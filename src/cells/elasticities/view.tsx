@@ -62,7 +62,7 @@ export function ElasticitiesOpen({ finding }: OpenProps<"elasticities">) {
       </section>
       {!several && figure}
       <PricesView finding={finding} group={group} below={below} />
-      <ClassesView group={group} />
+      <ClassesView finding={finding} group={group} />
       <ElasticityNotes finding={finding} />
     </div>
   );

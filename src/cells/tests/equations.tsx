@@ -3,6 +3,7 @@ import type { TestsFinding } from "../../../shared/schemas/tests.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { equationsOf, equationTestsTable } from "../../../shared/tables/equation-tests.ts";
 import { DECIMALS, printFixed, printProbability, printQuantity } from "../../../shared/tables/numbers.ts";
+import { AnchorMark } from "../../components/anchor-mark.tsx";
 import { Estimate } from "../../components/number.tsx";
 import { Table } from "../../components/table.tsx";
 import { CopyTable } from "../copy-table.tsx";
@@ -30,7 +31,12 @@ export function Equations({ finding }: { finding: TestsFinding }) {
         ]}
         lines={equations.map(({ good, sum, standardError, t, pValue }) => ({
           key: good,
-          head: capital(good),
+          head: (
+            <>
+              {capital(good)}
+              <AnchorMark of={`row ${capital(good)}, homogeneity`} />
+            </>
+          ),
           cells: [
             <Estimate
               key="sum"

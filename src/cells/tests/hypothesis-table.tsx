@@ -10,6 +10,7 @@ import {
   levelText,
   testVerdict,
 } from "../../../shared/tables/tests.ts";
+import { AnchorMark } from "../../components/anchor-mark.tsx";
 import { Table } from "../../components/table.tsx";
 import { usePhone } from "../../components/use-media.ts";
 import { VerdictWord } from "./verdict.tsx";
@@ -49,13 +50,14 @@ export function HypothesisTable({ finding }: { finding: TestsFinding }) {
         const name = capital(hypothesisText(test));
         return {
           key: String(place),
-          head: phone ? (
+          head: (
             <>
-              <span className="block">{name}</span>
-              {verdict(test)}
+              <span className={phone ? "block" : undefined}>
+                {name}
+                <AnchorMark of={`row ${name}`} />
+              </span>
+              {phone && verdict(test)}
             </>
-          ) : (
-            name
           ),
           cells: [
             number ? printQuantity(number.statistic, "statistic") : "",

@@ -2,8 +2,21 @@ import { useId } from "react";
 import type { TestsFinding } from "../../../shared/schemas/tests.ts";
 import { printCount } from "../../../shared/tables/numbers.ts";
 import { printIndex, revealedOf, revealedTable } from "../../../shared/tables/revealed-preference.ts";
+import { AnchorMark } from "../../components/anchor-mark.tsx";
 import { Table } from "../../components/table.tsx";
 import { CopyTable } from "../copy-table.tsx";
+
+/** A line that can be spoken of by its head. */
+const lineOf = (head: string, value: string) => ({
+  key: head,
+  head: (
+    <>
+      {head}
+      <AnchorMark of={`row ${head}`} />
+    </>
+  ),
+  cells: [value],
+});
 
 /** Violations of the generalised axiom and the efficiency index, with what they take for granted. */
 export function RevealedTable({ finding }: { finding: TestsFinding }) {
@@ -20,11 +33,11 @@ export function RevealedTable({ finding }: { finding: TestsFinding }) {
           { key: "value", content: "" },
         ]}
         lines={[
-          { key: "rows", head: "Rows compared", cells: [printCount(revealed.rows)] },
-          { key: "involved", head: "Rows that contradict another", cells: [printCount(revealed.rowsInvolved)] },
-          { key: "pairs", head: "Ordered pairs of them", cells: [printCount(revealed.pairs)] },
-          { key: "direct", head: "of these, without a third row", cells: [printCount(revealed.directPairs)] },
-          { key: "index", head: "Afriat’s efficiency index", cells: [printIndex(revealed.index)] },
+          lineOf("Rows compared", printCount(revealed.rows)),
+          lineOf("Rows that contradict another", printCount(revealed.rowsInvolved)),
+          lineOf("Ordered pairs of them", printCount(revealed.pairs)),
+          lineOf("of these, without a third row", printCount(revealed.directPairs)),
+          lineOf("Afriat’s efficiency index", printIndex(revealed.index)),
         ]}
       />
       <p className="type-small mt-2 max-w-[62ch] text-pretty text-ink2">{table.notes.join(" ")}</p>

@@ -3,6 +3,7 @@ import type { ChiSquareStatistic, TestsFinding } from "../../../shared/schemas/t
 import { capital } from "../../../shared/study/words.ts";
 import { printCount, printProbability, printQuantity } from "../../../shared/tables/numbers.ts";
 import { hypothesisText, isMade } from "../../../shared/tables/tests.ts";
+import { AnchorMark } from "../../components/anchor-mark.tsx";
 import { Table } from "../../components/table.tsx";
 
 /** A statistic over its probability. */
@@ -49,6 +50,7 @@ export function StatisticsTable({ finding }: { finding: TestsFinding }) {
         ]}
         lines={tests.map((test, place) => {
           const { laitinen } = test;
+          const name = capital(hypothesisText(test));
           const exact = laitinen && !("absent" in laitinen) ? laitinen : undefined;
           const f = exact && (
             <Stacked
@@ -59,7 +61,12 @@ export function StatisticsTable({ finding }: { finding: TestsFinding }) {
           );
           return {
             key: String(place),
-            head: capital(hypothesisText(test)),
+            head: (
+              <>
+                {name}
+                <AnchorMark of={`row ${name}`} />
+              </>
+            ),
             cells: [
               printCount(test.degreesOfFreedom),
               <Statistic key="wald" of={test.wald} />,
