@@ -8,8 +8,8 @@ import type { PreparedData } from "../columns/prepared-data.ts";
 import type { Poll } from "../run.ts";
 import { demographicColumns } from "./points.ts";
 
-/** Products over all rows and draws up to which percentiles are formed: some ten seconds. */
-const MOST_PRODUCTS = 1e9;
+/** Products over all rows and draws up to which percentiles are formed: some fifteen seconds. */
+const MOST_PRODUCTS = 1e8;
 
 /** The bootstrap's draws where going over the rows at each of them is a matter of seconds; else none. */
 export function drawsOverRows(
