@@ -4,6 +4,7 @@ import { signedIn } from "../http/session.ts";
 import { place, validate } from "../http/validate.ts";
 import { presentOwnAccount } from "../presenters/accounts.ts";
 import { presentOpenInvitation } from "../presenters/invitations.ts";
+import { presentOwnData } from "../presenters/own-data.ts";
 import type { AccountService } from "../services/accounts.ts";
 import type { InvitationService } from "../services/invitations.ts";
 import type { OwnAccountService } from "../services/own-account.ts";
@@ -24,6 +25,11 @@ export function ownAccountRoutes(needs: Collaborators): Router {
   router.get("/account", (_request, response) => {
     const actor = signedIn(response);
     response.json(presentOwnAccount(ownAccount.read(actor), actor.sessionId));
+  });
+
+  router.get("/account/data", (_request, response) => {
+    const kept = presentOwnData(ownAccount.everything(signedIn(response)), new Date());
+    response.attachment("what-is-kept.json").send(JSON.stringify(kept, null, 2));
   });
 
   router.patch("/account", (request, response) => {

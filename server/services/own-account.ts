@@ -2,6 +2,7 @@ import { listWords } from "../../shared/study/words.ts";
 import type { Database } from "../db/client.ts";
 import { type AccountRow, findAccount } from "../db/queries/accounts.ts";
 import { type Holding, holdingsOf } from "../db/queries/holdings.ts";
+import { type OwnRows, rowsAbout } from "../db/queries/own-data.ts";
 import { type SessionRow, sessionsOf } from "../db/queries/sessions.ts";
 import { conflict, forbidden, notFound } from "../errors.ts";
 import type { Actor } from "../policies/can.ts";
@@ -26,6 +27,11 @@ export interface OwnAccount {
   readonly toHandOver: readonly Holding[];
   /** Studies that nobody else is in, which go with the account. */
   readonly alone: readonly Holding[];
+}
+
+/** Everything that is kept about a person. */
+export interface KeptOfPerson extends Pick<OwnAccount, "account" | "sessions"> {
+  readonly rows: OwnRows;
 }
 
 export type OwnAccountService = ReturnType<typeof createOwnAccountService>;
@@ -59,6 +65,12 @@ export function createOwnAccountService({ db, auth, record, purgeStudy }: Collab
 
   return {
     read,
+
+    /** For whoever it is about, and nobody else. */
+    everything(actor: Actor): KeptOfPerson {
+      const { account, sessions } = read(actor);
+      return { account, sessions, rows: rowsAbout(db, account) };
+    },
 
     async endSession(actor: Actor, sessionId: string): Promise<void> {
       const found = sessionsOf(db, actor.id, new Date()).find(({ id }) => id === sessionId);

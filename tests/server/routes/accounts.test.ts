@@ -103,6 +103,7 @@ describe("one's own account", () => {
   test("is nobody's without a session", async () => {
     for (const [method, path] of [
       ["GET", "/api/account"],
+      ["GET", "/api/account/data"],
       ["PATCH", "/api/account"],
       ["DELETE", "/api/account"],
       ["POST", "/api/account/address"],
