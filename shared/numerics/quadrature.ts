@@ -8,7 +8,7 @@ const KNOWN = new Map<number, QuadratureRule>();
 
 /**
  * Gauss and Legendre's rule, exact for polynomials up to degree 2n − 1: the nodes are the roots of P_n, found by Newton's
- * method from cos(π(i − ¼)/(n + ½)), the weights 2/((1 − t²) P_n'(t)²). Abramowitz & Stegun (1964), 25.4.29.
+ * method from cos(π(i − ¼)/(n + ½)), P_n' = n (t P_n − P_{n−1})/(t² − 1), the weights 2(1 − t²)/(n P_{n−1}(t))². Abramowitz & Stegun (1964), 25.4.29.
  */
 export function gaussLegendre(count: number): QuadratureRule {
   const known = KNOWN.get(count);
@@ -17,26 +17,24 @@ export function gaussLegendre(count: number): QuadratureRule {
   const weights = new Array<number>(count);
   for (let i = 0; i < count; i++) {
     let t = -Math.cos((Math.PI * (i + 0.75)) / (count + 0.5));
-    let slope = 0;
     for (let step = 0; step < 100; step++) {
-      const { value, derivative } = legendre(count, t);
-      slope = derivative;
-      const by = value / derivative;
+      const { value, before } = legendre(count, t);
+      const by = (value * (t * t - 1)) / (count * (t * value - before));
       t -= by;
       if (Math.abs(by) < 1e-15) break;
     }
     nodes[i] = t;
-    weights[i] = 2 / ((1 - t * t) * slope * slope);
+    weights[i] = (2 * (1 - t * t)) / (count * legendre(count, t).before) ** 2;
   }
   const rule = { nodes, weights };
   KNOWN.set(count, rule);
   return rule;
 }
 
-/** P_n(t) and its derivative by the recurrence (k + 1) P_{k+1} = (2k + 1) t P_k − k P_{k−1}. */
-function legendre(n: number, t: number): { value: number; derivative: number } {
+/** P_n(t) and P_{n−1}(t) by the recurrence (k + 1) P_{k+1} = (2k + 1) t P_k − k P_{k−1}. */
+function legendre(n: number, t: number): { value: number; before: number } {
   let before = 1;
   let value = t;
   for (let k = 1; k < n; k++) [before, value] = [value, ((2 * k + 1) * t * value - k * before) / (k + 1)];
-  return { value, derivative: (n * (t * value - before)) / (t * t - 1) };
+  return { value, before };
 }

@@ -5,7 +5,7 @@ import { mapInOrder, task } from "../threads/map-in-order.ts";
 import type { ChangedRows } from "./price-change-rows.ts";
 
 /** Products that the derivatives of all groups may come to: a second or two. Further rows enter the estimates alone. */
-const MOST_PRODUCTS = 1e7;
+const MOST_PRODUCTS = 1.5e7;
 /** No group's derivatives rest on fewer rows than these, if it has them. */
 const FEWEST_SAMPLED = 500;
 const ROWS_A_PIECE = 128;

@@ -38,11 +38,13 @@ export function bundleAt(
   const { fitted } = subject;
   const point: Point = { prices, total: total.value, demographics };
   const { slopes, byTheta } = slopesOf(subject, point);
+  const moves = total.gradient.some((entry) => entry !== 0);
+  const byTotal = moves ? byLogTotal(fitted, point, slopes) : slopes.total;
   const logTotal = total.gradient.map((entry) => entry / total.value);
   const shares = slopes.shares.map(
     (value, i): Dual => ({
       value,
-      gradient: logTotal.map((entry, a) => (byTheta ? byTheta.shares[i][a] : 0) + slopes.total[i] * entry),
+      gradient: logTotal.map((entry, a) => (byTheta ? byTheta.shares[i][a] : 0) + byTotal[i] * entry),
     }),
   );
   const dual = (value: number, gradient: readonly number[] | undefined): Dual => ({
@@ -71,6 +73,17 @@ export function bundleAt(
         ),
       ),
   };
+}
+
+/**
+ * ∂w_i/∂ln x of the shares themselves. Slopes that hold the weights of an index are not that where the weights are the shares
+ * predicted; such shares are linear in ln x, so that a step of any length has the slope.
+ */
+function byLogTotal(fitted: FittedCoefficients, point: Point, held: Slopes): readonly number[] {
+  const { system, size } = systemOf(fitted);
+  if (system.sharesNear === undefined) return held.total;
+  const further = system.slopes(fitted.theta, size, { ...point, total: point.total * Math.E });
+  return further.shares.map((share, i) => share - held.shares[i]);
 }
 
 function slopesOf({ fitted, derivatives }: Subject, point: Point) {

@@ -56,14 +56,17 @@ export function measuresAt(
     infinitesimal: infinitesimalEffects(before, changes, moreMoney),
     secondOrder: secondOrder(before, changes, moreMoney),
   };
-  const laspeyres = combination([1 / point.total, weighted(prices, before.quantities)]);
+  const rises = prices.map((price, i) => price - point.prices[i]);
+  // Σ p1 q0 as x0 + Σ Δp q0, which moves with θ no more than the quantities of what gets dearer do.
+  const oldBundle = combination([1, before.total], [1, weighted(rises, before.quantities)]);
+  const laspeyres = combination([1 / point.total, oldBundle]);
   const { shareFunction, cost } = SYSTEMS[fitted.form];
   if (shareFunction) {
     const absent = "absent" in cost ? cost.absent : shareFunction.absent;
     return { after, taxes, bundles: { before }, ...small, costOfLiving: { laspeyres }, absent };
   }
   const bought = bundleAt(subject, prices, constant(after.total, k), point.demographics);
-  const affordable = bundleAt(subject, prices, weighted(prices, before.quantities), point.demographics);
+  const affordable = bundleAt(subject, prices, oldBundle, point.demographics);
   const exact = exactMeasures(subject, point, after);
   return {
     after,
@@ -82,7 +85,7 @@ export function measuresAt(
         }),
     costOfLiving: {
       laspeyres,
-      paasche: quotient(constant(after.total, k), weighted(point.prices, bought.quantities)),
+      paasche: quotient(bought.total, combination([1, bought.total], [-1, weighted(rises, bought.quantities)])),
       ...("hicks" in exact && { atUtilityBefore: combination([1 / point.total, exact.hicks.total]) }),
     },
     ...(taxes.some((tax) => tax !== 0) && {
