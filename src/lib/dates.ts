@@ -1,15 +1,15 @@
+import { writeClock as clock, writeDate, writeNumber } from "./formats.ts";
+
 const MINUTE = 60_000;
 const DAY = 24 * 60 * MINUTE;
 
-const clock = (date: Date) => `${date.getHours()}:${String(date.getMinutes()).padStart(2, "0")}`;
 const midnight = (date: Date) => new Date(date.getFullYear(), date.getMonth(), date.getDate()).getTime();
 
 /** Midnights between two days; an hour's change of the clock does not count. */
 const daysBetween = (then: Date, now: Date) => Math.round((midnight(now) - midnight(then)) / DAY);
 
 function calendarDate(then: Date, now: Date): string {
-  const year = then.getFullYear() === now.getFullYear() ? "" : ` ${then.getFullYear()}`;
-  return `${then.getDate()} ${then.toLocaleDateString("en-GB", { month: "long" })}${year}`;
+  return writeDate(then, then.getFullYear() !== now.getFullYear());
 }
 
 /** A date to come or gone by: "15 December", with its year when that is another. */
@@ -47,6 +47,12 @@ export function momentInWords(instant: string | number | Date, now = new Date())
     : `${calendarDate(then, now)}, ${clock(then)}`;
 }
 
+/** A moment for the record, whenever it is read: "9 March 2032 at 16:20". */
+export function fullMoment(instant: string | number | Date): string {
+  const then = new Date(instant);
+  return `${writeDate(then, true)} at ${clock(then)}`;
+}
+
 /** How long ago a change was: "2 minutes ago", "at 9:05", "yesterday", "on Tuesday", "on 4 March". */
 export function agoInWords(instant: string | number | Date, now = new Date()): string {
   const then = new Date(instant);
@@ -62,7 +68,10 @@ export function agoInWords(instant: string | number | Date, now = new Date()): s
 /** How long something took, or will: "40 ms", "1.6 s", "20 s", "3 min". */
 export function durationInWords(milliseconds: number): string {
   if (milliseconds < 100) return `${Math.max(1, Math.round(milliseconds))} ms`;
-  if (milliseconds < 9_950) return `${(milliseconds / 1000).toFixed(1).replace(/\.0$/, "")} s`;
+  if (milliseconds < 9_950) {
+    const tenths = Math.round(milliseconds / 100);
+    return `${writeNumber(tenths / 10, tenths % 10 === 0 ? 0 : 1)} s`;
+  }
   if (milliseconds < 90_000) return `${Math.round(milliseconds / 1000)} s`;
   return `${Math.round(milliseconds / MINUTE)} min`;
 }

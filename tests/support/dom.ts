@@ -7,3 +7,6 @@ configure({ asyncUtilTimeout: 15_000 });
 
 /** Each test has a page of its own. */
 afterEach(cleanup);
+
+// The machine's own custom is no matter of a test; where it is, the test says whose (tests/src/lib/formats.test.ts).
+Object.defineProperty(navigator, "language", { value: "en-GB", configurable: true });

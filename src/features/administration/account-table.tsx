@@ -1,6 +1,7 @@
 import { Fault } from "../../components/field.tsx";
 import { sentenceOf } from "../../lib/api.ts";
 import { dateInWords } from "../../lib/dates.ts";
+import { writeNumber } from "../../lib/formats.ts";
 import { useAccounts } from "./api/administration.ts";
 
 /** Who has an account, newest first; nothing of their studies but how many there are. */
@@ -23,7 +24,8 @@ export function AccountTable() {
             </p>
           </div>
           <p className="type-small text-ink2">
-            In {account.studies === 1 ? "one study" : `${account.studies} studies`}, since {dateInWords(account.since)}
+            In {account.studies === 1 ? "one study" : `${writeNumber(account.studies)} studies`}, since{" "}
+            {dateInWords(account.since)}
           </p>
         </li>
       ))}

@@ -1,13 +1,13 @@
 import { useMemo } from "react";
 import type { RefereeCopy } from "../../../shared/schemas/referee-copy.ts";
-import { printCount } from "../../../shared/tables/numbers.ts";
+import { writeNumber } from "../../lib/formats.ts";
 import { saveFile } from "../../lib/save-file.ts";
 import { type SealedFile, sealedFiles } from "./sealed-files.ts";
 
 const save = ({ text, type, name }: SealedFile) => saveFile(name, new Blob([text], { type }));
 
 const size = (file: SealedFile) =>
-  `${file.format}, ${printCount(Math.max(1, Math.round(new Blob([file.text]).size / 1000)))} kB`;
+  `${file.format}, ${writeNumber(Math.max(1, Math.round(new Blob([file.text]).size / 1000)))} kB`;
 
 /** The numbers to take away: made here from what is on the page. */
 export function Downloads({ copy }: { copy: RefereeCopy }) {

@@ -2,9 +2,10 @@ import type { ReactNode } from "react";
 import type { RefereeCopy, SealedContent } from "../../../shared/schemas/referee-copy.ts";
 import { listWords } from "../../../shared/study/words.ts";
 import { Mark } from "../../components/mark.tsx";
+import { fullMoment } from "../../lib/dates.ts";
 import { Downloads } from "./downloads.tsx";
 import { Fingerprint, FingerprintVerdict } from "./fingerprint-words.tsx";
-import { NewerCopy, sealedInWords } from "./newer-copy.tsx";
+import { NewerCopy } from "./newer-copy.tsx";
 import { Recomputed } from "./recomputed.tsx";
 import { Seal } from "./seal.tsx";
 import { SealedAccounting } from "./sealed-accounting.tsx";
@@ -41,7 +42,7 @@ function SealedHead({ copy, result }: { copy: RefereeCopy; result: VerificationS
         <div>
           <h2 className="font-serif text-[1.625rem]/[2rem] max-[899px]:hidden">Referee copy</h2>
           <p className="mb-2 text-[0.9375rem]/[1.375rem] text-ink2">
-            Sealed {sealedInWords(copy.content.sealedAt)}.
+            Sealed {fullMoment(copy.content.sealedAt)}.
             <span className="max-[899px]:hidden"> Nothing in it can change.</span>
           </p>
           <p className="type-small mt-5 mb-1 text-ink2 max-[899px]:hidden">Fingerprint, SHA-256</p>

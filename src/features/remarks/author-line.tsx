@@ -1,6 +1,6 @@
 import type { ReactNode } from "react";
 import type { RemarkReply } from "../../../shared/schemas/remarks.ts";
-import { whenInWords } from "../../lib/dates.ts";
+import { fullMoment, whenInWords } from "../../lib/dates.ts";
 import type { PersonColour } from "../../sync/index.ts";
 
 interface AuthorLineProps {
@@ -30,11 +30,11 @@ export function AuthorLine({ author, colour, writtenAt, editedAt, full = false, 
       >
         {full || author.name.startsWith("someone") ? author.name : first}
       </b>{" "}
-      <time dateTime={writtenAt} title={exactly(writtenAt)} className="text-ink2">
+      <time dateTime={writtenAt} title={fullMoment(writtenAt)} className="text-ink2">
         {whenInWords(writtenAt)}
       </time>
       {editedAt && (
-        <span className="text-ink3" title={exactly(editedAt)}>
+        <span className="text-ink3" title={fullMoment(editedAt)}>
           , edited {whenInWords(editedAt)}
         </span>
       )}
@@ -42,6 +42,3 @@ export function AuthorLine({ author, colour, writtenAt, editedAt, full = false, 
     </div>
   );
 }
-
-const exactly = (instant: string) =>
-  new Date(instant).toLocaleString("en-GB", { dateStyle: "long", timeStyle: "short" });

@@ -3,6 +3,7 @@ import { LONGEST_REMARK } from "../../../shared/schemas/remarks.ts";
 import { Button, Word } from "../../components/button.tsx";
 import { Fault } from "../../components/field.tsx";
 import { sentenceOf } from "../../lib/api.ts";
+import { writeNumber } from "../../lib/formats.ts";
 import { commandOf } from "../../lib/keys.ts";
 import { AboutChoice } from "./about-choice.tsx";
 import { type Draft, useDraft } from "./drafts.ts";
@@ -90,8 +91,7 @@ export function RemarkForm({ setting, label, of, before = "", word, places, besi
       <div id={`${id}-told`}>
         {over > 0 && (
           <Fault>
-            {(over + LONGEST_REMARK).toLocaleString("en-GB")} characters; at most{" "}
-            {LONGEST_REMARK.toLocaleString("en-GB")} are kept.
+            {writeNumber(over + LONGEST_REMARK)} characters; at most {writeNumber(LONGEST_REMARK)} are kept.
           </Fault>
         )}
         {fault && <Fault>{fault}</Fault>}

@@ -3,6 +3,7 @@ import { type DragEvent, useId, useRef, useState } from "react";
 import type { Upload } from "../../../shared/schemas/resources.ts";
 import { versionsOf } from "../../../shared/study/uploads.ts";
 import { Word } from "../../components/button.tsx";
+import { writePercent } from "../../lib/formats.ts";
 import { type Sending, useAddUpload } from "./api/add-upload.ts";
 import { SameName } from "./same-name.tsx";
 import { UploadFault } from "./upload-fault.tsx";
@@ -93,7 +94,7 @@ export function FileDrop({ studyId, onAdded, words = "Choose a file", replaces }
 }
 
 function Sent({ name, fraction, onStop }: { name: string; fraction: number; onStop: () => void }) {
-  const words = fraction < 1 ? `Sending ${name}, ${Math.floor(fraction * 100)}\u2009%` : `Reading ${name}`;
+  const words = fraction < 1 ? `Sending ${name}, ${writePercent(fraction)}` : `Reading ${name}`;
   return (
     <div>
       <p className="flex flex-wrap items-baseline justify-between gap-x-4">

@@ -1,11 +1,10 @@
 import { type ReactNode, useState } from "react";
 import type { RowsPage } from "../../../shared/schemas/rows.ts";
-import { counted } from "../../../shared/study/words.ts";
-import { printCount } from "../../../shared/tables/numbers.ts";
 import { Button, Word } from "../../components/button.tsx";
 import { Dialog } from "../../components/dialog.tsx";
 import { Fault } from "../../components/field.tsx";
 import { sentenceOf } from "../../lib/api.ts";
+import { writeCount, writeNumber } from "../../lib/formats.ts";
 import { ROWS_AT_ONCE, type RowsOf, useRows } from "./api/get-rows.ts";
 import { RowsTable } from "./rows-table.tsx";
 
@@ -53,7 +52,8 @@ interface PagesProps {
 
 function Pages({ page: { total, from, rows }, isFetching, onFrom }: PagesProps) {
   const last = from + rows.length;
-  const shown = total === 0 ? "No row" : `${printCount(from + 1)} to ${printCount(last)} of ${counted(total, "row")}`;
+  const shown =
+    total === 0 ? "No row" : `${writeNumber(from + 1)} to ${writeNumber(last)} of ${writeCount(total, "row")}`;
   return (
     <div className="flex flex-wrap items-baseline gap-x-5 gap-y-1 pb-2">
       <p role="status" className="type-small text-ink2">
@@ -90,7 +90,7 @@ interface KeepOfferProps {
 /** Offered, never taken by itself: a row that is unusual may be right. */
 function KeepOffer({ keep: { expression, leavesOut }, total, onKeep, onDone }: KeepOfferProps) {
   const all =
-    leavesOut === total ? (total === 1 ? "it" : `all ${printCount(total)}`) : `${printCount(leavesOut)} of them`;
+    leavesOut === total ? (total === 1 ? "it" : `all ${writeNumber(total)}`) : `${writeNumber(leavesOut)} of them`;
   return (
     <section aria-label="A condition that leaves them out" className="mt-4">
       <p className="text-[0.875rem]/[1.25rem]">

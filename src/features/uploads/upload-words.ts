@@ -1,12 +1,12 @@
 import type { Upload } from "../../../shared/schemas/resources.ts";
-import { counted } from "../../../shared/study/words.ts";
 import { whenInWords } from "../../lib/dates.ts";
+import { writeCount } from "../../lib/formats.ts";
 
 const SEPARATORS = { ",": "commas", ";": "semicolons", "\t": "tabs" } as const;
 
 /** "4,938 rows, 31 columns". */
 export function shapeInWords({ rows, columns }: Pick<Upload, "rows" | "columns">): string {
-  return `${counted(rows, "row")}, ${counted(columns.length, "column")}`;
+  return `${writeCount(rows, "row")}, ${writeCount(columns.length, "column")}`;
 }
 
 /** "uploaded by Ilse Marchetti at 11:20; parted by semicolons, decimal commas". */

@@ -1,6 +1,7 @@
 import { useMutation, useQueryClient } from "@tanstack/react-query";
 import { type Upload, upload } from "../../../../shared/schemas/resources.ts";
 import { ApiRefusal, refusalOf, unreachable } from "../../../lib/api.ts";
+import { writeNumber } from "../../../lib/formats.ts";
 import { api } from "../../../lib/paths.ts";
 
 const LARGEST = 100 * 1024 * 1024;
@@ -42,7 +43,7 @@ export function sendUpload(studyId: string, { file, onProgress, signal, replaces
 }
 
 function tooLarge(file: File): ApiRefusal {
-  const size = `${(file.size / 1024 / 1024).toFixed(1)} MB`;
+  const size = `${writeNumber(file.size / 1024 / 1024, 1)} MB`;
   return new ApiRefusal(413, "too large", `${file.name} has ${size}; an upload may have 100 MB.`);
 }
 
