@@ -31,6 +31,7 @@ export const api = {
   accountLink: (token: string) => `/api/account-links/${part(token)}`,
   addressLink: (token: string) => `/api/address-links/${part(token)}`,
   account: "/api/account",
+  accountData: "/api/account/data",
   accountAddress: "/api/account/address",
   sessions: "/api/account/sessions",
   session: (sessionId: string) => `/api/account/sessions/${part(sessionId)}`,

@@ -1,14 +1,17 @@
-import { lazy, type ReactNode, Suspense, useState } from "react";
+import { lazy, type ReactNode, Suspense, useState, useSyncExternalStore } from "react";
 import type { OwnAccount } from "../../../shared/schemas/accounts.ts";
 import { Button } from "../../components/button.tsx";
 import { Fault } from "../../components/field.tsx";
 import { useOwnAccount } from "../../features/accounts/api/own-account.ts";
+import { FormatsChoice } from "../../features/accounts/formats-choice.tsx";
 import { OwnAddressForm } from "../../features/accounts/own-address-form.tsx";
+import { OwnData } from "../../features/accounts/own-data.tsx";
 import { OwnNameForm } from "../../features/accounts/own-name-form.tsx";
 import { OwnPassphraseForm } from "../../features/accounts/own-passphrase-form.tsx";
 import { SessionList } from "../../features/accounts/session-list.tsx";
 import { sentenceOf } from "../../lib/api.ts";
 import { dateInWords } from "../../lib/dates.ts";
+import { formatChoice, onFormatsChange } from "../../lib/formats.ts";
 import { usePageTitle } from "../../lib/page-title.ts";
 import { OwnBar } from "../own-bar.tsx";
 import { useForget } from "../use-leave.ts";
@@ -20,6 +23,8 @@ export default function AccountPage() {
   const { data: account, error } = useOwnAccount();
   const [removing, setRemoving] = useState(false);
   const forget = useForget(account?.id);
+  // Every date on the page follows a choice that is made on it.
+  useSyncExternalStore(onFormatsChange, formatChoice);
   usePageTitle("Your account");
   return (
     <>
@@ -59,12 +64,11 @@ function Parts({ account, onRemove }: { account: OwnAccount; onRemove: () => voi
       <Part title="Where you are signed in">
         <SessionList sessions={account.sessions} />
       </Part>
+      <Part title="Dates and numbers">
+        <FormatsChoice />
+      </Part>
       <Part title="What is kept of you">
-        <p className="type-prose max-w-[38rem]">
-          Your name, your address, your passphrase in a form that cannot be read back, and for each session the browser,
-          the network address and the times. In studies: who wrote, uploaded, remarked and sealed what, and when. All of
-          it lies in this installation's own database and goes nowhere else.
-        </p>
+        <OwnData />
       </Part>
       <Part title="Delete the account">
         <Button onClick={onRemove}>Delete the account</Button>

@@ -2,7 +2,9 @@ import { screen } from "@testing-library/react";
 import { afterEach, describe, expect, it, vi } from "vitest";
 import { AskAccountForm } from "../../../src/features/accounts/ask-account-form.tsx";
 import { CreateAccountForm } from "../../../src/features/accounts/create-account-form.tsx";
+import { FormatsChoice } from "../../../src/features/accounts/formats-choice.tsx";
 import { budgetPath, indifferencePath, type Preferences } from "../../../src/features/accounts/indifference-curves.ts";
+import { OwnData } from "../../../src/features/accounts/own-data.tsx";
 import RemoveAccountDialog from "../../../src/features/accounts/remove-account-dialog.tsx";
 import { SessionList } from "../../../src/features/accounts/session-list.tsx";
 import { SignInForm } from "../../../src/features/accounts/sign-in-form.tsx";
@@ -169,5 +171,41 @@ describe("the drawing at the door", () => {
       .map(([x, y]) => ({ x, gap: lineAt(x) - y }))
       .toSorted((a, b) => a.gap - b.gap);
     expect(Math.abs(nearest.x - 398)).toBeLessThan(30);
+  });
+});
+
+describe("what is kept of a person", () => {
+  it("is handed to the browser as a file; where it cannot be had, why is said", async () => {
+    vi.stubGlobal("URL", Object.assign(URL, { createObjectURL: () => "blob:kept", revokeObjectURL: () => {} }));
+    const saved: string[] = [];
+    vi.spyOn(HTMLAnchorElement.prototype, "click").mockImplementation(function (this: HTMLAnchorElement) {
+      saved.push(this.download);
+    });
+    let answer: Response = new Response(null, { status: 503 });
+    vi.stubGlobal("fetch", async () => answer);
+    const { user } = renderPart(<OwnData />);
+    await user.click(screen.getByRole("button", { name: "Save all of it as a file" }));
+    expect(await screen.findByRole("alert")).toBeInTheDocument();
+    expect(saved).toEqual([]);
+    const headers = { "content-disposition": "attachment; filename=what-is-kept.json" };
+    answer = new Response("{}", { headers });
+    await user.click(screen.getByRole("button", { name: "Save all of it as a file" }));
+    expect(await screen.findByText("Handed to the browser as what-is-kept.json.")).toBeInTheDocument();
+    expect(saved).toEqual(["what-is-kept.json"]);
+    expect(screen.queryByRole("alert")).not.toBeInTheDocument();
+  });
+});
+
+describe("how dates and numbers are written", () => {
+  it("is chosen by the place whose custom it is, and shown at once", async () => {
+    const { user } = renderPart(<FormatsChoice />);
+    const choice = screen.getByLabelText("Written as in");
+    expect(choice).toHaveAccessibleDescription(/^9 March 2031, 14:08; 104,938 rows, 1\.6 s$/);
+    await user.selectOptions(choice, "the United States");
+    expect(choice).toHaveAccessibleDescription(/^March 9, 2031, 2:08 PM; 104,938 rows, 1\.6 s$/);
+    await user.selectOptions(choice, "Germany");
+    expect(choice).toHaveAccessibleDescription(/^9 March 2031, 14:08; 104.938 rows, 1,6 s$/);
+    await user.selectOptions(choice, "as the browser says (en-GB)");
+    expect(localStorage.getItem("tangency-formats")).toBeNull();
   });
 });

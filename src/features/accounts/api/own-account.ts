@@ -1,7 +1,8 @@
 import { queryOptions, useMutation, useQuery, useQueryClient } from "@tanstack/react-query";
 import { ownAccount } from "../../../../shared/schemas/accounts.ts";
-import { ask } from "../../../lib/api.ts";
+import { ask, askForFile } from "../../../lib/api.ts";
 import { api } from "../../../lib/paths.ts";
+import { saveFile } from "../../../lib/save-file.ts";
 
 const ownAccountOptions = queryOptions({
   queryKey: ["account"],
@@ -20,6 +21,15 @@ export function useRename() {
     },
   });
 }
+
+/** Asks for everything that is kept about oneself and hands it to the browser; gives the file's name. */
+async function saveOwnData(): Promise<string> {
+  const { name, content } = await askForFile({ path: api.accountData });
+  saveFile(name, content);
+  return name;
+}
+
+export const useSaveOwnData = () => useMutation({ mutationFn: saveOwnData });
 
 const askToMove = (body: { email: string }) => ask({ method: "POST", path: api.accountAddress, body });
 
