@@ -53,6 +53,7 @@ it("what is laid over a study has no fault that a machine can find", async () =>
     "Uploads",
     "Remarks",
     "Referee copies",
+    "Replication bundle",
     "Journal",
     "Settings",
     "Keys",

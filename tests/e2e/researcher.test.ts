@@ -2,6 +2,9 @@ import { readFileSync } from "node:fs";
 import { fileURLToPath } from "node:url";
 import type { Browser, Page } from "playwright-core";
 import { afterAll, beforeAll, expect, it } from "vitest";
+import { replicateBundle } from "../../server/bin/replicate-bundle.ts";
+import { isReplicated, replicationInWords } from "../../server/bin/replication-words.ts";
+import { QUIET } from "../../server/engine/run.ts";
 import type { SlutskyFinding } from "../../shared/schemas/slutsky.ts";
 import type { StudyStatus } from "../../shared/schemas/status.ts";
 import type { SystemFinding } from "../../shared/schemas/system.ts";
@@ -424,6 +427,25 @@ it("quotes a finding in prose: the number stays true, and says so when it is out
   await rewriteLine(text, "form:", "form: aids");
   await untilSays(page, "argument", /^Current/);
   expect(await wordsOf(bandOf(page, "base").locator(".paper-words"))).toContain("(Deaton and Muellbauer 1980)");
+});
+
+it("takes a replication bundle away, from which every number is found again", async () => {
+  await choose(page, "Replication bundle");
+  const dialog = page.getByRole("dialog");
+  await dialog.getByRole("radio", { name: /^go along/ }).check();
+  const [file] = await Promise.all([
+    page.waitForEvent("download"),
+    dialog.getByRole("button", { name: "Make the bundle" }).click(),
+  ]);
+  expect(file.suggestedFilename()).toBe("replication-weekly-tuna-purchases.zip");
+  await dialog.getByText("is with your browser's downloads").waitFor();
+  await page.keyboard.press("Escape");
+  const path = `${product.folder}/bundle.zip`;
+  await file.saveAs(path);
+  const replication = await replicateBundle(path, [], QUIET);
+  const words = replicationInWords(replication, "this program");
+  expect(replication.cells.map(({ name }) => name)).toEqual(expect.arrayContaining(["purchases", "base", "matrix"]));
+  expect(isReplicated(replication), words).toBe(true);
 });
 
 it("invites a coauthor by e-mail, who makes an account on the way and is in the study", async () => {
