@@ -40,7 +40,7 @@ export const goodPriceSpecification = z
     if (change["pass-through"] !== undefined && !taxed) {
       tell(
         ["pass-through"],
-        "pass-through is the share of a tax that reaches the price, and this change is none: add tax: true",
+        "it is the share of a tax that reaches the price, and this change is no tax: add tax: true",
       );
     }
   });

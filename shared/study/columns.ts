@@ -1,6 +1,7 @@
 import type { CellSpecification } from "../schemas/cell.ts";
 import type { DataSpecification } from "../schemas/data.ts";
 import { type ElasticitiesSpecification, TOTAL_EXPENDITURE } from "../schemas/elasticities.ts";
+import { EXPENDITURE_PER_ADULT, type PriceChangeSpecification } from "../schemas/price-change.ts";
 import type { Problem } from "../schemas/problem.ts";
 import type { Upload } from "../schemas/resources.ts";
 import type { SlutskySpecification } from "../schemas/slutsky.ts";
@@ -33,6 +34,7 @@ export function columnProblems(context: Context): Problem[] {
   if (specification.kind === "data") return dataProblems(specification, context);
   if (specification.kind === "system") return systemProblems(specification, context);
   if (specification.kind === "slutsky") return priceProblems(specification.at, specification.system, context);
+  if (specification.kind === "price change") return priceChangeProblems(specification, context);
   return specification.kind === "elasticities" ? elasticitiesProblems(specification, context) : [];
 }
 
@@ -158,18 +160,62 @@ function elasticitiesProblems(specification: ElasticitiesSpecification, context:
     );
   }
   const data = system?.kind === "system" ? context.specifications.get(system.data) : undefined;
-  const upload = data?.kind === "data" ? uploadRead(context.uploads, data) : undefined;
-  if (groups === undefined || data?.kind !== "data" || upload === undefined || groups.of === TOTAL_EXPENDITURE) {
-    return problems;
-  }
+  return data?.kind === "data" ? [...problems, ...groupProblems(groups, data, context, [TOTAL_EXPENDITURE])] : problems;
+}
+
+/** Groups by a column that is not there; `others` are what else may be named in its place. */
+function groupProblems(
+  groups: ElasticitiesSpecification["groups"],
+  data: DataSpecification,
+  context: Context,
+  others: readonly string[],
+): Problem[] {
+  const upload = uploadRead(context.uploads, data);
+  if (groups === undefined || upload === undefined || others.includes(groups.of)) return [];
+  const tell = teller(context.places);
+  const problems: Problem[] = [];
   const column = upload.columns.find((one) => one.name === groups.of);
   const derived = Object.keys(data.derive ?? {});
-  const names = [...upload.columns.map((one) => one.name), ...derived, TOTAL_EXPENDITURE];
+  const names = [...upload.columns.map((one) => one.name), ...derived, ...others];
   if (!names.includes(groups.of)) problems.push(tell(["groups", "of"], ...noColumn(data.upload, groups.of, names)));
   if (groups.quantiles !== undefined && column?.type === "text" && !derived.includes(groups.of)) {
     problems.push(tell(["groups", "quantiles"], `${groups.of} is a text column and has no quantiles.`));
   }
   return problems;
+}
+
+/** Goods that are not there, and columns of groups and of needs. */
+function priceChangeProblems(specification: PriceChangeSpecification, context: Context): Problem[] {
+  const { at, system: name, prices, groups, "equivalence scale": scale } = specification;
+  const tell = teller(context.places);
+  const system = context.specifications.get(name);
+  const data = system?.kind === "system" ? context.specifications.get(system.data) : undefined;
+  if (system?.kind !== "system" || data?.kind !== "data") return [];
+  const goods = Object.keys(data.goods);
+  const unknown = Object.keys(prices).filter((good) => !goods.includes(good));
+  const problems = unknown.slice(0, MOST_TOLD).map((good): Problem => {
+    const [sentence, nearest] = noGood(
+      system.data,
+      good,
+      goods.filter((other) => !Object.hasOwn(prices, other)),
+    );
+    const place = context.places.key(["prices", good]);
+    return { sentence, key: ["prices", good], ...(place && { place }), ...(nearest && { nearest }) };
+  });
+  const upload = uploadRead(context.uploads, data);
+  const isRoot = typeof scale === "object";
+  const column = isRoot ? scale["square root of"] : scale;
+  if (upload !== undefined && column !== undefined) {
+    const numeric = upload.columns.filter(({ type }) => type === "number").map((one) => one.name);
+    const names = [...numeric, ...Object.keys(data.derive ?? {})];
+    const path = isRoot ? ["equivalence scale", "square root of"] : ["equivalence scale"];
+    if (!names.includes(column)) problems.push(tell(path, ...noColumn(system.data, column, names)));
+  }
+  return [
+    ...priceProblems(at, name, context),
+    ...problems,
+    ...groupProblems(groups, data, context, [TOTAL_EXPENDITURE, EXPENDITURE_PER_ADULT]),
+  ];
 }
 
 /** Prices of one's own at which a system is evaluated: a price for each of its goods and no other. */

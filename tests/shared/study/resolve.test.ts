@@ -132,6 +132,24 @@ describe("resolveCells", () => {
     expect(told("e", DATA, stone, ["e", "elasticities", "system: base\nindex: exact"])).toEqual([]);
   });
 
+  it("tells of a price change: goods, columns of needs and of groups", () => {
+    const of = (keys: string) => told("c", DATA, BASE, ["c", "price change", `system: base\n${keys}`]);
+    const needs = "equivalence scale: {square root of: members}";
+    expect(
+      of(`prices: {dairy: {to: 2}}\n${needs}\ngroups: {of: expenditure per equivalent adult, quantiles: 5}`),
+    ).toEqual([]);
+    expect(of("equivalence scale: log_size")).toEqual([]);
+    expect(of("prices: {diary: {to: 2}}")).toEqual(["survey has no good diary. The nearest is dairy."]);
+    expect(of("equivalence scale: {square root of: membres}")).toEqual([
+      "survey has no column membres. The nearest is members.",
+    ]);
+    expect(of("equivalence scale: vilage")[0]).toContain("survey has no column vilage.");
+    expect(of("groups: {of: urbane}")).toEqual(["purchases.csv has no column urbane. The nearest is urban."]);
+    expect(of("at: {prices: {grains: 2}, x: 5}")).toEqual([
+      "prices has 1 good, the system has 2 goods: dairy has no price.",
+    ]);
+  });
+
   it("tells twenty unknown columns at most, in no time", () => {
     const goods = Array.from({ length: 500 }, (_, i) => `  g${i}: {price: price${i}, quantity: quantity${i}}`).join(
       "\n",
