@@ -50,6 +50,19 @@ export type StudySummary = z.infer<typeof studySummary>;
 export const changedPerson = z.strictObject({ role });
 export const handedOver = z.strictObject({ userId: identifier });
 
+/**
+ * That `times` the product of the columns `of` is the column `is` within 2 %, in `agree` of the `compared` rows that have
+ * a value in each.
+ */
+export const columnAgreement = z.strictObject({
+  of: z.array(z.string()).min(1).max(2),
+  times: z.number().positive(),
+  is: z.string(),
+  agree: count,
+  compared: count,
+});
+export type ColumnAgreement = z.infer<typeof columnAgreement>;
+
 export const uploadColumn = z.strictObject({
   name: z.string(),
   type: z.enum(["number", "text"]),
@@ -64,6 +77,10 @@ export const uploadColumn = z.strictObject({
   zeros: count.optional(),
   /** Twelve equal bins of the numbers, counts of rows; the small drawing beside the name. */
   histogram: z.array(count).max(12).optional(),
+  /** The first values in the file, as they read. */
+  firstValues: z.array(z.string()).max(3).optional(),
+  /** What the column says again that others say. */
+  agreements: z.array(columnAgreement).optional(),
   /** A text column that is nearly numbers: the first value that is not. */
   firstText: z.strictObject({ row: count, value: z.string() }).optional(),
 });

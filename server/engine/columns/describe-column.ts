@@ -2,6 +2,9 @@ import type { UploadColumn } from "../../../shared/schemas/resources.ts";
 import type { TableColumn } from "./prepared-data.ts";
 
 const BINS = 12;
+const FIRST_VALUES = 3;
+/** Of a text; what is longer is cut. */
+const LONGEST_VALUE = 40;
 
 /** A column as the list of columns shows it; the counts are exact. */
 export function describeColumn(column: TableColumn, missingWords: UploadColumn["missingWords"]): UploadColumn {
@@ -9,14 +12,26 @@ export function describeColumn(column: TableColumn, missingWords: UploadColumn["
     let missing = 0;
     for (const code of column.codes) if (code < 0) missing++;
     const { name, type, levels, firstText } = column;
-    return { name, type, missing, distinct: levels.length, ...(firstText ? { firstText } : {}) };
+    const firstValues = firstOf(column.codes, (code) => (code < 0 ? undefined : levels[code].slice(0, LONGEST_VALUE)));
+    return { name, type, missing, distinct: levels.length, firstValues, ...(firstText ? { firstText } : {}) };
   }
   return {
     name: column.name,
     type: "number",
     ...describeNumbers(column.values),
+    firstValues: firstOf(column.values, (value) => (Number.isNaN(value) ? undefined : String(value))),
     ...(missingWords ? { missingWords } : {}),
   };
+}
+
+function firstOf<T>(cells: Iterable<T>, read: (cell: T) => string | undefined): string[] {
+  const first: string[] = [];
+  for (const cell of cells) {
+    const value = read(cell);
+    if (value !== undefined) first.push(value);
+    if (first.length === FIRST_VALUES) break;
+  }
+  return first;
 }
 
 function describeNumbers(values: Float64Array): Omit<UploadColumn, "name" | "type"> {

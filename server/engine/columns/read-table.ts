@@ -1,6 +1,7 @@
 import { createHash } from "node:crypto";
 import type { UploadColumn } from "../../../shared/schemas/resources.ts";
 import { QUIET, type RunControl } from "../run.ts";
+import { findAgreements } from "./agreements.ts";
 import type { FileBytes } from "./file-bytes.ts";
 import { type FileFormat, fileFormat } from "./file-format.ts";
 import { readParquet } from "./parquet/read-parquet.ts";
@@ -35,11 +36,18 @@ interface ReadOptions {
  * @throws Refusal naming the place: the row (the first under the head is 1) and the column, or the sheet and the cell.
  * @throws Cancelled once `control` says so.
  */
-export async function readTable(
-  file: FileBytes,
-  name: string,
-  { sheet, control = QUIET }: ReadOptions = {},
-): Promise<ReadTable> {
+export async function readTable(file: FileBytes, name: string, options: ReadOptions = {}): Promise<ReadTable> {
+  const read = await readColumns(file, name, options);
+  const agreements = findAgreements(read.table.columns);
+  if (agreements.length === 0) return read;
+  const columns = read.columns.map((column) => {
+    const own = agreements.filter(({ of, is }) => is === column.name || of.includes(column.name));
+    return own.length === 0 ? column : { ...column, agreements: own };
+  });
+  return { ...read, columns };
+}
+
+async function readColumns(file: FileBytes, name: string, { sheet, control = QUIET }: ReadOptions): Promise<ReadTable> {
   const format = fileFormat(file, name);
   if (format === "csv") {
     const { table, columns, separator, decimalComma } = await readCsv(file.pieces(), name, control);

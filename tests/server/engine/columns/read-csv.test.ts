@@ -120,7 +120,7 @@ describe("ordinary files", () => {
 
   test("a column of names with a few numbers among them is plainly text", async () => {
     const { columns } = await read("a,b\n1,x\n2,y\n3,4\n");
-    expect(columns[1]).toEqual({ name: "b", type: "text", missing: 0, distinct: 3 });
+    expect(columns[1]).toEqual({ name: "b", type: "text", missing: 0, distinct: 3, firstValues: ["x", "y", "4"] });
   });
 
   test("descriptions keep to their schema and count exactly", async () => {
@@ -128,6 +128,7 @@ describe("ordinary files", () => {
     for (const column of columns) expect(uploadColumn.parse(column)).toEqual(column);
     expect(columns[0]).toEqual({
       name: "a",
+      firstValues: ["0", "10", "5"],
       type: "number",
       missing: 1,
       distinct: 3,
