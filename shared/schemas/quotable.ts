@@ -69,6 +69,22 @@ export const QUOTABLE_WORDS = {
     "share",
     "rows",
   ],
+  "price change": [
+    "cv",
+    "ev",
+    "cv share",
+    "ev share",
+    "second order",
+    "surplus",
+    "cost of living",
+    "revenue",
+    "excess burden",
+    "marginal cost",
+    "substitution",
+    "income",
+    "change",
+    "rows",
+  ],
 } as const;
 
 /** The kinds of cell that have numbers to quote. */

@@ -99,6 +99,22 @@ const TOLD: { readonly [K in QuotableKind]: WordsOf<K> } = {
     share: ["predicted budget share of a good at the point", "good"],
     rows: ["rows over which negativity was checked"],
   },
+  "price change": {
+    cv: ["compensating variation at the point, or the mean of a group", "group", "parts"],
+    ev: ["equivalent variation at the point, or the mean of a group", "group", "parts"],
+    "cv share": ["compensating variation by expenditure, at the point or of a group", "group", "parts"],
+    "ev share": ["equivalent variation by expenditure, at the point or of a group", "group", "parts"],
+    "second order": ["compensating variation to second order, at the point or of a group", "group", "parts"],
+    surplus: ["loss of Marshallian surplus at the point", "nothing", "parts"],
+    "cost of living": ["cost of living at the utility before, before the change 1", "nothing", "parts"],
+    revenue: ["revenue of the taxes, at the point or of a group", "group", "parts"],
+    "excess burden": ["excess burden of the taxes, at the point or of a group", "group", "parts"],
+    "marginal cost": ["marginal cost of funds, at the point or of a group", "group", "parts"],
+    substitution: ["substitution effect on the quantity of a good, at the utility before", "good", "parts"],
+    income: ["income effect on the quantity of a good", "good", "parts"],
+    change: ["change of the quantity of a good", "good", "parts"],
+    rows: ["rows of a group, or of all", "group"],
+  },
 };
 
 /** The numbers prose may quote of each kind of cell, in the order in which they are offered. */
@@ -108,6 +124,7 @@ export const QUOTABLE: { readonly [K in QuotableKind]: readonly Quotable[] } = {
   tests: listed("tests"),
   elasticities: listed("elasticities"),
   slutsky: listed("slutsky"),
+  "price change": listed("price change"),
 };
 
 function listed(kind: QuotableKind): Quotable[] {

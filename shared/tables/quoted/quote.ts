@@ -3,6 +3,7 @@ import { isQuotable, QUOTED_PARTS } from "../../schemas/quotable.ts";
 import { type Asked, NothingToQuote, plain, type QuotedAnswer } from "./answer.ts";
 import { DATA_QUOTES } from "./data.ts";
 import { ELASTICITIES_QUOTES } from "./elasticities.ts";
+import { PRICE_CHANGE_QUOTES } from "./price-change.ts";
 import { SLUTSKY_QUOTES } from "./slutsky.ts";
 import { SYSTEM_QUOTES } from "./system.ts";
 import { TESTS_QUOTES } from "./tests.ts";
@@ -16,6 +17,7 @@ const QUOTES = {
   tests: TESTS_QUOTES,
   elasticities: ELASTICITIES_QUOTES,
   slutsky: SLUTSKY_QUOTES,
+  "price change": PRICE_CHANGE_QUOTES,
 } as unknown as Readonly<Record<string, Readonly<Record<string, AnyQuote>>>>;
 
 /**
