@@ -7,6 +7,7 @@ import { simulateSurvey } from "../../server/demo/simulate.ts";
 import { type RefereeCopy, refereeCopy, type SealedContent } from "../../shared/schemas/referee-copy.ts";
 import { canonicalJson } from "../../shared/study/canonical-json.ts";
 import { printFixed } from "../../shared/tables/numbers.ts";
+import { faultsOf } from "./access.ts";
 import { eventually, wordsOf } from "./editing.ts";
 import { choose, untilSays } from "./study-page.ts";
 import { demoStudyId, ILSE, openBrowser, Product, signIn } from "./support.ts";
@@ -14,6 +15,7 @@ import { watch } from "./watch.ts";
 
 const NOTE = "For the second round: the matrix of table 4.";
 const ROUNDING = 1e-12;
+const MATHEMATICS = /prose-with-mathematics|KaTeX/;
 
 let product: Product;
 let browser: Browser;
@@ -296,24 +298,40 @@ it("a newer copy with further findings takes the first one's place, and the firs
   const dialog = ilse.getByRole("dialog", { name: "Referee copies" });
   await ilse.reload();
   await untilSays(ilse, "fifths", /^Current/);
+  const argument = await untilSays(ilse, "argument", /^Current.*a luxury/s);
   await choose(ilse, "Referee copies");
   await dialog.getByRole("radio", { name: "matrix" }).check();
   await dialog.getByRole("checkbox", { name: "laws tests" }).check();
   await dialog.getByRole("checkbox", { name: "fifths elasticities" }).check();
+  await dialog.getByRole("checkbox", { name: "argument text" }).check();
+  await dialog.getByRole("checkbox", { name: /^With the methods of its systems/ }).check();
   await dialog.getByLabel("The link opens").selectOption("for 90 days");
   await dialog.getByLabel("In the place of").selectOption({ index: 1 });
   await dialog.getByLabel("Send the link to").fill("editor@journal.example");
   await dialog.getByRole("button", { name: "Seal a referee copy" }).click();
   await dialog.getByText(/on its way to editor@journal\.example/).waitFor();
-  await dialog.getByText(/matrix with laws and fifths.*opens until/).waitFor();
+  await dialog.getByText(/matrix with laws, fifths and argument.*opens until/).waitFor();
   await dialog.getByText(/replaced by that of/).waitFor();
 
   const other = await stranger();
+  const asked: string[] = [];
+  other.on("request", (request) => asked.push(request.url()));
   await other.goto(link);
   await other.getByRole("complementary", { name: "A newer copy" }).getByRole("button").click();
   await other.getByRole("region", { name: "laws tests" }).getByRole("table").first().waitFor();
   await other.getByRole("region", { name: "fifths elasticities" }).getByRole("table").first().waitFor();
+  const text = other.getByRole("region", { name: "argument text" });
+  await text.locator(".katex-display").waitFor();
+  const [luxury] = /η = ([\d.]+ \([\d.]+\))/.exec(argument)?.slice(1) ?? [];
+  expect(luxury).toBeDefined();
+  expect(await wordsOf(text)).toContain(`η = ${luxury}, and grains a necessity`);
+  expect(await wordsOf(text.getByRole("row", { name: /^base: eta, meat & fish/ }))).toContain(luxury);
+  expect(await wordsOf(other.getByRole("region", { name: "base methods" }))).toContain("Deaton");
   expect((await computedAgain(other)).largest).toBeLessThan(ROUNDING);
+  expect(await faultsOf(other)).toEqual([]);
+  // The type of formulae is fetched for a copy that has some, and for no other.
+  expect(watched.requests.filter((address) => MATHEMATICS.test(address))).toEqual([]);
+  expect(asked.some((address) => MATHEMATICS.test(address))).toBe(true);
   await other.context().close();
 });
 

@@ -90,7 +90,10 @@ export function BandSource(props: BandSourceProps) {
           <Source {...props} />
         )}
       </div>
-      <pre className="print-only type-source whitespace-pre-wrap">{cell.source}</pre>
+      {/* A text that reads stands on the right page with its numbers, and once is enough. */}
+      {!(standing.kind === "text" && standing.problems.length === 0) && (
+        <pre className="print-only type-source whitespace-pre-wrap">{cell.source}</pre>
+      )}
       {typing}
       {page !== "closed" && standing.kind === "system" && !standing.isUnread && (
         <Suspense>

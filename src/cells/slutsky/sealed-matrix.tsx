@@ -12,13 +12,16 @@ function Heading({ finding }: { finding: SealedSlutsky }) {
   const total = printFixed(finding.point.total * finding.totalScale, DECIMALS.money);
   const form = finding.form === "share" ? "Share form" : "Quantity form, in units uploaded";
   return (
-    <>
+    <div className="break-inside-avoid break-after-avoid">
       <h2 className="type-section text-[1.3125rem]">Slutsky matrix</h2>
       <p className="type-small mt-0.5 mb-3 text-ink2">
         {form}, at {withArticle(finding.pointName)}: expenditure {total} in the units uploaded. Estimate over (standard
-        error). {phone ? "Touch an entry for all its digits." : "Point at an entry for its mirror and its formula."}
+        error).{" "}
+        <span className="print:hidden">
+          {phone ? "Touch an entry for all its digits." : "Point at an entry for its mirror and its formula."}
+        </span>
       </p>
-    </>
+    </div>
   );
 }
 

@@ -20,7 +20,7 @@ export function SealedText({ finding }: { finding: Sealed }) {
       <ReadText finding={asSealed(finding)} />
       {numbers.length > 0 && (
         <>
-          <p className="type-small mt-4 mb-3 text-ink2">
+          <p className="sealed-numbers type-small mt-4 mb-3 text-ink2">
             {counted(numbers.length, "quoted number")}, as {numbers.length === 1 ? "it was" : "they were"} when this was
             sealed.
           </p>
@@ -33,7 +33,7 @@ export function SealedText({ finding }: { finding: Sealed }) {
               cells: [
                 one.printed,
                 one.says,
-                <span key="fingerprint" className="type-source text-[0.78125rem]">
+                <span key="fingerprint" className="type-source whitespace-nowrap text-[0.78125rem]">
                   {(one.fingerprint?.slice(0, 16).match(/.{4}/g) ?? []).join(" ")}
                 </span>,
               ],

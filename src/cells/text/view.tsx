@@ -50,7 +50,7 @@ function cellsOf({ standing, printed, says, fingerprint, because }: QuotedNumber
       <StateShape state={state} />
       {standing === "absent" ? "no number" : standing}
     </span>,
-    <span key="fingerprint" className="type-source text-[0.78125rem]">
+    <span key="fingerprint" className="type-source whitespace-nowrap text-[0.78125rem]">
       {(fingerprint?.slice(0, 16).match(/.{4}/g) ?? []).join(" ")}
     </span>,
   ];
