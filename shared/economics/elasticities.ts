@@ -92,6 +92,17 @@ function expenditureErrors(
   );
 }
 
+/** Derivatives in θ (k) of expenditure (n × k), uncompensated and compensated elasticities (n × n × k). */
+export function elasticityGradients({ shares, total, prices, compensated }: Responses, gradients: ResponseGradients) {
+  const byPrice = (entries: Matrix, of: number[][][]) =>
+    entries.map((row, i) => row.map((entry, j) => ratioGradient(entry, of[i][j], shares[i], gradients.shares[i])));
+  return {
+    expenditure: shares.map((share, i) => ratioGradient(total[i], gradients.total[i], share, gradients.shares[i])),
+    uncompensated: byPrice(prices, gradients.prices),
+    compensated: byPrice(compensated, gradients.compensated),
+  };
+}
+
 /** ∂(a/w)/∂θ = ∂a/w − a ∂w/w². */
 function ratioGradient(
   value: number,
