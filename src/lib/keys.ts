@@ -92,6 +92,15 @@ export const KEYS = {
       giveUp: does("Escape", "gives up what is typed"),
     },
   },
+  column: {
+    where: "In a field that chooses a column",
+    commands: {
+      next: does("ArrowDown", "opens the list, then goes to the next column"),
+      previous: does("ArrowUp", "goes to the column before"),
+      choose: does("Enter", "chooses the column pointed at"),
+      giveUp: does("Escape", "closes the list and leaves what was chosen"),
+    },
+  },
   remark: {
     where: "While writing a remark",
     commands: {

@@ -5,6 +5,7 @@ import { asChoices, type Choice, ChoiceField, TextField, Unreadable } from "../f
 import { readWritten } from "../form/written.ts";
 import type { FormProps } from "../types.ts";
 import { columnChoices } from "./column-choices.ts";
+import { ColumnField } from "./column-chooser.tsx";
 import { DerivedFields } from "./derived-fields.tsx";
 import { goodsInWords, mappingOf } from "./goods-mapping.ts";
 import { GoodsTable } from "./goods-table.tsx";
@@ -62,13 +63,12 @@ export function DataForm(props: FormProps) {
         <GoodsTable form={props} />
       </details>
       {ROLES.map(([key, label, none, numbersOnly]) => (
-        <ChoiceField
+        <ColumnField
           key={key}
           label={label}
           value={written.text(key)}
           choices={columnChoices(upload, derived, numbersOnly)}
           none={none}
-          mono={written.text(key) !== ""}
           readOnly={readOnly}
           onChange={(value) => written.write([[key], value || undefined])}
         />

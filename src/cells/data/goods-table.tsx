@@ -4,10 +4,11 @@ import { uploadRead } from "../../../shared/study/uploads.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { DECIMALS, printFixed, printPercent } from "../../../shared/tables/numbers.ts";
 import { TableScroller } from "../../components/table-scroller.tsx";
-import { ChoiceControl, TextControl } from "../form/fields.tsx";
+import { TextControl } from "../form/fields.tsx";
 import { readWritten, type Written } from "../form/written.ts";
 import type { FormProps } from "../types.ts";
 import { columnChoices } from "./column-choices.ts";
+import { ColumnChooser } from "./column-chooser.tsx";
 import { chooseColumn, FOLLOWS, follows, mappingOf, SLOTS } from "./goods-mapping.ts";
 import { moveGood, moveGoodTo, renameGood } from "./goods-order.ts";
 import { MoveHandle } from "./move-handle.tsx";
@@ -79,12 +80,11 @@ function GoodRow({ good, written, choices, form, found, order }: GoodRowProps) {
       </th>
       {SLOTS.map((slot) => (
         <td key={slot} className="min-w-[7rem] py-1 pr-3">
-          <ChoiceControl
+          <ColumnChooser
             aria-label={`${capital(slot)} of ${good}`}
             value={mapping[slot] ?? ""}
             choices={choices}
             none={follows(mapping, slot) ? FOLLOWS[slot] : "choose"}
-            mono={mapping[slot] !== undefined}
             readOnly={form.readOnly}
             onChange={(column) => written.write(...chooseColumn(mapping, good, slot, column))}
           />

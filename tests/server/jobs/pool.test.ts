@@ -1,5 +1,4 @@
 import { readFileSync } from "node:fs";
-import { eq } from "drizzle-orm";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { type OpenDatabase, openDatabase } from "../../../server/db/client.ts";
 import { findings, studies, uploadChunks, uploadColumns, uploads } from "../../../server/db/schema/index.ts";
@@ -142,7 +141,7 @@ describe("the worker threads", () => {
     ] as const) {
       addUpload(id, Buffer.from(book), "xlsx");
       const { rows, sha256, ...read } = await pool.parseUpload(id, () => {}, signal, asked);
-      open.db.update(uploads).set({ rows, sha256, state: "ready" }).where(eq(uploads.id, id)).run();
+      open.sqlite.prepare("UPDATE uploads SET rows = ?, sha256 = ? WHERE id = ?").run(rows, sha256, id);
       const columns = loadTable(open.db, id).columns.map((column) => [
         column.name,
         column.type === "number" ? [...column.values] : [],

@@ -67,9 +67,12 @@ const specification = (kind: string, source: string) => parseCell(kind, source).
 describe("the form of a data cell", () => {
   it("writes a role into the text and leaves comments and order alone", async () => {
     const { user, written } = open(DataForm, DATA);
-    await user.selectOptions(screen.getByRole("combobox", { name: "Cluster" }), "village");
+    const cluster = screen.getByRole("combobox", { name: "Cluster" });
+    await user.click(cluster);
+    await user.click(await screen.findByRole("option", { name: /^village/ }));
     expect(written.source).toBe(`${DATA}cluster: village\n`);
-    await user.selectOptions(screen.getByRole("combobox", { name: "Cluster" }), "");
+    await user.click(cluster);
+    await user.click(await screen.findByRole("option", { name: "none" }));
     expect(written.source).toBe(DATA);
   });
 
@@ -86,20 +89,21 @@ describe("the form of a data cell", () => {
     expect(written.source).toBe(DATA.replace("members <= 12", "members <= 10"));
   });
 
-  it("offers numeric columns only where numbers are needed", () => {
-    open(DataForm, DATA);
-    const weight = screen.getByRole("combobox", { name: "Weight" });
-    expect(within(weight).queryByRole("option", { name: /village/ })).not.toBeInTheDocument();
-    const cluster = screen.getByRole("combobox", { name: "Cluster" });
-    expect(within(cluster).getByRole("option", { name: "village (text)" })).toBeInTheDocument();
+  it("offers numeric columns only where numbers are needed", async () => {
+    const { user } = open(DataForm, DATA);
+    await user.click(screen.getByRole("combobox", { name: "Weight" }));
+    expect(await screen.findByRole("option", { name: /^members/ })).toBeInTheDocument();
+    expect(screen.queryByRole("option", { name: /^village/ })).not.toBeInTheDocument();
+    await user.click(screen.getByRole("combobox", { name: "Cluster" }));
+    expect(await screen.findByRole("option", { name: /^village text, 50 values/ })).toBeInTheDocument();
   });
 
   it("lets the third column of a good give way to the one chosen", async () => {
     const { user, written } = open(DataForm, DATA);
     await user.click(screen.getByText(/two, by/));
     const quantity = screen.getByRole("combobox", { name: "Quantity of grains" });
-    expect(within(quantity).getByRole("option", { name: "expenditure ÷ price" })).toBeInTheDocument();
-    await user.selectOptions(quantity, "q_grains");
+    expect(quantity).toHaveAttribute("placeholder", "expenditure ÷ price");
+    await user.type(quantity, "q_gr{Enter}");
     expect(specification("data", written.source)).toMatchObject({
       goods: { grains: { price: "p_grains", quantity: "q_grains" }, dairy: { price: "p_dairy", quantity: "q_dairy" } },
     });
@@ -138,7 +142,7 @@ describe("the form of a data cell", () => {
 
   it("keeps a column that is not there in sight, and says so", () => {
     open(DataForm, DATA.replace("survey_weight", "survey_wait"));
-    expect(screen.getByRole("option", { name: "survey_wait, not known here" })).toBeInTheDocument();
+    expect(screen.getByRole("combobox", { name: "Weight" })).toHaveValue("survey_wait, not known here");
   });
 
   it("says that a text which cannot be read must be mended as text", () => {
