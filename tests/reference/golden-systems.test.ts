@@ -1,8 +1,11 @@
 import { describe, expect, test } from "vitest";
 import { elasticitiesAt } from "../../shared/economics/elasticities.ts";
+import { measuresAt } from "../../shared/economics/price-change/measures.ts";
 import { matrixAt } from "../../shared/economics/slutsky.ts";
 import { compensatingVariation, equivalentVariation } from "../../shared/economics/welfare.ts";
 import { symmetricEigen } from "../../shared/numerics/eigen.ts";
+import type { Point } from "../../shared/systems/demand-system.ts";
+import type { FittedCoefficients } from "../../shared/systems/index.ts";
 import { exactly } from "../support/fitted.ts";
 import { integral } from "../support/quadrature.ts";
 
@@ -24,6 +27,13 @@ function expectClose(actual: number[] | number[][], expected: number[] | number[
 
 const UNSCALED = { priceScale: [1, 1, 1], totalScale: 1, pointName: "the golden point" };
 const GOODS = ["bread", "cheese", "fruit"];
+
+/** CV and EV of a first price a fifth dearer, as a price change cell computes them. */
+function lossesOf(fitted: FittedCoefficients, point: Point): number[] {
+  const question = { prices: { [fitted.goods[0]]: { "per cent": 20 } }, expenditure: 0 };
+  const { compensating, equivalent } = measuresAt({ fitted, derivatives: false }, point, question);
+  return [compensating?.value ?? Number.NaN, equivalent?.value ?? Number.NaN];
+}
 
 describe("almost ideal demand system, three goods", () => {
   const theta = [0.5, 0.3, 0.2, 0.06, -0.04, -0.02, -0.04, 0.05, -0.01, -0.02, -0.01, 0.03, -0.1, 0.02, 0.08];
@@ -65,6 +75,7 @@ describe("almost ideal demand system, three goods", () => {
     const dearer = [1.1 * 1.2, 0.9, 1.3];
     expectClose([compensatingVariation(fitted, point, dearer)], [0.894876395274953], 1e-13);
     expectClose([equivalentVariation(fitted, point, dearer)], [0.871962423232297], 1e-13);
+    expectClose(lossesOf(fitted, point), [0.894876395274953, 0.871962423232297], 1e-12);
   });
 
   test("the change in consumer's surplus lies between them, the costs of fixed quantities outside", () => {
@@ -127,6 +138,7 @@ describe("linear expenditure system, three goods", () => {
   test("compensating and equivalent variation of a rise of the first price by a fifth", () => {
     expectClose([compensatingVariation(fitted, point, [1.2, 2, 1.5])], [3.63037908473849], 1e-13);
     expectClose([equivalentVariation(fitted, point, [1.2, 2, 1.5])], [3.437143013025], 1e-12);
+    expectClose(lossesOf(fitted, point), [3.63037908473849, 3.437143013025], 1e-12);
   });
 
   /** Frisch (1959, Econometrica 27): e_ij = δ_ij η_i/ω − η_i w_j (1 + η_j/ω) under directly additive preferences; ω = −50/29. */
