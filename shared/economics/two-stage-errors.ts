@@ -1,4 +1,5 @@
 import { type Matrix, standardError } from "../numerics/matrix.ts";
+import type { UnconditionalFormula } from "../schemas/two-stage.ts";
 import type { FittedCoefficients } from "../systems/index.ts";
 import { type Elasticities, elasticityGradients, elasticityValues } from "./elasticities.ts";
 import { combined } from "./evaluation.ts";
@@ -6,7 +7,6 @@ import type { ResponseGradients, Responses } from "./responses.ts";
 import {
   type GroupAsGood,
   passedOn,
-  type UnconditionalFormula,
   type UnconditionalValues,
   unconditionalValues,
 } from "./two-stage.ts";

@@ -1,5 +1,6 @@
+import type { UnconditionalFormula } from "../schemas/two-stage.ts";
 import type { ElasticityValues } from "./elasticities.ts";
-import type { GroupAsGood, UnconditionalFormula, UnconditionalValues } from "./two-stage.ts";
+import type { GroupAsGood, UnconditionalValues } from "./two-stage.ts";
 
 /** By how much each law that ties unconditional elasticities to those of the group is missed, at most. */
 export interface UnconditionalIdentities {

@@ -1,9 +1,6 @@
 import type { Matrix } from "../numerics/matrix.ts";
+import type { UnconditionalFormula } from "../schemas/two-stage.ts";
 import type { ElasticityValues } from "./elasticities.ts";
-
-/** How unconditional elasticities are formed from those of a group and of the broader system it stands in. */
-export const UNCONDITIONAL_FORMULAS = ["carpentier guyomard", "edgerton"] as const;
-export type UnconditionalFormula = (typeof UNCONDITIONAL_FORMULAS)[number];
 
 /** A group as one good r of the broader system, at a point. */
 export interface GroupAsGood {

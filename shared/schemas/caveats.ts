@@ -6,6 +6,8 @@ export const CAVEATS = [
   "latent shares",
   /** Standard errors take the probits of those two steps as data. */
   "first step as given",
+  /** The system's total is what is spent on one group of goods. */
+  "conditional on a group",
   /** Standard errors take the residual of an endogenous total's first stage as data. */
   "first stage as given",
 ] as const;

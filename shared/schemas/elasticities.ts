@@ -2,9 +2,13 @@ import { z } from "zod";
 import { PRICE_INDEX_NAMES, SYSTEM_NAMES } from "../systems/names.ts";
 import { caveats } from "./caveats.ts";
 import { theoryChecks, undefinedRows } from "./checks.ts";
-import { cellName, columnName, count, fingerprint, finite, goodName, matrix, vector } from "./primitives.ts";
+import { estimatedElasticities } from "./elasticity-estimates.ts";
+import { cellName, columnName, count, fingerprint, finite, goodName } from "./primitives.ts";
 import { pointSpecification } from "./slutsky.ts";
 import { namedPoint, restrictionTest } from "./system.ts";
+import { UNCONDITIONAL_FORMULAS, unconditionalFinding } from "./two-stage.ts";
+
+export { type ClassOfGood, classOfGood, type EstimatesByPrice, estimates, VERDICTS } from "./elasticity-estimates.ts";
 
 /** What stands for total expenditure where a column is asked for. */
 export const TOTAL_EXPENDITURE = "total expenditure";
@@ -33,13 +37,33 @@ export const elasticitiesSpecification = z
     index: z.enum(["held", "exact"]).default("held"),
     /** Of confidence, of every interval and class. */
     level: z.number().min(0.5).max(0.999).default(0.95),
+    /** A broader system that has the goods of `system` as one good: two-stage budgeting. */
+    within: cellName.optional(),
+    /** Which good of the broader system that is. */
+    as: goodName.optional(),
+    /** By which formula; Carpentier and Guyomard's unless said otherwise. */
+    unconditional: z.enum(UNCONDITIONAL_FORMULAS).optional(),
   })
-  .superRefine(({ at, groups, over, shares }, context) => {
+  .superRefine(({ at, groups, over, shares, within, as, unconditional }, context) => {
     const tell = (path: string, message: string) => context.addIssue({ code: "custom", path: [path], message });
     if (at !== undefined && groups !== undefined) {
       tell("at", "at is one point and groups are several: give one of them");
     } else if (at !== undefined && over === "rows") {
       tell("at", "at is one point, and over: rows goes over all rows or groups of them: give one of them");
+    }
+    if (within === undefined) {
+      if (as !== undefined) tell("as", "as names a good of the broader system: name that system in within");
+      if (unconditional !== undefined) {
+        tell("unconditional", "unconditional elasticities need a broader system: name it in within");
+      }
+    } else {
+      if (as === undefined) tell("within", "within needs as beside it: which good of the broader system the group is");
+      if (groups !== undefined || over === "rows") {
+        tell("within", "within meets both systems at one point: leave out groups and over");
+      }
+      if (typeof at === "object" && "prices" in at) {
+        tell("at", "prices of one's own are known of one system only: within takes base point, mean, a row or a quantile");
+      }
     }
     const unobserved = typeof at === "object" && ("prices" in at || "x" in at);
     if (shares === "observed" && unobserved) {
@@ -47,25 +71,6 @@ export const elasticitiesSpecification = z
     }
   });
 export type ElasticitiesSpecification = z.infer<typeof elasticitiesSpecification>;
-
-/** Estimates with standard errors and the ends of their intervals. */
-export const estimates = z.strictObject({ values: vector, errors: vector, low: vector, high: vector });
-const estimatesByPrice = z.strictObject({ values: matrix, errors: matrix, low: matrix, high: matrix });
-export type EstimatesByPrice = z.infer<typeof estimatesByPrice>;
-
-export const VERDICTS = ["yes", "no", "undecided"] as const;
-const verdict = z.enum(VERDICTS);
-/** By the sign of an elasticity: null on the diagonal. */
-const pair = z.enum(["substitutes", "complements", "undecided"]).nullable();
-
-export const classOfGood = z.strictObject({
-  good: goodName,
-  kind: z.enum(["luxury", "necessity", "inferior", "undecided"]),
-  normal: verdict,
-  incomeNeutral: z.boolean(),
-  giffen: verdict,
-});
-export type ClassOfGood = z.infer<typeof classOfGood>;
 
 /** Who is spoken of: rows used (none of an imagined point) and their part of the weight. */
 const about = {
@@ -80,14 +85,7 @@ export const elasticityGroup = z.strictObject({
   ...about,
   /** Where they are evaluated, in units of estimation; absent over rows. */
   point: namedPoint.optional(),
-  /** Those that stand in the formulas; over rows the group's expenditure on each good by its total. */
-  shares: vector,
-  expenditure: estimates,
-  uncompensated: estimatesByPrice,
-  compensated: estimatesByPrice,
-  classes: z.array(classOfGood),
-  net: z.array(z.array(pair)),
-  gross: z.array(z.array(pair)),
+  ...estimatedElasticities,
   /** Over rows: those of the group in which the system predicts no shares; they are in none of the sums. */
   notDefined: undefinedRows.optional(),
   /** Over rows: how many rows have a share that is not positive, by good. */
@@ -122,5 +120,9 @@ export const elasticitiesFinding = z.strictObject({
   caveats,
   /** Over rows: how many of them the standard errors' derivatives were taken at, where not at all. */
   derivativeRows: z.strictObject({ used: count, of: count }).optional(),
+  /** The group whose expenditure the system's total is: everything above is conditional on it. */
+  conditionalOn: goodName.optional(),
+  /** Where a broader system is named. */
+  unconditional: unconditionalFinding.optional(),
 });
 export type ElasticitiesFinding = z.infer<typeof elasticitiesFinding>;

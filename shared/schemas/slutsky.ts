@@ -119,6 +119,8 @@ export const slutskyFinding = z.strictObject({
   at: matrixAtPoint,
   tests: z.array(restrictionTest),
   caveats,
+  /** The group whose expenditure the system's total is: the matrix is conditional on it. */
+  conditionalOn: goodName.optional(),
   sample: negativityOverSample.optional(),
   brokenRows: z.array(brokenRow).max(500),
 });

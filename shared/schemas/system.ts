@@ -64,6 +64,8 @@ export const systemSpecification = z
     /** Goods not bought by two steps: participation explained by these columns beside prices and expenditure. */
     zeros: z.union([z.literal("two-step"), z.strictObject({ "two-step": z.array(columnName) })]).optional(),
     curvature: curvatureSpecification.optional(),
+    /** Its goods are a group of a broader budget, and its total is what is spent on the group. */
+    "conditional on": goodName.optional(),
   })
   .superRefine((system, context) => {
     if (system.index !== undefined && system.form !== "la-aids") {
@@ -203,6 +205,8 @@ export const systemFinding = z.strictObject({
   zeros: zerosFinding.optional(),
   /** Where negativity is imposed at a point. */
   curvature: curvatureFinding.optional(),
+  /** The group whose expenditure the total is: elasticities and matrices are conditional on it. */
+  conditionalOn: goodName.optional(),
   /** Absent where every restriction that the form leaves open was tested. */
   untested: z.array(untestedRestriction).optional(),
   /** In units of estimation (normalised when the data are). */

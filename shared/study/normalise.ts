@@ -11,6 +11,9 @@ export function normaliseSpecification(specification: CellSpecification): CellSp
     const { of } = specification;
     return { ...specification, of: HYPOTHESIS_NAMES.filter((name) => of.includes(name)) };
   }
+  if (specification.kind === "elasticities" && specification.within !== undefined) {
+    return { ...specification, unconditional: specification.unconditional ?? "carpentier guyomard" };
+  }
   if (specification.kind !== "system") return specification;
   return {
     ...specification,

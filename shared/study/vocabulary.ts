@@ -23,7 +23,7 @@ export const REFERENCES: { readonly [K in CellKind]: Readonly<Record<string, Cel
   data: {},
   system: { data: "data" },
   tests: { system: "system", data: "data" },
-  elasticities: { system: "system" },
+  elasticities: { system: "system", within: "system" },
   slutsky: { system: "system" },
   "price change": { system: "system" },
   // Its quotations lead to cells of every kind: shared/study/quotations.ts.
@@ -69,6 +69,7 @@ const KEYS: { readonly [K in CellKind]: Readonly<Record<KeysOf<K>, Told>> } = {
     trend: ["a linear trend that shifts the intercepts"],
     instruments: ["columns that explain an endogenous total expenditure", "numeric column"],
     zeros: ["goods not bought, by two steps: first participation, then shares"],
+    "conditional on": ["the group of goods whose expenditure the total is; results are labelled conditional on it"],
     curvature: ["negativity imposed at a point, with the rank of the matrix there"],
   },
   tests: {
@@ -85,6 +86,9 @@ const KEYS: { readonly [K in CellKind]: Readonly<Record<KeysOf<K>, Told>> } = {
     shares: ["which shares stand in the formulas: predicted by the system, or observed means"],
     index: ["of Stone's index in la-aids: its weights held, or moving with the shares"],
     level: ["the level of confidence of intervals and classes; 0.95 unless said otherwise"],
+    within: ["a broader system in which these goods are one good: unconditional elasticities", "system"],
+    as: ["which good of the broader system these goods are"],
+    unconditional: ["by which formula: carpentier guyomard unless said otherwise, or edgerton"],
   },
   slutsky: {
     system: ["the name of the system cell it evaluates", "system"],

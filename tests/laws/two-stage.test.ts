@@ -1,11 +1,12 @@
 import { describe, expect, test } from "vitest";
 import { elasticitiesAt, elasticityValues } from "../../shared/economics/elasticities.ts";
 import { responsesAt, responsesValuesAt } from "../../shared/economics/responses.ts";
-import { UNCONDITIONAL_FORMULAS, unconditionalValues } from "../../shared/economics/two-stage.ts";
+import { unconditionalValues } from "../../shared/economics/two-stage.ts";
 import { groupAsGood, type Stage, unconditionalElasticities } from "../../shared/economics/two-stage-errors.ts";
 import { unconditionalIdentities } from "../../shared/economics/two-stage-identities.ts";
 import { standardError, zeros } from "../../shared/numerics/matrix.ts";
 import { seededRandom } from "../../shared/numerics/random.ts";
+import { UNCONDITIONAL_FORMULAS } from "../../shared/schemas/two-stage.ts";
 import type { Point } from "../../shared/systems/demand-system.ts";
 import type { FittedCoefficients } from "../../shared/systems/index.ts";
 import { SYSTEMS } from "../../shared/systems/index.ts";
