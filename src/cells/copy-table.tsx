@@ -4,6 +4,7 @@ import { tableHtml } from "../../shared/tables/html.ts";
 import { tableLatex } from "../../shared/tables/latex.ts";
 import type { LabelledTable } from "../../shared/tables/table.ts";
 import { tableText } from "../../shared/tables/text.ts";
+import { saveFile } from "../lib/save-file.ts";
 
 export type Way = "table" | "LaTeX" | "CSV";
 
@@ -22,7 +23,7 @@ export async function copyTable(table: LabelledTable, way: Way): Promise<void> {
 
 const WAYS: readonly Way[] = ["table", "LaTeX", "CSV"];
 
-/** The three ways of copying a table, as words; what was copied, or why not, is said beside them. */
+/** The three ways of copying a table and the file of it, as words; what was copied, or why not, is said beside them. */
 export function CopyTable({ table }: { table: LabelledTable }) {
   const [said, setSaid] = useState("");
   const copy = async (way: Way) => {
@@ -47,6 +48,14 @@ export function CopyTable({ table }: { table: LabelledTable }) {
           {way}
         </button>
       ))}
+      <button
+        type="button"
+        aria-label={`Download as CSV: ${table.title}`}
+        onClick={() => saveFile(`${table.name}.csv`, new Blob([tableCsv(table)], { type: "text/csv;charset=utf-8" }))}
+        className="word"
+      >
+        Download CSV
+      </button>
       <span role="status" className="empty:-ml-4">
         {said}
       </span>

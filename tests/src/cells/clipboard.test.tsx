@@ -1,6 +1,7 @@
 import { render, screen } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
 import { afterEach, describe, expect, it, vi } from "vitest";
+import { tableCsv } from "../../../shared/tables/csv.ts";
 import { slutskyTable } from "../../../shared/tables/slutsky-matrix.ts";
 import { CopyTable } from "../../../src/cells/copy-table.tsx";
 import { sampleSlutsky } from "../../support/sample-findings.ts";
@@ -58,6 +59,22 @@ describe("copying a table", () => {
     expect(await screen.findByText("Copied as CSV")).toBeInTheDocument();
     expect(text[0]).toContain("\\toprule");
     expect(text[1]).toContain(String(finding.at.share[0][0]));
+  });
+
+  it("hands the browser a file of the same CSV", async () => {
+    const { user } = clipboard();
+    const files: Blob[] = [];
+    vi.spyOn(URL, "createObjectURL").mockImplementation((file) => {
+      files.push(file as Blob);
+      return "blob:table";
+    });
+    const names: string[] = [];
+    vi.spyOn(HTMLAnchorElement.prototype, "click").mockImplementation(function click(this: HTMLAnchorElement) {
+      names.push(this.download);
+    });
+    await user.click(screen.getByRole("button", { name: /^Download as CSV/ }));
+    expect(names).toEqual([`${table.name}.csv`]);
+    expect(await content(files[0])).toBe(tableCsv(table));
   });
 
   it("says so when the browser does not let it", async () => {
