@@ -11,7 +11,6 @@ export const EXPENDITURE_PER_ADULT = "expenditure per equivalent adult";
 
 /** The four ways in which a price is said to change, one of which each good names. */
 export const PRICE_RULES = ["per cent", "to", "ad valorem", "specific"] as const;
-export type PriceRule = (typeof PRICE_RULES)[number];
 
 /** How the price of one good changes. */
 export const goodPriceSpecification = z

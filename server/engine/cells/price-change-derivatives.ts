@@ -6,6 +6,8 @@ import type { ChangedRows } from "./price-change-rows.ts";
 
 /** Products that the derivatives of all groups may come to: a second or two. Further rows enter the estimates alone. */
 const MOST_PRODUCTS = 1.5e7;
+/** However few the goods, a row's derivatives take some tenths of a millisecond. */
+const MOST_ROWS = 6000;
 /** No group's derivatives rest on fewer rows than these, if it has them. */
 const FEWEST_SAMPLED = 500;
 const ROWS_A_PIECE = 128;
@@ -45,7 +47,7 @@ export function meanDerivatives(
   const n = rows.logPrices.length;
   const k = rows.fitted.theta.length;
   const of = members.reduce((sum, group) => sum + group.length, 0);
-  const stride = Math.max(1, Math.ceil((of * n * n * k) / MOST_PRODUCTS));
+  const stride = Math.max(Math.ceil((of * n * n * k) / MOST_PRODUCTS), Math.ceil(of / MOST_ROWS));
   const pieces = members.flatMap((group) => {
     const every = Math.max(1, Math.min(stride, Math.floor(group.length / FEWEST_SAMPLED)));
     const sampled = group.filter((_, at) => at % every === every >> 1);

@@ -52,9 +52,9 @@ export function incidenceOver(
   const question: PriceQuestion = { prices: specification.prices, expenditure: specification.expenditure };
   const parted = incidenceRows(specification, data);
   const noCost = whyNoCost(fitted);
-  const work = control.threads && data.rows * PRODUCTS * data.goods.length ** 2 < control.threads.worthDividing;
-  const { threads: _, ...alone } = control;
-  const running: RunControl = work ? alone : control;
+  const { threads, ...alone } = control;
+  const divided = threads !== undefined && data.rows * PRODUCTS * data.goods.length ** 2 >= threads.worthDividing;
+  const running: RunControl = divided ? control : alone;
   const rows = changedRows(question, system, data, parted, priceRange, noCost === undefined);
   const { groupSums, named, unseen } = summed(rows, data.rows, running);
   const members = parted.groups.map((group) => group.rows);
