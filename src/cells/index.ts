@@ -37,6 +37,8 @@ export const CELL_VIEWS: { readonly [K in CellKind]: CellView<K> } = {
   "price change": {
     Band: async () => (await import("./price-change/band.tsx")).PriceChangeBand,
     Open: async () => (await import("./price-change/view.tsx")).PriceChangeOpen,
+    Form: async () => (await import("./price-change/form.tsx")).PriceChangeForm,
+    Controls: async () => (await import("./price-change/controls.tsx")).PriceRulers,
     tables: async () => (await import("../../shared/tables/of-finding.ts")).FINDING_TABLES["price change"],
   },
   text: {

@@ -45,6 +45,8 @@ export interface CellView<K extends CellKind> {
   readonly Form?: Loaded<ComponentType<FormProps>>;
   readonly Band: Loaded<ComponentType<BandProps<K>>>;
   readonly Open: Loaded<ComponentType<OpenProps<K>>>;
+  /** What stands on the source page of the opened cell above its form: rulers that move what the finding shows. */
+  readonly Controls?: Loaded<ComponentType<OpenProps<K>>>;
   /** What stands on the source page of the opened cell below its form: how each check is made. */
   readonly Aside?: Loaded<ComponentType<{ finding: FindingOf<K> }>>;
   /** The finding's tables, the one to copy first: for *Copy table* on the state line. */

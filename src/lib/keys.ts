@@ -85,6 +85,15 @@ export const KEYS = {
     where: "On the handle of a good",
     commands: { up: changes("ArrowUp", "moves the good up"), down: changes("ArrowDown", "moves the good down") },
   },
+  ruler: {
+    where: "On the ruler of a price",
+    commands: {
+      more: does("ArrowRight ArrowUp", "tries a higher price"),
+      less: does("ArrowLeft ArrowDown", "tries a lower price"),
+      muchMore: does("Shift+ArrowRight Shift+ArrowUp", "tries five steps more"),
+      muchLess: does("Shift+ArrowLeft Shift+ArrowDown", "tries five steps less"),
+    },
+  },
   field: {
     where: "In a field of a form, a name or a title",
     commands: {

@@ -1,6 +1,7 @@
 import { elasticitiesAt } from "../../shared/economics/elasticities.ts";
 import { matrixAt } from "../../shared/economics/slutsky.ts";
 import type { QuestionKind, Questions, Reply, Request } from "./protocol.ts";
+import { tryPrices } from "./try-prices.ts";
 import { verifyCopy } from "./verify-copy.ts";
 
 type Answers = { [K in QuestionKind]: (ask: Questions[K]["ask"]) => Questions[K]["answer"] };
@@ -8,6 +9,7 @@ type Answers = { [K in QuestionKind]: (ask: Questions[K]["ask"]) => Questions[K]
 const ANSWERS: Answers = {
   matrix: ({ fitted, point, ...options }) => matrixAt(fitted, point, options),
   elasticities: ({ fitted, point }) => elasticitiesAt(fitted, point),
+  prices: tryPrices,
   verification: (copy) => verifyCopy(copy, () => performance.now()),
 };
 

@@ -1,9 +1,22 @@
 import type { Elasticities } from "../../shared/economics/elasticities.ts";
+import type { PriceChangeFinding, PriceQuestion } from "../../shared/schemas/price-change.ts";
 import type { RefereeCopy } from "../../shared/schemas/referee-copy.ts";
 import type { MatrixAtPoint } from "../../shared/schemas/slutsky.ts";
 import type { FittedSystem } from "../../shared/schemas/system.ts";
 import type { Point } from "../../shared/systems/demand-system.ts";
 import type { Verification } from "./verify-copy.ts";
+
+/** A fitted system and a point of a finding, with another question put to them. */
+export interface PricesAsked
+  extends Pick<
+    PriceChangeFinding,
+    "fitted" | "point" | "pointName" | "priceScale" | "totalScale" | "level" | "priceRange"
+  > {
+  readonly question: PriceQuestion;
+}
+
+/** The parts of a price change finding that need no rows. */
+export type PricesTried = Pick<PriceChangeFinding, "at" | "unseen" | "checks">;
 
 /** What the worker can be asked, and what each question is answered with. */
 export interface Questions {
@@ -18,6 +31,7 @@ export interface Questions {
     answer: MatrixAtPoint;
   };
   elasticities: { ask: { readonly fitted: FittedSystem; readonly point: Point }; answer: Elasticities };
+  prices: { ask: PricesAsked; answer: PricesTried };
   verification: { ask: RefereeCopy; answer: Verification };
 }
 export type QuestionKind = keyof Questions;

@@ -14,7 +14,7 @@ import { BandSource, type SourcePage } from "../workspace/band-source.tsx";
 import { comparable } from "../workspace/comparable.ts";
 import { afterFirstFinding } from "../workspace/first-finding.ts";
 import { type OpenStudy, useOpenStudy } from "../workspace/open-study.ts";
-import { FindingAside, OpenedFinding } from "../workspace/opened-finding.tsx";
+import { FindingAside, FindingControls, OpenedFinding } from "../workspace/opened-finding.tsx";
 import { ReadByThread } from "../workspace/read-by-thread.tsx";
 import { StudyBar, type StudyDialog } from "../workspace/study-bar.tsx";
 import { StudyDialogs } from "../workspace/study-dialogs.tsx";
@@ -58,7 +58,7 @@ export default function OpenedCellPage() {
         {standing ? (
           <div className="desk">
             <RemarkNews studyId={study.id} me={open.me} connection={connection} />
-            <div className={`ledger opened opened-${standing.kind ?? "none"}`}>
+            <div className={`ledger opened opened-${(standing.kind ?? "none").replace(" ", "-")}`}>
               <div className="band opened-band">
                 <ReadByThread studyId={study.id} standing={standing} cells={cells} />
                 <Remarked setting={remarking} cell={standing.cell} opened>
@@ -91,6 +91,7 @@ export default function OpenedCellPage() {
                         }),
                       }}
                       typing={typing.length > 0 && <TypingHere people={typing} className="mt-4 block" />}
+                      above={<FindingControls {...open} standing={standing} cells={cells} uploads={uploads} />}
                       title
                     />
                     <KeyMarks />

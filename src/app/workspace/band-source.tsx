@@ -37,6 +37,8 @@ export interface BandSourceProps {
   readonly onRenamed: () => void;
   readonly onLeave: () => void;
   readonly typing?: React.ReactNode;
+  /** Stands between the name and the source. */
+  readonly above?: React.ReactNode;
   readonly title?: boolean;
 }
 
@@ -78,6 +80,7 @@ export function BandSource(props: BandSourceProps) {
           <CellMenu name={cell.name} actions={{ ...props.actions, ...(!readOnly && { history }) }} />
         </div>
       </div>
+      {props.above}
       {title && <h2 className="sr-only">Source</h2>}
       <div className="no-print">
         {page === "closed" ? (

@@ -17,12 +17,13 @@ const part = <P extends object>(load: () => Promise<ComponentType<P>>) => lazy(a
 let first: CellKind | undefined;
 
 function partsOf(kind: CellKind) {
-  const { Band, Open, Form, Aside } = viewOf(kind);
+  const { Band, Open, Form, Aside, Controls } = viewOf(kind);
   return {
     Band: part(() => (kind === first ? Band() : afterFirstFinding(Band))),
     Open: part(Open),
     ...(Form && { Form: part(() => afterFirstFinding(Form)) }),
     ...(Aside && { Aside: part(Aside) }),
+    ...(Controls && { Controls: part(Controls) }),
   };
 }
 
@@ -81,6 +82,18 @@ export function CellForm({ kind, ...form }: FormProps & { kind: CellKind }) {
   const { Form } = PARTS[kind];
   const text = <pre className="type-source whitespace-pre-wrap">{form.source || " "}</pre>;
   return <Suspense fallback={text}>{Form ? <Form {...form} /> : text}</Suspense>;
+}
+
+/** What moves what a finding shows; nothing for most kinds. */
+export function ControlsOf({ finding, form }: { finding: Finding; form: FormProps }) {
+  const { Controls } = PARTS[finding.kind];
+  return (
+    Controls && (
+      <Suspense>
+        <Controls finding={finding} form={form} />
+      </Suspense>
+    )
+  );
 }
 
 /** What a kind says of its finding beside it; nothing for most kinds. */

@@ -6,7 +6,7 @@ import { Unfetched } from "../../components/unfetched.tsx";
 import { ProgressLine } from "../../features/estimation/progress-line.tsx";
 import { useFinding } from "../../features/findings/api/get-finding.ts";
 import { sentenceOf } from "../../lib/api.ts";
-import { AsideOf, FindingOpen } from "./finding-view.tsx";
+import { AsideOf, ControlsOf, FindingOpen } from "./finding-view.tsx";
 import { firstFindingShown } from "./first-finding.ts";
 import { keepOnly } from "./keep-only.ts";
 import type { OpenStudy } from "./open-study.ts";
@@ -84,6 +84,16 @@ function StoredFinding({ study, connection, readOnly, standing, cells, uploads }
       )}
     </>
   );
+}
+
+/** What moves the finding from the source page: rulers of prices. */
+export function FindingControls({ study, connection, readOnly, standing, cells, uploads }: OpenedFindingProps) {
+  const { cell, fingerprint } = standing;
+  const { data } = useFinding(study.id, fingerprint);
+  if (!data) return null;
+  const onChange = (next: string) => connection.replaceSource(cell.id, next);
+  const form = { source: cell.source, onChange, readOnly, context: { cells, uploads } };
+  return <ControlsOf finding={data.finding} form={form} />;
 }
 
 /** What a kind says of its finding on the source page: how each check is made. */

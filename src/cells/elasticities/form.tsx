@@ -3,11 +3,12 @@ import { parseCell } from "../../../shared/study/parse-cell.ts";
 import { CellField } from "../form/cell-field.tsx";
 import { RadioGroup } from "../form/choices.tsx";
 import { asChoices, ChoiceField, Unreadable } from "../form/fields.tsx";
+import { groupColumns } from "../form/group-columns.ts";
 import { NumberField } from "../form/number-field.tsx";
 import { dataBelow, PointField } from "../form/point-fields.tsx";
 import { readWritten, type Written } from "../form/written.ts";
 import type { FormProps } from "../types.ts";
-import { groupColumns, isOf, newQuestion, questionOf } from "./question.ts";
+import { isOf, newQuestion, questionOf } from "./question.ts";
 
 /** An elasticities cell as a form: which system, of whom, by which shares. */
 export function ElasticitiesForm(props: FormProps) {

@@ -1,8 +1,6 @@
 import { TOTAL_EXPENDITURE } from "../../../shared/schemas/elasticities.ts";
 import type { Value } from "../../../shared/study/edit.ts";
-import { uploadRead } from "../../../shared/study/uploads.ts";
 import type { KeyPath, Written } from "../form/written.ts";
-import type { FormProps } from "../types.ts";
 
 const OF = ["point", "groups", "rows"] as const;
 
@@ -38,19 +36,4 @@ export function newQuestion(of: Of): (readonly [KeyPath, Value | undefined])[] {
     [over, undefined],
     [groups, { of: TOTAL_EXPENDITURE, quantiles: 5 }],
   ];
-}
-
-const isMap = (value: unknown): value is Record<string, unknown> => typeof value === "object" && value !== null;
-
-/** Columns that rows may be grouped by: derived ones, then those of the upload that are no purchase and no weight. */
-export function groupColumns({ uploads }: FormProps["context"], data: Record<string, unknown>): string[] {
-  const upload = uploadRead(uploads, data);
-  const goods = isMap(data.goods) ? Object.values(data.goods) : [];
-  const taken = new Set([
-    ...goods.flatMap((mapping) => (isMap(mapping) ? Object.values(mapping) : [])),
-    data.weight,
-    data.total,
-  ]);
-  const derived = isMap(data.derive) ? Object.keys(data.derive) : [];
-  return [...derived, ...(upload?.columns.map(({ name }) => name) ?? [])].filter((name) => !taken.has(name));
 }

@@ -1,0 +1,48 @@
+import { linearScale, roundTicks, type Scale } from "../../../components/chart-scale.ts";
+import type { OnePrice } from "./one-price.ts";
+
+/** The window of a picture: how much of the good across, money for the rest upwards, in pixels. */
+export interface Frame {
+  readonly x: Scale;
+  readonly y: Scale;
+  readonly xTicks: ReturnType<typeof roundTicks>;
+  readonly yTicks: ReturnType<typeof roundTicks>;
+  /** Whether either axis begins elsewhere than at nought. */
+  readonly isCut: boolean;
+}
+
+export interface Edges {
+  readonly left: number;
+  readonly right: number;
+  readonly top: number;
+  readonly bottom: number;
+}
+
+/** No picture is narrower than this part of the quantity before: else nothing could be seen to bend. */
+const NARROWEST = 0.16;
+/** Room beyond the outermost bundles, of their distance. */
+const ROOM = 0.95;
+
+/** Around the bundles, so that they stand well within it. */
+export function frameOf({ bundles, budgets }: OnePrice, { left, right, top, bottom }: Edges): Frame {
+  const spots = [bundles.before, bundles.compensated, bundles.after].filter((spot) => spot !== undefined);
+  const quantities = spots.map(({ quantity }) => quantity);
+  const [least, most] = [Math.min(...quantities), Math.max(...quantities)];
+  const spread = Math.max(most - least, NARROWEST * Math.abs(bundles.before.quantity));
+  const middle = (least + most) / 2;
+  const half = (most - least) / 2 + ROOM * spread;
+  const [from, to] = [Math.max(0, middle - half), middle + half];
+  const rests = spots.map(({ rest }) => rest);
+  const steep = Math.max(budgets.before.price, budgets.after.price) * spread;
+  const tall = Math.max(Math.max(...rests) - Math.min(...rests), steep);
+  const centre = (Math.max(...rests) + Math.min(...rests)) / 2;
+  const low = Math.max(0, centre - 1.25 * tall);
+  const high = centre + 1.25 * tall;
+  return {
+    x: linearScale(from, to, left, right),
+    y: linearScale(low, high, bottom, top),
+    xTicks: roundTicks(from, to, right - left < 340 ? 4 : 6),
+    yTicks: roundTicks(low, high, 5),
+    isCut: from > 0 || low > 0,
+  };
+}
