@@ -50,6 +50,16 @@ system: base
 groups: {of: total expenditure, quantiles: 5}
 `;
 
+const LEVY = `# a levy of a quarter on sweet drinks, passed on in full
+system: base
+at: mean
+prices:
+  Sweet drinks: {ad valorem: 25}
+# fifths of what a household spends for each equivalent adult
+groups: {of: expenditure per equivalent adult, quantiles: 5}
+equivalence scale: {square root of: members}
+`;
+
 const LINEAR = `# how much the exact price index matters
 data: survey
 form: la-aids
@@ -91,6 +101,7 @@ const DEMO_CELLS: DemoStudy["cells"] = [
   { name: "matrix", kind: "slutsky", source: MATRIX },
   { name: "ninetieth", kind: "slutsky", source: NINETIETH },
   { name: "fifths", kind: "elasticities", source: FIFTHS },
+  { name: "levy", kind: "price change", source: LEVY },
   { name: "linear", kind: "system", source: LINEAR },
   { name: "needs", kind: "system", source: NEEDS },
   { name: "argument", kind: "text", source: ARGUMENT },

@@ -157,6 +157,7 @@ describe("the cells", () => {
       ["matrix", "slutsky", ["base"]],
       ["ninetieth", "slutsky", ["base"]],
       ["fifths", "elasticities", ["base"]],
+      ["levy", "price change", ["base"]],
       ["linear", "system", ["survey"]],
       ["needs", "system", ["survey"]],
       ["argument", "text", ["base", "matrix", "survey"]],
