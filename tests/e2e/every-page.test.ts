@@ -86,6 +86,21 @@ const PLACES: readonly Place[] = [
     signedIn: true,
   },
   {
+    name: "deleted-studies",
+    path: () => "/",
+    ready: async (page) => {
+      await page.getByRole("button", { name: /^Deleted/ }).click();
+      await page.getByRole("button", { name: "Delete for good Bread by week" }).click();
+    },
+    signedIn: true,
+  },
+  {
+    name: "installation-journal",
+    path: () => "/administration/journal",
+    ready: (page) => page.getByText("Salt by week").waitFor(),
+    signedIn: true,
+  },
+  {
     name: "study",
     path: () => `/studies/${studyId}`,
     ready: async (page) => {
@@ -178,6 +193,12 @@ beforeAll(async () => {
   const invited = { email: "jun.okafor@vihe.example", role: "reader" };
   await ilse.request.post(`/api/studies/${studyId}/invitations`, { data: invited, headers });
   links.set("invitation", await linkSentTo(product, invited.email));
+  for (const title of ["Bread by week", "Salt by week"]) {
+    const made = await ilse.request.post("/api/studies", { data: { title }, headers });
+    const { id } = (await made.json()) as { id: string };
+    await ilse.request.delete(`/api/studies/${id}`, { headers });
+    if (title.startsWith("Salt")) await ilse.request.delete(`/api/deleted-studies/${id}`, { headers });
+  }
   state = await ilse.context().storageState();
   await ilse.context().close();
 });

@@ -3,7 +3,7 @@ import { afterAll, beforeAll, expect, it } from "vitest";
 import type { StudyStatus } from "../../shared/schemas/status.ts";
 import { faultsOf, picture, settled, THEMES, turn } from "./access.ts";
 import { choose, fromApi } from "./study-page.ts";
-import { demoStudyId, ILSE, openBrowser, Product, signIn } from "./support.ts";
+import { demoStudyId, ILSE, openBrowser, PETRA, Product, signIn } from "./support.ts";
 import { watch } from "./watch.ts";
 
 /** What lies over a page, in both themes; the pages themselves: every-page.test.ts. */
@@ -110,6 +110,46 @@ it("nor have remarks that are folded to letters, opened over the finding and wri
     await settled(page);
     await picture(page, `remarks-over-${theme}`);
     expect.soft(await faultsOf(page), theme).toEqual([]);
+  }
+  expect.soft(watched.takeFaults()).toEqual([]);
+  await page.context().close();
+});
+
+it("nor has the dialog that deletes an account, whether studies are to be handed over first or not", async () => {
+  const others = await signIn(browser, product, PETRA);
+  const own = await openPage();
+  for (const [name, page, there] of [
+    ["delete-account", others, "Keep it"],
+    ["hand-over-first", own, "Food demand in Velmark, 2029–31"],
+  ] as const) {
+    await page.emulateMedia({ reducedMotion: "reduce" });
+    await page.goto("/account");
+    await page.getByRole("button", { name: "Delete the account" }).click();
+    await page.getByRole("dialog").getByText(there).waitFor();
+    for (const theme of THEMES) {
+      await turn(page, theme);
+      await settled(page);
+      await picture(page, `${name}-${theme}`);
+      expect.soft(await faultsOf(page, DIALOG), `${name}, ${theme}`).toEqual([]);
+    }
+    await page.context().close();
+  }
+});
+
+it("nor has the list of columns to choose from", async () => {
+  const page = await openPage();
+  const watched = watch(page, product.origin);
+  await page.goto(`/studies/${studyId}/cells/${surveyId}`);
+  const field = page.getByRole("combobox", { name: "Quantity of Sweet drinks" }).last();
+  for (const theme of THEMES) {
+    await turn(page, theme);
+    await field.click();
+    await page.keyboard.type("q_sw");
+    await page.getByText(/q_sweet is q_sweet_l within 2/).waitFor();
+    await settled(page);
+    await picture(page, `columns-${theme}`);
+    expect.soft(await faultsOf(page, ".column-choices"), theme).toEqual([]);
+    await page.keyboard.press("Escape");
   }
   expect.soft(watched.takeFaults()).toEqual([]);
   await page.context().close();

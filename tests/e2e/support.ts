@@ -17,6 +17,8 @@ const FLAGS = [
   "--disable-background-networking",
   "--disable-component-update",
   "--disable-sync",
+  // Dates and numbers follow the browser: one custom for every machine that runs these.
+  "--accept-lang=en-GB",
 ];
 /** How long anything is waited for: long, because the machine may have more to do; what fails for good costs it once. */
 export const PATIENCE = 90_000;

@@ -42,7 +42,7 @@ export function ColumnChooser(props: ColumnChooserProps) {
           role="combobox"
           aria-label={props["aria-label"]}
           aria-expanded={isOpen}
-          aria-controls={isOpen ? `${own}-list` : undefined}
+          aria-controls={isOpen && offered.length > 0 ? `${own}-list` : undefined}
           aria-autocomplete="list"
           aria-activedescendant={isOpen && offered.length > 0 ? optionId(place) : undefined}
           aria-invalid={isKnown ? undefined : true}
@@ -51,7 +51,10 @@ export function ColumnChooser(props: ColumnChooserProps) {
           spellCheck={false}
           autoComplete="off"
           onChange={(event) => list.type(event.target.value)}
-          onClick={list.open}
+          onClick={(event) => {
+            list.open();
+            event.currentTarget.select();
+          }}
           onFocus={(event) => event.target.select()}
           onBlur={list.close}
           onKeyDown={list.onKeyDown}
@@ -73,21 +76,24 @@ export function ColumnChooser(props: ColumnChooserProps) {
           // Without this the field would be left before the press that chooses is over.
           onMouseDown={(event) => event.preventDefault()}
         >
-          <div role="listbox" id={`${own}-list`} aria-label="Columns" className="column-list">
-            {offered.map((choice, at) => (
-              <ColumnOption
-                key={choice?.name ?? ""}
-                id={optionId(at)}
-                choice={choice}
-                none={none ?? ""}
-                isPointed={at === place}
-                isChosen={(choice?.name ?? "") === value}
-                onPoint={() => list.setPointed(at)}
-                onChoose={() => list.choose(choice)}
-              />
-            ))}
-          </div>
-          {offered.length === 0 && <p className="column-said">No column fits what is typed.</p>}
+          {offered.length === 0 ? (
+            <p className="column-said">No column fits what is typed.</p>
+          ) : (
+            <div role="listbox" id={`${own}-list`} aria-label="Columns" className="column-list">
+              {offered.map((choice, at) => (
+                <ColumnOption
+                  key={choice?.name ?? ""}
+                  id={optionId(at)}
+                  choice={choice}
+                  none={none ?? ""}
+                  isPointed={at === place}
+                  isChosen={(choice?.name ?? "") === value}
+                  onPoint={() => list.setPointed(at)}
+                  onChoose={() => list.choose(choice)}
+                />
+              ))}
+            </div>
+          )}
           {pointed && pointed.agreements.length > 0 && (
             <div className="column-said" role="status">
               {pointed.agreements.map((sentence) => (

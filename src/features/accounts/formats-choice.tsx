@@ -13,7 +13,7 @@ export function FormatsChoice() {
     <div className="account-form">
       <div>
         <label htmlFor={id} className="type-small block pb-1 text-ink2">
-          Written as in
+          Written
         </label>
         <select
           id={id}
@@ -25,7 +25,7 @@ export function FormatsChoice() {
           <option value="">as the browser says ({navigator.language})</option>
           {PLACES.map(({ locale, place }) => (
             <option key={locale} value={locale}>
-              {place}
+              as in {place}
             </option>
           ))}
         </select>

@@ -199,11 +199,11 @@ describe("what is kept of a person", () => {
 describe("how dates and numbers are written", () => {
   it("is chosen by the place whose custom it is, and shown at once", async () => {
     const { user } = renderPart(<FormatsChoice />);
-    const choice = screen.getByLabelText("Written as in");
+    const choice = screen.getByLabelText("Written");
     expect(choice).toHaveAccessibleDescription(/^9 March 2031, 14:08; 104,938 rows, 1\.6 s$/);
-    await user.selectOptions(choice, "the United States");
+    await user.selectOptions(choice, "as in the United States");
     expect(choice).toHaveAccessibleDescription(/^March 9, 2031, 2:08 PM; 104,938 rows, 1\.6 s$/);
-    await user.selectOptions(choice, "Germany");
+    await user.selectOptions(choice, "as in Germany");
     expect(choice).toHaveAccessibleDescription(/^9 March 2031, 14:08; 104.938 rows, 1,6 s$/);
     await user.selectOptions(choice, "as the browser says (en-GB)");
     expect(localStorage.getItem("tangency-formats")).toBeNull();
