@@ -1,5 +1,4 @@
 import type { CellKind, FindingOf } from "../../shared/schemas/cell.ts";
-import type { ElasticitiesFinding } from "../../shared/schemas/elasticities.ts";
 import type { pointSpecification } from "../../shared/schemas/slutsky.ts";
 import type { CellSource } from "../../shared/study/cell-source.ts";
 import { parseCell } from "../../shared/study/parse-cell.ts";
@@ -18,10 +17,11 @@ const SMALLEST_GROUP = 10;
 export function refuseOneHousehold({ cell, finding }: { cell: CellSource; finding: FindingOf<CellKind> }): void {
   const { name, source } = cell;
   if (finding.kind === "elasticities") refuseSmallGroups(name, finding);
-  if (finding.kind !== "slutsky" && finding.kind !== "elasticities") return;
+  if (finding.kind === "price change" && finding.incidence) refuseSmallGroups(name, finding.incidence);
+  if (finding.kind !== "slutsky" && finding.kind !== "elasticities" && finding.kind !== "price change") return;
   const { specification } = parseCell(finding.kind, source);
   if (specification?.kind !== finding.kind) throw conflict(`${name} is changing; seal it again.`);
-  const pointName = finding.kind === "slutsky" ? finding.pointName : finding.groups[0].name;
+  const pointName = finding.kind === "elasticities" ? finding.groups[0].name : finding.pointName;
   if (specification.at !== undefined) refuseOnePoint(name, pointName, specification.at);
 }
 
@@ -39,7 +39,17 @@ function refuseOnePoint(name: string, pointName: string, at: typeof pointSpecifi
   );
 }
 
-function refuseSmallGroups(name: string, { groups, without }: ElasticitiesFinding): void {
+interface Grouped {
+  readonly groups: readonly Group[];
+  readonly without: readonly Group[];
+}
+
+interface Group {
+  readonly name: string;
+  readonly rows?: number;
+}
+
+function refuseSmallGroups(name: string, { groups, without }: Grouped): void {
   const small = [...groups, ...without].find(({ rows }) => rows !== undefined && rows < SMALLEST_GROUP);
   if (small === undefined) return;
   throw conflict(
