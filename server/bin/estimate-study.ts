@@ -12,6 +12,7 @@ import { sortByReading } from "../../shared/study/topology.ts";
 import {
   runData,
   runElasticities,
+  runFigure,
   runPriceChange,
   runSlutsky,
   runSystem,
@@ -213,8 +214,17 @@ function runCell(
     const tested = asked?.kind === "system" && system?.kind === "system" && { specification: asked, finding: system };
     return runTests(specification, data, tested || undefined, control);
   }
+  if (specification?.kind === "figure") {
+    const isBasis = system?.kind === "system" || system?.kind === "price change";
+    return runFigure(specification, isBasis ? system : undefined, data, control);
+  }
   if (system?.kind !== "system") throw new Error(`${name} has no specification`);
-  if (specification?.kind === "elasticities") return runElasticities(specification, system, data, control);
+  if (specification?.kind === "elasticities") {
+    const { within = "" } = specification;
+    const finding = found.get(within);
+    const broader = finding?.kind === "system" ? { finding, data: prepared.get(within)! } : undefined;
+    return runElasticities(specification, system, data, control, broader);
+  }
   if (specification?.kind === "price change") return runPriceChange(specification, system, data, control);
   if (specification?.kind !== "slutsky") throw new Error(`${name} has no specification`);
   return runSlutsky(specification, system, data, control);
@@ -224,5 +234,6 @@ function runCell(
 function readOf(specification: ResolvedCell["specification"]): string {
   if (!specification || specification.kind === "data") return "";
   if ("system" in specification && specification.system !== undefined) return specification.system;
+  if (specification.kind === "figure" && specification["price change"]) return specification["price change"];
   return "data" in specification ? (specification.data ?? "") : "";
 }

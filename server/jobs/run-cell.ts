@@ -1,9 +1,18 @@
 import { and, eq } from "drizzle-orm";
 import type { Finding } from "../../shared/schemas/cell.ts";
+import { type PriceChangeFinding, priceChangeFinding } from "../../shared/schemas/price-change.ts";
 import { type SystemFinding, systemFinding } from "../../shared/schemas/system.ts";
 import type { Database } from "../db/client.ts";
 import { findings } from "../db/schema/findings.ts";
-import { runData, runElasticities, runPriceChange, runSlutsky, runSystem, runTests } from "../engine/cells/index.ts";
+import {
+  runData,
+  runElasticities,
+  runFigure,
+  runPriceChange,
+  runSlutsky,
+  runSystem,
+  runTests,
+} from "../engine/cells/index.ts";
 import type { PreparedData, UploadTable } from "../engine/columns/prepared-data.ts";
 import { Refusal } from "../engine/refusal.ts";
 import type { RunControl } from "../engine/run.ts";
@@ -38,8 +47,21 @@ function find(job: CellJob, db: Database, memory: WorkerMemory, control: RunCont
     const system = systemSpecification && { specification: systemSpecification, finding: storedSystem(job, db) };
     return runTests(specification, data, system, control);
   }
+  if (specification.kind === "figure") {
+    if (specification["price change"] !== undefined) {
+      return runFigure(specification, storedPriceChange(job, db), data, control);
+    }
+    const basis = specification.system === undefined ? undefined : storedSystem(job, db);
+    return runFigure(specification, basis, data, control);
+  }
   const system = storedSystem(job, db);
-  if (specification.kind === "elasticities") return runElasticities(specification, system, data, control);
+  if (specification.kind === "elasticities") {
+    const broader = job.broader && {
+      finding: storedSystem({ ...job.broader, studyId: job.studyId }, db),
+      data: prepared(job.broader, db, memory, control),
+    };
+    return runElasticities(specification, system, data, control, broader);
+  }
   if (specification.kind === "price change") return runPriceChange(specification, system, data, control);
   return runSlutsky(specification, system, data, control);
 }
@@ -65,9 +87,20 @@ export function tableOf(uploadId: string, db: Database, memory: WorkerMemory): U
   return table;
 }
 
-function storedSystem({ studyId, systemFingerprint }: CellJob, db: Database): SystemFinding {
-  const where = and(eq(findings.studyId, studyId), eq(findings.fingerprint, systemFingerprint ?? ""));
+function storedSystem(
+  { studyId, systemFingerprint }: Pick<CellJob, "studyId" | "systemFingerprint">,
+  db: Database,
+): SystemFinding {
+  return systemFinding.parse(storedFinding(studyId, systemFingerprint, "system", db));
+}
+
+function storedPriceChange({ studyId, priceChangeFingerprint }: CellJob, db: Database): PriceChangeFinding {
+  return priceChangeFinding.parse(storedFinding(studyId, priceChangeFingerprint, "price change", db));
+}
+
+function storedFinding(studyId: string, fingerprint: string | undefined, kind: string, db: Database): unknown {
+  const where = and(eq(findings.studyId, studyId), eq(findings.fingerprint, fingerprint ?? ""));
   const stored = db.select({ finding: findings.finding }).from(findings).where(where).get();
-  if (!stored) throw new Refusal("The system that this cell reads has no finding yet.");
-  return systemFinding.parse(JSON.parse(stored.finding));
+  if (!stored) throw new Refusal(`The ${kind} that this cell reads has no finding yet.`);
+  return JSON.parse(stored.finding);
 }

@@ -120,10 +120,28 @@ function withoutFileName(cell: CellSource): CellSource {
 }
 
 function matrixOf(finding: SlutskyFinding): SealedSlutsky {
-  const { kind, dataFingerprint, fitted, form, pointName, point, priceScale, totalScale, at, tests, caveats, sample } =
-    finding;
+  const {
+    kind,
+    dataFingerprint,
+    fitted,
+    form,
+    pointName,
+    point,
+    priceScale,
+    totalScale,
+    at,
+    tests,
+    caveats,
+    conditionalOn,
+    sample,
+  } = finding;
   const sealed = { kind, dataFingerprint, fitted, form, pointName, point, priceScale, totalScale, at, tests };
-  return { ...sealed, ...(caveats && { caveats }), ...(sample && { sample }) };
+  return {
+    ...sealed,
+    ...(caveats && { caveats }),
+    ...(conditionalOn !== undefined && { conditionalOn }),
+    ...(sample && { sample }),
+  };
 }
 
 function accountingOf({ accounting }: DataFinding): SealedContent["accounting"] {

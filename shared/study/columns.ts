@@ -1,6 +1,7 @@
 import type { CellSpecification } from "../schemas/cell.ts";
 import type { DataSpecification } from "../schemas/data.ts";
 import { type ElasticitiesSpecification, TOTAL_EXPENDITURE } from "../schemas/elasticities.ts";
+import type { FigureSpecification } from "../schemas/figure.ts";
 import { EXPENDITURE_PER_ADULT, type PriceChangeSpecification } from "../schemas/price-change.ts";
 import type { Problem } from "../schemas/problem.ts";
 import type { Upload } from "../schemas/resources.ts";
@@ -35,6 +36,7 @@ export function columnProblems(context: Context): Problem[] {
   if (specification.kind === "system") return systemProblems(specification, context);
   if (specification.kind === "slutsky") return priceProblems(specification.at, specification.system, context);
   if (specification.kind === "price change") return priceChangeProblems(specification, context);
+  if (specification.kind === "figure") return figureProblems(specification, context);
   return specification.kind === "elasticities" ? elasticitiesProblems(specification, context) : [];
 }
 
@@ -159,8 +161,35 @@ function elasticitiesProblems(specification: ElasticitiesSpecification, context:
       ),
     );
   }
+  problems.push(...withinProblems(specification, context));
   const data = system?.kind === "system" ? context.specifications.get(system.data) : undefined;
   return data?.kind === "data" ? [...problems, ...groupProblems(groups, data, context, [TOTAL_EXPENDITURE])] : problems;
+}
+
+/** A broader system that does not have the group as a good, is the group's own, or is of a group itself. */
+function withinProblems(specification: ElasticitiesSpecification, context: Context): Problem[] {
+  const { system: name, within, as } = specification;
+  if (within === undefined || as === undefined) return [];
+  const tell = teller(context.places);
+  if (within === name) return [tell(["within"], `within names a broader system than ${name} itself.`)];
+  const [own, broader] = [context.specifications.get(name), context.specifications.get(within)];
+  if (own?.kind !== "system" || broader?.kind !== "system") return [];
+  const problems: Problem[] = [];
+  const group = own["conditional on"];
+  if (group !== undefined && group !== as) {
+    problems.push(tell(["as"], `${name} is conditional on ${group}, and as names ${as}: they are one group.`, group));
+  }
+  const whole = broader["conditional on"];
+  if (whole !== undefined) {
+    problems.push(
+      tell(["within"], `${within} is itself conditional on ${whole}: name the system of the whole budget.`),
+    );
+  }
+  const data = context.specifications.get(broader.data);
+  if (data?.kind === "data" && !Object.hasOwn(data.goods, as)) {
+    problems.push(tell(["as"], ...noGood(broader.data, as, Object.keys(data.goods))));
+  }
+  return problems;
 }
 
 /** Groups by a column that is not there; `others` are what else may be named in its place. */
@@ -215,6 +244,37 @@ function priceChangeProblems(specification: PriceChangeSpecification, context: C
     ...priceProblems(at, name, context),
     ...problems,
     ...groupProblems(groups, data, context, [TOTAL_EXPENDITURE, EXPENDITURE_PER_ADULT]),
+  ];
+}
+
+/** Goods that are not there, columns of groups, and prices of one's own. */
+function figureProblems(specification: FigureSpecification, context: Context): Problem[] {
+  const { at, groups, goods: named = [], system: name } = specification;
+  const change = context.specifications.get(specification["price change"] ?? "");
+  const system = context.specifications.get(change?.kind === "price change" ? change.system : (name ?? ""));
+  const owner = system?.kind === "system" ? system.data : (specification.data ?? "");
+  const data = context.specifications.get(owner);
+  if (data?.kind !== "data") return [];
+  const tell = teller(context.places);
+  const goods = Object.keys(data.goods);
+  const problems = named.flatMap((good, i) =>
+    goods.includes(good)
+      ? []
+      : [
+          tell(
+            ["goods", i],
+            ...noGood(
+              owner,
+              good,
+              goods.filter((other) => !named.includes(other)),
+            ),
+          ),
+        ],
+  );
+  return [
+    ...problems.slice(0, MOST_TOLD),
+    ...(at === undefined ? [] : priceProblems(at, name ?? "", context)),
+    ...groupProblems(groups, data, context, [TOTAL_EXPENDITURE]),
   ];
 }
 

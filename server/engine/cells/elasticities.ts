@@ -20,10 +20,13 @@ import { type RowGroup, rowGroups } from "./elasticity-groups.ts";
 import { atGroupMean, atOnePoint, type GroupOrReason } from "./elasticity-points.ts";
 import { overRows } from "./elasticity-rows.ts";
 import { refusingRanges } from "./refusing.ts";
+import type { EstimatedSystem } from "./two-stages.ts";
+import { unconditionalAt } from "./unconditional.ts";
 
 /**
  * An elasticities cell: a fitted system's elasticities at one point, at the mean point of each group of rows, or over
- * the rows of each, with standard errors, intervals and classes of goods (methods 3 and 3.2).
+ * the rows of each, with standard errors, intervals and classes of goods (methods 3 and 3.2). Where the cell names a
+ * broader system, the unconditional ones too (`unconditionalAt`).
  * Errors: `Refusal` (a column that is not there, no group with positive shares, Stone's index asked to move in another
  * system), `Cancelled`.
  */
@@ -32,6 +35,7 @@ export function runElasticities(
   system: SystemFinding,
   data: PreparedData,
   control: RunControl = QUIET,
+  broader?: EstimatedSystem,
 ): ElasticitiesFinding {
   const { fitted } = system;
   const { groups: groupedBy, over, index, level } = specification;
@@ -42,6 +46,10 @@ export function runElasticities(
   const found = groups.filter((group): group is ElasticityGroup => !("undefined" in group));
   const without = groups.filter((group) => "undefined" in group);
   if (found.length === 0) throw new Refusal(without.map((group) => refused(group, groupedBy)));
+  const { as: group, within } = specification;
+  if (within !== undefined && broader === undefined)
+    throw new Error("the broader system is handed in where one is named");
+  const conditionalOn = system.conditionalOn ?? group;
   return elasticitiesFinding.parse({
     kind: "elasticities",
     dataFingerprint: system.dataFingerprint,
@@ -58,9 +66,11 @@ export function runElasticities(
     groups: found,
     checks: checksOf(system, found),
     tests: system.tests,
-    ...caveatsOf(system),
+    ...caveatsOf({ ...system, conditionalOn }),
     without,
     ...(derivativeRows && derivativeRows.used < derivativeRows.of && { derivativeRows }),
+    ...(conditionalOn !== undefined && { conditionalOn }),
+    ...(broader && { unconditional: unconditionalAt(specification, { finding: system, data }, broader, control) }),
   });
 }
 

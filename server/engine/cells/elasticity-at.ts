@@ -31,7 +31,17 @@ export function evaluatedGroup(
 ): EvaluatedGroup {
   const elasticities = elasticitiesOf(responses, gradients, fitted.covariance, poll);
   const intervals = draws ? percentileIntervals(draws, level) : normalIntervals(elasticities, level);
-  const { goods, net, gross } = classesByIntervals(intervals, fitted.goods, level);
+  return estimatesOf(elasticities, intervals, fitted.goods, level);
+}
+
+/** Elasticities with their errors and intervals, and what those make of each good and pair. */
+export function estimatesOf(
+  elasticities: Elasticities,
+  intervals: ElasticityIntervals,
+  names: readonly string[],
+  level: number,
+): EvaluatedGroup {
+  const { goods, net, gross } = classesByIntervals(intervals, names, level);
   return {
     shares: elasticities.shares,
     expenditure: {

@@ -48,6 +48,7 @@ export function runSlutsky(
     },
     tests: system.tests,
     ...caveatsOf(system),
+    ...(system.conditionalOn !== undefined && { conditionalOn: system.conditionalOn }),
     ...(sample && { sample }),
     brokenRows,
   });

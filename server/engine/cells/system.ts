@@ -56,6 +56,7 @@ export function runSystem(given: SystemSpecification, data: PreparedData, contro
       ...estimate,
       ...(expenditureOfLes && { expenditure: expenditureOfLes }),
       ...unitsMatter(specification, data),
+      ...(specification["conditional on"] !== undefined && { conditionalOn: specification["conditional on"] }),
       points: { base, mean },
       expenditureElasticities: fitted.goods.map((good, i) => ({
         good,

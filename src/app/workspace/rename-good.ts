@@ -11,6 +11,7 @@ const BY_GOOD: { readonly [K in CellKind]?: readonly KeyPath[] } = {
   elasticities: [["at", "prices"]],
   slutsky: [["at", "prices"]],
   "price change": [["prices"], ["at", "prices"]],
+  figure: [["at", "prices"]],
 };
 
 /**
@@ -34,9 +35,16 @@ export function sourcesAfterRenamingGood(
         : kinds.has(name)
           ? renamedInKeys(source, parsed.written, kind as CellKind, from, to)
           : source;
-    if (next !== source) changed.set(id, next);
+    const followed =
+      kinds.get(String(parsed.written.within)) === "system" ? renamedGroup(next, parsed, from, to) : next;
+    if (followed !== source) changed.set(id, followed);
   }
   return changed;
+}
+
+/** `as` of an elasticities cell is a good of the data beneath its broader system. */
+function renamedGroup(source: string, { kind, written }: StudyCell["parsed"], from: string, to: string): string {
+  return kind === "elasticities" && written.as === from ? setKey(source, ["as"], to) : source;
 }
 
 /** By name, the kinds of the data cell and of every cell that rests on it, directly or by a system. */
@@ -46,6 +54,8 @@ function kindsOnData(data: string, cells: readonly StudyCell[]): Map<string, Cel
   const isOn = (cell: StudyCell): boolean => {
     const { written } = takeOver(cell, byName);
     if (written.data === data) return true;
+    const change = typeof written["price change"] === "string" ? byName.get(written["price change"]) : undefined;
+    if (change?.kind === "price change") return isOn(change);
     const system = typeof written.system === "string" ? byName.get(written.system) : undefined;
     return system?.kind === "system" && takeOver(system, byName).written.data === data;
   };
@@ -64,12 +74,19 @@ function renamedInKeys(
   to: string,
 ): string {
   if (kind === "system") return written.dropped === from ? setKey(source, ["dropped"], to) : source;
+  const listed = kind === "figure" ? renamedInList(source, written.goods, from, to) : source;
   return (BY_GOOD[kind] ?? []).reduce((text, path) => {
     const byGood = at(written, path);
     // Where the new name stands already, two keys of one name would make the text unreadable.
     const isThere = byGood !== undefined && Object.hasOwn(byGood, from) && !Object.hasOwn(byGood, to);
     return isThere ? renameKey(text, [...path, from], to) : text;
-  }, source);
+  }, listed);
+}
+
+/** A good in the list of those a figure shows. */
+function renamedInList(source: string, goods: unknown, from: string, to: string): string {
+  const place = Array.isArray(goods) ? goods.indexOf(from) : -1;
+  return place < 0 || (goods as unknown[]).includes(to) ? source : setKey(source, ["goods", place], to);
 }
 
 function at(written: Readonly<Record<string, unknown>>, path: KeyPath): object | undefined {

@@ -34,6 +34,22 @@ describe("a good that gets another name", () => {
     expect(renamed("own", kind, "system: base\nat: mean\n")).toBeUndefined();
   });
 
+  it("is followed by the group of which a system of its own has the goods", () => {
+    const others = [
+      cell(
+        "cows",
+        "data",
+        "upload: cows.csv\ngoods: {dairy: {price: p, quantity: q}, beef: {price: r, quantity: s}}\n",
+      ),
+      cell("milk", "system", "data: cows\nform: aids\nconditional on: dairy\n"),
+    ];
+    const source = "system: milk\nwithin: base\nas: dairy # all of it\n";
+    expect(renamed("stages", "elasticities", source, others)).toBe(source.replace("dairy", "milk & cheese"));
+    // The good of that name in the group's own data is another one.
+    const turned = "system: base\nwithin: milk\nas: dairy\n";
+    expect(renamed("turned", "elasticities", turned, others)).toBeUndefined();
+  });
+
   it("is followed by the prices that change, and by those they change from", () => {
     const source = "system: base\nat: {prices: {grains: 1, dairy: 2}, x: 9}\nprices:\n  dairy: {per cent: 10} # levy\n";
     expect(renamed("levy", "price change", source)).toBe(source.replaceAll("dairy", "milk & cheese"));
