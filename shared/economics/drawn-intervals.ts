@@ -25,7 +25,7 @@ export interface DrawnIntervals {
 }
 
 /** Fewer draws than these have no 2.5 % tails to speak of. */
-const FEWEST_DRAWS = 40;
+export const FEWEST_DRAWS = 40;
 
 /**
  * Percentile intervals (`percentileInterval`) of the matrix and its eigenvalues over `draws` of θ (replicates × k), at

@@ -1,6 +1,7 @@
 import { z } from "zod";
 import { dataFinding, dataSpecification } from "./data.ts";
 import { elasticitiesFinding, elasticitiesSpecification } from "./elasticities.ts";
+import { figureFinding, figureSpecification } from "./figure.ts";
 import { priceChangeFinding, priceChangeSpecification } from "./price-change.ts";
 import { slutskyFinding, slutskySpecification } from "./slutsky.ts";
 import { systemFinding, systemSpecification } from "./system.ts";
@@ -8,7 +9,16 @@ import { testsFinding, testsSpecification } from "./tests.ts";
 import { textFinding, textSpecification } from "./text.ts";
 
 /** The kinds of cell. A kind is added here, with its schema file, its engine file and its view. */
-export const CELL_KINDS = ["data", "system", "tests", "elasticities", "slutsky", "price change", "text"] as const;
+export const CELL_KINDS = [
+  "data",
+  "system",
+  "tests",
+  "elasticities",
+  "slutsky",
+  "price change",
+  "figure",
+  "text",
+] as const;
 export const cellKind = z.enum(CELL_KINDS);
 export type CellKind = z.infer<typeof cellKind>;
 
@@ -19,6 +29,7 @@ export const cellSpecification = z.discriminatedUnion("kind", [
   elasticitiesSpecification,
   slutskySpecification,
   priceChangeSpecification,
+  figureSpecification,
   textSpecification,
 ]);
 export type CellSpecification = z.infer<typeof cellSpecification>;
@@ -30,6 +41,7 @@ export const SPECIFICATIONS = {
   elasticities: elasticitiesSpecification,
   slutsky: slutskySpecification,
   "price change": priceChangeSpecification,
+  figure: figureSpecification,
   text: textSpecification,
 } as const;
 
@@ -40,6 +52,7 @@ export const finding = z.discriminatedUnion("kind", [
   elasticitiesFinding,
   slutskyFinding,
   priceChangeFinding,
+  figureFinding,
   textFinding,
 ]);
 export type Finding = z.infer<typeof finding>;

@@ -26,6 +26,7 @@ export const REFERENCES: { readonly [K in CellKind]: Readonly<Record<string, Cel
   elasticities: { system: "system", within: "system" },
   slutsky: { system: "system" },
   "price change": { system: "system" },
+  figure: { system: "system", data: "data", "price change": "price change" },
   // Its quotations lead to cells of every kind: shared/study/quotations.ts.
   text: {},
 };
@@ -104,6 +105,16 @@ const KEYS: { readonly [K in CellKind]: Readonly<Record<KeysOf<K>, Told>> } = {
     expenditure: ["change of total expenditure in per cent; 0 unless said otherwise"],
     groups: ["who bears it: by a column, by total expenditure, or by expenditure per equivalent adult"],
     "equivalence scale": ["a column of equivalent adults, or the square root of a column of members", "numeric column"],
+    level: ["the level of confidence of intervals; 0.95 unless said otherwise"],
+  },
+  figure: {
+    system: ["the name of the system cell it is drawn of; or give data or price change", "system"],
+    data: ["the name of the data cell it is drawn of", "data"],
+    "price change": ["the name of the price change cell whose incidence it shows", "price change"],
+    show: ["what against what"],
+    goods: ["which goods; all unless some are named, one for a demand curve and for prices", "good"],
+    at: ["where the rest stands: base point, mean, a row, a quantile of expenditure, or prices and x of one's own"],
+    groups: ["groups of rows: by a column, or by total expenditure"],
     level: ["the level of confidence of intervals; 0.95 unless said otherwise"],
   },
   text: {

@@ -3,6 +3,7 @@ import { coefficientTable } from "./coefficients.ts";
 import { dataDescriptionTable } from "./data-description.ts";
 import { eigenvalueTable } from "./eigenvalues.ts";
 import { elasticityTables } from "./elasticities.ts";
+import { figureTables } from "./figure.ts";
 import { firstStepTables } from "./first-steps.ts";
 import { priceChangeTables } from "./price-change.ts";
 import { rowAccountingTable } from "./row-accounting.ts";
@@ -19,5 +20,6 @@ export const FINDING_TABLES: { readonly [K in CellKind]: (finding: FindingOf<K>)
   elasticities: elasticityTables,
   slutsky: (finding) => [slutskyTable(finding, finding.form), eigenvalueTable(finding), compensatedTable(finding)],
   "price change": priceChangeTables,
+  figure: figureTables,
   text: (finding) => [quotedNumbersTable(finding)],
 };

@@ -41,6 +41,12 @@ export const CELL_VIEWS: { readonly [K in CellKind]: CellView<K> } = {
     Controls: async () => (await import("./price-change/controls.tsx")).PriceRulers,
     tables: async () => (await import("../../shared/tables/of-finding.ts")).FINDING_TABLES["price change"],
   },
+  figure: {
+    Band: async () => (await import("./figure/band.tsx")).FigureBand,
+    Open: async () => (await import("./figure/view.tsx")).FigureOpen,
+    Form: async () => (await import("./figure/form.tsx")).FigureForm,
+    tables: async () => (await import("../../shared/tables/of-finding.ts")).FINDING_TABLES.figure,
+  },
   text: {
     Band: async () => (await import("./text/band.tsx")).TextBand,
     Open: async () => (await import("./text/view.tsx")).TextOpen,

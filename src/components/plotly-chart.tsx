@@ -1,6 +1,7 @@
 import type { Config, Data, Layout } from "plotly.js-dist-min";
-import { useEffect, useRef, useState } from "react";
+import { useEffect, useState } from "react";
 import { Word } from "./button.tsx";
+import { useChartWidth } from "./chart-width.ts";
 
 /** A token of the palette as the page has it now: "ink" → "#1D1B20". */
 export type TokenColour = (name: string) => string;
@@ -10,12 +11,20 @@ export interface PlotlyFigure {
   readonly layout: Partial<Layout>;
 }
 
+/** The room a figure is drawn for. */
+export interface FigureRoom {
+  /** Too little for what else stands side by side. */
+  readonly narrow: boolean;
+  readonly height: number;
+}
+
 interface PlotlyChartProps {
   /** What the figure shows, for those who do not see it; its numbers stand beside it as a table. */
   readonly label: string;
   readonly fileName: string;
-  readonly height: number;
-  readonly figure: (colour: TokenColour) => PlotlyFigure;
+  /** In pixels, where it is narrow another one if need be. */
+  readonly height: number | ((narrow: boolean) => number);
+  readonly figure: (colour: TokenColour, room: FigureRoom) => PlotlyFigure;
 }
 
 type Plotly = typeof import("plotly.js-dist-min");
@@ -23,8 +32,23 @@ type Plotly = typeof import("plotly.js-dist-min");
 const CONFIG: Partial<Config> = { displayModeBar: false, displaylogo: false, responsive: true, showTips: false };
 const FACE = "'Source Sans 3 Variable', sans-serif";
 
+/** Below this many pixels a figure is narrow. */
+const NARROW = 520;
+const PICTURE = { width: 960, height: 560 };
+
 const colourOnPage: TokenColour = (name) =>
   getComputedStyle(document.documentElement).getPropertyValue(`--${name}`).trim();
+
+/** In the light palette, whatever the page's theme, on white: what is downloaded goes into a paper. */
+function onPaper<T>(draw: (colour: TokenColour) => T): T {
+  const probe = document.createElement("span");
+  probe.dataset.theme = "light";
+  document.body.append(probe);
+  const light = getComputedStyle(probe);
+  const picture = draw((name) => (name === "recto" ? "white" : light.getPropertyValue(`--${name}`).trim()));
+  probe.remove();
+  return picture;
+}
 
 /** What every figure shares: the page's own face and paper, no frame, nothing of the library's furniture. */
 function layoutOn(colour: TokenColour, own: Partial<Layout>, height: number): Partial<Layout> {
@@ -45,8 +69,11 @@ function layoutOn(colour: TokenColour, own: Partial<Layout>, height: number): Pa
 }
 
 /** A figure drawn by Plotly, which is fetched when the figure comes near the window and not before. */
-export function PlotlyChart({ label, fileName, height, figure }: PlotlyChartProps) {
-  const frame = useRef<HTMLDivElement>(null);
+export function PlotlyChart({ label, fileName, height: heightOf, figure }: PlotlyChartProps) {
+  const [frame, width] = useChartWidth<HTMLDivElement>(PICTURE.width);
+  const narrow = width < NARROW;
+  const heightWhere = (isNarrow: boolean) => (typeof heightOf === "number" ? heightOf : heightOf(isNarrow));
+  const height = heightWhere(narrow);
   const [plotly, setPlotly] = useState<Plotly>();
   const [failed, setFailed] = useState(false);
 
@@ -69,13 +96,13 @@ export function PlotlyChart({ label, fileName, height, figure }: PlotlyChartProp
     );
     observer.observe(element);
     return () => observer.disconnect();
-  }, []);
+  }, [frame]);
 
   useEffect(() => {
     const element = frame.current;
     if (element === null || plotly === undefined) return;
     const draw = () => {
-      const { data, layout } = figure(colourOnPage);
+      const { data, layout } = figure(colourOnPage, { narrow, height });
       void plotly.react(element, data, layoutOn(colourOnPage, layout, height), CONFIG);
     };
     draw();
@@ -85,11 +112,15 @@ export function PlotlyChart({ label, fileName, height, figure }: PlotlyChartProp
       theme.disconnect();
       plotly.purge(element);
     };
-  }, [plotly, figure, height]);
+  }, [plotly, figure, height, narrow, frame]);
 
   const download = (format: "svg" | "png") => {
-    if (frame.current === null) return;
-    void plotly?.downloadImage(frame.current, { format, filename: fileName, width: 960, height: 560 });
+    const tall = Math.max(PICTURE.height, heightWhere(false));
+    const picture = onPaper((colour) => {
+      const { data, layout } = figure(colour, { narrow: false, height: tall });
+      return { data, layout: layoutOn(colour, layout, tall), config: CONFIG };
+    });
+    void plotly?.downloadImage(picture, { format, filename: fileName, width: PICTURE.width, height: tall });
   };
   return (
     <div>

@@ -3,6 +3,8 @@ import { DataBand } from "../../src/cells/data/band.tsx";
 import { DataOpen } from "../../src/cells/data/view.tsx";
 import { ElasticitiesBand } from "../../src/cells/elasticities/band.tsx";
 import { ElasticitiesOpen } from "../../src/cells/elasticities/view.tsx";
+import { FigureBand } from "../../src/cells/figure/band.tsx";
+import { FigureOpen } from "../../src/cells/figure/view.tsx";
 import { PriceChangeBand } from "../../src/cells/price-change/band.tsx";
 import { PriceChangeOpen } from "../../src/cells/price-change/view.tsx";
 import { SlutskyBand } from "../../src/cells/slutsky/band.tsx";
@@ -23,5 +25,6 @@ export const CELL_PARTS = {
   elasticities: { Band: ElasticitiesBand, Open: ElasticitiesOpen, tables: FINDING_TABLES.elasticities },
   slutsky: { Band: SlutskyBand, Open: SlutskyOpen, Aside: HowChecked, tables: FINDING_TABLES.slutsky },
   "price change": { Band: PriceChangeBand, Open: PriceChangeOpen, tables: FINDING_TABLES["price change"] },
+  figure: { Band: FigureBand, Open: FigureOpen, tables: FINDING_TABLES.figure },
   text: { Band: TextBand, Open: TextOpen, tables: FINDING_TABLES.text },
 };

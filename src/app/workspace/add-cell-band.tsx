@@ -7,6 +7,7 @@ const SAYS: Readonly<Record<CellKind, string>> = {
   elasticities: "elasticities at a point, by group or over rows, with intervals",
   slutsky: "the matrix of compensated effects, checked",
   "price change": "new prices or taxes: effects, welfare, revenue and who bears it",
+  figure: "curves, elasticities, fit or shares drawn, with the numbers behind them",
   text: "the argument between the numbers, which it quotes and keeps true",
 };
 

@@ -14,6 +14,7 @@ const FIRST_NAMES: Readonly<Record<CellKind, string>> = {
   elasticities: "elasticities",
   slutsky: "matrix",
   "price change": "price change",
+  figure: "figure",
   text: "argument",
 };
 
@@ -47,6 +48,12 @@ export function freshSource(kind: CellKind, cells: readonly CellSource[], upload
   if (kind === "elasticities") return `system: ${last("system")}\nat: mean\n`;
   if (kind === "slutsky") return `system: ${last("system")}\nat: base point\nform: share\n`;
   if (kind === "price change") return `system: ${last("system")}\nat: mean\nprices: {}\n`;
+  if (kind === "figure") {
+    const system = last("system");
+    return system || !last("data")
+      ? `system: ${system}\nshow: engel curves\n`
+      : `data: ${last("data")}\nshow: shares by group\n`;
+  }
   if (kind === "text") return "";
   const free = latestUploads(uploads).filter(
     ({ name }) => !cells.some(({ kind, source }) => kind === "data" && source.includes(name)),
@@ -89,6 +96,10 @@ export function sourceInALine(kind: string, source: string): string {
     return `${text("system") || "no system yet"} at ${at}; ${text("form") || "share"} form`;
   }
   if (kind === "price change") return priceChangeInALine(written, text);
+  if (kind === "figure") {
+    const of = text("system") || text("data") || text("price change") || "no cell yet";
+    return [`${text("show") || "nothing shown yet"} of ${of}`, listed(written.goods)].filter(Boolean).join("; ");
+  }
   return source.split("\n").find((line) => line.trim() !== "") ?? "nothing written yet";
 }
 

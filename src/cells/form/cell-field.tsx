@@ -1,10 +1,11 @@
+import { capital } from "../../../shared/study/words.ts";
 import type { FormProps } from "../types.ts";
 import { asChoices, ChoiceField } from "./fields.tsx";
 import type { Written } from "./written.ts";
 
 interface CellFieldProps {
   /** What is read, and the key that names it. */
-  readonly kind: "data" | "system";
+  readonly kind: "data" | "system" | "price change";
   readonly written: Written;
   readonly readOnly: boolean;
   readonly context: FormProps["context"];
@@ -18,7 +19,7 @@ export const namesOf = ({ cells }: FormProps["context"], kind: CellFieldProps["k
 export function CellField({ kind, written, readOnly, context }: CellFieldProps) {
   return (
     <ChoiceField
-      label={kind === "data" ? "Data" : "System"}
+      label={capital(kind)}
       value={written.text(kind)}
       choices={asChoices(namesOf(context, kind))}
       readOnly={readOnly}

@@ -1,11 +1,9 @@
 import type { Annotation, Data } from "plotly.js-dist-min";
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { capital } from "../../../shared/study/words.ts";
+import { dashOf, seriesOf, standApart, ticksBetween } from "../../components/plot-series.ts";
 import type { PlotlyFigure, TokenColour } from "../../components/plotly-chart.tsx";
 
-const SERIES = ["s1", "s2", "s3", "s4", "s5", "s6"];
-/** Beyond six goods the colours come again, dashed. */
-const DASHES = ["solid", "dash", "dot"] as const;
 /** Labels at the lines' ends stand at least this part of the axis apart. */
 const APART = 0.062;
 
@@ -18,8 +16,8 @@ export function engelFigure({ engel, fitted }: EngelCurves, colour: TokenColour)
   const lines = fitted.goods.map((name, i) => ({
     name: capital(name),
     shares: engel.shares[i],
-    colour: colour(SERIES[i % SERIES.length]),
-    dash: DASHES[Math.floor(i / SERIES.length) % DASHES.length],
+    colour: colour(seriesOf(i)),
+    dash: dashOf(i),
   }));
   const highest = Math.max(0, ...lines.flatMap(({ shares }) => shares)) * 1.08;
   const lowest = Math.min(0, ...lines.flatMap(({ shares }) => shares)) * 1.08;
@@ -71,24 +69,4 @@ export function engelFigure({ engel, fitted }: EngelCurves, colour: TokenColour)
       annotations,
     },
   };
-}
-
-/** Numbers that begin with 1, 2 or 5, as many as lie between two totals. */
-export function ticksBetween(low: number, high: number): number[] {
-  const decades = Array.from(
-    { length: Math.ceil(Math.log10(high)) - Math.floor(Math.log10(low)) + 1 },
-    (_, i) => Math.floor(Math.log10(low)) + i,
-  );
-  const ticks = decades.flatMap((decade) => [1, 2, 5].map((digit) => Number(`${digit}e${decade}`)));
-  return ticks.filter((tick) => tick >= low && tick <= high);
-}
-
-/** The values in their order, each moved up as little as keeps it `apart` from the one below. */
-export function standApart(values: readonly number[], apart: number): number[] {
-  const order = values.map((_, i) => i).sort((one, two) => values[one] - values[two]);
-  const placed = [...values];
-  order.forEach((i, rank) => {
-    if (rank > 0) placed[i] = Math.max(placed[i], placed[order[rank - 1]] + apart);
-  });
-  return placed;
 }

@@ -163,7 +163,9 @@ describe("wrong words", () => {
     [
       "sistem",
       "",
-      ["sistem is not a kind of cell (data, system, tests, elasticities, slutsky, price change, text): the nearest is system."],
+      [
+        "sistem is not a kind of cell (data, system, tests, elasticities, slutsky, price change, figure, text): the nearest is system.",
+      ],
     ],
     ["data", "just words", ["A data cell is written as keys, each with a colon, a space and its value."]],
     [

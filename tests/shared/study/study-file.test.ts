@@ -66,7 +66,10 @@ describe("parseStudyFile", () => {
       "cells:\n  a!: {kind: data}",
       ["a!: a cell's name begins with a letter and has letters, digits, spaces, - and _ only."],
     ],
-    ["cells:\n  a: {upload: u}", ["a needs kind: one of data, system, tests, elasticities, slutsky, price change, text."]],
+    [
+      "cells:\n  a: {upload: u}",
+      ["a needs kind: one of data, system, tests, elasticities, slutsky, price change, figure, text."],
+    ],
     ["- a", ["A study file has the keys study and cells."]],
     ["cells: {a: {kind: data}, a: {kind: data}}", ["a is given twice; keep one."]],
   ])("refuses %j", (text, sentences) => {

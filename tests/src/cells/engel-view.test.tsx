@@ -1,7 +1,8 @@
 import { render, screen, waitFor, within } from "@testing-library/react";
 import { afterEach, beforeEach, expect, test, vi } from "vitest";
-import { engelFigure, standApart, ticksBetween } from "../../../src/cells/system/engel-figure.ts";
+import { engelFigure } from "../../../src/cells/system/engel-figure.ts";
 import { EngelView } from "../../../src/cells/system/engel-view.tsx";
+import { standApart, ticksBetween } from "../../../src/components/plot-series.ts";
 import { sampleSystem } from "../../support/sample-findings.ts";
 
 const drawn = vi.hoisted(() => ({ react: vi.fn(), purge: vi.fn(), downloadImage: vi.fn() }));
