@@ -219,7 +219,12 @@ function runCell(
     return runFigure(specification, isBasis ? system : undefined, data, control);
   }
   if (system?.kind !== "system") throw new Error(`${name} has no specification`);
-  if (specification?.kind === "elasticities") return runElasticities(specification, system, data, control);
+  if (specification?.kind === "elasticities") {
+    const { within = "" } = specification;
+    const finding = found.get(within);
+    const broader = finding?.kind === "system" ? { finding, data: prepared.get(within)! } : undefined;
+    return runElasticities(specification, system, data, control, broader);
+  }
   if (specification?.kind === "price change") return runPriceChange(specification, system, data, control);
   if (specification?.kind !== "slutsky") throw new Error(`${name} has no specification`);
   return runSlutsky(specification, system, data, control);

@@ -15,18 +15,23 @@ export interface CellJob {
   readonly fingerprint: string;
   readonly specification: CellSpecification;
   /** The data cell at the root; of a data cell, itself. */
-  readonly data: {
-    readonly fingerprint: string;
-    readonly specification: DataSpecification;
-    readonly uploadId: string;
-    /** Kept beside the finding, to say later that another file took its place. */
-    readonly uploadSha256?: string;
-  };
+  readonly data: JobData;
   /** Where the system's finding is stored and what was asked of it, for what rests on one. */
   readonly systemFingerprint?: string;
   readonly systemSpecification?: SystemSpecification;
   /** Where the price change's finding is stored, for a figure drawn of one. */
   readonly priceChangeFingerprint?: string;
+  /** Of a second, broader system that the cell names. */
+  readonly broader?: { readonly data: JobData; readonly systemFingerprint: string };
+}
+
+/** A data cell, and the upload it reads. */
+interface JobData {
+  readonly fingerprint: string;
+  readonly specification: DataSpecification;
+  readonly uploadId: string;
+  /** Kept beside the finding, to say later that another file took its place. */
+  readonly uploadSha256?: string;
 }
 
 export type ProgressNow = Parameters<RunControl["progress"]>[0];

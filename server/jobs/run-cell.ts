@@ -55,7 +55,13 @@ function find(job: CellJob, db: Database, memory: WorkerMemory, control: RunCont
     return runFigure(specification, basis, data, control);
   }
   const system = storedSystem(job, db);
-  if (specification.kind === "elasticities") return runElasticities(specification, system, data, control);
+  if (specification.kind === "elasticities") {
+    const broader = job.broader && {
+      finding: storedSystem({ ...job.broader, studyId: job.studyId }, db),
+      data: prepared(job.broader, db, memory, control),
+    };
+    return runElasticities(specification, system, data, control, broader);
+  }
   if (specification.kind === "price change") return runPriceChange(specification, system, data, control);
   return runSlutsky(specification, system, data, control);
 }
@@ -81,7 +87,10 @@ export function tableOf(uploadId: string, db: Database, memory: WorkerMemory): U
   return table;
 }
 
-function storedSystem({ studyId, systemFingerprint }: CellJob, db: Database): SystemFinding {
+function storedSystem(
+  { studyId, systemFingerprint }: Pick<CellJob, "studyId" | "systemFingerprint">,
+  db: Database,
+): SystemFinding {
   return systemFinding.parse(storedFinding(studyId, systemFingerprint, "system", db));
 }
 

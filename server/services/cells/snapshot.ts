@@ -34,25 +34,36 @@ export class Snapshot {
   /** The job that answers a cell; none while it, or one it reads, has problems. */
   job(studyId: string, cell: ResolvedCell): CellJob | undefined {
     const fingerprint = this.fingerprints.get(cell.id);
-    const data = this.#dataBelow(cell);
+    const data = this.#jobData(this.#dataBelow(cell));
     const specification = cell.specification;
-    const dataFingerprint = data && this.fingerprints.get(data.id);
-    if (!specification || !fingerprint || data?.specification?.kind !== "data" || !dataFingerprint) return undefined;
-    const upload = uploadRead(this.#uploads, data.specification);
-    if (!upload) return undefined;
+    if (!specification || !fingerprint || !data) return undefined;
     return {
       studyId,
       fingerprint,
       specification,
-      data: {
-        fingerprint: dataFingerprint,
-        specification: data.specification,
-        uploadId: upload.id,
-        uploadSha256: upload.sha256,
-      },
+      data,
       ...this.#systemBelow(specification),
       ...this.#priceChangeBelow(specification),
+      ...this.#broaderSystem(specification),
     };
+  }
+
+  #jobData(cell: ResolvedCell | undefined): CellJob["data"] | undefined {
+    const fingerprint = cell && this.fingerprints.get(cell.id);
+    if (cell?.specification?.kind !== "data" || !fingerprint) return undefined;
+    const upload = uploadRead(this.#uploads, cell.specification);
+    return (
+      upload && { fingerprint, specification: cell.specification, uploadId: upload.id, uploadSha256: upload.sha256 }
+    );
+  }
+
+  /** The second system a cell names, which must be there when the cell has a fingerprint. */
+  #broaderSystem(specification: CellSpecification): Pick<CellJob, "broader"> {
+    if (specification.kind !== "elasticities" || specification.within === undefined) return {};
+    const system = this.#byName.get(specification.within);
+    const systemFingerprint = this.fingerprintOf(specification.within);
+    const data = this.#jobData(system && this.#dataBelow(system));
+    return data && systemFingerprint ? { broader: { data, systemFingerprint } } : {};
   }
 
   #systemBelow(specification: CellSpecification): Pick<CellJob, "systemFingerprint" | "systemSpecification"> {
