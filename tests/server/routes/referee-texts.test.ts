@@ -113,6 +113,23 @@ describe("a text sealed with the matrix", () => {
   });
 
   test.each([
+    ["at one household's row", "at: {row: 12}", { pointName: "row 12" }, /levy stands at row 12, .* of one household/],
+    [
+      "borne by a group of a few",
+      "at: mean",
+      { pointName: "mean", incidence: { groups: [{ name: "urban", rows: 9 }], without: [] } },
+      /levy has a group of 9 rows \(urban\)/,
+    ],
+  ])("is refused when it quotes a price change %s", async (how, at, found, sentence) => {
+    // As much of a finding as is looked at before it is refused.
+    const finding = { kind: "price change", ...found } as unknown as Finding;
+    const name = `${how.split(" ")[0]} levy`;
+    put(name, "price change", `system: base\n${at}\nprices: {dairy: {per cent: 10}}`, ["base"], finding);
+    const [status, told] = await refusal(write(`of ${name}`, `{${name}: cv}`, [name]));
+    expect([status, told]).toEqual([409, expect.stringMatching(sentence)]);
+  });
+
+  test.each([
     [
       "by name",
       "As ilse  MARCHETTI argues.",
