@@ -230,7 +230,7 @@ export const incidence = z.strictObject({
   /** Why a group has no row in which the answer is defined. */
   without: z.array(z.strictObject({ name: z.string(), rows: count, undefined: z.string() })),
   /** The worst rows first, at most 500, and how many there are. */
-  named: z.array(namedRow).max(500),
+  brokenRows: z.array(namedRow).max(500),
   namedRows: count,
   /** Rows whose new price lies outside the prices of the sample, by good. */
   unseen: z.array(unseenPrice),

@@ -82,7 +82,7 @@ export function incidenceOver(
       : [],
     all: describedGroup("all rows", total, allDerivatives(described), told),
     without: found.flatMap(({ group, sums }) => withoutAnswer(group, sums, fitted.form)),
-    named: named.worst.map(({ named: { gap, ...row } }) => ({
+    brokenRows: named.worst.map(({ named: { gap, ...row } }) => ({
       ...row,
       ...(gap && { notDefined: gapInWords(gap, fitted.form) }),
     })),

@@ -14,7 +14,7 @@ const outsideWords = ({ outside }: NamedRow) =>
     .join("; ");
 
 /** Rows without an answer, or with a share outside 0 to 1: worst first, by their number in the upload. */
-export function NamedRows({ incidence: { named, namedRows } }: { incidence: Incidence }) {
+export function NamedRows({ incidence: { brokenRows: named, namedRows } }: { incidence: Incidence }) {
   const [all, setAll] = useState(false);
   if (named.length === 0) return null;
   const shown = all ? named : named.slice(0, FIRST);

@@ -1,4 +1,5 @@
 import { beforeAll, describe, expect, it } from "vitest";
+import { withoutHouseholds } from "../../../../server/bundle/without-households.ts";
 import { runPriceChange, runSystem } from "../../../../server/engine/cells/index.ts";
 import type { PreparedData } from "../../../../server/engine/columns/prepared-data.ts";
 import { QUIET, type RunControl } from "../../../../server/engine/run.ts";
@@ -44,7 +45,7 @@ describe("over many rows", () => {
     expect(other.derivativeRows!.of).toBe(many.rows);
     expect(other.derivativeRows!.used).toBeLessThan(many.rows / 2);
     expect(other.namedRows).toBe(TIMES * one.namedRows);
-    expect(other.named).toHaveLength(Math.min(500, other.namedRows));
+    expect(other.brokenRows).toHaveLength(Math.min(500, other.namedRows));
     for (const [a, b] of [[one.all, other.all], ...one.groups.map((group, g) => [group, other.groups[g]] as const)]) {
       const [left, right] = [a.welfare!.equivalent, b.welfare!.equivalent];
       expect(Math.abs(right.value / left.value - 1)).toBeLessThan(1e-12);
@@ -61,4 +62,11 @@ describe("over many rows", () => {
     expect(fractions).toEqual(fractions.toSorted((a, b) => a - b));
     expect(fractions.at(-1)).toBe(1);
   });
+});
+
+it("leaves no row of the upload where findings go without households", () => {
+  const plain = JSON.stringify(withoutHouseholds(over(few)));
+  expect(over(few).incidence!.brokenRows.length).toBeGreaterThan(0);
+  expect(plain).not.toContain("brokenRows");
+  expect(plain).toContain('"namedRows"');
 });

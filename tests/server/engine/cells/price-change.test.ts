@@ -193,7 +193,7 @@ describe("rows without an answer", () => {
 
   it("are counted and named, and in none of the means", () => {
     const finding = runPriceChange(specificationOf("price change", `system: s\n${LEVY}\n`), needy(), data);
-    const { all, named, namedRows } = finding.incidence!;
+    const { all, brokenRows: named, namedRows } = finding.incidence!;
     const { fitted } = needy();
     const answers = [...data.logTotal.keys()].map((t) =>
       householdMeasures(
@@ -218,7 +218,7 @@ describe("rows without an answer", () => {
   });
 
   it("are, where a share leaves 0 to 1, in the means as they are, and named with the share", () => {
-    const { all, named } = run("prices: {brand1: {per cent: 60}}").incidence!;
+    const { all, brokenRows: named } = run("prices: {brand1: {per cent: 60}}").incidence!;
     expect(all.outside.household + all.outside.system).toBeGreaterThan(0);
     const [worst] = named;
     expect(worst.notDefined).toBeUndefined();
