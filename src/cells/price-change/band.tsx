@@ -5,6 +5,7 @@ import { VerdictStrip } from "../../components/verdict-strip.tsx";
 import { Headline } from "../headline.tsx";
 import type { BandProps } from "../types.ts";
 import { stripOf } from "../verdicts.ts";
+import { ReadWithCare } from "./care.tsx";
 import { FindingTable } from "./finding-table.tsx";
 import { PriceChangeNotes } from "./notes.tsx";
 
@@ -16,6 +17,7 @@ export function PriceChangeBand({ finding }: BandProps<"price change">) {
   return (
     <div className="space-y-3">
       <Headline sentence={priceChangeSentence(finding)} />
+      <ReadWithCare finding={finding} />
       <VerdictStrip label={LABEL} verdicts={stripOf(verdictsOf(finding.checks, finding.tests))} />
       <FindingTable table={first} />
       <PriceChangeNotes finding={finding} />

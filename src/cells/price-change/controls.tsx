@@ -1,3 +1,4 @@
+import { printPercent, printQuantity } from "../../../shared/tables/numbers.ts";
 import { Button, Word } from "../../components/button.tsx";
 import { Unreadable } from "../form/fields.tsx";
 import { readWritten } from "../form/written.ts";
@@ -9,7 +10,7 @@ import { useTrial } from "./trial.ts";
 
 /** Rulers of every price and of total expenditure: who reads may try, who writes may keep what was tried. */
 export function PriceRulers({ finding, form }: OpenProps<"price change">) {
-  const { question, isTried, ask } = useTrial(finding);
+  const { question, isTried, shown, ask } = useTrial(finding);
   const rest = atRest(finding, question);
   return (
     <section aria-label="Try other prices" className="no-print mb-6 border-rule2 border-b pb-5">
@@ -33,6 +34,7 @@ export function PriceRulers({ finding, form }: OpenProps<"price change">) {
         />
       ))}
       <div className="mt-4">
+        <InShort finding={shown} />
         {isTried ? (
           <Tried finding={finding} form={form} />
         ) : (
@@ -40,6 +42,18 @@ export function PriceRulers({ finding, form }: OpenProps<"price change">) {
         )}
       </div>
     </section>
+  );
+}
+
+/** What is tried, in one line: where the page is narrow, the finding stands far below the rulers. */
+function InShort({ finding: { at } }: OpenProps<"price change">) {
+  const loss = at.welfare?.compensating ?? at.secondOrder;
+  const name = at.welfare ? "Compensating variation" : "Loss to second order";
+  return (
+    <p className="type-small mb-2.5 tabular-nums">
+      {name} {printQuantity(loss.value, "money")} ({printQuantity(loss.error, "money")}),{" "}
+      {printPercent(loss.value / at.totalBefore)} of expenditure.
+    </p>
   );
 }
 

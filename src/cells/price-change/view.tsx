@@ -54,18 +54,18 @@ export function PriceChangeOpen({ finding, form }: OpenProps<"price change">) {
         <PictureSection finding={shown} by={which === "slutsky" ? "slutsky" : "hicks"} />
       </div>
       <div className="grid gap-x-10 gap-y-6 min-[1280px]:grid-cols-[minmax(0,11fr)_minmax(0,10fr)]">
-        <section aria-labelledby={`${id}-prices`} className="min-w-0 space-y-2">
-          <h2 id={`${id}-prices`} className="type-section">
-            Prices and shares
-          </h2>
-          <PricesView finding={shown} />
-        </section>
         <section aria-labelledby={`${id}-cost`} className="min-w-0 space-y-2">
           <h2 id={`${id}-cost`} className="type-section">
             What it costs at {withArticle(shown.pointName)}
           </h2>
           <FindingTable table={welfareTable(shown)} />
           <CopyTable table={welfareTable(shown)} />
+        </section>
+        <section aria-labelledby={`${id}-prices`} className="min-w-0 space-y-2">
+          <h2 id={`${id}-prices`} className="type-section">
+            Prices and shares
+          </h2>
+          <PricesView finding={shown} />
         </section>
       </div>
       {shown.incidence && (
@@ -84,7 +84,7 @@ export function PriceChangeOpen({ finding, form }: OpenProps<"price change">) {
           Who bears it is counted over all rows by the server once a price change is kept.
         </p>
       )}
-      <PriceChangeNotes finding={shown} afterCare />
+      <PriceChangeNotes finding={shown} />
     </div>
   );
 }

@@ -36,8 +36,10 @@ export function frameOf({ bundles, budgets }: OnePrice, { left, right, top, bott
   const steep = Math.max(budgets.before.price, budgets.after.price) * spread;
   const tall = Math.max(Math.max(...rests) - Math.min(...rests), steep);
   const centre = (Math.max(...rests) + Math.min(...rests)) / 2;
-  const low = Math.max(0, centre - 1.25 * tall);
-  const high = centre + 1.25 * tall;
+  // The lowest line reaches the right edge, where lines are named and the compensation is measured.
+  const ends = [budgets.before, budgets.after].map(({ price, total }) => total - price * to);
+  const low = Math.max(0, Math.min(centre - 1.1 * tall, ...ends) - 0.06 * tall);
+  const high = centre + 1.1 * tall;
   return {
     x: linearScale(from, to, left, right),
     y: linearScale(low, high, bottom, top),

@@ -1,7 +1,9 @@
 import type { Spot } from "./curve.ts";
 import type { Frame } from "./frame.ts";
-import { CLEAR } from "./lines.tsx";
 import type { OnePrice } from "./one-price.ts";
+
+/** Words over lines keep a clear edge. */
+const CLEAR = { paintOrder: "stroke", stroke: "var(--recto)", strokeWidth: 4, strokeLinejoin: "round" } as const;
 
 type Which = "before" | "compensated" | "after";
 

@@ -4,16 +4,19 @@ import { capital } from "../../../../shared/study/words.ts";
 import { digitsForAll, printFixed } from "../../../../shared/tables/numbers.ts";
 import { BottomAxis } from "../../../components/chart-axis.tsx";
 import { useChartWidth } from "../../../components/chart-width.ts";
+import { EffectAxis } from "./effect-axis.tsx";
 import { type Frame, frameOf } from "./frame.ts";
-import { LineNames, Lines } from "./lines.tsx";
+import { LineNames } from "./line-names.tsx";
+import { Lines } from "./lines.tsx";
 import { Bundles } from "./marks.tsx";
-import { CompensationBar, EffectBars } from "./measures.tsx";
 import { type Compensation, onePrice } from "./one-price.ts";
 import { PictureNumbers } from "./picture-numbers.tsx";
 import { pictureWords } from "./picture-words.ts";
 
 const TOP = 30;
 const LEFT = 46;
+/** Room for the names of lines. */
+const RIGHT = 84;
 const DRAWN_FOR = 430;
 
 interface PictureProps {
@@ -29,7 +32,7 @@ export function PriceChangePicture({ finding, good, by }: PictureProps) {
   const one = useMemo(() => onePrice(finding, good, by), [finding, good, by]);
   const height = Math.round(Math.min(410, Math.max(300, width * 0.8)));
   const bottom = height - 62;
-  const edges = { left: LEFT, right: width - 10, top: TOP, bottom };
+  const edges = { left: LEFT, right: width - RIGHT, top: TOP, bottom };
   const frame = frameOf(one, edges);
   const { decimals } = digitsForAll([one.bundles.before.quantity]);
   const digits = Math.min(decimals, 3);
@@ -58,8 +61,7 @@ export function PriceChangePicture({ finding, good, by }: PictureProps) {
         </text>
         <LeftAxis frame={frame} edges={edges} />
         <Lines frame={frame} one={one} clip={clip} />
-        <CompensationBar frame={frame} one={one} by={by} />
-        <LineNames frame={frame} one={one} />
+        <LineNames frame={frame} one={one} by={by} />
         <Bundles frame={frame} one={one} bottom={bottom} />
         <BottomAxis
           scale={frame.x}
@@ -67,8 +69,8 @@ export function PriceChangePicture({ finding, good, by }: PictureProps) {
           ticks={frame.xTicks.ticks}
           print={(tick) => printFixed(tick, frame.xTicks.decimals)}
         />
-        <EffectBars frame={frame} one={one} bottom={bottom} decimals={digits} hatch={hatch} />
-        <text x={edges.right} y={TOP - 16} textAnchor="end" fill="var(--ink2)">
+        <EffectAxis frame={frame} one={one} y={bottom + 33} decimals={digits} hatch={hatch} />
+        <text x={width} y="14" textAnchor="end" fill="var(--ink2)">
           across: {capital(good)}, quantity
         </text>
       </svg>
