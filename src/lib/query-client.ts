@@ -15,9 +15,11 @@ export function createQueryClient(onSignedOut: () => void): QueryClient {
     defaultOptions: {
       queries: {
         staleTime: 15_000,
+        networkMode: "always",
         retry: (failures, error) => error instanceof ApiRefusal && error.status === 0 && failures < 2,
       },
-      mutations: { retry: false },
+      // Without a network a request is made all the same: it fails at once, and whoever waits is told.
+      mutations: { retry: false, networkMode: "always" },
     },
   });
 }

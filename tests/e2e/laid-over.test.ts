@@ -154,3 +154,29 @@ it("nor has the list of columns to choose from", async () => {
   expect.soft(watched.takeFaults()).toEqual([]);
   await page.context().close();
 });
+
+it("a dialog keeps what is typed while nothing answers, and one that cannot be fetched leaves the page as it is", async () => {
+  const page = await openPage();
+  await page.goto(`/studies/${studyId}`);
+  await choose(page, "People");
+  const dialog = page.getByRole("dialog");
+  const address = dialog.getByLabel("Email");
+  await address.fill("nora.lind@vihe.example");
+  await page.route(/\/(api|assets)\//, (route) => route.abort());
+  await dialog.getByRole("button", { name: "Invite", exact: true }).click();
+  await dialog.getByText("The installation does not answer. Check the connection, then try again.").waitFor();
+  expect(await address.inputValue()).toBe("nora.lind@vihe.example");
+  await page.keyboard.press("Escape");
+  await choose(page, "Keys");
+  const note = page.getByRole("complementary", { name: "Not fetched" });
+  await note.waitFor();
+  for (const theme of THEMES) {
+    await turn(page, theme);
+    await picture(page, `not-fetched-${theme}`);
+    expect.soft(await faultsOf(page, "[aria-label='Not fetched']"), theme).toEqual([]);
+  }
+  await note.getByRole("button", { name: "Stay on the page" }).click();
+  await note.waitFor({ state: "hidden" });
+  expect(await page.getByRole("heading", { level: 1 }).innerText()).toContain("Food demand in Velmark");
+  await page.context().close();
+});

@@ -1,4 +1,4 @@
-import { lazy, type ReactNode, Suspense, useState, useSyncExternalStore } from "react";
+import { lazy, type ReactNode, useState, useSyncExternalStore } from "react";
 import type { OwnAccount } from "../../../shared/schemas/accounts.ts";
 import { Button } from "../../components/button.tsx";
 import { Fault } from "../../components/field.tsx";
@@ -13,6 +13,7 @@ import { sentenceOf } from "../../lib/api.ts";
 import { dateInWords } from "../../lib/dates.ts";
 import { formatChoice, onFormatsChange } from "../../lib/formats.ts";
 import { usePageTitle } from "../../lib/page-title.ts";
+import { LaidOver } from "../laid-over.tsx";
 import { OwnBar } from "../own-bar.tsx";
 import { useForget } from "../use-leave.ts";
 
@@ -40,11 +41,11 @@ export default function AccountPage() {
           {account && <Parts account={account} onRemove={() => setRemoving(true)} />}
         </div>
       </main>
-      <Suspense>
-        {removing && account && (
+      {removing && account && (
+        <LaidOver onClose={() => setRemoving(false)}>
           <RemoveAccountDialog account={account} onClose={() => setRemoving(false)} onRemoved={forget} />
-        )}
-      </Suspense>
+        </LaidOver>
+      )}
     </>
   );
 }

@@ -1,4 +1,4 @@
-import { lazy, Suspense, useState } from "react";
+import { lazy, useState } from "react";
 import { Link, useNavigate } from "react-router-dom";
 import { Button, LinkWord } from "../../components/button.tsx";
 import { TopBar } from "../../components/top-bar.tsx";
@@ -16,6 +16,7 @@ import { sentenceOf } from "../../lib/api.ts";
 import { usePageTitle } from "../../lib/page-title.ts";
 import { pages } from "../../lib/paths.ts";
 import { installationInWords } from "../installation-words.ts";
+import { LaidOver } from "../laid-over.tsx";
 import { useLeave } from "../use-leave.ts";
 
 const NewStudyDialog = lazy(() => import("../../features/studies/new-study-dialog.tsx"));
@@ -75,12 +76,15 @@ export default function StudiesPage() {
           {!studies && !error && <p role="status">Fetching the studies</p>}
         </div>
       </main>
-      <Suspense>
-        {dialog === "new study" && (
-          <NewStudyDialog onClose={close} onCreated={(studyId) => navigate(pages.study(studyId))} />
-        )}
-        {dialog === "settings" && <SettingsDialog onClose={close} />}
-      </Suspense>
+      {dialog && (
+        <LaidOver key={dialog} onClose={close}>
+          {dialog === "new study" ? (
+            <NewStudyDialog onClose={close} onCreated={(studyId) => navigate(pages.study(studyId))} />
+          ) : (
+            <SettingsDialog onClose={close} />
+          )}
+        </LaidOver>
+      )}
     </>
   );
 }

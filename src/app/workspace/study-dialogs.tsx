@@ -1,7 +1,8 @@
-import { lazy, Suspense } from "react";
+import { lazy } from "react";
 import { useNavigate } from "react-router-dom";
 import { isSealable, type Sealable } from "../../features/referee-copies/sealable.ts";
 import { pages } from "../../lib/paths.ts";
+import { LaidOver } from "../laid-over.tsx";
 import type { OpenStudy } from "./open-study.ts";
 import type { Standing } from "./standing.ts";
 import type { StudyDialog } from "./study-bar.tsx";
@@ -24,7 +25,13 @@ interface StudyDialogsProps extends OpenStudy {
 
 /** What is laid over the study's page; each is loaded when it is first asked for. */
 export function StudyDialogs(props: StudyDialogsProps) {
-  return <Suspense>{props.open && <Opened {...props} open={props.open} />}</Suspense>;
+  const { open, onClose } = props;
+  if (open === undefined) return null;
+  return (
+    <LaidOver key={open} onClose={onClose}>
+      <Opened {...props} open={open} />
+    </LaidOver>
+  );
 }
 
 function Opened({

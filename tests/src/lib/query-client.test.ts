@@ -1,3 +1,4 @@
+import { onlineManager } from "@tanstack/react-query";
 import { describe, expect, it, vi } from "vitest";
 import { ApiRefusal } from "../../../src/lib/api.ts";
 import { createQueryClient } from "../../../src/lib/query-client.ts";
@@ -13,5 +14,16 @@ describe("the query client", () => {
     expect(onSignedOut).not.toHaveBeenCalled();
     await client.fetchQuery({ queryKey: ["studies"], queryFn: refused(401) }).catch(() => {});
     expect(onSignedOut).toHaveBeenCalledOnce();
+  });
+
+  it("lets what is asked without a network fail, so that it is said, rather than wait in silence", async () => {
+    onlineManager.setOnline(false);
+    try {
+      const client = createQueryClient(() => {});
+      const mutation = client.getMutationCache().build(client, { mutationFn: refused(0) });
+      await expect(mutation.execute(undefined)).rejects.toBeInstanceOf(ApiRefusal);
+    } finally {
+      onlineManager.setOnline(true);
+    }
   });
 });
