@@ -1,6 +1,7 @@
 import type { CellKind, Finding, FindingOf } from "../../shared/schemas/cell.ts";
 import type { BundledCell } from "../../shared/schemas/replication-bundle.ts";
 import type { SystemSpecification } from "../../shared/schemas/system.ts";
+import type { UnconditionalFormula } from "../../shared/schemas/two-stage.ts";
 import { canonicalJson } from "../../shared/study/canonical-json.ts";
 import type { CellSource } from "../../shared/study/cell-source.ts";
 import { removeKey, setKey } from "../../shared/study/edit.ts";
@@ -11,7 +12,7 @@ import { tableCsv } from "../../shared/tables/csv.ts";
 import { tableLatex } from "../../shared/tables/latex.ts";
 import { methodsParagraph, paragraphBibtex, paragraphWithReferences } from "../../shared/tables/methods/paragraph.ts";
 import { FINDING_TABLES } from "../../shared/tables/of-finding.ts";
-import { withoutHouseholds } from "./without-households.ts";
+import { tabledWithoutHouseholds, withoutHouseholds } from "./without-households.ts";
 
 /** A cell that goes into a bundle, with what it found; a text finds nothing that is stored. */
 export interface ContentCell {
@@ -20,6 +21,8 @@ export interface ContentCell {
   readonly finding?: Finding;
   /** Of a system: what was asked, for its methods paragraph. */
   readonly asked?: SystemSpecification;
+  /** Of a system: by which formulas its elasticities are taken to unconditional ones. */
+  readonly unconditional?: readonly UnconditionalFormula[];
 }
 
 export interface TextPart {
@@ -61,7 +64,8 @@ function partsOf(one: ContentCell, stem: string, isWithheld: boolean): { parts: 
   const listed = { name: cell.name, kind: cell.kind as CellKind, ...(fingerprint !== undefined && { fingerprint }) };
   if (finding === undefined) return { parts: [], listed: { ...listed, tables: [] } };
   const file = { name: `findings/${stem}.json`, content: `${canonicalJson(leaving(finding, isWithheld))}\n` };
-  const tables = isWithheld && finding.kind === "data" ? [] : tableParts(finding, stem);
+  const tabled = isWithheld ? tabledWithoutHouseholds(finding) : finding;
+  const tables = tabled === undefined ? [] : tableParts(tabled, stem);
   return {
     parts: [file, ...tables, ...systemParts(one, stem)],
     listed: { ...listed, finding: file.name, tables: tables.map(({ name }) => name) },
@@ -84,11 +88,11 @@ function tableParts<K extends CellKind>(finding: FindingOf<K>, stem: string): Te
   });
 }
 
-function systemParts({ finding, asked }: ContentCell, stem: string): TextPart[] {
+function systemParts({ finding, asked, unconditional = [] }: ContentCell, stem: string): TextPart[] {
   if (finding?.kind !== "system") return [];
   const covariance = { name: `coefficients/${stem}.csv`, content: covarianceCsv(finding) };
   if (asked === undefined) return [covariance];
-  const paragraph = methodsParagraph({ specification: asked, finding });
+  const paragraph = methodsParagraph({ specification: asked, finding, unconditional });
   return [
     covariance,
     { name: `methods/${stem}.txt`, content: paragraphWithReferences(paragraph) },

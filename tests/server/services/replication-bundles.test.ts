@@ -31,6 +31,7 @@ const SOURCES = new Map([
   ["week 12", ["slutsky", "system: base\nat: {row: 12}\n"]],
   ["eta", ["elasticities", "system: base\n"]],
   ["laws", ["tests", "system: base\n"]],
+  ["levy", ["price change", "system: base\nprices: {good1: {ad valorem: 20}}\n"]],
   ["argument", ["text", "Brand 1 has {base: eta, good1}.\n"]],
   ["draft", ["system", "data: weeks\nform: no such form\n"]],
   ["draft matrix", ["slutsky", "system: draft\n"]],
@@ -225,7 +226,7 @@ describe("a bundle without its data", () => {
       /move with its coefficients/,
     );
     for (const part of parts.filter((part) => part.startsWith("findings/"))) {
-      for (const key of ["brokenRows", "firstRows", "rowNumbers", "cycle"]) {
+      for (const key of ["brokenRows", "firstRows", "rowNumbers", "cycle", "priceRange", "unseen"]) {
         expect(unzipped(path, part), `${key} in ${part}`).not.toContain(`"${key}"`);
       }
     }
