@@ -97,7 +97,7 @@ const PLACES: readonly Place[] = [
   {
     name: "installation-journal",
     path: () => "/administration/journal",
-    ready: (page) => page.getByText("Salt by week").waitFor(),
+    ready: (page) => page.getByText(/deleted a study for good|study was deleted for good/i).waitFor(),
     signedIn: true,
   },
   {

@@ -177,6 +177,6 @@ it("a dialog keeps what is typed while nothing answers, and one that cannot be f
   }
   await note.getByRole("button", { name: "Stay on the page" }).click();
   await note.waitFor({ state: "hidden" });
-  expect(await page.getByRole("heading", { level: 1 }).innerText()).toContain("Food demand in Velmark");
+  expect(await page.getByRole("heading", { level: 1 }).textContent()).toContain("Food demand in Velmark");
   await page.context().close();
 });
