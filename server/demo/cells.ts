@@ -60,6 +60,12 @@ groups: {of: expenditure per equivalent adult, quantiles: 5}
 equivalence scale: {square root of: members}
 `;
 
+const DEMAND = `# how far a levy can move what is bought
+system: base
+show: demand curve
+goods: [Sweet drinks]
+`;
+
 const LINEAR = `# how much the exact price index matters
 data: survey
 form: la-aids
@@ -102,6 +108,7 @@ const DEMO_CELLS: DemoStudy["cells"] = [
   { name: "ninetieth", kind: "slutsky", source: NINETIETH },
   { name: "fifths", kind: "elasticities", source: FIFTHS },
   { name: "levy", kind: "price change", source: LEVY },
+  { name: "demand", kind: "figure", source: DEMAND },
   { name: "linear", kind: "system", source: LINEAR },
   { name: "needs", kind: "system", source: NEEDS },
   { name: "argument", kind: "text", source: ARGUMENT },

@@ -13,8 +13,8 @@ export const FIGURE_TITLES: Readonly<Record<FigureName, string>> = {
   elasticities: "Elasticities with intervals",
   "fit of shares": "Observed shares against predicted ones",
   "largest eigenvalue": "Largest eigenvalue against total expenditure",
-  incidence: "Loss as a part of expenditure, by group",
-  "shares by group": "Observed budget shares by group",
+  incidence: "Loss as a part of expenditure",
+  "shares by group": "Observed budget shares",
   "price distribution": "How the prices paid are spread",
 };
 
@@ -39,6 +39,7 @@ export function figureSentence(finding: FigureFinding): string {
 }
 
 const share = (value: number) => printQuantity(value, "share");
+const percent = (value: number) => printPercent(value);
 const money = (value: number) => printQuantity(value, "money");
 const at = ({ pointName }: FigureFinding) => withArticle(pointName ?? "mean");
 
@@ -65,11 +66,11 @@ const undefinedPoints = ({ points, of }: DrawnOf<"engel curves">["leftOut"]) =>
 function engelSentences({ drawn, ...finding }: FindingOfFigure<"engel curves">): string[] {
   const { totals, curves, leftOut } = drawn;
   const told = mostMoved(curves.map(({ good, values }) => ({ name: good, values })));
-  const parts = told.map(({ name, from, to }) => `that of ${name} ${moves(from, to, share)}`);
+  const parts = told.map(({ name, from, to }) => `that of ${name} ${moves(from, to, percent)}`);
   const [first, ...others] = [parts[0].replace("that of", "the predicted share of"), ...parts.slice(1)];
   const range = `between expenditures of ${money(totals[0])} and ${money(totals[totals.length - 1])}`;
   return [
-    `${capital([first, ...others].join(", "))} ${range}, with prices at ${at(finding as FigureFinding)}.`,
+    `${capital([first, ...others].join(", "))} ${range}, at prices of ${at(finding as FigureFinding)}.`,
     ...undefinedPoints(leftOut),
   ];
 }
@@ -106,7 +107,7 @@ function elasticitySentences({ drawn, ...finding }: FindingOfFigure<"elasticitie
   };
   const where = groupedBy ? `By ${groupedBy.of}` : `At ${at(finding as FigureFinding)}`;
   return [
-    `${where} the expenditure elasticity ${range("expenditure")}, the own-price elasticity ${range("own")}.`,
+    `${where} the expenditure elasticity ${range("expenditure")}, the own-price elasticity ${range("own").replace("lies ", "")}.`,
     ...without.map(({ name, undefined: reason }) => `${capital(name)} has none: ${reason}`),
   ];
 }
@@ -173,10 +174,10 @@ function sharesSentences({ drawn }: FindingOfFigure<"shares by group">): string[
       .map(({ name, values }) => ({ name, low: Math.min(...values), high: Math.max(...values) }))
       .reduce((one, other) => (other.high - other.low > one.high - one.low ? other : one));
     return [
-      `By ${groupedBy.of} the mean share of ${widest.name} differs most, between ${share(widest.low)} and ${share(widest.high)}.`,
+      `By ${groupedBy.of} the mean share of ${widest.name} differs most, between ${percent(widest.low)} and ${percent(widest.high)}.`,
     ];
   }
-  const parts = mostMoved(series).map(({ name, from, to }) => `that of ${name} ${moves(from, to, share)}`);
+  const parts = mostMoved(series).map(({ name, from, to }) => `that of ${name} ${moves(from, to, percent)}`);
   const [head, ...others] = [parts[0].replace("that of", "The mean share of"), ...parts.slice(1)];
   return [`${[head, ...others].join(", ")} between the ${first.name} and the ${last.name} of ${groupedBy.of}.`];
 }

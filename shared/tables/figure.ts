@@ -26,10 +26,12 @@ export function figureTable(finding: FigureFinding): LabelledTable {
   const { show } = finding.drawn;
   const part = PARTS[show] as (one: FigureFinding) => Part;
   const where = finding.pointName === undefined ? "" : `, ${aside(show)} at ${withArticle(finding.pointName)}`;
-  const of = "good" in finding.drawn ? `, ${finding.drawn.good}` : "";
+  const { drawn } = finding;
+  const of = "good" in drawn ? `, ${drawn.good}` : "";
+  const by = "groupedBy" in drawn && drawn.groupedBy ? `, by ${drawn.groupedBy.of}` : "";
   return {
     name: `figure-${show.replaceAll(" ", "-")}`,
-    title: `${FIGURE_TITLES[show]}${of}${where}`,
+    title: `${FIGURE_TITLES[show]}${of}${by}${where}`,
     ...part(finding),
     notes: figureNotes(finding),
   };

@@ -7,13 +7,25 @@ export const seriesOf = (i: number): (typeof SERIES)[number] => SERIES[i % SERIE
 /** Beyond six series the colours come again dashed, then dotted. */
 export const dashOf = (i: number): (typeof DASHES)[number] => DASHES[Math.floor(i / SERIES.length) % DASHES.length];
 
-/** Numbers that begin with 1, 2 or 5, as many as lie between two totals. */
-export function ticksBetween(low: number, high: number): number[] {
+/** Beginnings of numbers that an axis is marked at, where fewer of them are too few. */
+const DIGITS = [
+  [1, 2, 5],
+  [1, 2, 3, 4, 5, 7],
+  [1, 1.5, 2, 2.5, 3, 3.5, 4, 4.5, 5, 6, 7, 8, 9],
+];
+
+/** Numbers that begin with 1, 2 or 5, as many as lie between two totals; with further digits, where these are fewer than `least`. */
+export function ticksBetween(low: number, high: number, least = 0): number[] {
+  const all = DIGITS.map((digits) => multiplesBetween(low, high, digits));
+  return all.find((ticks) => ticks.length >= least) ?? all[all.length - 1];
+}
+
+function multiplesBetween(low: number, high: number, digits: readonly number[]): number[] {
   const decades = Array.from(
     { length: Math.ceil(Math.log10(high)) - Math.floor(Math.log10(low)) + 1 },
     (_, i) => Math.floor(Math.log10(low)) + i,
   );
-  const ticks = decades.flatMap((decade) => [1, 2, 5].map((digit) => Number(`${digit}e${decade}`)));
+  const ticks = decades.flatMap((decade) => digits.map((digit) => Number(`${digit}e${decade}`)));
   return ticks.filter((tick) => tick >= low && tick <= high);
 }
 

@@ -1,5 +1,5 @@
 import type { Config, Data, Layout } from "plotly.js-dist-min";
-import { useEffect, useState } from "react";
+import { useEffect, useRef, useState } from "react";
 import { Word } from "./button.tsx";
 import { useChartWidth } from "./chart-width.ts";
 
@@ -34,6 +34,7 @@ const FACE = "'Source Sans 3 Variable', sans-serif";
 
 /** Below this many pixels a figure is narrow. */
 const NARROW = 520;
+const nothing = () => {};
 const PICTURE = { width: 960, height: 560 };
 
 const colourOnPage: TokenColour = (name) =>
@@ -76,6 +77,7 @@ export function PlotlyChart({ label, fileName, height: heightOf, figure }: Plotl
   const height = heightWhere(narrow);
   const [plotly, setPlotly] = useState<Plotly>();
   const [failed, setFailed] = useState(false);
+  const drawing = useRef<Promise<void>>(Promise.resolve());
 
   useEffect(() => {
     const element = frame.current;
@@ -103,16 +105,22 @@ export function PlotlyChart({ label, fileName, height: heightOf, figure }: Plotl
     if (element === null || plotly === undefined) return;
     const draw = () => {
       const { data, layout } = figure(colourOnPage, { narrow, height });
-      void plotly.react(element, data, layoutOn(colourOnPage, layout, height), CONFIG);
+      // One after the other: the library goes on drawing for a while after it was asked.
+      drawing.current = drawing.current
+        .then(() => plotly.react(element, data, layoutOn(colourOnPage, layout, height), CONFIG))
+        .then(nothing);
     };
     draw();
     const theme = new MutationObserver(draw);
     theme.observe(document.documentElement, { attributes: true, attributeFilter: ["data-theme"] });
-    return () => {
-      theme.disconnect();
-      plotly.purge(element);
-    };
+    return () => theme.disconnect();
   }, [plotly, figure, height, narrow, frame]);
+
+  useEffect(() => {
+    const element = frame.current;
+    if (element === null || plotly === undefined) return;
+    return () => void drawing.current.then(() => plotly.purge(element));
+  }, [plotly, frame]);
 
   const download = (format: "svg" | "png") => {
     const tall = Math.max(PICTURE.height, heightWhere(false));

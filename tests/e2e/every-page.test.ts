@@ -154,6 +154,20 @@ const PLACES: readonly Place[] = [
     ready: heading("Price elasticities"),
     signedIn: true,
   },
+  {
+    name: "figure-cell",
+    path: cell("demand"),
+    ready: async (page) => {
+      await heading(/^Quantity bought against its own price/)(page);
+      const ticks = page.locator(".js-plotly-plot .ytick text");
+      await eventually(
+        () => ticks.count(),
+        (count) => count > 0,
+        "the demand curve is drawn",
+      );
+    },
+    signedIn: true,
+  },
   { name: "text-cell", path: cell("argument"), ready: heading("Quoted numbers"), signedIn: true },
   { name: "referee-copy", path: copy("with authors"), ready: heading(/^Largest difference/), signedIn: false },
   { name: "blinded-copy", path: copy("without authors"), ready: heading(/^Largest difference/), signedIn: false },

@@ -3,7 +3,7 @@ import { figureSentence } from "../../../shared/tables/figure-words.ts";
 import { Headline } from "../headline.tsx";
 import type { BandProps } from "../types.ts";
 import { FigureChart } from "./figure-chart.tsx";
-import { FigureNotes, FigureVerdicts } from "./notes.tsx";
+import { FigureCaution, FigureNotes, FigureVerdicts } from "./notes.tsx";
 
 /** A figure in its band: sentence, verdicts, the figure at modest height, conventions. */
 export function FigureBand({ finding }: BandProps<"figure">) {
@@ -11,6 +11,7 @@ export function FigureBand({ finding }: BandProps<"figure">) {
     <div className="space-y-3">
       <Headline sentence={figureSentence(finding)} />
       <FigureVerdicts finding={finding} />
+      <FigureCaution finding={finding} />
       <FigureChart finding={finding} table={figureTable(finding)} opened={false} />
       <FigureNotes finding={finding} />
     </div>

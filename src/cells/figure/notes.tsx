@@ -1,5 +1,6 @@
 import type { FigureFinding } from "../../../shared/schemas/figure.ts";
 import { figureNotes } from "../../../shared/tables/figure-words.ts";
+import { WELFARE_CAUTION } from "../../../shared/tables/price-change-words.ts";
 import { verdictsOf } from "../../../shared/tables/verdicts.ts";
 import { Printed } from "../../components/number.tsx";
 import { VerdictStrip } from "../../components/verdict-strip.tsx";
@@ -16,7 +17,21 @@ export function FigureVerdicts({ finding: { checks, tests, drawn }, detail = fal
   return <VerdictStrip label={label} verdicts={stripOf(verdictsOf(checks, tests, { detail }))} />;
 }
 
-/** Cautions and conventions below the figure. */
+/** Before the figures that can hurt, in the words every such finding has. */
+export function FigureCaution({ finding }: OwnProps) {
+  if (finding.drawn.show !== "incidence") return null;
+  return (
+    <section
+      aria-label="Read with care"
+      className="border-stale border-y py-2 text-[0.875rem]/[1.25rem] min-[600px]:flex min-[600px]:gap-x-4"
+    >
+      <strong className="shrink-0 font-semibold text-stale">Read with care</strong>
+      <p className="max-w-[96ch]">{WELFARE_CAUTION}</p>
+    </section>
+  );
+}
+
+/** Conventions below the figure. */
 export function FigureNotes({ finding }: OwnProps) {
   const { show } = finding.drawn;
   return (
@@ -25,7 +40,11 @@ export function FigureNotes({ finding }: OwnProps) {
         <p>Groups from top to bottom in their order: the first filled, the last a square. Dotted lines at 1 and −1.</p>
       )}
       <p>
-        <Printed text={figureNotes(finding).join(" ")} />
+        <Printed
+          text={figureNotes(finding)
+            .filter((note) => note !== WELFARE_CAUTION)
+            .join(" ")}
+        />
       </p>
     </div>
   );

@@ -4,7 +4,7 @@ import { CopyTable } from "../copy-table.tsx";
 import { OpenHead } from "../headline.tsx";
 import type { OpenProps } from "../types.ts";
 import { FigureChart } from "./figure-chart.tsx";
-import { FigureNotes, FigureVerdicts } from "./notes.tsx";
+import { FigureCaution, FigureNotes, FigureVerdicts } from "./notes.tsx";
 
 /** A figure in full: as large as the page lets it be, its numbers to copy. */
 export function FigureOpen({ finding }: OpenProps<"figure">) {
@@ -15,6 +15,7 @@ export function FigureOpen({ finding }: OpenProps<"figure">) {
         <CopyTable table={table} />
       </OpenHead>
       <FigureVerdicts finding={finding} detail />
+      <FigureCaution finding={finding} />
       <section aria-label={table.title} className="space-y-2">
         <h2 className="type-section">{table.title}</h2>
         <FigureChart finding={finding} table={table} opened />

@@ -158,6 +158,7 @@ describe("the cells", () => {
       ["ninetieth", "slutsky", ["base"]],
       ["fifths", "elasticities", ["base"]],
       ["levy", "price change", ["base"]],
+      ["demand", "figure", ["base"]],
       ["linear", "system", ["survey"]],
       ["needs", "system", ["survey"]],
       ["argument", "text", ["base", "matrix", "survey"]],

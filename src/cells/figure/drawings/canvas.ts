@@ -66,6 +66,22 @@ export function topLeft({ colour }: Canvas, text: string): Partial<Annotation> {
   };
 }
 
+/** What a panel shows, above its upper left corner. */
+export function panelHead({ colour }: Canvas, title: string, x: number, y: number): Partial<Annotation> {
+  return {
+    text: literal(title),
+    xref: "paper",
+    yref: "paper",
+    x,
+    y,
+    xanchor: "left",
+    yanchor: "bottom",
+    yshift: 8,
+    showarrow: false,
+    font: { size: 13, color: colour("ink") },
+  };
+}
+
 /** A name at the end of each line, moved up as little as keeps them apart. */
 export function endLabels(
   { narrow }: Canvas,

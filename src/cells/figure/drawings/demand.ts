@@ -1,5 +1,6 @@
 import type { Annotation, Data } from "plotly.js-dist-min";
 import type { DrawnOf } from "../../../../shared/schemas/figure.ts";
+import { printQuantity } from "../../../../shared/tables/numbers.ts";
 import type { PlotlyFigure } from "../../../components/plotly-chart.tsx";
 import { band, bottomAxis, type Canvas, endLabels, leftAxis, margin, rangeFrom0, topLeft } from "./canvas.ts";
 
@@ -64,7 +65,7 @@ export function drawDemand(drawn: DrawnOf<"demand curve">, canvas: Canvas, heigh
 
 function pointLabel({ price, quantity }: DrawnOf<"demand curve">["here"], color: string): Partial<Annotation> {
   return {
-    text: "here",
+    text: `${printQuantity(quantity, "money")} at ${printQuantity(price, "money")}`,
     x: price,
     y: quantity,
     xanchor: "left",

@@ -2,7 +2,7 @@ import type { Annotation, Data, Layout, Shape } from "plotly.js-dist-min";
 import type { DrawnOf } from "../../../../shared/schemas/figure.ts";
 import { capital } from "../../../../shared/study/words.ts";
 import type { PlotlyFigure } from "../../../components/plotly-chart.tsx";
-import { bottomAxis, type Canvas, errorBars, literal } from "./canvas.ts";
+import { bottomAxis, type Canvas, errorBars, literal, panelHead } from "./canvas.ts";
 
 type Drawn = DrawnOf<"elasticities">;
 
@@ -14,22 +14,22 @@ const PANELS = [
 ] as const;
 type Panel = (typeof PANELS)[number];
 
-/** Between panels, as a part of the picture. */
-const GAP = { wide: 0.045, narrow: 0.16 };
-const LEFT = 112;
+/** Between panels side by side, as a part of the picture; one below the other, in pixels. */
+const GAP = { wide: 0.045, narrow: 76 };
+const AROUND = { l: 112, r: 12, t: 34, b: 44 };
 
 /** Estimates with their intervals, good by good in three panels; groups of rows from top to bottom in their order. */
-export function drawElasticities(drawn: Drawn, canvas: Canvas): PlotlyFigure {
+export function drawElasticities(drawn: Drawn, canvas: Canvas, height: number): PlotlyFigure {
   const { goods, groups } = drawn;
   const layout: Record<string, unknown> = {
-    margin: { l: LEFT, r: 12, t: 34, b: 44 },
+    margin: AROUND,
     annotations: [],
     shapes: [],
   };
   const data: Data[] = [];
   PANELS.forEach((panel, place) => {
     const key = place === 0 ? "" : String(place + 1);
-    const { x, y } = domainOf(place, canvas.narrow);
+    const { x, y } = domainOf(place, canvas.narrow ? height : undefined);
     layout[`xaxis${key}`] = bottomAxis(canvas, "", {
       domain: x,
       anchor: `y${key}` as "y",
@@ -40,18 +40,19 @@ export function drawElasticities(drawn: Drawn, canvas: Canvas): PlotlyFigure {
       anchor: `x${key}`,
       named: place === 0 || canvas.narrow,
     });
-    (layout.annotations as Partial<Annotation>[]).push(heading(panel, x[0], y[1], canvas));
+    (layout.annotations as Partial<Annotation>[]).push(panelHead(canvas, panel.title, x[0], y[1]));
     (layout.shapes as Partial<Shape>[]).push(...bounds(panel, drawn, key, canvas));
     data.push(...groups.map((_, g) => marks(panel, drawn, g, key, canvas)));
   });
   return { data, layout: layout as Partial<Layout> };
 }
 
-function domainOf(place: number, narrow: boolean): { x: [number, number]; y: [number, number] } {
-  const gap = narrow ? GAP.narrow : GAP.wide;
+/** Side by side, or one below the other in a picture so high. */
+function domainOf(place: number, height: number | undefined): { x: [number, number]; y: [number, number] } {
+  const gap = height === undefined ? GAP.wide : GAP.narrow / (height - AROUND.t - AROUND.b);
   const size = (1 - 2 * gap) / 3;
   const from = place * (size + gap);
-  if (!narrow) return { x: [from, from + size], y: [0, 1] };
+  if (height === undefined) return { x: [from, from + size], y: [0, 1] };
   // From the top down.
   return { x: [0, 1], y: [Math.max(0, 1 - from - size), 1 - from] };
 }
@@ -73,21 +74,6 @@ function goodsAxis(
     fixedrange: true,
     ticks: "",
     tickfont: { size: narrow ? 12 : 13, color: colour("ink") },
-  };
-}
-
-function heading({ title }: Panel, x: number, y: number, { colour }: Canvas): Partial<Annotation> {
-  return {
-    text: title,
-    xref: "paper",
-    yref: "paper",
-    x,
-    y,
-    xanchor: "left",
-    yanchor: "bottom",
-    yshift: 8,
-    showarrow: false,
-    font: { size: 13, color: colour("ink") },
   };
 }
 

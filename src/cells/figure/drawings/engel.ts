@@ -49,7 +49,7 @@ export function logAxis(canvas: Canvas, totals: readonly number[]) {
   return bottomAxis(canvas, "Total expenditure, logarithmic scale", {
     type: "log",
     range: [Math.log10(totals[0]), Math.log10(last)],
-    tickvals: ticksBetween(totals[0], last),
+    tickvals: ticksBetween(totals[0], last, canvas.narrow ? 2 : 4),
     tickformat: ",",
   });
 }
