@@ -168,6 +168,15 @@ const PLACES: readonly Place[] = [
     },
     signedIn: true,
   },
+  {
+    name: "price-change-cell",
+    path: cell("levy"),
+    ready: async (page) => {
+      await heading("Who bears it")(page);
+      await page.getByRole("slider", { name: "Sweet drinks" }).waitFor();
+    },
+    signedIn: true,
+  },
   { name: "text-cell", path: cell("argument"), ready: heading("Quoted numbers"), signedIn: true },
   { name: "referee-copy", path: copy("with authors"), ready: heading(/^Largest difference/), signedIn: false },
   { name: "blinded-copy", path: copy("without authors"), ready: heading(/^Largest difference/), signedIn: false },

@@ -127,6 +127,22 @@ it("what a reader's browser sends by a socket of its own changes nothing for any
   expect(await textIn(petraText)).not.toContain("forged");
 });
 
+it("a reader tries a price in her own browser, and keeps nothing", async () => {
+  const levy = () => sourceInFile(product.database, studyId, "levy");
+  const before = levy();
+  await petra.getByRole("link", { name: "Open of levy" }).click();
+  const ruler = petra.getByRole("slider", { name: "Meat & fish" });
+  await ruler.focus();
+  await petra.keyboard.press("Shift+ArrowRight");
+  await petra.getByText(/Meat & fish 5\.0.% dearer/).waitFor();
+  await petra.getByText("Trying out, not stored", { exact: true }).waitFor();
+  await petra.getByText(/^Answered in this browser/).waitFor();
+  expect(await petra.getByRole("button", { name: "Keep this price change" }).count()).toBe(0);
+  expect(levy()).toBe(before);
+  await petra.getByRole("link", { name: "Back to the study" }).click();
+  await bandOf(petra, CELL).waitFor();
+});
+
 it("the interface over HTTP refuses a reader's changes", async () => {
   const headers = { origin: product.origin };
   const answer = await petra.request.patch(`/api/studies/${studyId}`, { data: { title: "Mine" }, headers });
