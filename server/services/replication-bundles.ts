@@ -4,6 +4,7 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import type { BundleManifest, NewReplicationBundle } from "../../shared/schemas/replication-bundle.ts";
 import { resolveCells } from "../../shared/study/resolve.ts";
+import { formulasUsedOn } from "../../shared/study/unconditional-of.ts";
 import { versionsOf } from "../../shared/study/uploads.ts";
 import type { BundleJob, DataRead } from "../bundle/bundle-job.ts";
 import type { Database } from "../db/client.ts";
@@ -126,7 +127,7 @@ export function createReplicationBundleService({
           isWithheld,
           files: Object.fromEntries(files.flatMap(({ file, cells }) => cells.map((name) => [name, file]))),
         },
-        cells: chosen.cells.map(contentOf),
+        cells: chosen.cells.map((one) => contentOf(one, chosen.cells)),
         uploads: files.map(({ file, upload }) => ({ file, uploadId: upload.id, bytes: upload.bytes })),
         moments: isWithheld ? momentsOf(chosen.cells, reads) : [],
       };
@@ -142,13 +143,18 @@ export function createReplicationBundleService({
   };
 }
 
-function contentOf({ cell, resolved, fingerprint, finding }: BundledSource) {
+function contentOf({ cell, resolved, fingerprint, finding }: BundledSource, all: readonly BundledSource[]) {
   const { specification } = resolved;
+  const formulas = () =>
+    formulasUsedOn(
+      cell.name,
+      all.map((one) => one.resolved),
+    );
   return {
     cell,
     ...(fingerprint !== undefined && { fingerprint }),
     ...(finding !== undefined && { finding }),
-    ...(specification?.kind === "system" && { asked: specification }),
+    ...(specification?.kind === "system" && { asked: specification, unconditional: formulas() }),
   };
 }
 

@@ -3,6 +3,7 @@ import type { SystemFinding } from "../../shared/schemas/system.ts";
 import type { CellSource } from "../../shared/study/cell-source.ts";
 import type { UploadShape } from "../../shared/study/columns.ts";
 import { resolveCells } from "../../shared/study/resolve.ts";
+import { formulasUsedOn } from "../../shared/study/unconditional-of.ts";
 import { referenceInWords } from "../../shared/tables/cite.ts";
 import { methodsParagraph, paragraphBibtex } from "../../shared/tables/methods/paragraph.ts";
 import { conflict } from "../errors.ts";
@@ -24,7 +25,13 @@ export function methodsToSeal(
     const specification = now?.source === source ? now.specification : undefined;
     if (specification?.kind !== "system") throw conflict(`${name} is changing; seal it again.`);
     const data = resolved.find((one) => one.name === specification.data)?.specification;
-    const paragraph = methodsParagraph({ specification, finding, ...(data?.kind === "data" && { data }) });
+    const unconditional = formulasUsedOn(name, resolved);
+    const paragraph = methodsParagraph({
+      specification,
+      finding,
+      unconditional,
+      ...(data?.kind === "data" && { data }),
+    });
     const { text, references } = paragraph;
     return { system: name, text, references: references.map(referenceInWords), bibtex: paragraphBibtex(paragraph) };
   });

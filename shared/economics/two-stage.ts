@@ -20,10 +20,6 @@ export interface UnconditionalValues extends ElasticityValues {
   readonly others: { readonly uncompensated: Matrix; readonly compensated: Matrix };
 }
 
-/** Engel: E_i = E_r E_(r)i. */
-export const unconditionalExpenditure = (group: GroupAsGood, i: number, own: ElasticityValues) =>
-  group.expenditure * own.expenditure[i];
-
 /**
  * How much of the group's compensated elasticity e*_rr reaches good i by the price of good j: w_(r)j E_(r)i E_(r)j, or
  * w_(r)j E_(r)i after Edgerton, in whose formula a price moves the group's index by its share alone.
@@ -44,14 +40,17 @@ export function passedOn(
  * elasticities E_(r)i, e_(r)ij, e*_(r)ij and shares w_(r)j within the group, and W_r, E_r, e_rr, e*_rr of the group:
  *
  *     E_i   = E_r E_(r)i
- *     e*_ij = e*_(r)ij + w_(r)j E_(r)i E_(r)j e*_rr          Carpentier & Guyomard (2001, AJAE 83, 222–229)
- *     e*_ij = e*_(r)ij + w_(r)j E_(r)i e*_rr                 Edgerton (1997, AJAE 79, 62–79)
+ *     e*_ij = e*_(r)ij + w_(r)j E_(r)i E_(r)j e*_rr          Carpentier & Guyomard
+ *     e*_ij = e*_(r)ij + w_(r)j E_(r)i e*_rr                 Edgerton
  *     e_ij  = e*_ij − w_(r)j W_r E_i                         Slutsky, of both
  *     e_is  = E_(r)i e_rs,  e*_is = E_(r)i e*_rs             to the price of another group s
  *
- * The third line, written out, is Carpentier & Guyomard's e_(r)ij + w_(r)j [1/E_(r)j + e_rr] E_(r)i E_(r)j +
+ * Carpentier & Guyomard (2001, American Journal of Agricultural Economics 83, 222–229), Edgerton (1997, American Journal
+ * of Agricultural Economics 79, 62–79).
+ *
+ * Slutsky's line, written out, is Carpentier & Guyomard's e_(r)ij + w_(r)j [1/E_(r)j + e_rr] E_(r)i E_(r)j +
  * w_(r)j W_r E_r E_(r)i (E_(r)j − 1), and Edgerton's e_(r)ij + E_(r)i w_(r)j [1 + e_rr]. The printed formulas are from
- * memory of the works; `tests/laws/two-stage.test.ts` derives them from utility trees.
+ * memory of the works, whose equation numbers are not at hand; `tests/laws/utility-tree.test.ts` derives them.
  *
  * Carpentier & Guyomard's hold exactly under weak separability where the broader elasticities are those of a change of
  * all prices of the group in one proportion; what is approximate is that the group's index in the broader data moves
@@ -66,7 +65,7 @@ export function unconditionalValues(
   const compensated = goods.map((i) =>
     goods.map((j) => own.compensated[i][j] + passedOn(own, i, j, formula) * group.compensated),
   );
-  const expenditure = goods.map((i) => unconditionalExpenditure(group, i, own));
+  const expenditure = own.expenditure.map((elasticity) => group.expenditure * elasticity);
   const shares = own.shares.map((share) => share * group.share);
   const toOthers = (of: readonly number[]) =>
     own.expenditure.map((elasticity) => of.map((other) => elasticity * other));

@@ -86,6 +86,18 @@ const TOLD: { readonly [K in QuotableKind]: WordsOf<K> } = {
     "eta interval": ["interval of the expenditure elasticity of a good", "good and group"],
     "uncompensated interval": ["interval of an uncompensated elasticity", "two goods and group"],
     "compensated interval": ["interval of a compensated elasticity", "two goods and group"],
+    "unconditional eta": ["expenditure elasticity of a good given the whole budget", "good", "parts"],
+    "unconditional uncompensated": [
+      "uncompensated elasticity given the whole budget: good, then the good of the price",
+      "two goods",
+      "parts",
+    ],
+    "unconditional compensated": [
+      "compensated elasticity given the whole budget: good, then the good of the price",
+      "two goods",
+      "parts",
+    ],
+    "unconditional eta interval": ["interval of an unconditional expenditure elasticity of a good", "good"],
     share: ["budget share of a good in the formulas", "good and group"],
     rows: ["rows of a group", "group"],
   },

@@ -1,5 +1,6 @@
 import type { SystemFinding } from "../schemas/system.ts";
 import { EMPTY, estimateCell } from "./cells.ts";
+import { conditionally } from "./conditional.ts";
 import { equationsNotes } from "./equations-sentence.ts";
 import { fewRowsNotes } from "./few-rows.ts";
 import { DECIMALS, printFixed } from "./numbers.ts";
@@ -79,7 +80,7 @@ function coefficientCell({ estimate, standardError }: Coefficient, interval?: re
 export function coefficientTable(finding: SystemFinding): LabelledTable {
   return {
     name: "coefficients",
-    title: `Coefficients of the share equations, ${finding.fitted.form}`,
+    title: `Coefficients of the share equations, ${finding.fitted.form}${conditionally(finding)}`,
     corner: "Share equation",
     columns: finding.fitted.goods.map((label) => ({ label })),
     rows: coefficientRows(finding),

@@ -1,4 +1,5 @@
 import { EMPTY, estimateCell, textCell } from "./cells.ts";
+import { conditionally } from "./conditional.ts";
 import { DECIMALS, printFixed, THIN_SPACE } from "./numbers.ts";
 import { type MatrixFinding, withArticle } from "./slutsky-matrix.ts";
 import type { LabelledTable, TableCell } from "./table.ts";
@@ -8,7 +9,7 @@ export function eigenvalueTable(finding: MatrixFinding): LabelledTable {
   const hasIntervals = finding.at.eigenvalues.some(({ interval }) => interval !== undefined);
   return {
     name: "eigenvalues",
-    title: `Eigenvalues of the Slutsky matrix, share form, symmetrised, at ${withArticle(finding.pointName)}`,
+    title: `Eigenvalues of the Slutsky matrix, share form, symmetrised, at ${withArticle(finding.pointName)}${conditionally(finding)}`,
     corner: "Eigenvalue",
     columns: [
       { label: "Direction of prices" },

@@ -1,5 +1,6 @@
 import type { ClassOfGood, ElasticitiesFinding, ElasticityGroup, EstimatesByPrice } from "../schemas/elasticities.ts";
 import { estimateCell, numberCell, textCell } from "./cells.ts";
+import { conditionally, filePrefix, titled } from "./conditional.ts";
 import { elasticityNotes, whereOf } from "./elasticity-words.ts";
 import { DECIMALS } from "./numbers.ts";
 import type { LabelledTable, TableCell } from "./table.ts";
@@ -39,8 +40,8 @@ const cellOf = ({ value, error }: OneEstimate): TableCell => estimateCell(value,
 /** One group: a row for each good, with its share, its elasticities and what it is. */
 export function goodsTable(finding: ElasticitiesFinding, group: ElasticityGroup): LabelledTable {
   return {
-    name: "elasticities",
-    title: `Elasticities ${whereOf(finding, group.name)}, ${finding.form}`,
+    name: `${filePrefix(finding)}elasticities`,
+    title: `${titled(finding, "elasticities")} ${whereOf(finding, group.name)}${conditionally(finding)}, ${finding.form}`,
     corner: "Good",
     columns: [
       { label: "Share" },
@@ -73,7 +74,7 @@ export function groupsTable(finding: ElasticitiesFinding, which: ByGood): Labell
   const by = groupedBy === undefined ? "" : ` by ${groupedBy.of}`;
   return {
     name: `elasticities-${which.replace(/[^a-z]+/g, "-")}`,
-    title: `${TITLES[which]}${by}, ${finding.form}`,
+    title: `${TITLES[which]}${by}${conditionally(finding)}, ${finding.form}`,
     corner: "Group",
     columns: finding.goods.map((label) => ({ label })),
     rows: finding.groups.map((group) => ({
@@ -90,10 +91,9 @@ export function priceTable(
   group: ElasticityGroup,
   which: "uncompensated" | "compensated",
 ): LabelledTable {
-  const title = which === "compensated" ? "Compensated" : "Uncompensated";
   return {
-    name: `elasticities-${which}`,
-    title: `${title} price elasticities ${whereOf(finding, group.name)}, ${finding.form}`,
+    name: `${filePrefix(finding)}elasticities-${which}`,
+    title: `${titled(finding, `${which} price elasticities`)} ${whereOf(finding, group.name)}${conditionally(finding)}, ${finding.form}`,
     corner: "Good by price of",
     columns: finding.goods.map((label) => ({ label })),
     rows: finding.goods.map((label, i) => ({
@@ -104,8 +104,8 @@ export function priceTable(
   };
 }
 
-/** The finding's tables, the one to copy first. */
-export function elasticityTables(finding: ElasticitiesFinding): LabelledTable[] {
+/** The tables of one stage, the one to copy first. */
+export function oneStageTables(finding: ElasticitiesFinding): LabelledTable[] {
   const [first] = finding.groups;
   if (finding.groups.length > 1) return BY_GOOD.map((which) => groupsTable(finding, which));
   return [

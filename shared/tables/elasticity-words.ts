@@ -1,8 +1,10 @@
 import type { ClassOfGood, ElasticitiesFinding, ElasticityGroup } from "../schemas/elasticities.ts";
 import { caveatSentences } from "./caveat-words.ts";
+import { conditionalWords, isUnconditional, unconditionalOf } from "./conditional.ts";
 import { printCount, printPercent, printQuantity } from "./numbers.ts";
 import { capital, countedRows, listed, undefinedSentence } from "./phrases.ts";
 import { withArticle } from "./slutsky-matrix.ts";
+import { meetsBadly, unconditionallyBy, unconditionalNotes } from "./two-stage-words.ts";
 
 /** The name of a group where a sentence or a line begins: a column's own name stays as it is written. */
 export function groupHead(groupedBy: ElasticitiesFinding["groupedBy"], name: string): string {
@@ -30,12 +32,33 @@ export function elasticitiesSentence(finding: ElasticitiesFinding): string {
   const { groups } = finding;
   const told = groups.length === 1 ? oneGroup(finding, groups[0]) : severalGroups(finding);
   const giffen = groups.length === 1 ? giffenGoods(groups[0]) : [];
-  return [told, ...giffen, ...notDefined(finding), ...withoutAny(finding), ...caveatSentences(finding)].join(" ");
+  return [
+    ...unconditionally(finding),
+    told,
+    ...giffen,
+    ...notDefined(finding),
+    ...withoutAny(finding),
+    ...caveatSentences(finding),
+  ].join(" ");
+}
+
+/** What the goods are given the whole budget comes first: it is what a policy asks for. */
+function unconditionally(finding: ElasticitiesFinding): string[] {
+  const { unconditional } = finding;
+  const whole = unconditionalOf(finding);
+  if (unconditional === undefined || whole === undefined) return [];
+  const decided = classesInWords(unconditional.classes);
+  const what = decided.length === 0 ? "no good is a luxury or a necessity beyond doubt" : listed(decided);
+  const said = `${unconditionallyBy(unconditional)}, ${whereOf(whole, whole.groups[0].name)}, ${what}.`;
+  const spent = "What is spent on the group differs between the two systems there.";
+  return meetsBadly(finding) ? [said, spent] : [said];
 }
 
 function oneGroup(finding: ElasticitiesFinding, group: ElasticityGroup): string {
   const decided = classesInWords(group.classes);
-  const where = capital(whereOf(finding, group.name));
+  const place = whereOf(finding, group.name);
+  const condition = conditionalWords(finding);
+  const where = capital(condition ? `${condition}, ${place}` : place);
   const intervals = `by ${printPercent(finding.level, 0)} intervals`;
   if (decided.length === 0) return `${where} no good is a luxury or a necessity beyond doubt, ${intervals}.`;
   return `${where}, ${intervals}, ${listed(decided)}.`;
@@ -70,11 +93,12 @@ function severalGroups(finding: ElasticitiesFinding): string {
     return of.length === 0 ? [] : [said(of, kind)];
   });
   const intervals = `by ${printPercent(level, 0)} intervals`;
+  const condition = conditionalWords(finding) && `${conditionalWords(finding)}, `;
   const first =
     alike.length === 0
-      ? `No good is a luxury or a necessity beyond doubt in every one of ${groups.length} groups, ${intervals}.`
-      : `In each of ${groups.length} groups, ${intervals}, ${listed(alike)}.`;
-  return `${first} ${widest(finding)}`;
+      ? `${condition}no good is a luxury or a necessity beyond doubt in every one of ${groups.length} groups, ${intervals}.`
+      : `${condition}in each of ${groups.length} groups, ${intervals}, ${listed(alike)}.`;
+  return `${capital(first)} ${widest(finding)}`;
 }
 
 /** The good whose expenditure elasticity differs most between groups. */
@@ -110,14 +134,18 @@ function withoutAny({ without, groupedBy }: ElasticitiesFinding): string[] {
 
 /** The conventions behind the numbers, a sentence each: what parentheses are, where, which shares, which index. */
 export function elasticityNotes(finding: ElasticitiesFinding): string[] {
-  return [errorsNote(finding), whereNote(finding), sharesNote(finding), ...cautions(finding)];
+  const { unconditional } = finding;
+  const stages = unconditional !== undefined && isUnconditional(finding) ? unconditionalNotes(unconditional) : [];
+  return [errorsNote(finding), ...stages, whereNote(finding), sharesNote(finding), ...cautions(finding)];
 }
 
-function errorsNote({ intervals, level, standardErrors, over }: ElasticitiesFinding): string {
+function errorsNote(finding: ElasticitiesFinding): string {
+  const { intervals, level, standardErrors, over } = finding;
   const errors = `Estimate over (standard error) by the delta method, ${standardErrors}`;
   const isTooMany = over === "rows" && intervals === "normal" && standardErrors.startsWith("bootstrap");
   const normal = isTooMany ? ", normal as the rows are too many to go over at every replicate" : "";
-  const percentiles = intervals === "percentile" ? " by the bootstrap's own percentiles" : normal;
+  const isPercentile = intervals === "percentile" && !isUnconditional(finding);
+  const percentiles = isPercentile ? " by the bootstrap's own percentiles" : normal;
   return `${errors}; intervals of ${printPercent(level, 0)}${percentiles}.`;
 }
 

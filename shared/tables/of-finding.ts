@@ -2,7 +2,7 @@ import type { CellKind, FindingOf } from "../schemas/cell.ts";
 import { coefficientTable } from "./coefficients.ts";
 import { dataDescriptionTable } from "./data-description.ts";
 import { eigenvalueTable } from "./eigenvalues.ts";
-import { elasticityTables } from "./elasticities.ts";
+import { elasticityTables } from "./elasticity-tables.ts";
 import { figureTables } from "./figure.ts";
 import { firstStepTables } from "./first-steps.ts";
 import { priceChangeTables } from "./price-change.ts";

@@ -50,6 +50,18 @@ export const REFERENCES = {
     issue: 3,
     pages: [209, 232],
   },
+  carpentierGuyomard2001: {
+    authors: [
+      ["Carpentier", "A."],
+      ["Guyomard", "H."],
+    ],
+    year: 2001,
+    title: "Unconditional elasticities in two-stage demand systems: an approximate solution",
+    journal: AJAE,
+    volume: 83,
+    issue: 1,
+    pages: [222, 229],
+  },
   deatonMuellbauer1980: {
     authors: [
       ["Deaton", "A."],
@@ -85,6 +97,15 @@ export const REFERENCES = {
     volume: 70,
     issue: 3,
     pages: [521, 532],
+  },
+  edgerton1997: {
+    authors: [["Edgerton", "D. L."]],
+    year: 1997,
+    title: "Weak separability and the estimation of elasticities in multistage demand systems",
+    journal: AJAE,
+    volume: 79,
+    issue: 1,
+    pages: [62, 79],
   },
   efron1979: {
     authors: [["Efron", "B."]],

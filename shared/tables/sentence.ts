@@ -2,6 +2,7 @@ import type { DataFinding } from "../schemas/data.ts";
 import type { SlutskyFinding } from "../schemas/slutsky.ts";
 import type { SystemFinding } from "../schemas/system.ts";
 import { caveatSentences } from "./caveat-words.ts";
+import { conditionally } from "./conditional.ts";
 import { curvatureSentences } from "./curvature-words.ts";
 import { equationsSentences } from "./equations-sentence.ts";
 import { endogeneityHeadline } from "./first-steps-words.ts";
@@ -44,6 +45,7 @@ type ToldSystem = Pick<
   | "endogeneity"
   | "curvature"
   | "effectiveRows"
+  | "conditionalOn"
 >;
 
 /** Which goods are luxuries and necessities beyond doubt, then what theory is violated. */
@@ -68,7 +70,7 @@ function ofUnits({ unitsMatterBy }: ToldSystem): string[] {
 /** Normal quantile of a 95 % interval. */
 const WIDTH = 1.959963984540054;
 
-function classesOfGoods({ expenditureElasticities, checks }: ToldSystem): string {
+function classesOfGoods({ expenditureElasticities, checks, conditionalOn }: ToldSystem): string {
   const low = (e: ToldSystem["expenditureElasticities"][number]) => e.estimate - WIDTH * e.standardError;
   const high = (e: ToldSystem["expenditureElasticities"][number]) => e.estimate + WIDTH * e.standardError;
   const ordered = expenditureElasticities.toSorted((a, b) => b.estimate - a.estimate);
@@ -80,7 +82,7 @@ function classesOfGoods({ expenditureElasticities, checks }: ToldSystem): string
     ...(inferior ? [[inferior.good, "an inferior good"]] : []),
     ...(necessity && !inferior ? [[necessity.good, "a necessity"]] : []),
   ];
-  const at = withArticle(checks.pointName);
+  const at = `${withArticle(checks.pointName)}${conditionally({ conditionalOn })}`;
   if (parts.length === 0) return `No good is a luxury or a necessity beyond doubt at ${at}.`;
   const told = parts.map(([good, kind], i) => `${good} ${i === 0 ? "is " : ""}${kind}`);
   return `${capital(listed(told))} at ${at}.`;

@@ -1,11 +1,12 @@
 import type { SlutskyFinding } from "../schemas/slutsky.ts";
 import { estimateCell } from "./cells.ts";
+import { conditionally } from "./conditional.ts";
 import { DECIMALS, digitsForAll, printFixed, printPowerOfTen } from "./numbers.ts";
 import type { LabelledTable, TableCell } from "./table.ts";
 
 export type MatrixForm = SlutskyFinding["form"];
 /** What the matrix's tables need; a sealed copy's finding has it too. */
-export type MatrixFinding = Pick<SlutskyFinding, "at" | "fitted" | "pointName">;
+export type MatrixFinding = Pick<SlutskyFinding, "at" | "fitted" | "pointName" | "conditionalOn">;
 
 /** The matrix and its standard errors in one form, with how many digits it takes. */
 export interface MatrixInForm {
@@ -62,7 +63,7 @@ export function slutskyTable(finding: MatrixFinding, form: MatrixForm): Labelled
   const shown = matrixInForm(finding, form);
   return {
     name: `slutsky-${form}`,
-    title: `Slutsky matrix, ${shown.name}, at ${withArticle(finding.pointName)}`,
+    title: `Slutsky matrix, ${shown.name}, at ${withArticle(finding.pointName)}${conditionally(finding)}`,
     corner: "Good by price of",
     columns: goods.map((label) => ({ label })),
     rows: goods.map((label, i) => ({
@@ -79,7 +80,7 @@ export function compensatedTable(finding: MatrixFinding): LabelledTable {
   const { compensated, compensatedErrors } = finding.at;
   return {
     name: "compensated-elasticities",
-    title: `Compensated price elasticities, at ${withArticle(finding.pointName)}`,
+    title: `Compensated price elasticities, at ${withArticle(finding.pointName)}${conditionally(finding)}`,
     corner: "Good by price of",
     columns: goods.map((label) => ({ label })),
     rows: goods.map((label, i) => ({

@@ -171,6 +171,22 @@ const stageOf = ({ fitted, point }: ReturnType<typeof randomStage>): Stage => ({
   covariance: fitted.covariance,
 });
 
+test("uncompensated ones are the formulas as printed, from memory of the works", () => {
+  const nest = tree(2);
+  const { within, group, values } = unconditionalOf(nest, "carpentier guyomard");
+  const edgerton = unconditionalOf(nest, "edgerton").values.uncompensated;
+  const [w, E, e] = [within.shares, within.expenditure, within.uncompensated];
+  const own = group.compensated - group.share * group.expenditure;
+  for (const [i, row] of e.entries()) {
+    for (const [j, conditional] of row.entries()) {
+      const first = w[j] * (1 / E[j] + own) * E[i] * E[j];
+      const second = w[j] * group.share * group.expenditure * E[i] * (E[j] - 1);
+      expect(values.uncompensated[i][j]).toBeCloseTo(conditional + first + second, 12);
+      expect(edgerton[i][j]).toBeCloseTo(conditional + E[i] * w[j] * (1 + own), 12);
+    }
+  }
+});
+
 describe.each(SYSTEM_NAMES)("%s in another system", (name) => {
   const random = seededRandom(41);
   const pairs = Array.from({ length: 4 }, () => ({

@@ -1,10 +1,10 @@
 import { seededRandom } from "../../shared/numerics/random.ts";
 
 /** Marginal shares and committed quantities of five goods; the first three are one group without committed quantities. */
-export const TREE = {
+export const TREE: { readonly marginal: readonly number[]; readonly committed: readonly number[] } = {
   marginal: [0.2, 0.15, 0.15, 0.3, 0.2],
   committed: [0, 0, 0, 0.4, 0.25],
-} as const;
+};
 
 /** Of the group's goods within it. */
 const WITHIN = [0.4, 0.3, 0.3];

@@ -5,6 +5,7 @@ import type { MethodsParts } from "./parts.ts";
 import { restrictionSentences } from "./restrictions.ts";
 import { standardErrorSentences } from "./standard-errors.ts";
 import { systemSentences } from "./system.ts";
+import { twoStageSentences } from "./two-stage.ts";
 
 /** A system's methods as a paper would say them, with the works they rest on. */
 export interface MethodsParagraph {
@@ -24,6 +25,7 @@ export function methodsParagraph(parts: MethodsParts): MethodsParagraph {
     ...restrictionSentences(parts),
     ...estimationSentences(parts),
     ...standardErrorSentences(parts),
+    ...twoStageSentences(parts),
   ];
   return {
     text: all.map(({ sentence }) => sentence).join(" "),

@@ -1,5 +1,6 @@
 import type { DataSpecification } from "../../schemas/data.ts";
 import type { SystemFinding, SystemSpecification } from "../../schemas/system.ts";
+import type { UnconditionalFormula } from "../../schemas/two-stage.ts";
 import { cited } from "../cite.ts";
 import { printCount } from "../numbers.ts";
 import type { ReferenceKey } from "../references.ts";
@@ -11,6 +12,8 @@ export interface MethodsParts {
   readonly data?: DataSpecification;
   /** Only of this very specification: nothing is said that it does not hold. */
   readonly finding?: SystemFinding;
+  /** Formulas by which elasticities cells take the system's to unconditional ones, each once. */
+  readonly unconditional?: readonly UnconditionalFormula[];
 }
 
 /** A sentence, and the works it cites. */

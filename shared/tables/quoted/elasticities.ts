@@ -1,5 +1,6 @@
 import type { ElasticitiesFinding, ElasticityGroup } from "../../schemas/elasticities.ts";
 import type { QuotableWord } from "../../schemas/quotable.ts";
+import { conditionally, titled, unconditionalOf } from "../conditional.ts";
 import { byGood, entryOf, type OneEstimate } from "../elasticities.ts";
 import { whereOf } from "../elasticity-words.ts";
 import { printCount, printQuantity } from "../numbers.ts";
@@ -26,10 +27,13 @@ interface Found extends OneEstimate {
   readonly says: string;
 }
 
+/** "expenditure", "unconditional expenditure". */
+const named = (finding: ElasticitiesFinding, which: string) => titled(finding, which).toLowerCase();
+
 function expenditure(finding: ElasticitiesFinding, asked: Asked): Found {
   const group = groupOf(finding, asked, 1);
   const i = placeAmong(asked.words[0], finding.goods, "good");
-  const says = `expenditure elasticity of ${finding.goods[i]} ${whereOf(finding, group.name)}`;
+  const says = `${named(finding, "expenditure")} elasticity of ${finding.goods[i]} ${whereOf(finding, group.name)}${conditionally(finding)}`;
   return { ...byGood(group, "expenditure", i), says };
 }
 
@@ -38,7 +42,7 @@ function ofPrice(which: "uncompensated" | "compensated") {
     const group = groupOf(finding, asked, 2);
     const i = placeAmong(asked.words[0], finding.goods, "good");
     const j = placeAmong(asked.words[1], finding.goods, "good");
-    const says = `${which} elasticity of ${finding.goods[i]} with respect to the price of ${finding.goods[j]} ${whereOf(finding, group.name)}`;
+    const says = `${named(finding, which)} elasticity of ${finding.goods[i]} with respect to the price of ${finding.goods[j]} ${whereOf(finding, group.name)}${conditionally(finding)}`;
     return { ...entryOf(group[which], i, j), says };
   };
 }
@@ -58,6 +62,17 @@ function interval(find: (finding: ElasticitiesFinding, asked: Asked) => Found): 
   };
 }
 
+/** The same of the whole budget. */
+function unconditional(find: (finding: ElasticitiesFinding, asked: Asked) => Found) {
+  return (finding: ElasticitiesFinding, asked: Asked): Found => {
+    const whole = unconditionalOf(finding);
+    if (whole === undefined) {
+      throw new NothingToQuote("It names no broader system, and so has no unconditional elasticities.");
+    }
+    return find(whole, asked);
+  };
+}
+
 /** Numbers of an elasticities cell. */
 export const ELASTICITIES_QUOTES: { readonly [W in QuotableWord<"elasticities">]: Quote } = {
   eta: estimate(expenditure),
@@ -66,10 +81,14 @@ export const ELASTICITIES_QUOTES: { readonly [W in QuotableWord<"elasticities">]
   "eta interval": interval(expenditure),
   "uncompensated interval": interval(ofPrice("uncompensated")),
   "compensated interval": interval(ofPrice("compensated")),
+  "unconditional eta": estimate(unconditional(expenditure)),
+  "unconditional uncompensated": estimate(unconditional(ofPrice("uncompensated"))),
+  "unconditional compensated": estimate(unconditional(ofPrice("compensated"))),
+  "unconditional eta interval": interval(unconditional(expenditure)),
   share: (finding, asked) => {
     const group = groupOf(finding, asked, 1);
     const i = placeAmong(asked.words[0], finding.goods, "good");
-    const says = `${finding.shares} budget share of ${finding.goods[i]} ${whereOf(finding, group.name)}`;
+    const says = `${finding.shares} budget share of ${finding.goods[i]} ${whereOf(finding, group.name)}${conditionally(finding)}`;
     return { printed: printQuantity(group.shares[i], "share"), says };
   },
   rows: (finding, asked) => {

@@ -1,5 +1,6 @@
 import type { QuotableWord } from "../../schemas/quotable.ts";
 import type { RestrictionTest, SystemFinding } from "../../schemas/system.ts";
+import { conditionally } from "../conditional.ts";
 import { printCount, printProbability, printQuantity } from "../numbers.ts";
 import { withArticle } from "../slutsky-matrix.ts";
 import { testOf } from "../verdicts.ts";
@@ -86,12 +87,12 @@ function criterion(name: "aic" | "bic", says: string): Quote {
 
 /** Numbers of a system cell. */
 export const SYSTEM_QUOTES: { readonly [W in QuotableWord<"system">]: Quote } = {
-  eta: ({ expenditureElasticities, checks }, { words, part }) => {
+  eta: ({ expenditureElasticities, checks, conditionalOn }, { words, part }) => {
     const goods = expenditureElasticities.map(({ good }) => good);
     const { good, estimate, standardError } = expenditureElasticities[placeAmong(words[0], goods, "good")];
     return {
       printed: estimateInWords({ estimate, error: standardError }, "elasticity", part),
-      says: `expenditure elasticity of ${good} at ${withArticle(checks.pointName)}`,
+      says: `expenditure elasticity of ${good} at ${withArticle(checks.pointName)}${conditionally({ conditionalOn })}`,
     };
   },
   alpha: coefficient("alpha", "α"),

@@ -7,6 +7,7 @@ import {
   largestDifference,
   OWN_ELASTICITIES,
 } from "../../../shared/tables/compared.ts";
+import { conditionalWords } from "../../../shared/tables/conditional.ts";
 import { DECIMALS } from "../../../shared/tables/numbers.ts";
 import { withArticle } from "../../../shared/tables/slutsky-matrix.ts";
 import { CopyTable } from "../../cells/copy-table.tsx";
@@ -95,6 +96,13 @@ function Found({ left, right, ours, theirs }: Sides & { ours: Elasticities; thei
 /** Where each is evaluated. */
 function whereWords(left: EstimatedSystem, right: EstimatedSystem): string {
   const [one, other] = [left, right].map(({ finding }) => finding.checks.pointName);
-  if (one === other) return `Both at ${withArticle(one)} of the data they rest on.`;
-  return `${left.name} at ${withArticle(one)} of its data, ${right.name} at ${withArticle(other)} of its own.`;
+  const conditional = [left, right].flatMap(({ name, finding }) => {
+    const words = conditionalWords(finding);
+    return words ? [`Those of ${name} are ${words}.`] : [];
+  });
+  const where =
+    one === other
+      ? `Both at ${withArticle(one)} of the data they rest on.`
+      : `${left.name} at ${withArticle(one)} of its data, ${right.name} at ${withArticle(other)} of its own.`;
+  return [where, ...conditional].join(" ");
 }

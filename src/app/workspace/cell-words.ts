@@ -85,7 +85,8 @@ export function sourceInALine(kind: string, source: string): string {
     const head = text("like")
       ? `like ${text("like")}`
       : `${text("form") || "no form yet"} on ${text("data") || "no data yet"}`;
-    return [head, listed(written.demographics), listed(written.impose)].filter(Boolean).join("; ");
+    const group = text("conditional on") && `conditional on ${text("conditional on")}`;
+    return [head, group, listed(written.demographics), listed(written.impose)].filter(Boolean).join("; ");
   }
   if (kind === "tests") {
     return [text("system") || text("data") || "no system yet", listed(written.of)].filter(Boolean).join("; ");
@@ -109,7 +110,8 @@ function elasticitiesInALine(written: Record<string, unknown>, text: (key: strin
   const by = typeof groups === "object" && groups && "of" in groups ? ` by ${groups.of}` : "";
   const where = typeof at === "object" && at ? inWords(at) : text("at") || "mean";
   const rest = by || isRows ? `${by}${isRows ? " over rows" : " at means"}` : ` at ${where}`;
-  return `${text("system") || "no system yet"}${rest}`;
+  const within = text("within") && ` as ${text("as")} within ${text("within")}`;
+  return `${text("system") || "no system yet"}${within}${rest}`;
 }
 
 function priceChangeInALine(written: Record<string, unknown>, text: (key: string) => string): string {

@@ -1,6 +1,7 @@
 import { useId, useMemo } from "react";
 import type { Upload } from "../../../shared/schemas/resources.ts";
 import type { CellSource } from "../../../shared/study/cell-source.ts";
+import { formulasUsedOn } from "../../../shared/study/unconditional-of.ts";
 import { referenceInWords } from "../../../shared/tables/cite.ts";
 import {
   methodsParagraph,
@@ -31,8 +32,12 @@ export default function PaperWords({ studyId, standing, cells, uploads }: PaperW
     const own = resolved.find(({ id }) => id === cell.id)?.specification;
     if (own?.kind !== "system") return undefined;
     const below = resolved.find(({ name }) => name === own.data)?.specification;
-    return { specification: own, ...(below?.kind === "data" && { data: below }) };
-  }, [cells, uploads, cell.id]);
+    return {
+      specification: own,
+      unconditional: formulasUsedOn(cell.name, resolved),
+      ...(below?.kind === "data" && { data: below }),
+    };
+  }, [cells, uploads, cell.id, cell.name]);
   if (!asked) return null;
   const finding = fingerprint && data?.finding.kind === "system" ? data.finding : undefined;
   const paragraph = methodsParagraph({ ...asked, ...(finding && { finding }) });

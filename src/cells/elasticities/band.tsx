@@ -1,6 +1,8 @@
 import { useState } from "react";
+import { unconditionalOf } from "../../../shared/tables/conditional.ts";
 import type { ByGood } from "../../../shared/tables/elasticities.ts";
 import { elasticitiesSentence } from "../../../shared/tables/elasticity-words.ts";
+import { isTwoStage } from "../../../shared/tables/two-stage.ts";
 import { verdictsOf } from "../../../shared/tables/verdicts.ts";
 import { VerdictStrip } from "../../components/verdict-strip.tsx";
 import { Headline } from "../headline.tsx";
@@ -9,6 +11,7 @@ import { stripOf } from "../verdicts.ts";
 import { GoodsView } from "./goods-view.tsx";
 import { ByGoodSwitch, GroupsView } from "./groups-view.tsx";
 import { ElasticityNotes } from "./notes.tsx";
+import { StagesView } from "./stages-view.tsx";
 
 const LABEL = "What theory says of the system";
 
@@ -20,7 +23,9 @@ export function ElasticitiesBand({ finding }: BandProps<"elasticities">) {
     <div className="space-y-3">
       <Headline sentence={elasticitiesSentence(finding)} />
       <VerdictStrip label={LABEL} verdicts={stripOf(verdictsOf(finding.checks, finding.tests))} />
-      {finding.groups.length === 1 ? (
+      {isTwoStage(finding) ? (
+        <StagesView finding={finding} below="errors" />
+      ) : finding.groups.length === 1 ? (
         <GoodsView finding={finding} group={first} below="errors" />
       ) : (
         <div>
@@ -30,7 +35,7 @@ export function ElasticitiesBand({ finding }: BandProps<"elasticities">) {
           <GroupsView finding={finding} which={which} below="errors" />
         </div>
       )}
-      <ElasticityNotes finding={finding} />
+      <ElasticityNotes finding={unconditionalOf(finding) ?? finding} />
     </div>
   );
 }

@@ -1,5 +1,6 @@
 import { useId } from "react";
 import type { ElasticitiesFinding, ElasticityGroup } from "../../../shared/schemas/elasticities.ts";
+import { conditionally, isUnconditional } from "../../../shared/tables/conditional.ts";
 import { listed } from "../../../shared/tables/phrases.ts";
 import { Table } from "../../components/table.tsx";
 import { GoodHead } from "./good-head.tsx";
@@ -24,6 +25,7 @@ export function ClassesView({ finding, group }: { finding: ElasticitiesFinding; 
     <section aria-labelledby={id} className="space-y-2 border-line border-t pt-4">
       <h2 id={id} className="type-section">
         Goods among each other
+        {isUnconditional(finding) ? ", unconditional" : conditionally(finding)}
       </h2>
       <Table
         caption="How the goods stand to each other"

@@ -9,6 +9,7 @@ import { dataBelow, PointField } from "../form/point-fields.tsx";
 import { readWritten, type Written } from "../form/written.ts";
 import type { FormProps } from "../types.ts";
 import { isOf, newQuestion, questionOf } from "./question.ts";
+import { StageFields } from "./stage-fields.tsx";
 
 /** An elasticities cell as a form: which system, of whom, by which shares. */
 export function ElasticitiesForm(props: FormProps) {
@@ -43,6 +44,7 @@ export function ElasticitiesForm(props: FormProps) {
         ]}
       />
       <IndexField {...own} context={context} />
+      <StageFields {...own} context={context} />
       <NumberField label="Level of confidence" path={["level"]} {...own} otherwise="0.95" />
     </div>
   );

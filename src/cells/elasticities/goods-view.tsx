@@ -1,4 +1,5 @@
 import type { ElasticitiesFinding, ElasticityGroup } from "../../../shared/schemas/elasticities.ts";
+import { conditionally, titled } from "../../../shared/tables/conditional.ts";
 import { BY_GOOD, byGood } from "../../../shared/tables/elasticities.ts";
 import { whereOf } from "../../../shared/tables/elasticity-words.ts";
 import { DECIMALS, printFixed } from "../../../shared/tables/numbers.ts";
@@ -17,7 +18,7 @@ interface GoodsProps {
 export function GoodsView({ finding, group, below }: GoodsProps) {
   return (
     <Table
-      caption={`Elasticities ${whereOf(finding, group.name)}`}
+      caption={`${titled(finding, "elasticities")} ${whereOf(finding, group.name)}${conditionally(finding)}`}
       heads={[
         { key: "good", content: "Good" },
         { key: "share", content: "Share" },

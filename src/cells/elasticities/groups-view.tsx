@@ -1,6 +1,7 @@
 import { useId } from "react";
 import { type ElasticitiesFinding, TOTAL_EXPENDITURE } from "../../../shared/schemas/elasticities.ts";
 import { capital } from "../../../shared/study/words.ts";
+import { conditionally } from "../../../shared/tables/conditional.ts";
 import { type ByGood, byGood } from "../../../shared/tables/elasticities.ts";
 import { groupHead } from "../../../shared/tables/elasticity-words.ts";
 import { DECIMALS, printCount, printFixed } from "../../../shared/tables/numbers.ts";
@@ -46,10 +47,11 @@ const HEAD = "pb-1.5 align-bottom type-small font-normal text-ink2";
 export function GroupsView({ finding, which, below, chosen, onChoose }: GroupsProps) {
   const name = useId();
   const { goods, groups } = finding;
+  const caption = `${CAPTIONS[which]}${conditionally(finding)}`;
   return (
-    <TableScroller label={CAPTIONS[which]}>
+    <TableScroller label={caption}>
       <table className="type-table w-full border-line border-b">
-        <caption className="sr-only">{CAPTIONS[which]}</caption>
+        <caption className="sr-only">{caption}</caption>
         <thead>
           <tr className="border-line border-b">
             <th scope="col" className={`sticky left-0 bg-recto pr-3 text-left ${HEAD}`}>

@@ -1,5 +1,6 @@
 import type { ElasticitiesFinding } from "../../../shared/schemas/elasticities.ts";
 import { capital } from "../../../shared/study/words.ts";
+import { conditionally, isUnconditional, titled } from "../../../shared/tables/conditional.ts";
 import type { ByGood } from "../../../shared/tables/elasticities.ts";
 import { printFixed, printPercent } from "../../../shared/tables/numbers.ts";
 import { BottomAxis } from "../../components/chart-axis.tsx";
@@ -43,7 +44,7 @@ export function IntervalFigure({ finding, which, chosen }: FigureProps) {
     <figure ref={ref}>
       <svg
         role="img"
-        aria-label={`${SAYS[which]} with ${printPercent(finding.level, 0)} intervals; their numbers are in the tables`}
+        aria-label={`${titled(finding, SAYS[which].toLowerCase())}${conditionally(finding)}, with ${printPercent(finding.level, 0)} intervals; their numbers are in the tables`}
         width="100%"
         height={bottom + 28}
         className="block overflow-visible font-sans text-[0.8125rem] tabular-nums"
@@ -79,7 +80,8 @@ export function IntervalFigure({ finding, which, chosen }: FigureProps) {
         <BottomAxis scale={scale} y={bottom} ticks={ticks} print={(tick) => printFixed(tick, decimals)} />
       </svg>
       <figcaption className="type-small mt-1 text-ink2">
-        {printPercent(finding.level, 0)} intervals.
+        {printPercent(finding.level, 0)} intervals
+        {isUnconditional(finding) ? ", unconditional" : conditionally(finding)}.
         {several && ` From top to bottom in the order of the groups; filled: ${finding.groups[chosen].name}.`}
       </figcaption>
     </figure>

@@ -1,6 +1,7 @@
 import { useId, useState } from "react";
 import type { ElasticitiesFinding, ElasticityGroup } from "../../../shared/schemas/elasticities.ts";
 import { capital } from "../../../shared/study/words.ts";
+import { conditionally, titled } from "../../../shared/tables/conditional.ts";
 import { entryOf, priceTable } from "../../../shared/tables/elasticities.ts";
 import { whereOf } from "../../../shared/tables/elasticity-words.ts";
 import { SwitchWords } from "../../components/switch-words.tsx";
@@ -18,11 +19,13 @@ interface PricesProps {
 
 type Which = "uncompensated" | "compensated";
 
-const SAYS: Readonly<Record<Which, string>> = {
-  uncompensated:
-    "What one per cent more of the price of the column does to the good of the row, total expenditure held.",
-  compensated: "What one per cent more of the price of the column does to the good of the row, utility held.",
-};
+/** What is held; in a group's own system that is what is spent on the group, and the utility of its goods. */
+function saysOf(which: Which, { conditionalOn }: ElasticitiesFinding): string {
+  const total = conditionalOn === undefined ? "total expenditure" : `${conditionalOn} expenditure`;
+  const utility = conditionalOn === undefined ? "utility" : `the utility of ${conditionalOn}`;
+  const held = which === "compensated" ? utility : total;
+  return `What one per cent more of the price of the column does to the good of the row, ${held} held.`;
+}
 
 /** All price elasticities of a group, uncompensated or compensated, with the pairs that are beyond doubt marked. */
 export function PricesView({ finding, group, below }: PricesProps) {
@@ -34,7 +37,8 @@ export function PricesView({ finding, group, below }: PricesProps) {
     <section aria-labelledby={id} className="space-y-2 border-line border-t pt-4">
       <div className="flex flex-wrap items-baseline justify-between gap-x-6 gap-y-1">
         <h2 id={id} className="type-section">
-          Price elasticities
+          {titled(finding, "price elasticities")}
+          {conditionally(finding)}
         </h2>
         <SwitchWords
           label="Which price elasticities"
@@ -46,9 +50,9 @@ export function PricesView({ finding, group, below }: PricesProps) {
           ]}
         />
       </div>
-      <p className="type-small text-ink2">{SAYS[which]}</p>
+      <p className="type-small text-ink2">{saysOf(which, finding)}</p>
       <Table
-        caption={`${capital(which)} price elasticities ${whereOf(finding, group.name)}`}
+        caption={`${titled(finding, `${which} price elasticities`)} ${whereOf(finding, group.name)}${conditionally(finding)}`}
         heads={[
           { key: "good", content: "Good by price of" },
           ...finding.goods.map((good) => ({ key: good, content: capital(good) })),

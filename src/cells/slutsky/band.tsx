@@ -1,3 +1,4 @@
+import { conditionally } from "../../../shared/tables/conditional.ts";
 import { slutskySentence } from "../../../shared/tables/sentence.ts";
 import { withArticle } from "../../../shared/tables/slutsky-matrix.ts";
 import { verdictsOf } from "../../../shared/tables/verdicts.ts";
@@ -16,7 +17,7 @@ export function SlutskyBand({ finding }: BandProps<"slutsky">) {
   const phone = usePhone();
   const setting = matrixSetting(finding.fitted.goods.length, phone, false);
   const shown = shownMatrix(finding, finding.form, setting);
-  const label = `Slutsky matrix, ${shown.name}, at ${withArticle(finding.pointName)}`;
+  const label = `Slutsky matrix, ${shown.name}, at ${withArticle(finding.pointName)}${conditionally(finding)}`;
   return (
     <div className="space-y-3">
       <Headline sentence={slutskySentence(finding)} />

@@ -9,7 +9,10 @@ import type { Place } from "./moves.ts";
 import type { ShownMatrix } from "./shown-matrix.ts";
 import { printSum } from "./sums.ts";
 
-export type PanelFinding = Pick<SlutskyFinding, "at" | "fitted" | "point" | "pointName" | "priceScale" | "totalScale">;
+export type PanelFinding = Pick<
+  SlutskyFinding,
+  "at" | "fitted" | "point" | "pointName" | "priceScale" | "totalScale" | "conditionalOn"
+>;
 
 interface EntryPanelProps {
   readonly finding: PanelFinding;

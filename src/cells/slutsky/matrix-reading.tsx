@@ -1,4 +1,5 @@
 import { type ReactNode, useState } from "react";
+import { conditionally } from "../../../shared/tables/conditional.ts";
 import { withArticle } from "../../../shared/tables/slutsky-matrix.ts";
 import { usePhone } from "../../components/use-media.ts";
 import { EntryPanel, type PanelFinding } from "./entry-panel.tsx";
@@ -23,7 +24,7 @@ export function MatrixReading({ finding, form, sums = false, below }: MatrixRead
   const [pointed, setPointed] = useState<Place>([0, 1]);
   const setting = matrixSetting(finding.fitted.goods.length, phone, true);
   const shown = shownMatrix(finding, form, setting);
-  const label = `Slutsky matrix, ${shown.name}, at ${withArticle(finding.pointName)}`;
+  const label = `Slutsky matrix, ${shown.name}, at ${withArticle(finding.pointName)}${conditionally(finding)}`;
   const printed = sums && form === "share" && !phone ? printedSums(shown.entries, finding.at.checks) : undefined;
   return (
     <div className="@container">

@@ -8,7 +8,7 @@ import { type EngelCurves, engelFigure } from "./engel-figure.ts";
 const HEIGHT = 380;
 
 /** Engel curves of all goods, large enough to read, with their numbers as a table. */
-export function EngelView({ finding }: { finding: EngelCurves }) {
+export function EngelView({ finding }: { finding: EngelCurves & { readonly conditionalOn?: string } }) {
   const id = useId();
   const { engel, fitted } = finding;
   const figure = useCallback((colour: TokenColour) => engelFigure(finding, colour), [finding]);
@@ -18,8 +18,8 @@ export function EngelView({ finding }: { finding: EngelCurves }) {
         Engel curves
       </h2>
       <p className="type-small mb-2 text-ink2">
-        Predicted shares against total expenditure in units of estimation, its 1st to 99th percentile; prices and
-        demographics at the sample mean
+        Predicted shares against {finding.conditionalOn ?? "total"} expenditure in units of estimation, its 1st to 99th
+        percentile; prices and demographics at the sample mean
       </p>
       <PlotlyChart
         label={`Predicted shares of ${fitted.goods.length} goods against total expenditure`}

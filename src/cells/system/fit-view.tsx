@@ -2,6 +2,7 @@ import type { ReactNode } from "react";
 import { useId } from "react";
 import type { SystemFinding } from "../../../shared/schemas/system.ts";
 import { capital } from "../../../shared/study/words.ts";
+import { conditionally } from "../../../shared/tables/conditional.ts";
 import { curvatureFact } from "../../../shared/tables/curvature-words.ts";
 import { DECIMALS, printCount, printFixed, printSize } from "../../../shared/tables/numbers.ts";
 import { withArticle } from "../../../shared/tables/slutsky-matrix.ts";
@@ -28,9 +29,10 @@ export function FitView({ finding }: { finding: SystemFinding }) {
       <section aria-labelledby={goodsId}>
         <h2 id={goodsId} className="type-section mb-2">
           By good
+          {conditionally(finding)}
         </h2>
         <Table
-          caption={`Expenditure elasticity at ${withArticle(finding.checks.pointName)}, fit of the equation`}
+          caption={`Expenditure elasticity at ${withArticle(finding.checks.pointName)}${conditionally(finding)}; fit of the equation`}
           heads={[
             { key: "good", content: "Good" },
             { key: "eta", content: "Expenditure elasticity" },

@@ -7,7 +7,7 @@ import { RESTRICTION_NAMES, SYSTEM_NAMES, type SystemName } from "../../../share
 import { CellField } from "../form/cell-field.tsx";
 import { CheckGroup } from "../form/choices.tsx";
 import { DefaultField } from "../form/default-field.tsx";
-import { asChoices, ChoiceField, FormRow, Unreadable } from "../form/fields.tsx";
+import { asChoices, ChoiceField, FormRow, TextField, Unreadable } from "../form/fields.tsx";
 import { readWritten, type Written } from "../form/written.ts";
 import type { FormProps } from "../types.ts";
 import { CurvatureFields } from "./curvature-fields.tsx";
@@ -93,6 +93,12 @@ export function SystemForm(props: FormProps) {
         none="the last good"
         readOnly={readOnly}
         onChange={(value) => written.write([["dropped"], value || undefined])}
+      />
+      <TextField
+        label="Conditional on"
+        value={written.text("conditional on")}
+        readOnly={readOnly}
+        onCommit={(value) => written.write([["conditional on"], value.trim() || undefined])}
       />
       <TimeFields {...part} form={form} />
       {(form !== "rotterdam" || says("instruments") || says("zeros")) && <StepFields {...part} columns={columns} />}

@@ -10,7 +10,7 @@ import { coefficientTable } from "../../../shared/tables/coefficients.ts";
 import { covarianceCsv } from "../../../shared/tables/covariance.ts";
 import { tableCsv } from "../../../shared/tables/csv.ts";
 import { eigenvalueTable } from "../../../shared/tables/eigenvalues.ts";
-import { elasticityTables } from "../../../shared/tables/elasticities.ts";
+import { elasticityTables } from "../../../shared/tables/elasticity-tables.ts";
 import { firstStepTables } from "../../../shared/tables/first-steps.ts";
 import { tableLatex } from "../../../shared/tables/latex.ts";
 import { rowAccountingTable } from "../../../shared/tables/row-accounting.ts";

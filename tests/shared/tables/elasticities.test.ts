@@ -1,7 +1,8 @@
 import { describe, expect, test } from "vitest";
 import type { ElasticitiesFinding } from "../../../shared/schemas/elasticities.ts";
 import { tableCsv } from "../../../shared/tables/csv.ts";
-import { elasticityTables, goodsTable, groupsTable, priceTable } from "../../../shared/tables/elasticities.ts";
+import { goodsTable, groupsTable, priceTable } from "../../../shared/tables/elasticities.ts";
+import { elasticityTables } from "../../../shared/tables/elasticity-tables.ts";
 import { elasticitiesSentence, elasticityNotes } from "../../../shared/tables/elasticity-words.ts";
 import { tableLatex } from "../../../shared/tables/latex.ts";
 import { sampleElasticities } from "../../support/sample-elasticities.ts";
