@@ -70,7 +70,7 @@ export const figureSpecification = z
     else if (named[0] !== asks.reads)
       tell(named[0] ?? "show", `${show} is drawn of a ${asks.reads} cell: name it under ${asks.reads}`);
     if (asks.goods === "one" && goods?.length !== 1) {
-      tell("goods", `${show} is of one good: name it, as in goods: [the good]`);
+      tell(goods === undefined ? "show" : "goods", `${show} is of one good: name it, as in goods: [the good]`);
     }
     if (asks.goods === "none" && goods !== undefined)
       tell("goods", `${show} is of all goods together: leave goods out`);
@@ -233,6 +233,8 @@ export const figureFinding = z.strictObject({
   checks: theoryChecks.optional(),
   tests: z.array(restrictionTest).optional(),
   caveats,
+  /** The group whose expenditure the system's total is. */
+  conditionalOn: goodName.optional(),
 });
 export type FigureFinding = z.infer<typeof figureFinding>;
 export type Drawn = FigureFinding["drawn"];

@@ -1,6 +1,7 @@
 import type { FigureFinding, FigureName, FindingOfFigure } from "../schemas/figure.ts";
 import type { Estimate, Estimates } from "../schemas/price-change.ts";
 import { estimateCell, numberCell, percentCell } from "./cells.ts";
+import { conditionally } from "./conditional.ts";
 import { FIGURE_TITLES, figureNotes } from "./figure-words.ts";
 import { DECIMALS, digitsForAll, printCount, printFixed } from "./numbers.ts";
 import { capital } from "./phrases.ts";
@@ -31,7 +32,7 @@ export function figureTable(finding: FigureFinding): LabelledTable {
   const by = "groupedBy" in drawn && drawn.groupedBy ? `, by ${drawn.groupedBy.of}` : "";
   return {
     name: `figure-${show.replaceAll(" ", "-")}`,
-    title: `${FIGURE_TITLES[show]}${of}${by}${where}`,
+    title: `${FIGURE_TITLES[show]}${of}${by}${where}${conditionally(finding)}`,
     ...part(finding),
     notes: figureNotes(finding),
   };

@@ -36,6 +36,7 @@ export function runFigure(
     ...how,
     drawn,
     ...(basis && { checks: basis.checks, tests: basis.tests }),
+    ...(basis?.kind === "system" && basis.conditionalOn !== undefined && { conditionalOn: basis.conditionalOn }),
     ...(basis?.kind === "system" ? caveatsOf(basis) : basis?.caveats && { caveats: basis.caveats }),
   });
 }

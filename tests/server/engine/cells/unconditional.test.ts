@@ -1,11 +1,19 @@
 import { Readable } from "node:stream";
 import { beforeAll, describe, expect, test } from "vitest";
-import { runData, runElasticities, runSystem } from "../../../../server/engine/cells/index.ts";
+import {
+  runData,
+  runElasticities,
+  runFigure,
+  runPriceChange,
+  runSlutsky,
+  runSystem,
+} from "../../../../server/engine/cells/index.ts";
 import type { EstimatedSystem } from "../../../../server/engine/cells/two-stages.ts";
 import { readCsv } from "../../../../server/engine/columns/read-csv.ts";
 import { QUIET } from "../../../../server/engine/run.ts";
 import { elasticitiesAt } from "../../../../shared/economics/elasticities.ts";
 import type { ElasticitiesFinding } from "../../../../shared/schemas/elasticities.ts";
+import { figureTable } from "../../../../shared/tables/figure.ts";
 import { gap } from "../../../laws/derivatives.ts";
 import { exactly } from "../../../support/fitted.ts";
 import { specificationOf } from "../../../support/tuna.ts";
@@ -123,6 +131,22 @@ describe("a group in a broader system", () => {
   test("may be of another form than the broader system", () => {
     const { unconditional } = run("", "aids");
     expect(gap(unconditional!.expenditure.values, truth().expenditure.slice(0, 3))).toBeLessThan(0.02);
+  });
+});
+
+test("matrices, figures and price changes of a group's own system say that they are conditional", () => {
+  const { finding, data } = systems.food;
+  const label = { caveats: ["conditional on a group"] };
+  const matrix = runSlutsky(specificationOf("slutsky", "system: s\n"), finding, data);
+  expect(matrix).toMatchObject({ ...label, conditionalOn: "food" });
+  const figure = runFigure(specificationOf("figure", "system: s\nshow: engel curves\n"), finding, data);
+  expect(figure).toMatchObject({ ...label, conditionalOn: "food" });
+  expect(figureTable(figure).title).toMatch(/, conditional on food expenditure$/);
+  const change = specificationOf("price change", "system: s\nprices: {grains: {per cent: 10}}\n");
+  expect(runPriceChange(change, finding, data)).toMatchObject(label);
+  expect(runElasticities(specificationOf("elasticities", "system: s\n"), finding, data)).toMatchObject({
+    ...label,
+    conditionalOn: "food",
   });
 });
 
