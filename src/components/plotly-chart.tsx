@@ -29,7 +29,7 @@ interface PlotlyChartProps {
 
 type Plotly = typeof import("plotly.js-dist-min");
 
-const CONFIG: Partial<Config> = { displayModeBar: false, displaylogo: false, responsive: true, showTips: false };
+const CONFIG: Partial<Config> = { displayModeBar: false, displaylogo: false, showTips: false };
 const FACE = "'Source Sans 3 Variable', sans-serif";
 
 /** Below this many pixels a figure is narrow. */
@@ -52,10 +52,10 @@ function onPaper<T>(draw: (colour: TokenColour) => T): T {
 }
 
 /** What every figure shares: the page's own face and paper, no frame, nothing of the library's furniture. */
-function layoutOn(colour: TokenColour, own: Partial<Layout>, height: number): Partial<Layout> {
+function layoutOn(colour: TokenColour, own: Partial<Layout>, size: { width: number; height: number }): Partial<Layout> {
   return {
-    height,
-    autosize: true,
+    ...size,
+    autosize: false,
     showlegend: false,
     paper_bgcolor: colour("recto"),
     plot_bgcolor: colour("recto"),
@@ -107,14 +107,14 @@ export function PlotlyChart({ label, fileName, height: heightOf, figure }: Plotl
       const { data, layout } = figure(colourOnPage, { narrow, height });
       // One after the other: the library goes on drawing for a while after it was asked.
       drawing.current = drawing.current
-        .then(() => plotly.react(element, data, layoutOn(colourOnPage, layout, height), CONFIG))
+        .then(() => plotly.react(element, data, layoutOn(colourOnPage, layout, { width, height }), CONFIG))
         .then(nothing);
     };
     draw();
     const theme = new MutationObserver(draw);
     theme.observe(document.documentElement, { attributes: true, attributeFilter: ["data-theme"] });
     return () => theme.disconnect();
-  }, [plotly, figure, height, narrow, frame]);
+  }, [plotly, figure, width, height, narrow, frame]);
 
   useEffect(() => {
     const element = frame.current;
@@ -126,7 +126,7 @@ export function PlotlyChart({ label, fileName, height: heightOf, figure }: Plotl
     const tall = Math.max(PICTURE.height, heightWhere(false));
     const picture = onPaper((colour) => {
       const { data, layout } = figure(colour, { narrow: false, height: tall });
-      return { data, layout: layoutOn(colour, layout, tall), config: CONFIG };
+      return { data, layout: layoutOn(colour, layout, { width: PICTURE.width, height: tall }), config: CONFIG };
     });
     void plotly?.downloadImage(picture, { format, filename: fileName, width: PICTURE.width, height: tall });
   };

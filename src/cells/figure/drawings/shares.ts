@@ -53,7 +53,7 @@ export function drawShares(
       yaxis: leftAxis(canvas, { range }),
       annotations: [
         topLeft(canvas, "Mean share"),
-        ...endLabels(canvas, labels, { x: groups.length - 0.75, span: range[1] - range[0], height }),
+        ...endLabels(canvas, labels, { x: groups.length - 0.5, span: range[1] - range[0], height }),
       ],
     },
   };
