@@ -38,8 +38,14 @@ function whoBearsIt({ incidence }: PriceChangeFinding): string[] {
 }
 
 /** "meat & fish 40.0 % dearer and a 25 % tax on sweet drinks"; undefined where nothing changes. */
-function changesInWords({ question }: PriceChangeFinding): string | undefined {
-  const goods = Object.entries(question.prices).map(([good, change]) => changeInWords(good, change));
+function changesInWords({ question, at, fitted }: PriceChangeFinding): string | undefined {
+  const moves = ([good]: readonly [string, GoodPriceSpecification]) => {
+    const i = fitted.goods.indexOf(good);
+    return at.pricesAfter[i] !== at.pricesBefore[i] || at.taxes[i] !== 0;
+  };
+  const goods = Object.entries(question.prices)
+    .filter(moves)
+    .map(([good, change]) => changeInWords(good, change));
   const { expenditure } = question;
   const more = expenditure > 0 ? "higher" : "lower";
   const money = expenditure === 0 ? [] : [`total expenditure ${printPercent(Math.abs(expenditure) / 100)} ${more}`];

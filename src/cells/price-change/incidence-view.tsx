@@ -12,7 +12,6 @@ const CELL = "whitespace-nowrap py-1 pr-[0.33em] pl-4 text-right align-top";
 const BAR = 116;
 
 const money = (value: number) => printFixed(value, DECIMALS.money);
-const percent = (value: number) => printFixed(100 * value, DECIMALS.percent);
 
 /** The loss by expenditure: exact where there is a cost function, else to second order. */
 const lossShare = ({ welfareShare, secondOrderShare }: IncidenceGroup) =>
@@ -63,6 +62,9 @@ function Rows({ group: { rows, notDefined } }: { group: IncidenceGroup }) {
 export function IncidenceView({ incidence }: { incidence: Incidence }) {
   const { groups, all, groupedBy } = incidence;
   const columns = columnsOf(incidence);
+  const percent = (value: number) => printFixed(100 * value, decimals);
+  // One more decimal than per cents have, where a standard error would print as nothing.
+  const decimals = DECIMALS.percent + ([...groups, all].some((group) => 100 * lossShare(group).error < 0.05) ? 1 : 0);
   const most = Math.max(...[...groups, all].map((group) => Math.abs(lossShare(group).value)), Number.MIN_VALUE);
   return (
     <TableScroller label={CAPTION}>

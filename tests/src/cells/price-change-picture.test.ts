@@ -64,7 +64,7 @@ describe("where there is no cost function", () => {
     const one = onePrice(finding, GOOD, "slutsky");
     expect(one.curves).toBeUndefined();
     expect(one.bundles.compensated).toBeDefined();
-    expect(pictureWords(one, true, "slutsky").notes[1]).toMatch(
+    expect(pictureWords(one, { isCut: true, curveEnds: false }, "slutsky").notes[1]).toMatch(
       /^No indifference curves: symmetry is not imposed: .* Budgets and bundles alone are drawn\.$/,
     );
     expect(onePrice(finding, GOOD, "hicks").bundles.compensated).toBeUndefined();

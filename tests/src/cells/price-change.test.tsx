@@ -143,6 +143,7 @@ describe("the rulers", () => {
   it("show the very answer that would be stored", async () => {
     const { user } = open(samplePriceChange());
     await user.click(screen.getByRole("button", { name: "All prices to no change" }));
+    await screen.findByText(/^No price changes: there is nothing to bear/);
     slider("Dairy").focus();
     await user.keyboard("{ArrowRight}");
     const prices = {

@@ -1,4 +1,5 @@
 import { linearScale, roundTicks, type Scale } from "../../../components/chart-scale.ts";
+import type { Curve, Spot } from "./curve.ts";
 import type { OnePrice } from "./one-price.ts";
 
 /** The window of a picture: how much of the good across, money for the rest upwards, in pixels. */
@@ -9,6 +10,8 @@ export interface Frame {
   readonly yTicks: ReturnType<typeof roundTicks>;
   /** Whether either axis begins elsewhere than at nought. */
   readonly isCut: boolean;
+  /** Whether a curve ends within it, for want of preferences. */
+  readonly curveEnds: boolean;
 }
 
 export interface Edges {
@@ -24,7 +27,7 @@ const NARROWEST = 0.16;
 const ROOM = 0.95;
 
 /** Around the bundles, so that they stand well within it. */
-export function frameOf({ bundles, budgets }: OnePrice, { left, right, top, bottom }: Edges): Frame {
+export function frameOf({ bundles, budgets, curves }: OnePrice, { left, right, top, bottom }: Edges): Frame {
   const spots = [bundles.before, bundles.compensated, bundles.after].filter((spot) => spot !== undefined);
   const quantities = spots.map(({ quantity }) => quantity);
   const [least, most] = [Math.min(...quantities), Math.max(...quantities)];
@@ -46,5 +49,14 @@ export function frameOf({ bundles, budgets }: OnePrice, { left, right, top, bott
     xTicks: roundTicks(from, to, right - left < 340 ? 4 : 6),
     yTicks: roundTicks(low, high, 5),
     isCut: from > 0 || low > 0,
+    curveEnds: [curves?.before, curves?.after].some((curve) => {
+      const ends = curve ? endsOf(curve) : [];
+      return ends.some(({ quantity, rest }) => quantity > from && quantity < to && rest > low && rest < high);
+    }),
   };
+}
+
+/** The points at which a curve ends for want of preferences. */
+function endsOf({ spots, ends }: Curve): Spot[] {
+  return [...(ends.much ? [spots[0]] : []), ...(ends.little ? [spots[spots.length - 1]] : [])];
 }

@@ -24,10 +24,11 @@ interface LinesProps {
 
 /** Budgets before (ink), compensated (dashed) and after (accent); curves before (ink) and after (lighter), all named at their ends. */
 export function Lines({ frame, one: { budgets, curves }, clip }: LinesProps) {
+  const moved = budgets.after.price !== budgets.before.price;
   return (
     <g clipPath={`url(#${clip})`} fill="none">
       <path d={budgetPath(frame, budgets.before)} stroke="var(--ink)" strokeWidth="1.3" />
-      {budgets.compensated && (
+      {moved && budgets.compensated && (
         <path
           d={budgetPath(frame, budgets.compensated)}
           stroke="var(--accent)"
@@ -35,7 +36,7 @@ export function Lines({ frame, one: { budgets, curves }, clip }: LinesProps) {
           strokeDasharray="6 4"
         />
       )}
-      <path d={budgetPath(frame, budgets.after)} stroke="var(--accent)" strokeWidth="1.6" />
+      {moved && <path d={budgetPath(frame, budgets.after)} stroke="var(--accent)" strokeWidth="1.6" />}
       {curves && (
         <>
           <path d={curvePath(frame, curves.after)} stroke="var(--s6)" strokeWidth="2.2" />

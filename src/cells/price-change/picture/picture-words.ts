@@ -1,13 +1,14 @@
 import { capital } from "../../../../shared/study/words.ts";
 import { DECIMALS, printFixed } from "../../../../shared/tables/numbers.ts";
+import type { Frame } from "./frame.ts";
 import type { Compensation, OnePrice } from "./one-price.ts";
 
 const money = (value: number) => printFixed(value, DECIMALS.money);
 
 /** What the picture says of itself: the sentences above it, and the one it is read aloud by. */
 export function pictureWords(
-  { good, budgets, curves, noCurves, compensation }: OnePrice,
-  isCut: boolean,
+  { good, budgets, noCurves, compensation }: OnePrice,
+  { isCut, curveEnds }: Pick<Frame, "isCut" | "curveEnds">,
   by: Compensation,
 ): { notes: string[]; label: string } {
   const [before, after] = [budgets.before.price, budgets.after.price];
@@ -15,11 +16,10 @@ export function pictureWords(
     before === after
       ? `The price of ${good} stays at ${money(before)}: there is one budget.`
       : `Only its own price moves here, from ${money(before)} to ${money(after)}.`;
-  const ends = curves && [curves.before, curves.after].some(({ ends: { much, little } }) => much || little);
   const notes = [
     [what, ...(isCut ? ["The axes do not begin at 0."] : [])].join(" "),
     ...(noCurves === undefined ? [] : [`No indifference curves: ${noCurves}. Budgets and bundles alone are drawn.`]),
-    ...(ends
+    ...(curveEnds
       ? ["A curve ends where no preferences are behind the system: compensated demand stops falling with the price."]
       : []),
   ];

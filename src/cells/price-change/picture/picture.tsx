@@ -36,7 +36,7 @@ export function PriceChangePicture({ finding, good, by }: PictureProps) {
   const frame = frameOf(one, edges);
   const { decimals } = digitsForAll([one.bundles.before.quantity]);
   const digits = Math.min(decimals, 3);
-  const words = pictureWords(one, frame.isCut, by);
+  const words = pictureWords(one, frame, by);
   return (
     <div ref={ref}>
       {words.notes.map((note) => (
