@@ -80,8 +80,7 @@ async function comparedWith(
 ): Promise<ReplicatedCell> {
   const { name, kind, finding } = cell;
   if (found === undefined) return { name, kind, because: "The program refuses it now." };
-  if (finding === undefined)
-    return { name, kind, from: "data", because: "Of a text no numbers of its own are stored." };
+  if (finding === undefined) return { name, kind, from: "data", because: "Nothing of its own is stored to compare." };
   // By way of JSON, as the bundled one came: no undefined members, no negative zeros.
   const again: unknown = JSON.parse(JSON.stringify(found));
   return { name, kind, from: "data", compared: compareFindings(await bundle.json(finding), again) };
@@ -136,9 +135,9 @@ async function bring(
   const target = join(folder, "data", basename(file));
   if (given !== undefined) {
     await copyFile(given.path, target);
-    return { file, standing: "given", sha256: given.sha256, expected };
+    return { file, standing: "given", sha256: given.sha256, ...(expected && { expected }) };
   }
-  if (!included) return { file, standing: "absent", expected };
+  if (!included) return { file, standing: "absent", ...(expected && { expected }) };
   const hash = createHash("sha256");
   await pipeline(
     bundle.pieces(file),
@@ -150,7 +149,7 @@ async function bring(
     },
     createWriteStream(target),
   );
-  return { file, standing: "in the bundle", sha256: hash.digest("hex"), expected };
+  return { file, standing: "in the bundle", sha256: hash.digest("hex"), ...(expected && { expected }) };
 }
 
 async function sha256OfFile(path: string): Promise<string> {

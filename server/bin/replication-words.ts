@@ -4,7 +4,7 @@ import type { ReplicatedCell, ReplicatedData, Replication } from "./replication.
 
 /** Whether every cell could be compared with the very data and agrees. */
 export function isReplicated({ data, cells, complaints }: Replication): boolean {
-  const isSame = data.every(({ sha256, expected }) => sha256 === expected);
+  const isSame = data.every(({ sha256, expected }) => sha256 !== undefined && (expected ?? sha256) === sha256);
   return isSame && complaints.length === 0 && cells.every(isSound);
 }
 
@@ -31,7 +31,10 @@ export function replicationInWords(replication: Replication, program: string): s
 }
 
 function dataInWords({ file, standing, sha256, expected }: ReplicatedData): string {
-  if (sha256 === undefined) return `${file}: not in the bundle and not given (SHA-256 ${expected})`;
+  if (sha256 === undefined)
+    return `${file}: not in the bundle and not given${expected ? ` (SHA-256 ${expected})` : ""}`;
+  if (expected === undefined)
+    return `${file}: ${standing} (SHA-256 ${sha256}); the bundle knows the prepared data's fingerprint, compared below`;
   if (sha256 === expected) return `${file}: the very file, ${standing} (SHA-256 ${expected})`;
   return `${file}: ANOTHER FILE, ${standing}: its SHA-256 is ${sha256}, and the findings were made from ${expected}`;
 }

@@ -8,7 +8,8 @@ export interface ReplicatedData {
   readonly standing: "in the bundle" | "given" | "absent";
   /** SHA-256 of the file that was read; absent where there is none. */
   readonly sha256?: string;
-  readonly expected: string;
+  /** Absent where the bundle knows the fingerprint of the prepared data alone, which its findings hold. */
+  readonly expected?: string;
 }
 
 export interface ReplicatedCell {

@@ -1,7 +1,7 @@
+import type { ContentAbout, ContentCell } from "../../shared/bundle/contents.ts";
 import type { DataSpecification } from "../../shared/schemas/data.ts";
 import type { BundleManifest } from "../../shared/schemas/replication-bundle.ts";
 import type { SystemSpecification } from "../../shared/schemas/system.ts";
-import type { ContentAbout, ContentCell } from "./contents.ts";
 
 /** What a data cell reads and asks, as a worker finds it. */
 export interface DataRead {

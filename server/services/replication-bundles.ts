@@ -182,8 +182,6 @@ function listedFile(
   return {
     cells: [...cells],
     file,
-    // Of the table until the file itself has been read.
-    sha256: upload.sha256 ?? "",
     bytes: upload.bytes,
     rows: upload.rows ?? 0,
     columns: shape?.columns.length ?? 0,

@@ -28,11 +28,11 @@ export const bundledData = z.strictObject({
   /** The data cells that read it. */
   cells: z.array(cellName).min(1),
   file: fileName,
-  /** Of the file's bytes. */
-  sha256: fingerprint,
-  bytes: count,
-  rows: count,
-  columns: count,
+  /** Of the file's bytes; a bundle made from a referee copy knows the fingerprint of the prepared data alone. */
+  sha256: fingerprint.optional(),
+  bytes: count.optional(),
+  rows: count.optional(),
+  columns: count.optional(),
   /** Of a workbook. */
   sheet: z.string().optional(),
   included: z.boolean(),

@@ -18,6 +18,8 @@ const FAULTS = [
   ["shared/study", "yjs", "shared/ runs unchanged"],
   ["shared/tables", "../study/resolve.ts", "tables/ print findings"],
   ["shared/tables", "react", "shared/ runs unchanged"],
+  ["shared/bundle", "../economics/slutsky.ts", "bundle/ puts texts together"],
+  ["shared/bundle", "node:fs", "shared/ runs unchanged"],
   ["server/engine/cells", "../../db/client.ts", "The engine computes"],
   ["server/engine/columns", "express", "The engine computes"],
   ["server/engine/inference", "../../http/errors.ts", "The engine computes"],

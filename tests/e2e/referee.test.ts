@@ -1,9 +1,11 @@
 import { createHash } from "node:crypto";
-import { readFileSync } from "node:fs";
+import { readFileSync, writeFileSync } from "node:fs";
 import { parse } from "csv-parse/sync";
 import type { Browser, BrowserContext, Page } from "playwright-core";
 import { afterAll, beforeAll, expect, it } from "vitest";
+import { replicateBundle } from "../../server/bin/replicate-bundle.ts";
 import { simulateSurvey } from "../../server/demo/simulate.ts";
+import { QUIET } from "../../server/engine/run.ts";
 import { type RefereeCopy, refereeCopy, type SealedContent } from "../../shared/schemas/referee-copy.ts";
 import { canonicalJson } from "../../shared/study/canonical-json.ts";
 import { printFixed } from "../../shared/tables/numbers.ts";
@@ -192,6 +194,27 @@ it("the numbers taken away as CSV and JSON are the same doubles", async () => {
   const json = await download("Everything sealed");
   expect(JSON.parse(json)).toEqual(copy.content);
   expect(createHash("sha256").update(json).digest("hex")).toBe(copy.fingerprint);
+});
+
+it("whoever has the data finds every sealed number again from the bundle, and without them the matrix", async () => {
+  const [saved] = await Promise.all([
+    page.waitForEvent("download"),
+    page.getByRole("button", { name: "Replication bundle, without the data" }).click(),
+  ]);
+  expect(saved.suggestedFilename()).toBe(`referee-copy-${copy.fingerprint.slice(0, 8)}-replication.zip`);
+  const path = `${product.folder}/sealed.zip`;
+  await saved.saveAs(path);
+  const { matrix, system, data } = copy.content.cells;
+  const alone = await replicateBundle(path, [], QUIET);
+  const again = alone.cells.find(({ name }) => name === matrix);
+  expect(again).toMatchObject({ from: "coefficients", compared: { apartCount: 0, unlikeCount: 0 } });
+  const purchases = `${product.folder}/whose-name-tells-nothing.csv`;
+  writeFileSync(purchases, simulateSurvey());
+  const whole = await replicateBundle(path, [purchases], QUIET);
+  for (const name of [data, system, matrix]) {
+    const cell = whole.cells.find((one) => one.name === name);
+    expect(cell, name).toMatchObject({ from: "data", compared: { apartCount: 0, unlike: [] } });
+  }
 });
 
 /** Every key and every value of some JSON. */

@@ -1,5 +1,5 @@
 import { beforeAll, describe, expect, it } from "vitest";
-import { withoutHouseholds } from "../../../../server/bundle/without-households.ts";
+import { withoutHouseholds } from "../../../../shared/bundle/without-households.ts";
 import { runPriceChange, runSystem } from "../../../../server/engine/cells/index.ts";
 import type { PreparedData } from "../../../../server/engine/columns/prepared-data.ts";
 import { QUIET, type RunControl } from "../../../../server/engine/run.ts";

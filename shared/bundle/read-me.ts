@@ -1,4 +1,4 @@
-import type { BundleManifest } from "../../shared/schemas/replication-bundle.ts";
+import type { BundleManifest } from "../schemas/replication-bundle.ts";
 
 /** README.txt of a replication bundle: what lies in it, how to run it, and what to be careful with. */
 export function readMe({ program, study, madeAt, cells, leftOut, data }: BundleManifest): string {

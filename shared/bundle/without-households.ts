@@ -1,5 +1,5 @@
-import type { Finding } from "../../shared/schemas/cell.ts";
-import { withoutDraws } from "../../shared/study/without-draws.ts";
+import type { Finding } from "../schemas/cell.ts";
+import { withoutDraws } from "../study/without-draws.ts";
 
 /** Lists of rows of the upload, by the names of their keys: they point at single households. */
 const ROWS = new Set(["rows", "firstRows", "brokenRows", "cycle"]);

@@ -1,17 +1,17 @@
-import type { CellKind, Finding, FindingOf } from "../../shared/schemas/cell.ts";
-import type { BundledCell } from "../../shared/schemas/replication-bundle.ts";
-import type { SystemSpecification } from "../../shared/schemas/system.ts";
-import type { UnconditionalFormula } from "../../shared/schemas/two-stage.ts";
-import { canonicalJson } from "../../shared/study/canonical-json.ts";
-import type { CellSource } from "../../shared/study/cell-source.ts";
-import { removeKey, setKey } from "../../shared/study/edit.ts";
-import { withoutDraws } from "../../shared/study/without-draws.ts";
-import { writeStudyFile } from "../../shared/study/write-study-file.ts";
-import { covarianceCsv } from "../../shared/tables/covariance.ts";
-import { tableCsv } from "../../shared/tables/csv.ts";
-import { tableLatex } from "../../shared/tables/latex.ts";
-import { methodsParagraph, paragraphBibtex, paragraphWithReferences } from "../../shared/tables/methods/paragraph.ts";
-import { FINDING_TABLES } from "../../shared/tables/of-finding.ts";
+import type { CellKind, Finding, FindingOf } from "../schemas/cell.ts";
+import type { BundledCell } from "../schemas/replication-bundle.ts";
+import type { SystemSpecification } from "../schemas/system.ts";
+import type { UnconditionalFormula } from "../schemas/two-stage.ts";
+import { canonicalJson } from "../study/canonical-json.ts";
+import type { CellSource } from "../study/cell-source.ts";
+import { removeKey, setKey } from "../study/edit.ts";
+import { withoutDraws } from "../study/without-draws.ts";
+import { writeStudyFile } from "../study/write-study-file.ts";
+import { covarianceCsv } from "../tables/covariance.ts";
+import { tableCsv } from "../tables/csv.ts";
+import { tableLatex } from "../tables/latex.ts";
+import { methodsParagraph, paragraphBibtex, paragraphWithReferences } from "../tables/methods/paragraph.ts";
+import { FINDING_TABLES } from "../tables/of-finding.ts";
 import { tabledWithoutHouseholds, withoutHouseholds } from "./without-households.ts";
 
 /** A cell that goes into a bundle, with what it found; a text finds nothing that is stored. */
@@ -19,6 +19,8 @@ export interface ContentCell {
   readonly cell: Pick<CellSource, "name" | "kind" | "source">;
   readonly fingerprint?: string;
   readonly finding?: Finding;
+  /** What is stored in its place where the finding itself is not at hand: the sums of a sealed data cell. */
+  readonly sums?: object;
   /** Of a system: what was asked, for its methods paragraph. */
   readonly asked?: SystemSpecification;
   /** Of a system: by which formulas its elasticities are taken to unconditional ones. */
@@ -62,8 +64,13 @@ function readable({ cell }: ContentCell, { files }: ContentAbout): ContentCell["
 function partsOf(one: ContentCell, stem: string, isWithheld: boolean): { parts: TextPart[]; listed: BundledCell } {
   const { cell, fingerprint, finding } = one;
   const listed = { name: cell.name, kind: cell.kind as CellKind, ...(fingerprint !== undefined && { fingerprint }) };
-  if (finding === undefined) return { parts: [], listed: { ...listed, tables: [] } };
-  const file = { name: `findings/${stem}.json`, content: `${canonicalJson(leaving(finding, isWithheld))}\n` };
+  const at = `findings/${stem}.json`;
+  if (finding === undefined) {
+    if (one.sums === undefined) return { parts: [], listed: { ...listed, tables: [] } };
+    const sums = { name: at, content: `${canonicalJson(one.sums)}\n` };
+    return { parts: [sums], listed: { ...listed, finding: at, tables: [] } };
+  }
+  const file = { name: at, content: `${canonicalJson(leaving(finding, isWithheld))}\n` };
   const tabled = isWithheld ? tabledWithoutHouseholds(finding) : finding;
   const tables = tabled === undefined ? [] : tableParts(tabled, stem);
   return {
