@@ -88,7 +88,7 @@ const KEYS: { readonly [K in CellKind]: Readonly<Record<KeysOf<K>, Told>> } = {
     index: ["of Stone's index in la-aids: its weights held, or moving with the shares"],
     level: ["the level of confidence of intervals and classes; 0.95 unless said otherwise"],
     within: ["a broader system in which these goods are one good: unconditional elasticities", "system"],
-    as: ["which good of the broader system these goods are"],
+    as: ["which good of the broader system these goods are", "good"],
     unconditional: ["by which formula: carpentier guyomard unless said otherwise, or edgerton"],
   },
   slutsky: {

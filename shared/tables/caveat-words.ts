@@ -9,7 +9,13 @@ const WORDS: Readonly<Record<NonNullable<Caveats>[number], string>> = {
   "first stage as given": "The standard errors take the first stage of total expenditure as data.",
 };
 
-/** What a reader has to know of the system beneath, a sentence each. */
-export function caveatSentences({ caveats = [] }: { readonly caveats?: Caveats }): string[] {
-  return caveats.map((caveat) => WORDS[caveat]);
+interface Cautioned {
+  readonly caveats?: Caveats;
+  readonly conditionalOn?: string;
+}
+
+/** What a reader has to know of the system beneath, a sentence each; of one group only where that is not said by its name. */
+export function caveatSentences({ caveats = [], conditionalOn }: Cautioned): string[] {
+  const untold = caveats.filter((caveat) => caveat !== "conditional on a group" || conditionalOn === undefined);
+  return untold.map((caveat) => WORDS[caveat]);
 }

@@ -132,21 +132,28 @@ function estimate({ largest = 0, standardError, interval }: ToldSystem["checks"]
   return `${printQuantity(largest, "entry")}${error}${ends}`;
 }
 
-type ToldMatrix = Pick<SlutskyFinding, "at" | "pointName" | "sample" | "caveats">;
+type ToldMatrix = Pick<SlutskyFinding, "at" | "pointName" | "sample" | "caveats" | "conditionalOn">;
 
 /** What the matrix is at its point, then where it breaks. */
-export function slutskySentence({ at: { checks }, pointName, sample, caveats }: ToldMatrix): string {
+export function slutskySentence({ at: { checks }, pointName, sample, caveats, conditionalOn }: ToldMatrix): string {
   const at = withArticle(pointName);
+  const matrix = `The matrix${conditionally({ conditionalOn })}${conditionalOn === undefined ? "" : ","}`;
   const { symmetry, negativity } = checks;
   const symmetric = symmetry.holds ? "symmetric" : `not symmetric, by up to ${printSize(symmetry.size)},`;
   const first = !negativity.stated
-    ? `The matrix is ${symmetric.replace(/,$/, "")} at ${at}. Without homogeneity, negativity cannot be stated.`
+    ? `${matrix} is ${symmetric.replace(/,$/, "")} at ${at}. Without homogeneity, negativity cannot be stated.`
     : negativity.holds
-      ? `The matrix is ${symmetric} and negative semidefinite at ${at}.`
-      : `The matrix is ${symmetric} and not negative semidefinite at ${at}: the largest eigenvalue is ${estimate(negativity)}.`;
+      ? `${matrix} is ${symmetric} and negative semidefinite at ${at}.`
+      : `${matrix} is ${symmetric} and not negative semidefinite at ${at}: the largest eigenvalue is ${estimate(negativity)}.`;
   const monotone = checks.monotonicity.holds ? [] : [`A predicted share leaves the range from 0 to 1 at ${at}.`];
   const undefinedRows = undefinedSentence(checks.sample?.undefined, checks.sample?.rows ?? 0);
-  return [first, ...monotone, ...whereItBreaks(sample), ...undefinedRows, ...caveatSentences({ caveats })].join(" ");
+  return [
+    first,
+    ...monotone,
+    ...whereItBreaks(sample),
+    ...undefinedRows,
+    ...caveatSentences({ caveats, conditionalOn }),
+  ].join(" ");
 }
 
 function whereItBreaks(sample: ToldMatrix["sample"]): string[] {

@@ -47,6 +47,7 @@ export function BroaderView({ finding, below }: BroaderProps) {
           },
         ]}
       />
+      <CopyTable table={groupTable(finding)} />
       <div className="flex flex-wrap items-baseline justify-between gap-x-6 gap-y-1 pt-2">
         <p className="type-small text-ink2">
           What one per cent more of the price of another good of the broader system does to the good of the row.
@@ -75,10 +76,7 @@ export function BroaderView({ finding, below }: BroaderProps) {
           )),
         }))}
       />
-      <div className="flex flex-wrap gap-x-6">
-        <CopyTable table={groupTable(finding)} />
-        <CopyTable table={othersTable(finding, which)} />
-      </div>
+      <CopyTable table={othersTable(finding, which)} />
     </section>
   );
 }

@@ -63,7 +63,9 @@ export function ElasticitiesOpen({ finding: told }: OpenProps<"elasticities">) {
       {isTwoStage(told) && (
         <>
           <StagesView finding={told} below={below} />
-          <StageSwitch stage={stage} onChange={setStage} />
+          <div className="border-line border-t pt-4">
+            <StageSwitch stage={stage} onChange={setStage} />
+          </div>
         </>
       )}
       {several && (

@@ -91,7 +91,10 @@ function named({ cellsNow, uploads, name, kind }: EditorSubject, word: KeyWord, 
         .filter(({ type }) => word.names === "column" || type === "number")
         .map(({ name: label, type }) => ({ label, apply: written(label), detail: type }));
     case "good":
-      return goodsOf({ cells, kind }, text).map((good) => ({ label: good, apply: written(good) }));
+      return goodsOf({ cells, kind, isOfBroader: word.key === "as" }, text).map((good) => ({
+        label: good,
+        apply: written(good),
+      }));
     default:
       return cells
         .filter((cell) => cell.kind === word.names && cell.name !== name)
@@ -102,13 +105,20 @@ function named({ cellsNow, uploads, name, kind }: EditorSubject, word: KeyWord, 
 /** A name as YAML writes it: in quotes where it must be. */
 const written = (name: string) => keyEdit("", ["k"], [name]).insert.trim().slice("k: [".length, -1);
 
-type Rest = Pick<EditorSubject, "uploads" | "kind"> & { readonly cells: readonly CellSource[] };
+interface Rest extends Pick<EditorSubject, "uploads" | "kind"> {
+  readonly cells: readonly CellSource[];
+  /** The data asked for are those beneath the broader system that the cell names. */
+  readonly isOfBroader?: boolean;
+}
 
 /** The keys of the data cell the text is, or reads. */
-function dataOf({ cells, kind }: Pick<Rest, "cells" | "kind">, text: string): Readonly<Record<string, unknown>> {
+function dataOf(
+  { cells, kind, isOfBroader }: Pick<Rest, "cells" | "kind" | "isOfBroader">,
+  text: string,
+): Readonly<Record<string, unknown>> {
   if (kind === "data") return parseCell("data", text).written;
-  const { system, data } = parseCell(kind ?? "", text).written;
-  const reads = kind === "system" ? data : (system ?? data);
+  const { system, data, within } = parseCell(kind ?? "", text).written;
+  const reads = kind === "system" ? data : isOfBroader ? within : (system ?? data);
   const read = cells.find(({ name }) => name === reads);
   if (!read) return {};
   return read.kind === "data" ? parseCell("data", read.source).written : dataOf({ cells, kind: "system" }, read.source);
@@ -121,6 +131,6 @@ function columnsOf({ cells, uploads, kind }: Rest, text: string): { name: string
   return [...derived.map((name) => ({ name, type: "number" })), ...(upload?.columns ?? [])];
 }
 
-function goodsOf(rest: Pick<Rest, "cells" | "kind">, text: string): string[] {
+function goodsOf(rest: Pick<Rest, "cells" | "kind" | "isOfBroader">, text: string): string[] {
   return Object.keys((dataOf(rest, text).goods as object | null | undefined) ?? {});
 }

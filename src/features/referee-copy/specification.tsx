@@ -32,7 +32,9 @@ export function Specification({ content, coefficients }: { content: SealedConten
           </div>
         ))}
       </dl>
-      {content.slutsky.caveats && <p className="type-small mt-1">{caveatSentences(content.slutsky).join(" ")}</p>}
+      {content.slutsky.caveats && (
+        <p className="type-small mt-1">{caveatSentences({ caveats: content.slutsky.caveats }).join(" ")}</p>
+      )}
       <p className="mt-1 flex gap-4 print:hidden">
         {word("coefficients", `Coefficients, ${printCount(content.system.coefficients.length)} of them`)}
         {word("text", "As text")}

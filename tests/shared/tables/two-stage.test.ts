@@ -21,8 +21,7 @@ describe("the sentence of two stages", () => {
   it("says what goods are given the whole budget first, then what they are given the group's", () => {
     expect(elasticitiesSentence(sampleTwoStage())).toBe(
       "Unconditionally, by Carpentier and Guyomard (2001), at the sample mean, grains, dairy and meat are necessities. " +
-        "Conditional on food expenditure, at the sample mean, by 95\u2009% intervals, meat is a luxury, grains is a necessity and dairy is undecided. " +
-        "The system is of one group of goods: what stands here is conditional on what is spent on the group.",
+        "Conditional on food expenditure, at the sample mean, by 95\u2009% intervals, meat is a luxury, grains is a necessity and dairy is undecided.",
     );
   });
 
@@ -122,7 +121,9 @@ it("labels system and matrix of a group wherever their numbers stand", () => {
   expect(systemSentence({ ...system, conditionalOn })).toContain(", conditional on food expenditure.");
   expect(coefficientTable({ ...system, conditionalOn }).title).toMatch(/, conditional on food expenditure$/);
   const matrix = { ...slutsky, conditionalOn, caveats: ["conditional on a group" as const] };
-  expect(slutskySentence(matrix)).toContain("conditional on what is spent on the group.");
+  expect(slutskySentence(matrix)).toMatch(/^The matrix, conditional on food expenditure, is /);
+  const { conditionalOn: _, ...unnamed } = matrix;
+  expect(slutskySentence(unnamed)).toContain("conditional on what is spent on the group.");
   expect(slutskyTable(matrix, "share").title).toMatch(/, conditional on food expenditure$/);
   expect(compensatedTable(matrix).title).toMatch(/, conditional on food expenditure$/);
   const [good] = system.fitted.goods;
