@@ -225,7 +225,9 @@ function conventionsOf(drawn: Drawn): string[] {
           : []),
       ];
     case "fit of shares":
-      return ["Each bin holds a tenth of the weight of all rows, equal predictions together."];
+      return [
+        "Each bin holds a tenth of the weight of all rows, equal predictions together; axes begin where the bins do.",
+      ];
     case "price distribution":
       return [
         `Prices from the 1st to the 99th percentile, in the units uploaded; ${printPercent(drawn.below)} of the weight lies below and ${printPercent(drawn.above)} above.`,

@@ -55,6 +55,15 @@ describe("a good that gets another name", () => {
     expect(renamed("levy", "price change", source)).toBe(source.replaceAll("dairy", "milk & cheese"));
   });
 
+  it("is followed by the goods a figure shows, of the system or of a price change on it", () => {
+    const source = "system: base\nshow: engel curves\ngoods: [grains, dairy] # two of them\n";
+    expect(renamed("curves", "figure", source)).toBe(source.replace("dairy", "milk & cheese"));
+    expect(renamed("shares", "figure", "data: survey\nshow: shares by group\n")).toBeUndefined();
+    const elsewhere = cell("other", "data", "upload: o.csv\ngoods: {dairy: {price: p, quantity: q}}\n");
+    const theirs = "data: other\nshow: price distribution\ngoods: [dairy]\n";
+    expect(renamed("theirs", "figure", theirs, [elsewhere])).toBeUndefined();
+  });
+
   it("is followed by numbers quoted of cells on the data, where a good is asked for and nowhere else", () => {
     const text =
       "Dairy {base: eta, Dairy, alone}, {base: demographic, dairy, dairy}, {matrix: entry, dairy, grains}, {survey: mean share, dairy}, `{base: eta, dairy}`, dairy.";
