@@ -4,12 +4,7 @@ import type { FittedCoefficients } from "../systems/index.ts";
 import { type Elasticities, elasticityGradients, elasticityValues } from "./elasticities.ts";
 import { combined } from "./evaluation.ts";
 import type { ResponseGradients, Responses } from "./responses.ts";
-import {
-  type GroupAsGood,
-  passedOn,
-  type UnconditionalValues,
-  unconditionalValues,
-} from "./two-stage.ts";
+import { type GroupAsGood, passedOn, type UnconditionalValues, unconditionalValues } from "./two-stage.ts";
 
 /** One of the two systems at its point: responses, their derivatives in its θ, and the covariance of θ. */
 export interface Stage {

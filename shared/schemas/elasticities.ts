@@ -8,7 +8,7 @@ import { pointSpecification } from "./slutsky.ts";
 import { namedPoint, restrictionTest } from "./system.ts";
 import { UNCONDITIONAL_FORMULAS, unconditionalFinding } from "./two-stage.ts";
 
-export { type ClassOfGood, classOfGood, type EstimatesByPrice, estimates, VERDICTS } from "./elasticity-estimates.ts";
+export { type ClassOfGood, type EstimatesByPrice, estimates } from "./elasticity-estimates.ts";
 
 /** What stands for total expenditure where a column is asked for. */
 export const TOTAL_EXPENDITURE = "total expenditure";
@@ -62,7 +62,10 @@ export const elasticitiesSpecification = z
         tell("within", "within meets both systems at one point: leave out groups and over");
       }
       if (typeof at === "object" && "prices" in at) {
-        tell("at", "prices of one's own are known of one system only: within takes base point, mean, a row or a quantile");
+        tell(
+          "at",
+          "prices of one's own are known of one system only: within takes base point, mean, a row or a quantile",
+        );
       }
     }
     const unobserved = typeof at === "object" && ("prices" in at || "x" in at);

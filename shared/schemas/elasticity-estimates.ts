@@ -6,12 +6,12 @@ export const estimates = z.strictObject({ values: vector, errors: vector, low: v
 export const estimatesByPrice = z.strictObject({ values: matrix, errors: matrix, low: matrix, high: matrix });
 export type EstimatesByPrice = z.infer<typeof estimatesByPrice>;
 
-export const VERDICTS = ["yes", "no", "undecided"] as const;
+const VERDICTS = ["yes", "no", "undecided"] as const;
 const verdict = z.enum(VERDICTS);
 /** By the sign of an elasticity: null on the diagonal. */
 const pair = z.enum(["substitutes", "complements", "undecided"]).nullable();
 
-export const classOfGood = z.strictObject({
+const classOfGood = z.strictObject({
   good: goodName,
   kind: z.enum(["luxury", "necessity", "inferior", "undecided"]),
   normal: verdict,
