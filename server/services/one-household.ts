@@ -13,16 +13,30 @@ const OUTERMOST_QUANTILE = 0.01;
  */
 const SMALLEST_GROUP = 10;
 
+const STANDS_AT_A_POINT = ["slutsky", "elasticities", "price change", "figure"] as const;
+
 /** What stands at a row of the upload, or for a handful of them, would show a referee those households. */
 export function refuseOneHousehold({ cell, finding }: { cell: CellSource; finding: FindingOf<CellKind> }): void {
   const { name, source } = cell;
   if (finding.kind === "elasticities") refuseSmallGroups(name, finding);
   if (finding.kind === "price change" && finding.incidence) refuseSmallGroups(name, finding.incidence);
-  if (finding.kind !== "slutsky" && finding.kind !== "elasticities" && finding.kind !== "price change") return;
+  if (finding.kind === "figure") refuseSmallGroups(name, drawnGroups(finding));
+  if (!STANDS_AT_A_POINT.some((kind) => kind === finding.kind)) return;
   const { specification } = parseCell(finding.kind, source);
   if (specification?.kind !== finding.kind) throw conflict(`${name} is changing; seal it again.`);
-  const pointName = finding.kind === "elasticities" ? finding.groups[0].name : finding.pointName;
-  if (specification.at !== undefined) refuseOnePoint(name, pointName, specification.at);
+  if (!("at" in specification) || specification.at === undefined) return;
+  const pointName =
+    finding.kind === "elasticities" ? finding.groups[0].name : "pointName" in finding && finding.pointName;
+  refuseOnePoint(name, pointName || "a point of its own", specification.at);
+}
+
+/** The groups a figure is drawn of, or its bins of rows. */
+function drawnGroups({ drawn }: FindingOf<"figure">): Grouped {
+  const without = "without" in drawn ? drawn.without : [];
+  if ("groups" in drawn) return { groups: drawn.groups, without };
+  if (drawn.show !== "fit of shares") return { groups: [], without };
+  const bins = drawn.goods.flatMap(({ good, bins }) => bins.map(({ rows }) => ({ name: `a bin of ${good}`, rows })));
+  return { groups: bins, without };
 }
 
 function refuseOnePoint(name: string, pointName: string, at: typeof pointSpecification._output): void {

@@ -32,6 +32,8 @@ const SOURCES = new Map([
   ["eta", ["elasticities", "system: base\n"]],
   ["laws", ["tests", "system: base\n"]],
   ["levy", ["price change", "system: base\nprices: {good1: {ad valorem: 20}}\n"]],
+  ["curve", ["figure", "system: base\nshow: engel curves\nat: {row: 12}\n"]],
+  ["fit", ["figure", "system: base\nshow: fit of shares\n"]],
   ["argument", ["text", "Brand 1 has {base: eta, good1}.\n"]],
   ["draft", ["system", "data: weeks\nform: no such form\n"]],
   ["draft matrix", ["slutsky", "system: draft\n"]],
@@ -221,7 +223,11 @@ describe("a bundle without its data", () => {
     expect(parts.filter((part) => part.startsWith("data/"))).toEqual([]);
     expect(parts).toContain("moments/base.json");
     const { leftOut, cells } = JSON.parse(unzipped(path, "bundle.json"));
-    expect(leftOut.find(({ name }: { name: string }) => name === "week 12").because).toMatch(/row 12.*one household/);
+    for (const one of ["week 12", "curve"]) {
+      const because = leftOut.find(({ name }: { name: string }) => name === one)?.because;
+      expect(because, one).toMatch(/row 12.*one household/);
+    }
+    expect(parts).toContain("findings/fit.json");
     expect(cells.find(({ name }: { name: string }) => name === "curved").moments.absent).toMatch(
       /move with its coefficients/,
     );
