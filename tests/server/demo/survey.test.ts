@@ -10,6 +10,7 @@ import { QUIET } from "../../../server/engine/run.ts";
 import { symmetricEigen } from "../../../shared/numerics/eigen.ts";
 import type { DataSpecification } from "../../../shared/schemas/data.ts";
 import type { SystemFinding, SystemSpecification } from "../../../shared/schemas/system.ts";
+import { spread } from "../../../shared/study/order.ts";
 import { resolveCells } from "../../../shared/study/resolve.ts";
 import { bytesOf } from "../engine/columns/bytes.ts";
 
@@ -20,7 +21,8 @@ let data: PreparedData;
 const read = (csv: string) => readCsv(bytesOf(csv, 65_536), study.upload.name, QUIET);
 
 function resolve() {
-  const sources = study.cells.map((cell, at) => ({ ...cell, id: cell.name, order: `a${at}` }));
+  const places = spread(study.cells.length);
+  const sources = study.cells.map((cell, at) => ({ ...cell, id: cell.name, order: places[at] }));
   const { table, columns } = file;
   return resolveCells(sources, [{ name: table.name, sha256: table.sha256, rows: table.rows, columns }]);
 }
