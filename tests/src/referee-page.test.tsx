@@ -203,7 +203,7 @@ describe("a copy that has been replaced", () => {
     const newer = { sealedAt: "2032-04-01T08:00:00.000Z", fingerprint: "f".repeat(64) };
     const { fetched, user } = open({ ...copy, newer });
     const notice = await screen.findByRole("complementary", { name: "A newer copy" });
-    expect(notice).toHaveTextContent("on 1 April 2032 at 08:00. This one stays as it was sealed.");
+    expect(notice).toHaveTextContent("on 1 April 2032 at 8:00. This one stays as it was sealed.");
     await user.click(within(notice).getByRole("button", { name: "Read the newer copy" }));
     expect(fetched.mock.lastCall?.[0 as never]).toBe("/api/referee/a%20token%2Fwith%20a%20slash/newest");
   });
