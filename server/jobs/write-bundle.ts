@@ -1,9 +1,9 @@
 import { createHash } from "node:crypto";
+import { bundleContents, fileStems } from "../../shared/bundle/contents.ts";
+import { readMe } from "../../shared/bundle/read-me.ts";
 import { type BundledCell, type BundleManifest, bundleManifest } from "../../shared/schemas/replication-bundle.ts";
 import { canonicalJson } from "../../shared/study/canonical-json.ts";
 import type { BundleJob, BundleWritten } from "../bundle/bundle-job.ts";
-import { bundleContents, fileStems } from "../../shared/bundle/contents.ts";
-import { readMe } from "../../shared/bundle/read-me.ts";
 import { writeZip, type ZipPart } from "../bundle/write-zip.ts";
 import type { Database } from "../db/client.ts";
 import { momentsToStore } from "../engine/cells/stored-moments.ts";

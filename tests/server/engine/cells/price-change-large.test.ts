@@ -1,9 +1,9 @@
 import { beforeAll, describe, expect, it } from "vitest";
-import { withoutHouseholds } from "../../../../shared/bundle/without-households.ts";
 import { runPriceChange, runSystem } from "../../../../server/engine/cells/index.ts";
 import type { PreparedData } from "../../../../server/engine/columns/prepared-data.ts";
 import { QUIET, type RunControl } from "../../../../server/engine/run.ts";
 import { startThreads } from "../../../../server/engine/threads/start-threads.ts";
+import { withoutHouseholds } from "../../../../shared/bundle/without-households.ts";
 import type { PriceChangeFinding } from "../../../../shared/schemas/price-change.ts";
 import type { SystemFinding } from "../../../../shared/schemas/system.ts";
 import { specificationOf, tunaWeeks } from "../../../support/tuna.ts";
