@@ -153,6 +153,8 @@ it("a reader remarks on a cell, which the owner sees at once, and still writes n
   const before = file();
   const cell = "linear";
   const remarks = (page: Page) => page.getByRole("region", { name: `Remarks on ${cell}` });
+  // The page she came back to is open to remarks once it has its connection.
+  await savedState(petra).filter({ hasText: "Reading along" }).waitFor();
   await remarks(petra)
     .getByRole("button", { name: `Add a remark on ${cell}` })
     .click();
@@ -161,6 +163,8 @@ it("a reader remarks on a cell, which the owner sees at once, and still writes n
     .fill("Why this index? See https://vihe.example/indices.");
   await remarks(petra).getByLabel("About").selectOption({ label: "index" });
   await remarks(petra).getByRole("button", { name: "Add the remark" }).click();
+  await remarks(petra).getByText("Why this index?").first().waitFor();
+  await remarks(petra).getByRole("button", { name: "Add the remark" }).waitFor({ state: "hidden" });
   await remarks(ilse).getByText("Why this index?").waitFor();
   const link = remarks(ilse).getByRole("link", { name: "https://vihe.example/indices" });
   expect(await link.getAttribute("rel")).toBe("noopener nofollow");

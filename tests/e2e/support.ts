@@ -8,7 +8,8 @@ import { temporaryFolder } from "../support/temporary.ts";
 
 const ROOT = fileURLToPath(new URL("../..", import.meta.url));
 const PROGRAM = fileURLToPath(new URL("../../dist/server/main.js", import.meta.url));
-const BROWSER = process.env.CHROMIUM_PATH || "/usr/bin/chromium";
+const SHELL = "/usr/bin/chromium-headless-shell";
+const BROWSER = process.env.CHROMIUM_PATH || (existsSync(SHELL) ? SHELL : "/usr/bin/chromium");
 const FLAGS = [
   "--no-sandbox",
   "--disable-dev-shm-usage",
