@@ -137,6 +137,11 @@ it("a reload with unsynced edits warns, and loses nothing", async () => {
     "alone",
   );
   await typeAt("end", tomasText, "; before the reload");
+  await eventually(
+    () => wordsOf(savedState(tomas)),
+    (words) => /Working alone since .*kept/.test(words),
+    "kept here",
+  );
   const kinds: string[] = [];
   tomas.on("dialog", (dialog) => {
     kinds.push(dialog.type());
