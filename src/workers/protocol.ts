@@ -1,4 +1,5 @@
 import type { Elasticities } from "../../shared/economics/elasticities.ts";
+import type { PriceAnswer } from "../../shared/economics/price-change/answer-at.ts";
 import type { PriceChangeFinding, PriceQuestion } from "../../shared/schemas/price-change.ts";
 import type { RefereeCopy } from "../../shared/schemas/referee-copy.ts";
 import type { MatrixAtPoint } from "../../shared/schemas/slutsky.ts";
@@ -15,9 +16,6 @@ export interface PricesAsked
   readonly question: PriceQuestion;
 }
 
-/** The parts of a price change finding that need no rows. */
-export type PricesTried = Pick<PriceChangeFinding, "at" | "unseen" | "checks">;
-
 /** What the worker can be asked, and what each question is answered with. */
 export interface Questions {
   matrix: {
@@ -31,7 +29,7 @@ export interface Questions {
     answer: MatrixAtPoint;
   };
   elasticities: { ask: { readonly fitted: FittedSystem; readonly point: Point }; answer: Elasticities };
-  prices: { ask: PricesAsked; answer: PricesTried };
+  prices: { ask: PricesAsked; answer: PriceAnswer };
   verification: { ask: RefereeCopy; answer: Verification };
 }
 export type QuestionKind = keyof Questions;

@@ -1,10 +1,10 @@
 import { beforeAll, describe, expect, test } from "vitest";
 import { runPriceChange, runSystem } from "../../server/engine/cells/index.ts";
 import type { PreparedData } from "../../server/engine/columns/prepared-data.ts";
+import type { PriceAnswer } from "../../shared/economics/price-change/answer-at.ts";
 import type { PriceChangeFinding } from "../../shared/schemas/price-change.ts";
 import type { SystemFinding } from "../../shared/schemas/system.ts";
 import { replyTo } from "../../src/workers/answer.ts";
-import type { PricesTried } from "../../src/workers/protocol.ts";
 import { specificationOf, tunaWeeks } from "../support/tuna.ts";
 
 /** Browser against server: what a ruler shows is the stored answer to the same question, to the last digit. */
@@ -30,12 +30,12 @@ beforeAll(async () => {
 });
 
 /** By the worker's own door, everything passed as a worker passes it: by copy. */
-function inTheBrowser(finding: PriceChangeFinding): PricesTried {
+function inTheBrowser(finding: PriceChangeFinding): PriceAnswer {
   const { fitted, point, pointName, priceScale, totalScale, level, priceRange, question } = finding;
   const ask = { fitted, point, pointName, priceScale, totalScale, level, priceRange, question };
   const reply = structuredClone(replyTo(structuredClone({ id: 1, kind: "prices", ask })));
   if ("refusal" in reply) throw new Error(reply.refusal);
-  return reply.answer as PricesTried;
+  return reply.answer as PriceAnswer;
 }
 
 describe.each(Object.entries(SYSTEMS))("%s", (_, keys) => {

@@ -1,6 +1,4 @@
-import { theoryChecksAt } from "../../../shared/economics/checks.ts";
-import { changeAt } from "../../../shared/economics/price-change/change-at.ts";
-import { unseenPrices } from "../../../shared/economics/price-change/unseen-prices.ts";
+import { answerAt } from "../../../shared/economics/price-change/answer-at.ts";
 import {
   type PriceChangeFinding,
   type PriceChangeSpecification,
@@ -37,13 +35,11 @@ export function runPriceChange(
   requireGoods(question, fitted.goods);
   const { point, pointName } = pointOf(specification.at, system, data);
   const draws = system.bootstrap?.draws;
-  const at = refusingRanges(
-    () => changeAt(fitted, point, question, { priceScale, totalScale, level, ...(draws && { draws }) }),
-    pointName,
-  );
   const range = rangeOf(data);
   const inUnits = (ends: readonly number[]) => ends.map((end, i) => end * priceScale[i]);
   const priceRange = { low: inUnits(range.low), high: inUnits(range.high) };
+  const options = { priceScale, totalScale, level, priceRange, pointName, ...(draws && { draws }) };
+  const answer = refusingRanges(() => answerAt(fitted, point, question, options), pointName);
   const { shareFunction } = SYSTEMS[fitted.form];
   return priceChangeFinding.parse({
     kind: "price change",
@@ -57,21 +53,12 @@ export function runPriceChange(
     level,
     standardErrors: standardErrorsPhrase(system),
     intervals: draws ? "percentile" : "normal",
-    at,
+    ...answer,
     priceRange,
-    unseen: unseenPrices(fitted.goods, at.pricesAfter, priceRange),
     ...(specification["equivalence scale"] && { equivalenceScale: specification["equivalence scale"] }),
     ...(shareFunction
       ? { noIncidence: `${capital(shareFunction.absent)}.` }
       : { incidence: incidenceOver(specification, system, data, range, control) }),
-    checks: refusingRanges(() => {
-      const after = {
-        ...point,
-        prices: at.pricesAfter.map((price, i) => price / priceScale[i]),
-        total: at.totalAfter / totalScale,
-      };
-      return theoryChecksAt(fitted, after, shareFunction ? pointName : "the new prices");
-    }),
     tests: system.tests,
     ...caveatsOf(system),
   });

@@ -1,8 +1,8 @@
 import { useId, useState } from "react";
+import { type Compensation, mostChanged } from "../../../shared/economics/price-change/one-price.ts";
 import type { PriceChangeFinding } from "../../../shared/schemas/price-change.ts";
 import { capital } from "../../../shared/study/words.ts";
 import { ChoiceControl } from "../form/fields.tsx";
-import { type Compensation, mostChanged } from "./picture/one-price.ts";
 import { PriceChangePicture } from "./picture/picture.tsx";
 
 /** The picture of one price change, of a good to choose: the one whose price changes most unless said otherwise. */

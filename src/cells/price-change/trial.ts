@@ -1,7 +1,7 @@
 import { useSyncExternalStore } from "react";
+import type { PriceAnswer } from "../../../shared/economics/price-change/answer-at.ts";
 import type { PriceChangeFinding, PriceQuestion } from "../../../shared/schemas/price-change.ts";
 import { createEconomicsWorker, type EconomicsWorker } from "../../workers/client.ts";
-import type { PricesTried } from "../../workers/protocol.ts";
 import { editsTo } from "./rates.ts";
 
 /** Other prices put to a finding's system: what the rulers say, and what was last answered. */
@@ -26,7 +26,7 @@ export interface Trial {
 const NOT_COUNTED = "These prices are tried out in the browser and not stored, and the rows are with the server.";
 
 /** A finding with what was tried in the place of what is stored. Nothing in it speaks of the rows, which are not here. */
-function triedFinding(finding: PriceChangeFinding, question: PriceQuestion, tried: PricesTried): PriceChangeFinding {
+function triedFinding(finding: PriceChangeFinding, question: PriceQuestion, tried: PriceAnswer): PriceChangeFinding {
   const { incidence: _, ...rest } = finding;
   return { ...rest, ...tried, question, intervals: "normal", noIncidence: NOT_COUNTED };
 }

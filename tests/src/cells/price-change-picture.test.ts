@@ -1,6 +1,6 @@
 import { describe, expect, it } from "vitest";
+import { mostChanged, onePrice } from "../../../shared/economics/price-change/one-price.ts";
 import type { PriceQuestion } from "../../../shared/schemas/price-change.ts";
-import { mostChanged, onePrice } from "../../../src/cells/price-change/picture/one-price.ts";
 import { pictureWords } from "../../../src/cells/price-change/picture/picture-words.ts";
 import { sampleFitted } from "../../support/sample-findings.ts";
 import { samplePriceChange } from "../../support/sample-price-change.ts";

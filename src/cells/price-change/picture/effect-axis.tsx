@@ -1,7 +1,7 @@
+import type { OnePrice } from "../../../../shared/economics/price-change/one-price.ts";
 import { printFixed } from "../../../../shared/tables/numbers.ts";
 import { Hatch } from "../../../components/chart-hatch.tsx";
 import type { Frame } from "./frame.ts";
-import type { OnePrice } from "./one-price.ts";
 
 interface EffectAxisProps {
   readonly frame: Frame;

@@ -1,6 +1,6 @@
+import type { Curve, Spot } from "../../../../shared/economics/price-change/indifference-curve.ts";
+import type { OnePrice } from "../../../../shared/economics/price-change/one-price.ts";
 import { linearScale, roundTicks, type Scale } from "../../../components/chart-scale.ts";
-import type { Curve, Spot } from "./curve.ts";
-import type { OnePrice } from "./one-price.ts";
 
 /** The window of a picture: how much of the good across, money for the rest upwards, in pixels. */
 export interface Frame {

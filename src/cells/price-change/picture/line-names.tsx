@@ -1,8 +1,8 @@
+import type { Curve } from "../../../../shared/economics/price-change/indifference-curve.ts";
+import type { Compensation, OnePrice } from "../../../../shared/economics/price-change/one-price.ts";
 import { DECIMALS, printFixed } from "../../../../shared/tables/numbers.ts";
-import type { Curve } from "./curve.ts";
 import type { Frame } from "./frame.ts";
 import { restOn } from "./lines.tsx";
-import type { Compensation, OnePrice } from "./one-price.ts";
 
 interface NamesProps {
   readonly frame: Frame;

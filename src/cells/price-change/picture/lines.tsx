@@ -1,6 +1,6 @@
-import type { Curve } from "./curve.ts";
+import type { Curve } from "../../../../shared/economics/price-change/indifference-curve.ts";
+import type { Budget, OnePrice } from "../../../../shared/economics/price-change/one-price.ts";
 import type { Frame } from "./frame.ts";
-import type { Budget, OnePrice } from "./one-price.ts";
 
 const place = ({ x, y }: Frame, quantity: number, rest: number) => `${x.at(quantity)} ${y.at(rest)}`;
 /** Money left for the rest when so much of the good is bought. */

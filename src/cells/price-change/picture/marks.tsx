@@ -1,6 +1,6 @@
-import type { Spot } from "./curve.ts";
+import type { Spot } from "../../../../shared/economics/price-change/indifference-curve.ts";
+import type { OnePrice } from "../../../../shared/economics/price-change/one-price.ts";
 import type { Frame } from "./frame.ts";
-import type { OnePrice } from "./one-price.ts";
 
 /** Words over lines keep a clear edge. */
 const CLEAR = { paintOrder: "stroke", stroke: "var(--recto)", strokeWidth: 4, strokeLinejoin: "round" } as const;

@@ -1,7 +1,7 @@
+import type { Compensation, OnePrice } from "../../../../shared/economics/price-change/one-price.ts";
 import { capital } from "../../../../shared/study/words.ts";
 import { DECIMALS, printFixed } from "../../../../shared/tables/numbers.ts";
 import { ChartNumbers } from "../../../components/chart-numbers.tsx";
-import type { Compensation, OnePrice } from "./one-price.ts";
 
 const BUNDLES = ["before", "compensated", "after"] as const;
 

@@ -1,4 +1,5 @@
 import { useId, useMemo } from "react";
+import { type Compensation, onePrice } from "../../../../shared/economics/price-change/one-price.ts";
 import type { PriceChangeFinding } from "../../../../shared/schemas/price-change.ts";
 import { capital } from "../../../../shared/study/words.ts";
 import { digitsForAll, printFixed } from "../../../../shared/tables/numbers.ts";
@@ -9,7 +10,6 @@ import { type Frame, frameOf } from "./frame.ts";
 import { LineNames } from "./line-names.tsx";
 import { Lines } from "./lines.tsx";
 import { Bundles } from "./marks.tsx";
-import { type Compensation, onePrice } from "./one-price.ts";
 import { PictureNumbers } from "./picture-numbers.tsx";
 import { pictureWords } from "./picture-words.ts";
 

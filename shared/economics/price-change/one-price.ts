@@ -1,9 +1,9 @@
-import { whyNoCost } from "../../../../shared/economics/price-change/exact-welfare.ts";
-import { costOf } from "../../../../shared/economics/welfare.ts";
-import type { PriceChangeFinding } from "../../../../shared/schemas/price-change.ts";
-import type { CostEvaluator } from "../../../../shared/systems/demand-system.ts";
-import { type FittedCoefficients, systemOf } from "../../../../shared/systems/index.ts";
-import { type Curve, curveAlong, type Spot } from "./curve.ts";
+import type { PriceChangeFinding } from "../../schemas/price-change.ts";
+import type { CostEvaluator } from "../../systems/demand-system.ts";
+import { type FittedCoefficients, systemOf } from "../../systems/index.ts";
+import { costOf } from "../welfare.ts";
+import { whyNoCost } from "./exact-welfare.ts";
+import { type Curve, curveAlong, type Spot } from "./indifference-curve.ts";
 
 /** By which the household is made up for the price: its utility before, or its bundle before. */
 export type Compensation = "hicks" | "slutsky";
